@@ -1,0 +1,16 @@
+// Package dist gives probabilities and quantiles of the normal, Student t and F
+// distributions, for real degrees of freedom.
+//
+// Every function names its tail. A small tail is computed directly and never as
+// one minus the other tail, so its digits survive however small it is.
+//
+// Claimed accuracy, held by tables that R and a 60-digit computation made (see
+// testdata): relative error at most 5e-14 for probabilities above 1e-300 and
+// degrees of freedom from 0.5 to 1e6, at most 2e-14 for quantiles. Most values
+// are within a few units of the last place. A probability below the smallest
+// float64 is returned as 0, a quantile above the largest as an infinity.
+//
+// An argument that has no answer (a NaN, degrees of freedom that are not
+// positive, a p outside 0 to 1) gives NaN. Degrees of freedom may be +Inf for
+// Student's t, which is then the normal distribution.
+package dist

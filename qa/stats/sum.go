@@ -1,0 +1,80 @@
+package stats
+
+import "math"
+
+// A double is an unevaluated sum of two float64, about 32 digits.
+type double struct{ high, low float64 }
+
+func (d double) value() float64 { return d.high + d.low }
+
+// twoSum is a+b with its rounding error (Knuth, The Art of Computer
+// Programming 2, section 4.2.2, theorem B).
+func twoSum(a, b float64) double {
+	s := a + b
+	t := s - a
+	return double{s, (a - (s - t)) + (b - t)}
+}
+
+// fastSum is twoSum for a not smaller in size than b.
+func fastSum(a, b float64) double {
+	s := a + b
+	return double{s, b - (s - a)}
+}
+
+func (d double) plus(e double) double {
+	s := twoSum(d.high, e.high)
+	t := twoSum(d.low, e.low)
+	s = fastSum(s.high, s.low+t.high)
+	return fastSum(s.high, s.low+t.low)
+}
+
+func (d double) minus(e double) double { return d.plus(double{-e.high, -e.low}) }
+
+// times has the rounding error of the product of the high parts from the fused
+// multiply-add.
+func (d double) times(e double) double {
+	p := d.high * e.high
+	rest := math.FMA(d.high, e.high, -p)
+	return fastSum(p, rest+(d.high*e.low+d.low*e.high))
+}
+
+func (d double) over(n float64) double {
+	q := d.high / n
+	rest := math.FMA(-q, n, d.high) + d.low
+	return fastSum(q, rest/n)
+}
+
+// moments holds the mean of x*2^-exp and the sum of the squared deviations from
+// it. The exponent brings the largest reading near 1, so no square overflows.
+type moments struct {
+	exp           int
+	mean, squares double
+}
+
+func momentsOf(x []float64) moments {
+	largest := 0.0
+	for _, v := range x {
+		largest = max(largest, math.Abs(v))
+	}
+	_, exp := math.Frexp(largest)
+	m := moments{exp: exp}
+	if len(x) == 0 {
+		return m
+	}
+	// From the first reading, so that equal readings have exactly that mean.
+	first := math.Ldexp(x[0], -exp)
+	var sum double
+	for _, v := range x {
+		sum = sum.plus(twoSum(math.Ldexp(v, -exp), -first))
+	}
+	m.mean = sum.over(float64(len(x))).plus(double{high: first})
+	for _, v := range x {
+		d := m.deviation(v)
+		m.squares = m.squares.plus(d.times(d))
+	}
+	return m
+}
+
+func (m moments) deviation(v float64) double {
+	return double{high: math.Ldexp(v, -m.exp)}.minus(m.mean)
+}

@@ -1,0 +1,65 @@
+package stats
+
+import (
+	"math"
+	"slices"
+)
+
+// A Summary describes one group of readings. SD has denominator N-1 and is 0
+// when N is below 2, so a caller checks N before using it.
+type Summary struct {
+	N                        int
+	Mean, SD                 float64
+	Min, Q1, Median, Q3, Max float64
+}
+
+// Summarize returns the summary of x. The quartiles are of type 7 in Hyndman &
+// Fan (1996, "Sample Quantiles in Statistical Packages"). The summary of
+// nothing is zero.
+//
+// Sums are kept to twice the digits of a float64, and the deviations are taken
+// from the mean of those digits, so Mean and SD are those of the numbers given,
+// rounded about once. Numbers near the largest or smallest float64 do not
+// overflow or vanish on the way.
+func Summarize(x []float64) Summary {
+	if len(x) == 0 {
+		return Summary{}
+	}
+	sorted := slices.Clone(x)
+	slices.Sort(sorted)
+	s := Summary{
+		N:      len(x),
+		Min:    sorted[0],
+		Q1:     quantile(sorted, 0.25),
+		Median: quantile(sorted, 0.5),
+		Q3:     quantile(sorted, 0.75),
+		Max:    sorted[len(x)-1],
+	}
+	m := momentsOf(x)
+	s.Mean = math.Ldexp(m.mean.value(), m.exp)
+	if s.N > 1 {
+		s.SD = math.Ldexp(math.Sqrt(m.squares.value()/float64(s.N-1)), m.exp)
+	}
+	return s
+}
+
+// Constant says that all readings are equal.
+func (s Summary) Constant() bool { return s.Min == s.Max }
+
+// quantile is the quantile of type 7: linear between the order statistics
+// around position 1 + (n-1)p.
+func quantile(sorted []float64, p float64) float64 {
+	at := float64(len(sorted)-1) * p
+	below := int(at)
+	part := at - float64(below)
+	low := sorted[below]
+	if part == 0 {
+		return low
+	}
+	// Two products, because high-low may overflow; monotone at equal ends.
+	high := sorted[below+1]
+	if low == high {
+		return low
+	}
+	return low*(1-part) + high*part
+}
