@@ -44,7 +44,7 @@ func (p beta) fraction() float64 {
 		a0, a1 = a1, term*a1+alpha*a0
 		b0, b1 = b1, term*b1+alpha*b0
 		next := a1 / b1
-		if math.Abs(next-value) <= 0x1p-53*next {
+		if math.Abs(next-value) <= 0x1p-52*next {
 			return next
 		}
 		value = next

@@ -1,0 +1,224 @@
+package qa
+
+import (
+	"fmt"
+	"math"
+	"slices"
+	"strings"
+)
+
+// PlanFault is one thing wrong with a plan: which key, what was found, what was wanted and what to do.
+type PlanFault struct {
+	Key   string // as in the plan file: "criterion.alpha", "characteristic 2 (Bore).lower"
+	Found string
+	Want  string
+	Do    string
+}
+
+func (f PlanFault) Error() string {
+	return fmt.Sprintf("%s: found %s, want %s; %s", f.Key, f.Found, f.Want, f.Do)
+}
+
+// Validate lists all that is wrong with the plan by itself, before any file is opened. What needs the readings (a limit that
+// only the file has) is found by Compare.
+func (p Plan) Validate() []PlanFault {
+	v := &validator{}
+	if p.Format != PlanFormat {
+		v.fault("format", fmt.Sprintf("%q", p.Format), fmt.Sprintf("%q", PlanFormat), "write this as the first line of the plan")
+	}
+	for _, side := range []Side{Reference, Candidate} {
+		v.lot(string(side), p.LotOf(side))
+	}
+	if r, c := p.Reference, p.Candidate; r.File != "" && r.File == c.File && r.Sheet == c.Sheet && r.Lot == c.Lot {
+		v.fault("candidate.lot", fmt.Sprintf("%q, the reference's own lot of the same file", c.Lot), "another lot", "name the candidate lot")
+	}
+	v.reading(p.Reading)
+	v.criterion("criterion", p.Criterion)
+	names := map[string]bool{}
+	for i, c := range p.Characteristics {
+		key := fmt.Sprintf("characteristic %d (%s)", i+1, c.Name)
+		if c.Name == "" {
+			v.fault(key+".name", "none", "a name", "name the characteristic")
+		}
+		if names[c.Name] {
+			v.fault(key+".name", fmt.Sprintf("%q a second time", c.Name), "each name once", "remove or rename one")
+		}
+		names[c.Name] = true
+		v.characteristic(key, c)
+		v.asked(key, p.askedOf(c))
+	}
+	if len(p.Characteristics) == 0 {
+		v.asked("criterion", p.askedOf(Characteristic{}))
+	}
+	for i, s := range p.Signatures {
+		v.oneOf(fmt.Sprintf("signatures %d.meaning", i+1), s.Meaning, "prepared", "reviewed", "approved")
+	}
+	if f := p.Performance; f != nil {
+		v.share("performance.coverage", f.Coverage)
+		v.share("performance.confidence", f.Confidence)
+	}
+	if s := p.Sensitivity; s != nil && s.Resamples != 0 {
+		v.notYet("sensitivity.resamples", fmt.Sprint(s.Resamples), "0")
+	}
+	return v.faults
+}
+
+type validator struct{ faults []PlanFault }
+
+func (v *validator) fault(key, found, want, do string) {
+	v.faults = append(v.faults, PlanFault{Key: key, Found: found, Want: want, Do: do})
+}
+
+// oneOf accepts the empty text as "left out".
+func (v *validator) oneOf(key, value string, allowed ...string) bool {
+	if value == "" || slices.Contains(allowed, value) {
+		return true
+	}
+	v.fault(key, fmt.Sprintf("%q", value), strings.Join(allowed, ", "), "choose one of these")
+	return false
+}
+
+// notYet refuses a value that the plan format knows and this version does not offer: better no answer than another one.
+func (v *validator) notYet(key, found, want string) {
+	v.fault(key, found+", which this version does not offer", want, "change the plan or use a later version")
+}
+
+// only checks against what the format knows, then against what this version offers.
+func (v *validator) only(key, value string, offered, known []string) {
+	if value == "" || slices.Contains(offered, value) {
+		return
+	}
+	if slices.Contains(known, value) {
+		v.notYet(key, fmt.Sprintf("%q", value), strings.Join(offered, ", "))
+		return
+	}
+	v.oneOf(key, value, append(append([]string{}, offered...), known...)...)
+}
+
+func (v *validator) finite(key string, x *float64) {
+	if x != nil && (math.IsNaN(*x) || math.IsInf(*x, 0)) {
+		v.fault(key, fmt.Sprint(*x), "a finite number", "correct the plan")
+	}
+}
+
+func (v *validator) positive(key string, x *float64) {
+	if x != nil && (!(*x > 0) || math.IsInf(*x, 0)) {
+		v.fault(key, fmt.Sprint(*x), "a number above 0", "correct the plan")
+	}
+}
+
+func (v *validator) share(key string, x float64) {
+	if x != 0 && !(x > 0 && x < 1) {
+		v.fault(key, fmt.Sprint(x), "a number above 0 and below 1", "correct the plan")
+	}
+}
+
+func (v *validator) lot(key string, l LotPlan) {
+	if l.File == "" {
+		v.fault(key+".file", "none", "the name of the file with the readings, relative to the plan", "name it")
+	}
+	v.only(key+".values", l.Values, []string{"absolute"}, []string{"deviation"})
+}
+
+func (v *validator) reading(r ReadingPlan) {
+	v.only("reading.layout", r.Layout, []string{"row-per-part"}, []string{"column-per-lot", "sheet-per-lot", "row-per-characteristic"})
+	v.oneOf("reading.decimal", r.Decimal, ".", ",")
+	if r.HeaderRow < 0 {
+		v.fault("reading.header_row", fmt.Sprint(r.HeaderRow), "a row number from 1", "correct the plan")
+	}
+	for _, f := range [][2]string{{"reading.pair_column", r.PairColumn}, {"reading.group_column", r.GroupColumn}, {"reading.non_detect", r.NonDetect}} {
+		if f[1] != "" {
+			v.notYet(f[0], fmt.Sprintf("%q", f[1]), "it left out")
+		}
+	}
+	for i, e := range r.Exclude {
+		key := fmt.Sprintf("reading.exclude %d", i+1)
+		if strings.TrimSpace(e.Reason) == "" {
+			v.fault(key+".reason", "none", "why the cell is left out", "write the reason")
+		}
+		if e.Cell == "" {
+			v.fault(key+".cell", "none", "a cell such as Data!D17", "name the cell")
+		}
+	}
+}
+
+func (v *validator) criterion(key string, c Criterion) {
+	v.only(key+".claim", c.Claim, []string{"lots"}, []string{"sources"})
+	v.only(key+".groups", c.Groups, []string{"none"}, []string{"random"})
+	v.oneOf(key+".overall", c.Overall, "all")
+	v.only(key+".second_sample", c.SecondSample, []string{"none"}, []string{"one"})
+	if c.Power != nil && !(*c.Power > 0 && *c.Power < 1) {
+		v.fault(key+".power", fmt.Sprint(*c.Power), "a number above 0 and below 1", "correct the plan")
+	}
+	if c.SpreadRatio != nil {
+		v.notYet(key+".spread_ratio", fmt.Sprint(*c.SpreadRatio), "it left out")
+	}
+	if c.Margin != nil {
+		v.margin(key+".margin", *c.Margin)
+	}
+}
+
+func (v *validator) characteristic(key string, c Characteristic) {
+	v.only(key+".kind", c.Kind, []string{"numeric"}, []string{"attribute"})
+	v.finite(key+".lower", c.Lower)
+	v.finite(key+".target", c.Target)
+	v.finite(key+".upper", c.Upper)
+	if w, ok := c.Tolerance(); ok && !(w > 0) {
+		v.fault(key+".upper", fmt.Sprint(*c.Upper), fmt.Sprintf("more than the lower limit %v", *c.Lower), "correct the limits")
+	}
+	v.positive(key+".sd", c.SD)
+	if c.Decimals != nil && (*c.Decimals < 0 || *c.Decimals > 12) {
+		v.fault(key+".decimals", fmt.Sprint(*c.Decimals), "0 to 12", "correct the plan")
+	}
+	if c.SpreadRatio != nil {
+		v.notYet(key+".spread_ratio", fmt.Sprint(*c.SpreadRatio), "it left out")
+	}
+	if u := c.Uncertainty; u != nil && !(u.Reference >= 0 && u.Candidate >= 0 && !math.IsInf(u.Reference+u.Candidate, 0)) {
+		v.fault(key+".uncertainty", fmt.Sprint(*u), "two standard uncertainties from 0", "correct the plan")
+	}
+	if c.Margin != nil {
+		v.margin(key+".margin", *c.Margin)
+	}
+}
+
+// asked checks what holds after the characteristic's own settings are merged with the criterion.
+func (v *validator) asked(key string, a asked) {
+	v.oneOf(key+".objective", string(a.objective), string(Equivalence), string(NotLower), string(NotHigher), string(Difference), string(Lower), string(Higher))
+	if !(a.alpha > 0 && a.alpha < 0.5) {
+		v.fault(key+".alpha", fmt.Sprint(a.alpha), "a number above 0 and below 0.5", "correct the plan")
+	}
+	v.only(key+".method", a.method, []string{"welch"}, []string{"pooled", "paired", "log"})
+	if !(a.guard >= 0) || math.IsInf(a.guard, 0) {
+		v.fault(key+".guard", fmt.Sprint(a.guard), "a number from 0 in the unit", "correct the plan")
+	}
+	if a.margin == nil && a.objective.AgainstMargin() {
+		v.fault(key+".margin", "none", fmt.Sprintf("a margin for the objective %s", a.objective), "state absolute, lower and upper, or tolerance_fraction")
+	}
+}
+
+func (v *validator) margin(key string, m Margin) {
+	kinds := m.Kinds()
+	if len(kinds) != 1 {
+		v.fault(key, orNone(kinds), "exactly one kind of margin", "state absolute, lower and upper, or tolerance_fraction")
+		return
+	}
+	switch kinds[0] {
+	case "absolute", "bounds", "tolerance_fraction":
+	default:
+		v.notYet(key, kinds[0], "absolute, lower and upper, or tolerance_fraction")
+	}
+	v.finite(key+".lower", m.Lower)
+	v.finite(key+".upper", m.Upper)
+	v.positive(key+".absolute", m.Absolute)
+	v.positive(key+".tolerance_fraction", m.ToleranceFraction)
+	if m.Lower != nil && m.Upper != nil && !(*m.Lower < *m.Upper) {
+		v.fault(key, fmt.Sprintf("lower = %v and upper = %v", *m.Lower, *m.Upper), "lower below upper", "correct the plan")
+	}
+	v.oneOf(key+".of", m.Of, "full", "half")
+	if m.Of != "" && m.ToleranceFraction == nil {
+		v.fault(key+".of", fmt.Sprintf("%q", m.Of), "it only beside tolerance_fraction", "remove it")
+	}
+	if m.Mean != nil || m.SD != nil {
+		v.fault(key, "mean or sd", "them only beside keep_ppk or sd_multiple", "remove them")
+	}
+}
