@@ -10,7 +10,7 @@ import (
 // one; both need a spread, and HasPp and HasPpk say which exist. OutsideCounted
 // is the part of the readings beyond a limit, 0 to 1. OutsideEstimated is the
 // part a normal distribution with the mean and SD of the readings has beyond
-// the limits; it is given when HasPpk.
+// the limits; where SD is 0 that is OutsideCounted.
 type Capability struct {
 	Pp, Ppk                          float64
 	HasPp, HasPpk                    bool
@@ -33,10 +33,12 @@ func Performance(x []float64, s Summary, lower, upper *float64) Capability {
 	if len(x) > 0 {
 		c.OutsideCounted = float64(outside) / float64(len(x))
 	}
+	c.OutsideEstimated = c.OutsideCounted
 	if s.N < 2 || s.SD == 0 || (lower == nil && upper == nil) {
 		return c
 	}
 	c.HasPpk = true
+	c.OutsideEstimated = 0
 	c.Ppk = math.Inf(1)
 	if lower != nil {
 		room := (s.Mean - *lower) / s.SD

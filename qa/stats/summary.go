@@ -5,8 +5,8 @@ import (
 	"slices"
 )
 
-// A Summary describes one group of readings. SD has denominator N-1 and is 0
-// when N is below 2, so a caller checks N before using it.
+// A Summary describes one group of readings. SD has denominator N-1; it is 0 when
+// all readings are equal, and also when N is below 2, so a caller checks N first.
 type Summary struct {
 	N                        int
 	Mean, SD                 float64
@@ -56,10 +56,8 @@ func quantile(sorted []float64, p float64) float64 {
 	if part == 0 {
 		return low
 	}
-	// Two products, because high-low may overflow; monotone at equal ends.
+	// Two products, because high-low may overflow; held between its neighbours,
+	// because each product is rounded.
 	high := sorted[below+1]
-	if low == high {
-		return low
-	}
-	return low*(1-part) + high*part
+	return max(low, min(low*(1-part)+high*part, high))
 }

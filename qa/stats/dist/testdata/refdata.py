@@ -42,11 +42,11 @@ def t_centre(t, df):
 def t_upper(t, df):
     if t < 0:
         return 1 - t_upper(-t, df)
-    if df < 1000 and t * t > 1:
+    if (df < 1000 and t * t > 1) or t * t > df:
         s = t * t
         return beta_lower(df / 2, mpf(1) / 2, df / (df + s), s / (df + s)) / 2
     keep = mp.dps
-    mp.dps = 460
+    mp.dps += 10 + int(t * t / 4.6)  # what the subtraction loses
     try:
         s = t * t
         return (1 - series(mpf(1) / 2, df / 2, s / (df + s), df / (df + s))) / 2
@@ -91,7 +91,7 @@ def t_quantile(p, df):
 
 
 def t_quantile_lower(p, df):
-    low, high = root(lambda u: log(p) - log(t_upper(exp(u), df)), mpf(-46), mpf(705))
+    low, high = root(lambda u: log(p) - log(t_upper(exp(u), df)), mpf(-46), mpf(705) if df < 1000 else log(mpf(100)))
     t = exp((low + high) / 2)
     for _ in range(8):
         tail = t_upper(t, df)
