@@ -1,0 +1,160 @@
+package draw
+
+import (
+	"bytes"
+	"fmt"
+	"image"
+	"image/color"
+	imagedraw "image/draw"
+	"image/png"
+	"math"
+
+	"golang.org/x/image/font"
+	"golang.org/x/image/math/fixed"
+	"golang.org/x/image/vector"
+
+	"lotpair/qa/figure"
+)
+
+// mostPixels bounds a picture: 64 million pixels are 256 MB.
+const mostPixels = 64 << 20
+
+// Image paints a figure at scale pixels a point; its size is the figure's times the scale, rounded up.
+func Image(f figure.Figure, scale float64, p Palette) (*image.NRGBA, error) {
+	w, h := math.Ceil(f.Width*scale), math.Ceil(f.Height*scale)
+	if !(w >= 1 && h >= 1) || w*h > mostPixels {
+		return nil, fmt.Errorf("picture: found %v by %v pixels, want at least 1 by 1 and at most %d altogether; choose another size", w, h, mostPixels)
+	}
+	fonts, err := newFaces()
+	if err != nil {
+		return nil, err
+	}
+	img := image.NewNRGBA(image.Rect(0, 0, int(w), int(h)))
+	imagedraw.Draw(img, img.Bounds(), image.NewUniform(p.Paper), image.Point{}, imagedraw.Src)
+	c := canvas{img: img, scale: scale, palette: p, fonts: fonts}
+	for _, m := range f.Marks {
+		if err := c.mark(m); err != nil {
+			return nil, err
+		}
+	}
+	return img, nil
+}
+
+// PNG is a figure as a PNG file at scale pixels a point.
+func PNG(f figure.Figure, scale float64, p Palette) ([]byte, error) {
+	img, err := Image(f, scale, p)
+	if err != nil {
+		return nil, err
+	}
+	var b bytes.Buffer
+	if err := (&png.Encoder{CompressionLevel: png.BestCompression}).Encode(&b, img); err != nil {
+		return nil, fmt.Errorf("picture: %w", err)
+	}
+	return b.Bytes(), nil
+}
+
+// canvas is an image being painted.
+type canvas struct {
+	img     *image.NRGBA
+	scale   float64
+	palette Palette
+	fonts   *faces
+}
+
+// mark paints one mark; a mark with a number that is not finite is left out.
+func (c *canvas) mark(m figure.Mark) error {
+	for _, v := range []float64{m.X, m.Y, m.X2, m.Y2, m.Size} {
+		if math.IsNaN(v) || math.IsInf(v, 0) {
+			return nil
+		}
+	}
+	s, col := c.scale, c.palette.Of(m)
+	x, y, x2, y2, size := m.X*s, m.Y*s, m.X2*s, m.Y2*s, m.Size*s
+	switch m.Kind {
+	case figure.Line:
+		c.line(x, y, x2, y2, size, m.Dashed, col)
+	case figure.Box:
+		box := polygon{{x, y}, {x2, y}, {x2, y2}, {x, y2}}
+		c.shape(box, m.Open, 1.2*s, col)
+	case figure.Dot:
+		c.shape(circle(x, y, size), m.Open, 1.2*s, col)
+	case figure.Diamond:
+		c.shape(polygon{{x, y - size}, {x + size, y}, {x, y + size}, {x - size, y}}, m.Open, 1.5*s, col)
+	case figure.Label:
+		return c.label(m, x, y, size, col)
+	}
+	return nil
+}
+
+// shape fills a convex outline; an open one is filled with paper and stroked inside and outside by half the width.
+func (c *canvas) shape(p polygon, open bool, width float64, col color.NRGBA) {
+	if !open {
+		c.fill(col, p)
+		return
+	}
+	c.fill(c.palette.Paper, p)
+	c.fill(col, p.grown(width/2), p.grown(-width/2).reversed())
+}
+
+// line is a stroke with butt ends, or short strokes of two points with gaps of three.
+func (c *canvas) line(x, y, x2, y2, width float64, dashed bool, col color.NRGBA) {
+	length := math.Hypot(x2-x, y2-y)
+	if length == 0 || width <= 0 {
+		return
+	}
+	ux, uy := (x2-x)/length, (y2-y)/length
+	nx, ny := -uy*width/2, ux*width/2
+	on, step := length, length
+	if dashed {
+		on, step = 2*c.scale, 5*c.scale
+	}
+	for at := 0.0; at < length; at += step {
+		end := math.Min(at+on, length)
+		ax, ay, bx, by := x+ux*at, y+uy*at, x+ux*end, y+uy*end
+		c.fill(col, polygon{{ax + nx, ay + ny}, {bx + nx, by + ny}, {bx - nx, by - ny}, {ax - nx, ay - ny}})
+	}
+}
+
+// fill paints outlines with the winding rule. The rasteriser works on the outlines' bounding box alone: a picture has many
+// small marks.
+func (c *canvas) fill(col color.NRGBA, outlines ...polygon) {
+	box := image.Rectangle{}
+	for _, p := range outlines {
+		box = box.Union(p.bounds())
+	}
+	box = box.Intersect(c.img.Bounds())
+	if box.Empty() {
+		return
+	}
+	r := vector.NewRasterizer(box.Dx(), box.Dy())
+	ox, oy := float64(box.Min.X), float64(box.Min.Y)
+	for _, p := range outlines {
+		for i, q := range p {
+			if i == 0 {
+				r.MoveTo(float32(q.x-ox), float32(q.y-oy))
+			} else {
+				r.LineTo(float32(q.x-ox), float32(q.y-oy))
+			}
+		}
+		r.ClosePath()
+	}
+	r.Draw(c.img, box, image.NewUniform(col), image.Point{})
+}
+
+func (c *canvas) label(m figure.Mark, x, y, size float64, col color.NRGBA) error {
+	face, err := c.fonts.of(m.Bold, size)
+	if err != nil {
+		return err
+	}
+	d := font.Drawer{Dst: c.img, Src: image.NewUniform(col), Face: face}
+	width := d.MeasureString(m.Text)
+	d.Dot = fixed.Point26_6{X: fixed.Int26_6(math.Round(x * 64)), Y: fixed.Int26_6(math.Round(y * 64))}
+	switch m.Anchor {
+	case figure.Middle:
+		d.Dot.X -= width / 2
+	case figure.End:
+		d.Dot.X -= width
+	}
+	d.DrawString(m.Text)
+	return nil
+}
