@@ -132,8 +132,8 @@ func (c *comparison) lotPerformance(ch Characteristic, x []float64, sum stats.Su
 	return out
 }
 
-// decimals is how many decimals to show: what the plan says, else what the readings show.
-func decimals(ch Characteristic, ref, cand Series) int {
+// Decimals is how many decimals to show: what the plan says, else what the readings show, 10 at most.
+func Decimals(ch Characteristic, ref, cand Series) int {
 	if ch.Decimals != nil {
 		return *ch.Decimals
 	}

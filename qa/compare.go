@@ -91,7 +91,7 @@ func compareOne(plan Plan, ch Characteristic, ref, cand Series) (Comparison, err
 	x, y := ref.Values(), cand.Values()
 	sx, sy := stats.Summarize(x), stats.Summarize(y)
 	c.Reference, c.Candidate = c.sample(Reference, ref, sx), c.sample(Candidate, cand, sy)
-	c.Decimals = decimals(ch, ref, cand)
+	c.Decimals = Decimals(ch, ref, cand)
 	c.checkSamples(ref, cand, x, y, sx, sy)
 	c.test(ch, sx, sy)
 	c.spread(sx, sy)

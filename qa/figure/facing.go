@@ -15,10 +15,9 @@ const (
 
 // Layout of the facing plot, in points.
 const (
-	gutter  = 64.0 // right of the plot: labels of the ticks
-	words   = 92.0 // on either side inside the plot: labels of limits, means and margin
 	foot    = 24.0 // below the plot: names of the lots
 	head    = 10.0
+	edge    = 6.0  // left of the plot
 	gap     = 14.0 // between the axis and the first dot
 	leading = 13.0 // between the baselines of two labels
 )
@@ -33,12 +32,14 @@ func Facing(c qa.Comparison, r qa.Readings) Figure {
 // both sides, the margin is a band about the reference's mean, each mean is a line. Sizes below the smallest are raised.
 func FacingAt(c qa.Comparison, r qa.Readings, width, height float64) Figure {
 	f := facing{c: c, Figure: Figure{Width: math.Max(width, FacingMinWidth), Height: math.Max(height, FacingMinHeight)}}
-	f.right = f.Width - gutter
-	f.axis = math.Round(f.right / 2)
 	f.bottom = f.Height - foot
 	f.Title = fmt.Sprintf("%s: readings of both lots back to back, %d reference, %d candidate", c.Name, c.Reference.N, c.Candidate.N)
 	ref, cand := points(r.Reference.Of(c.Name)), points(r.Candidate.Of(c.Name))
 	f.low, f.high = f.span(ref, cand)
+	f.tickAt, f.tickText = f.ticks()
+	f.right = f.Width - 8 - length(f.tickText, 10.5)
+	f.axis = math.Round((edge + f.right) / 2)
+	f.words = length([]string{f.limitText("lower", c.Limits.Lower), f.limitText("upper", c.Limits.Upper), f.meanText(c.Reference.Mean), f.meanText(c.Candidate.Mean)}, 11.5)
 
 	f.band()
 	f.limit("lower", c.Limits.Lower)
@@ -59,6 +60,9 @@ type facing struct {
 	c                   qa.Comparison
 	low, high           float64 // values at the bottom and at the top
 	axis, right, bottom float64
+	words               float64 // kept free on either side, inside the plot, for the labels of limits and means
+	tickAt              []float64
+	tickText            []string
 	left                []Mark // labels that wait for their place, left of the axis
 	rights              []Mark // and right of it
 	note                string // what is not in the picture
@@ -66,7 +70,8 @@ type facing struct {
 
 // y is where a value stands; it may lie outside the plot.
 func (f *facing) y(value float64) float64 {
-	return f.bottom - (value-f.low)/(f.high-f.low)*(f.bottom-head)
+	// Quarters, because the span of the largest numbers is larger than any number.
+	return f.bottom - (value/4-f.low/4)/(f.high/4-f.low/4)*(f.bottom-head)
 }
 
 // inside says whether a value is in the picture.
@@ -114,8 +119,10 @@ func (f *facing) span(ref, cand []point) (low, high float64) {
 			take(*l)
 		}
 	}
-	pad := (high - low) * 0.07
-	return low - pad, high + pad
+	if pad := (high - low) * 0.07; !math.IsInf(low-pad, 0) && !math.IsInf(high+pad, 0) {
+		return low - pad, high + pad
+	}
+	return low, high
 }
 
 // withoutReadings is the range of a plot that has no readings: its limits, or 0 to 1.
@@ -145,7 +152,7 @@ func (f *facing) band() {
 	if e.MarginLower != nil {
 		bottom = f.clamp(f.y(*m + *e.MarginLower))
 	}
-	f.add(Mark{Kind: Box, Name: "margin", Role: Margin, X: 0, Y: top, X2: f.right, Y2: bottom})
+	f.add(Mark{Kind: Box, Name: "margin", Role: Margin, X: edge, Y: top, X2: f.right, Y2: bottom})
 }
 
 // sayMargin names the band outside its upper edge, in full where no reading and no mean stands there.
@@ -173,14 +180,49 @@ func (f *facing) limit(name string, at *float64) {
 	if at == nil {
 		return
 	}
-	text := name + " " + qa.Fixed(*at, f.c.Decimals)
-	y := f.y(*at)
+	text, y := f.limitText(name, at), f.y(*at)
 	if !f.inside(*at) {
 		f.note = joined(f.note, text+" lies outside the picture")
 		return
 	}
-	f.add(Mark{Kind: Line, Name: name + " limit", Role: Text, X: 0, Y: y, X2: f.right, Y2: y, Size: 1.2})
-	f.left = append(f.left, Mark{Kind: Label, Name: name + " limit label", Role: Text, X: 0, Y: y - 4, Size: 11.5, Text: text})
+	f.add(Mark{Kind: Line, Name: name + " limit", Role: Text, X: edge, Y: y, X2: f.right, Y2: y, Size: 1.2})
+	f.left = append(f.left, Mark{Kind: Label, Name: name + " limit label", Role: Text, X: edge, Y: y - 4, Size: 11.5, Text: text})
+}
+
+// ticks are the round values of the axis and their labels, the unit beside the highest.
+func (f *facing) ticks() (at []float64, text []string) {
+	at, decimals := ticks(f.low, f.high, max(3, int((f.bottom-head)/44)))
+	for _, v := range at {
+		text = append(text, qa.Fixed(v, decimals))
+	}
+	if n := len(text); n > 0 && f.c.Unit != "" {
+		text[n-1] += " " + f.c.Unit
+	}
+	return at, text
+}
+
+func (f *facing) limitText(name string, at *float64) string {
+	if at == nil {
+		return ""
+	}
+	return name + " " + qa.Fixed(*at, f.c.Decimals)
+}
+
+func (f *facing) meanText(mean *float64) string {
+	if mean == nil {
+		return ""
+	}
+	return "mean " + qa.Fixed(*mean, f.c.Decimals+1)
+}
+
+// length is room enough for the longest of the texts at the height of font, between 48 and 140 points: figures are a little
+// wider than half their height in the painter's font.
+func length(texts []string, size float64) float64 {
+	most := 0
+	for _, t := range texts {
+		most = max(most, len([]rune(t)))
+	}
+	return math.Max(48, math.Min(140, 0.58*size*float64(most)+6))
 }
 
 func joined(a, b string) string {
@@ -193,13 +235,8 @@ func joined(a, b string) string {
 // scale draws the axis and its ticks, labelled in the gutter so that no reading is covered.
 func (f *facing) scale() {
 	f.add(Mark{Kind: Line, Name: "axis", Role: Text, X: f.axis, Y: head, X2: f.axis, Y2: f.bottom, Size: 1})
-	at, decimals := ticks(f.low, f.high, max(3, int((f.bottom-head)/44)))
-	for i, v := range at {
-		y := f.y(v)
-		text := qa.Fixed(v, decimals)
-		if i == len(at)-1 && f.c.Unit != "" {
-			text += " " + f.c.Unit
-		}
+	for i, v := range f.tickAt {
+		y, text := f.y(v), f.tickText[i]
 		f.add(Mark{Kind: Line, Name: "tick", Role: Text, X: f.axis - 3, Y: y, X2: f.axis + 3, Y2: y, Size: 1},
 			Mark{Kind: Line, Name: "tick", Role: Rule, X: f.right, Y: y, X2: f.right + 4, Y2: y, Size: 1},
 			Mark{Kind: Label, Name: "tick label", Role: Muted, X: f.right + 8, Y: y + 4, Size: 10.5, Text: text})
@@ -212,8 +249,8 @@ func (f *facing) mean(side qa.Side, mean *float64, reach float64) {
 		return
 	}
 	y := f.y(*mean)
-	out := gap + math.Max(reach+8, math.Min(110, f.axis-words-gap))
-	text := "mean " + qa.Fixed(*mean, f.c.Decimals+1)
+	out := gap + math.Max(reach+8, math.Min(110, f.axis-edge-f.words-gap))
+	text := f.meanText(mean)
 	m := Mark{Kind: Line, Name: string(side) + " mean", Y: y, Y2: y, Size: 2}
 	l := Mark{Kind: Label, Name: string(side) + " mean label", Y: y + 4, Size: 11.5, Text: text}
 	if side == qa.Reference {

@@ -35,7 +35,7 @@ var radii = []float64{3.6, 3.0, 2.4, 1.9}
 // stacks draws both lots' readings and says how far from the axis they reach, reference first.
 func (f *facing) stacks(ref, cand []point) [2]float64 {
 	ref, cand = f.visible("reference", ref), f.visible("candidate", cand)
-	room := f.axis - gap - words
+	room := f.axis - edge - gap - f.words
 	for _, r := range radii {
 		a, b := f.stacked(ref, 2*r), f.stacked(cand, 2*r)
 		most := float64(max(tallest(a), tallest(b)))

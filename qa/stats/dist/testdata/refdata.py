@@ -20,38 +20,24 @@ def series(a, b, x, y):
     return exp(a * log(x) + b * log(y) - log(a) - loggamma(a) - loggamma(b) + loggamma(a + b)) * total
 
 
-def beta_lower(a, b, x, y):
-    """I_x(a,b), by the series of the end that converges faster."""
-    if x <= a / (a + b):
-        return series(a, b, x, y)
-    # The complement, with digits to spare for the subtraction.
+def beta_lower(a, b, r):
+    """I_x(a,b) for x = r/(1+r), by the series of the end below 1/2."""
+    if r <= 1:
+        return series(a, b, r / (1 + r), 1 / (1 + r))
+    # The complement, with digits to spare for the subtraction: right down to
+    # 1e-350, and no smaller value is shown or asked for.
     keep = mp.dps
     mp.dps = 460
     try:
-        return 1 - series(b, a, y, x)
+        return 1 - series(b, a, 1 / (1 + r), r / (1 + r))
     finally:
         mp.dps = keep
-
-
-def t_centre(t, df):
-    """P(0 <= T <= t)."""
-    s = t * t
-    return beta_lower(mpf(1) / 2, df / 2, s / (df + s), df / (df + s)) / 2
 
 
 def t_upper(t, df):
     if t < 0:
         return 1 - t_upper(-t, df)
-    if (df < 1000 and t * t > 1) or t * t > df:
-        s = t * t
-        return beta_lower(df / 2, mpf(1) / 2, df / (df + s), s / (df + s)) / 2
-    keep = mp.dps
-    mp.dps += 10 + int(t * t / 4.6)  # what the subtraction loses
-    try:
-        s = t * t
-        return (1 - series(mpf(1) / 2, df / 2, s / (df + s), df / (df + s))) / 2
-    finally:
-        mp.dps = keep
+    return beta_lower(df / 2, mpf(1) / 2, df / (t * t)) / 2
 
 
 def t_density(t, df):
@@ -60,7 +46,7 @@ def t_density(t, df):
 
 def f_lower(f, d1, d2):
     r = d1 * f / d2
-    return beta_lower(d1 / 2, d2 / 2, r / (1 + r), 1 / (1 + r))
+    return beta_lower(d1 / 2, d2 / 2, r)
 
 
 def f_upper(f, d1, d2):
@@ -91,7 +77,7 @@ def t_quantile(p, df):
 
 
 def t_quantile_lower(p, df):
-    low, high = root(lambda u: log(p) - log(t_upper(exp(u), df)), mpf(-46), mpf(705) if df < 1000 else log(mpf(100)))
+    low, high = root(lambda u: p - t_upper(exp(u), df), mpf(-46), mpf(705))
     t = exp((low + high) / 2)
     for _ in range(8):
         tail = t_upper(t, df)
@@ -103,7 +89,7 @@ def f_quantile(p, d1, d2):
     p = mpf(p)
     if p > 0.5:
         return 1 / f_quantile(1 - p, d2, d1)
-    low, high = root(lambda u: log(f_lower(exp(u), d1, d2)) - log(p), mpf(-720), mpf(60))
+    low, high = root(lambda u: f_lower(exp(u), d1, d2) - p, mpf(-720), mpf(60))
     f = exp((low + high) / 2)
     for _ in range(8):
         lower = f_lower(f, d1, d2)
@@ -115,7 +101,7 @@ def z_quantile(p):
     p = mpf(p)
     if p > 0.5:
         return -z_quantile(1 - p)
-    low, high = root(lambda u: log(p) - log(erfc(exp(u) / sqrt(2)) / 2), mpf(-40), mpf(4))
+    low, high = root(lambda u: p - erfc(exp(u) / sqrt(2)) / 2, mpf(-40), mpf(4))
     z = exp((low + high) / 2)
     for _ in range(8):
         tail = erfc(z / sqrt(2)) / 2

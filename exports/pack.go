@@ -1,0 +1,124 @@
+package exports
+
+import (
+	"archive/zip"
+	"bytes"
+	"encoding/xml"
+	"fmt"
+	"io"
+	"sort"
+	"strings"
+)
+
+// The custom XML part of the record: its own part, its properties with a fixed item id, and the relationships that reach them
+// (ECMA-376 Part 1, 15.2.4 and 15.2.5).
+const (
+	recordPropsType = "application/vnd.openxmlformats-officedocument.customXmlProperties+xml"
+	recordProps     = xml.Header + `<ds:datastoreItem xmlns:ds="http://schemas.openxmlformats.org/officeDocument/2006/customXml" ds:itemID="{6B1C4E0A-9D57-4B0E-8C53-5A0C6F2E7D11}">` +
+		`<ds:schemaRefs><ds:schemaRef ds:uri="` + recordNamespace + `"/></ds:schemaRefs></ds:datastoreItem>`
+	recordRels = xml.Header + `<Relationships xmlns="http://schemas.openxmlformats.org/package/2006/relationships">` +
+		`<Relationship Id="rId1" Type="http://schemas.openxmlformats.org/officeDocument/2006/relationships/customXmlProps" Target="itemProps1.xml"/></Relationships>`
+	recordRelationship = `<Relationship Id="rIdRecord" Type="http://schemas.openxmlformats.org/officeDocument/2006/relationships/customXml" Target="../customXml/item1.xml"/>`
+)
+
+// packWithRecord adds the record's parts to a package as the spreadsheet library writes it, and writes every entry anew in a
+// fixed order, so that the same record gives the same bytes.
+func packWithRecord(pkg, record []byte) ([]byte, error) {
+	in, err := zip.NewReader(bytes.NewReader(pkg), int64(len(pkg)))
+	if err != nil {
+		return nil, fmt.Errorf("workbook: %w", err)
+	}
+	parts := map[string][]byte{}
+	for _, f := range in.File {
+		b, err := readEntry(f)
+		if err != nil {
+			return nil, fmt.Errorf("workbook, part %s: %w", f.Name, err)
+		}
+		parts[f.Name] = b
+	}
+	parts["customXml/item1.xml"] = record
+	parts["customXml/itemProps1.xml"] = []byte(recordProps)
+	parts["customXml/_rels/item1.xml.rels"] = []byte(recordRels)
+	const rels, types = "xl/_rels/workbook.xml.rels", "[Content_Types].xml"
+	if parts[rels], err = insertBefore(parts[rels], "</Relationships>", recordRelationship); err != nil {
+		return nil, fmt.Errorf("workbook, part %s: %w", rels, err)
+	}
+	if parts[types], err = contentTypes(parts[types]); err != nil {
+		return nil, fmt.Errorf("workbook, part %s: %w", types, err)
+	}
+	return writeZip(parts)
+}
+
+func readEntry(f *zip.File) ([]byte, error) {
+	r, err := f.Open()
+	if err != nil {
+		return nil, err
+	}
+	defer r.Close()
+	return io.ReadAll(r)
+}
+
+func insertBefore(b []byte, mark, what string) ([]byte, error) {
+	i := bytes.LastIndex(b, []byte(mark))
+	if i < 0 {
+		return nil, fmt.Errorf("found no %s", mark)
+	}
+	return append(append(append([]byte{}, b[:i]...), what...), b[i:]...), nil
+}
+
+// contentTypes sorts the content types, whose order the spreadsheet library leaves to chance, and adds the record's.
+func contentTypes(b []byte) ([]byte, error) {
+	var t struct {
+		Defaults []struct {
+			Extension   string `xml:"Extension,attr"`
+			ContentType string `xml:"ContentType,attr"`
+		} `xml:"Default"`
+		Overrides []struct {
+			PartName    string `xml:"PartName,attr"`
+			ContentType string `xml:"ContentType,attr"`
+		} `xml:"Override"`
+	}
+	if err := xml.Unmarshal(b, &t); err != nil {
+		return nil, err
+	}
+	var lines []string
+	for _, d := range t.Defaults {
+		lines = append(lines, fmt.Sprintf(`<Default Extension="%s" ContentType="%s"/>`, escape(d.Extension), escape(d.ContentType)))
+	}
+	for _, o := range t.Overrides {
+		lines = append(lines, fmt.Sprintf(`<Override PartName="%s" ContentType="%s"/>`, escape(o.PartName), escape(o.ContentType)))
+	}
+	lines = append(lines, fmt.Sprintf(`<Override PartName="/customXml/itemProps1.xml" ContentType="%s"/>`, recordPropsType))
+	sort.Strings(lines)
+	return []byte(xml.Header + `<Types xmlns="http://schemas.openxmlformats.org/package/2006/content-types">` + strings.Join(lines, "") + `</Types>`), nil
+}
+
+func escape(s string) string {
+	var b strings.Builder
+	// Writing into a strings.Builder cannot fail.
+	_ = xml.EscapeText(&b, []byte(s))
+	return b.String()
+}
+
+func writeZip(parts map[string][]byte) ([]byte, error) {
+	names := make([]string, 0, len(parts))
+	for n := range parts {
+		names = append(names, n)
+	}
+	sort.Strings(names) // "[Content_Types].xml" comes first, where programs look for it
+	var out bytes.Buffer
+	w := zip.NewWriter(&out)
+	for _, n := range names {
+		e, err := w.Create(n)
+		if err != nil {
+			return nil, fmt.Errorf("workbook, part %s: %w", n, err)
+		}
+		if _, err := e.Write(parts[n]); err != nil {
+			return nil, fmt.Errorf("workbook, part %s: %w", n, err)
+		}
+	}
+	if err := w.Close(); err != nil {
+		return nil, fmt.Errorf("workbook: %w", err)
+	}
+	return out.Bytes(), nil
+}

@@ -1,0 +1,106 @@
+package exports
+
+import (
+	"fmt"
+	"strconv"
+
+	"lotpair/importers/cells"
+	"lotpair/qa"
+)
+
+// sheetDifferences lays the sheets that the record must give beside those the file holds, cell by cell, and lists where they
+// differ: a cell that shows something else, a cell too many, a cell gone, a sheet too many.
+func sheetDifferences(pkg []byte, rec qa.Record) []string {
+	book, err := cells.Read(pkg)
+	if err != nil {
+		return []string{err.Error()}
+	}
+	again, err := rec.Recompute()
+	if err != nil {
+		return nil // said already
+	}
+	if rec.Result.Software.Calculation == qa.Calculation {
+		rec.Result = again
+	}
+	var found []string
+	say := func(format string, a ...any) {
+		if len(found) < maxDifferences {
+			found = append(found, fmt.Sprintf(format, a...))
+		}
+	}
+	expected := map[string]bool{}
+	big := largest(rec.Readings)
+	for _, want := range sheets(rec) {
+		expected[want.name] = true
+		got, ok := book.Sheet(want.name)
+		if !ok {
+			say("sheet %s: found none, want the one that the record gives", want.name)
+			continue
+		}
+		if got.Hidden {
+			say("sheet %s: found it hidden, want it in sight", want.name)
+		}
+		compareSheet(want, got, big, say)
+	}
+	for _, s := range book.Sheets {
+		if !expected[s.Name] {
+			say("sheet %s: found one that the record does not give", s.Name)
+		}
+	}
+	return found
+}
+
+func compareSheet(want sheet, got cells.Sheet, largest float64, say func(string, ...any)) {
+	next := 0 // of got.Rows
+	for i, r := range want.rows {
+		number := i + 1
+		var have cells.Row
+		if next < len(got.Rows) && got.Rows[next].Number == number {
+			have = got.Rows[next]
+			next++
+		}
+		if have.Hidden {
+			say("sheet %s: row %d is hidden", want.name, number)
+		}
+		compareRow(want.name, number, r, have, largest, say)
+	}
+	for ; next < len(got.Rows); next++ {
+		for _, c := range got.Rows[next].Cells {
+			if c.Kind != cells.Blank {
+				say("%s!%s: found %q, want nothing", want.name, c.Name(), c.Text)
+			}
+		}
+	}
+}
+
+func compareRow(name string, number int, want row, got cells.Row, largest float64, say func(string, ...any)) {
+	expected := map[int]cell{}
+	col := 1
+	for _, c := range want.cells {
+		expected[col] = c
+		col += max(c.span, 1)
+	}
+	seen := map[int]bool{}
+	for _, g := range got.Cells {
+		if g.Kind == cells.Blank {
+			continue
+		}
+		seen[g.Col] = true
+		w := expected[g.Col]
+		switch {
+		case g.Formula:
+			say("%s!%s: found a formula, want a value", name, g.Name())
+		case w.number != nil:
+			if x, err := strconv.ParseFloat(g.Text, 64); err != nil || g.Kind != cells.Number || !sameNumber(x, *w.number, largest) {
+				say("%s!%s: found %q, want %s", name, g.Name(), g.Text, shortest(*w.number))
+			}
+		case g.Kind != cells.Text || g.Text != w.text:
+			say("%s!%s: found %q, want %q", name, g.Name(), g.Text, w.text)
+		}
+	}
+	for c, w := range expected {
+		if !seen[c] && (w.number != nil || w.text != "") {
+			say("%s!%s: found nothing, want what the record gives", name, cells.Name(c, number))
+		}
+	}
+}

@@ -1,0 +1,134 @@
+package exports
+
+import (
+	"strconv"
+	"unicode/utf8"
+
+	"lotpair/qa"
+)
+
+// The names of the workbook's sheets, in order.
+const (
+	SheetSummary  = "Summary"
+	SheetResults  = "Results"
+	SheetReadings = "Readings"
+	SheetLedger   = "Ledger"
+)
+
+// maxText is the longest text a cell of a workbook holds (ECMA-376 leaves it open; common practice of the programs).
+const maxText = 32767
+
+// cell is one cell of a sheet: text, a number, or nothing. A text is always written as text, never as a formula.
+type cell struct {
+	text   string
+	number *float64
+	look   look
+	span   int // columns it covers, 0 and 1 alike
+}
+
+// look names how a cell is shown; workbook.go holds what each means.
+type look int
+
+const (
+	plainLook look = iota
+	titleLook
+	mutedLook
+	referenceLook
+	candidateLook
+	lotLook
+	headLook    // heading of a table
+	groupLook   // heading of a section
+	verdictLook // the overall verdict
+	wrapLook    // running text over several lines
+	strongLook
+	numberLook // a number shown in full
+	smallLook
+	rightLook // text to the right edge: the candidate's page mirrors the reference's
+	rightMutedLook
+	ruledLook // a table's line
+	ruledWrapLook
+	ruledStrongLook
+	signLook
+)
+
+// row is one row of a sheet; a height of 0 leaves it to the program.
+type row struct {
+	cells  []cell
+	height float64
+}
+
+// sheet is one sheet as it is to be written, and as verification expects to find it.
+type sheet struct {
+	name      string
+	widths    []float64 // of the columns, in characters
+	rows      []row
+	frozen    int // heading rows that stay in sight and repeat on every printed page; the last of them
+	landscape bool
+}
+
+func (s *sheet) add(cells ...cell) { s.rows = append(s.rows, row{cells: cells}) }
+
+func (s *sheet) addTall(height float64, cells ...cell) {
+	s.rows = append(s.rows, row{cells: cells, height: height})
+}
+
+func (s *sheet) gap() { s.rows = append(s.rows, row{height: 8}) }
+
+// text is a text cell. What an XML document cannot hold is replaced, what a cell cannot hold is cut with a mark.
+func text(s string, l look) cell {
+	s = cleanText(s)
+	if utf8.RuneCountInString(s) > maxText {
+		r := []rune(s)
+		s = string(r[:maxText-1]) + "…"
+	}
+	return cell{text: s, look: l}
+}
+
+// wide is a text cell over several columns.
+func wide(s string, l look, span int) cell {
+	c := text(s, l)
+	c.span = span
+	return c
+}
+
+// number is a number cell at full precision; nil is an empty cell.
+func number(x *float64, l look) cell { return cell{number: x, look: l} }
+
+func whole(n int, l look) cell {
+	x := float64(n)
+	return number(&x, l)
+}
+
+// cleanText replaces what XML 1.0 cannot hold (control characters, lone surrogates, U+FFFE and U+FFFF) by U+FFFD.
+func cleanText(s string) string {
+	clean := true
+	for _, r := range s {
+		if !xmlRune(r) {
+			clean = false
+			break
+		}
+	}
+	if clean {
+		return s
+	}
+	out := make([]rune, 0, len(s))
+	for _, r := range s {
+		if !xmlRune(r) {
+			r = '\uFFFD'
+		}
+		out = append(out, r)
+	}
+	return string(out)
+}
+
+func xmlRune(r rune) bool {
+	return r == '\t' || r == '\n' || r >= 0x20 && r <= 0xD7FF || r >= 0xE000 && r <= 0xFFFD && r != utf8.RuneError || r >= 0x10000 && r <= 0x10FFFF
+}
+
+// shortest is the shortest text that reads back as the same double.
+func shortest(x float64) string { return strconv.FormatFloat(x, 'g', -1, 64) }
+
+// sheets lays the whole record out. It is a pure function of the record.
+func sheets(rec qa.Record) []sheet {
+	return []sheet{summarySheet(rec), resultsSheet(rec), readingsSheet(rec), ledgerSheet(rec)}
+}

@@ -1,0 +1,333 @@
+package exports
+
+import (
+	"fmt"
+	"math"
+	"strings"
+	"time"
+
+	"lotpair/qa"
+)
+
+// Layout of the summary: eight columns, the left four the reference's page, the right four the candidate's.
+const (
+	summaryHalf     = 4
+	summaryColumns  = 8
+	spineColumn     = 6  // 1-based; the picture covers this column and the next
+	spineRowHeight  = 27 // points; the picture's lines stand in the middle of these rows
+	summaryLineRoom = 112
+)
+
+var summaryWidths = []float64{23, 18, 9, 12, 18, 15.5, 15.5, 16}
+
+// summarySheet is the first page: facing lots, verdicts in words, criterion, sources, cautions and signatures.
+func summarySheet(rec qa.Record) sheet {
+	s := sheet{name: SheetSummary, widths: summaryWidths}
+	r := rec.Result
+	s.addTall(26, wide(orDash(r.Title), titleLook, summaryColumns))
+	s.addTall(15, wide(supportsLine(rec), mutedLook, summaryColumns))
+	s.gap()
+	facingLots(&s, rec)
+	s.gap()
+	paragraph(&s, r.Sentence, verdictLook, 88, 19)
+	paragraph(&s, qa.Asked(r), mutedLook, summaryLineRoom, 14)
+	verdictTable(&s, r)
+	s.gap()
+	criterionBlock(&s, rec)
+	sourceBlock(&s, rec)
+	heldBlock(&s, rec)
+	s.gap()
+	s.add(wide("Cautions", groupLook, summaryColumns))
+	for _, c := range qa.Cautions() {
+		paragraph(&s, c, smallLook, 125, 12.5)
+	}
+	s.gap()
+	signatureBlock(&s, rec)
+	return s
+}
+
+func orDash(s string) string {
+	if s == "" {
+		return "—"
+	}
+	return s
+}
+
+func supportsLine(rec qa.Record) string {
+	var parts []string
+	add := func(word, s string) {
+		if s != "" {
+			parts = append(parts, word+" "+s)
+		}
+	}
+	add("supports", rec.Result.Supports)
+	add("part", rec.Plan.Record.Part)
+	add("revision", rec.Plan.Record.Revision)
+	add("claim:", map[string]string{"lots": "these two lots only"}[rec.Result.Claim])
+	add("keep:", rec.Plan.Retention)
+	return strings.Join(parts, "  ·  ")
+}
+
+// lines is how many lines a text takes at so many characters a line.
+func lines(s string, room int) float64 {
+	n := 0.0
+	for _, l := range strings.Split(s, "\n") {
+		n += math.Max(1, math.Ceil(float64(len([]rune(l)))/float64(room)))
+	}
+	return n
+}
+
+func paragraph(s *sheet, t string, l look, room int, lineHeight float64) {
+	s.addTall(lines(t, room)*lineHeight+2, wide(t, l, summaryColumns))
+}
+
+func facingLots(s *sheet, rec qa.Record) {
+	both := func(height float64, left, right string, a, b look) {
+		s.addTall(height, wide(left, a, summaryHalf), wide(right, b, summaryHalf))
+	}
+	r, p := rec.Result, rec.Plan.Record
+	both(16, "●  REFERENCE", "CANDIDATE  ◇", referenceLook, candidateLook)
+	both(23, orDash(r.Reference.Lot), orDash(r.Candidate.Lot), lotLook, rightLook)
+	both(15, orDash(r.Reference.Source), orDash(r.Candidate.Source), plainLook, rightMutedLook)
+	both(15, fileLine(r.Reference), fileLine(r.Candidate), mutedLook, rightMutedLook)
+	both(15, qa.PartsText(rec.Readings, qa.Reference), qa.PartsText(rec.Readings, qa.Candidate), plainLook, rightMutedLook)
+	if p.QuantityReference != nil || p.QuantityCandidate != nil {
+		both(15, quantity(p.QuantityReference), quantity(p.QuantityCandidate), mutedLook, rightMutedLook)
+	}
+	if p.GaugeReference != "" || p.GaugeCandidate != "" {
+		both(15, "measured with "+orDash(p.GaugeReference), "measured with "+orDash(p.GaugeCandidate), mutedLook, rightMutedLook)
+	}
+	if p.Sampling != "" {
+		paragraph(s, "Sampling: "+p.Sampling, mutedLook, summaryLineRoom, 14)
+	}
+}
+
+func quantity(x *float64) string {
+	if x == nil {
+		return "lot size not stated"
+	}
+	return "from a lot of " + qa.Plain(*x)
+}
+
+func fileLine(l qa.LotResult) string {
+	names := make([]string, len(l.Files))
+	for i, f := range l.Files {
+		names[i] = f.Name
+	}
+	return strings.Join(names, ", ")
+}
+
+// verdictTable is the spine in print: a line a characteristic; the picture is laid over the two empty columns.
+func verdictTable(s *sheet, r qa.Result) {
+	s.add(text("Characteristic", headLook), text("Asked", headLook), text("Readings", headLook), text("Difference", headLook),
+		text("Interval", headLook), wide("on the scale of its margin", headLook, 2), text("Verdict", headLook))
+	for _, c := range r.Characteristics {
+		s.addTall(spineRowHeight, text(nameWithUnit(c), ruledWrapLook), text(askedText(c), ruledWrapLook),
+			text(fmt.Sprintf("%d | %d", c.Reference.N, c.Candidate.N), ruledLook),
+			text(optional(c.Difference.Estimate, c.Decimals+1), ruledLook), text(intervalText(c), ruledWrapLook),
+			wide("", ruledLook, 2), text(verdictText(c), ruledStrongLook))
+	}
+}
+
+func nameWithUnit(c qa.Comparison) string {
+	if c.Unit == "" {
+		return c.Name
+	}
+	return c.Name + " [" + c.Unit + "]"
+}
+
+func askedText(c qa.Comparison) string {
+	if c.Objective.AgainstMargin() {
+		word := map[qa.Objective]string{qa.Equivalence: "within", qa.NotLower: "not lower:", qa.NotHigher: "not higher:"}[c.Objective]
+		return word + " " + qa.MarginText(c)
+	}
+	return string(c.Objective)
+}
+
+func verdictText(c qa.Comparison) string {
+	s := string(c.Verdict)
+	if c.Detectable && c.Verdict == qa.Equivalent {
+		s += "; a shift is detectable"
+	}
+	return s
+}
+
+func optional(x *float64, decimals int) string {
+	if x == nil {
+		return "—"
+	}
+	return qa.Fixed(*x, decimals)
+}
+
+func intervalText(c qa.Comparison) string {
+	level, low, high := c.Difference.Level, c.Difference.Lower, c.Difference.Upper
+	if e := c.Equivalence; e != nil && c.Objective.AgainstMargin() {
+		level, low, high = e.Level, e.Lower, e.Upper
+	}
+	if level == nil || low == nil || high == nil {
+		return "none"
+	}
+	return fmt.Sprintf("%s to %s\n(%s)", qa.Fixed(*low, c.Decimals+1), qa.Fixed(*high, c.Decimals+1), qa.Percent(*level, 2))
+}
+
+func criterionBlock(s *sheet, rec qa.Record) {
+	r := rec.Result
+	s.add(wide("Criterion", groupLook, summaryColumns))
+	paragraph(s, sealText(r.Seal), plainLook, summaryLineRoom, 14)
+	paragraph(s, "Digest of the criterion (SHA-256): "+r.Seal.Digest, smallLook, 125, 12.5)
+	paragraph(s, "The margin is the equivalence limit of ASTM E2935. All characteristics asked for equivalence, not lower or not higher must hold.", smallLook, 125, 12.5)
+	seen := map[string]bool{}
+	for _, c := range r.Characteristics {
+		e := c.Equivalence
+		if e == nil || e.Margin.Reason == "" || seen[e.Margin.Reason] {
+			continue
+		}
+		seen[e.Margin.Reason] = true
+		t := "Margin of " + c.Name + ": " + e.Margin.Reason
+		if e.Margin.ApprovedBy != "" {
+			t += "; approved by " + e.Margin.ApprovedBy
+		}
+		paragraph(s, t, smallLook, 125, 12.5)
+	}
+	for _, c := range r.Characteristics {
+		if e := c.Equivalence; e != nil && e.Permits != nil {
+			paragraph(s, fmt.Sprintf("%s: at the worse end of its margin (%s) Ppk would be %s and %s outside the limits, from the reference's mean and spread.",
+				c.Name, qa.MarginText(c), qa.Fixed(e.Permits.Ppk, 2), qa.Percent(e.Permits.Outside, 4)), smallLook, 125, 12.5)
+		}
+	}
+	s.gap()
+}
+
+// sealText says whether the criterion is known to have been fixed before the readings were seen.
+func sealText(seal qa.Seal) string {
+	if seal.Time == "" {
+		return "The criterion was not sealed: this record does not show that it was fixed before the readings were seen."
+	}
+	when := map[string]string{"unopened": "before the readings were opened", "opened": "after the readings had been opened"}[seal.Readings]
+	if when == "" {
+		when = "and it is not known whether the readings had been opened"
+	}
+	t := "The criterion was sealed " + seal.Time + ", " + when + "."
+	if seal.Amended > 0 {
+		t += fmt.Sprintf(" It was amended %d times since.", seal.Amended)
+	}
+	return t
+}
+
+func sourceBlock(s *sheet, rec qa.Record) {
+	s.add(wide("Source files", groupLook, summaryColumns))
+	seen := map[string]bool{}
+	files := append(append([]qa.File{}, rec.Result.Reference.Files...), rec.Result.Candidate.Files...)
+	if rec.PlanFile.Name != "" {
+		files = append(files, rec.PlanFile)
+	}
+	for _, f := range files {
+		if seen[f.Name+f.SHA256] {
+			continue
+		}
+		seen[f.Name+f.SHA256] = true
+		paragraph(s, fmt.Sprintf("%s, %d bytes, SHA-256 %s", f.Name, f.Bytes, f.SHA256), smallLook, 125, 12.5)
+	}
+	s.gap()
+}
+
+// heldBlock says what stands in the ledger and what the checks came upon.
+func heldBlock(s *sheet, rec qa.Record) {
+	s.add(wide("Findings", groupLook, summaryColumns))
+	paragraph(s, ledgerText(rec.Readings.Ledger), plainLook, summaryLineRoom, 14)
+	for _, e := range rec.Readings.Ledger {
+		if e.TakenAs == qa.TakenExcluded {
+			paragraph(s, fmt.Sprintf("Left out: %s %s, found %q: %s", e.Characteristic, e.Source.Place(), e.Source.Text, e.Reason), smallLook, 125, 12.5)
+		}
+	}
+	for _, c := range rec.Result.Characteristics {
+		for _, w := range c.Warnings {
+			paragraph(s, c.Name+": "+w.Text, smallLook, 125, 12.5)
+		}
+	}
+	for _, w := range rec.Result.Warnings {
+		paragraph(s, w.Text, smallLook, 125, 12.5)
+	}
+}
+
+func ledgerText(ledger []qa.Entry) string {
+	if len(ledger) == 0 {
+		return "Every cell of the lots was a plain number."
+	}
+	counts := map[qa.TakenAs]int{}
+	for _, e := range ledger {
+		counts[e.TakenAs]++
+	}
+	var parts []string
+	for _, as := range []qa.TakenAs{qa.TakenNotANumber, qa.TakenExcluded, qa.TakenMissing, qa.TakenNonDetect, qa.TakenNumber, qa.TakenSummary} {
+		word := map[qa.TakenAs]string{
+			qa.TakenNotANumber: "could not be read", qa.TakenExcluded: "left out with a reason", qa.TakenMissing: "missing",
+			qa.TakenNonDetect: "beyond a detection limit", qa.TakenNumber: "converted to a number", qa.TakenSummary: "in summary rows, not used",
+		}[as]
+		if n := counts[as]; n > 0 {
+			parts = append(parts, fmt.Sprintf("%d %s", n, word))
+		}
+	}
+	return "Cells in the ledger: " + strings.Join(parts, ", ") + "."
+}
+
+func signatureBlock(s *sheet, rec qa.Record) {
+	s.add(wide("Signatures required for a complete record", groupLook, summaryColumns))
+	s.add(text("Meaning", headLook), text("Name", headLook), wide("Title, organization", headLook, 2), wide("Signed at (local time)", headLook, 2), wide("Certificate, SHA-256", headLook, 2))
+	printed := false
+	for _, q := range rec.Plan.RequiredMeanings() {
+		if g := rec.Signer; g != nil && !printed && g.Meaning == q.Meaning {
+			signerRow(s, *g)
+			printed = true
+			continue
+		}
+		s.addTall(24, text(q.Meaning, signLook), text(orWord(q.Name, "to be signed"), signLook), wide(q.Title, signLook, 2), wide("see the signatures of this file", signLook, 2), wide("", signLook, 2))
+	}
+	if g := rec.Signer; g != nil && !printed {
+		signerRow(s, *g)
+	}
+	if g := rec.Signer; g != nil && g.Reason != "" {
+		paragraph(s, "Reason of the first signature: "+g.Reason, smallLook, 125, 12.5)
+	}
+	if g := rec.Signer; g != nil && g.Disposition != "" {
+		paragraph(s, "Disposition stated with it by the signer: "+g.Disposition, smallLook, 125, 12.5)
+	}
+	v := rec.Result.Software
+	paragraph(s, fmt.Sprintf("Made by Lotpair %s (%s), calculation %d, %s/%s.", v.Version, orWord(v.Revision, "no revision"), v.Calculation, v.OS, v.Arch), smallLook, 125, 12.5)
+}
+
+func signerRow(s *sheet, g qa.Signer) {
+	who := g.Title
+	if g.Organization != "" {
+		who = strings.TrimPrefix(who+", "+g.Organization, ", ")
+	}
+	s.addTall(38, text(g.Meaning, signLook), text(g.Name, signLook), wide(who, signLook, 2),
+		wide(localTime(g.Time), signLook, 2), wide(fingerprintLines(g.Fingerprint), signLook, 2))
+}
+
+// fingerprintLines breaks a digest into groups that can be read aloud.
+func fingerprintLines(s string) string {
+	var b strings.Builder
+	for i := 0; i < len(s); i += 8 {
+		if i > 0 {
+			b.WriteString(map[bool]string{true: "\n", false: " "}[i%24 == 0])
+		}
+		b.WriteString(s[i:min(i+8, len(s))])
+	}
+	return b.String()
+}
+
+func orWord(s, word string) string {
+	if s == "" {
+		return word
+	}
+	return s
+}
+
+// localTime writes a time as the person saw it, with its offset.
+func localTime(t time.Time) string {
+	if t.IsZero() {
+		return ""
+	}
+	return t.Format("2006-01-02 15:04:05 -07:00")
+}

@@ -1,0 +1,183 @@
+package exports
+
+import (
+	"crypto/sha256"
+	"crypto/x509"
+	"encoding/hex"
+	"fmt"
+	"time"
+
+	"lotpair/exports/opcsign"
+	"lotpair/qa"
+)
+
+// State is what verification found of a record, the first that holds in this order (contract: console).
+type State string
+
+// The states of a record.
+const (
+	Unreadable State = "unreadable" // no package, or no record in it
+	Changed    State = "changed"    // something is not as it was signed
+	Unsigned   State = "unsigned"
+	Disagrees  State = "disagrees"  // the recomputation or the sheets differ from the record
+	Incomplete State = "incomplete" // a required meaning is missing, or two meanings were signed with one key
+	Intact     State = "intact"
+)
+
+// SignatureView is one signature as verification reports it.
+type SignatureView struct {
+	Signer       string `json:"signer"`
+	Title        string `json:"title,omitempty"`
+	Organization string `json:"organization,omitempty"`
+	Meaning      string `json:"meaning"`
+	Reason       string `json:"reason,omitempty"`
+	Disposition  string `json:"disposition,omitempty"`
+	Time         string `json:"time"` // local, with offset
+	Valid        bool   `json:"valid"`
+	Trusted      *bool  `json:"trusted"` // nil where no trusted certificates were given
+	CoversAll    bool   `json:"covers_all"`
+	Fingerprint  string `json:"fingerprint"` // SHA-256 of the certificate
+}
+
+// Verification is what was checked of a record and what was found (contract: lotpair.verify/1).
+type Verification struct {
+	State           State
+	Signatures      []SignatureView
+	MissingMeanings []string
+	UnsignedParts   []string
+	Reasons         []opcsign.Reason
+	Agrees          bool     // the recomputation and the sheets agree with the record
+	Differences     []string // where they do not
+	Record          *qa.Record
+}
+
+// Verify checks every signature and part of a workbook, recomputes the result from the readings embedded in it and lays the
+// sheets that the record must give beside those the file holds. roots are the trusted certificates; nil judges no trust.
+func Verify(pkg []byte, roots []*x509.Certificate) Verification {
+	v := Verification{State: Intact, Signatures: []SignatureView{}, MissingMeanings: []string{}, UnsignedParts: []string{}, Differences: []string{}}
+	report, err := opcsign.Verify(pkg, roots)
+	if err != nil {
+		v.State = Unreadable
+		v.reason("not-a-package", "", err.Error())
+		return v
+	}
+	v.signatures(report)
+	rec, err := ReadRecord(pkg)
+	if err != nil {
+		// Where signatures are broken besides, that is the nearer fault.
+		v.reason("no-record", recordPart, err.Error())
+		v.State = Unreadable
+		if len(report.Signatures) > 0 && !report.Sound() {
+			v.State = Changed
+		}
+		return v
+	}
+	v.Record = &rec
+	v.recompute(pkg, rec)
+	v.meanings(report, rec)
+	switch {
+	case len(report.Reasons) > 0 || len(report.Signatures) > 0 && !report.Sound():
+		v.State = Changed
+	case len(report.Signatures) == 0:
+		v.State = Unsigned
+	case !v.Agrees:
+		v.State = Disagrees
+	case len(v.MissingMeanings) > 0 || v.has("same-signer"):
+		v.State = Incomplete
+	}
+	return v
+}
+
+func (v *Verification) reason(code, part, text string) {
+	v.Reasons = append(v.Reasons, opcsign.Reason{Code: code, Part: part, Text: text})
+}
+
+func (v *Verification) has(code string) bool {
+	for _, r := range v.Reasons {
+		if r.Code == code {
+			return true
+		}
+	}
+	return false
+}
+
+func (v *Verification) signatures(report opcsign.Report) {
+	v.Reasons = append(v.Reasons, report.Reasons...)
+	v.UnsignedParts = append(v.UnsignedParts, report.UnsignedParts...)
+	for _, s := range report.Signatures {
+		v.Reasons = append(v.Reasons, s.Reasons...)
+		view := SignatureView{
+			Signer: s.Statement.Name, Title: s.Statement.Title, Organization: s.Statement.Organization, Meaning: s.Statement.Meaning,
+			Reason: s.Statement.Reason, Disposition: s.Statement.Disposition, Valid: s.Valid, Trusted: s.Trusted, CoversAll: s.CoversAll,
+		}
+		if !s.Statement.Time.IsZero() {
+			view.Time = s.Statement.Time.Format(time.RFC3339)
+		}
+		if s.Certificate != nil {
+			sum := sha256.Sum256(s.Certificate.Raw)
+			view.Fingerprint = hex.EncodeToString(sum[:])
+			if view.Signer == "" {
+				view.Signer = s.Certificate.Subject.CommonName
+			}
+		}
+		v.Signatures = append(v.Signatures, view)
+	}
+}
+
+// recompute runs the comparison again and compares it with the record and the record with the sheets.
+func (v *Verification) recompute(pkg []byte, rec qa.Record) {
+	v.Agrees = true
+	again, err := rec.Recompute()
+	if err != nil {
+		v.disagree("recomputation", "", fmt.Sprintf("the comparison cannot be made again: %v", err))
+		return
+	}
+	if d := differences(rec.Result, again, largest(rec.Readings)); len(d) > 0 {
+		if rec.Result.Software.Calculation != qa.Calculation {
+			v.reason("calculation-version", recordPart, fmt.Sprintf("the record was computed by calculation %d, this program is calculation %d, and they differ in %d values; use the version that wrote it",
+				rec.Result.Software.Calculation, qa.Calculation, len(d)))
+		} else {
+			for _, t := range d {
+				v.disagree("recomputation", recordPart, t)
+			}
+		}
+	}
+	if i := rec.Trail.Broken(); i >= 0 {
+		v.disagree("trail-broken", recordPart, fmt.Sprintf("entry %d of the trail does not hold the digest of the one before it", i+1))
+	}
+	if rec.Result.Seal.Digest != rec.Plan.SealDigest() {
+		v.disagree("seal-differs", recordPart, "the digest of the criterion is not that of the plan in the record")
+	}
+	for _, t := range sheetDifferences(pkg, rec) {
+		v.disagree("sheets-differ", "", t)
+	}
+}
+
+func (v *Verification) disagree(code, part, text string) {
+	v.Agrees = false
+	v.Differences = append(v.Differences, text)
+	if !v.has(code) {
+		v.reason(code, part, text)
+	}
+}
+
+// meanings finds the required meanings that no valid signature has, and meanings that share a key.
+func (v *Verification) meanings(report opcsign.Report, rec qa.Record) {
+	signed, keys := map[string]bool{}, map[string]string{}
+	for _, s := range report.Signatures {
+		if !s.Valid || s.Certificate == nil {
+			continue
+		}
+		signed[s.Statement.Meaning] = true
+		key := string(s.Certificate.RawSubjectPublicKeyInfo)
+		if before, ok := keys[key]; ok && before != s.Statement.Meaning {
+			v.reason("same-signer", s.Part, fmt.Sprintf("%s and %s were signed with the same key; a complete record needs different persons", before, s.Statement.Meaning))
+		}
+		keys[key] = s.Statement.Meaning
+	}
+	for _, q := range rec.Plan.RequiredMeanings() {
+		if !signed[q.Meaning] {
+			v.MissingMeanings = append(v.MissingMeanings, q.Meaning)
+		}
+	}
+}
