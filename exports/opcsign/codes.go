@@ -26,6 +26,7 @@ const (
 	codeOrigin           = "origin"                    // no, several or a misplaced or filled signature origin
 	codeStray            = "signature-stray"           // something in _xmlsignatures that is no signature of the origin
 	codeNoSignature      = "signature-missing"         // a signature origin without any signature
+	codeTarget           = "relationship-target"       // a link that common verifiers cannot digest; only when signing
 
 	// The form of a signature.
 	codeXML          = "xml"                  // not well-formed, or not UTF-8

@@ -33,6 +33,9 @@ func Sign(pkg []byte, key crypto.Signer, chain []*x509.Certificate, st Statement
 		if len(c.reasons) > 0 {
 			return nil, refusal(Report{Reasons: c.reasons})
 		}
+		if err := c.checkTargets(); err != nil {
+			return nil, err
+		}
 		if c, err = prepare(pkg, c); err != nil {
 			return nil, fmt.Errorf("signing: %w", err)
 		}
@@ -105,6 +108,20 @@ func checkStatement(leaf *x509.Certificate, st Statement) error {
 		for _, r := range s {
 			if !isChar(r) || r == '\r' || r == '\uFFFD' {
 				return fmt.Errorf("signing: found the character %U in %q, want text; do remove it", r, clip(s, 40))
+			}
+		}
+	}
+	return nil
+}
+
+// checkTargets refuses relationships that common verifiers cannot digest: xmlsec1 1.2.37, and with it LibreOffice 7.4,
+// writes their attributes without escaping, and then calls every signature of the package invalid.
+func (c *container) checkTargets() error {
+	for _, p := range c.parts() {
+		for _, r := range c.rels[p] {
+			if strings.ContainsAny(r.id+r.typ+r.target, "&<>\"") {
+				return fmt.Errorf("signing: %w", Reason{Code: codeTarget, Part: p, Text: fmt.Sprintf(
+					"found the link %q, want one without &, <, > and quotes, for which common verifiers would call the signature invalid; do write the link as text", clip(r.target, 120))})
 			}
 		}
 	}
