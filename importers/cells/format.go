@@ -1,0 +1,123 @@
+package cells
+
+import (
+	"encoding/xml"
+	"strconv"
+	"strings"
+)
+
+// builtin are the number formats that have a number and no code in the file (ISO/IEC 29500-1, 18.8.30); the codes 27 to 36
+// and 50 to 58 are dates of East Asian locales.
+var builtin = map[int]string{
+	1: "0", 2: "0.00", 3: "#,##0", 4: "#,##0.00", 9: "0%", 10: "0.00%", 11: "0.00E+00", 12: "# ?/?", 13: "# ??/??",
+	14: "mm-dd-yy", 15: "d-mmm-yy", 16: "d-mmm", 17: "mmm-yy", 18: "h:mm AM/PM", 19: "h:mm:ss AM/PM", 20: "h:mm", 21: "h:mm:ss",
+	22: "m/d/yy h:mm", 37: "#,##0 ;(#,##0)", 38: "#,##0 ;[Red](#,##0)", 39: "#,##0.00;(#,##0.00)", 40: "#,##0.00;[Red](#,##0.00)",
+	45: "mm:ss", 46: "[h]:mm:ss", 47: "mmss.0", 48: "##0.0E+0", 49: "@",
+}
+
+// style is what a cell's style says of its value.
+type style struct {
+	code string
+	date bool
+}
+
+// readStyles gives the style of each index into cellXfs.
+func readStyles(p *pack, name string) ([]style, error) {
+	r, err := p.open(name)
+	if err != nil || r == nil {
+		return nil, err
+	}
+	defer func() { _ = r.Close() }()
+	codes := map[int]string{}
+	var styles []style
+	w := newWalker(name, r)
+	err = w.each(func(e xml.StartElement) error {
+		switch e.Name.Local {
+		case "numFmt":
+			if id, err := strconv.Atoi(attr(e, "numFmtId")); err == nil && !w.inside("dxfs") {
+				codes[id] = attr(e, "formatCode")
+			}
+		case "xf":
+			if !w.inside("cellXfs") {
+				return nil
+			}
+			if len(styles) == 1<<17 {
+				return damaged(name, "more than 131072 cell styles")
+			}
+			id, err := strconv.Atoi(attr(e, "numFmtId"))
+			if err != nil && attr(e, "numFmtId") != "" {
+				return damaged(name, "the number format %q", attr(e, "numFmtId"))
+			}
+			styles = append(styles, styleOf(id, codes))
+		}
+		return nil
+	})
+	return styles, err
+}
+
+func (w *walker) inside(element string) bool {
+	for _, s := range w.stack {
+		if s == element {
+			return true
+		}
+	}
+	return false
+}
+
+func styleOf(id int, codes map[int]string) style {
+	code, custom := codes[id]
+	if !custom {
+		code = builtin[id]
+		if id >= 27 && id <= 36 || id >= 50 && id <= 58 {
+			return style{code: "date " + strconv.Itoa(id), date: true}
+		}
+	}
+	if strings.EqualFold(code, "general") {
+		code = ""
+	}
+	return style{code: code, date: isDate(code)}
+}
+
+// isDate says whether a format's code shows a date or a time: one of y m d h s outside quotes, escapes, colours and conditions.
+func isDate(code string) bool {
+	return strings.ContainsAny(strings.ToLower(bare(code)), "ymdhs")
+}
+
+// Percent says whether a number format shows a hundredfold.
+func Percent(code string) bool { return strings.Contains(bare(code), "%") }
+
+// bare is a format's code without quoted and escaped text, brackets (but those of elapsed time) and the general format.
+func bare(code string) string {
+	var b strings.Builder
+	for i := 0; i < len(code); i++ {
+		switch c := code[i]; c {
+		case '"':
+			if end := strings.IndexByte(code[i+1:], '"'); end >= 0 {
+				i += end + 1
+			} else {
+				i = len(code)
+			}
+		case '\\', '_', '*':
+			i++
+		case '[':
+			end := strings.IndexByte(code[i:], ']')
+			if end < 0 {
+				i = len(code)
+				break
+			}
+			if in := strings.ToLower(code[i+1 : i+end]); in != "" && strings.Trim(in, in[:1]) == "" && strings.ContainsAny(in[:1], "hms") {
+				b.WriteString(in)
+			}
+			i += end
+		default:
+			b.WriteByte(c)
+		}
+	}
+	s := b.String()
+	for _, general := range []string{"general", "standard"} {
+		if i := strings.Index(strings.ToLower(s), general); i >= 0 && len(strings.ToLower(s)) == len(s) {
+			s = s[:i] + s[i+len(general):]
+		}
+	}
+	return s
+}
