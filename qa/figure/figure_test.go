@@ -17,8 +17,10 @@ func ptr(v float64) *float64 { return &v }
 func lot(name string, values []float64, leftOut map[int]string) qa.Lot {
 	s := qa.Series{Characteristic: "Wall", Rows: len(values)}
 	for i, v := range values {
-		s.Readings = append(s.Readings, qa.Reading{Value: v, Decimals: 3, LeftOut: leftOut[i],
-			Source: qa.Source{File: "wall.csv", Cell: fmt.Sprintf("D%d", i+2), Text: fmt.Sprint(v)}})
+		s.Readings = append(s.Readings, qa.Reading{
+			Value: v, Decimals: 3, LeftOut: leftOut[i],
+			Source: qa.Source{File: "wall.csv", Cell: fmt.Sprintf("D%d", i+2), Text: fmt.Sprint(v)},
+		})
 	}
 	return qa.Lot{Name: name, Rows: len(values), Series: []qa.Series{s}}
 }
@@ -63,7 +65,8 @@ func near(t *testing.T, what string, got, want float64) {
 
 func equivalence(o qa.Objective, lower, upper, low, high, estimate *float64) qa.Comparison {
 	return qa.Comparison{Name: "Wall", Objective: o, Equivalence: &qa.EquivalenceResult{
-		MarginLower: lower, MarginUpper: upper, Lower: low, Upper: high, Estimate: estimate}}
+		MarginLower: lower, MarginUpper: upper, Lower: low, Upper: high, Estimate: estimate,
+	}}
 }
 
 func TestSpineStandsOnItsOwnMargin(t *testing.T) {
@@ -156,8 +159,10 @@ func TestFacingCountsEveryReading(t *testing.T) {
 	cand := lot("C-022", spread(38, 3.942, 0.03), nil)
 	c, r := compared(t, qa.Characteristic{Unit: "mm", Lower: ptr(3.9), Upper: ptr(4.1), Margin: &qa.Margin{Absolute: ptr(0.02)}}, ref, cand)
 	f := figure.Facing(c, r)
-	for name, want := range map[string]int{"reference reading": 39, "reference left out": 1, "candidate reading": 38, "candidate left out": 0,
-		"upper limit": 1, "lower limit": 1, "margin": 1, "reference mean": 1, "candidate mean": 1} {
+	for name, want := range map[string]int{
+		"reference reading": 39, "reference left out": 1, "candidate reading": 38, "candidate left out": 0,
+		"upper limit": 1, "lower limit": 1, "margin": 1, "reference mean": 1, "candidate mean": 1,
+	} {
 		if got := len(f.All(name)); got != want {
 			t.Errorf("%s: got %d, want %d", name, got, want)
 		}

@@ -45,8 +45,10 @@ func example(t testing.TB) (qa.Comparison, qa.Readings) {
 
 func TestSVG(t *testing.T) {
 	c, r := example(t)
-	oneSided := qa.Comparison{Name: "Run-out <max>", Objective: qa.NotHigher, Verdict: qa.Undecided,
-		Equivalence: &qa.EquivalenceResult{MarginUpper: ptr(0.008), Lower: ptr(0.003), Upper: ptr(0.5), Estimate: ptr(0.02)}}
+	oneSided := qa.Comparison{
+		Name: "Run-out <max>", Objective: qa.NotHigher, Verdict: qa.Undecided,
+		Equivalence: &qa.EquivalenceResult{MarginUpper: ptr(0.008), Lower: ptr(0.003), Upper: ptr(0.5), Estimate: ptr(0.02)},
+	}
 	for name, f := range map[string]figure.Figure{"facing": figure.Facing(c, r), "spine": figure.Spine(c), "one-sided": figure.Spine(oneSided)} {
 		got, path := draw.SVG(f), filepath.Join("testdata", name+".svg")
 		if *update {
@@ -123,10 +125,17 @@ func TestEveryRoleIsSeenOnPaper(t *testing.T) {
 			on, of color.NRGBA
 			want   float64
 		}{
-			{"text", p.Paper, p.Text, 7}, {"muted", p.Paper, p.MutedText, 4.5}, {"reference", p.Paper, p.ReferenceText, 4.5}, {"candidate", p.Paper, p.CandidateText, 4.5},
-			{"text on the margin", p.Margin, p.Text, 7}, {"muted on the margin", p.Margin, p.MutedText, 4.5},
-			{"reference on the margin", p.Margin, p.ReferenceText, 4.5}, {"candidate on the margin", p.Margin, p.CandidateText, 4.5},
-			{"reference mark", p.Margin, p.Reference, 3}, {"candidate mark", p.Margin, p.Candidate, 3}, {"post", p.Paper, p.Muted, 3},
+			{"text", p.Paper, p.Text, 7},
+			{"muted", p.Paper, p.MutedText, 4.5},
+			{"reference", p.Paper, p.ReferenceText, 4.5},
+			{"candidate", p.Paper, p.CandidateText, 4.5},
+			{"text on the margin", p.Margin, p.Text, 7},
+			{"muted on the margin", p.Margin, p.MutedText, 4.5},
+			{"reference on the margin", p.Margin, p.ReferenceText, 4.5},
+			{"candidate on the margin", p.Margin, p.CandidateText, 4.5},
+			{"reference mark", p.Margin, p.Reference, 3},
+			{"candidate mark", p.Margin, p.Candidate, 3},
+			{"post", p.Paper, p.Muted, 3},
 		} {
 			if got := contrast(c.on, c.of); got < c.want {
 				t.Errorf("%s, %s: got contrast %.2f, want at least %v", name, c.role, got, c.want)

@@ -1,0 +1,97 @@
+package desk
+
+import (
+	"fmt"
+	"strconv"
+
+	"lotpair/qa"
+)
+
+// Opened lays a comparison made from a plan file on the desk. Whatever lay there is gone: every act was kept in its record.
+func (s State) Opened(path string, rec qa.Record) State {
+	return State{Open: true, Compared: true, Path: path, Record: rec, Acts: s.Acts}.did("opened the plan " + path)
+}
+
+// OpenedWorkbook lays the record of a workbook on the desk, with what verification found of the file.
+func (s State) OpenedWorkbook(rec qa.Record, w Workbook) State {
+	w.Opened = true
+	return State{Open: true, Compared: true, Path: w.Path, Record: rec, Workbook: w, Acts: s.Acts}.did("opened the workbook " + w.Path)
+}
+
+// WithSelected looks at another characteristic. A place that does not exist changes nothing.
+func (s State) WithSelected(i int) State {
+	if !s.Compared || i < 0 || i >= len(s.Record.Result.Characteristics) || i == s.Selected {
+		return s
+	}
+	s.Selected = i
+	return s.did("selected " + strconv.Itoa(i+1))
+}
+
+// WithSortedBy puts the lines of the spine in another order.
+func (s State) WithSortedBy(by Sorting) State {
+	if by == s.Sorted {
+		return s
+	}
+	s.Sorted = by
+	return s.did("sorted by " + by.String())
+}
+
+// Exported says that the record was written to a workbook, unsigned.
+func (s State) Exported(path string) State {
+	s.Workbook = Workbook{Path: path}
+	s.Problem, s.Job = Problem{}, Job{}
+	s.Said = "Exported to " + path + ", unsigned."
+	return s.did("exported " + path)
+}
+
+// Signed says that the workbook was signed; rec and w are read back from the file that was written.
+func (s State) Signed(rec qa.Record, w Workbook) State {
+	w.Opened = s.Workbook.Opened
+	s.Record, s.Workbook = rec, w
+	s.Problem, s.Job = Problem{}, Job{}
+	meaning := ""
+	if n := len(w.Signatures); n > 0 {
+		meaning = w.Signatures[n-1].Meaning
+	}
+	s.Said = "Signed as " + meaning + ", kept in " + w.Path + "."
+	return s.did("signed as " + meaning + " in " + w.Path)
+}
+
+// Compare runs the comparison again after a reading was left out or put back. It is one more attempt.
+func (s State) Compare() (State, error) {
+	r := s.Record.Result
+	run := qa.Run{Software: r.Software, Seal: r.Seal, Attempts: r.Attempts}
+	run.Attempts.Known++
+	res, err := qa.Compare(s.Record.Plan, s.Record.Readings, run)
+	if err != nil {
+		return s, fmt.Errorf("comparison: %w", err)
+	}
+	s.Record.Result, s.Compared = res, true
+	s.Selected = max(0, min(s.Selected, len(res.Characteristics)-1))
+	return s.did("compared"), nil
+}
+
+// Working says what runs off the window's thread, and how much of it is done (below 0 where that is not known).
+func (s State) Working(name string, share float64) State {
+	s.Job = Job{Name: name, Share: share}
+	return s
+}
+
+// Rested says that nothing runs any more, because it was done or given up.
+func (s State) Rested() State {
+	s.Job = Job{}
+	return s
+}
+
+// Failed says what went wrong and where; nothing else on the desk changes.
+func (s State) Failed(place string, err error) State {
+	s.Job = Job{}
+	s.Problem = Problem{Place: place, Text: err.Error()}
+	return s.did("failed: " + place)
+}
+
+// Read says that the problem was read.
+func (s State) Read() State {
+	s.Problem = Problem{}
+	return s
+}

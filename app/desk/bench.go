@@ -1,0 +1,34 @@
+package desk
+
+import "lotpair/qa"
+
+// BenchView is what the bench says of the characteristic looked at. Its picture is figure.Facing of the same comparison.
+type BenchView struct {
+	Name       string
+	Views      []string // what can be looked at
+	Headline   string   // the verdict
+	Paragraphs []string // what was found, then what to look at
+	Caution    string
+}
+
+// Bench says what was found for the characteristic looked at.
+func (s State) Bench() BenchView {
+	v := BenchView{Name: s.name(), Views: []string{"Spread"}}
+	c, ok := s.Characteristic()
+	if !ok {
+		v.Headline = "Not compared."
+		return v
+	}
+	said := qa.Sentences(c)
+	if len(said) > 0 {
+		v.Headline, v.Paragraphs = said[0], said[1:]
+	}
+	for _, w := range c.Warnings {
+		if w.Side == "" {
+			v.Paragraphs = append(v.Paragraphs, w.Text)
+		}
+	}
+	cautions := qa.Cautions()
+	v.Caution = cautions[5] + " " + cautions[0]
+	return v
+}

@@ -1,0 +1,143 @@
+package desk
+
+import (
+	"strings"
+
+	"lotpair/qa"
+)
+
+// FootView is what the foot says and offers.
+type FootView struct {
+	Next       string // the one next thing to do
+	Said       string // what was done last, or who has signed
+	Export     string // the label of the button; "" where there is nothing to export
+	Sign       string // the label of the button; "" where there is nothing to sign
+	Meaning    string // what would be signed
+	Signatures string // the label of the button that lists them; "" where there are none and nothing is wrong
+	Compare    string // the label of the button that compares again
+}
+
+// Foot says the one next thing to do.
+func (s State) Foot() FootView {
+	if !s.Open {
+		return FootView{Next: "Next: open a plan or a workbook."}
+	}
+	if !s.Compared {
+		return FootView{Next: "Next: compare again.", Compare: "Compare"}
+	}
+	v := FootView{Said: s.Said}
+	w := s.Workbook
+	if !w.Opened && len(w.Signatures) == 0 {
+		v.Export = "Export workbook"
+	}
+	if n := len(w.Signatures); n > 0 {
+		v.Signatures = qa.Count(n, "signature", "signatures")
+		if v.Said == "" {
+			v.Said = signedBy(w.Signatures)
+		}
+	} else if len(w.Reasons) > 0 {
+		v.Signatures = "What is wrong"
+	}
+	if m := s.nextMeaning(); m != "" {
+		v.Meaning, v.Sign = m, "Sign as "+m
+	}
+	v.Next = s.next(v)
+	return v
+}
+
+// next is the sentence of the foot.
+func (s State) next(v FootView) string {
+	w := s.Workbook
+	switch w.State {
+	case "changed", "disagrees", "unreadable":
+		return "Next: find the original file; this one is not as it was signed."
+	}
+	look := ""
+	if n := s.toLookAt(); n > 0 && len(w.Signatures) == 0 {
+		look = "look at " + qa.Count(n, "finding", "findings") + ", then "
+	}
+	switch {
+	case v.Sign == "":
+		return "Nothing is left to do: the record is complete."
+	case len(w.Signatures) > 0:
+		return "Next: sign as " + v.Meaning + "."
+	case v.Export != "" && w.Path == "":
+		return "Next: " + look + "export or sign."
+	}
+	return "Next: " + look + "sign as " + v.Meaning + "."
+}
+
+// toLookAt counts the warnings of all characteristics and of the reading of the files.
+func (s State) toLookAt() int {
+	n := len(s.Record.Result.Warnings)
+	for _, c := range s.Record.Result.Characteristics {
+		n += len(c.Warnings)
+	}
+	return n
+}
+
+// nextMeaning is the first required meaning that no valid signature has; "" where none is missing or the file is unsound.
+func (s State) nextMeaning() string {
+	switch s.Workbook.State {
+	case "changed", "disagrees", "unreadable":
+		return ""
+	}
+	has := map[string]bool{}
+	for _, g := range s.Workbook.Signatures {
+		if g.Valid {
+			has[g.Meaning] = true
+		}
+	}
+	for _, r := range s.Record.Plan.RequiredMeanings() {
+		if !has[r.Meaning] {
+			return r.Meaning
+		}
+	}
+	return ""
+}
+
+func signedBy(all []Signature) string {
+	var out []string
+	for _, g := range all {
+		t := g.Meaning + " by " + g.Signer + ", " + timeText(g.Time)
+		if !g.Valid {
+			t += ", not valid"
+		}
+		out = append(out, t)
+	}
+	return "Signed: " + strings.Join(out, "; ") + "."
+}
+
+// Signatures lists the signatures and what is wrong, a paragraph each.
+func (s State) Signatures() []string {
+	w := s.Workbook
+	var out []string
+	if w.State != "" {
+		out = append(out, "State: "+StateText(w)+".")
+	}
+	for _, g := range w.Signatures {
+		who := g.Signer
+		for _, more := range []string{g.Title, g.Organization} {
+			if more != "" {
+				who += ", " + more
+			}
+		}
+		t := "Signed as " + g.Meaning + " by " + who + ", " + timeText(g.Time) + "."
+		if g.Reason != "" {
+			t += " Reason: " + g.Reason + "."
+		}
+		switch {
+		case !g.Valid:
+			t += " Not valid."
+		case !g.CoversAll:
+			t += " Valid, but does not cover everything."
+		default:
+			t += " Valid; covers everything."
+		}
+		out = append(out, t+" Certificate sha-256 "+g.Fingerprint+".")
+	}
+	for _, m := range w.Missing {
+		out = append(out, "Missing: signed as "+m+".")
+	}
+	return append(out, w.Reasons...)
+}

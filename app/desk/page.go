@@ -1,0 +1,87 @@
+package desk
+
+import (
+	"strings"
+
+	"lotpair/qa"
+)
+
+// PageView is what one page says: the left one of the reference, the right one of the candidate.
+type PageView struct {
+	Side          qa.Side
+	Heading       string
+	Lot, Source   string
+	File, Digest  string
+	Parts         string
+	FindingsTitle string
+	Findings      []string
+	ReadingsTitle string
+	Readings      []ReadingView
+}
+
+// ReadingView is one reading on a page.
+type ReadingView struct {
+	Source qa.Source
+	Cell   string // without the sheet, which stands above
+	Value  string
+	Reason string // why it is left out, "" for one in use
+}
+
+// Page says what is known of one lot.
+func (s State) Page(side qa.Side) PageView {
+	v := PageView{Side: side, Heading: strings.ToUpper(string(side))}
+	if !s.Open {
+		return v
+	}
+	l := s.Record.Readings.Reference
+	if side == qa.Candidate {
+		l = s.Record.Readings.Candidate
+	}
+	v.Lot, v.Source = l.Name, l.Source
+	if v.Lot == "" {
+		v.Lot = "lot not named"
+	}
+	v.File, v.Digest = fileText(l)
+	v.Parts = qa.PartsText(s.Record.Readings, side)
+	name := s.name()
+	v.FindingsTitle, v.ReadingsTitle = "Findings, "+name, "Readings"
+	if c, ok := s.Characteristic(); ok {
+		v.Findings = qa.Findings(c, side)
+	}
+	if len(v.Findings) == 0 {
+		v.Findings = []string{"nothing to look at"}
+	}
+	for _, r := range l.Of(name).Readings {
+		value := r.Source.Text
+		if value == "" {
+			value = qa.Fixed(r.Value, r.Decimals)
+		}
+		v.Readings = append(v.Readings, ReadingView{Source: r.Source, Cell: r.Source.Cell, Value: value, Reason: r.LeftOut})
+	}
+	return v
+}
+
+// name is the characteristic looked at, also while there is no result.
+func (s State) name() string {
+	if cs := s.Record.Readings.Characteristics; s.Selected >= 0 && s.Selected < len(cs) {
+		return cs[s.Selected].Name
+	}
+	return ""
+}
+
+// fileText names the files of a lot, the sheet where there is one, and the first file's digest.
+func fileText(l qa.Lot) (file, digest string) {
+	if len(l.Files) == 0 {
+		return "no file", ""
+	}
+	file, digest = base(l.Files[0].Name), "sha-256 "+shortDigest(l.Files[0].SHA256)
+	if n := len(l.Files) - 1; n > 0 {
+		return file + " and " + qa.Count(n, "file", "files") + " more", digest
+	}
+	for _, s := range l.Series {
+		if len(s.Readings) > 0 && s.Readings[0].Source.Sheet != "" {
+			return file + ", sheet " + s.Readings[0].Source.Sheet, digest
+		}
+	}
+	return file, digest
+}

@@ -1,0 +1,72 @@
+// Package desk is what the desktop knows: one State of plain values, a method an act of the user, and the views that say
+// what the screens show as text. No window and no file: whatever was read or written comes in as an argument, so that an
+// afternoon's acts can be replayed in a test.
+package desk
+
+import (
+	"lotpair/qa"
+)
+
+// State is everything on the desk. It is passed and returned by value; what it points to is never written in place.
+type State struct {
+	Open     bool      // whether a comparison lies on the desk
+	Path     string    // the file that was opened, as the user named it
+	Record   qa.Record // plan, readings, result and trail; the result is empty while Compared is false
+	Compared bool
+	Workbook Workbook // the signed or exported file, empty while there is none
+	Selected int      // the characteristic looked at: its place in the result
+	Sorted   Sorting
+	Job      Job     // what is being done, empty while nothing is
+	Problem  Problem // what went wrong last, empty while nothing did
+	Said     string  // what was done last, for the foot
+	Acts     []string
+}
+
+// Workbook is the file that holds the record, and what verification found of it.
+type Workbook struct {
+	Path       string
+	Opened     bool   // the record came from this file: nothing in it is changed here
+	State      string // "intact", "changed", …; "" for a workbook just exported
+	Trusted    bool   // whether who signed was established with trusted certificates
+	Signatures []Signature
+	Missing    []string // required meanings that nobody has signed
+	Reasons    []string // what is wrong, a sentence each
+}
+
+// Signature is one signature of a workbook as verification reports it.
+type Signature struct {
+	Signer, Title, Organization string
+	Meaning, Reason             string
+	Time                        string
+	Valid, CoversAll            bool
+	Fingerprint                 string
+}
+
+// Job is work that runs off the window's thread.
+type Job struct {
+	Name  string
+	Share float64 // done, 0 to 1; below 0 where it is not known
+}
+
+// Problem is an error where it happened.
+type Problem struct {
+	Place string // what was being done
+	Text  string // what was found, wanted, and what to do
+}
+
+// did is the state with one more act in its log.
+func (s State) did(act string) State {
+	s.Acts = append(append([]string{}, s.Acts...), act)
+	return s
+}
+
+// Characteristic is the comparison that is looked at; false where there is none.
+func (s State) Characteristic() (qa.Comparison, bool) {
+	if !s.Compared || s.Selected < 0 || s.Selected >= len(s.Record.Result.Characteristics) {
+		return qa.Comparison{}, false
+	}
+	return s.Record.Result.Characteristics[s.Selected], true
+}
+
+// Closed says whether the record may no longer be changed here: it came from a workbook, or was signed.
+func (s State) Closed() bool { return s.Workbook.Opened || len(s.Workbook.Signatures) > 0 }
