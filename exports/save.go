@@ -15,11 +15,15 @@ import (
 type ExistsError struct {
 	Path   string
 	Signed bool
+	Kept   bool // a file that is never overwritten, signed or not
 }
 
 func (e *ExistsError) Error() string {
 	if e.Signed {
 		return fmt.Sprintf("%s: found a file that holds a signature, want another name; signed files are never overwritten", e.Path)
+	}
+	if e.Kept {
+		return fmt.Sprintf("%s: found an existing file, want another name; an identity is never overwritten", e.Path)
 	}
 	return fmt.Sprintf("%s: found an existing file, want another name; use --force to overwrite it", e.Path)
 }
@@ -84,6 +88,29 @@ func write(path string, data []byte) (err error) {
 	}
 	if !bytes.Equal(back, data) {
 		return fmt.Errorf("%s: found other bytes than were written, want the same; check the disk", path)
+	}
+	return nil
+}
+
+// SaveSecret writes a new file that only its owner may read; an existing one is never overwritten.
+func SaveSecret(path string, data []byte) error {
+	f, err := os.OpenFile(path, os.O_WRONLY|os.O_CREATE|os.O_EXCL, 0o600)
+	if errors.Is(err, fs.ErrExist) {
+		return &ExistsError{Path: path, Kept: true}
+	}
+	if err != nil {
+		return fmt.Errorf("%s: %w", path, err)
+	}
+	_, err = f.Write(data)
+	if e := f.Sync(); err == nil {
+		err = e
+	}
+	if e := f.Close(); err == nil {
+		err = e
+	}
+	if err != nil {
+		_ = os.Remove(path)
+		return fmt.Errorf("%s: %w", path, err)
 	}
 	return nil
 }

@@ -7,6 +7,7 @@ import (
 	"fmt"
 	"time"
 
+	"lotpair/exports/identity"
 	"lotpair/exports/opcsign"
 	"lotpair/qa"
 )
@@ -180,4 +181,38 @@ func (v *Verification) meanings(report opcsign.Report, rec qa.Record) {
 			v.MissingMeanings = append(v.MissingMeanings, q.Meaning)
 		}
 	}
+}
+
+// AllTrusted says whether there is a signature and every signer is trusted.
+func (v Verification) AllTrusted() bool {
+	for _, s := range v.Signatures {
+		if s.Trusted == nil || !*s.Trusted {
+			return false
+		}
+	}
+	return len(v.Signatures) > 0
+}
+
+// Headline is the state in words. Without trust it says that who signed is not established: anyone can make a certificate
+// with any name in it.
+func (v Verification) Headline() string {
+	if (v.State == Intact || v.State == Incomplete) && !v.AllTrusted() {
+		return string(v.State) + "; who signed is not established"
+	}
+	return string(v.State)
+}
+
+// Signers are the identities, without their keys, that signed a record.
+func Signers(pkg []byte) ([]identity.Identity, error) {
+	report, err := opcsign.Verify(pkg, nil)
+	if err != nil {
+		return nil, fmt.Errorf("signatures: %w", err)
+	}
+	var out []identity.Identity
+	for _, s := range report.Signatures {
+		if s.Certificate != nil {
+			out = append(out, identity.Identity{Chain: s.Chain})
+		}
+	}
+	return out, nil
 }
