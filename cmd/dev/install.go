@@ -69,6 +69,7 @@ var outsideNeeds = []need{
 	{"default-jdk-headless", program("javac")},
 	{"libapache-poi-java", file("/usr/share/java/poi.jar")},
 	{"libxml-security-java", file("/usr/share/java/xmlsec.jar")},
+	{"libbcpkix-java", file("/usr/share/java/bcpkix.jar")},
 	{"r-base-core", program("Rscript")},
 	{"python3-scipy", command(python, "-c", "import scipy")},
 	{"python3-openpyxl", command(python, "-c", "import openpyxl")},
