@@ -40,7 +40,7 @@ func release(d *dev, args []string) error {
 	if err := os.MkdirAll(d.path(folder), 0o755); err != nil {
 		return err
 	}
-	flags := []string{"-trimpath", "-ldflags", "-s -w -X main.version=" + version}
+	flags := []string{"-trimpath", "-buildvcs=true", "-ldflags", "-s -w -X main.version=" + version}
 	compile := func(env []string, to, pkg string, more ...string) error {
 		return d.run(env, "go", append(append(append([]string{"build"}, flags...), more...), "-o", to, pkg)...)
 	}
