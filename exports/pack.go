@@ -21,9 +21,9 @@ const (
 	recordRelationship = `<Relationship Id="rIdRecord" Type="http://schemas.openxmlformats.org/officeDocument/2006/relationships/customXml" Target="../customXml/item1.xml"/>`
 )
 
-// packWithRecord adds the record's parts to a package as the spreadsheet library writes it, and writes every entry anew in a
-// fixed order, so that the same record gives the same bytes.
-func packWithRecord(pkg, record []byte) ([]byte, error) {
+// pack puts the sheets' cells and the record's parts into a package as the spreadsheet library writes it, and writes every
+// entry anew in a fixed order, so that the same record gives the same bytes.
+func pack(pkg []byte, data map[string][]byte, record []byte) ([]byte, error) {
 	in, err := zip.NewReader(bytes.NewReader(pkg), int64(len(pkg)))
 	if err != nil {
 		return nil, fmt.Errorf("workbook: %w", err)
@@ -46,6 +46,11 @@ func packWithRecord(pkg, record []byte) ([]byte, error) {
 	if parts[types], err = contentTypes(parts[types]); err != nil {
 		return nil, fmt.Errorf("workbook, part %s: %w", types, err)
 	}
+	for name, cells := range data {
+		if parts[name], err = putCells(parts[name], cells); err != nil {
+			return nil, fmt.Errorf("workbook, part %s: %w", name, err)
+		}
+	}
 	return writeZip(parts)
 }
 
@@ -56,6 +61,19 @@ func readEntry(f *zip.File) ([]byte, error) {
 	}
 	defer r.Close()
 	return io.ReadAll(r)
+}
+
+// putCells puts a <sheetData> element in the place of the one the library wrote.
+func putCells(part, cells []byte) ([]byte, error) {
+	const open, shut, empty = "<sheetData>", "</sheetData>", "<sheetData/>"
+	if i := bytes.Index(part, []byte(empty)); i >= 0 {
+		return bytes.Join([][]byte{part[:i], cells, part[i+len(empty):]}, nil), nil
+	}
+	i, j := bytes.Index(part, []byte(open)), bytes.LastIndex(part, []byte(shut))
+	if i < 0 || j < i {
+		return nil, fmt.Errorf("found no %s", open)
+	}
+	return bytes.Join([][]byte{part[:i], cells, part[j+len(shut):]}, nil), nil
 }
 
 func insertBefore(b []byte, mark, what string) ([]byte, error) {

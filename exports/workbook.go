@@ -38,6 +38,7 @@ func Workbook(rec qa.Record) ([]byte, error) {
 	if err := f.SetDefaultFont(workbookFont); err != nil {
 		return nil, fmt.Errorf("workbook: %w", err)
 	}
+	data := map[string][]byte{} // part name to its cells
 	for i, s := range sheets(rec) {
 		if i == 0 {
 			if err := f.SetSheetName("Sheet1", s.name); err != nil {
@@ -51,9 +52,14 @@ func Workbook(rec qa.Record) ([]byte, error) {
 				return nil, err
 			}
 		}
-		if err := writeSheet(f, w, s, rec); err != nil {
+		if err := frame(f, s, rec); err != nil {
 			return nil, fmt.Errorf("workbook, sheet %s: %w", s.name, err)
 		}
+		b, err := sheetData(s, w)
+		if err != nil {
+			return nil, fmt.Errorf("workbook, sheet %s: %w", s.name, err)
+		}
+		data[fmt.Sprintf("xl/worksheets/sheet%d.xml", i+1)] = b
 	}
 	if err := f.SetAppProps(&excelize.AppProperties{Application: "Lotpair", AppVersion: "1.0"}); err != nil {
 		return nil, fmt.Errorf("workbook: %w", err)
@@ -69,79 +75,33 @@ func Workbook(rec qa.Record) ([]byte, error) {
 	if err != nil {
 		return nil, err
 	}
-	return packWithRecord(b.Bytes(), record)
+	return pack(b.Bytes(), data, record)
 }
 
 // epoch stands in the document properties, which are removed before signing: the true times are in the record.
 const epoch = "2000-01-01T00:00:00Z"
 
-func writeSheet(f *excelize.File, w *looks, s sheet, rec qa.Record) error {
-	if err := pageSetup(f, s, rec); err != nil {
-		return err
-	}
-	sw, err := f.NewStreamWriter(s.name)
-	if err != nil {
-		return err
-	}
+// frame sets everything of a sheet but its cells.
+func frame(f *excelize.File, s sheet, rec qa.Record) error {
 	for i, width := range s.widths {
-		if err := sw.SetColWidth(i+1, i+1, width); err != nil {
+		col, err := excelize.ColumnNumberToName(i + 1)
+		if err != nil {
+			return err
+		}
+		if err := f.SetColWidth(s.name, col, col, width); err != nil {
 			return err
 		}
 	}
 	if s.frozen > 0 {
 		top := fmt.Sprintf("A%d", s.frozen+1)
-		if err := sw.SetPanes(&excelize.Panes{Freeze: true, YSplit: s.frozen, TopLeftCell: top, ActivePane: "bottomLeft"}); err != nil {
+		if err := f.SetPanes(s.name, &excelize.Panes{Freeze: true, YSplit: s.frozen, TopLeftCell: top, ActivePane: "bottomLeft"}); err != nil {
 			return err
 		}
 	}
-	for i, r := range s.rows {
-		if err := writeRow(sw, w, i+1, r); err != nil {
-			return err
-		}
+	if err := merge(f, s); err != nil {
+		return err
 	}
-	return sw.Flush()
-}
-
-func writeRow(sw *excelize.StreamWriter, w *looks, n int, r row) error {
-	var values []any
-	for _, c := range r.cells {
-		id, err := w.id(c.look)
-		if err != nil {
-			return err
-		}
-		out := excelize.Cell{StyleID: id}
-		if c.number != nil {
-			out.Value = *c.number
-		} else if c.text != "" {
-			out.Value = c.text
-		}
-		first := len(values) + 1
-		values = append(values, out)
-		for range max(c.span, 1) - 1 {
-			values = append(values, excelize.Cell{StyleID: id})
-		}
-		if c.span > 1 {
-			from, err := excelize.CoordinatesToCellName(first, n)
-			if err != nil {
-				return err
-			}
-			to, err := excelize.CoordinatesToCellName(first+c.span-1, n)
-			if err != nil {
-				return err
-			}
-			if err := sw.MergeCell(from, to); err != nil {
-				return err
-			}
-		}
-	}
-	var opts []excelize.RowOpts
-	if r.height > 0 {
-		opts = append(opts, excelize.RowOpts{Height: min(r.height, 409)})
-	}
-	if values == nil {
-		values = []any{nil}
-	}
-	return sw.SetRow(fmt.Sprintf("A%d", n), values, opts...)
+	return pageSetup(f, s, rec)
 }
 
 // pageSetup makes the sheet print on A4, as wide as the page, with its title and page numbers at the foot.

@@ -1,0 +1,137 @@
+package exports_test
+
+import (
+	"archive/zip"
+	"bytes"
+	"encoding/json"
+	"testing"
+
+	"lotpair/exports"
+	"lotpair/importers/cells"
+	"lotpair/qa"
+)
+
+// TestWorkbookSameBytes checks that the same record gives the same bytes, so that a reviewer can make the workbook again.
+func TestWorkbookSameBytes(t *testing.T) {
+	a, err := exports.Workbook(record(t))
+	if err != nil {
+		t.Fatal(err)
+	}
+	b, err := exports.Workbook(record(t))
+	if err != nil {
+		t.Fatal(err)
+	}
+	if !bytes.Equal(a, b) {
+		t.Error("the same record gave two workbooks")
+	}
+}
+
+// TestRecordRoundTrip checks that the record comes back as it went in, to the last digit, and gives the same result again.
+func TestRecordRoundTrip(t *testing.T) {
+	rec := record(t)
+	pkg, err := exports.Workbook(rec)
+	if err != nil {
+		t.Fatal(err)
+	}
+	back, err := exports.ReadRecord(pkg)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for i, s := range rec.Readings.Reference.Series {
+		for j, r := range s.Readings {
+			got := back.Readings.Reference.Series[i].Readings[j]
+			if got.Value != r.Value {
+				t.Errorf("reading %d of %s: got %v, want %v", j, s.Characteristic, got.Value, r.Value)
+			}
+		}
+	}
+	if a, b := mustJSON(t, rec.Result), mustJSON(t, back.Result); a != b {
+		t.Errorf("result: got %s, want %s", b, a)
+	}
+	again, err := exports.Workbook(back)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if !bytes.Equal(pkg, again) {
+		t.Error("the record read back gives another workbook")
+	}
+}
+
+func mustJSON(t *testing.T, v any) string {
+	t.Helper()
+	b, err := json.Marshal(v)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return string(b)
+}
+
+// TestWorkbookHoldsNoFormula checks that no text of a file becomes a formula, and that the sheets agree with the record.
+func TestWorkbookHoldsNoFormula(t *testing.T) {
+	pkg, err := exports.Workbook(record(t))
+	if err != nil {
+		t.Fatal(err)
+	}
+	book, err := cells.Read(pkg)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if len(book.Sheets) != 4 {
+		t.Errorf("sheets: got %d, want 4", len(book.Sheets))
+	}
+	found := 0
+	for _, s := range book.Sheets {
+		for _, r := range s.Rows {
+			for _, c := range r.Cells {
+				if c.Formula {
+					t.Errorf("%s!%s: found a formula %q", s.Name, c.Name(), c.Text)
+				}
+				if c.Text == hostile[0] && c.Kind == cells.Text {
+					found++
+				}
+			}
+		}
+	}
+	if found < 2 {
+		t.Errorf("the text %q: found %d times as text, want it among readings and ledger", hostile[0], found)
+	}
+	if v := exports.Verify(pkg, nil); v.State != exports.Unsigned || !v.Agrees {
+		t.Errorf("verify: got %s, agrees %v: %v", v.State, v.Agrees, v.Differences)
+	}
+}
+
+// TestWorkbookParts checks that few enough parts have to be signed: newer outside verifiers refuse many references.
+func TestWorkbookParts(t *testing.T) {
+	z, err := zip.NewReader(bytes.NewReader(signedOnce(t)), int64(len(signedOnce(t))))
+	if err != nil {
+		t.Fatal(err)
+	}
+	n := 0
+	for _, f := range z.File {
+		if f.Name != "[Content_Types].xml" && !bytes.HasPrefix([]byte(f.Name), []byte("_xmlsignatures/")) {
+			n++
+		}
+	}
+	if n > 30 {
+		t.Errorf("parts to sign: got %d, want at most 30", n)
+	}
+	t.Logf("%d parts signed", n)
+}
+
+var once []byte
+
+func signedOnce(t *testing.T) []byte {
+	if once == nil {
+		once = signed(t)
+	}
+	return once
+}
+
+// TestTooManyReadings checks the bound of a sheet.
+func TestTooManyReadings(t *testing.T) {
+	rec := record(t)
+	rec.Readings.Reference.Series[0].Readings = make([]qa.Reading, exports.MaxReadings+1)
+	if _, err := exports.Workbook(rec); err == nil {
+		t.Error("got no error")
+	}
+}
