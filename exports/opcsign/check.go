@@ -31,7 +31,13 @@ type previous struct {
 	digest []byte
 }
 
+// maxReasons keeps the report of a hostile package short.
+const maxReasons = 1000
+
 func (k *check) fail(code, part, format string, args ...any) {
+	if len(k.sig.Reasons) >= maxReasons {
+		return
+	}
 	k.sig.Reasons = append(k.sig.Reasons, Reason{Code: code, Part: part, Text: fmt.Sprintf(format, args...) + getItAgain})
 }
 

@@ -2,7 +2,6 @@ package opcsign
 
 import (
 	"bytes"
-	"slices"
 	"strings"
 )
 
@@ -22,7 +21,7 @@ func (k *check) readPackageObject() {
 	if !clean || len(refs) == 0 {
 		k.form(codePackage, "found a manifest of %d references with other content, want references only and at least one", len(refs))
 	}
-	named, ids := map[string]bool{}, map[string][]string{}
+	named, ids := map[string]bool{}, map[string]map[string]bool{}
 	for _, n := range refs {
 		if !n.is(dsSpace, "Reference") {
 			k.form(codePackage, "found the element %q in the manifest, want references", clip(n.local, 40))
@@ -55,7 +54,7 @@ func splitURI(uri string) (part, typ string, ok bool) {
 }
 
 // checkPart compares a part with its reference; ids takes the relationships that are covered.
-func (k *check) checkPart(r reference, part, typ string, ids map[string][]string) {
+func (k *check) checkPart(r reference, part, typ string, ids map[string]map[string]bool) {
 	e := k.c.byName[trimSlash(part)]
 	switch {
 	case e == nil:
@@ -86,7 +85,7 @@ func (k *check) checkPart(r reference, part, typ string, ids map[string][]string
 }
 
 // checkRels compares the relationships that a reference names.
-func (k *check) checkRels(r reference, part string, ids map[string][]string) {
+func (k *check) checkRels(r reference, part string, ids map[string]map[string]bool) {
 	if len(r.transforms) != 2 || !plain(r.transforms[1]) {
 		k.fail(codeTransform, part, "found %d transforms, want the relationships transform and then Canonical XML 1.0", len(r.transforms))
 		return
@@ -98,6 +97,11 @@ func (k *check) checkRels(r reference, part string, ids map[string][]string) {
 		k.fail(codeTransform, part, "found the transform %q, want the relationships transform with Ids", clip(alg, 80))
 		return
 	}
+	there := make(map[string][]relationship, len(k.c.rels[part]))
+	for _, rel := range k.c.rels[part] {
+		there[rel.id] = append(there[rel.id], rel)
+	}
+	ids[part] = make(map[string]bool, len(list))
 	var kept []relationship
 	for _, n := range list {
 		id, ok := n.attr("SourceId")
@@ -105,18 +109,13 @@ func (k *check) checkRels(r reference, part string, ids map[string][]string) {
 			k.fail(codeTransform, part, "found the element %q in the relationships transform, want RelationshipReference with SourceId", clip(n.local, 40))
 			return
 		}
-		if slices.Contains(ids[part], id) {
+		if ids[part][id] {
 			k.fail(codeTwice, part, "found the relationship %q signed twice, want it once", clip(id, 60))
 			return
 		}
-		ids[part] = append(ids[part], id)
-		found := false
-		for _, rel := range k.c.rels[part] {
-			if rel.id == id {
-				kept, found = append(kept, rel), true
-			}
-		}
-		if !found {
+		ids[part][id] = true
+		kept = append(kept, there[id]...)
+		if len(there[id]) == 0 {
 			k.fail(codeRelMissing, part, "found no relationship %q, want it as it was signed", clip(id, 60))
 		}
 	}
@@ -126,7 +125,7 @@ func (k *check) checkRels(r reference, part string, ids map[string][]string) {
 }
 
 // checkCoverage lists the parts and relationships that are not signed.
-func (k *check) checkCoverage(named map[string]bool, ids map[string][]string) {
+func (k *check) checkCoverage(named map[string]bool, ids map[string]map[string]bool) {
 	for _, part := range k.c.parts() {
 		if k.c.apart[part] {
 			continue
@@ -137,7 +136,7 @@ func (k *check) checkCoverage(named map[string]bool, ids map[string][]string) {
 			continue
 		}
 		for _, rel := range k.c.rels[part] {
-			if !slices.Contains(ids[part], rel.id) {
+			if !ids[part][rel.id] {
 				k.left = append(k.left, part+"#"+rel.id)
 				k.fail(codeRelUnsigned, part, "found the relationship %q that the signature does not cover, want every relationship covered", clip(rel.id, 60))
 			}
