@@ -62,7 +62,9 @@ func style(k look) excelize.Style {
 		s.Border = []excelize.Border{{Type: "top", Color: inkColour, Style: 1}}
 	case lotLook:
 		s.Font = font(15, inkColour, true)
-	case rightLook:
+	case rightPlainLook:
+		a.Horizontal = "right"
+	case rightLotLook:
 		s.Font = font(15, inkColour, true)
 		a.Horizontal = "right"
 	case headLook:
@@ -80,7 +82,10 @@ func style(k look) excelize.Style {
 	case strongLook:
 		s.Font.Bold = true
 	case numberLook:
-		a.Horizontal = "right"
+		a.Horizontal, a.Indent = "right", 1
+	case ruledNumberLook:
+		a.Horizontal, a.Indent = "right", 1
+		s.Border = below(ruleColour, 1)
 	case smallLook:
 		s.Font = font(8.5, inkColour, false)
 		a.WrapText, a.Vertical = true, "top"

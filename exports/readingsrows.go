@@ -4,7 +4,7 @@ import "lotpair/qa"
 
 // readingsSheet lists every reading with its origin: with it a reviewer computes the result again without Lotpair.
 func readingsSheet(rec qa.Record) sheet {
-	s := sheet{name: SheetReadings, widths: []float64{11, 14, 24, 14, 8, 12, 22, 12, 30}, landscape: true}
+	s := sheet{name: SheetReadings, widths: []float64{11, 14, 24, 22, 8, 16, 22, 13, 32}, landscape: true}
 	s.add(text("Readings", titleLook))
 	s.addTall(30, wide("Every reading at full precision, with the text and the place it was read from. What is left out stays here and is not used.", wrapLook, 9))
 	s.add(heads("Side", "Lot", "Characteristic", "Value", "Unit", "Text found", "File", "Cell", "State")...)
@@ -25,9 +25,9 @@ func readingsSheet(rec qa.Record) sheet {
 					state = "left out: " + r.LeftOut
 				}
 				v := r.Value
-				s.add(text(string(side), plainLook), text(lot.Name, plainLook), text(series.Characteristic, plainLook),
-					number(&v, numberLook), text(units[series.Characteristic], plainLook), text(r.Source.Text, plainLook),
-					text(r.Source.File, plainLook), text(r.Source.Place(), plainLook), text(state, plainLook))
+				s.add(text(string(side), ruledLook), text(lot.Name, ruledLook), text(series.Characteristic, ruledLook),
+					number(&v, ruledNumberLook), text(units[series.Characteristic], ruledLook), text(r.Source.Text, ruledLook),
+					text(r.Source.File, ruledLook), text(r.Source.Place(), ruledLook), text(state, ruledLook))
 			}
 		}
 	}
@@ -46,7 +46,7 @@ func heads(names ...string) []cell {
 // ledgerSheet lists every cell that was not taken as a plain number and every reading left out, then how the cells of the
 // files add up.
 func ledgerSheet(rec qa.Record) sheet {
-	s := sheet{name: SheetLedger, widths: []float64{22, 12, 18, 13, 12, 12, 22, 34}, landscape: true}
+	s := sheet{name: SheetLedger, widths: []float64{24, 13, 18, 16, 20, 12, 22, 46}, landscape: true}
 	s.add(text("Ledger", titleLook))
 	s.addTall(30, wide("Every cell that was not taken as a plain number, and every reading left out, with the reason. Nothing is dropped in silence.", wrapLook, 8))
 	s.add(heads("File", "Cell", "Found", "Taken as", "Value", "Side", "Characteristic", "Reason, or what to do")...)
@@ -56,9 +56,9 @@ func ledgerSheet(rec qa.Record) sheet {
 		if e.Problem() {
 			why = "wanted " + e.Want + "; " + e.Do
 		}
-		s.add(text(e.Source.File, plainLook), text(e.Source.Place(), plainLook), text(e.Source.Text, plainLook),
-			text(string(e.TakenAs), plainLook), number(e.Value, numberLook), text(string(e.Side), plainLook),
-			text(e.Characteristic, plainLook), text(why, ruledWrapLook))
+		s.addTall(max(lines(why, 50), lines(e.Source.Text, 20))*13.5+1, text(e.Source.File, ruledLook), text(e.Source.Place(), ruledLook), text(e.Source.Text, ruledWrapLook),
+			text(string(e.TakenAs), ruledLook), number(e.Value, ruledNumberLook), text(string(e.Side), ruledLook),
+			text(e.Characteristic, ruledLook), text(why, ruledWrapLook))
 	}
 	if len(rec.Readings.Ledger) == 0 {
 		s.add(wide("Every cell of the lots was a plain number.", plainLook, 8))
@@ -75,10 +75,10 @@ func ledgerSheet(rec qa.Record) sheet {
 	s.gap()
 	s.add(text("Detected, or done by default", groupLook))
 	for _, t := range rec.Readings.Said {
-		s.addTall(lines(t, 140)*13.5, wide(t, wrapLook, 8))
+		s.addTall(lines(t, 150)*13.5, wide(t, wrapLook, 8))
 	}
 	for _, w := range rec.Readings.Warnings {
-		s.addTall(lines(w.Text, 140)*13.5, wide(w.Text, wrapLook, 8))
+		s.addTall(lines(w.Text, 150)*13.5, wide(w.Text, wrapLook, 8))
 	}
 	s.gap()
 	s.add(text("Trail", groupLook))

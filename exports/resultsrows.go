@@ -10,7 +10,7 @@ import (
 // resultsSheet states all figures at full precision, one a row, under the names of the result format, so that a reviewer can
 // compare each with another program's.
 func resultsSheet(rec qa.Record) sheet {
-	s := sheet{name: SheetResults, widths: []float64{30, 24, 10, 48}}
+	s := sheet{name: SheetResults, widths: []float64{38, 25, 9, 62}}
 	r := rec.Result
 	s.add(text("Results", titleLook))
 	s.addTall(30, wide("All figures at full precision. Differences are candidate minus reference. An empty value does not exist; a warning says why.", wrapLook, 4))
@@ -47,7 +47,7 @@ type figureRow struct {
 
 func (f figureRow) value() cell {
 	if f.number != nil {
-		return number(f.number, numberLook)
+		return number(f.number, ruledNumberLook)
 	}
 	return text(f.text, ruledLook)
 }

@@ -43,10 +43,12 @@ const (
 	strongLook
 	numberLook // a number shown in full
 	smallLook
-	rightLook // text to the right edge: the candidate's page mirrors the reference's
+	rightLotLook // to the right edge: the candidate's page mirrors the reference's
+	rightPlainLook
 	rightMutedLook
 	ruledLook // a table's line
 	ruledWrapLook
+	ruledNumberLook
 	ruledStrongLook
 	signLook
 )

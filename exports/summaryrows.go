@@ -13,9 +13,10 @@ import (
 const (
 	summaryHalf     = 4
 	summaryColumns  = 8
-	spineColumn     = 6  // 1-based; the picture covers this column and the next
-	spineRowHeight  = 27 // points; the picture's lines stand in the middle of these rows
-	summaryLineRoom = 112
+	spineColumn     = 6   // 1-based; the picture covers this column and the next
+	spineRowHeight  = 30  // points; the picture's lines stand in the middle of these rows
+	summaryLineRoom = 135 // characters a line of running text
+	smallRoom       = 160
 )
 
 var summaryWidths = []float64{23, 18, 9, 12, 18, 15.5, 15.5, 16}
@@ -29,7 +30,7 @@ func summarySheet(rec qa.Record) sheet {
 	s.gap()
 	facingLots(&s, rec)
 	s.gap()
-	paragraph(&s, r.Sentence, verdictLook, 88, 19)
+	paragraph(&s, r.Sentence, verdictLook, 105, 17)
 	paragraph(&s, qa.Asked(r), mutedLook, summaryLineRoom, 14)
 	verdictTable(&s, r)
 	s.gap()
@@ -39,7 +40,7 @@ func summarySheet(rec qa.Record) sheet {
 	s.gap()
 	s.add(wide("Cautions", groupLook, summaryColumns))
 	for _, c := range qa.Cautions() {
-		paragraph(&s, c, smallLook, 125, 12.5)
+		paragraph(&s, c, smallLook, smallRoom, 12.5)
 	}
 	s.gap()
 	signatureBlock(&s, rec)
@@ -87,10 +88,10 @@ func facingLots(s *sheet, rec qa.Record) {
 	}
 	r, p := rec.Result, rec.Plan.Record
 	both(16, "●  REFERENCE", "CANDIDATE  ◇", referenceLook, candidateLook)
-	both(23, orDash(r.Reference.Lot), orDash(r.Candidate.Lot), lotLook, rightLook)
-	both(15, orDash(r.Reference.Source), orDash(r.Candidate.Source), plainLook, rightMutedLook)
+	both(23, orDash(r.Reference.Lot), orDash(r.Candidate.Lot), lotLook, rightLotLook)
+	both(15, orDash(r.Reference.Source), orDash(r.Candidate.Source), plainLook, rightPlainLook)
 	both(15, fileLine(r.Reference), fileLine(r.Candidate), mutedLook, rightMutedLook)
-	both(15, qa.PartsText(rec.Readings, qa.Reference), qa.PartsText(rec.Readings, qa.Candidate), plainLook, rightMutedLook)
+	both(15, qa.PartsText(rec.Readings, qa.Reference), qa.PartsText(rec.Readings, qa.Candidate), plainLook, rightPlainLook)
 	if p.QuantityReference != nil || p.QuantityCandidate != nil {
 		both(15, quantity(p.QuantityReference), quantity(p.QuantityCandidate), mutedLook, rightMutedLook)
 	}
@@ -174,8 +175,8 @@ func criterionBlock(s *sheet, rec qa.Record) {
 	r := rec.Result
 	s.add(wide("Criterion", groupLook, summaryColumns))
 	paragraph(s, sealText(r.Seal), plainLook, summaryLineRoom, 14)
-	paragraph(s, "Digest of the criterion (SHA-256): "+r.Seal.Digest, smallLook, 125, 12.5)
-	paragraph(s, "The margin is the equivalence limit of ASTM E2935. All characteristics asked for equivalence, not lower or not higher must hold.", smallLook, 125, 12.5)
+	paragraph(s, "Digest of the criterion (SHA-256): "+r.Seal.Digest, smallLook, smallRoom, 12.5)
+	paragraph(s, "The margin is the equivalence limit of ASTM E2935. All characteristics asked for equivalence, not lower or not higher must hold.", smallLook, smallRoom, 12.5)
 	seen := map[string]bool{}
 	for _, c := range r.Characteristics {
 		e := c.Equivalence
@@ -187,12 +188,12 @@ func criterionBlock(s *sheet, rec qa.Record) {
 		if e.Margin.ApprovedBy != "" {
 			t += "; approved by " + e.Margin.ApprovedBy
 		}
-		paragraph(s, t, smallLook, 125, 12.5)
+		paragraph(s, t, smallLook, smallRoom, 12.5)
 	}
 	for _, c := range r.Characteristics {
 		if e := c.Equivalence; e != nil && e.Permits != nil {
 			paragraph(s, fmt.Sprintf("%s: at the worse end of its margin (%s) Ppk would be %s and %s outside the limits, from the reference's mean and spread.",
-				c.Name, qa.MarginText(c), qa.Fixed(e.Permits.Ppk, 2), qa.Percent(e.Permits.Outside, 4)), smallLook, 125, 12.5)
+				c.Name, qa.MarginText(c), qa.Fixed(e.Permits.Ppk, 2), qa.Percent(e.Permits.Outside, 4)), smallLook, smallRoom, 12.5)
 		}
 	}
 	s.gap()
@@ -226,7 +227,7 @@ func sourceBlock(s *sheet, rec qa.Record) {
 			continue
 		}
 		seen[f.Name+f.SHA256] = true
-		paragraph(s, fmt.Sprintf("%s, %d bytes, SHA-256 %s", f.Name, f.Bytes, f.SHA256), smallLook, 125, 12.5)
+		paragraph(s, fmt.Sprintf("%s, %d bytes, SHA-256 %s", f.Name, f.Bytes, f.SHA256), smallLook, smallRoom, 12.5)
 	}
 	s.gap()
 }
@@ -237,16 +238,16 @@ func heldBlock(s *sheet, rec qa.Record) {
 	paragraph(s, ledgerText(rec.Readings.Ledger), plainLook, summaryLineRoom, 14)
 	for _, e := range rec.Readings.Ledger {
 		if e.TakenAs == qa.TakenExcluded {
-			paragraph(s, fmt.Sprintf("Left out: %s %s, found %q: %s", e.Characteristic, e.Source.Place(), e.Source.Text, e.Reason), smallLook, 125, 12.5)
+			paragraph(s, fmt.Sprintf("Left out: %s %s, found %q: %s", e.Characteristic, e.Source.Place(), e.Source.Text, e.Reason), smallLook, smallRoom, 12.5)
 		}
 	}
 	for _, c := range rec.Result.Characteristics {
 		for _, w := range c.Warnings {
-			paragraph(s, c.Name+": "+w.Text, smallLook, 125, 12.5)
+			paragraph(s, c.Name+": "+w.Text, smallLook, smallRoom, 12.5)
 		}
 	}
 	for _, w := range rec.Result.Warnings {
-		paragraph(s, w.Text, smallLook, 125, 12.5)
+		paragraph(s, w.Text, smallLook, smallRoom, 12.5)
 	}
 }
 
@@ -287,13 +288,13 @@ func signatureBlock(s *sheet, rec qa.Record) {
 		signerRow(s, *g)
 	}
 	if g := rec.Signer; g != nil && g.Reason != "" {
-		paragraph(s, "Reason of the first signature: "+g.Reason, smallLook, 125, 12.5)
+		paragraph(s, "Reason of the first signature: "+g.Reason, smallLook, smallRoom, 12.5)
 	}
 	if g := rec.Signer; g != nil && g.Disposition != "" {
-		paragraph(s, "Disposition stated with it by the signer: "+g.Disposition, smallLook, 125, 12.5)
+		paragraph(s, "Disposition stated with it by the signer: "+g.Disposition, smallLook, smallRoom, 12.5)
 	}
 	v := rec.Result.Software
-	paragraph(s, fmt.Sprintf("Made by Lotpair %s (%s), calculation %d, %s/%s.", v.Version, orWord(v.Revision, "no revision"), v.Calculation, v.OS, v.Arch), smallLook, 125, 12.5)
+	paragraph(s, fmt.Sprintf("Made by Lotpair %s (%s), calculation %d, %s/%s.", v.Version, orWord(v.Revision, "no revision"), v.Calculation, v.OS, v.Arch), smallLook, smallRoom, 12.5)
 }
 
 func signerRow(s *sheet, g qa.Signer) {
