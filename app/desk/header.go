@@ -55,12 +55,26 @@ func sealText(x qa.Seal) (text, note string) {
 	return text, note
 }
 
-// StateText says what verification found of a workbook, in the words of the console.
+// StateText says what verification found of a workbook: the word of the console, then what it means.
 func StateText(w Workbook) string {
-	if w.State == "intact" && !w.Trusted {
-		return "intact; who signed is not established"
+	s := w.State
+	switch s {
+	case "intact":
+	case "incomplete":
+		if len(w.Missing) > 0 {
+			s += ": not signed as " + strings.Join(w.Missing, ", ")
+		}
+	case "changed":
+		return "changed: not as it was signed"
+	case "disagrees":
+		return "disagrees: its readings give another result"
+	default:
+		return s
 	}
-	return w.State
+	if !w.Trusted {
+		s += "; who signed is not established"
+	}
+	return s
 }
 
 // shortDigest shows enough of a digest to tell two apart: its first and its last characters.

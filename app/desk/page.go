@@ -19,12 +19,14 @@ type PageView struct {
 	Readings      []ReadingView
 }
 
-// ReadingView is one reading on a page.
+// ReadingView is one cell of a lot on a page: a reading, or what stands in the ledger where a reading was looked for.
 type ReadingView struct {
-	Source qa.Source
-	Cell   string // without the sheet, which stands above
-	Value  string
-	Reason string // why it is left out, "" for one in use
+	Source  qa.Source
+	Cell    string // without the sheet, which stands above
+	Value   string
+	Note    string // why it is not used, "" for a reading in use
+	LeftOut bool   // a reading that can be put back
+	Used    bool
 }
 
 // Page says what is known of one lot.
@@ -56,7 +58,17 @@ func (s State) Page(side qa.Side) PageView {
 		if value == "" {
 			value = qa.Fixed(r.Value, r.Decimals)
 		}
-		v.Readings = append(v.Readings, ReadingView{Source: r.Source, Cell: r.Source.Cell, Value: value, Reason: r.LeftOut})
+		v.Readings = append(v.Readings, ReadingView{Source: r.Source, Cell: r.Source.Cell, Value: value, Note: r.LeftOut, LeftOut: !r.Used(), Used: r.Used()})
+	}
+	for _, e := range s.Record.Readings.Ledger {
+		if e.Side != side || e.Characteristic != name || e.TakenAs == qa.TakenNumber || e.TakenAs == qa.TakenSummary || e.TakenAs == qa.TakenExcluded && e.Value != nil {
+			continue
+		}
+		note := strings.ReplaceAll(string(e.TakenAs), "-", " ")
+		if e.TakenAs == qa.TakenExcluded {
+			note = e.Reason
+		}
+		v.Readings = append(v.Readings, ReadingView{Source: e.Source, Cell: e.Source.Cell, Value: e.Source.Text, Note: note})
 	}
 	return v
 }

@@ -122,7 +122,7 @@ func act(t testing.TB, s desk.State, line string) (desk.State, error) {
 		return s.Exported(rest), nil
 	case "sign":
 		w := s.Workbook
-		w.Path, w.State = "record.xlsx", "incomplete"
+		w.Path, w.State, w.Missing = "record.xlsx", "incomplete", []string{"reviewed"}
 		w.Signatures = append(append([]desk.Signature{}, w.Signatures...), signature(rest, true))
 		return s.Signed(s.Record, w), nil
 	case "fail":
@@ -156,8 +156,8 @@ func text(s desk.State) string {
 			say("  %s: %s", p.FindingsTitle, f)
 		}
 		for _, r := range p.Readings {
-			if r.Reason != "" {
-				say("  %s %s left out: %s", r.Cell, r.Value, r.Reason)
+			if !r.Used {
+				say("  %s %s not used: %s", r.Cell, r.Value, r.Note)
 			}
 		}
 		say("  %s: %d", p.ReadingsTitle, len(p.Readings))

@@ -19,8 +19,14 @@ const (
 // Spine is the decision interval of one characteristic on the scale of its own margin: the posts stand at −1 and +1 (at the
 // bounds over the larger of them where the bounds are unlike), zero in the middle. A one-sided objective has one post, and
 // the whole permitted side is in the band. The interval is the one the verdict rests on.
-func Spine(c qa.Comparison) Figure {
-	s := spine{Figure: Figure{Width: SpineWidth, Height: SpineHeight, Title: c.Name + ": " + string(c.Verdict)}}
+func Spine(c qa.Comparison) Figure { return SpineAt(c, SpineWidth) }
+
+// SpineMinWidth is the narrowest line of the spine that can still be read.
+const SpineMinWidth = 120
+
+// SpineAt is Spine at another width; less than the smallest is raised to it.
+func SpineAt(c qa.Comparison, width float64) Figure {
+	s := spine{Figure: Figure{Width: math.Max(width, SpineMinWidth), Height: SpineHeight, Title: c.Name + ": " + string(c.Verdict)}}
 	low, high, estimate := decision(c)
 	s.unit = scale(c, low, high)
 	if e := c.Equivalence; e != nil {
@@ -32,7 +38,7 @@ func Spine(c qa.Comparison) Figure {
 		s.add(Mark{Kind: Diamond, Name: "estimate", Role: Candidate, X: s.x(*estimate), Y: SpineHeight / 2, Size: 4.8, Open: true})
 	}
 	if low == nil || high == nil {
-		s.add(Mark{Kind: Label, Name: "no interval", Role: Muted, X: SpineWidth / 2, Y: SpineHeight/2 + 16, Size: 10.5, Anchor: Middle, Text: "no interval"})
+		s.add(Mark{Kind: Label, Name: "no interval", Role: Muted, X: s.Width / 2, Y: SpineHeight/2 + 16, Size: 10.5, Anchor: Middle, Text: "no interval"})
 	}
 	return s.Figure
 }
@@ -80,11 +86,11 @@ func larger(a, b *float64) float64 {
 // x is where a difference stands, held inside the line.
 func (s spine) x(difference float64) float64 {
 	t := math.Max(-Reach, math.Min(Reach, difference/s.unit))
-	return SpineWidth / 2 * (1 + t/Reach)
+	return s.Width / 2 * (1 + t/Reach)
 }
 
 func (s *spine) margin(c qa.Comparison, e *qa.EquivalenceResult) {
-	left, right := 0.0, float64(SpineWidth)
+	left, right := 0.0, s.Width
 	if e.MarginLower != nil {
 		left = s.x(*e.MarginLower)
 	}
@@ -121,7 +127,7 @@ func (s *spine) interval(low, high *float64) {
 	case *high/s.unit < -Reach:
 		b = stub
 	case *low/s.unit > Reach:
-		a = SpineWidth - stub
+		a = s.Width - stub
 	}
 	s.add(Mark{Kind: Line, Name: "interval", Role: Text, X: a, Y: middle, X2: b, Y2: middle, Size: width})
 	end := func(name string, x, inward float64, beyond bool, shown bool) {
