@@ -13,6 +13,11 @@ const notRun = "NOT RUN: LibreOffice, xmlsec1, Apache POI, R, SciPy — go run .
 // tools runs a pinned tool: its module file keeps the product's own go.mod clean.
 var tools = []string{"tool", "-modfile=.ci/tools.mod"}
 
+// The tests of the real window, and where they are.
+const windowTags = desktopTags + ",window"
+
+var windowPackages = []string{"./cmd/lotpair/...", "./app/..."}
+
 // check runs everything that must hold before a change lands; with --outside what other programs say of our files.
 func check(d *dev, args []string) error {
 	switch strings.Join(args, " ") {
@@ -25,17 +30,16 @@ func check(d *dev, args []string) error {
 	steps := []func() error{
 		d.checkFormat,
 		func() error { return d.run(pure, "go", "vet", "-tags", "outside", "./...") },
-		func() error {
-			return d.run(pure, "go", append(append([]string{}, tools...), "staticcheck", "-checks", "all", "-tags", "outside", "./...")...)
-		},
+		func() error { return d.staticcheck(pure, "outside", "./...") },
 		func() error { return d.run(nil, "go", "mod", "tidy", "-diff") },
 		d.checkToolsModule,
 		func() error { return d.run(pure, "go", "test", "-run", "TestPolicy", "./cmd/dev") },
 		func() error { return d.run(pure, "go", "test", "./...") },
 		func() error { return d.install("window", desktopNeeds, windowNeeds) },
 		func() error {
-			return d.run(desktop, "go", "vet", "-tags", desktopTags+",window", "./cmd/lotpair/...", "./app/...")
+			return d.run(desktop, "go", append([]string{"vet", "-tags", windowTags}, windowPackages...)...)
 		},
+		func() error { return d.staticcheck(desktop, windowTags, windowPackages...) },
 		func() error {
 			_, err := d.build(desktop, "lotpair", "./cmd/lotpair", "-tags", desktopTags)
 			return err
@@ -49,6 +53,11 @@ func check(d *dev, args []string) error {
 	}
 	d.say("\nAll checks of this project's own hold.\n%s", notRun)
 	return nil
+}
+
+// staticcheck runs every check that it has; an exception carries its reason on the line.
+func (d *dev) staticcheck(env []string, tags string, packages ...string) error {
+	return d.run(env, "go", append(append(append([]string{}, tools...), "staticcheck", "-checks", "all", "-tags", tags), packages...)...)
 }
 
 // checkFormat fails where gofumpt would change a file.
@@ -106,7 +115,7 @@ func (d *dev) checkWindow() error {
 		// Software GL: the same pictures everywhere, and no driver needed.
 		env = append(env, "DISPLAY="+display, "WAYLAND_DISPLAY=", "LIBGL_ALWAYS_SOFTWARE=1")
 	}
-	return d.run(env, "go", "test", "-count=1", "-tags", desktopTags+",window", "./cmd/lotpair/...", "./app/...")
+	return d.run(env, "go", append([]string{"test", "-count=1", "-tags", windowTags}, windowPackages...)...)
 }
 
 // checkOutside runs the tests that hold our files and numbers against other programs. What cannot run fails.
