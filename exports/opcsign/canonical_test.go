@@ -86,7 +86,7 @@ var notXML = []string{
 	"<a xmlns:p='http://www.w3.org/2000/xmlns/'/>", "<a xmlns:p='http://www.w3.org/XML/1998/namespace'/>", "<a xmlns='u' xmlns='u'/>", "<a>&b;</a>", "<a>&#0;</a>",
 	"<a>&#xD800;</a>", "<a>&#x110000;</a>", "<a>&amp</a>", "<a>]]></a>", "<a><!-- -- --></a>", "<a><!-- </a>", "<a><?xml?></a>", "<a><?XML b?></a>", "<a><![CDATA[</a>",
 	"<!DOCTYPE a><a/>", "<a><!DOCTYPE a></a>", "<a>\x00</a>", "<a>\xff</a>", "<a>\ufffe</a>", "<?xml version='1.1'?><a/>", "<?xml version='1.0' encoding='UTF-16'?><a/>", " <?xml version='1.0'?><a/>",
-	"<1/>", "<a:b:c xmlns:a='u'/>", "<:a/>", "<a:/>", "<a b:='1'/>", "<a><?p:q?></a>", "<a><?pq!?></a>", "< a/>", strings.Repeat("<a>", 300) + strings.Repeat("</a>", 300),
+	"<1/>", "<é/>", "<a:b:c xmlns:a='u'/>", "<:a/>", "<a:/>", "<a b:='1'/>", "<a><?p:q?></a>", "<a><?pq!?></a>", "< a/>", strings.Repeat("<a>", 300) + strings.Repeat("</a>", 300),
 }
 
 func TestParseRefuses(t *testing.T) {

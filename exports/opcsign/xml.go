@@ -209,14 +209,13 @@ func isChar(r rune) bool {
 	return r == '\t' || r == '\n' || r == '\r' || r >= 0x20 && r <= 0xd7ff || r >= 0xe000 && r <= 0xfffd || r >= 0x10000 && r <= 0x10ffff
 }
 
-// nameStart is the production NameStartChar without the colon (fifth edition, 2.3).
+// nameStart is the production NameStartChar without the colon, of ASCII: the editions of XML 1.0 differ on which other
+// letters a name may have, and nothing that is read here needs them.
 func nameStart(r rune) bool {
-	return r >= 'a' && r <= 'z' || r >= 'A' && r <= 'Z' || r == '_' || r >= 0xc0 && r <= 0xd6 || r >= 0xd8 && r <= 0xf6 || r >= 0xf8 && r <= 0x2ff ||
-		r >= 0x370 && r <= 0x37d || r >= 0x37f && r <= 0x1fff || r >= 0x200c && r <= 0x200d || r >= 0x2070 && r <= 0x218f || r >= 0x2c00 && r <= 0x2fef ||
-		r >= 0x3001 && r <= 0xd7ff || r >= 0xf900 && r <= 0xfdcf || r >= 0xfdf0 && r <= 0xfffd || r >= 0x10000 && r <= 0xeffff
+	return r >= 'a' && r <= 'z' || r >= 'A' && r <= 'Z' || r == '_'
 }
 
-// nameRest are the characters that NameChar has beyond NameStartChar.
+// nameRest are the characters that NameChar has beyond NameStartChar, of ASCII.
 func nameRest(r rune) bool {
-	return r == '-' || r == '.' || r >= '0' && r <= '9' || r == 0xb7 || r >= 0x300 && r <= 0x36f || r >= 0x203f && r <= 0x2040
+	return r == '-' || r == '.' || r >= '0' && r <= '9'
 }

@@ -43,7 +43,7 @@ CASES = {
     "inherit": '<a xml:lang="de" xml:space="preserve"><b xml:lang="en"><c Id="x" q="1"/></b></a>',
     "inheritown": '<a xml:lang="de" xml:space="preserve"><b Id="x" xml:lang="fr"><c xml:lang="en"/></b></a>',
     "xmlprefix": '<a xmlns:xml="http://www.w3.org/XML/1998/namespace"><b Id="x" xml:base="http://e.org/"/></a>',
-    "unicode": '<a Id="x" é="ü">ö&#x20AC;&#x1F600;\U0001F600\u00a0\u2028</a>',
+    "unicode": '<a Id="x" e="ü">ö&#x20AC;&#x1F600;\U0001F600\u00a0\u2028</a>',
     "samelocal": '<a xmlns:p="u:2" xmlns:q="u:1" p:i="1" q:i="2" i="3" Id="x"/>',
     "deep": '<a xmlns:a="u:a"><a:b xmlns:b="u:b"><b:c xmlns:c="u:c" Id="x"><a:d/><c:e b:f="1" a:f="2"/></b:c></a:b></a>',
     "reference": '<Signature xmlns="http://www.w3.org/2000/09/xmldsig#" Id="s"><SignedInfo Id="x">\n <Reference URI="#a"/>\n</SignedInfo></Signature>',
