@@ -1,0 +1,106 @@
+package importers
+
+import (
+	"fmt"
+	"strings"
+
+	"lotpair/importers/cells"
+)
+
+// taken is what one cell of measurements was taken as. Exactly one of the ways holds: a value, missing, a non-detect, or a
+// problem.
+type taken struct {
+	value     float64
+	decimals  int
+	isValue   bool
+	isMissing bool
+	isBelow   bool   // a non-detect
+	converted string // why the value goes into the ledger; empty for a plain number
+	problem   *Problem
+}
+
+// takeCell reads one cell. The unit is that of the characteristic; decimal is the mark settled for the column's texts.
+func takeCell(c cells.Cell, isText bool, unit string, decimal byte) taken {
+	want := "a number"
+	if unit != "" {
+		want += " in " + unit
+	}
+	switch c.Kind {
+	case cells.Blank:
+		return taken{isMissing: true}
+	case cells.Number:
+		v, _, err := ParseNumber(c.Text, '.')
+		if err != nil {
+			return taken{problem: err}
+		}
+		return taken{isValue: true, value: v, decimals: storedDecimals(v)}
+	case cells.FormulaNoValue:
+		return taken{problem: problem(FormulaWithoutValue, c.Text, want+", not a formula without a stored value")}
+	case cells.Error:
+		return taken{problem: problem(ErrorValue, c.Text, want+", not an error value")}
+	case cells.Bool:
+		return taken{problem: problem(BooleanValue, c.Text, want+", not a truth value")}
+	case cells.Date:
+		return taken{problem: problem(DateValue, c.Text, want+fmt.Sprintf(", not a date (the cell's format is %s)", quoted(c.Format)))}
+	}
+	switch {
+	case missing(c.Text):
+		return taken{isMissing: true}
+	case nonDetect(c.Text):
+		return taken{isBelow: true}
+	}
+	return takeText(c.Text, isText, unit, decimal, want)
+}
+
+func takeText(text string, isText bool, unit string, decimal byte, want string) taken {
+	v, decimals, err := ParseNumber(text, decimal)
+	reason := ""
+	number := text
+	if err != nil {
+		n, u, ok := cutUnit(text)
+		if !ok {
+			return taken{problem: err}
+		}
+		if unit == "" || unitKey(u) != unitKey(unit) {
+			if unit == "" {
+				want += "; its unit is stated nowhere"
+			}
+			return taken{problem: problem(OtherUnit, text, want)}
+		}
+		if v, decimals, err = ParseNumber(n, decimal); err != nil {
+			err.Text = text
+			return taken{problem: err}
+		}
+		number, reason = n, fmt.Sprintf("the unit %s taken off", quoted(u))
+	}
+	var reasons []string
+	if !isText {
+		reasons = append(reasons, "a number stored as text")
+	}
+	if w, err := splitNumber(number, decimal); err == nil && w.grouped {
+		reasons = append(reasons, "thousands marks taken out")
+	}
+	if reason != "" {
+		reasons = append(reasons, reason)
+	}
+	return taken{isValue: true, value: v, decimals: decimals, converted: strings.Join(reasons, "; ")}
+}
+
+// numeric says whether a cell looks like a number or a non-detect, whatever the decimal mark.
+func numeric(c cells.Cell) bool {
+	switch c.Kind {
+	case cells.Number:
+		return true
+	case cells.Text:
+		if nonDetect(c.Text) {
+			return true
+		}
+		number, _, _ := cutUnit(c.Text)
+		for _, decimal := range []byte{'.', ','} {
+			if _, _, err := ParseNumber(number, decimal); err == nil {
+				return true
+			}
+		}
+	}
+	return false
+}

@@ -1,0 +1,204 @@
+package importers
+
+import (
+	"slices"
+	"strconv"
+
+	"lotpair/importers/cells"
+)
+
+// detectPart finds the column of part ids that the plan does not name: by its heading, one without repeats first, else a
+// column of whole numbers that count up by one within each lot.
+func (t *table) detectPart() {
+	if t.part > 0 {
+		return
+	}
+	var worded []int
+	for _, c := range t.columns {
+		if c.col != t.lot && c.col != t.order && headingMeans(c.heading) == partHeading && !t.planned(c) && !t.constant(c.col) && t.fills(c.col) {
+			worded = append(worded, c.col)
+		}
+	}
+	for _, col := range worded {
+		if !t.repeats(col) {
+			t.part = col
+			break
+		}
+	}
+	if t.part == 0 && len(worded) > 0 {
+		t.part = worded[0]
+	}
+	for _, c := range t.columns {
+		if t.part > 0 {
+			break
+		}
+		if c.col != t.lot && c.col != t.order && !t.planned(c) && t.counts(c.col) {
+			t.part = c.col
+		}
+	}
+	if t.part > 0 {
+		t.say("the parts' ids stand in %s.", t.columnText(t.part))
+	}
+}
+
+// planned says whether the plan takes the column as a characteristic.
+func (t *table) planned(c column) bool {
+	for _, ch := range t.characteristics {
+		if slices.Contains(t.named(ch.Heading()), c.col) {
+			return true
+		}
+	}
+	return false
+}
+
+// wanted are the rows of the lots looked for; all where none is named.
+func (t *table) wanted() []row {
+	if t.lot == 0 || len(t.hints.lots) == 0 {
+		return t.rows
+	}
+	var rows []row
+	for _, r := range t.rows {
+		if slices.ContainsFunc(t.hints.lots, func(l string) bool { return sameName(l, r.lot) }) {
+			rows = append(rows, r)
+		}
+	}
+	return rows
+}
+
+func (t *table) cell(r row, col int) cells.Cell { return t.sheet.Rows[r.at].At(col) }
+
+// constant says whether a column says the same in every row: a part number, not an id.
+func (t *table) constant(col int) bool {
+	rows := t.wanted()
+	for _, r := range rows {
+		if filledText(t.cell(r, col)) != filledText(t.cell(rows[0], col)) {
+			return false
+		}
+	}
+	return len(rows) > 1
+}
+
+func (t *table) fills(col int) bool {
+	return slices.ContainsFunc(t.wanted(), func(r row) bool { return filledText(t.cell(r, col)) != "" })
+}
+
+// repeats says whether an id stands twice in one lot.
+func (t *table) repeats(col int) bool {
+	seen := map[[2]string]bool{}
+	for _, r := range t.wanted() {
+		id := filledText(t.cell(r, col))
+		if id == "" {
+			continue
+		}
+		if seen[[2]string{r.lot, id}] {
+			return true
+		}
+		seen[[2]string{r.lot, id}] = true
+	}
+	return false
+}
+
+// counts says whether a column holds whole numbers that count up by one within each lot, three rows or more, at least two of
+// them in one lot.
+func (t *table) counts(col int) bool {
+	last := map[string]int{}
+	rows := t.wanted()
+	if len(rows) < 3 {
+		return false
+	}
+	steps := 0
+	for _, r := range rows {
+		c := t.cell(r, col)
+		if c.Kind != cells.Number && c.Kind != cells.Text {
+			return false
+		}
+		n, err := strconv.Atoi(trimmed(c.Text))
+		if err != nil {
+			return false
+		}
+		if before, ok := last[r.lot]; ok {
+			if n != before+1 {
+				return false
+			}
+			steps++
+		}
+		last[r.lot] = n
+	}
+	return steps > 0
+}
+
+// findMeasured takes the columns of measurements: those of the plan, else every column that holds numbers and plays no other
+// part. What is not taken is said.
+func (t *table) findMeasured() error {
+	if len(t.characteristics) > 0 {
+		var faults []Fault
+		for _, ch := range t.characteristics {
+			col, err := t.only("characteristic "+quoted(ch.Name), ch.Heading())
+			if err != nil {
+				faults = append(faults, faultsOf(err)...)
+				continue
+			}
+			if col == t.lot || col == t.part && t.reading.PartColumn != "" || slices.Contains(t.measured, col) {
+				faults = append(faults, Fault{Place: t.place(), Text: "characteristic " + quoted(ch.Name) + ": found " + t.columnText(col) +
+					", which plays another part already, want a column of its own; correct the plan"})
+			}
+			t.measured = append(t.measured, col)
+		}
+		if len(faults) > 0 {
+			return &PlanError{Faults: faults}
+		}
+		return nil
+	}
+	rows := t.wanted()
+	for _, c := range t.columns {
+		if c.col == t.lot || c.col == t.part || c.col == t.order {
+			continue
+		}
+		numbers, dates, filled := 0, 0, 0
+		for _, r := range rows {
+			switch cell := t.cell(r, c.col); {
+			case cell.Kind == cells.Blank || cell.Kind == cells.Text && missing(cell.Text):
+			case cell.Kind == cells.Date:
+				dates++
+				filled++
+			case numeric(cell):
+				numbers++
+				filled++
+			default:
+				filled++
+			}
+		}
+		why := ""
+		switch {
+		case filled == 0:
+			why = "it is empty"
+		case headingMeans(c.heading) == orderHeading || 2*dates > filled:
+			why = "it holds dates or an order"
+		case headingMeans(c.heading) == partHeading:
+			why = "it holds part numbers or ids"
+		case t.counts(c.col):
+			why = "it counts up by one"
+		case 2*numbers < filled:
+			why = "most of it is no number"
+		default:
+			t.measured = append(t.measured, c.col)
+			continue
+		}
+		t.say("%s is not taken as a measurement: %s.", t.columnText(c.col), why)
+	}
+	if len(t.measured) == 0 {
+		return t.refuse("found no column of measurements, want at least one; name it under [[characteristic]] in the plan")
+	}
+	return nil
+}
+
+// faultsOf are the faults of an error of this package.
+func faultsOf(err error) []Fault {
+	switch e := err.(type) {
+	case *PlanError:
+		return e.Faults
+	case *FileError:
+		return e.Faults
+	}
+	return []Fault{{Text: err.Error()}}
+}

@@ -1,0 +1,66 @@
+package importers
+
+import (
+	"lotpair/importers/cells"
+)
+
+// mark is how the decimal mark of a column's texts was settled.
+type mark struct {
+	decimal byte
+	said    string       // how a comma was settled; empty for the point
+	unclear []cells.Cell // the cells that leave it open; empty where it is settled
+}
+
+// settleDecimal settles the decimal mark of one column's texts: by the plan; by the texts themselves where every one with a
+// comma can only be a decimal comma; by the limits where all texts lie near them when read in one way and none when read in
+// the other. Numbers that a spreadsheet stored as numbers have no mark and no say. Else it stays open.
+func settleDecimal(texts []cells.Cell, plan string, lower, upper *float64) mark {
+	if plan != "" {
+		return mark{decimal: plan[0]}
+	}
+	var points, commas, open []cells.Cell
+	for _, c := range texts {
+		number, _, _ := cutUnit(c.Text)
+		w, err := splitNumber(number, 0)
+		switch {
+		case err != nil && err.Code == DecimalAmbiguous:
+			open = append(open, c)
+		case err != nil:
+		case w.comma:
+			commas = append(commas, c)
+		case w.fraction != "" || w.grouped:
+			points = append(points, c)
+		}
+	}
+	switch {
+	case len(open) == 0 && len(commas) == 0:
+		return mark{decimal: '.'}
+	case len(points) > 0:
+		return mark{unclear: append(append([]cells.Cell{}, open...), commas...)}
+	case len(open) == 0:
+		return mark{decimal: ',', said: "every number with a comma there can only have a decimal comma"}
+	}
+	if lower != nil && upper != nil && *upper > *lower {
+		asDecimal, asThousands := near(open, ',', *lower, *upper), near(open, '.', *lower, *upper)
+		switch {
+		case asDecimal == len(open) && asThousands == 0:
+			return mark{decimal: ',', said: "only so do the readings lie near the specification limits"}
+		case asThousands == len(open) && asDecimal == 0 && len(commas) == 0:
+			return mark{decimal: '.', said: "only with thousands marks do the readings lie near the specification limits"}
+		}
+	}
+	return mark{unclear: open}
+}
+
+// near counts the cells whose value lies within the limits or one tolerance beyond them.
+func near(texts []cells.Cell, decimal byte, lower, upper float64) int {
+	n := 0
+	width := upper - lower
+	for _, c := range texts {
+		number, _, _ := cutUnit(c.Text)
+		if v, _, err := ParseNumber(number, decimal); err == nil && v >= lower-width && v <= upper+width {
+			n++
+		}
+	}
+	return n
+}

@@ -1,0 +1,244 @@
+package importers
+
+import (
+	"slices"
+
+	"lotpair/importers/cells"
+	"lotpair/qa"
+)
+
+// How far the heading is looked for, in rows that hold something.
+const (
+	lookHeadings = 200
+	lookBelow    = 15
+)
+
+// findHeading finds the heading row: where the plan says, else the row with the plan's headings, a heading for the lot or the
+// most texts that has a number below one of them.
+func (t *table) findHeading() error {
+	rows := t.sheet.Rows
+	if n := t.reading.HeaderRow; n > 0 {
+		r, ok := t.sheet.Row(n)
+		if !ok || !slices.ContainsFunc(r.Cells, func(c cells.Cell) bool { return filledText(c) != "" }) {
+			return t.refuse("reading.header_row: found nothing in row %d, want the headings; correct the row number", n)
+		}
+		t.heading = n
+		return nil
+	}
+	best := 0
+	for i := 0; i < len(rows) && i < lookHeadings; i++ {
+		if s := t.headingScore(i); s > best {
+			best, t.heading = s, rows[i].Number
+		}
+	}
+	if t.heading == 0 {
+		return t.refuse("found no row of headings above numbers, want one such as Lot, Part, Bore; state header_row under [reading]")
+	}
+	return nil
+}
+
+// headingScore rates a row as the row of headings; 0 where it cannot be one.
+func (t *table) headingScore(i int) int {
+	r := t.sheet.Rows[i]
+	if slices.Contains(t.book.Comments, r.Number) {
+		return 0
+	}
+	score, below := 0, false
+	for _, c := range r.Cells {
+		text := filledText(c)
+		if text == "" || c.Kind == cells.Error || c.Kind == cells.FormulaNoValue {
+			continue
+		}
+		if slices.ContainsFunc(t.hints.lots, func(lot string) bool { return qa.JoinSpace(lot) == text }) {
+			return 0
+		}
+		name, _ := splitUnit(text)
+		if headingMeans(text) == lotHeading || t.reading.LotColumn != "" && (qa.JoinSpace(t.reading.LotColumn) == text || qa.JoinSpace(t.reading.LotColumn) == name) {
+			score += 1000
+		}
+		for _, ch := range t.characteristics {
+			if want := qa.JoinSpace(ch.Heading()); want == text || want == name {
+				score += 100
+			}
+		}
+		if c.Kind == cells.Text && !numeric(c) && !missing(text) {
+			score++
+		}
+		for j := i + 1; j < len(t.sheet.Rows) && j <= i+lookBelow && !below; j++ {
+			below = numeric(t.sheet.Rows[j].At(c.Col))
+		}
+	}
+	if !below {
+		return 0
+	}
+	return score
+}
+
+// readHeadings takes the headings apart and gives the rows above them their role.
+func (t *table) readHeadings() error {
+	above := 0
+	for i, r := range t.sheet.Rows {
+		if r.Number > t.heading {
+			break
+		}
+		if r.Number < t.heading {
+			if slices.Contains(t.book.Comments, r.Number) {
+				t.mark(i, roleComment)
+				continue
+			}
+			if len(r.Cells) > 0 {
+				above++
+			}
+			t.mark(i, roleAbove)
+			continue
+		}
+		t.mark(i, roleHeading)
+		for _, c := range r.Cells {
+			if h := filledText(c); h != "" {
+				name, unit := splitUnit(h)
+				t.columns = append(t.columns, column{col: c.Col, heading: h, name: name, unit: unit})
+			}
+		}
+	}
+	t.say("the headings stand in row %d.", t.heading)
+	if above > 0 {
+		t.say("%s above the headings not read.", qa.Count(above, "row", "rows"))
+	}
+	seen := map[string][]string{}
+	for _, c := range t.columns {
+		seen[c.heading] = append(seen[c.heading], cells.Name(c.col, t.heading))
+	}
+	for _, c := range t.columns {
+		if at := seen[c.heading]; len(at) > 1 {
+			t.warn("duplicate-headings", "the heading %s stands in %s.", quoted(c.heading), join2(at))
+			delete(seen, c.heading)
+		}
+	}
+	return nil
+}
+
+// join2 writes addresses for a message, at most 12 of them.
+func join2(addresses []string) string {
+	more := ""
+	if n := len(addresses); n > 12 {
+		addresses, more = addresses[:12], " and "+qa.Count(n-12, "more", "more")
+	}
+	text := ""
+	for i, a := range addresses {
+		if i > 0 {
+			text += ", "
+		}
+		text += a
+	}
+	return text + more
+}
+
+// findLotColumn finds the column that names the lots: as the plan says, else by its heading, else by its holding the lots.
+func (t *table) findLotColumn() error {
+	if name := t.reading.LotColumn; name != "" {
+		col, err := t.only("reading.lot_column", name)
+		t.lot = col
+		return err
+	}
+	var byHeading, byContent []int
+	for _, c := range t.columns {
+		if headingMeans(c.heading) == lotHeading {
+			byHeading = append(byHeading, c.col)
+		}
+	}
+	if len(t.hints.lots) > 0 {
+		for _, col := range t.contentColumns() {
+			if t.holds(col) {
+				byContent = append(byContent, col)
+			}
+		}
+	}
+	both := slices.DeleteFunc(slices.Clone(byHeading), func(col int) bool { return !slices.Contains(byContent, col) })
+	switch {
+	case len(both) == 1:
+		t.lot = both[0]
+	case len(byHeading) == 1:
+		t.lot = byHeading[0]
+	case len(byHeading) == 0 && len(byContent) == 1 && !t.singleColumn(byContent[0]):
+		t.lot = byContent[0]
+	case len(byHeading) > 1 || len(byContent) > 1:
+		candidates := byHeading
+		if len(candidates) < 2 {
+			candidates = byContent
+		}
+		texts := make([]string, 0, len(candidates))
+		for _, col := range candidates {
+			texts = append(texts, t.columnText(col))
+		}
+		return t.refuse("reading.lot_column: found %s, want one column that names the lots; state lot_column under [reading]", join2(texts))
+	default:
+		if t.whole {
+			t.say("no column names the lots; every row of the sheet is taken as the one lot.")
+			return nil
+		}
+		headings := make([]string, 0, len(t.columns))
+		for _, c := range t.columns {
+			headings = append(headings, c.heading)
+		}
+		return t.refuse("reading.lot_column: found the headings %s and no column that names the lots %s, want one; state lot_column under [reading], or correct the lots' names in the plan",
+			list(headings), list(t.hints.lots))
+	}
+	t.say("the lots are named in %s.", t.columnText(t.lot))
+	return nil
+}
+
+// singleColumn says whether the table has no other column: its numbers are readings, not lots.
+func (t *table) singleColumn(col int) bool { return len(t.columns) == 1 && t.columns[0].col == col }
+
+// contentColumns are the columns that hold something below the headings.
+func (t *table) contentColumns() []int {
+	seen := map[int]bool{}
+	var cols []int
+	for _, r := range t.below() {
+		for _, c := range r.Cells {
+			if stored(c) && !seen[c.Col] {
+				seen[c.Col] = true
+				cols = append(cols, c.Col)
+			}
+		}
+	}
+	slices.Sort(cols)
+	return cols
+}
+
+// below are the rows under the headings.
+func (t *table) below() []cells.Row {
+	for i, r := range t.sheet.Rows {
+		if r.Number > t.heading {
+			return t.sheet.Rows[i:]
+		}
+	}
+	return nil
+}
+
+// holds says whether a column holds the names of all the lots looked for.
+func (t *table) holds(col int) bool {
+	missing := map[string]bool{}
+	for _, l := range t.hints.lots {
+		missing[qa.JoinSpace(l)] = true
+	}
+	for _, r := range t.below() {
+		if delete(missing, filledText(r.At(col))); len(missing) == 0 {
+			return true
+		}
+	}
+	return false
+}
+
+// findPartColumn takes the plan's columns for parts and order; what the plan leaves out is found once the rows are known.
+func (t *table) findPartColumn() (err error) {
+	if name := t.reading.PartColumn; name != "" {
+		if t.part, err = t.only("reading.part_column", name); err != nil {
+			return err
+		}
+	}
+	if name := t.reading.OrderColumn; name != "" {
+		t.order, err = t.only("reading.order_column", name)
+	}
+	return err
+}

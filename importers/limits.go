@@ -1,0 +1,120 @@
+package importers
+
+import (
+	"fmt"
+	"math"
+	"strconv"
+	"strings"
+
+	"lotpair/importers/cells"
+	"lotpair/qa"
+)
+
+// limit is one cell of a limit row.
+type limit struct {
+	means string
+	cell  cells.Cell
+}
+
+// takeLimits keeps the cells of a row of limits or nominal values.
+func (t *table) takeLimits(at int, means string) {
+	r := t.sheet.Rows[at]
+	t.mark(at, roleLimit)
+	t.say("row %d holds limits or nominal values (%s).", r.Number, means)
+	for _, c := range r.Cells {
+		if stored(c) {
+			t.limits[c.Col] = append(t.limits[c.Col], limit{means: means, cell: c})
+		}
+	}
+}
+
+// limitsOf are the limits that the sheet states for a column. A cell that cannot be read as a number, and two limits of one
+// kind that differ, are faults.
+func (t *table) limitsOf(col int, unit string, decimal byte) (qa.Characteristic, error) {
+	values := map[string]*float64{}
+	places := map[string]int{}
+	signed := false
+	for _, l := range t.limits[col] {
+		taken := takeCell(l.cell, t.book.IsText, unit, decimal)
+		if taken.isMissing {
+			continue
+		}
+		if !taken.isValue {
+			return qa.Characteristic{}, planError(t.cellPlace(l.cell), "found %s, want a number as the %s limit or nominal value; correct the cell", quoted(l.cell.Text), l.means)
+		}
+		if had := values[l.means]; had != nil && *had != taken.value {
+			return qa.Characteristic{}, planError(t.cellPlace(l.cell), "found %s, want %s as in the row above that says the same (%s); correct the sheet or state the limits in the plan",
+				quoted(l.cell.Text), strconv.FormatFloat(*had, 'g', -1, 64), l.means)
+		}
+		v := taken.value
+		values[l.means], places[l.means] = &v, taken.decimals
+		signed = signed || l.means == lowerTol && strings.HasPrefix(trimmed(l.cell.Text), "+")
+	}
+	c := qa.Characteristic{Lower: values[lowerLabel], Target: values[nominalLabel], Upper: values[upperLabel]}
+	if nominal := c.Target; nominal != nil {
+		sum := func(tol string, v float64) *float64 {
+			x := roundTo(*nominal+v, max(places[nominalLabel], places[tol]))
+			return &x
+		}
+		if tol := values[upperTol]; tol != nil && c.Upper == nil {
+			c.Upper = sum(upperTol, *tol)
+		}
+		if tol := values[lowerTol]; tol != nil && c.Lower == nil {
+			v := -math.Abs(*tol) // a minus tolerance may be written without its sign
+			if signed {
+				v = *tol
+			}
+			c.Lower = sum(lowerTol, v)
+		}
+	}
+	return c, nil
+}
+
+// roundTo takes the rounding of a sum of decimals off again: 12 - 0.05 is 11.95.
+func roundTo(x float64, decimals int) float64 {
+	v, err := strconv.ParseFloat(strconv.FormatFloat(x, 'f', decimals, 64), 64)
+	if err != nil {
+		return x
+	}
+	return v
+}
+
+// mergeLimits lets the plan's limits win over the sheet's; a difference is a warning.
+func (t *table) mergeLimits(c *qa.Characteristic, file qa.Characteristic) {
+	for _, l := range []struct {
+		name string
+		plan **float64
+		file *float64
+	}{{"lower limit", &c.Lower, file.Lower}, {"target", &c.Target, file.Target}, {"upper limit", &c.Upper, file.Upper}} {
+		switch {
+		case l.file == nil:
+		case *l.plan == nil:
+			*l.plan = l.file
+			t.say("the %s of %s is taken from the sheet: %s.", l.name, c.Name, qa.Plain(*l.file))
+		case **l.plan != *l.file:
+			t.warn("limits-differ", "%s: the %s is %s in the plan and %s in the sheet; the plan's is taken.", c.Name, l.name, qa.Plain(**l.plan), qa.Plain(*l.file))
+		}
+	}
+}
+
+// mergeUnit settles the unit of a characteristic between the plan and the sheet: they must be the same.
+func (t *table) mergeUnit(c *qa.Characteristic, col column, side qa.LotPlan, sideName qa.Side) error {
+	at := fmt.Sprintf("%s!%s", t.place(), cells.Name(col.col, t.heading))
+	if side.Unit != "" && col.unit != "" && unitKey(side.Unit) != unitKey(col.unit) {
+		return planError(at, "found the unit %s, want %s as %s.unit states; correct the plan or the sheet", quoted(col.unit), quoted(side.Unit), sideName)
+	}
+	unit := col.unit
+	if side.Unit != "" {
+		unit = side.Unit
+	}
+	switch {
+	case unit == "" && c.Unit != "":
+		t.say("%s states no unit for %s; taken as %s.", t.columnText(col.col), c.Name, c.Unit)
+	case c.Unit == "":
+		c.Unit = unit
+	case unitKey(unit) != unitKey(c.Unit):
+		return planError(at, "found the unit %s, want %s as for the characteristic %s; units are not converted in this version: bring both lots to one unit, or correct unit in the plan",
+			quoted(unit), quoted(c.Unit), quoted(c.Name))
+	}
+	return nil
+}

@@ -1,0 +1,140 @@
+package importers
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+
+	"lotpair/importers/cells"
+	"lotpair/qa"
+)
+
+// found is one lot of a table.
+type found struct {
+	name  string
+	rows  int
+	first cells.Cell
+}
+
+// sameName compares lots' names after joining white space; nothing else is forgiven.
+func sameName(a, b string) bool { return qa.JoinSpace(a) == qa.JoinSpace(b) }
+
+// foundLots are the lots of the table in the order of their first rows.
+func (t *table) foundLots() []found {
+	var all []found
+	index := map[string]int{}
+	for _, r := range t.rows {
+		i, ok := index[r.lot]
+		if !ok {
+			i = len(all)
+			index[r.lot] = i
+			all = append(all, found{name: r.lot, first: t.cell(r, max(1, t.lot))})
+		}
+		all[i].rows++
+	}
+	return all
+}
+
+// lotRows are the rows of one side's lot and its name. A lot that the plan names and the table lacks is a *PlanError that
+// lists the lots found.
+func (t *table) lotRows(side qa.Side, plan qa.LotPlan) (string, []row, error) {
+	if t.lot == 0 {
+		name := plan.Lot
+		if name == "" {
+			if name = t.sheet.Name; t.book.IsText || len(t.book.Sheets) == 1 {
+				name = t.book.File.Name
+			}
+			t.say("the %s lot has no name in the plan and is called %s after its file or sheet.", side, quoted(name))
+		}
+		return name, t.rows, nil
+	}
+	all := t.foundLots()
+	want := plan.Lot
+	if want == "" {
+		if len(all) != 1 {
+			return "", nil, t.refuse("%s.lot: found none in the plan and the lots %s in the file, want the one that is meant; name it", side, list(names(all)))
+		}
+		want = all[0].name
+		t.say("the %s lot is the only one of the sheet, %s.", side, quoted(want))
+	}
+	var rows []row
+	for _, r := range t.rows {
+		if sameName(r.lot, want) {
+			rows = append(rows, r)
+		}
+	}
+	if len(rows) == 0 {
+		near := ""
+		for _, l := range all {
+			if spelling(l.name) == spelling(want) || swapped(l.name, want) {
+				near = fmt.Sprintf("; %s is a near spelling (%s)", quoted(l.name), t.cellPlace(l.first))
+			}
+		}
+		return "", nil, t.refuse("%s.lot: found the lots %s%s, want %s; correct the lot's name in the plan", side, list(names(all)), near, quoted(want))
+	}
+	return rows[0].lot, rows, nil
+}
+
+func names(all []found) []string {
+	out := make([]string, 0, len(all))
+	for _, l := range all {
+		out = append(out, l.name)
+	}
+	return out
+}
+
+// sayOthers says which lots take no part, and warns of those whose name is a near spelling of one that does.
+func (t *table) sayOthers(used []string) {
+	if t.lot == 0 {
+		return
+	}
+	for _, l := range t.foundLots() {
+		if slices.ContainsFunc(used, func(u string) bool { return sameName(u, l.name) }) {
+			continue
+		}
+		t.say("the lot %s (%s) takes no part.", quoted(l.name), qa.Count(l.rows, "row", "rows"))
+	}
+	t.nearSpellings(func(name string) bool {
+		return slices.ContainsFunc(used, func(u string) bool { return sameName(u, name) })
+	})
+}
+
+// nearSpellings warns of lots whose names are near spellings of one that counts.
+func (t *table) nearSpellings(counts func(string) bool) {
+	all := t.foundLots()
+	var pairs []string
+	for i, a := range all {
+		for j, b := range all {
+			if i != j && counts(a.name) && !(counts(b.name) && j < i) && (spelling(a.name) == spelling(b.name) || swapped(a.name, b.name)) {
+				pairs = append(pairs, fmt.Sprintf("%s beside %s (%s from %s)", quoted(b.name), quoted(a.name), qa.Count(b.rows, "row", "rows"), b.first.Name()))
+			}
+		}
+	}
+	if len(pairs) > 0 {
+		t.warn("lot-spellings", "lots in several spellings, not joined: %s. If they are one lot, write the name alike in the file.", strings.Join(pairs, "; "))
+	}
+}
+
+// hidden warns of hidden rows, columns and sheets: what they hold is read all the same.
+func (t *table) hidden() {
+	rows, cols := 0, 0
+	for _, r := range t.rows {
+		if t.sheet.Rows[r.at].Hidden {
+			rows++
+		}
+	}
+	if rows > 0 {
+		t.warn("hidden-rows", "%s of the table hidden; what they hold is used.", qa.Count(rows, "row is", "rows are"))
+	}
+	for _, c := range t.columns {
+		if t.sheet.HiddenCol(c.col) {
+			cols++
+		}
+	}
+	if cols > 0 {
+		t.warn("hidden-columns", "%s of the table hidden; what they hold is read like any other.", qa.Count(cols, "column is", "columns are"))
+	}
+	if t.sheet.Hidden {
+		t.warn("hidden-sheets", "the sheet itself is hidden; it is read.")
+	}
+}

@@ -1,0 +1,329 @@
+package importers
+
+import (
+	"slices"
+	"strconv"
+	"strings"
+	"unicode/utf8"
+
+	"lotpair/importers/cells"
+	"lotpair/qa"
+)
+
+// sortRows tells the rows below the headings apart: unit row, limits, summaries, notes and rows of the lots.
+func (t *table) sortRows() error {
+	var data []row
+	for i, r := range t.sheet.Rows {
+		if r.Number <= t.heading || !slices.ContainsFunc(r.Cells, func(c cells.Cell) bool { return filledText(c) != "" || c.Kind == cells.FormulaNoValue }) {
+			continue
+		}
+		switch {
+		case len(data) == 0 && r.Number == t.heading+1 && t.isUnitRow(r):
+			t.takeUnits(r)
+			t.mark(i, roleUnit)
+		case t.repeatsHeading(r):
+			if !t.sameHeading(r) {
+				return t.refuse("row %d: found a second table with other headings, want one table a sheet; put it on its own sheet", r.Number)
+			}
+			t.warn("second-table", "row %d repeats the headings; the rows below it are read as the same table.", r.Number)
+			t.mark(i, roleHeading)
+		default:
+			data = append(data, row{at: i})
+		}
+	}
+	data = t.takeLabelled(data)
+	if err := t.fillLots(data); err != nil {
+		return err
+	}
+	t.detectPart()
+	return nil
+}
+
+// isUnitRow says whether the row under the headings holds units only.
+func (t *table) isUnitRow(r cells.Row) bool {
+	units, labelled := 0, false
+	for _, c := range r.Cells {
+		text := filledText(c)
+		switch {
+		case text == "" || missing(text):
+		case labelWords[word(text)] == unitLabel && !isUnit(text):
+			labelled = true
+		case c.Kind == cells.Text && isUnit(text):
+			units++
+		case !labelled || numeric(c) || c.Kind != cells.Text:
+			return false
+		default:
+			units++
+		}
+	}
+	return units > 0
+}
+
+func (t *table) takeUnits(r cells.Row) {
+	for i := range t.columns {
+		c := r.At(t.columns[i].col)
+		text := filledText(c)
+		if text == "" || missing(text) || labelWords[word(text)] == unitLabel && !isUnit(text) {
+			continue
+		}
+		unit := unbracket(text)
+		if had := t.columns[i].unit; had != "" && unitKey(had) != unitKey(unit) {
+			t.warn("units-differ", "%s: the heading says %s, the unit row %s; the unit row is taken.", t.columnText(t.columns[i].col), quoted(had), quoted(unit))
+		}
+		t.columns[i].unit = unit
+	}
+	t.say("row %d holds the units.", r.Number)
+}
+
+// repeatsHeading says whether a row is a heading again: the lot column's heading stands in it, or all headings do.
+func (t *table) repeatsHeading(r cells.Row) bool {
+	if t.lot > 0 {
+		text := filledText(r.At(t.lot))
+		return text != "" && text == t.column(t.lot).heading && !slices.ContainsFunc(t.hints.lots, func(l string) bool { return qa.JoinSpace(l) == text })
+	}
+	return len(t.columns) > 1 && t.sameHeading(r)
+}
+
+func (t *table) sameHeading(r cells.Row) bool {
+	for _, c := range t.columns {
+		if filledText(r.At(c.col)) != c.heading {
+			return false
+		}
+	}
+	return true
+}
+
+// label is what a row's label makes of it, and whether the label is short: such a one may be a part's id just as well.
+// Labels stand in the lot column, in the part column, or in the first cell of a row without a lot.
+func (t *table) label(r cells.Row) (means string, short bool) {
+	at := make([]cells.Cell, 0, 3)
+	lot := ""
+	if t.lot > 0 {
+		lot = filledText(r.At(t.lot))
+		if slices.ContainsFunc(t.hints.lots, func(l string) bool { return qa.JoinSpace(l) == lot }) {
+			lot = "\x00"
+		} else {
+			at = append(at, r.At(t.lot))
+		}
+	}
+	for _, c := range t.columns {
+		if c.col == t.part || t.part == 0 && c.col != t.lot && headingMeans(c.heading) == partHeading {
+			at = append(at, r.At(c.col))
+		}
+	}
+	if lot == "" {
+		for _, c := range r.Cells {
+			if filledText(c) != "" {
+				at = append(at, c)
+				break
+			}
+		}
+	}
+	for _, c := range at {
+		if c.Kind != cells.Text {
+			continue
+		}
+		w := word(c.Text)
+		if m := labelWords[w]; m != "" && m != unitLabel {
+			return m, utf8.RuneCountInString(w) <= 2
+		}
+		if first, _, ok := strings.Cut(w, " "); ok && labelWords[first] == summaryLabel && utf8.RuneCountInString(first) > 3 && lot == "" {
+			return summaryLabel, false // "Mean of lot"
+		}
+	}
+	return "", false
+}
+
+// takeLabelled takes the limit and summary rows out. A short label counts only beside a long one in the same block of rows.
+func (t *table) takeLabelled(data []row) []row {
+	type labelled struct {
+		means string
+		short bool
+	}
+	labels := make([]labelled, len(data))
+	for i, d := range data {
+		labels[i].means, labels[i].short = t.label(t.sheet.Rows[d.at])
+	}
+	for i := 0; i < len(data); {
+		j, long := i, false
+		for ; j < len(data) && labels[j].means != ""; j++ {
+			long = long || !labels[j].short
+		}
+		for ; i < j; i++ {
+			if !long {
+				labels[i].means = ""
+			}
+		}
+		i = j + 1
+	}
+	var rest []row
+	var summaries []string
+	for i, d := range data {
+		r := t.sheet.Rows[d.at]
+		switch labels[i].means {
+		case "":
+			rest = append(rest, d)
+		case summaryLabel:
+			t.summary = append(t.summary, d.at)
+			summaries = append(summaries, strconv.Itoa(r.Number))
+		default:
+			t.takeLimits(d.at, labels[i].means)
+		}
+	}
+	if len(summaries) > 0 {
+		t.say("%s not taken as readings: %s.", qa.Count(len(summaries), "summary row", "summary rows"), join2(summaries))
+	}
+	return rest
+}
+
+// fillLots gives each row its lot, and tells unlabelled foot rows and notes apart.
+func (t *table) fillLots(data []row) error {
+	if t.lot == 0 {
+		t.rows = t.withoutNotes(t.withoutFeet(data, func(row) bool { return true }))
+		return nil
+	}
+	direct := make([]string, len(data))
+	for i, d := range data {
+		direct[i] = filledText(t.sheet.Rows[d.at].At(t.lot))
+	}
+	index := map[int]int{}
+	for i, d := range data {
+		index[d.at] = i
+	}
+	data = t.withoutFeet(data, func(d row) bool { return direct[index[d.at]] == "" })
+	down := t.filledDown(data, func(d row) string { return direct[index[d.at]] })
+	current, last := "", -1
+	var lost []string
+	for _, d := range data {
+		r := t.sheet.Rows[d.at]
+		d.lot = direct[index[d.at]]
+		for _, s := range t.summary { // a summary ends a block
+			if s > last && s < d.at {
+				current = ""
+			}
+		}
+		last = d.at
+		if d.lot == "" {
+			if a, ok := t.mergedLot(r.Number); ok {
+				d.lot = a
+				t.filled++
+			}
+		}
+		switch {
+		case d.lot != "" && direct[index[d.at]] != "":
+			if current = d.lot; down && t.alone(r, t.lot) {
+				continue // the lot's name stands in a row of its own
+			}
+		case d.lot == "" && down && current != "":
+			d.lot = current
+			t.filled++
+		case d.lot == "":
+			if t.note(r) {
+				t.mark(d.at, roleNote)
+				continue
+			}
+			lost = append(lost, cells.Name(t.lot, r.Number))
+			continue
+		}
+		t.rows = append(t.rows, d)
+	}
+	if len(lost) > 0 {
+		return t.refuse("found readings in rows without a lot's name (%s), want the name in each row; write the lot's name there, or delete what is no reading", join2(lost))
+	}
+	if t.filled > 0 {
+		t.warn("lot-filled-down", "the lot's name stands only in the first row of its block; it is taken for %s below.", qa.Count(t.filled, "row", "rows"))
+	}
+	return nil
+}
+
+// filledDown says whether lots are named only where a block of rows begins: the first row names one, no two neighbouring rows
+// name the same, and at least as many rows name none.
+func (t *table) filledDown(data []row, lot func(row) string) bool {
+	named, blank := 0, 0
+	for i, d := range data {
+		name := lot(d)
+		if _, merged := t.mergedLot(t.sheet.Rows[d.at].Number); merged && name == "" {
+			continue
+		}
+		switch {
+		case name == "" && i == 0:
+			return false
+		case name == "":
+			blank++
+		case i > 0 && lot(data[i-1]) == name:
+			return false
+		default:
+			named++
+		}
+	}
+	return blank >= named && blank > 0
+}
+
+// mergedLot is the lot's name of a merged cell that covers the lot column in a row.
+func (t *table) mergedLot(number int) (string, bool) {
+	for _, a := range t.sheet.Merged {
+		if a.FirstCol <= t.lot && t.lot <= a.LastCol && a.FirstRow < number && number <= a.LastRow && a.FirstRow > t.heading {
+			name := filledText(t.sheet.At(a.FirstCol, a.FirstRow))
+			return name, name != ""
+		}
+	}
+	return "", false
+}
+
+// alone says whether a row holds something in one column only.
+func (t *table) alone(r cells.Row, col int) bool {
+	return !slices.ContainsFunc(r.Cells, func(c cells.Cell) bool { return c.Col != col && filledText(c) != "" })
+}
+
+// note says whether a row without a lot holds words only.
+func (t *table) note(r cells.Row) bool {
+	return !slices.ContainsFunc(r.Cells, func(c cells.Cell) bool {
+		return c.Kind != cells.Blank && (c.Kind != cells.Text || numeric(c))
+	})
+}
+
+// withoutNotes takes the words off the end of a sheet that is one lot.
+func (t *table) withoutNotes(data []row) []row {
+	for len(t.columns) > 1 && len(data) > 0 {
+		at := data[len(data)-1].at
+		if r := t.sheet.Rows[at]; len(r.Cells) == 0 || !t.note(r) || !t.alone(r, r.Cells[0].Col) || missing(r.Cells[0].Text) {
+			break
+		}
+		t.mark(at, roleNote)
+		t.say("row %d is taken as a note.", t.sheet.Rows[at].Number)
+		data = data[:len(data)-1]
+	}
+	return data
+}
+
+// withoutFeet takes unlabelled foot rows out: rows without a part that hold formulas where the row above holds none.
+func (t *table) withoutFeet(data []row, may func(row) bool) []row {
+	var rest []row
+	feet := []string{}
+	foot := false // the row above is one
+	for i, d := range data {
+		r := t.sheet.Rows[d.at]
+		formulas, other := 0, 0
+		for _, c := range r.Cells {
+			if filledText(c) == "" && c.Kind != cells.FormulaNoValue {
+				continue
+			}
+			if c.Formula && (foot || i > 0 && !t.sheet.Rows[data[i-1].at].At(c.Col).Formula) {
+				formulas++
+			} else {
+				other++
+			}
+		}
+		if foot = may(d) && i > 0 && formulas > 0 && other == 0; foot {
+			t.summary = append(t.summary, d.at)
+			feet = append(feet, strconv.Itoa(r.Number))
+			continue
+		}
+		rest = append(rest, d)
+	}
+	slices.Sort(t.summary)
+	if len(feet) > 0 {
+		t.say("%s of formulas without a label not taken as readings: %s.", qa.Count(len(feet), "row", "rows"), join2(feet))
+	}
+	return rest
+}

@@ -1,0 +1,123 @@
+package importers
+
+import (
+	"fmt"
+	"strconv"
+	"strings"
+
+	"lotpair/qa"
+)
+
+// Plan is a plan file to start from: the first two lots, everything that was detected, and blanks where only a person can
+// say. Filled in, it loads with LoadPlan.
+func (in Inspection) Plan() string {
+	var b strings.Builder
+	line := func(format string, args ...any) { fmt.Fprintf(&b, format+"\n", args...) }
+	line("format = %s", tomlText(qa.PlanFormat))
+	line("title = \"\"")
+	line("supports = \"\" # the record this is evidence for")
+	line("")
+	line("[record]")
+	line("part = \"\"")
+	line("revision = \"\"")
+	for i, side := range []string{"reference", "candidate"} {
+		line("")
+		line("[%s]", side)
+		switch {
+		case i < len(in.Lots) && in.lotColumn != "":
+			line("lot = %s", tomlText(in.Lots[i].Lot))
+		case i < len(in.Lots):
+			line("lot = %s # the file names no lot: call it as it is called", tomlText(in.Lots[i].Lot))
+		default:
+			line("lot = \"\" # fill in: the lot's name")
+		}
+		if in.lotColumn != "" || i == 0 {
+			line("file = %s", tomlText(in.File.Name))
+		} else {
+			line("file = \"\" # fill in: the file of the other lot")
+		}
+	}
+	line("")
+	line("[reading]")
+	line("layout = %s", tomlText(in.Layout))
+	if in.Sheet != "" {
+		line("sheet = %s", tomlText(in.Sheet))
+	}
+	line("header_row = %d", in.HeaderRow)
+	if in.lotColumn != "" {
+		line("lot_column = %s", tomlText(in.lotColumn))
+	}
+	switch {
+	case in.Decimal == "":
+		line("decimal = \"\" # fill in: \".\" or \",\"; the file does not settle it")
+	case in.Encoding != "":
+		line("decimal = %s", tomlText(in.Decimal))
+	}
+	if in.Encoding != "" {
+		line("encoding = %s", tomlText(in.Encoding))
+	}
+	line("")
+	line("[criterion]")
+	line("objective = \"equivalence\"")
+	line("alpha = 0.05")
+	line("method = \"welch\"")
+	if in.bothLimits() {
+		line("margin = { tolerance_fraction = 0.10 } # a tenth of the tolerance: decide it before the readings are compared")
+	} else {
+		line("margin = { absolute = 0 } # fill in: the largest difference that does not matter, in the unit, above 0")
+	}
+	for _, c := range in.Characteristics {
+		line("")
+		line("[[characteristic]]")
+		line("name = %s", tomlText(c.Name))
+		if c.Unit != "" {
+			line("unit = %s", tomlText(c.Unit))
+		}
+		for _, l := range []struct {
+			key   string
+			value *float64
+		}{{"lower", c.Limits.Lower}, {"target", c.Limits.Target}, {"upper", c.Limits.Upper}} {
+			if l.value != nil {
+				line("%s = %s # from the sheet: check against the drawing", l.key, tomlNumber(*l.value))
+			}
+		}
+	}
+	return b.String()
+}
+
+func (in Inspection) bothLimits() bool {
+	for _, c := range in.Characteristics {
+		if c.Limits.Lower == nil || c.Limits.Upper == nil {
+			return false
+		}
+	}
+	return len(in.Characteristics) > 0
+}
+
+// tomlText is a TOML basic string (TOML 1.0, "String").
+func tomlText(s string) string {
+	var b strings.Builder
+	b.WriteByte('"')
+	for _, r := range s {
+		switch {
+		case r == '"' || r == '\\':
+			b.WriteByte('\\')
+			b.WriteRune(r)
+		case r < ' ' || r == 0x7f:
+			fmt.Fprintf(&b, "\\u%04X", r)
+		default:
+			b.WriteRune(r)
+		}
+	}
+	b.WriteByte('"')
+	return b.String()
+}
+
+// tomlNumber is a number that reads back the same.
+func tomlNumber(x float64) string {
+	s := strconv.FormatFloat(x, 'g', -1, 64)
+	if mantissa, exponent, ok := strings.Cut(s, "e"); ok {
+		return mantissa + "e" + strings.TrimPrefix(exponent, "+")
+	}
+	return s
+}

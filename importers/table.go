@@ -1,0 +1,213 @@
+package importers
+
+import (
+	"fmt"
+	"strings"
+
+	"lotpair/importers/cells"
+	"lotpair/qa"
+)
+
+// hints are what is known before a sheet is looked at: the plan, or nothing. Lots are the names that the sheet must hold.
+type hints struct {
+	reading         qa.ReadingPlan
+	lots            []string
+	characteristics []qa.Characteristic
+	whole           bool // the sheet may hold one lot without naming it
+}
+
+// column is one column of the table with its heading taken apart.
+type column struct {
+	col     int
+	heading string // white space joined
+	name    string // without the unit in brackets
+	unit    string // from brackets or the unit row
+}
+
+// row is one row of the table that belongs to a lot.
+type row struct {
+	at  int    // index into the sheet's rows
+	lot string // white space joined; empty where the sheet is one lot
+}
+
+// table is one sheet as it is read: which row and column plays which part. Every cell of the sheet has a role.
+type table struct {
+	book  Book
+	sheet cells.Sheet
+	hints
+
+	heading          int // row number
+	columns          []column
+	lot, part, order int // columns; 0 where there is none
+	rows             []row
+	limits           map[int][]limit // by column
+	summary          []int           // rows, by index
+	measured         []int           // columns taken as characteristics
+	filled           int             // rows whose lot was filled down
+	roles            [][]role        // of each stored cell
+
+	said     []string
+	warnings []qa.Warning
+}
+
+// role is the part that one cell plays; over a sheet the counts of all roles add up to all its cells.
+type role uint8
+
+const (
+	roleNone role = iota // stored without content
+	roleOutside
+	roleAbove
+	roleComment
+	roleHeading
+	roleUnit
+	roleLimit
+	roleSummary
+	roleLot
+	rolePart
+	roleOrder
+	roleOtherColumn
+	roleNoHeading
+	roleOtherLot
+	roleNote
+	roleUsed
+	roleLeftOut
+	roleMissing
+	roleNonDetect
+	roleUnread
+	roles
+)
+
+// roleNames are how the record calls the roles.
+var roleNames = [roles]string{
+	roleOutside: "not in the table", roleAbove: "above the heading", roleComment: "comment lines", roleHeading: "headings",
+	roleUnit: "unit row", roleLimit: "limits and nominal values", roleSummary: "summary rows", roleLot: "lot names", rolePart: "part ids",
+	roleOrder: "order", roleOtherColumn: "columns not taken as measurements", roleNoHeading: "columns without a heading",
+	roleOtherLot: "other lots", roleNote: "notes", roleUsed: "readings used", roleLeftOut: "readings left out", roleMissing: "missing",
+	roleNonDetect: "non-detects", roleUnread: "not read as numbers",
+}
+
+// newTable reads how a sheet is laid out. The error is a *PlanError: what the plan must say.
+func newTable(book Book, sheet cells.Sheet, h hints) (*table, error) {
+	t := &table{book: book, sheet: sheet, hints: h, limits: map[int][]limit{}}
+	t.roles = make([][]role, len(sheet.Rows))
+	for i, r := range sheet.Rows {
+		t.roles[i] = make([]role, len(r.Cells))
+	}
+	for _, step := range []func() error{t.findHeading, t.readHeadings, t.findLotColumn, t.findPartColumn, t.sortRows, t.findMeasured} {
+		if err := step(); err != nil {
+			return nil, err
+		}
+	}
+	t.hidden()
+	return t, nil
+}
+
+// place is the sheet in a message: "hub-shell.xlsx!Data".
+func (t *table) place() string {
+	if t.sheet.Name == "" {
+		return t.book.File.Name
+	}
+	return t.book.File.Name + "!" + t.sheet.Name
+}
+
+func (t *table) cellPlace(c cells.Cell) string {
+	return t.book.source(t.sheet.Name, c).String()
+}
+
+func (t *table) refuse(format string, args ...any) error {
+	return planError(t.place(), format, args...)
+}
+
+func (t *table) say(format string, args ...any) {
+	t.said = append(t.said, t.place()+": "+fmt.Sprintf(format, args...))
+}
+
+func (t *table) warn(code, format string, args ...any) {
+	t.warnings = append(t.warnings, qa.Warning{Code: code, Text: t.place() + ": " + fmt.Sprintf(format, args...)})
+}
+
+// column is the table's column at a column number.
+func (t *table) column(col int) column {
+	for _, c := range t.columns {
+		if c.col == col {
+			return c
+		}
+	}
+	return column{col: col}
+}
+
+func (t *table) columnText(col int) string {
+	return fmt.Sprintf("column %s %s", cells.Letters(col), quoted(t.column(col).heading))
+}
+
+// named finds the columns that a name from the plan means: by the whole heading, else by the heading without its unit.
+func (t *table) named(name string) []int {
+	want := qa.JoinSpace(name)
+	var whole, bare []int
+	for _, c := range t.columns {
+		switch want {
+		case c.heading:
+			whole = append(whole, c.col)
+		case c.name:
+			bare = append(bare, c.col)
+		}
+	}
+	if len(whole) > 0 {
+		return whole
+	}
+	return bare
+}
+
+// only is the one column that a name from the plan means; key is the plan's key for messages.
+func (t *table) only(key, name string) (int, error) {
+	found := t.named(name)
+	switch len(found) {
+	case 1:
+		return found[0], nil
+	case 0:
+		headings := make([]string, 0, len(t.columns))
+		for _, c := range t.columns {
+			headings = append(headings, c.heading)
+		}
+		return 0, t.refuse("%s: found the headings %s, want %s; the nearest is %s: correct the name in the plan", key, list(headings), quoted(name), quoted(nearest(name, headings)))
+	}
+	addresses := make([]string, 0, len(found))
+	for _, col := range found {
+		addresses = append(addresses, cells.Name(col, t.heading))
+	}
+	return 0, t.refuse("%s: found the heading %s in %s, want it once; give each column its own heading in the file", key, quoted(name), strings.Join(addresses, ", "))
+}
+
+// list writes texts for a message, at most 30 of them.
+func list(texts []string) string {
+	if len(texts) == 0 {
+		return "none"
+	}
+	var b strings.Builder
+	for i, s := range texts {
+		if i == 30 {
+			fmt.Fprintf(&b, " and %d more", len(texts)-i)
+			break
+		}
+		if i > 0 {
+			b.WriteString(", ")
+		}
+		b.WriteString(quoted(s))
+	}
+	return b.String()
+}
+
+// mark gives a role to every cell of a row with content that has none yet.
+func (t *table) mark(at int, r role) {
+	for j, c := range t.sheet.Rows[at].Cells {
+		if t.roles[at][j] == roleNone && stored(c) {
+			t.roles[at][j] = r
+		}
+	}
+}
+
+// stored says whether a cell holds something: blank cells may be stored for their format alone.
+func stored(c cells.Cell) bool { return c.Kind != cells.Blank }
+
+// filledText is a cell's text with white space joined; empty where it holds nothing to see.
+func filledText(c cells.Cell) string { return qa.JoinSpace(c.Text) }

@@ -1,0 +1,281 @@
+package importers
+
+import (
+	"fmt"
+	"math"
+	"slices"
+	"strconv"
+	"strings"
+
+	"lotpair/importers/cells"
+	"lotpair/qa"
+)
+
+// takeReadings takes every cell of every characteristic of both lots.
+func (r *reader) takeReadings() error {
+	for i := range r.sides {
+		s := &r.sides[i]
+		for k, c := range r.out.Characteristics {
+			if err := s.table.unmerged(s.rows, s.cols[k]); err != nil {
+				return err
+			}
+			series := qa.Series{Characteristic: c.Name, Rows: len(s.rows)}
+			for _, row := range s.rows {
+				r.take(s, &series, c, row, k)
+			}
+			s.lot.Series = append(s.lot.Series, series)
+			s.table.sayFormats(s.rows, s.cols[k], c.Name)
+		}
+	}
+	for _, t := range r.tables {
+		r.takeSummaries(t)
+	}
+	return nil
+}
+
+// take puts one cell where it belongs: a reading, or an entry of the ledger, or both.
+func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row row, k int) {
+	t := s.table
+	cell := t.cell(row, s.cols[k])
+	got := takeCell(cell, t.book.IsText, c.Unit, s.marks[k].decimal)
+	entry := qa.Entry{Source: t.book.source(t.sheet.Name, cell), Side: s.side, Characteristic: c.Name}
+	out := r.excluded(t, cell, got)
+	as := roleUsed
+	switch {
+	case got.isMissing:
+		series.Missing++
+		entry.TakenAs, as = qa.TakenMissing, roleMissing
+	case out != "" && !got.isValue:
+		series.ExcludedUnread++
+		entry.TakenAs, entry.Reason, as = qa.TakenExcluded, out, roleLeftOut
+	case got.isBelow:
+		series.NonDetects++
+		entry.TakenAs, as = qa.TakenNonDetect, roleNonDetect
+	case got.problem != nil:
+		series.Unread++
+		entry.TakenAs, entry.Reason, entry.Want, entry.Do = qa.TakenNotANumber, got.problem.Code, got.problem.Want, got.problem.Do
+		as = roleUnread
+	default:
+		reading := qa.Reading{Value: got.value, Source: entry.Source, Decimals: got.decimals, LeftOut: out}
+		if t.part > 0 {
+			reading.Part = filledText(t.cell(row, t.part))
+		}
+		series.Readings = append(series.Readings, reading)
+		value := got.value
+		switch {
+		case out != "":
+			entry.TakenAs, entry.Reason, entry.Value, as = qa.TakenExcluded, out, &value, roleLeftOut
+		case got.converted != "":
+			entry.TakenAs, entry.Reason, entry.Value = qa.TakenNumber, got.converted, &value
+		}
+	}
+	t.give(row.at, cell.Col, as)
+	if entry.TakenAs != "" {
+		r.out.Ledger = append(r.out.Ledger, entry)
+	}
+}
+
+// give gives one cell of a row its role; a cell that is not stored has none.
+func (t *table) give(at, col int, as role) {
+	for j, c := range t.sheet.Rows[at].Cells {
+		if c.Col == col && stored(c) {
+			t.roles[at][j] = as
+		}
+	}
+}
+
+// takeSummaries lists what the summary rows hold under the characteristics.
+func (r *reader) takeSummaries(t *table) {
+	for _, at := range t.summary {
+		t.mark(at, roleSummary)
+		for k, c := range r.out.Characteristics {
+			var col int
+			for _, s := range r.sides {
+				if s.table == t {
+					col = s.cols[k]
+				}
+			}
+			cell := t.sheet.Rows[at].At(col)
+			if !stored(cell) {
+				continue
+			}
+			r.out.Ledger = append(r.out.Ledger, qa.Entry{Source: t.book.source(t.sheet.Name, cell), Characteristic: c.Name, TakenAs: qa.TakenSummary})
+		}
+	}
+}
+
+// unmerged refuses merged cells among the readings: one value cannot stand for several parts.
+func (t *table) unmerged(rows []row, col int) error {
+	for _, a := range t.sheet.Merged {
+		if col < a.FirstCol || col > a.LastCol || a == (cells.Area{FirstCol: a.FirstCol, FirstRow: a.FirstRow, LastCol: a.FirstCol, LastRow: a.FirstRow}) {
+			continue
+		}
+		for _, r := range rows {
+			if n := t.sheet.Rows[r.at].Number; n >= a.FirstRow && n <= a.LastRow {
+				return planError(t.place()+"!"+cells.Name(a.FirstCol, a.FirstRow), "found the merged cells %s:%s among the readings, want one cell a reading; split them in the file",
+					cells.Name(a.FirstCol, a.FirstRow), cells.Name(a.LastCol, a.LastRow))
+			}
+		}
+	}
+	return nil
+}
+
+// sayFormats warns of percent formats and of readings that formulas computed: both are taken as stored.
+func (t *table) sayFormats(rows []row, col int, name string) {
+	percent, formulas := []string{}, []string{}
+	for _, r := range rows {
+		c := t.cell(r, col)
+		if c.Kind == cells.Number && cells.Percent(c.Format) {
+			percent = append(percent, c.Name())
+		}
+		if c.Kind == cells.Number && c.Formula {
+			formulas = append(formulas, c.Name())
+		}
+	}
+	if len(percent) > 0 {
+		t.warn("percent-format", "%s: %s shown in percent and taken as stored, a hundredth of what is shown (%s).", name, qa.Count(len(percent), "cell is", "cells are"), join2(percent))
+	}
+	if len(formulas) > 0 {
+		t.warn("formula-cells", "%s: %s computed by a formula; the stored value is taken (%s).", name, qa.Count(len(formulas), "reading is", "readings are"), join2(formulas))
+	}
+}
+
+// ordered puts the rows in the order of the order column where it holds numbers, dates or ISO times in every row, else it
+// leaves the order of the file, which is said.
+func (t *table) ordered(rows []row) []row {
+	if t.order == 0 {
+		return rows
+	}
+	type key struct {
+		number float64
+		text   string
+	}
+	keys := map[int]key{}
+	texts, numbers := 0, 0
+	for _, r := range rows {
+		c := t.cell(r, t.order)
+		s := trimmed(c.Text)
+		if v, err := strconv.ParseFloat(s, 64); err == nil && (c.Kind == cells.Number || c.Kind == cells.Date || c.Kind == cells.Text) && !math.IsNaN(v) {
+			keys[r.at] = key{number: v}
+			numbers++
+		} else if len(s) >= 10 && s[4] == '-' && s[7] == '-' && digits(s[:4]+s[5:7]+s[8:10]) {
+			keys[r.at] = key{text: strings.Replace(s, "T", " ", 1)}
+			texts++
+		}
+	}
+	if numbers != len(rows) && texts != len(rows) {
+		t.say("%s does not hold a number, date or ISO time in every row; the readings stay in the order of the file.", t.columnText(t.order))
+		return rows
+	}
+	sorted := slices.Clone(rows)
+	slices.SortStableFunc(sorted, func(a, b row) int {
+		x, y := keys[a.at], keys[b.at]
+		switch {
+		case x.number < y.number:
+			return -1
+		case x.number > y.number:
+			return 1
+		}
+		return strings.Compare(x.text, y.text)
+	})
+	t.say("the readings are put in the order of %s.", t.columnText(t.order))
+	return sorted
+}
+
+// checkRepeats refuses what would count one part twice: an id twice in a lot, and a lot whose second half repeats its first.
+func (r *reader) checkRepeats() error {
+	var faults []Fault
+	for i := range r.sides {
+		s := &r.sides[i]
+		if s.table.part > 0 {
+			if f, ok := r.repeatedIDs(s); ok {
+				faults = append(faults, f)
+				continue
+			}
+		}
+		ranges, ok := s.doubled()
+		switch {
+		case !ok:
+		case s.table.part > 0:
+			s.table.warn("repeated-block", "the second half of the lot %s repeats the first exactly (%s), under other ids.", quoted(s.lot.Name), ranges)
+		default:
+			faults = append(faults, Fault{Place: s.table.place(), Text: fmt.Sprintf(
+				"found the readings of the lot %s twice (doubled block: %s), want each part once; delete the second block, or name its cells under exclude with a reason", quoted(s.lot.Name), ranges)})
+		}
+	}
+	if len(faults) > 0 {
+		return &PlanError{Faults: faults}
+	}
+	return nil
+}
+
+// repeatedIDs finds ids that stand twice among the readings used of one characteristic.
+func (r *reader) repeatedIDs(s *lotSide) (Fault, bool) {
+	places := map[string][]string{}
+	var repeated []string
+	for _, series := range s.lot.Series {
+		at := map[string][]string{}
+		for _, x := range series.Readings {
+			if x.Used() && x.Part != "" {
+				at[x.Part] = append(at[x.Part], x.Source.Place())
+			}
+		}
+		for _, x := range series.Readings {
+			if x.Used() && len(at[x.Part]) > 1 && places[x.Part] == nil {
+				places[x.Part] = at[x.Part]
+				repeated = append(repeated, x.Part)
+			}
+		}
+	}
+	if len(repeated) == 0 {
+		return Fault{}, false
+	}
+	var listed []string
+	for _, id := range repeated {
+		listed = append(listed, fmt.Sprintf("%s in %s", quoted(id), strings.Join(places[id], " and ")))
+	}
+	do := "if they are repeat readings of one part, name part_column under [reading] (averaging is not offered in this version); else correct the ids, or name the cells under exclude with a reason"
+	if r.plan.Reading.PartColumn != "" {
+		do = "repeat readings of a part are not averaged in this version: leave one reading a part and name the others under exclude with a reason"
+	}
+	return Fault{Place: s.table.place(), Text: fmt.Sprintf("found %s more than once in the lot %s (%s), want each part once; %s",
+		qa.Count(len(repeated), "part id", "part ids"), quoted(s.lot.Name), join2(listed), do)}, true
+}
+
+// doubled says whether the second half of the lot's rows repeats the first exactly in every characteristic: four rows or more
+// with three distinct ones.
+func (s *lotSide) doubled() (string, bool) {
+	keys := map[int]string{}
+	for _, series := range s.lot.Series {
+		for _, x := range series.Readings {
+			if _, n, ok := cells.Parse(x.Source.Cell); ok && x.Used() {
+				keys[n] += series.Characteristic + "\x00" + strconv.FormatFloat(x.Value, 'g', -1, 64) + "\x00"
+			}
+		}
+	}
+	numbers := make([]int, 0, len(keys))
+	for n := range keys {
+		numbers = append(numbers, n)
+	}
+	slices.Sort(numbers)
+	half := len(numbers) / 2
+	if len(numbers) < 4 || len(numbers)%2 != 0 {
+		return "", false
+	}
+	distinct := map[string]bool{}
+	for i := range half {
+		if keys[numbers[i]] != keys[numbers[half+i]] {
+			return "", false
+		}
+		distinct[keys[numbers[i]]] = true
+	}
+	if len(distinct) < 3 {
+		return "", false
+	}
+	var ranges []string
+	for _, col := range s.cols {
+		l := cells.Letters(col)
+		ranges = append(ranges, fmt.Sprintf("%s%d:%s%d and %s%d:%s%d", l, numbers[0], l, numbers[half-1], l, numbers[half], l, numbers[len(numbers)-1]))
+	}
+	return join2(ranges), true
+}

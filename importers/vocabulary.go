@@ -1,0 +1,191 @@
+package importers
+
+import (
+	"strings"
+
+	"lotpair/qa"
+)
+
+// This file is the only one that knows the words of inspection sheets. A word stands here only where it means one thing in
+// every sheet; letters count without case, dots and colons at the end are left off.
+
+// The parts that rows and columns play.
+const (
+	lotHeading   = "lot"
+	partHeading  = "part"
+	orderHeading = "order"
+
+	unitLabel    = "unit"
+	nominalLabel = "nominal"
+	upperLabel   = "upper"
+	lowerLabel   = "lower"
+	upperTol     = "upper tolerance"
+	lowerTol     = "lower tolerance"
+	summaryLabel = "summary"
+	unitTexts    = "mm µm um nm cm dm m km in inch ft mil thou \" ' ° deg rad °C °F K g mg µg kg t oz lb N mN kN lbf Nm N·m Ncm cNm mNm " +
+		"Pa kPa MPa GPa bar mbar psi ksi N/mm² N/mm2 kN/mm² MPa·m½ mm² mm2 cm² cm2 m² mm³ mm3 cm³ cm3 ml mL l L s ms µs ns min h V mV kV A mA µA W kW " +
+		"Ω kΩ MΩ mΩ ohm F µF nF pF H mH Hz kHz MHz GHz % ‰ ppm ppb HRC HRB HV HB HBW HV10 HV30 Shore J kJ mJ cd lm lx dB mol pH rpm 1/min min⁻¹ " +
+		"g/cm³ g/cm3 kg/m³ kg/m3 mm/s m/s mPa·s mPas mol/l mg/l µg/l mg/g"
+)
+
+// headingWords say which part a column plays.
+var headingWords = words(
+	means(lotHeading, "lot|lot no|lot nr|lot number|lot id|lotno|lot name|lot code|batch|batch no|batch nr|batch number|batch id|batch code|"+
+		"charge|chargen-nr|chargennummer|charge nr|chargen nr|los|losnummer|los nr|los-nr|lote|lotto|partie"),
+	means(partHeading, "part|part no|part nr|part number|part id|partno|parts|serial|serial no|serial nr|serial number|s/n|sn|no|nr|#|id|number|"+
+		"sample|sample no|sample nr|sample id|sample number|specimen|specimen no|specimen id|piece|piece no|item|item no|unit no|"+
+		"teil|teil nr|teil-nr|teilenr|teilenummer|teil-id|nummer|seriennummer|serien-nr|probe|proben-nr|probe nr|stück|lfd. nr|lfd nr"),
+	means(orderHeading, "date|time|date/time|timestamp|datum|zeit|uhrzeit|measured at|measured on|order|sequence|reihenfolge"),
+)
+
+// labelWords say what a row is for, where they stand in its lot, part or first cell.
+var labelWords = words(
+	means(unitLabel, "unit|units|einheit|einheiten|uom|unit of measure"),
+	means(nominalLabel, "nominal|nominal value|nominal size|nom|target|target value|nennmaß|nennmass|nennwert|sollwert|sollmaß|sollmass|soll"),
+	means(upperLabel, "usl|upper limit|upper spec|upper spec limit|upper specification limit|upper specification|max limit|maximum limit|"+
+		"osg|otg|oberer grenzwert|obere grenze|obere spezifikationsgrenze|höchstmaß|höchstmass"),
+	means(lowerLabel, "lsl|lower limit|lower spec|lower spec limit|lower specification limit|lower specification|min limit|minimum limit|"+
+		"usg|utg|unterer grenzwert|untere grenze|untere spezifikationsgrenze|mindestmaß|mindestmass"),
+	means(upperTol, "upper tol|upper tolerance|tol+|+tol|plus tolerance|oberes abmaß|oberes abmass"),
+	means(lowerTol, "lower tol|lower tolerance|tol-|-tol|tol−|minus tolerance|unteres abmaß|unteres abmass"),
+	means(summaryLabel, "mean|average|avg|mean value|arithmetic mean|grand mean|x-bar|xbar|x̄|x̅|s|sd|sigma|σ|std|stdev|std dev|std. dev|st. dev|st dev|"+
+		"standard deviation|stdabw|std.-abw|standardabweichung|streuung|var|variance|varianz|min|minimum|max|maximum|range|r|spannweite|median|mode|"+
+		"sum|total|summe|n|count|anzahl|no of values|number of values|cp|cpk|pp|ppk|cm|cmk|cv|rsd|se|sem|q1|q3|ucl|lcl|oeg|ueg|"+
+		"mittelwert|mittel|mw|durchschnitt|ø|3 sigma|6 sigma|+3s|-3s"),
+)
+
+// unitWords are the units that are known without brackets.
+var unitWords = func() map[string]bool {
+	known := map[string]bool{}
+	for _, u := range strings.Fields(unitTexts) {
+		known[u] = true
+	}
+	return known
+}()
+
+type meaning struct{ means, words string }
+
+func means(means, words string) meaning { return meaning{means, words} }
+
+func words(all ...meaning) map[string]string {
+	table := map[string]string{}
+	for _, m := range all {
+		for _, w := range strings.Split(m.words, "|") {
+			table[w] = m.means
+		}
+	}
+	return table
+}
+
+// word is a cell's text as the vocabulary knows it.
+func word(text string) string {
+	return strings.TrimRight(strings.ToLower(qa.JoinSpace(text)), " .:=")
+}
+
+// headingMeans is the part that a heading names; empty for a measurement or anything else. A unit is left off first.
+func headingMeans(heading string) string {
+	if m, ok := headingWords[word(heading)]; ok {
+		return m
+	}
+	name, _ := splitUnit(heading)
+	return headingWords[word(name)]
+}
+
+// missing says whether a text is a mark for a missing value.
+func missing(text string) bool {
+	switch strings.ToLower(qa.JoinSpace(text)) {
+	case "", "n/a", "#n/a", "na", "n.a.", "n. a.", "n.d.", "n. d.", "-", "--", "---", "\u2013", "\u2014", "\u2212", ".", "..", "...", "…", "?":
+		return true
+	}
+	return false
+}
+
+// nonDetect says whether a text states a value below or above a detection limit, by sign or by word.
+func nonDetect(text string) bool {
+	s := strings.ToLower(qa.JoinSpace(text))
+	switch s {
+	case "bdl", "<lod", "< lod", "<loq", "< loq", "below lod", "below loq", "below detection limit", "n.n.", "<bg", "< bg", "<ng", "< ng":
+		return true
+	}
+	for _, sign := range []string{"<=", ">=", "<", ">", "≤", "≥"} {
+		if rest, ok := strings.CutPrefix(s, sign); ok {
+			number, _, _ := cutUnit(rest)
+			for _, decimal := range []byte{'.', ','} {
+				if _, _, err := ParseNumber(number, decimal); err == nil {
+					return true
+				}
+			}
+			return false
+		}
+	}
+	return false
+}
+
+// unitKey makes spellings of one unit equal.
+func unitKey(unit string) string {
+	u := strings.NewReplacer("\u03bc", "µ", " ", "", "\u00a0", "", "\u00b7", "", "*", "").Replace(strings.TrimSpace(unit))
+	switch u {
+	case "um":
+		return "µm"
+	case "inch", "\"", "''":
+		return "in"
+	case "deg":
+		return "°"
+	case "ohm", "\u2126":
+		return "Ω"
+	case "N/mm2", "N/mm²":
+		return "MPa"
+	}
+	return strings.NewReplacer("²", "2", "³", "3").Replace(u)
+}
+
+// isUnit says whether a text is a unit, in brackets or not.
+func isUnit(text string) bool {
+	u := unbracket(strings.TrimSpace(text))
+	return unitWords[u] || unitWords[strings.ReplaceAll(u, "\u03bc", "µ")] || unitWords[strings.ReplaceAll(u, "\u2126", "Ω")]
+}
+
+func unbracket(s string) string {
+	for _, b := range []string{"[]", "()"} {
+		if len(s) > 2 && s[0] == b[0] && s[len(s)-1] == b[1] {
+			return strings.TrimSpace(s[1 : len(s)-1])
+		}
+	}
+	return s
+}
+
+// splitUnit takes a unit in brackets off the end of a heading: square brackets hold one, round ones only a known one.
+func splitUnit(heading string) (name, unit string) {
+	h := qa.JoinSpace(heading)
+	for _, b := range []string{"[]", "()"} {
+		if !strings.HasSuffix(h, b[1:]) {
+			continue
+		}
+		i := strings.LastIndex(h, b[:1])
+		if i <= 0 {
+			continue
+		}
+		in := strings.TrimSpace(h[i+1 : len(h)-1])
+		if b == "[]" && in != "" && len(in) <= 16 || isUnit(in) {
+			return strings.TrimSpace(h[:i]), in
+		}
+	}
+	return h, ""
+}
+
+// cutUnit splits a cell such as "12.3 mm" into its number and its unit.
+func cutUnit(text string) (number, unit string, ok bool) {
+	s := trimmed(text)
+	i := strings.LastIndexAny(s, "0123456789.,")
+	for i >= 0 {
+		number, unit = trimmed(s[:i+1]), trimmed(s[i+1:])
+		if unit == "" {
+			return s, "", false
+		}
+		if strings.ContainsAny(number, "0123456789") && isUnit(unit) {
+			return number, unit, true
+		}
+		i = strings.LastIndexAny(s[:i], "0123456789.,") // units such as mm2 end in a digit
+	}
+	return s, "", false
+}
