@@ -140,14 +140,15 @@ func TestExactMoments(t *testing.T) {
 			d.Sub(d, mean)
 			squares.Add(squares, d.Mul(d, d))
 		}
-		variance, _ := squares.Quo(squares, big.NewRat(int64(len(x)-1), 1)).Float64()
+		variance := new(big.Float).SetPrec(200).SetRat(squares.Quo(squares, big.NewRat(int64(len(x)-1), 1)))
+		sd, _ := variance.Sqrt(variance).Float64()
 		want, _ := mean.Float64()
 		s := stats.Summarize(x)
 		if !alike(s.Mean, want, 0x1p-52) && math.Abs(want) > 1e-15 {
 			t.Fatalf("mean: got %v, want %v", s.Mean, want)
 		}
-		if !alike(s.SD, math.Sqrt(variance), 0x1p-51) {
-			t.Fatalf("sd: got %v, want %v", s.SD, math.Sqrt(variance))
+		if !alike(s.SD, sd, 0x1p-51) {
+			t.Fatalf("sd: got %v, want %v", s.SD, sd)
 		}
 	})
 }

@@ -93,13 +93,12 @@ func logExcess(u, ratio float64) float64 {
 	r := u / (2 + u)
 	r2 := r * r
 	sum, power := 0.0, 2*r2
-	for k := 3.0; ; k += 2 {
-		next := sum + power/k
-		if next == sum {
+	for k := 3.0; k < 60; k += 2 { // r^2 is at most 1/16: 15 terms are enough
+		sum += power / k
+		power *= r2
+		if power < 0x1p-56*sum {
 			break
 		}
-		sum = next
-		power *= r2
 	}
 	return r * (u - sum)
 }

@@ -2,13 +2,17 @@ package dist
 
 import "math"
 
+// converged is the relative step of Newton's method after which nothing is left
+// to gain: the error of the next value is about its square.
+const converged = 1e-9
+
 // StudentQuantile returns the t with P(T <= t) = p for Student's t with df
 // degrees of freedom. It is minus and plus infinity at p = 0 and 1.
 func StudentQuantile(p, df float64) float64 {
 	switch {
 	case !(p >= 0 && p <= 1) || math.IsNaN(df) || df <= 0:
 		return math.NaN()
-	case math.IsInf(df, 1):
+	case df > manyFreedoms:
 		return NormalQuantile(p)
 	case p == 0.5:
 		return 0
@@ -23,7 +27,7 @@ func studentAbove(q, df float64) float64 {
 	if q == 0 {
 		return math.Inf(1)
 	}
-	if q > 0.3 {
+	if q > 0.3 && df > 0.3 { // with fewer freedoms even these are far out
 		return studentNear(0.5-q, df)
 	}
 	// The tail is at least the normal one and at least x^a/(2aB): the larger of
@@ -55,7 +59,7 @@ func studentAbove(q, df float64) float64 {
 		if tail == 0 {
 			next = t / 2
 		}
-		if math.Abs(next-t) <= 0x1p-52*t || math.IsInf(next, 1) {
+		if math.Abs(next-t) <= converged*t || math.IsInf(next, 1) {
 			return next
 		}
 		t = next
@@ -69,7 +73,7 @@ func studentNear(c, df float64) float64 {
 	t := c * math.Sqrt(df) * betaHalf(df/2)
 	for range 100 {
 		next := t + t*(c-studentCentre(t, df))/studentPoint(t, df).power()
-		if math.Abs(next-t) <= 0x1p-52*t {
+		if math.Abs(next-t) <= converged*t {
 			return next
 		}
 		t = next
@@ -109,7 +113,7 @@ func FQuantile(p, d1, d2 float64) float64 {
 		step := diff * lower / fPoint(f, d1, d2).power()
 		above = u
 		u = max(lowest, u-step)
-		if math.Abs(step) < 1e-9 {
+		if math.Abs(step) <= converged {
 			return f * math.Exp(-step)
 		}
 		if u == lowest && above == lowest {

@@ -2,6 +2,10 @@ package dist
 
 import "math"
 
+// manyFreedoms is where Student's t and the normal distribution are one in float64,
+// however far out.
+const manyFreedoms = 1e20
+
 // StudentLower returns P(T <= t) for Student's t with df degrees of freedom.
 func StudentLower(t, df float64) float64 { return StudentUpper(-t, df) }
 
@@ -10,7 +14,7 @@ func StudentUpper(t, df float64) float64 {
 	switch {
 	case math.IsNaN(t) || math.IsNaN(df) || df <= 0:
 		return math.NaN()
-	case math.IsInf(df, 1):
+	case df > manyFreedoms:
 		return NormalUpper(t)
 	case t < 0:
 		return 1 - StudentUpper(-t, df)
