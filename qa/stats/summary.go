@@ -56,8 +56,11 @@ func quantile(sorted []float64, p float64) float64 {
 	if part == 0 {
 		return low
 	}
-	// Two products, because high-low may overflow; held between its neighbours,
-	// because each product is rounded.
+	// Each form rises with p whatever is rounded; the first may overflow, for
+	// ends of different sign.
 	high := sorted[below+1]
-	return max(low, min(low*(1-part)+high*part, high))
+	if (low < 0) == (high < 0) {
+		return min(low+part*(high-low), high)
+	}
+	return low*(1-part) + high*part
 }
