@@ -6,7 +6,7 @@
 //
 // Claimed accuracy, held by tables that R and a 60-digit computation made (see
 // testdata), for degrees of freedom from 0.5 to 1e6: a relative error of at most
-// 5e-14 for probabilities above 1e-100 and 2e-13 down to 1e-300; for quantiles
+// 5e-14 for probabilities above 1e-25 and 1e-12 down to 1e-300; for quantiles
 // 2e-14 where p is above 1e-25 and 1e-13 down to 1e-300. Most values are within a
 // few units of the last place. A probability below the smallest float64 is
 // returned as 0, a quantile above the largest as an infinity.

@@ -55,7 +55,11 @@ func far(t, df float64) bool { return t/math.Sqrt(df) > 1e100 }
 
 // studentFar is the first term of the tail series, x^(df/2) / (df B(df/2, 1/2)).
 func studentFar(t, df float64) float64 {
-	return math.Pow(math.Sqrt(df)/t, df) / (df * betaHalf(df/2))
+	lead := df * betaHalf(df/2)
+	if df < 1 { // t/sqrt(df) may overflow
+		return math.Pow(t, -df) * math.Pow(df, df/2) / lead
+	}
+	return math.Pow(t/math.Sqrt(df), -df) / lead
 }
 
 // betaHalf is the complete beta function B(a, 1/2), by Stirling's formula with
