@@ -1,5 +1,10 @@
 package qa
 
+import (
+	"crypto/sha256"
+	"encoding/hex"
+)
+
 // Source is where a value stood and what stood there.
 type Source struct {
 	File  string `json:"file"`            // as named in the plan
@@ -36,4 +41,10 @@ type File struct {
 	Name   string `json:"name"`   // as in the plan
 	SHA256 string `json:"sha256"` // lower-case hexadecimal digest of the bytes read
 	Bytes  int64  `json:"bytes"`
+}
+
+// FileOf names a file and takes the digest of its bytes.
+func FileOf(name string, data []byte) File {
+	sum := sha256.Sum256(data)
+	return File{Name: name, SHA256: hex.EncodeToString(sum[:]), Bytes: int64(len(data))}
 }

@@ -1,0 +1,218 @@
+package main
+
+import (
+	"bytes"
+	"errors"
+	"fmt"
+	"os"
+	"path/filepath"
+	"runtime"
+
+	"lotpair/exports"
+	"lotpair/exports/identity"
+	"lotpair/exports/opcsign"
+	"lotpair/importers"
+	"lotpair/qa"
+)
+
+// compareFlags is what compare was asked for.
+type compareFlags struct {
+	json, gate, force                       bool
+	workbook, identityFile, meaning, reason string
+	passphraseFile                          string
+	referenceFile, candidateFile, candidate string
+}
+
+func (p *program) compare(args []string) int {
+	var c compareFlags
+	f := p.flags("compare PLAN.toml [--json] [--workbook OUT.xlsx] [--reference-file F] [--candidate-file F] [--candidate-lot L] [--identity KEY.p12 --meaning prepared] [--gate] [--force]",
+		"Runs the plan: reads both lots, holds them against the criterion, says the verdict, and writes the workbook where one is asked for,\nsigned when an identity is given. The verdict never changes the exit code unless --gate is given.",
+		"lotpair-cli compare testdata/demo/plan.toml --workbook hub-shell.xlsx")
+	f.BoolVar(&c.json, "json", false, "print the result as JSON (lotpair.result/1)")
+	f.BoolVar(&c.gate, "gate", false, "exit 1 unless the overall verdict is what was to be shown")
+	f.BoolVar(&c.force, "force", false, "overwrite an existing workbook; never one that holds a signature")
+	f.StringVar(&c.workbook, "workbook", "", "write the record to `OUT.xlsx`")
+	f.StringVar(&c.identityFile, "identity", "", "sign the workbook with `KEY.p12`")
+	f.StringVar(&c.meaning, "meaning", "", "what the signature stands for: `prepared`, reviewed or approved")
+	f.StringVar(&c.reason, "reason", "", "the `reason` stated with the signature")
+	f.StringVar(&c.passphraseFile, "passphrase-file", "", "read the passphrase from the first line of `FILE`")
+	f.StringVar(&c.referenceFile, "reference-file", "", "read the reference from `FILE` instead of the plan's")
+	f.StringVar(&c.candidateFile, "candidate-file", "", "read the candidate from `FILE` instead of the plan's")
+	f.StringVar(&c.candidate, "candidate-lot", "", "take lot `L` as the candidate instead of the plan's")
+	pos, code, err := f.parse(args, "PLAN.toml")
+	if err != nil {
+		return code
+	}
+	if t := c.wrong(); t != "" {
+		return p.usageError(f, t)
+	}
+	rec, code := p.runPlan(pos[0], c)
+	if code != exitDone {
+		return code
+	}
+	if c.workbook != "" {
+		if code := p.writeWorkbook(rec, c); code != exitDone {
+			return code
+		}
+	}
+	if c.json {
+		b, err := exports.ResultJSON(rec.Result)
+		if err != nil {
+			p.say(err)
+			return exitFault
+		}
+		if _, err := p.out.Write(b); err != nil {
+			p.say(err)
+			return exitFile
+		}
+	} else {
+		p.printResult(rec)
+	}
+	if c.gate && !rec.Result.Verdict.Shown() {
+		fmt.Fprintf(p.err, "gate: found the verdict %q, want what was to be shown\n", rec.Result.Verdict)
+		return exitCheck
+	}
+	return exitDone
+}
+
+// wrong says which flags do not go together.
+func (c compareFlags) wrong() string {
+	switch {
+	case c.identityFile != "" && c.workbook == "":
+		return "found --identity without --workbook, want the workbook that is to be signed"
+	case c.identityFile != "" && c.meaning == "":
+		return "found --identity without --meaning, want prepared, reviewed or approved"
+	case c.identityFile == "" && (c.meaning != "" || c.reason != "" || c.passphraseFile != ""):
+		return "found --meaning, --reason or --passphrase-file without --identity, want the identity to sign with"
+	}
+	return ""
+}
+
+// runPlan goes the whole way from the plan file to the record.
+func (p *program) runPlan(path string, c compareFlags) (qa.Record, int) {
+	text, code := p.read(path)
+	if code != exitDone {
+		return qa.Record{}, code
+	}
+	name := filepath.Base(path)
+	plan, err := importers.LoadPlan(name, text)
+	if err != nil {
+		return qa.Record{}, p.failed(err)
+	}
+	dir := filepath.Dir(p.file(path))
+	elsewhere := map[string]string{} // files named on the command line are found from where the command runs
+	if c.referenceFile != "" {
+		plan.Reference.File = filepath.Base(c.referenceFile)
+		elsewhere[plan.Reference.File] = p.file(c.referenceFile)
+	}
+	if c.candidateFile != "" {
+		plan.Candidate.File = filepath.Base(c.candidateFile)
+		elsewhere[plan.Candidate.File] = p.file(c.candidateFile)
+	}
+	if c.candidate != "" {
+		plan.Candidate.Lot = c.candidate
+	}
+	if faults := plan.Validate(); len(faults) > 0 {
+		for _, f := range faults {
+			p.say(f)
+		}
+		return qa.Record{}, exitUsage
+	}
+	readings, err := importers.Read(plan, func(file string) ([]byte, error) {
+		at, ok := elsewhere[file]
+		if !ok {
+			at = file
+			if !filepath.IsAbs(file) {
+				at = filepath.Join(dir, filepath.FromSlash(file))
+			}
+		}
+		return os.ReadFile(at)
+	})
+	if err != nil {
+		return qa.Record{}, p.failed(err)
+	}
+	result, err := qa.Compare(plan, readings, qa.Run{
+		Software: qa.Software{Version: version, Revision: revisionOf(), OS: runtime.GOOS, Arch: runtime.GOARCH},
+		Seal:     qa.Seal{Digest: plan.SealDigest(), Readings: "unknown"},
+		Attempts: qa.Attempts{Known: 1, KeptBy: "not counted"},
+	})
+	if err != nil {
+		p.say(fmt.Errorf("%s: %w", name, err))
+		return qa.Record{}, exitUsage
+	}
+	return qa.NewRecord(plan, qa.FileOf(name, text), readings, result, "console", p.now()), exitDone
+}
+
+// failed prints an error of reading and gives its exit code.
+func (p *program) failed(err error) int {
+	p.say(err)
+	var plan *importers.PlanError
+	if errors.As(err, &plan) {
+		return exitUsage
+	}
+	return exitFile
+}
+
+func (p *program) writeWorkbook(rec qa.Record, c compareFlags) int {
+	var pkg []byte
+	var err error
+	if c.identityFile != "" {
+		id, code := p.openIdentity(c.identityFile, c.passphraseFile)
+		if code != exitDone {
+			return code
+		}
+		pkg, err = exports.SignFirst(rec, id, opcsign.Statement{Meaning: c.meaning, Reason: c.reason, Time: p.now(), Zone: zoneOf(p.now())})
+	} else {
+		pkg, err = exports.Workbook(rec)
+	}
+	if err != nil {
+		return p.notWritten(err)
+	}
+	if err := exports.Save(p.file(c.workbook), pkg, c.force); err != nil {
+		return p.notWritten(err)
+	}
+	if v := exports.Verify(pkg, nil); v.State != exports.Intact && v.State != exports.Incomplete && v.State != exports.Unsigned || !v.Agrees {
+		fmt.Fprintf(p.err, "%s: internal fault: the workbook just written is %s: %v\n", c.workbook, v.State, v.Differences)
+		return exitFault
+	}
+	fmt.Fprintf(p.err, "wrote %s\n", c.workbook)
+	return exitDone
+}
+
+// notWritten prints why a workbook was not written or signed and gives the exit code.
+func (p *program) notWritten(err error) int {
+	p.say(err)
+	var exists *exports.ExistsError
+	var many exports.TooManyReadings
+	var sound *exports.NotSoundError
+	var unstated *exports.UnstatedError
+	switch {
+	case errors.As(err, &exists):
+		return exitLost
+	case errors.As(err, &many):
+		return exitFile
+	case errors.As(err, &sound):
+		return exitCheck
+	case errors.As(err, &unstated), errors.Is(err, exports.ErrMeaning):
+		return exitUsage
+	}
+	return exitFile
+}
+
+// openIdentity opens a .p12 file with its passphrase.
+func (p *program) openIdentity(file, passphraseFile string) (identity.Identity, int) {
+	b, code := p.read(file)
+	if code != exitDone {
+		return identity.Identity{}, code
+	}
+	word, code := p.passphrase(passphraseFile, "passphrase of "+file+": ")
+	if code != exitDone {
+		return identity.Identity{}, code
+	}
+	id, err := identity.Open(bytes.Clone(b), word)
+	if err != nil {
+		p.say(fmt.Errorf("%s: %w", file, err))
+		return identity.Identity{}, exitFile
+	}
+	return id, exitDone
+}
