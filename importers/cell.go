@@ -96,11 +96,7 @@ func numeric(c cells.Cell) bool {
 			return true
 		}
 		number, _, _ := cutUnit(c.Text)
-		for _, decimal := range []byte{'.', ','} {
-			if _, _, err := ParseNumber(number, decimal); err == nil {
-				return true
-			}
-		}
+		return isNumber(number)
 	}
 	return false
 }

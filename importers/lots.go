@@ -124,7 +124,7 @@ func (t *table) hidden() {
 		}
 	}
 	if rows > 0 {
-		t.warn("hidden-rows", "%s of the table hidden; what they hold is used.", qa.Count(rows, "row is", "rows are"))
+		t.warn("hidden-rows", "%s hidden; what they hold is used.", qa.Count(rows, "row of the table is", "rows of the table are"))
 	}
 	for _, c := range t.columns {
 		if t.sheet.HiddenCol(c.col) {
@@ -132,7 +132,7 @@ func (t *table) hidden() {
 		}
 	}
 	if cols > 0 {
-		t.warn("hidden-columns", "%s of the table hidden; what they hold is read like any other.", qa.Count(cols, "column is", "columns are"))
+		t.warn("hidden-columns", "%s hidden; what they hold is read like any other.", qa.Count(cols, "column of the table is", "columns of the table are"))
 	}
 	if t.sheet.Hidden {
 		t.warn("hidden-sheets", "the sheet itself is hidden; it is read.")

@@ -110,12 +110,7 @@ func nonDetect(text string) bool {
 	for _, sign := range []string{"<=", ">=", "<", ">", "≤", "≥"} {
 		if rest, ok := strings.CutPrefix(s, sign); ok {
 			number, _, _ := cutUnit(rest)
-			for _, decimal := range []byte{'.', ','} {
-				if _, _, err := ParseNumber(number, decimal); err == nil {
-					return true
-				}
-			}
-			return false
+			return isNumber(number)
 		}
 	}
 	return false
@@ -182,10 +177,17 @@ func cutUnit(text string) (number, unit string, ok bool) {
 		if unit == "" {
 			return s, "", false
 		}
-		if strings.ContainsAny(number, "0123456789") && isUnit(unit) {
+		if isUnit(unit) && isNumber(number) {
 			return number, unit, true
 		}
 		i = strings.LastIndexAny(s[:i], "0123456789.,") // units such as mm2 end in a digit
 	}
 	return s, "", false
+}
+
+// isNumber says whether a text is a number with either decimal mark.
+func isNumber(text string) bool {
+	_, _, point := ParseNumber(text, '.')
+	_, _, comma := ParseNumber(text, ',')
+	return point == nil || comma == nil
 }
