@@ -41,8 +41,7 @@ func spinePicture(f *excelize.File, s sheet, r qa.Result) error {
 	pitch := int(rowPixels / width * figure.SpineWidth * scale)
 	img := image.NewNRGBA(image.Rect(0, 0, figure.SpineWidth*scale, pitch*n))
 	palette := draw.Light()
-	palette.Paper.R, palette.Paper.G, palette.Paper.B = 0xFF, 0xFF, 0xFF
-	imagedraw.Draw(img, img.Bounds(), image.White, image.Point{}, imagedraw.Src)
+	palette.Paper.A = 0 // the table's lines show through
 	for i, c := range r.Characteristics {
 		line, err := draw.Image(figure.Spine(c), scale, palette)
 		if err != nil {

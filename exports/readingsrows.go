@@ -34,11 +34,14 @@ func readingsSheet(rec qa.Record) sheet {
 	return s
 }
 
-// heads is the heading row of a table.
+// heads is the heading row of a table; the names of columns of numbers stand over their right edge.
 func heads(names ...string) []cell {
 	out := make([]cell, len(names))
 	for i, n := range names {
 		out[i] = text(n, headLook)
+		if n == "Value" || n == "Cells" {
+			out[i].look = headRightLook
+		}
 	}
 	return out
 }
@@ -46,7 +49,7 @@ func heads(names ...string) []cell {
 // ledgerSheet lists every cell that was not taken as a plain number and every reading left out, then how the cells of the
 // files add up.
 func ledgerSheet(rec qa.Record) sheet {
-	s := sheet{name: SheetLedger, widths: []float64{24, 13, 18, 16, 20, 12, 22, 46}, landscape: true}
+	s := sheet{name: SheetLedger, widths: []float64{24, 14, 25, 16, 20, 12, 22, 46}, landscape: true}
 	s.add(text("Ledger", titleLook))
 	s.addTall(30, wide("Every cell that was not taken as a plain number, and every reading left out, with the reason. Nothing is dropped in silence.", wrapLook, 8))
 	s.add(heads("File", "Cell", "Found", "Taken as", "Value", "Side", "Characteristic", "Reason, or what to do")...)

@@ -36,10 +36,11 @@ const (
 	referenceLook
 	candidateLook
 	lotLook
-	headLook    // heading of a table
-	groupLook   // heading of a section
-	verdictLook // the overall verdict
-	wrapLook    // running text over several lines
+	headLook      // heading of a table
+	headRightLook // over numbers
+	groupLook     // heading of a section
+	verdictLook   // the overall verdict
+	wrapLook      // running text over several lines
 	strongLook
 	numberLook // a number shown in full
 	smallLook

@@ -193,7 +193,7 @@ func criterionBlock(s *sheet, rec qa.Record) {
 	for _, c := range r.Characteristics {
 		if e := c.Equivalence; e != nil && e.Permits != nil {
 			paragraph(s, fmt.Sprintf("%s: at the worse end of its margin (%s) Ppk would be %s and %s outside the limits, from the reference's mean and spread.",
-				c.Name, qa.MarginText(c), qa.Fixed(e.Permits.Ppk, 2), qa.Percent(e.Permits.Outside, 4)), smallLook, smallRoom, 12.5)
+				c.Name, qa.MarginText(c), qa.Fixed(e.Permits.Ppk, 2), qa.ShareText(e.Permits.Outside)), smallLook, smallRoom, 12.5)
 		}
 	}
 	s.gap()

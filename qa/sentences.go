@@ -122,13 +122,13 @@ func performanceSentence(c Comparison) string {
 	}
 	s := fmt.Sprintf("Ppk %s %s", verb, rb)
 	if p.Reference.OutsideEstimated != nil && p.Candidate.OutsideEstimated != nil {
-		s += fmt.Sprintf("; expected outside the limits: %s (reference %s)", share(*p.Candidate.OutsideEstimated), share(*p.Reference.OutsideEstimated))
+		s += fmt.Sprintf("; expected outside the limits: %s (reference %s)", ShareText(*p.Candidate.OutsideEstimated), ShareText(*p.Reference.OutsideEstimated))
 	}
 	return s + "."
 }
 
-// share writes a fraction outside the limits as a per cent, with enough decimals to see a small one.
-func share(x float64) string {
+// ShareText writes a fraction outside the limits as a per cent, with enough decimals to see a small one.
+func ShareText(x float64) string {
 	switch {
 	case x < 0.000001:
 		return "below 0.0001 %"

@@ -100,7 +100,7 @@ func (p *program) printVerification(name string, v exports.Verification) {
 		}
 		who := strings.Trim(strings.Join([]string{s.Signer, s.Title, s.Organization}, ", "), ", ")
 		who = strings.ReplaceAll(who, ", , ", ", ")
-		fmt.Fprintf(p.out, "  %s: %s, %s, %s, %s%s\n    certificate SHA-256 %s\n", s.Meaning, who, s.Time, word, trustWord(s.Trusted), after(", reason: ", s.Reason), s.Fingerprint)
+		fmt.Fprintf(p.out, "  %s: %s, %s, %s%s%s\n    certificate SHA-256 %s\n", s.Meaning, who, s.Time, word, trustWord(s.Trusted), after(", reason: ", s.Reason), s.Fingerprint)
 	}
 	for _, m := range v.MissingMeanings {
 		fmt.Fprintf(p.out, "  missing: a signature as %s\n", m)

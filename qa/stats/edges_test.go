@@ -69,6 +69,9 @@ func TestWelchEdges(t *testing.T) {
 		if math.Abs(e.Value-c.value) > 1e-15 || e.SE != 0 || e.DF != 0 {
 			t.Errorf("%s: got %+v, want only the value %v", c.name, e, c.value)
 		}
+		if _, p := e.TwoSided(1); !math.IsNaN(p) || !math.IsNaN(e.Interval(0.9).Lower) {
+			t.Errorf("%s: got p %v and %+v, want NaN", c.name, p, e.Interval(0.9))
+		}
 	}
 	// One constant lot: the other's variance and degrees of freedom alone.
 	for _, constant := range [][]float64{{5, 5}, {5, 5, 5, 5, 5, 5}} {

@@ -11,7 +11,8 @@ type Interval struct{ Level, Lower, Upper float64 }
 
 // An Estimate is a difference of two means, candidate minus reference, with its
 // standard error and the degrees of freedom of the t distribution that belongs
-// to it.
+// to it. An Estimate that came with ErrConstant has only its Value; every p and
+// limit taken from it is NaN.
 type Estimate struct{ Value, SE, DF float64 }
 
 // Welch returns the difference of the means of cand and ref without assuming
