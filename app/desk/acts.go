@@ -9,13 +9,24 @@ import (
 
 // Opened lays a comparison made from a plan file on the desk. Whatever lay there is gone: every act was kept in its record.
 func (s State) Opened(path string, rec qa.Record) State {
-	return State{Open: true, Compared: true, Path: path, Record: rec, Acts: s.Acts}.did("opened the plan " + path)
+	return State{Open: true, Compared: true, Path: path, Record: rec, Selected: weightiest(rec.Result), Acts: s.Acts}.did("opened the plan " + path)
 }
 
 // OpenedWorkbook lays the record of a workbook on the desk, with what verification found of the file.
 func (s State) OpenedWorkbook(rec qa.Record, w Workbook) State {
 	w.Opened = true
-	return State{Open: true, Compared: true, Path: w.Path, Record: rec, Workbook: w, Acts: s.Acts}.did("opened the workbook " + w.Path)
+	return State{Open: true, Compared: true, Path: w.Path, Record: rec, Workbook: w, Selected: weightiest(rec.Result), Acts: s.Acts}.did("opened the workbook " + w.Path)
+}
+
+// weightiest is the first of the characteristics that stand most in the way: what is looked at first.
+func weightiest(r qa.Result) int {
+	best := 0
+	for i, c := range r.Characteristics {
+		if rank(c.Verdict) < rank(r.Characteristics[best].Verdict) {
+			best = i
+		}
+	}
+	return best
 }
 
 // WithSelected looks at another characteristic. A place that does not exist changes nothing.
@@ -66,9 +77,14 @@ func (s State) Compare() (State, error) {
 	if err != nil {
 		return s, fmt.Errorf("comparison: %w", err)
 	}
+	return s.WithResult(res), nil
+}
+
+// WithResult takes a result that was computed from what lies on the desk.
+func (s State) WithResult(res qa.Result) State {
 	s.Record.Result, s.Compared = res, true
 	s.Selected = max(0, min(s.Selected, len(res.Characteristics)-1))
-	return s.did("compared"), nil
+	return s.did("compared")
 }
 
 // Working says what runs off the window's thread, and how much of it is done (below 0 where that is not known).

@@ -1,6 +1,7 @@
 package desk
 
 import (
+	"sort"
 	"strings"
 
 	"lotpair/qa"
@@ -53,13 +54,15 @@ func (s State) Page(side qa.Side) PageView {
 	if len(v.Findings) == 0 {
 		v.Findings = []string{"nothing to look at"}
 	}
-	for _, r := range l.Of(name).Readings {
-		value := r.Source.Text
-		if value == "" {
-			value = qa.Fixed(r.Value, r.Decimals)
-		}
+	series, decimals := l.Of(name), 0
+	for _, r := range series.Readings {
+		decimals = max(decimals, r.Decimals)
+	}
+	for _, r := range series.Readings {
+		value := qa.Fixed(r.Value, min(decimals, 12))
 		v.Readings = append(v.Readings, ReadingView{Source: r.Source, Cell: r.Source.Cell, Value: value, Note: r.LeftOut, LeftOut: !r.Used(), Used: r.Used()})
 	}
+	var not []ReadingView
 	for _, e := range s.Record.Readings.Ledger {
 		if e.Side != side || e.Characteristic != name || e.TakenAs == qa.TakenNumber || e.TakenAs == qa.TakenSummary || e.TakenAs == qa.TakenExcluded && e.Value != nil {
 			continue
@@ -68,8 +71,11 @@ func (s State) Page(side qa.Side) PageView {
 		if e.TakenAs == qa.TakenExcluded {
 			note = e.Reason
 		}
-		v.Readings = append(v.Readings, ReadingView{Source: e.Source, Cell: e.Source.Cell, Value: e.Source.Text, Note: note})
+		not = append(not, ReadingView{Source: e.Source, Cell: e.Source.Cell, Value: e.Source.Text, Note: note})
 	}
+	v.Readings = append(not, v.Readings...)
+	// What is not used stands first: it is what a reader must see.
+	sort.SliceStable(v.Readings, func(a, b int) bool { return !v.Readings[a].Used && v.Readings[b].Used })
 	return v
 }
 

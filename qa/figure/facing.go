@@ -16,7 +16,7 @@ const (
 // Layout of the facing plot, in points.
 const (
 	foot    = 24.0 // below the plot: names of the lots
-	head    = 10.0
+	head    = 18.0 // above the plot: what is not in the picture
 	edge    = 6.0  // left of the plot
 	gap     = 14.0 // between the axis and the first dot
 	leading = 13.0 // between the baselines of two labels
@@ -271,7 +271,7 @@ func (f *facing) names(r qa.Readings) {
 	f.add(Mark{Kind: Label, Name: "reference name", Role: Reference, X: f.axis - 12, Y: y, Size: 12, Anchor: End, Bold: true, Text: short(r.Reference.Name, "reference")},
 		Mark{Kind: Label, Name: "candidate name", Role: Candidate, X: f.axis + 12, Y: y, Size: 12, Bold: true, Text: short(r.Candidate.Name, "candidate")})
 	if f.note != "" {
-		f.add(Mark{Kind: Label, Name: "note", Role: Muted, X: f.axis, Y: head - 1, Size: 10, Anchor: Middle, Text: f.note})
+		f.add(Mark{Kind: Label, Name: "note", Role: Muted, X: f.axis, Y: head - 8, Size: 10, Anchor: Middle, Text: f.note})
 	}
 }
 

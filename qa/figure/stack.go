@@ -59,19 +59,48 @@ func (f *facing) visible(side string, all []point) []point {
 		}
 	}
 	if n := len(all) - len(out); n > 0 {
-		f.note = joined(f.note, fmt.Sprintf("%d left out of the %s outside the picture", n, side))
+		f.note = joined(f.note, fmt.Sprintf("%d left out of the %s lies outside the picture", n, side))
 	}
 	return out
 }
 
-// stack is readings that stand side by side: those within a dot's height of the lowest one (Wilkinson 1999, The American
-// Statistician 53, 276-281, from memory), at the height of their mean.
+// stack is readings that stand side by side.
 type stack struct {
 	y   float64
 	all []point
 }
 
+// stacked puts readings within a dot's height of the lowest one side by side, at the height of their mean (Wilkinson 1999, The
+// American Statistician 53, 276-281, from memory). Where that sets two stacks on each other, every reading goes to the
+// nearest of rows that lie a dot's height apart.
 func (f *facing) stacked(ps []point, height float64) []stack {
+	out := f.gathered(ps, height)
+	for i := 1; i < len(out); i++ {
+		if out[i-1].y-out[i].y < height*0.8 {
+			return f.ruled(ps, height*0.95)
+		}
+	}
+	return out
+}
+
+// ruled sets readings on rows of equal distance, counted from the bottom of the plot.
+func (f *facing) ruled(ps []point, height float64) []stack {
+	var out []stack
+	for _, p := range ps {
+		y := f.bottom - (math.Floor((f.bottom-f.y(p.value))/height)+0.5)*height
+		if n := len(out); n == 0 || out[n-1].y != y {
+			out = append(out, stack{y: y})
+		}
+		last := &out[len(out)-1]
+		last.all = append(last.all, p)
+	}
+	for _, s := range out {
+		sort.SliceStable(s.all, func(a, b int) bool { return !s.all[a].leftOut && s.all[b].leftOut })
+	}
+	return out
+}
+
+func (f *facing) gathered(ps []point, height float64) []stack {
 	var out []stack
 	for i := 0; i < len(ps); {
 		first := f.y(ps[i].value)

@@ -1,0 +1,78 @@
+package app
+
+import (
+	"fyne.io/fyne/v2"
+)
+
+// paintBench draws the characteristic looked at: its picture, and beside it what was found.
+func (w *window) paintBench(p *pen, size fyne.Size) {
+	v := w.view.bench
+	p.across(0, size.Width, 0.6, 1.2, p.Text)
+	divider := float32(int(size.Width * 0.489))
+	name := fontName.fit(v.Name, divider-2*margin-90)
+	end := p.text(name, margin, 28, fontName, p.Text)
+	x := max(170, end+31)
+	for _, view := range v.Views {
+		to := p.text(view, x, 27, fontButton, p.Text)
+		p.across(x, to, 33, 2, p.Text)
+		x = to + 31
+	}
+	if _, ok := w.state.Characteristic(); ok {
+		p.put(w.facing, margin, 42, divider-margin-18, size.Height-42-8)
+	}
+	p.down(divider, 16, size.Height-8, 1, p.Rule)
+	w.sentences.place(p, divider+1, 10, size.Width-divider-2, size.Height-14)
+}
+
+// paragraph is some lines of one font, with room above.
+type paragraph struct {
+	lines   []string
+	font    font
+	leading float32
+	above   float32
+	muted   bool
+}
+
+// paragraphs is what the bench says, wrapped.
+func (w *window) paragraphs(width float32) []paragraph {
+	v, room := w.view.bench, width-2*margin
+	set := func(s string, f font, leading, above float32, muted bool) paragraph {
+		return paragraph{f.wrap(s, room, room), f, leading, above, muted}
+	}
+	out := []paragraph{set(v.Headline, fontVerdict, 24, 20, false)}
+	for i, s := range v.Paragraphs {
+		above := float32(4)
+		if i == 1 {
+			above = 9
+		}
+		out = append(out, set(s, fontBody, 20, above, false))
+	}
+	if v.Caution != "" {
+		out = append(out, set(v.Caution, fontNote, 17, 12, true))
+	}
+	return out
+}
+
+func (w *window) newSentences() *scrolled {
+	return newScrolled(&sheet{
+		palette: w.palette,
+		height: func(width float32) float32 {
+			h := float32(0)
+			for _, g := range w.paragraphs(width) {
+				h += g.above + g.leading*float32(len(g.lines))
+			}
+			return h + 6
+		},
+		paint: func(p *pen, size fyne.Size, _, _ float32) {
+			y := float32(0)
+			for _, g := range w.paragraphs(size.Width) {
+				c := p.Text
+				if g.muted {
+					c = p.MutedText
+				}
+				p.lines(g.lines, margin, y+g.above+g.font.size-1, g.leading, g.font, c)
+				y += g.above + g.leading*float32(len(g.lines))
+			}
+		},
+	})
+}

@@ -1,0 +1,29 @@
+package app
+
+import "fyne.io/fyne/v2"
+
+// paintFoot draws the one next thing to do, what was done last, and the acts that leave the window.
+func (w *window) paintFoot(p *pen, size fyne.Size) {
+	v := w.view.foot
+	p.across(0, size.Width, 0.6, 1.2, p.Text)
+	right := size.Width - margin
+	for _, b := range []*button{w.act.compare, w.act.sign, w.act.export, w.act.signatures} {
+		if b.label == "" {
+			continue
+		}
+		wide := b.wide()
+		if b.kind != quiet {
+			wide = max(wide, 168)
+		}
+		p.put(b, right-wide, 10, wide, 28)
+		b.Refresh()
+		right -= wide + 16
+	}
+	room := right - 2*margin
+	if v.Said == "" {
+		p.text(fontBody.fit(v.Next, room), margin, 30, fontBody, p.Text)
+		return
+	}
+	p.text(fontBody.fit(v.Next, room), margin, 21, fontBody, p.Text)
+	p.text(fontAxis.fit(v.Said, room), margin, 39, fontAxis, p.MutedText)
+}

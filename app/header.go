@@ -1,0 +1,21 @@
+package app
+
+import "fyne.io/fyne/v2"
+
+const margin = 24 // between the window's edge and what stands in it
+
+// paintHeader draws the title and what it supports, and on the right what is known of criterion and file.
+func (w *window) paintHeader(p *pen, size fyne.Size) {
+	v := w.view.header
+	right := size.Width - margin
+	f := fontPlain
+	if v.Alarm {
+		f = fontButton
+	}
+	most := size.Width * 0.45
+	text := f.fit(v.Right, most)
+	left := min(p.ending(text, right, 34, f, p.Text), p.ending(fontPlain.fit(v.Note, most), right, 54, fontPlain, p.MutedText))
+	p.text(fontTitle.fit(v.Title, left-2*margin), margin, 34, fontTitle, p.Text)
+	p.text(fontPlain.fit(v.Supports, left-2*margin), margin, 55, fontPlain, p.MutedText)
+	p.across(0, size.Width, size.Height-0.6, 1.2, p.Text)
+}

@@ -1,0 +1,79 @@
+package app
+
+import (
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/dialog"
+	"fyne.io/fyne/v2/widget"
+
+	"lotpair/app/desk"
+	"lotpair/qa"
+)
+
+// onReading asks what is to become of a reading: left out with a typed reason, or put back. In a closed record, or where the
+// cell is no reading, it says all that is known of the cell.
+func (w *window) onReading(of qa.Side, i int) {
+	all := w.view.pages[of].Readings
+	if i < 0 || i >= len(all) || w.state.Job.Name != "" {
+		return
+	}
+	r := all[i]
+	w.cursor[of] = i
+	switch {
+	case w.state.Closed() || !r.Used && !r.LeftOut:
+		text := r.Source.String() + ": " + r.Value
+		if r.Note != "" {
+			text += "\n" + r.Note
+		}
+		l := widget.NewLabel(text)
+		l.Wrapping, l.Selectable = fyne.TextWrapWord, true
+		d := dialog.NewCustom("Reading", "Close", l, w.win)
+		d.Resize(fyne.NewSize(480, 10))
+		d.Show()
+	case r.LeftOut:
+		d := dialog.NewConfirm("Put back "+r.Source.Place(), r.Value+" was left out: "+r.Note, func(ok bool) {
+			if ok {
+				w.change("Putting back", func(s desk.State) (desk.State, error) { return s.PutBack(r.Source, person(), now()) })
+			}
+		}, w.win)
+		d.SetConfirmText("Put back")
+		d.SetDismissText("Cancel")
+		d.Show()
+	default:
+		reason := widget.NewEntry()
+		reason.SetPlaceHolder("never its size alone")
+		reason.Validator = filled("a reason")
+		d := dialog.NewForm("Leave out "+r.Value+" in "+r.Source.Place(), "Leave out", "Cancel",
+			[]*widget.FormItem{widget.NewFormItem("Reason", reason)}, func(ok bool) {
+				if ok {
+					w.change("Leaving out", func(s desk.State) (desk.State, error) { return s.LeftOut(r.Source, reason.Text, person(), now()) })
+				}
+			}, w.win)
+		w.showForm(d, reason)
+	}
+}
+
+// change does an act that may be refused.
+func (w *window) change(place string, act func(desk.State) (desk.State, error)) {
+	if w.state.Job.Name != "" {
+		return
+	}
+	w.apply(func(s desk.State) desk.State {
+		next, err := act(s)
+		if err != nil {
+			return s.Failed(place, err)
+		}
+		return next
+	})
+}
+
+// compare runs the comparison again.
+func (w *window) compare() {
+	s := w.state
+	w.work("Comparing", func() change {
+		next, err := s.Compare()
+		if err != nil {
+			return failed("Comparing", err)
+		}
+		return func(s desk.State) desk.State { return s.WithResult(next.Record.Result) }
+	})
+}

@@ -1,0 +1,166 @@
+package app
+
+import (
+	"crypto/sha256"
+	"encoding/hex"
+	"errors"
+	"fmt"
+	"os"
+	"path"
+	"path/filepath"
+	"strings"
+	"time"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/dialog"
+	"fyne.io/fyne/v2/storage"
+
+	"lotpair/app/desk"
+	"lotpair/exports"
+	"lotpair/importers"
+	"lotpair/qa"
+)
+
+// mostBytes is the largest file that is opened (contract: console, bounds).
+const mostBytes = 256 << 20
+
+// readFile reads a file of at most mostBytes.
+func readFile(name string) ([]byte, error) {
+	info, err := os.Stat(name)
+	if err != nil {
+		return nil, err
+	}
+	if info.Size() > mostBytes {
+		return nil, fmt.Errorf("%s: found %d bytes, want at most %d; choose a smaller file", name, info.Size(), int64(mostBytes))
+	}
+	return os.ReadFile(name)
+}
+
+// askOpen asks for a file and opens it.
+func (w *window) askOpen() {
+	if w.state.Job.Name != "" {
+		return
+	}
+	d := dialog.NewFileOpen(func(r fyne.URIReadCloser, err error) {
+		if err != nil {
+			w.apply(failed("Opening", err))
+			return
+		}
+		if r == nil {
+			return
+		}
+		name := r.URI().Path()
+		_ = r.Close() // opened for its name only
+		w.open(name, readFile)
+	}, w.win)
+	d.SetFilter(storage.NewExtensionFileFilter([]string{".toml", ".xlsx"}))
+	if w.state.Open {
+		if at, err := storage.ListerForURI(storage.NewFileURI(absolute(filepath.Dir(w.state.Path)))); err == nil {
+			d.SetLocation(at)
+		}
+	}
+	d.Resize(fyne.NewSize(820, 560))
+	d.Show()
+}
+
+// open opens a plan or a workbook, whichever the name says.
+func (w *window) open(name string, read func(string) ([]byte, error)) {
+	place := "Opening " + filepath.Base(name)
+	w.work(place, func() change {
+		data, err := read(name)
+		if err != nil {
+			return failed(place, err)
+		}
+		if strings.EqualFold(filepath.Ext(name), ".xlsx") {
+			return openWorkbook(place, name, data)
+		}
+		rec, err := w.compareByPlan(name, data, read)
+		if err != nil {
+			return failed(place, err)
+		}
+		return func(s desk.State) desk.State { return s.Opened(name, rec) }
+	})
+}
+
+// openWorkbook verifies a workbook and takes the record that is in it.
+func openWorkbook(place, name string, data []byte) change {
+	v := exports.Verify(data, nil)
+	if v.Record == nil {
+		return failed(place, errors.New(strings.Join(workbookOf(name, v).Reasons, "\n")))
+	}
+	rec := *v.Record
+	return func(s desk.State) desk.State { return s.OpenedWorkbook(rec, workbookOf(name, v)) }
+}
+
+// workbookOf is what verification found, as the desk keeps it. No certificates are trusted here: who signed is established
+// with the console's --trust.
+func workbookOf(name string, v exports.Verification) desk.Workbook {
+	out := desk.Workbook{Path: name, State: string(v.State), Missing: v.MissingMeanings}
+	for _, s := range v.Signatures {
+		out.Signatures = append(out.Signatures, desk.Signature{
+			Signer: s.Signer, Title: s.Title, Organization: s.Organization, Meaning: s.Meaning, Reason: s.Reason,
+			Time: s.Time, Valid: s.Valid, CoversAll: s.CoversAll, Fingerprint: s.Fingerprint,
+		})
+	}
+	for _, r := range v.Reasons {
+		out.Reasons = append(out.Reasons, r.Error())
+	}
+	return out
+}
+
+// compareByPlan goes the whole way from a plan file to the record.
+func (w *window) compareByPlan(name string, data []byte, read func(string) ([]byte, error)) (qa.Record, error) {
+	plan, err := importers.LoadPlan(filepath.Base(name), data)
+	if err != nil {
+		return qa.Record{}, err
+	}
+	if faults := plan.Validate(); len(faults) > 0 {
+		var lines []string
+		for _, f := range faults {
+			lines = append(lines, f.Error())
+		}
+		return qa.Record{}, errors.New(strings.Join(lines, "\n"))
+	}
+	readings, err := importers.Read(plan, func(file string) ([]byte, error) {
+		if !filepath.IsAbs(file) {
+			file = beside(name, file)
+		}
+		return read(file)
+	})
+	if err != nil {
+		return qa.Record{}, err
+	}
+	result, err := qa.Compare(plan, readings, qa.Run{
+		Software: w.build.software(),
+		Seal:     qa.Seal{Digest: plan.SealDigest(), Readings: "unknown"},
+		Attempts: qa.Attempts{Known: 1, KeptBy: "not counted"},
+	})
+	if err != nil {
+		return qa.Record{}, err
+	}
+	return qa.NewRecord(plan, fileOf(filepath.Base(name), data), readings, result, person(), now()), nil
+}
+
+// fileOf is a file as the record names it.
+func fileOf(name string, data []byte) qa.File {
+	sum := sha256.Sum256(data)
+	return qa.File{Name: name, SHA256: hex.EncodeToString(sum[:]), Bytes: int64(len(data))}
+}
+
+// beside is a file in the folder of another.
+func beside(name, file string) string {
+	if strings.HasPrefix(name, "example/") { // the sample's names are the program's own, not the system's
+		return path.Join(path.Dir(name), file)
+	}
+	return filepath.Join(filepath.Dir(name), filepath.FromSlash(file))
+}
+
+func absolute(name string) string {
+	if a, err := filepath.Abs(name); err == nil {
+		return a
+	}
+	return name
+}
+
+// now is the time of an act, in whole seconds with its offset.
+func now() time.Time { return time.Now().Truncate(time.Second) }

@@ -1,0 +1,123 @@
+package app
+
+import (
+	"strings"
+	"unicode/utf8"
+
+	"fyne.io/fyne/v2"
+)
+
+// font is how a text is set.
+type font struct {
+	size float32
+	bold bool
+}
+
+// The fonts of the window, as its drawings have them; their halves are rounded up, because the toolkit spaces letters for the
+// next whole size and draws them at the half one.
+var (
+	fontTitle   = font{19, true}
+	fontLot     = font{20, true}
+	fontVerdict = font{17, true}
+	fontName    = font{16, true}
+	fontOverall = font{15, true}
+	fontBody    = font{14, false}
+	fontStrong  = font{14, true}
+	fontPlain   = font{13, false}
+	fontButton  = font{13, true}
+	fontNote    = font{12, false}
+	fontHeading = font{12, true}
+	fontTiny    = font{11, false}
+	fontAxis    = font{12, false}
+	fontLot11   = font{11, true}
+)
+
+func (f font) style() fyne.TextStyle { return fyne.TextStyle{Bold: f.bold} }
+
+// width is how wide a text is in this font.
+func (f font) width(s string) float32 { return fyne.MeasureText(s, f.size, f.style()).Width }
+
+// rise is how far below the top of its box the text's baseline lies.
+func (f font) rise() float32 {
+	_, baseline := fyne.CurrentApp().Driver().RenderedTextSize("Hg", f.size, f.style(), nil)
+	return baseline
+}
+
+// fit is s as it has room in width, its end replaced by "…" where it has not.
+func (f font) fit(s string, width float32) string {
+	if f.width(s) <= width {
+		return s
+	}
+	r := []rune(s)
+	low, high := 0, len(r)
+	for low < high {
+		middle := (low + high + 1) / 2
+		if f.width(cut(r, middle)) <= width {
+			low = middle
+		} else {
+			high = middle - 1
+		}
+	}
+	return cut(r, low)
+}
+
+func cut(r []rune, n int) string { return strings.TrimRight(string(r[:n]), " ,;.") + "…" }
+
+// wrap breaks s into lines of at most width. first is the room of the first line, where something stands before it. A word
+// that is wider than a line is broken where it must be: nothing is ever cut off.
+func (f font) wrap(s string, first, width float32) []string {
+	var out []string
+	room, line := first, ""
+	for _, word := range words(s) {
+		next := word
+		if line != "" {
+			next = line + " " + word
+		}
+		if f.width(next) <= room {
+			line = next
+			continue
+		}
+		if line != "" || len(out) == 0 && first < width {
+			out, room, line = append(out, line), width, ""
+		}
+		for f.width(word) > width && utf8.RuneCountInString(word) > 1 {
+			head := f.broken(word, width)
+			out, word = append(out, head), strings.TrimPrefix(word, head)
+		}
+		line = word
+	}
+	return append(out, line)
+}
+
+// words are the words of s; a per cent sign stays with its number.
+func words(s string) []string {
+	var out []string
+	for _, f := range strings.Fields(s) {
+		if n := len(out); n > 0 && strings.HasPrefix(f, "%") {
+			out[n-1] += " " + f
+			continue
+		}
+		out = append(out, f)
+	}
+	return out
+}
+
+// broken is as much of a word as has room, at least one letter.
+func (f font) broken(word string, width float32) string {
+	r := []rune(word)
+	n := 1
+	for n < len(r) && f.width(string(r[:n+1])) <= width {
+		n++
+	}
+	return string(r[:n])
+}
+
+// atMost keeps the first n lines and ends the last one with "…" where there were more.
+func (f font) atMost(lines []string, n int, width float32) []string {
+	if len(lines) <= n {
+		return lines
+	}
+	out := append([]string{}, lines[:n]...)
+	out[n-1] = f.fit(out[n-1]+" "+lines[n], width)
+	return out
+}

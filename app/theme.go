@@ -1,0 +1,80 @@
+package app
+
+import (
+	"image/color"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/theme"
+
+	"lotpair/qa/figure/draw"
+)
+
+// look is the theme: ink on paper, and the same roles on a dark ground. Fonts and icons are the toolkit's own (Noto Sans).
+type look struct {
+	forced *fyne.ThemeVariant // nil follows the system
+}
+
+func (l look) variant(v fyne.ThemeVariant) fyne.ThemeVariant {
+	if l.forced != nil {
+		return *l.forced
+	}
+	return v
+}
+
+// palette is the colours of the roles, the same for text in the window and for marks in its pictures.
+func palette(v fyne.ThemeVariant) draw.Palette {
+	if v == theme.VariantDark {
+		return draw.Dark()
+	}
+	return draw.Light()
+}
+
+// Color implements fyne.Theme.
+func (l look) Color(name fyne.ThemeColorName, v fyne.ThemeVariant) color.Color {
+	v = l.variant(v)
+	p := palette(v)
+	switch name {
+	case theme.ColorNameBackground, theme.ColorNameOverlayBackground, theme.ColorNameMenuBackground, theme.ColorNameInputBackground, theme.ColorNameHeaderBackground:
+		return p.Paper
+	case theme.ColorNameForeground, theme.ColorNamePrimary, theme.ColorNameHyperlink, theme.ColorNameError, theme.ColorNameWarning, theme.ColorNameSuccess:
+		return p.Text
+	case theme.ColorNameForegroundOnPrimary, theme.ColorNameForegroundOnError, theme.ColorNameForegroundOnWarning, theme.ColorNameForegroundOnSuccess:
+		return p.Paper
+	case theme.ColorNamePlaceHolder, theme.ColorNameInputBorder, theme.ColorNameScrollBar:
+		return p.MutedText
+	case theme.ColorNameDisabled:
+		return p.Muted
+	case theme.ColorNameButton, theme.ColorNameDisabledButton, theme.ColorNameSeparator, theme.ColorNameSelection:
+		return p.Rule
+	case theme.ColorNameShadow:
+		return color.Transparent
+	case theme.ColorNameHover, theme.ColorNameFocus, theme.ColorNamePressed:
+		return faint(p.Text, 0x18)
+	}
+	return theme.DefaultTheme().Color(name, v)
+}
+
+// Font implements fyne.Theme.
+func (look) Font(s fyne.TextStyle) fyne.Resource { return theme.DefaultTheme().Font(s) }
+
+// Icon implements fyne.Theme.
+func (look) Icon(n fyne.ThemeIconName) fyne.Resource { return theme.DefaultTheme().Icon(n) }
+
+// Size implements fyne.Theme.
+func (look) Size(n fyne.ThemeSizeName) float32 {
+	switch n {
+	case theme.SizeNameText:
+		return 14
+	case theme.SizeNameInputRadius, theme.SizeNameSelectionRadius:
+		return 3
+	case theme.SizeNameScrollBarSmall:
+		return 4
+	}
+	return theme.DefaultTheme().Size(n)
+}
+
+// faint is a colour that lets most of what is below it through.
+func faint(c color.NRGBA, alpha uint8) color.NRGBA {
+	c.A = alpha
+	return c
+}

@@ -1,0 +1,147 @@
+package app
+
+import (
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/driver/desktop"
+
+	"lotpair/app/chart"
+	"lotpair/app/desk"
+	"lotpair/qa"
+	"lotpair/qa/figure/draw"
+)
+
+// window is the one window: the state, what is shown of it, and the regions that show it.
+type window struct {
+	app   fyne.App
+	win   fyne.Window
+	build Build
+	look  look
+	jobs  jobs
+
+	state desk.State
+	view  view
+
+	root                                               *fyne.Container
+	header, banner, left, spine, right, bench, foot    *region
+	start                                              *region
+	leftRows, spineRows, rightRows, sentences, problem *scrolled
+	facing                                             *chart.Drawing
+	lines                                              map[int]*chart.Drawing // of the spine, by characteristic
+	cursor                                             map[qa.Side]int        // the reading that the keys are on
+	act                                                buttons
+}
+
+// view is everything the screens say of one state.
+type view struct {
+	header desk.HeaderView
+	pages  map[qa.Side]desk.PageView
+	spine  desk.SpineView
+	bench  desk.BenchView
+	foot   desk.FootView
+}
+
+// buttons are the controls of the window.
+type buttons struct {
+	order, read, cancel                   *button
+	compare, signatures, export, sign     *button
+	openPlan, openWorkbook, openTheSample *button
+}
+
+func newWindow(a fyne.App, b Build, l look) *window {
+	w := &window{app: a, build: b, look: l, cursor: map[qa.Side]int{}, lines: map[int]*chart.Drawing{}}
+	a.Settings().SetTheme(l)
+	w.win = a.NewWindow("Lotpair")
+	w.win.SetPadded(false)
+	w.makeButtons()
+	w.header = newRegion(w.palette, w.paintHeader)
+	w.banner = newRegion(w.palette, w.paintBanner)
+	w.left = newRegion(w.palette, func(p *pen, s fyne.Size) { w.paintPage(p, s, qa.Reference) })
+	w.right = newRegion(w.palette, func(p *pen, s fyne.Size) { w.paintPage(p, s, qa.Candidate) })
+	w.spine = newRegion(w.palette, w.paintSpine)
+	w.bench = newRegion(w.palette, w.paintBench)
+	w.foot = newRegion(w.palette, w.paintFoot)
+	w.start = newRegion(w.palette, w.paintStart)
+	w.leftRows, w.rightRows = w.newPageRows(qa.Reference), w.newPageRows(qa.Candidate)
+	w.spineRows = w.newSpineRows()
+	w.sentences = w.newSentences()
+	w.problem = w.newProblem()
+	w.facing = chart.New(nil, w.palette())
+	// The order of the objects is the order of the Tab key.
+	w.root = container.New(windowLayout{w}, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot)
+	w.win.SetContent(w.root)
+	w.win.Resize(fyne.NewSize(1280, 800))
+	w.win.Canvas().SetOnTypedKey(func(e *fyne.KeyEvent) { w.spineKey(e.Name) })
+	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyO, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.askOpen() })
+	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyE, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.act.export.act() })
+	a.Settings().AddListener(func(fyne.Settings) { w.show() })
+	w.show()
+	return w
+}
+
+func (w *window) makeButtons() {
+	b := &w.act
+	b.order = newButton(w.palette, "", quiet, func() {
+		w.apply(func(s desk.State) desk.State { return s.WithSortedBy(s.Sorted.Next()) })
+	})
+	b.read = newButton(w.palette, "Close", quiet, func() { w.apply(desk.State.Read) })
+	b.cancel = newButton(w.palette, "Cancel", plain, w.cancel)
+	b.compare = newButton(w.palette, "", main, w.compare)
+	b.signatures = newButton(w.palette, "", quiet, w.showSignatures)
+	b.export = newButton(w.palette, "", plain, w.askExport)
+	b.sign = newButton(w.palette, "", main, w.askSign)
+	b.openPlan = newButton(w.palette, "Open a plan", main, w.askOpen)
+	b.openWorkbook = newButton(w.palette, "Open a workbook", plain, w.askOpen)
+	b.openTheSample = newButton(w.palette, "Open the worked example", plain, w.openSample)
+}
+
+// palette is the colours of the theme as it stands.
+func (w *window) palette() draw.Palette {
+	return palette(w.look.variant(w.app.Settings().ThemeVariant()))
+}
+
+// apply does an act: the state changes, and everything is shown anew.
+func (w *window) apply(change func(desk.State) desk.State) {
+	before := w.state
+	w.state = change(w.state)
+	if before.Path != w.state.Path || before.Selected != w.state.Selected {
+		w.cursor = map[qa.Side]int{}
+		for _, s := range []*scrolled{w.leftRows, w.rightRows, w.sentences} {
+			s.scroll.ScrollToTop()
+		}
+	}
+	w.show()
+}
+
+// show sets everything from the state.
+func (w *window) show() {
+	s := w.state
+	w.view = view{
+		header: s.Header(), spine: s.Spine(), bench: s.Bench(), foot: s.Foot(),
+		pages: map[qa.Side]desk.PageView{qa.Reference: s.Page(qa.Reference), qa.Candidate: s.Page(qa.Candidate)},
+	}
+	title := "Lotpair"
+	if s.Open {
+		title = w.view.header.Title + " – Lotpair"
+	}
+	if w.win.Title() != title {
+		w.win.SetTitle(title)
+	}
+	w.lines = map[int]*chart.Drawing{}
+	w.facing.SetPicture(w.facingPicture(), w.palette())
+	b := &w.act
+	b.order.label = w.view.spine.Order
+	b.compare.label, b.signatures.label = w.view.foot.Compare, w.view.foot.Signatures
+	b.export.label, b.sign.label = w.view.foot.Export, w.view.foot.Sign
+	busy := s.Job.Name != ""
+	for _, x := range []*button{b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample} {
+		x.disabled = busy
+	}
+	if w.root.Size().Width > 0 {
+		w.root.Layout.Layout(w.root.Objects, w.root.Size())
+	}
+	for _, r := range []*region{w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot} {
+		r.Refresh()
+	}
+	w.revealSelected()
+}
