@@ -7,9 +7,9 @@
 // Claimed accuracy, held by tables that R and a 60-digit computation made (see
 // testdata), for degrees of freedom from 0.5 to 1e6: a relative error of at most
 // 5e-14 for probabilities above 1e-25 and 1e-12 down to 1e-300; for quantiles
-// 2e-14 where p is above 1e-25 and 1e-13 down to 1e-300. Most values are within a
-// few units of the last place. A probability below the smallest float64 is
-// returned as 0, a quantile above the largest as an infinity.
+// with p down to 1e-300, 5e-14 of Student's t and 1e-13 of F. Most values are
+// within a few units of the last place. A probability below the smallest float64
+// is returned as 0, a quantile above the largest as an infinity.
 //
 // An argument that has no answer (a NaN, degrees of freedom that are not
 // positive, a p outside 0 to 1) gives NaN. Degrees of freedom may be +Inf for

@@ -137,7 +137,7 @@ for df in DF:
     for p in P:
         if float(p) == 1e-300 and df < 1:
             continue
-        show("StudentQuantile", "2e-14", t_quantile(p, mpf(df)), p, df)
+        show("StudentQuantile", "5e-14", t_quantile(p, mpf(df)), p, df)
 
 
 def allow(p):
@@ -152,7 +152,7 @@ for d1, d2 in FD:
         show("FLower", allow(lo), lo, f, d1, d2)
         show("FUpper", allow(up), up, f, d1, d2)
     for p in [1e-100, 1e-10, 0.001, 0.025, 0.05, 0.25, 0.499, 0.5, 0.51, 0.9, 0.95, 0.975, 0.9999]:
-        show("FQuantile", "2e-14" if p > 1e-25 else "1e-13", f_quantile(p, mpf(d1), mpf(d2)), p, d1, d2)
+        show("FQuantile", "1e-13", f_quantile(p, mpf(d1), mpf(d2)), p, d1, d2)
 
 for z in [1e-12, 1e-6, 0.01, 0.3, 0.67, 1, 1.5, 2, 2.5, 3, 4, 5, 6.5, 8, 10, 15, 20, 30, 37]:
     z = mpf(z)
