@@ -67,9 +67,12 @@ func (p *program) newPassphrase(file string) (string, int) {
 	if code != exitDone {
 		return "", code
 	}
-	if len(word) < 8 {
-		fmt.Fprintln(p.err, "passphrase: found fewer than 8 characters, want at least 8; choose a longer one")
+	if word == "" {
+		fmt.Fprintln(p.err, "passphrase: found an empty one, want some words; choose one that only you know")
 		return "", exitUsage
+	}
+	if len(word) < 12 {
+		fmt.Fprintln(p.err, "passphrase: fewer than 12 characters are soon guessed by whoever has the file; a longer one is better")
 	}
 	if file == "" {
 		again, code := p.passphrase("", "the same again: ")
