@@ -29,6 +29,7 @@ type window struct {
 	facing                                             *chart.Drawing
 	lines                                              map[int]*chart.Drawing // of the spine, by characteristic
 	cursor                                             map[qa.Side]int        // the reading that the keys are on
+	rows                                               map[qa.Side]*pageRows  // as they stand, until the state changes
 	act                                                buttons
 }
 
@@ -49,7 +50,7 @@ type buttons struct {
 }
 
 func newWindow(a fyne.App, b Build, l look) *window {
-	w := &window{app: a, build: b, look: l, cursor: map[qa.Side]int{}, lines: map[int]*chart.Drawing{}}
+	w := &window{app: a, build: b, look: l, cursor: map[qa.Side]int{}, lines: map[int]*chart.Drawing{}, rows: map[qa.Side]*pageRows{}}
 	a.Settings().SetTheme(l)
 	w.win = a.NewWindow("Lotpair")
 	w.win.SetPadded(false)
@@ -127,7 +128,7 @@ func (w *window) show() {
 	if w.win.Title() != title {
 		w.win.SetTitle(title)
 	}
-	w.lines = map[int]*chart.Drawing{}
+	w.lines, w.rows = map[int]*chart.Drawing{}, map[qa.Side]*pageRows{}
 	w.facing.SetPicture(w.facingPicture(), w.palette())
 	b := &w.act
 	b.order.label = w.view.spine.Order

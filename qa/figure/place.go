@@ -7,8 +7,8 @@ import (
 
 // place sets the waiting labels, each column apart so that no label covers another, as near as possible to where it belongs.
 func (f *facing) place() {
-	f.add(apart(f.left, head+2, f.bottom-2)...)
-	f.add(apart(f.rights, head+2, f.bottom-2)...)
+	f.add(apart(f.left, head-8, f.bottom-2)...)
+	f.add(apart(f.rights, head-8, f.bottom-2)...)
 }
 
 // apart moves the baselines of labels at least a leading from each other, between top and bottom; the order stays.
