@@ -56,13 +56,14 @@ func (t *table) wanted() []row {
 	if t.lot == 0 || len(t.hints.lots) == 0 {
 		return t.rows
 	}
-	var rows []row
-	for _, r := range t.rows {
-		if slices.ContainsFunc(t.hints.lots, func(l string) bool { return sameName(l, r.lot) }) {
-			rows = append(rows, r)
+	if t.wantedRows == nil {
+		for _, r := range t.rows {
+			if slices.ContainsFunc(t.hints.lots, func(l string) bool { return sameName(l, r.lot) }) {
+				t.wantedRows = append(t.wantedRows, r)
+			}
 		}
 	}
-	return rows
+	return t.wantedRows
 }
 
 func (t *table) cell(r row, col int) cells.Cell { return t.sheet.Rows[r.at].At(col) }

@@ -52,25 +52,36 @@ type sheetOf struct {
 // xlsx writes a workbook with nothing but what the test needs.
 func xlsx(t testing.TB, sheets ...sheetOf) []byte {
 	t.Helper()
+	const (
+		head     = `<?xml version="1.0" encoding="UTF-8" standalone="yes"?>` + "\n"
+		main     = `xmlns="http://schemas.openxmlformats.org/spreadsheetml/2006/main"`
+		relation = "http://schemas.openxmlformats.org/officeDocument/2006/relationships"
+		packages = "http://schemas.openxmlformats.org/package/2006"
+		types    = "application/vnd.openxmlformats-officedocument.spreadsheetml."
+	)
+	var book, rels, content strings.Builder
 	parts := map[string]string{
-		"[Content_Types].xml": `<Types xmlns="http://schemas.openxmlformats.org/package/2006/content-types"/>`,
-		"_rels/.rels":         `<Relationships><Relationship Id="r1" Type="http://schemas.openxmlformats.org/officeDocument/2006/relationships/officeDocument" Target="xl/workbook.xml"/></Relationships>`,
-		"xl/styles.xml": `<styleSheet><numFmts count="1"><numFmt numFmtId="170" formatCode="0.00"/></numFmts><cellXfs><xf numFmtId="0"/><xf numFmtId="16"/>` +
-			`<xf numFmtId="10"/><xf numFmtId="170"/></cellXfs></styleSheet>`,
+		"_rels/.rels": head + `<Relationships xmlns="` + packages + `/relationships"><Relationship Id="r1" Type="` + relation + `/officeDocument" Target="xl/workbook.xml"/></Relationships>`,
+		"xl/styles.xml": head + `<styleSheet ` + main + `><numFmts count="1"><numFmt numFmtId="170" formatCode="0.00"/></numFmts>` +
+			`<fonts count="1"><font/></fonts><fills count="2"><fill><patternFill patternType="none"/></fill><fill><patternFill patternType="gray125"/></fill></fills>` +
+			`<borders count="1"><border/></borders><cellStyleXfs count="1"><xf numFmtId="0"/></cellStyleXfs>` +
+			`<cellXfs count="4"><xf numFmtId="0"/><xf numFmtId="16"/><xf numFmtId="10"/><xf numFmtId="170"/></cellXfs></styleSheet>`,
 	}
-	var book, rels strings.Builder
 	for i, s := range sheets {
 		state := ""
 		if s.hidden {
 			state = ` state="hidden"`
 		}
-		fmt.Fprintf(&book, `<sheet name="%s" sheetId="%d" r:id="s%d"%s/>`, escape(s.name), i+1, i, state)
-		fmt.Fprintf(&rels, `<Relationship Id="s%d" Type="x/worksheet" Target="worksheets/sheet%d.xml"/>`, i, i+1)
-		parts[fmt.Sprintf("xl/worksheets/sheet%d.xml", i+1)] = sheetXML(s)
+		fmt.Fprintf(&book, `<sheet name="%s" sheetId="%d"%s r:id="s%d"/>`, escape(s.name), i+1, state, i)
+		fmt.Fprintf(&rels, `<Relationship Id="s%d" Type="%s/worksheet" Target="worksheets/sheet%d.xml"/>`, i, relation, i+1)
+		fmt.Fprintf(&content, `<Override PartName="/xl/worksheets/sheet%d.xml" ContentType="%sworksheet+xml"/>`, i+1, types)
+		parts[fmt.Sprintf("xl/worksheets/sheet%d.xml", i+1)] = head + strings.Replace(sheetXML(s), "<worksheet>", "<worksheet "+main+">", 1)
 	}
-	rels.WriteString(`<Relationship Id="st" Type="x/styles" Target="styles.xml"/>`)
-	parts["xl/workbook.xml"] = `<workbook xmlns:r="r"><sheets>` + book.String() + `</sheets></workbook>`
-	parts["xl/_rels/workbook.xml.rels"] = `<Relationships>` + rels.String() + `</Relationships>`
+	fmt.Fprintf(&rels, `<Relationship Id="st" Type="%s/styles" Target="styles.xml"/>`, relation)
+	parts["[Content_Types].xml"] = head + `<Types xmlns="` + packages + `/content-types"><Default Extension="rels" ContentType="application/vnd.openxmlformats-package.relationships+xml"/>` +
+		`<Override PartName="/xl/workbook.xml" ContentType="` + types + `sheet.main+xml"/><Override PartName="/xl/styles.xml" ContentType="` + types + `styles+xml"/>` + content.String() + `</Types>`
+	parts["xl/workbook.xml"] = head + `<workbook ` + main + ` xmlns:r="` + relation + `"><sheets>` + book.String() + `</sheets></workbook>`
+	parts["xl/_rels/workbook.xml.rels"] = head + `<Relationships xmlns="` + packages + `/relationships">` + rels.String() + `</Relationships>`
 	var b bytes.Buffer
 	z := zip.NewWriter(&b)
 	for _, name := range []string{"[Content_Types].xml", "_rels/.rels", "xl/workbook.xml", "xl/_rels/workbook.xml.rels", "xl/styles.xml"} {
@@ -88,7 +99,7 @@ func xlsx(t testing.TB, sheets ...sheetOf) []byte {
 
 func write(t testing.TB, z *zip.Writer, name, text string) {
 	t.Helper()
-	w, err := z.Create(name)
+	w, err := z.CreateHeader(&zip.FileHeader{Name: name, Method: zip.Store}) // the same bytes with every version of the compressor
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -215,7 +226,7 @@ func read(t testing.TB, p qa.Plan, data []byte) (qa.Readings, error) {
 	}
 	r, err := Read(p, files(map[string][]byte{p.Reference.File: data}))
 	if err == nil {
-		reconcile(t, r, map[string][]byte{p.Reference.File: data})
+		reconcile(t, r, map[string][]byte{p.Reference.File: data}, p.Reading.Encoding)
 	}
 	return r, err
 }
@@ -230,7 +241,7 @@ func mustRead(t testing.TB, p qa.Plan, data []byte) qa.Readings {
 }
 
 // reconcile checks that every cell of the files is accounted for and that each series adds up.
-func reconcile(t testing.TB, r qa.Readings, data map[string][]byte) {
+func reconcile(t testing.TB, r qa.Readings, data map[string][]byte, enc string) {
 	t.Helper()
 	blanks := 0
 	for _, l := range []qa.Lot{r.Reference, r.Candidate} {
@@ -255,7 +266,7 @@ func reconcile(t testing.TB, r qa.Readings, data map[string][]byte) {
 	}
 	want := 0
 	for name, d := range data {
-		b, err := Open(name, d, "")
+		b, err := Open(name, d, enc)
 		if err != nil {
 			t.Fatal(err)
 		}

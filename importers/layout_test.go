@@ -303,7 +303,7 @@ func TestReadFilePerLot(t *testing.T) { // L4
 		t.Fatal(err)
 	}
 	wantD1(t, r)
-	reconcile(t, r, data)
+	reconcile(t, r, data, "")
 	wantWords(t, strings.Join(r.Said, "\n"), "every row of the sheet is taken as the one lot")
 	p.Candidate.File = "REF-0417.csv"
 	_, err = Read(p, files(data))

@@ -17,7 +17,7 @@ type found struct {
 }
 
 // sameName compares lots' names after joining white space; nothing else is forgiven.
-func sameName(a, b string) bool { return qa.JoinSpace(a) == qa.JoinSpace(b) }
+func sameName(a, b string) bool { return joined(a) == joined(b) }
 
 // foundLots are the lots of the table in the order of their first rows.
 func (t *table) foundLots() []found {

@@ -40,6 +40,7 @@ type table struct {
 	columns          []column
 	lot, part, order int // columns; 0 where there is none
 	rows             []row
+	wantedRows       []row // of the lots looked for
 	limits           map[int][]limit // by column
 	summary          []int           // rows, by index
 	measured         []int           // columns taken as characteristics
@@ -210,4 +211,14 @@ func (t *table) mark(at int, r role) {
 func stored(c cells.Cell) bool { return c.Kind != cells.Blank }
 
 // filledText is a cell's text with white space joined; empty where it holds nothing to see.
-func filledText(c cells.Cell) string { return qa.JoinSpace(c.Text) }
+func filledText(c cells.Cell) string { return joined(c.Text) }
+
+// joined is qa.JoinSpace, without its work where there is nothing to join: it is called for every cell.
+func joined(s string) string {
+	for i := range len(s) {
+		if c := s[i]; c <= ' ' || c >= 0x80 {
+			return qa.JoinSpace(s)
+		}
+	}
+	return s
+}

@@ -133,6 +133,9 @@ func (s *sheetReader) content(c *Cell) (value string, has bool, err error) {
 		case nil:
 			return "", false, damaged(s.w.part, "the end inside a cell")
 		case xml.StartElement:
+			if len(s.w.stack) != depth+1 { // of an extension
+				continue
+			}
 			switch t.Name.Local {
 			case "f":
 				c.Formula = true
