@@ -1,6 +1,7 @@
 package main
 
 import (
+	"errors"
 	"fmt"
 	"os"
 	"path/filepath"
@@ -27,7 +28,7 @@ func check(d *dev, args []string) error {
 	default:
 		return usageError(fmt.Sprintf("found %q, want nothing or --outside", strings.Join(args, " ")))
 	}
-	steps := []func() error{
+	faults := d.all(
 		d.checkFormat,
 		func() error { return d.run(pure, "go", "vet", "-tags", "outside", "./...") },
 		func() error { return d.staticcheck(pure, "outside", "./...") },
@@ -35,7 +36,11 @@ func check(d *dev, args []string) error {
 		d.checkToolsModule,
 		func() error { return d.run(pure, "go", "test", "-run", "TestPolicy", "./cmd/dev") },
 		func() error { return d.run(pure, "go", "test", "./...") },
-		func() error { return d.install("window", desktopNeeds, windowNeeds) },
+	)
+	if err := d.install("window", desktopNeeds, windowNeeds); err != nil {
+		return errors.Join(append(faults, err)...)
+	}
+	faults = append(faults, d.all(
 		func() error {
 			return d.run(desktop, "go", append([]string{"vet", "-tags", windowTags}, windowPackages...)...)
 		},
@@ -45,14 +50,24 @@ func check(d *dev, args []string) error {
 			return err
 		},
 		d.checkWindow,
-	}
-	for _, step := range steps {
-		if err := step(); err != nil {
-			return err
-		}
+	)...)
+	if err := errors.Join(faults...); err != nil {
+		return fmt.Errorf("what does not hold:\n%w", err)
 	}
 	d.say("\nAll checks of this project's own hold.\n%s", notRun)
 	return nil
+}
+
+// all runs every step, also after one that failed: one run shows all that is wrong.
+func (d *dev) all(steps ...func() error) []error {
+	var faults []error
+	for _, step := range steps {
+		if err := step(); err != nil {
+			d.say("FAILED: %v", err)
+			faults = append(faults, err)
+		}
+	}
+	return faults
 }
 
 // staticcheck runs every check that it has; an exception carries its reason on the line.

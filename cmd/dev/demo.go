@@ -97,7 +97,8 @@ func (d *dev) picture(workbook, to, size string, more ...string) error {
 	if err != nil {
 		return err
 	}
-	return d.run(nil, painter, append(append([]string{"--picture", to, "--size", size}, more...), workbook)...)
+	// Where the locale is C, as on a bare machine, Fyne complains of it on every start.
+	return d.run([]string{"LC_ALL=en_US.UTF-8"}, painter, append(append([]string{"--picture", to, "--size", size}, more...), workbook)...)
 }
 
 // open starts the window and leaves it open. A window that ends at once could not be opened; then the picture is made.
