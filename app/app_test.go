@@ -210,7 +210,10 @@ func TestLeaveOutAndCompareAgain(t *testing.T) {
 		for i := range 2 {
 			w.onReading(side, i)
 			w.win.Canvas().Capture()
-			w.win.Canvas().Overlays().Remove(w.win.Canvas().Overlays().Top())
+			w.typed(&fyne.KeyEvent{Name: fyne.KeyEscape})
+			if w.dialog != nil || w.win.Canvas().Overlays().Top() != nil {
+				t.Errorf("%s reading %d: escape did not leave the dialog", side, i)
+			}
 		}
 	}
 }

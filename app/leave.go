@@ -13,7 +13,7 @@ import (
 // cell is no reading, it says all that is known of the cell.
 func (w *window) onReading(of qa.Side, i int) {
 	all := w.view.pages[of].Readings
-	if i < 0 || i >= len(all) || w.state.Job.Name != "" {
+	if i < 0 || i >= len(all) || w.state.Job.Name != "" || w.dialog != nil {
 		return
 	}
 	r := all[i]
@@ -27,8 +27,7 @@ func (w *window) onReading(of qa.Side, i int) {
 		l := widget.NewLabel(text)
 		l.Wrapping, l.Selectable = fyne.TextWrapWord, true
 		d := dialog.NewCustom("Reading", "Close", l, w.win)
-		d.Resize(fyne.NewSize(480, 10))
-		d.Show()
+		w.present(d, 480, 10)
 	case r.LeftOut:
 		d := dialog.NewConfirm("Put back "+r.Source.Place(), r.Value+" was left out: "+r.Note, func(ok bool) {
 			if ok {
@@ -37,9 +36,9 @@ func (w *window) onReading(of qa.Side, i int) {
 		}, w.win)
 		d.SetConfirmText("Put back")
 		d.SetDismissText("Cancel")
-		d.Show()
+		w.present(d, 480, 10)
 	default:
-		reason := widget.NewEntry()
+		reason := w.newField("")
 		reason.SetPlaceHolder("never its size alone")
 		reason.Validator = filled("a reason")
 		d := dialog.NewForm("Leave out "+r.Value+" in "+r.Source.Place(), "Leave out", "Cancel",
@@ -48,7 +47,7 @@ func (w *window) onReading(of qa.Side, i int) {
 					w.change("Leaving out", func(s desk.State) (desk.State, error) { return s.LeftOut(r.Source, reason.Text, person(), now()) })
 				}
 			}, w.win)
-		w.showForm(d, reason)
+		w.presentForm(d, reason)
 	}
 }
 

@@ -38,10 +38,11 @@ func readFile(name string) ([]byte, error) {
 
 // askOpen asks for a file and opens it.
 func (w *window) askOpen() {
-	if w.state.Job.Name != "" {
+	if w.state.Job.Name != "" || w.dialog != nil {
 		return
 	}
 	d := dialog.NewFileOpen(func(r fyne.URIReadCloser, err error) {
+		w.dialog = nil
 		if err != nil {
 			w.apply(failed("Opening", err))
 			return
@@ -59,8 +60,7 @@ func (w *window) askOpen() {
 			d.SetLocation(at)
 		}
 	}
-	d.Resize(fyne.NewSize(820, 560))
-	d.Show()
+	w.present(d, 820, 560)
 }
 
 // open opens a plan or a workbook, whichever the name says.

@@ -27,11 +27,12 @@ func Picture(s Shot, b Build) (image.Image, error) {
 	case !(s.Scale >= 0.5 && s.Scale <= 4):
 		return nil, fmt.Errorf("scale: found %v, want 0.5 to 4", s.Scale)
 	}
-	variant := theme.VariantLight
+	light := theme.VariantLight
+	l := look{forced: &light} // whatever the system says: the same picture everywhere
 	if s.Dark {
-		variant = theme.VariantDark
+		l = wanted(true)
 	}
-	w := newWindow(test.NewApp(), b, look{forced: &variant})
+	w := newWindow(test.NewApp(), b, l)
 	defer w.win.Close()
 	w.jobs.atOnce = true
 	w.win.Canvas().(test.WindowlessCanvas).SetScale(float32(s.Scale))

@@ -18,9 +18,10 @@ func (b Build) software() qa.Software {
 	return qa.Software{Version: b.Version, Revision: b.Revision, OS: runtime.GOOS, Arch: runtime.GOARCH}
 }
 
-// Run opens the window, with the file named in args where there is one, and returns when it is closed.
-func Run(a fyne.App, args []string, b Build) {
-	w := newWindow(a, b, look{})
+// Run opens the window, with the file named in args where there is one, and returns when it is closed: what the user did, an
+// act a line.
+func Run(a fyne.App, args []string, b Build, dark bool) []string {
+	w := newWindow(a, b, wanted(dark))
 	w.win.SetMaster()
 	w.win.CenterOnScreen()
 	if len(args) > 0 {
@@ -28,4 +29,5 @@ func Run(a fyne.App, args []string, b Build) {
 		a.Lifecycle().SetOnStarted(func() { w.open(file, readFile) })
 	}
 	w.win.ShowAndRun()
+	return w.state.Acts
 }

@@ -32,25 +32,17 @@ func (w *window) proposed() string {
 
 // askExport asks where the workbook goes and writes it. The name is typed: no existing file is ever written over.
 func (w *window) askExport() {
-	if w.act.export.label == "" || w.state.Job.Name != "" {
+	if w.act.export.label == "" || w.state.Job.Name != "" || w.dialog != nil {
 		return
 	}
-	to := widget.NewEntry()
-	to.SetText(w.proposed())
+	to := w.newField(w.proposed())
 	to.Validator = filled("a file name")
 	d := dialog.NewForm("Export workbook", "Export", "Cancel", []*widget.FormItem{widget.NewFormItem("File", to)}, func(ok bool) {
 		if ok {
 			w.export(to.Text)
 		}
 	}, w.win)
-	w.showForm(d, to)
-}
-
-// showForm shows a form as wide as paths need, the keys on its first field.
-func (w *window) showForm(d *dialog.FormDialog, first fyne.Focusable) {
-	d.Resize(fyne.NewSize(640, 10))
-	d.Show()
-	w.win.Canvas().Focus(first)
+	w.presentForm(d, to)
 }
 
 // filled refuses an empty field.

@@ -26,10 +26,10 @@ type signing struct {
 
 // askSign asks for the identity, the meaning, the reason and the passphrase, each time.
 func (w *window) askSign() {
-	if w.act.sign.label == "" || w.state.Job.Name != "" {
+	if w.act.sign.label == "" || w.state.Job.Name != "" || w.dialog != nil {
 		return
 	}
-	key := widget.NewEntry()
+	key := w.newField("")
 	key.SetPlaceHolder("your identity file (.p12)")
 	key.Validator = filled("an identity file")
 	browse := newButton(w.palette, "Browse", quiet, func() {
@@ -42,12 +42,11 @@ func (w *window) askSign() {
 	})
 	meaning := widget.NewSelect([]string{"prepared", "reviewed", "approved"}, nil)
 	meaning.SetSelected(w.view.foot.Meaning)
-	reason, disposition := widget.NewEntry(), widget.NewEntry()
+	reason, disposition, passphrase := w.newField(""), w.newField(""), w.newField("")
 	disposition.SetPlaceHolder("what was decided about the lot, where that is yours to say")
-	passphrase := widget.NewPasswordEntry()
+	passphrase.Password = true
 	passphrase.Validator = filled("the passphrase of the identity")
-	to := widget.NewEntry()
-	to.SetText(w.proposed())
+	to := w.newField(w.proposed())
 	to.Validator = filled("a file name")
 	if w.state.Workbook.Path != "" {
 		to.Disable()
@@ -69,7 +68,7 @@ func (w *window) askSign() {
 		}
 		passphrase.SetText("")
 	}, w.win)
-	w.showForm(d, key)
+	w.presentForm(d, key, reason, disposition, to, passphrase)
 }
 
 // sign signs the record's workbook, which is written first where there is none, and reads back what was written.
@@ -148,6 +147,5 @@ func (w *window) showSignatures() {
 		box.Add(l)
 	}
 	d := dialog.NewCustom("Signatures of "+filepath.Base(w.state.Workbook.Path), "Close", container.NewVScroll(box), w.win)
-	d.Resize(fyne.NewSize(720, 420))
-	d.Show()
+	w.present(d, 720, 420)
 }

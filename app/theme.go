@@ -2,6 +2,8 @@ package app
 
 import (
 	"image/color"
+	"os"
+	"runtime"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/theme"
@@ -19,6 +21,19 @@ func (l look) variant(v fyne.ThemeVariant) fyne.ThemeVariant {
 		return *l.forced
 	}
 	return v
+}
+
+// wanted is the look of the window: dark where that is asked for, else what the system says, and paper where a system has no
+// reliable way of saying.
+func wanted(dark bool) look {
+	light, night := theme.VariantLight, theme.VariantDark
+	switch {
+	case dark:
+		return look{forced: &night}
+	case runtime.GOOS == "windows" || runtime.GOOS == "darwin" || os.Getenv("FYNE_THEME") != "":
+		return look{}
+	}
+	return look{forced: &light}
 }
 
 // palette is the colours of the roles, the same for text in the window and for marks in its pictures.
@@ -47,7 +62,7 @@ func (l look) Color(name fyne.ThemeColorName, v fyne.ThemeVariant) color.Color {
 	case theme.ColorNameButton, theme.ColorNameDisabledButton, theme.ColorNameSeparator, theme.ColorNameSelection:
 		return p.Rule
 	case theme.ColorNameShadow:
-		return color.Transparent
+		return color.NRGBA{A: 0x38}
 	case theme.ColorNameHover, theme.ColorNameFocus, theme.ColorNamePressed:
 		return faint(p.Text, 0x18)
 	}

@@ -3,6 +3,7 @@ package app
 import (
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/dialog"
 	"fyne.io/fyne/v2/driver/desktop"
 
 	"lotpair/app/chart"
@@ -19,8 +20,9 @@ type window struct {
 	look  look
 	jobs  jobs
 
-	state desk.State
-	view  view
+	state  desk.State
+	view   view
+	dialog dialog.Dialog // the one that is open, nil where none is
 
 	root                                               *fyne.Container
 	header, banner, left, spine, right, bench, foot    *region
@@ -72,9 +74,10 @@ func newWindow(a fyne.App, b Build, l look) *window {
 	w.root = container.New(windowLayout{w}, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot)
 	w.win.SetContent(w.root)
 	w.win.Resize(fyne.NewSize(1280, 800))
-	w.win.Canvas().SetOnTypedKey(func(e *fyne.KeyEvent) { w.spineKey(e.Name) })
+	w.win.Canvas().SetOnTypedKey(w.typed)
 	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyO, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.askOpen() })
 	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyE, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.act.export.act() })
+	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyQ, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.win.Close() })
 	a.Settings().AddListener(func(fyne.Settings) { w.show() })
 	w.show()
 	return w

@@ -9,6 +9,7 @@ import (
 	"image/png"
 	"os"
 	"runtime/debug"
+	"strings"
 
 	"lotpair/app"
 )
@@ -30,7 +31,8 @@ func run(args []string) error {
 	size := f.String("size", "1280x800", "with --picture: the window's `size` in points")
 	shot := app.Shot{}
 	f.Float64Var(&shot.Scale, "scale", 1, "with --picture: pixels a point")
-	f.BoolVar(&shot.Dark, "dark", false, "with --picture: the dark colours")
+	f.BoolVar(&shot.Dark, "dark", false, "the dark colours")
+	acts := f.String("acts", "", "when the window is closed, write what was done in it to `FILE`, an act a line")
 	f.Usage = func() {
 		fmt.Fprintln(f.Output(), "lotpair [FILE]\nOpens the window, with a plan (.toml) or a record (.xlsx). Example: lotpair testdata/demo/plan.toml")
 		f.PrintDefaults()
@@ -45,7 +47,11 @@ func run(args []string) error {
 	}
 	build := app.Build{Version: version, Revision: revision()}
 	if *picture == "" {
-		return window(f.Args(), build)
+		done, err := window(f.Args(), build, shot.Dark)
+		if err == nil && *acts != "" {
+			err = os.WriteFile(*acts, []byte(strings.Join(done, "\n")+"\n"), 0o600)
+		}
+		return err
 	}
 	if _, err := fmt.Sscanf(*size, "%dx%d", &shot.Width, &shot.Height); err != nil {
 		return fmt.Errorf("--size: found %q, want one such as 1280x800", *size)

@@ -8,8 +8,7 @@ import (
 	"lotpair/app"
 )
 
-// window opens the window and returns when it is closed.
-func window(args []string, build app.Build) error {
-	app.Run(fyneapp.NewWithID("org.lotpair.desktop"), args, build)
-	return nil
+// window opens the window and returns what was done in it when it is closed.
+func window(args []string, build app.Build, dark bool) ([]string, error) {
+	return app.Run(fyneapp.NewWithID("org.lotpair.desktop"), args, build, dark), nil
 }

@@ -1,0 +1,67 @@
+package app
+
+import (
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/dialog"
+	"fyne.io/fyne/v2/widget"
+)
+
+// field is a line to type in, in a dialog: return does what the dialog is for, escape leaves it.
+type field struct {
+	widget.Entry
+	leave func()
+}
+
+func (w *window) newField(text string) *field {
+	f := &field{leave: w.leaveDialog}
+	f.ExtendBaseWidget(f)
+	f.SetText(text)
+	return f
+}
+
+// TypedKey implements fyne.Focusable.
+func (f *field) TypedKey(e *fyne.KeyEvent) {
+	if e.Name == fyne.KeyEscape {
+		f.leave()
+		return
+	}
+	f.Entry.TypedKey(e)
+}
+
+// present shows a dialog; escape leaves it.
+func (w *window) present(d dialog.Dialog, width, height float32) {
+	w.dialog = d
+	d.SetOnClosed(func() {
+		if w.dialog == d {
+			w.dialog = nil
+		}
+	})
+	d.Resize(fyne.NewSize(width, height))
+	d.Show()
+}
+
+// presentForm shows a form with the keys on its first field.
+func (w *window) presentForm(d *dialog.FormDialog, fields ...*field) {
+	for _, f := range fields {
+		f.OnSubmitted = func(string) { d.Submit() }
+	}
+	w.present(d, 640, 10)
+	w.win.Canvas().Focus(fields[0])
+}
+
+// leaveDialog closes the dialog that is open, as Cancel does.
+func (w *window) leaveDialog() {
+	if w.dialog != nil {
+		w.dialog.Dismiss()
+	}
+}
+
+// typed takes the keys that no control took.
+func (w *window) typed(e *fyne.KeyEvent) {
+	switch {
+	case w.dialog == nil:
+		w.spineKey(e.Name)
+	case e.Name == fyne.KeyEscape:
+		w.leaveDialog()
+	}
+}
