@@ -9,7 +9,7 @@ func (w *window) paintBench(p *pen, size fyne.Size) {
 	v := w.view.bench
 	p.across(0, size.Width, 0.6, 1.2, p.Text)
 	divider := float32(int(size.Width * 0.489))
-	name := fontName.fit(v.Name, divider-2*margin-90)
+	name := fontName.middle(v.Name, divider-2*margin-90)
 	end := p.text(name, margin, 28, fontName, p.Text)
 	x := max(170, end+31)
 	for _, view := range v.Views {

@@ -23,7 +23,7 @@ type side struct {
 
 // text sets a line from the page's outer edge inward.
 func (s side) text(t string, y float32, f font, c colour) {
-	t = f.fit(t, s.width-margin-8)
+	t = f.middle(t, s.width-margin-8)
 	if s.right {
 		s.p.ending(t, s.width-margin, y, f, c)
 		return
@@ -47,7 +47,7 @@ func (w *window) paintPage(p *pen, size fyne.Size, of qa.Side) {
 		p.put(w.mark(of), margin+heading+5, 16, 16, 16)
 		p.down(size.Width-0.5, 0, size.Height, 1, p.Rule)
 	}
-	s.text(v.Lot, 54, fontLot, p.Text)
+	s.text(v.Lot, 54, fontLot.smaller(v.Lot, size.Width-margin-8, 14), p.Text)
 	s.text(v.Source, 74, fontPlain, p.Text)
 	s.text(v.File, 98, fontNote, p.MutedText)
 	s.text(v.Digest, 115, fontNote, p.MutedText)

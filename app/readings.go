@@ -17,11 +17,17 @@ type pageRows struct {
 	title    []string
 	findings []string
 	columns  columns
-	first    float32    // where the readings begin
-	notes    [][]string // of the readings not used: the lines of their reasons
-	tops     []float32  // of the readings not used
-	rest     float32    // where those in use begin
+	first    float32   // where the readings begin
+	notes    []note    // of the readings not used: the lines of their reasons
+	tops     []float32 // of the readings not used
+	rest     float32   // where those in use begin
 	readings []desk.ReadingView
+}
+
+// note is the lines of a reason: beside the reading, or below it where it is long.
+type note struct {
+	lines []string
+	below bool
 }
 
 // mostNotes bounds how many reasons are wrapped; a page with more shows the others in one line each.
@@ -40,9 +46,14 @@ func (w *window) pageRowsAt(of qa.Side, width float32) *pageRows {
 	y := r.first
 	for i := 0; i < len(v.Readings) && i < mostNotes && !v.Readings[i].Used; i++ {
 		beside := width - margin - r.columns.cell - r.columns.value - 20
-		lines := fontAxis.wrap(v.Readings[i].Note, beside, beside)
-		r.notes, r.tops = append(r.notes, lines), append(r.tops, y)
-		y += readingLine + float32(max(0, len(lines)-1))*noteLine
+		n := note{lines: fontAxis.wrap(v.Readings[i].Note, beside, beside)}
+		height := float32(max(0, len(n.lines)-1)) * noteLine
+		if len(n.lines) > 2 {
+			n = note{lines: fontAxis.wrap(v.Readings[i].Note, room, room), below: true}
+			height = float32(len(n.lines))*noteLine + 4
+		}
+		r.notes, r.tops = append(r.notes, n), append(r.tops, y)
+		y += readingLine + height
 	}
 	r.rest = y
 	w.rows[of] = r
@@ -107,11 +118,13 @@ func (w *window) paintPageRows(p *pen, size fyne.Size, of qa.Side, top, bottom f
 		if focused && i == w.cursor[of] {
 			p.box(4, y, size.Width-8, end-y, faint(p.Text, 0x14))
 		}
-		var note []string
+		var n note
 		if i < len(r.notes) {
-			note = r.notes[i]
+			n = r.notes[i]
+		} else if r.readings[i].Note != "" {
+			n.lines = []string{fontAxis.fit(r.readings[i].Note, size.Width-margin-r.columns.cell-r.columns.value-20)}
 		}
-		paintReading(s, r.readings[i], note, r.columns, y+15)
+		paintReading(s, r.readings[i], n, r.columns, y+15)
 	}
 }
 
@@ -135,7 +148,7 @@ func columnsOf(all []desk.ReadingView) columns {
 }
 
 // paintReading draws one reading: its cell, its value, and why it is not used.
-func paintReading(s side, r desk.ReadingView, note []string, c columns, y float32) {
+func paintReading(s side, r desk.ReadingView, n note, c columns, y float32) {
 	p := s.p
 	ink := p.Text
 	if !r.Used {
@@ -154,14 +167,15 @@ func paintReading(s side, r desk.ReadingView, note []string, c columns, y float3
 	if r.LeftOut {
 		p.across(begin-1, end+1, y-4.5, 1, ink)
 	}
-	if note == nil && r.Note != "" {
-		note = []string{fontAxis.fit(r.Note, s.width-margin-c.cell-c.value-20)}
-	}
-	for i, l := range note {
-		if s.right {
-			p.ending(l, end-c.value-10, y+float32(i)*noteLine, fontAxis, p.MutedText)
-		} else {
-			p.text(l, end+12, y+float32(i)*noteLine, fontAxis, p.MutedText)
+	for i, l := range n.lines {
+		at := y + float32(i)*noteLine
+		switch {
+		case n.below:
+			s.text(l, at+noteLine+1, fontAxis, p.MutedText)
+		case s.right:
+			p.ending(l, end-c.value-10, at, fontAxis, p.MutedText)
+		default:
+			p.text(l, end+12, at, fontAxis, p.MutedText)
 		}
 	}
 }

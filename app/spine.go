@@ -140,7 +140,7 @@ func (w *window) paintSpineRow(p *pen, width, y float32, r desk.SpineRow, focuse
 		name = fontStrong
 	}
 	room := c.line - spineInset - 12
-	lines := name.atMost(name.wrap(r.Name, room, room), 2, room)
+	lines := name.twoLines(r.Name, room)
 	if len(lines) == 1 {
 		p.text(lines[0], spineInset, y+27, name, p.Text)
 	} else {

@@ -2,6 +2,7 @@ package app
 
 import (
 	"strings"
+	"unicode"
 	"unicode/utf8"
 
 	"fyne.io/fyne/v2"
@@ -89,17 +90,23 @@ func (f font) wrap(s string, first, width float32) []string {
 	return append(out, line)
 }
 
-// words are the words of s; a per cent sign stays with its number.
+// words are the words of s; a number keeps its unit, or whatever short word follows it.
 func words(s string) []string {
+	const short = 5
 	var out []string
 	for _, f := range strings.Fields(s) {
-		if n := len(out); n > 0 && strings.HasPrefix(f, "%") {
+		if n := len(out); n > 0 && utf8.RuneCountInString(f) <= short && endsInDigit(out[n-1]) && !unicode.IsDigit([]rune(f)[0]) {
 			out[n-1] += " " + f
 			continue
 		}
 		out = append(out, f)
 	}
 	return out
+}
+
+func endsInDigit(s string) bool {
+	r, _ := utf8.DecodeLastRuneInString(s)
+	return unicode.IsDigit(r)
 }
 
 // broken is as much of a word as has room, at least one letter.
@@ -110,6 +117,60 @@ func (f font) broken(word string, width float32) string {
 		n++
 	}
 	return string(r[:n])
+}
+
+// twoLines sets a name in at most two lines; what has no room is left out before its end, because names often differ there.
+func (f font) twoLines(s string, width float32) []string {
+	lines := f.wrap(s, width, width)
+	if len(lines) <= 2 {
+		return lines
+	}
+	r := []rune(strings.TrimPrefix(strings.Join(strings.Fields(s), " "), lines[0]))
+	low, high := 0, len(r)
+	for low < high { // the longest end that has room
+		middle := (low + high) / 2
+		if f.width("… "+strings.TrimSpace(string(r[middle:]))) <= width {
+			high = middle
+		} else {
+			low = middle + 1
+		}
+	}
+	if low > 0 && r[low-1] != ' ' { // from the next whole word, where there is one
+		for i := low; i < len(r); i++ {
+			if r[i] == ' ' {
+				low = i
+				break
+			}
+		}
+	}
+	return []string{lines[0], "… " + strings.TrimSpace(string(r[low:]))}
+}
+
+// middle is s as it has room in width, its middle replaced by "…" where it has not.
+func (f font) middle(s string, width float32) string {
+	if f.width(s) <= width {
+		return s
+	}
+	r := []rune(s)
+	kept := func(n int) string { return string(r[:(n+1)/2]) + "…" + string(r[len(r)-n/2:]) }
+	low, high := 0, len(r)-1
+	for low < high {
+		at := (low + high + 1) / 2
+		if f.width(kept(at)) <= width {
+			low = at
+		} else {
+			high = at - 1
+		}
+	}
+	return kept(low)
+}
+
+// smaller is the font, or as much of it as lets s have room, down to a least size.
+func (f font) smaller(s string, width, least float32) font {
+	for f.size > least && f.width(s) > width {
+		f.size--
+	}
+	return f
 }
 
 // atMost keeps the first n lines and ends the last one with "…" where there were more.

@@ -39,7 +39,7 @@ func FacingAt(c qa.Comparison, r qa.Readings, width, height float64) Figure {
 	f.tickAt, f.tickText = f.ticks()
 	f.right = f.Width - 8 - length(f.tickText, 10.5)
 	f.axis = math.Round((edge + f.right) / 2)
-	f.words = length([]string{f.limitText("lower", c.Limits.Lower), f.limitText("upper", c.Limits.Upper), f.meanText(c.Reference.Mean), f.meanText(c.Candidate.Mean)}, 11.5)
+	f.words = length([]string{f.limitText("lower", c.Limits.Lower), f.limitText("upper", c.Limits.Upper), f.meanText(c.Reference.Mean), f.meanText(c.Candidate.Mean)}, 11.5) + 14 // and what stands between line and label
 
 	f.band()
 	f.limit("lower", c.Limits.Lower)
