@@ -26,7 +26,11 @@ func (r *reader) finish() {
 		}
 		t.giveRest(used)
 		r.out.Account = append(r.out.Account, t.account(r.blanks(t))...)
-		r.out.Said = append(r.out.Said, t.said...)
+		for _, s := range t.said {
+			if !slices.Contains(r.out.Said, s) {
+				r.out.Said = append(r.out.Said, s)
+			}
+		}
 		r.out.Warnings = append(r.out.Warnings, t.warnings...)
 	}
 	done := map[string]bool{}
@@ -36,13 +40,16 @@ func (r *reader) finish() {
 			continue
 		}
 		done[b.File.Name] = true
-		var hidden []string
+		var hidden, visible []string
 		for _, sheet := range b.Sheets {
 			if slices.ContainsFunc(r.tables, func(t *table) bool { return t.book.File.Name == b.File.Name && t.sheet.Name == sheet.Name }) {
 				continue
 			}
 			if sheet.Hidden {
 				hidden = append(hidden, sheet.Name)
+			}
+			if !sheet.Hidden {
+				visible = append(visible, sheet.Name)
 			}
 			n := 0
 			for _, row := range sheet.Rows {
@@ -55,6 +62,9 @@ func (r *reader) finish() {
 			if n > 0 {
 				r.out.Account = append(r.out.Account, qa.Account{File: b.File.Name, Sheet: sheet.Name, As: asNotRead, Cells: n})
 			}
+		}
+		if n := len(visible); n > 0 {
+			r.out.Said = append(r.out.Said, b.File.Name+": "+qa.Count(n, "other sheet", "other sheets")+" not read: "+list(visible)+".")
 		}
 		if len(hidden) > 0 {
 			r.out.Warnings = append(r.out.Warnings, qa.Warning{Code: "hidden-sheets", Text: b.File.Name + ": " +

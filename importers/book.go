@@ -55,6 +55,9 @@ func (b Book) workbook(data []byte) (Book, error) {
 		return Book{}, e
 	}
 	b.Sheets = w.Sheets
+	if w.Macros {
+		b.Said = append(b.Said, b.File.Name+": the file holds macros; they are neither run nor read.")
+	}
 	return b, nil
 }
 

@@ -135,7 +135,9 @@ func TestReadDecimalComma(t *testing.T) { // N05
 	r := mustRead(t, xlsxPlan(func(p *qa.Plan) { p.Reading.Decimal = "," }), data)
 	wantD1(t, r)
 	lower, upper := 11.95, 12.05
-	limits := func(p *qa.Plan) { p.Characteristics = []qa.Characteristic{{Name: "Bore dia", Lower: &lower, Upper: &upper}} }
+	limits := func(p *qa.Plan) {
+		p.Characteristics = []qa.Characteristic{{Name: "Bore dia", Lower: &lower, Upper: &upper}}
+	}
 	wantD1(t, mustRead(t, xlsxPlan(limits), data))
 	r = mustRead(t, xlsxPlan(func(p *qa.Plan) { p.Reading.Decimal = "." }), data)
 	if got := r.Reference.Series[0].Values()[0]; got != 12003 {

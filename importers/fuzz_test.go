@@ -10,13 +10,17 @@ import (
 )
 
 func FuzzOpen(f *testing.F) {
-	f.Add("d1.csv", []byte(longCSV(",", ".")))
-	f.Add("d1.csv", []byte(longCSV(";", ",")))
-	f.Add("d1.txt", []byte("\xff\xfeL\x00"))
-	f.Add("d1.csv", []byte("# c\n\"a\nb\";<0.05\n;n/a\nMean;1\n"))
-	f.Add("d1.xlsx", xlsx(f, sheetOf{name: "Data", rows: long()[:4], merged: []string{"A2:A3"}}))
-	f.Add("d1.xlsx", xlsx(f, sheetOf{name: "Data", rows: withSpecs()[:7]}))
-	f.Fuzz(func(t *testing.T, name string, data []byte) {
+	f.Add(false, []byte("Lot,Part,Bore [mm]\nA,1,12.003\nA,2,11.994\nB,1,12.008\nB,2,12.013\n"))
+	f.Add(false, []byte("Lot;Bore\n;mm\nUSL;12,05\nA;12,003\nA;11,9\nB;12,008\nB;12,013\nMean;12\n"))
+	f.Add(false, []byte("\xff\xfeL\x00"))
+	f.Add(false, []byte("# c\n\"a\nb\";<0.05\n;n/a\nMean;1\n"))
+	f.Add(true, xlsx(f, sheetOf{name: "Data", rows: long()[:4], merged: []string{"A2:A3"}}))
+	f.Add(true, xlsx(f, sheetOf{name: "Data", rows: withSpecs()[:7]}))
+	f.Fuzz(func(t *testing.T, workbook bool, data []byte) {
+		name := "d1.csv"
+		if workbook {
+			name = "d1.xlsx"
+		}
 		b, err := Open(name, data, "")
 		if err != nil {
 			if _, ok := errors.AsType[*FileError](err); !ok {

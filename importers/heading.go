@@ -26,7 +26,11 @@ func (t *table) findHeading() error {
 		return nil
 	}
 	best := 0
-	for i := 0; i < len(rows) && i < lookHeadings; i++ {
+	for i, looked := 0, 0; i < len(rows) && looked < lookHeadings; i++ {
+		if t.comment(rows[i]) {
+			continue
+		}
+		looked++
 		if s := t.headingScore(i); s > best {
 			best, t.heading = s, rows[i].Number
 		}
@@ -37,12 +41,15 @@ func (t *table) findHeading() error {
 	return nil
 }
 
+// comment says whether a row is a comment line of a text file.
+func (t *table) comment(r cells.Row) bool {
+	_, found := slices.BinarySearch(t.book.Comments, r.Number)
+	return found
+}
+
 // headingScore rates a row as the row of headings; 0 where it cannot be one.
 func (t *table) headingScore(i int) int {
 	r := t.sheet.Rows[i]
-	if slices.Contains(t.book.Comments, r.Number) {
-		return 0
-	}
 	score, below := 0, false
 	for _, c := range r.Cells {
 		text := filledText(c)
@@ -82,7 +89,7 @@ func (t *table) readHeadings() error {
 			break
 		}
 		if r.Number < t.heading {
-			if slices.Contains(t.book.Comments, r.Number) {
+			if t.comment(r) {
 				t.mark(i, roleComment)
 				continue
 			}
@@ -146,14 +153,17 @@ func (t *table) findLotColumn() error {
 			byHeading = append(byHeading, c.col)
 		}
 	}
-	if len(t.hints.lots) > 0 {
+	if len(t.hints.lots) > 0 && !slices.ContainsFunc(t.hints.lots, isNumber) { // a number may stand anywhere
 		for _, col := range t.contentColumns() {
 			if t.holds(col) {
 				byContent = append(byContent, col)
 			}
 		}
 	}
-	both := slices.DeleteFunc(slices.Clone(byHeading), func(col int) bool { return !slices.Contains(byContent, col) })
+	both := byHeading
+	if len(byHeading) > 1 {
+		both = slices.DeleteFunc(slices.Clone(byHeading), func(col int) bool { return !t.holds(col) })
+	}
 	switch {
 	case len(both) == 1:
 		t.lot = both[0]

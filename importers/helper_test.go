@@ -29,7 +29,7 @@ const (
 
 // The kinds of cells that a test sheet is made of, beside string (inline text) and num.
 type (
-	num     string                      // a number as stored
+	num     string                       // a number as stored
 	formula struct{ text, value string } // a formula with a stored number; none where the value is empty
 	styled  struct {                     // a number under a number format
 		value string

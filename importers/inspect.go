@@ -150,7 +150,7 @@ func (in *Inspection) characteristics(t *table, lots []found) {
 		if len(t.named(c.name)) == 1 {
 			ch.Name = c.name
 		}
-		m, err := t.settleColumn(&ch, col)
+		m, err := t.settleColumn(&ch, qa.Characteristic{}, col)
 		if err != nil {
 			for _, f := range faultsOf(err) {
 				t.warnings = append(t.warnings, qa.Warning{Code: DecimalAmbiguous, Text: f.Place + ": " + f.Text})
@@ -160,21 +160,22 @@ func (in *Inspection) characteristics(t *table, lots []found) {
 		out := InspectedCharacteristic{
 			Name: ch.Name, Unit: ch.Unit, Kind: "numeric", Limits: qa.Limits{Lower: ch.Lower, Target: ch.Target, Upper: ch.Upper}, Lots: []InspectedReading{},
 		}
+		values := map[string][]float64{}
+		for _, row := range t.rows {
+			got := takeCell(t.cell(row, col), t.book.IsText, ch.Unit, m.decimal)
+			if got.isValue {
+				values[row.lot] = append(values[row.lot], got.value)
+			}
+			in.unread(t, row, col, got)
+		}
 		for _, l := range lots {
 			r := InspectedReading{Lot: l.name}
-			var values []float64
-			for _, row := range t.rows {
-				if t.lot > 0 && row.lot != l.name {
-					continue
-				}
-				got := takeCell(t.cell(row, col), t.book.IsText, ch.Unit, m.decimal)
-				if got.isValue {
-					values = append(values, got.value)
-				}
-				in.unread(t, row, col, got)
+			v := values[l.name]
+			if t.lot == 0 {
+				v = values[""]
 			}
-			if r.N = len(values); r.N > 0 {
-				mean := meanOf(values)
+			if r.N = len(v); r.N > 0 {
+				mean := meanOf(v)
 				r.Mean = &mean
 			}
 			out.Lots = append(out.Lots, r)

@@ -67,6 +67,9 @@ func (t *table) limitsOf(col int, unit string, decimal byte) (qa.Characteristic,
 			c.Lower = sum(lowerTol, v)
 		}
 	}
+	if c.Target == nil && (values[upperTol] != nil || values[lowerTol] != nil) {
+		t.warn("limits-incomplete", "%s has tolerances without a nominal value; no limits are taken from them.", t.columnText(col))
+	}
 	return c, nil
 }
 
@@ -79,22 +82,31 @@ func roundTo(x float64, decimals int) float64 {
 	return v
 }
 
-// mergeLimits lets the plan's limits win over the sheet's; a difference is a warning.
-func (t *table) mergeLimits(c *qa.Characteristic, file qa.Characteristic) {
+// mergeLimits lets the plan's limits win over the sheet's, which is a warning where they differ. Two sheets that differ, with
+// no word in the plan, are a fault: they may be of two revisions of the drawing.
+func (t *table) mergeLimits(c *qa.Characteristic, plan, file qa.Characteristic) error {
 	for _, l := range []struct {
-		name string
-		plan **float64
-		file *float64
-	}{{"lower limit", &c.Lower, file.Lower}, {"target", &c.Target, file.Target}, {"upper limit", &c.Upper, file.Upper}} {
+		name       string
+		is         **float64
+		plan, file *float64
+	}{
+		{"lower limit", &c.Lower, plan.Lower, file.Lower},
+		{"target", &c.Target, plan.Target, file.Target},
+		{"upper limit", &c.Upper, plan.Upper, file.Upper},
+	} {
 		switch {
 		case l.file == nil:
-		case *l.plan == nil:
-			*l.plan = l.file
+		case *l.is == nil:
+			*l.is = l.file
 			t.say("the %s of %s is taken from the sheet: %s.", l.name, c.Name, qa.Plain(*l.file))
-		case **l.plan != *l.file:
-			t.warn("limits-differ", "%s: the %s is %s in the plan and %s in the sheet; the plan's is taken.", c.Name, l.name, qa.Plain(**l.plan), qa.Plain(*l.file))
+		case **l.is == *l.file:
+		case l.plan != nil:
+			t.warn("limits-differ", "%s: the %s is %s in the plan and %s in the sheet; the plan's is taken.", c.Name, l.name, qa.Plain(*l.plan), qa.Plain(*l.file))
+		default:
+			return t.refuse("characteristic %s: found the %s %s here and %s in the other lot's sheet, want the same; state the limits in the plan", quoted(c.Name), l.name, qa.Plain(*l.file), qa.Plain(**l.is))
 		}
 	}
+	return nil
 }
 
 // mergeUnit settles the unit of a characteristic between the plan and the sheet: they must be the same.

@@ -3,7 +3,6 @@ package importers
 import (
 	"fmt"
 	"slices"
-	"strings"
 
 	"lotpair/importers/cells"
 	"lotpair/qa"
@@ -88,10 +87,14 @@ func (t *table) sayOthers(used []string) {
 	if t.lot == 0 {
 		return
 	}
-	for _, l := range t.foundLots() {
-		if slices.ContainsFunc(used, func(u string) bool { return sameName(u, l.name) }) {
-			continue
-		}
+	others := slices.DeleteFunc(t.foundLots(), func(l found) bool {
+		return slices.ContainsFunc(used, func(u string) bool { return sameName(u, l.name) })
+	})
+	if len(others) > 20 {
+		t.say("%d other lots take no part: %s.", len(others), list(names(others)))
+		others = nil
+	}
+	for _, l := range others {
 		t.say("the lot %s (%s) takes no part.", quoted(l.name), qa.Count(l.rows, "row", "rows"))
 	}
 	t.nearSpellings(func(name string) bool {
@@ -102,16 +105,35 @@ func (t *table) sayOthers(used []string) {
 // nearSpellings warns of lots whose names are near spellings of one that counts.
 func (t *table) nearSpellings(counts func(string) bool) {
 	all := t.foundLots()
+	bySpelling := map[string][]found{}
+	var main []found
+	for _, l := range all {
+		bySpelling[spelling(l.name)] = append(bySpelling[spelling(l.name)], l)
+		if counts(l.name) {
+			main = append(main, l)
+		}
+	}
+	if len(main) > 50 { // ids rather than lots; a comparison of all with all would never end
+		main = main[:50]
+	}
 	var pairs []string
-	for i, a := range all {
-		for j, b := range all {
-			if i != j && counts(a.name) && !(counts(b.name) && j < i) && (spelling(a.name) == spelling(b.name) || swapped(a.name, b.name)) {
+	told := map[[2]string]bool{}
+	for _, a := range main {
+		near := slices.Clone(bySpelling[spelling(a.name)])
+		for _, b := range all {
+			if swapped(a.name, b.name) {
+				near = append(near, b)
+			}
+		}
+		for _, b := range near {
+			if b.name != a.name && !told[[2]string{b.name, a.name}] {
+				told[[2]string{a.name, b.name}] = true
 				pairs = append(pairs, fmt.Sprintf("%s beside %s (%s from %s)", quoted(b.name), quoted(a.name), qa.Count(b.rows, "row", "rows"), b.first.Name()))
 			}
 		}
 	}
 	if len(pairs) > 0 {
-		t.warn("lot-spellings", "lots in several spellings, not joined: %s. If they are one lot, write the name alike in the file.", strings.Join(pairs, "; "))
+		t.warn("lot-spellings", "lots in several spellings, not joined: %s. If they are one lot, write the name alike in the file.", join2(pairs))
 	}
 }
 

@@ -172,15 +172,15 @@ func TestLoadPlanListsAllFaults(t *testing.T) {
 
 func TestLoadPlanRefusesOtherFiles(t *testing.T) {
 	for text, words := range map[string]string{
-		"":                              "empty file",
-		" \n\t":                         "empty file",
-		"PK\x03\x04":                    "workbook",
-		"\xff\xfef\x00":                 "UTF-16",
-		"a\x00b":                        "binary",
+		"":                                 "empty file",
+		" \n\t":                            "empty file",
+		"PK\x03\x04":                       "workbook",
+		"\xff\xfef\x00":                    "UTF-16",
+		"a\x00b":                           "binary",
 		"format = \"x\"\ntitle = \"\xe4\"": "plan.toml:2: found a byte that is not UTF-8",
-		"lot,part\nA,1\n":               "plan.toml:1: ",
-		"# only a comment":              `want "lotpair.plan/1"`,
-		strings.Repeat("#", maxPlan+1):  "4 MiB",
+		"lot,part\nA,1\n":                  "plan.toml:1: ",
+		"# only a comment":                 `want "lotpair.plan/1"`,
+		strings.Repeat("#", maxPlan+1):     "4 MiB",
 	} {
 		_, err := LoadPlan("plan.toml", []byte(text))
 		wantPlanError(t, err, words)

@@ -278,7 +278,7 @@ func (r *reader) settleMarks() error {
 					col = s.cols[i]
 				}
 			}
-			m, err := t.settleColumn(c, col)
+			m, err := t.settleColumn(c, r.planned(i), col)
 			if err != nil {
 				faults = append(faults, faultsOf(err)...)
 			}
@@ -300,7 +300,7 @@ func (r *reader) settleMarks() error {
 }
 
 // settleColumn settles the decimal mark of one column and merges its limits into the characteristic.
-func (t *table) settleColumn(c *qa.Characteristic, col int) (mark, error) {
+func (t *table) settleColumn(c *qa.Characteristic, plan qa.Characteristic, col int) (mark, error) {
 	var texts []cells.Cell
 	for _, r := range t.wanted() {
 		if cell := t.cell(r, col); cell.Kind == cells.Text {
@@ -308,7 +308,8 @@ func (t *table) settleColumn(c *qa.Characteristic, col int) (mark, error) {
 		}
 	}
 	lower, upper := c.Lower, c.Upper
-	if file, err := t.limitsOf(col, c.Unit, 0); err == nil {
+	quiet := *t // a first look: what it says is said later
+	if file, err := quiet.limitsOf(col, c.Unit, 0); err == nil {
 		if lower == nil {
 			lower = file.Lower
 		}
@@ -333,9 +334,20 @@ func (t *table) settleColumn(c *qa.Characteristic, col int) (mark, error) {
 		t.say("%s is read with a %s: %s.", t.columnText(col), mark, m.said)
 	}
 	file, err := t.limitsOf(col, c.Unit, m.decimal)
-	if err != nil {
+	switch {
+	case err != nil && (plan.Lower != nil || plan.Upper != nil):
+		t.warn("limits-unread", "%s; the plan's limits are taken.", err)
+		return m, nil
+	case err != nil:
 		return m, err
 	}
-	t.mergeLimits(c, file)
-	return m, nil
+	return m, t.mergeLimits(c, plan, file)
+}
+
+// planned is what the plan itself says of a characteristic.
+func (r *reader) planned(i int) qa.Characteristic {
+	if i < len(r.plan.Characteristics) {
+		return r.plan.Characteristics[i]
+	}
+	return qa.Characteristic{}
 }

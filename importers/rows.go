@@ -45,6 +45,8 @@ func (t *table) isUnitRow(r cells.Row) bool {
 	for _, c := range r.Cells {
 		text := filledText(c)
 		switch {
+		case c.Col == t.lot && text != "" && !missing(text) && labelWords[word(text)] != unitLabel:
+			return false // lots are called A, V or N
 		case text == "" || missing(text):
 		case labelWords[word(text)] == unitLabel && !isUnit(text):
 			labelled = true
@@ -125,7 +127,7 @@ func (t *table) label(r cells.Row) (means string, short bool) {
 		}
 		w := word(c.Text)
 		if m := labelWords[w]; m != "" && m != unitLabel {
-			return m, utf8.RuneCountInString(w) <= 2
+			return m, utf8.RuneCountInString(w) <= 2 || w == "max" // also a person's name
 		}
 		if first, _, ok := strings.Cut(w, " "); ok && labelWords[first] == summaryLabel && utf8.RuneCountInString(first) > 3 && lot == "" {
 			return summaryLabel, false // "Mean of lot"
@@ -197,10 +199,8 @@ func (t *table) fillLots(data []row) error {
 	for _, d := range data {
 		r := t.sheet.Rows[d.at]
 		d.lot = direct[index[d.at]]
-		for _, s := range t.summary { // a summary ends a block
-			if s > last && s < d.at {
-				current = ""
-			}
+		if i, _ := slices.BinarySearch(t.summary, last); i < len(t.summary) && t.summary[i] < d.at { // a summary ends a block
+			current = ""
 		}
 		last = d.at
 		if d.lot == "" {
@@ -218,8 +218,9 @@ func (t *table) fillLots(data []row) error {
 			d.lot = current
 			t.filled++
 		case d.lot == "":
-			if t.note(r) {
+			if t.note(r) || t.idle(r) {
 				t.mark(d.at, roleNote)
+				t.notes = append(t.notes, strconv.Itoa(r.Number))
 				continue
 			}
 			lost = append(lost, cells.Name(t.lot, r.Number))
@@ -229,6 +230,9 @@ func (t *table) fillLots(data []row) error {
 	}
 	if len(lost) > 0 {
 		return t.refuse("found readings in rows without a lot's name (%s), want the name in each row; write the lot's name there, or delete what is no reading", join2(lost))
+	}
+	if n := len(t.notes); n > 0 {
+		t.say("%s without a lot and without readings not read: %s.", qa.Count(n, "row", "rows"), join2(t.notes))
 	}
 	if t.filled > 0 {
 		t.warn("lot-filled-down", "the lot's name stands only in the first row of its block; it is taken for %s below.", qa.Count(t.filled, "row", "rows"))
@@ -279,6 +283,17 @@ func (t *table) alone(r cells.Row, col int) bool {
 func (t *table) note(r cells.Row) bool {
 	return !slices.ContainsFunc(r.Cells, func(c cells.Cell) bool {
 		return c.Kind != cells.Blank && (c.Kind != cells.Text || numeric(c))
+	})
+}
+
+// idle says whether a row without a lot holds nothing but a part's id or an order: a form's row that was not used.
+func (t *table) idle(r cells.Row) bool {
+	return !slices.ContainsFunc(r.Cells, func(c cells.Cell) bool {
+		if filledText(c) == "" && c.Kind != cells.FormulaNoValue {
+			return false
+		}
+		means := headingMeans(t.column(c.Col).heading)
+		return c.Col != t.part && c.Col != t.order && means != partHeading && means != orderHeading
 	})
 }
 

@@ -40,11 +40,12 @@ type table struct {
 	columns          []column
 	lot, part, order int // columns; 0 where there is none
 	rows             []row
-	wantedRows       []row // of the lots looked for
+	wantedRows       []row           // of the lots looked for
 	limits           map[int][]limit // by column
 	summary          []int           // rows, by index
 	measured         []int           // columns taken as characteristics
 	filled           int             // rows whose lot was filled down
+	notes            []string        // rows without a lot and without readings
 	roles            [][]role        // of each stored cell
 
 	said     []string

@@ -171,6 +171,9 @@ func splitUnit(heading string) (name, unit string) {
 // cutUnit splits a cell such as "12.3 mm" into its number and its unit.
 func cutUnit(text string) (number, unit string, ok bool) {
 	s := trimmed(text)
+	if len(s) > 400 {
+		return s, "", false
+	}
 	i := strings.LastIndexAny(s, "0123456789.,")
 	for i >= 0 {
 		number, unit = trimmed(s[:i+1]), trimmed(s[i+1:])

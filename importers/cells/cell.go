@@ -59,6 +59,7 @@ type Sheet struct {
 type Workbook struct {
 	Sheets   []Sheet
 	Date1904 bool // dates count from 1904
+	Macros   bool // the file carries macros, which nothing here runs
 }
 
 // Sheet finds a worksheet by its name.

@@ -28,7 +28,7 @@ func Read(data []byte) (Workbook, error) {
 	if err != nil {
 		return Workbook{}, err
 	}
-	w := Workbook{Date1904: o.date1904}
+	w := Workbook{Date1904: o.date1904, Macros: o.pack.parts["xl/vbaproject.bin"] != nil}
 	for _, t := range o.tabs {
 		s, err := o.sheet(t)
 		if err != nil {
