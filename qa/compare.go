@@ -323,8 +323,10 @@ func holm(cs []Comparison) {
 		cs[i].Difference.PHolm = &adjusted
 		if cs[i].Verdict.Shown() && adjusted >= cs[i].Alpha {
 			cs[i].Verdict = NoDifference
-			cs[i].Warnings = append(cs[i].Warnings, Warning{Code: WarnAbsence, Path: "verdict",
-				Text: "After adjustment for the number of characteristics (Holm) the difference is not shown; this is not evidence that there is none. The interval is not adjusted."})
+			cs[i].Warnings = append(cs[i].Warnings, Warning{
+				Code: WarnAbsence, Path: "verdict",
+				Text: "After adjustment for the number of characteristics (Holm) the difference is not shown; this is not evidence that there is none. The interval is not adjusted.",
+			})
 		}
 	}
 }

@@ -87,7 +87,8 @@ func (p *program) verifyJSON(v exports.Verification) error {
 		struct {
 			Agrees      bool     `json:"agrees"`
 			Differences []string `json:"differences"`
-		}{v.Agrees, v.Differences}, v.State,
+		}{v.Agrees, v.Differences},
+		v.State,
 	})
 }
 
