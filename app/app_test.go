@@ -247,7 +247,7 @@ func TestKeysWalkTheSpine(t *testing.T) {
 // TestTabReachesEveryControl goes round with the Tab key.
 func TestTabReachesEveryControl(t *testing.T) {
 	w := opened(t, demo(t), 1280, 800)
-	want := []fyne.Focusable{w.leftRows.content, w.act.order, w.spineRows.content, w.rightRows.content, w.sentences.content, w.act.export, w.act.sign}
+	want := []fyne.Focusable{w.leftRows.content, w.act.order, w.spineRows.content, w.rightRows.content, w.act.picture, w.sentences.content, w.act.export, w.act.sign}
 	seen := map[fyne.Focusable]bool{}
 	for range 12 {
 		w.win.Canvas().FocusNext()
@@ -307,6 +307,32 @@ func TestWhatACancelledJobBringsIsNotTaken(t *testing.T) {
 	if w.state.Path != before || w.state.Job.Name != "" {
 		t.Errorf("after cancel: got path %q and job %q", w.state.Path, w.state.Job.Name)
 	}
+}
+
+func TestThePictureIsSaved(t *testing.T) {
+	w := opened(t, demo(t), 1280, 800)
+	dir := t.TempDir()
+	for name, begins := range map[string]string{"a.svg": "<svg", "a.PNG": "\x89PNG"} {
+		to := filepath.Join(dir, name)
+		w.savePicture(to)
+		noProblem(t, w)
+		data, err := os.ReadFile(to)
+		if err != nil || !strings.HasPrefix(string(data), begins) {
+			t.Errorf("%s: got %.8q, %v, want it to begin with %q", name, data, err, begins)
+		}
+	}
+	w.savePicture(filepath.Join(dir, "a.svg"))
+	if w.state.Problem.Text == "" {
+		t.Error("over a file: got no problem, want one")
+	}
+	w.savePicture(filepath.Join(dir, "a.gif"))
+	if !strings.Contains(w.state.Problem.Text, "want .svg or .png") {
+		t.Errorf("another ending: got %q", w.state.Problem.Text)
+	}
+	w.apply(desk.State.Read)
+	w.askPicture()
+	w.win.Canvas().Capture()
+	w.leaveDialog()
 }
 
 // TestPictures renders the window in its states; with -pictures they are kept.

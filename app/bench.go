@@ -9,7 +9,7 @@ func (w *window) paintBench(p *pen, size fyne.Size) {
 	v := w.view.bench
 	p.across(0, size.Width, 0.6, 1.2, p.Text)
 	divider := float32(int(size.Width * 0.489))
-	name := fontName.middle(v.Name, divider-2*margin-90)
+	name := fontName.middle(v.Name, divider-2*margin-190)
 	end := p.text(name, margin, 28, fontName, p.Text)
 	x := max(170, end+31)
 	for _, view := range v.Views {
@@ -18,6 +18,12 @@ func (w *window) paintBench(p *pen, size fyne.Size) {
 		x = to + 31
 	}
 	if _, ok := w.state.Characteristic(); ok {
+		b := w.act.picture
+		wide := b.wide()
+		if at := divider - 12 - wide; at > x {
+			p.put(b, at, 9, wide, 28)
+			b.Refresh()
+		}
 		p.put(w.facing, margin, 42, divider-margin-18, size.Height-42-8)
 	}
 	p.down(divider, 16, size.Height-8, 1, p.Rule)

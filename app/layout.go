@@ -35,6 +35,7 @@ func (l windowLayout) Layout(_ []fyne.CanvasObject, size fyne.Size) {
 	}
 	open := w.state.Open
 	top, bottom := float32(headerHeight), size.Height-footHeight
+	place(w.paper, 0, 0, size.Width, size.Height, true)
 	place(w.header, 0, 0, size.Width, headerHeight, true)
 	place(w.foot, 0, bottom, size.Width, footHeight, true)
 	banner := w.bannerHeight(size.Width)

@@ -25,8 +25,8 @@ type window struct {
 	dialog dialog.Dialog // the one that is open, nil where none is
 
 	root                                               *fyne.Container
-	header, banner, left, spine, right, bench, foot    *region
-	start                                              *region
+	paper, header, banner, left, spine, right, bench   *region
+	start, foot                                        *region
 	leftRows, spineRows, rightRows, sentences, problem *scrolled
 	facing                                             *chart.Drawing
 	lines                                              map[int]*chart.Drawing // of the spine, by characteristic
@@ -46,7 +46,7 @@ type view struct {
 
 // buttons are the controls of the window.
 type buttons struct {
-	order, read, cancel                   *button
+	order, picture, read, cancel          *button
 	compare, signatures, export, sign     *button
 	openPlan, openWorkbook, openTheSample *button
 }
@@ -57,6 +57,8 @@ func newWindow(a fyne.App, b Build, l look) *window {
 	w.win = a.NewWindow("Lotpair")
 	w.win.SetPadded(false)
 	w.makeButtons()
+	// The toolkit's own ground is a shade off its theme's colour.
+	w.paper = newRegion(w.palette, func(p *pen, s fyne.Size) { p.box(0, 0, s.Width, s.Height, p.Paper) })
 	w.header = newRegion(w.palette, w.paintHeader)
 	w.banner = newRegion(w.palette, w.paintBanner)
 	w.left = newRegion(w.palette, func(p *pen, s fyne.Size) { w.paintPage(p, s, qa.Reference) })
@@ -71,13 +73,18 @@ func newWindow(a fyne.App, b Build, l look) *window {
 	w.problem = w.newProblem()
 	w.facing = chart.New(nil, w.palette())
 	// The order of the objects is the order of the Tab key.
-	w.root = container.New(windowLayout{w}, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot)
+	w.root = container.New(windowLayout{w}, w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot)
 	w.win.SetContent(w.root)
 	w.win.Resize(fyne.NewSize(1280, 800))
 	w.win.Canvas().SetOnTypedKey(w.typed)
 	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyO, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.askOpen() })
 	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyE, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.act.export.act() })
 	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyQ, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.win.Close() })
+	w.win.SetOnDropped(func(_ fyne.Position, files []fyne.URI) {
+		if len(files) > 0 && w.dialog == nil {
+			w.open(files[0].Path(), readFile)
+		}
+	})
 	a.Settings().AddListener(func(fyne.Settings) { w.show() })
 	w.show()
 	return w
@@ -88,6 +95,7 @@ func (w *window) makeButtons() {
 	b.order = newButton(w.palette, "", quiet, func() {
 		w.apply(func(s desk.State) desk.State { return s.WithSortedBy(s.Sorted.Next()) })
 	})
+	b.picture = newButton(w.palette, "Save picture", quiet, w.askPicture)
 	b.read = newButton(w.palette, "Close", quiet, func() { w.apply(desk.State.Read) })
 	b.cancel = newButton(w.palette, "Cancel", plain, w.cancel)
 	b.compare = newButton(w.palette, "", main, w.compare)
@@ -138,13 +146,13 @@ func (w *window) show() {
 	b.compare.label, b.signatures.label = w.view.foot.Compare, w.view.foot.Signatures
 	b.export.label, b.sign.label = w.view.foot.Export, w.view.foot.Sign
 	busy := s.Job.Name != ""
-	for _, x := range []*button{b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample} {
+	for _, x := range []*button{b.picture, b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample} {
 		x.disabled = busy
 	}
 	if w.root.Size().Width > 0 {
 		w.root.Layout.Layout(w.root.Objects, w.root.Size())
 	}
-	for _, r := range []*region{w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot} {
+	for _, r := range []*region{w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot} {
 		r.Refresh()
 	}
 	w.revealSelected()

@@ -55,6 +55,13 @@ func (s State) Exported(path string) State {
 	return s.did("exported " + path)
 }
 
+// SavedPicture says that the picture of the bench was written to a file. It is no part of the record.
+func (s State) SavedPicture(path string) State {
+	s.Problem = Problem{}
+	s.Said = "Picture saved to " + path + "."
+	return s.did("saved the picture " + path)
+}
+
 // Signed says that the workbook was signed; rec and w are read back from the file that was written.
 func (s State) Signed(rec qa.Record, w Workbook) State {
 	w.Opened = s.Workbook.Opened
