@@ -63,6 +63,7 @@ func (d *dev) withUpdate() ([]string, error) {
 var referencePrograms = []struct{ program, table string }{
 	{"qa/stats/dist/testdata/refdata.R", "qa/stats/dist/testdata/r.txt"},
 	{"qa/stats/testdata/refdata.R", "qa/stats/testdata/r.txt"},
+	{"qa/stats/testdata/refdata_means.R", "qa/stats/testdata/means.txt"},
 }
 
 // refdata computes the reference values again and shows what changed. It changes the tables; git keeps the old ones.
