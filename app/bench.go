@@ -53,8 +53,17 @@ func (w *window) paragraphs(width float32) []paragraph {
 		}
 		out = append(out, set(s, fontBody, 20, above, false))
 	}
-	if v.Caution != "" {
-		out = append(out, set(v.Caution, fontNote, 17, 12, true))
+	for i, s := range v.Whole {
+		above := float32(4)
+		if i == 0 {
+			above = 9
+		}
+		out = append(out, set(s, fontBody, 20, above, false))
+	}
+	for _, s := range []string{v.Caution, v.Read} {
+		if s != "" {
+			out = append(out, set(s, fontNote, 17, 12, true))
+		}
 	}
 	return out
 }

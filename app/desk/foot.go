@@ -53,8 +53,16 @@ func (s State) next(v FootView) string {
 		return "Next: find the original file; this one is not as it was signed."
 	}
 	look := ""
-	if n := s.toLookAt(); n > 0 && len(w.Signatures) == 0 {
-		look = "look at " + qa.Count(n, "finding", "findings") + ", then "
+	if n, first := s.toLookAt(); n > 0 && len(w.Signatures) == 0 {
+		look = "look at " + qa.Count(n, "finding", "findings")
+		switch {
+		case first == "":
+		case n == 1:
+			look += " on " + first
+		default:
+			look += ", first on " + first
+		}
+		look += ", then "
 	}
 	switch {
 	case v.Sign == "":
@@ -67,13 +75,17 @@ func (s State) next(v FootView) string {
 	return "Next: " + look + "sign as " + v.Meaning + "."
 }
 
-// toLookAt counts the warnings of all characteristics and of the reading of the files.
-func (s State) toLookAt() int {
-	n := len(s.Record.Result.Warnings)
+// toLookAt counts the warnings of all characteristics and of the reading of the files, and names the first characteristic
+// that has one.
+func (s State) toLookAt() (n int, first string) {
+	n = len(s.Record.Result.Warnings)
 	for _, c := range s.Record.Result.Characteristics {
+		if len(c.Warnings) > 0 && first == "" {
+			first = c.Name
+		}
 		n += len(c.Warnings)
 	}
-	return n
+	return n, first
 }
 
 // nextMeaning is the first required meaning that no valid signature has; "" where none is missing or the file is unsound.

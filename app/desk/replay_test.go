@@ -48,6 +48,8 @@ func example(t testing.TB) qa.Record {
 			series("Wall", "E", 10, 3, 3.951, 3.946, 3.938, 3.950, 3.929, 3.945),
 		}},
 	}
+	readings.Said = []string{"The limits stand in the plan."}
+	readings.Warnings = []qa.Warning{{Code: "hidden-rows", Text: "Rows 20 to 22 of sheet Data are hidden; they were read."}}
 	plan := qa.Plan{
 		Format: qa.PlanFormat, Title: "Hub shell HS-40: second foundry", Supports: "DEV-2291",
 		Signatures: []qa.Required{{Meaning: "prepared"}, {Meaning: "reviewed"}},
@@ -174,7 +176,13 @@ func text(s desk.State) string {
 	for _, p := range w.Paragraphs {
 		say("  %s", p)
 	}
+	for _, p := range w.Whole {
+		say("  whole: %s", p)
+	}
 	say("  %s", w.Caution)
+	if w.Read != "" {
+		say("  %s", w.Read)
+	}
 	f := s.Foot()
 	say("foot: %s | %s | %s", f.Next, f.Said, strings.Join([]string{f.Compare, f.Signatures, f.Export, f.Sign}, ", "))
 	for _, l := range s.Signatures() {

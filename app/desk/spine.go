@@ -65,6 +65,8 @@ func rowNote(c qa.Comparison) string {
 		notes = append(notes, "too few readings")
 	case c.Detectable && (c.Verdict == qa.Equivalent || c.Verdict == qa.Demonstrated):
 		notes = append(notes, "a shift is detectable")
+	case len(c.Warnings) > 0:
+		notes = append(notes, qa.Count(len(c.Warnings), "finding", "findings"))
 	}
 	return strings.Join(notes, "; ")
 }
