@@ -16,6 +16,7 @@ type taken struct {
 	isMissing bool
 	isBelow   bool   // a non-detect
 	converted string // why the value goes into the ledger; empty for a plain number
+	thousands bool   // one mark was taken for a thousands mark because of the plan's decimal mark
 	problem   *Problem
 }
 
@@ -74,16 +75,18 @@ func takeText(text string, isText bool, unit string, decimal byte, want string) 
 		number, reason = n, fmt.Sprintf("the unit %s taken off", quoted(u))
 	}
 	var reasons []string
+	thousands := false
 	if !isText {
 		reasons = append(reasons, "a number stored as text")
 	}
 	if w, err := splitNumber(number, decimal); err == nil && w.grouped {
 		reasons = append(reasons, "thousands marks taken out")
+		thousands = w.fraction == ""
 	}
 	if reason != "" {
 		reasons = append(reasons, reason)
 	}
-	return taken{isValue: true, value: v, decimals: decimals, converted: strings.Join(reasons, "; ")}
+	return taken{isValue: true, value: v, decimals: decimals, converted: strings.Join(reasons, "; "), thousands: thousands}
 }
 
 // numeric says whether a cell looks like a number or a non-detect, whatever the decimal mark.

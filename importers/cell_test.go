@@ -2,6 +2,7 @@ package importers
 
 import (
 	"fmt"
+	"strings"
 	"testing"
 
 	"lotpair/qa"
@@ -143,6 +144,7 @@ func TestReadDecimalComma(t *testing.T) { // N05
 	if got := r.Reference.Series[0].Values()[0]; got != 12003 {
 		t.Errorf("with decimal = \".\": got %v, want 12003", got)
 	}
+	wantWarning(t, r, "thousands-mark", "C2")
 	lower, upper = 11950, 12050
 	r = mustRead(t, xlsxPlan(limits), data)
 	if got := r.Reference.Series[0].Values()[0]; got != 12003 {
@@ -233,4 +235,16 @@ func TestExcludeNeedsTheFile(t *testing.T) {
 	if err != nil || len(r.Candidate.Series[0].Values()) != 1 || len(r.Reference.Series[0].Values()) != 2 {
 		t.Errorf("got %v, %+v, want one of two left out in b.csv", err, r.Candidate)
 	}
+}
+
+func TestReadMarksOfTwoColumns(t *testing.T) {
+	text := "Lot;x;y\nREF-0417;1.200;0,5\nREF-0417;1.300;0,7\nCAND-0931;1.250;0,6\nCAND-0931;1.350;0,9\n"
+	_, err := read(t, plan("d1.csv"), []byte(text))
+	wantPlanError(t, err, "d1.csv!B2", `"1.200"`, "decimal")
+	r := mustRead(t, plan("d1.csv", func(p *qa.Plan) { p.Reading.Decimal = "," }), []byte(text))
+	wantLots(t, r, 2, 1250, 2, 1300)
+	if r = mustRead(t, plan("d1.csv"), []byte(strings.Replace(text, "1.300", "1.3", 1))); len(r.Reference.Series) != 2 {
+		t.Errorf("got %+v, want both columns", r.Reference.Series)
+	}
+	wantLots(t, r, 2, 1.25, 2, 1.3)
 }

@@ -1,6 +1,8 @@
 package importers
 
 import (
+	"strings"
+
 	"lotpair/importers/cells"
 )
 
@@ -9,6 +11,8 @@ type mark struct {
 	decimal byte
 	said    string       // how a comma was settled; empty for the point
 	unclear []cells.Cell // the cells that leave it open; empty where it is settled
+
+	grouping []cells.Cell // all the numbers with a point, where each of them could have it as a thousands mark
 }
 
 // settleDecimal settles the decimal mark of one column's texts: by the plan; by the texts themselves where every one with a
@@ -18,7 +22,7 @@ func settleDecimal(texts []cells.Cell, plan string, lower, upper *float64) mark 
 	if plan != "" {
 		return mark{decimal: plan[0]}
 	}
-	var points, commas, open []cells.Cell
+	var points, commas, open, grouping []cells.Cell
 	for _, c := range texts {
 		number, _, _ := cutUnit(c.Text)
 		w, err := splitNumber(number, 0)
@@ -30,11 +34,17 @@ func settleDecimal(texts []cells.Cell, plan string, lower, upper *float64) mark 
 			commas = append(commas, c)
 		case w.fraction != "" || w.grouped:
 			points = append(points, c)
+			if _, could := ungroup(strings.TrimLeft(trimmed(number), "+-\u2212"), "."); could {
+				grouping = append(grouping, c)
+			}
 		}
 	}
 	switch {
 	case len(open) == 0 && len(commas) == 0:
-		return mark{decimal: '.'}
+		if len(grouping) < len(points) {
+			grouping = nil
+		}
+		return mark{decimal: '.', grouping: grouping}
 	case len(points) > 0:
 		return mark{unclear: append(append([]cells.Cell{}, open...), commas...)}
 	case len(open) == 0:

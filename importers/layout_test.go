@@ -457,3 +457,18 @@ func TestReadHeaderRow(t *testing.T) {
 	_, err := read(t, p, xlsx(t, sheetOf{name: "Data", rows: rows}))
 	wantPlanError(t, err, "reading.header_row", "row 3")
 }
+
+func TestReadSheetsThatCouldBothBeMeant(t *testing.T) {
+	one := sheetOf{name: "REF-0417", rows: [][]any{{"No", "Bore"}, {num("1"), num("9")}, {num("2"), num("8.5")}}}
+	_, err := read(t, xlsxPlan(), xlsx(t, sheetOf{name: "Data", rows: long()}, one))
+	wantPlanError(t, err, "reading.sheet", `"Data", "REF-0417"`)
+}
+
+func TestReadRepeatedBlockUnderOtherIDs(t *testing.T) {
+	rows := long()
+	for i := 19; i < 25; i++ {
+		rows[i][2] = rows[i-6][2]
+	}
+	r := mustRead(t, xlsxPlan(), xlsx(t, sheetOf{name: "Data", rows: rows}))
+	wantWarning(t, r, "repeated-block", "C14:C19 and C20:C25")
+}

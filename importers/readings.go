@@ -120,7 +120,7 @@ func chooseSheet(b Book, s lotSide, plan qa.Plan) (cells.Sheet, string, error) {
 		}
 		return sheet, "", nil
 	}
-	var filled, visible, holding, called []cells.Sheet
+	var filled, visible, holding []cells.Sheet
 	for _, sheet := range b.Sheets {
 		if !slices.ContainsFunc(sheet.Rows, func(r cells.Row) bool { return slices.ContainsFunc(r.Cells, stored) }) {
 			continue
@@ -130,10 +130,7 @@ func chooseSheet(b Book, s lotSide, plan qa.Plan) (cells.Sheet, string, error) {
 			continue
 		}
 		visible = append(visible, sheet)
-		if sameName(sheet.Name, s.plan.Lot) {
-			called = append(called, sheet)
-		}
-		if slices.ContainsFunc(sheet.Rows, func(r cells.Row) bool {
+		if sameName(sheet.Name, s.plan.Lot) || slices.ContainsFunc(sheet.Rows, func(r cells.Row) bool {
 			return slices.ContainsFunc(r.Cells, func(c cells.Cell) bool { return s.plan.Lot != "" && sameName(c.Text, s.plan.Lot) })
 		}) {
 			holding = append(holding, sheet)
@@ -142,7 +139,10 @@ func chooseSheet(b Book, s lotSide, plan qa.Plan) (cells.Sheet, string, error) {
 	for _, choice := range []struct {
 		sheets []cells.Sheet
 		why    string
-	}{{filled, ""}, {called, "it has the lot's name"}, {holding, "the only one that holds the lot's name"}, {visible, "the only visible one"}} {
+	}{{filled, ""}, {holding, "the only one that has or holds the lot's name"}, {visible, "the only visible one"}} {
+		if len(choice.sheets) > 1 && choice.why != "" {
+			break
+		}
 		if len(choice.sheets) != 1 {
 			continue
 		}
@@ -293,10 +293,35 @@ func (r *reader) settleMarks() error {
 				"found the lower limit %v and the upper limit %v, want lower below upper; correct the sheet or the plan", *c.Lower, *c.Upper)})
 		}
 	}
-	if len(faults) > 0 {
+	if faults = append(faults, r.mixedMarks()...); len(faults) > 0 {
 		return &PlanError{Faults: faults}
 	}
 	return nil
+}
+
+// mixedMarks finds points that may be thousands marks: columns of nothing but such points in a sheet where the texts of
+// another column settle that it has the decimal comma.
+func (r *reader) mixedMarks() []Fault {
+	var faults []Fault
+	seen := map[string]bool{}
+	for _, s := range r.sides {
+		if !slices.ContainsFunc(s.marks, func(m mark) bool { return m.decimal == ',' }) {
+			continue
+		}
+		for _, m := range s.marks {
+			if len(m.grouping) == 0 {
+				continue
+			}
+			place := s.table.cellPlace(m.grouping[0])
+			if seen[place] {
+				continue
+			}
+			seen[place] = true
+			faults = append(faults, Fault{Place: place, Text: fmt.Sprintf("found %s beside a column with the decimal comma, want a number whose decimal mark is known; "+
+				"state decimal under [reading]", quoted(m.grouping[0].Text))})
+		}
+	}
+	return faults
 }
 
 // settleColumn settles the decimal mark of one column and merges its limits into the characteristic.

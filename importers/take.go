@@ -20,8 +20,14 @@ func (r *reader) takeReadings() error {
 				return err
 			}
 			series := qa.Series{Characteristic: c.Name, Rows: len(s.rows)}
+			var thousands []string
 			for _, row := range s.rows {
-				r.take(s, &series, c, row, k)
+				if got := r.take(s, &series, c, row, k); got.thousands {
+					thousands = append(thousands, s.table.cell(row, s.cols[k]).Name())
+				}
+			}
+			if len(thousands) > 0 {
+				s.table.warn("thousands-mark", "%s: a mark between groups of three digits is taken for a thousands mark in %s (%s).", c.Name, qa.Count(len(thousands), "cell", "cells"), join2(thousands))
 			}
 			s.lot.Series = append(s.lot.Series, series)
 			s.table.sayFormats(s.rows, s.cols[k], c.Name)
@@ -34,7 +40,7 @@ func (r *reader) takeReadings() error {
 }
 
 // take puts one cell where it belongs: a reading, or an entry of the ledger, or both.
-func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row row, k int) {
+func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row row, k int) taken {
 	t := s.table
 	cell := t.cell(row, s.cols[k])
 	got := takeCell(cell, t.book.IsText, c.Unit, s.marks[k].decimal)
@@ -73,6 +79,7 @@ func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row ro
 	if entry.TakenAs != "" {
 		r.out.Ledger = append(r.out.Ledger, entry)
 	}
+	return got
 }
 
 // give gives one cell of a row its role; a cell that is not stored has none.
