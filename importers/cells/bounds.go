@@ -15,6 +15,10 @@ const (
 	MaxPart    = 2 << 30   // bytes a part may unpack to, and all parts that are read together
 	DenseFrom  = 64 << 20  // from here the ratio counts
 	DenseRatio = 200       // unpacked to packed
+	MaxParts   = 1 << 16   // parts of a package
+	MaxCells   = 1 << 24   // cells, rows and merged areas of all sheets that are read; shared texts
+	MaxText    = 1 << 20   // bytes of one text or tag
+	MaxDepth   = 64        // elements inside one another
 )
 
 // BoundError says that a file or a part of it is larger than what is opened.
@@ -22,15 +26,20 @@ type BoundError struct {
 	Part  string // empty for the file itself
 	Found string
 	Bound string
+	Do    string // empty: use a smaller file
 }
 
-// Error names the part and the bound.
+// Error names the part, the bound and what to do.
 func (e *BoundError) Error() string {
 	place := "the file"
 	if e.Part != "" {
 		place = "part " + e.Part
 	}
-	return fmt.Sprintf("%s: found %s, want %s; use a smaller file", place, e.Found, e.Bound)
+	do := e.Do
+	if do == "" {
+		do = "use a smaller file"
+	}
+	return fmt.Sprintf("%s: found %s, want %s; %s", place, e.Found, e.Bound, do)
 }
 
 // FormatError says that a file is not a sound workbook.
@@ -66,6 +75,9 @@ func openPack(data []byte) (*pack, error) {
 	}
 	if err := notZip(data); err != nil {
 		return nil, err
+	}
+	if n := bytes.Count(data, []byte("PK\x01\x02")); n > MaxParts { // the marks of the directory, before room is made for it
+		return nil, &BoundError{Found: fmt.Sprintf("%d parts", n), Bound: fmt.Sprintf("at most %d", MaxParts)}
 	}
 	z, err := zip.NewReader(bytes.NewReader(data), int64(len(data)))
 	if err != nil {

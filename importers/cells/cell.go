@@ -1,7 +1,7 @@
 package cells
 
 // Kind says what a cell holds.
-type Kind int
+type Kind uint8
 
 // The kinds of cells. A blank cell is one that is not stored, or stored without a value.
 const (
@@ -18,7 +18,7 @@ var kindNames = [...]string{"blank", "number", "text", "boolean", "error value",
 
 // String is the kind in words.
 func (k Kind) String() string {
-	if k < 0 || int(k) >= len(kindNames) {
+	if int(k) >= len(kindNames) {
 		return "unknown"
 	}
 	return kindNames[k]
@@ -27,10 +27,10 @@ func (k Kind) String() string {
 // Cell is one stored cell. Row and Col count from 1.
 type Cell struct {
 	Row, Col int
-	Kind     Kind
 	Text     string // the stored text exactly: "12.003000000000001"
-	Formula  bool   // the value was computed by a formula
 	Format   string // the number format's code; empty for the general format
+	Kind     Kind
+	Formula  bool // the value was computed by a formula
 }
 
 // Name is the cell's address: "D17".

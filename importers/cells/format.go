@@ -1,7 +1,6 @@
 package cells
 
 import (
-	"encoding/xml"
 	"strconv"
 	"strings"
 )
@@ -30,39 +29,49 @@ func readStyles(p *pack, name string) ([]style, error) {
 	defer func() { _ = r.Close() }()
 	codes := map[int]string{}
 	var styles []style
-	w := newWalker(name, r)
-	err = w.each(func(e xml.StartElement) error {
-		switch e.Name.Local {
-		case "numFmt":
-			if id, err := strconv.Atoi(attr(e, "numFmtId")); err == nil && !w.inside("dxfs") {
-				codes[id] = attr(e, "formatCode")
+	x := newScanner(name, r)
+	format := func() error {
+		if id, ok := whole(x.attr("numFmtId")); ok && x.is("numFmt") {
+			if len(codes) == maxStyles {
+				return damaged(name, "more than %d number formats", maxStyles)
 			}
-		case "xf":
-			if !w.inside("cellXfs") {
-				return nil
-			}
-			if len(styles) == 1<<17 {
-				return damaged(name, "more than 131072 cell styles")
-			}
-			id, err := strconv.Atoi(attr(e, "numFmtId"))
-			if err != nil && attr(e, "numFmtId") != "" {
-				return damaged(name, "the number format %q", attr(e, "numFmtId"))
-			}
-			styles = append(styles, styleOf(id, codes))
+			codes[id] = string(x.attr("formatCode"))
+		}
+		return nil
+	}
+	xf := func() error {
+		if !x.is("xf") {
+			return nil
+		}
+		if len(styles) == maxStyles {
+			return damaged(name, "more than %d cell styles", maxStyles)
+		}
+		id, ok := whole(x.attr("numFmtId"))
+		if !ok && len(x.attr("numFmtId")) > 0 {
+			return damaged(name, "the number format %q", clip(x.attr("numFmtId")))
+		}
+		styles = append(styles, styleOf(id, codes))
+		return nil
+	}
+	if err := x.root("styleSheet"); err != nil {
+		return nil, err
+	}
+	err = x.children(func() error {
+		switch string(x.local()) {
+		case "numFmts":
+			return x.children(format)
+		case "cellXfs":
+			return x.children(xf)
 		}
 		return nil
 	})
+	if err == nil {
+		err = x.rest()
+	}
 	return styles, err
 }
 
-func (w *walker) inside(element string) bool {
-	for _, s := range w.stack {
-		if s == element {
-			return true
-		}
-	}
-	return false
-}
+const maxStyles = 1 << 17 // spreadsheet programs hold half as many
 
 func styleOf(id int, codes map[int]string) style {
 	code, custom := codes[id]

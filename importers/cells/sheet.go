@@ -1,7 +1,6 @@
 package cells
 
 import (
-	"encoding/xml"
 	"slices"
 	"strconv"
 	"strings"
@@ -10,10 +9,17 @@ import (
 // sheetReader reads one worksheet part. The <dimension> element is not looked at: many writers state it wrongly.
 type sheetReader struct {
 	*outline
-	w     *walker
-	sheet Sheet
-	row   *Row // the row being read
-	last  int  // the number of the last row, for rows without r
+	x      *scanner
+	sheet  Sheet
+	texts  slab
+	block  block
+	number int    // of the row being read
+	digits string // that number as it stands in addresses
+	col    int    // of the last cell of the row being read
+	rows   bool   // the rows were read
+	value  []byte // the stored value of the cell being read
+
+	rowsMixed, colsMixed bool // not in ascending order so far
 }
 
 func (o *outline) sheet(t tab) (Sheet, error) {
@@ -25,206 +31,203 @@ func (o *outline) sheet(t tab) (Sheet, error) {
 		return Sheet{}, damaged(t.part, "no such part for the sheet %q", t.name)
 	}
 	defer func() { _ = r.Close() }()
-	s := &sheetReader{outline: o, w: newWalker(t.part, r), sheet: Sheet{Name: t.name, Hidden: t.hidden}}
-	if err := s.w.each(s.element); err != nil {
+	s := &sheetReader{outline: o, x: newScanner(t.part, r), sheet: Sheet{Name: t.name, Hidden: t.hidden}}
+	if err := s.x.root("worksheet"); err != nil {
 		return Sheet{}, err
 	}
-	if err := s.order(); err != nil {
+	if err := s.x.children(s.section); err != nil {
 		return Sheet{}, err
 	}
-	return s.sheet, nil
+	if err := s.x.rest(); err != nil {
+		return Sheet{}, err
+	}
+	if !s.rows {
+		return Sheet{}, damaged(t.part, "a sheet without its rows (<sheetData>)")
+	}
+	return s.sheet, s.orderRows()
 }
 
-func (s *sheetReader) element(e xml.StartElement) error {
-	switch e.Name.Local {
-	case "col":
-		first, err1 := strconv.Atoi(attr(e, "min"))
-		last, err2 := strconv.Atoi(attr(e, "max"))
-		if yes(attr(e, "hidden")) && err1 == nil && err2 == nil && first > 0 && first <= last {
-			s.sheet.HiddenCols = append(s.sheet.HiddenCols, Area{FirstCol: first, LastCol: min(last, MaxCol)})
+// section reads one child of <worksheet>.
+func (s *sheetReader) section() error {
+	switch string(s.x.local()) {
+	case "cols":
+		return s.x.children(s.hiddenCol)
+	case "mergeCells":
+		return s.x.children(s.merged)
+	case "sheetData":
+		if s.rows {
+			return damaged(s.x.part, "the rows of the sheet twice")
 		}
-	case "row":
-		return s.startRow(e)
-	case "c":
-		return s.cell(e)
-	case "mergeCell":
-		from, to, ok := strings.Cut(attr(e, "ref"), ":")
-		if !ok {
-			to = from
-		}
-		c1, r1, ok1 := Parse(from)
-		c2, r2, ok2 := Parse(to)
-		if !ok1 || !ok2 || c2 < c1 || r2 < r1 {
-			return damaged(s.w.part, "the merged cells %q", attr(e, "ref"))
-		}
-		s.sheet.Merged = append(s.sheet.Merged, Area{FirstCol: c1, FirstRow: r1, LastCol: c2, LastRow: r2})
+		s.rows = true
+		return s.x.children(s.row)
+	case "col", "row", "c", "mergeCell":
+		return s.misplaced()
 	}
 	return nil
 }
 
-func (s *sheetReader) startRow(e xml.StartElement) error {
-	n := s.last + 1
-	if r := attr(e, "r"); r != "" {
-		var err error
-		if n, err = strconv.Atoi(r); err != nil {
-			return damaged(s.w.part, "the row number %q", r)
+// misplaced refuses what stands where the format has no place for it: it could hold a reading.
+func (s *sheetReader) misplaced() error {
+	return damaged(s.x.part, "<%s> in row %d, where it has no place", clip(s.x.name), s.number)
+}
+
+func (s *sheetReader) hiddenCol() error {
+	if !yes(s.x.attr("hidden")) || !s.x.is("col") {
+		return nil
+	}
+	first, err1 := strconv.Atoi(string(s.x.attr("min")))
+	last, err2 := strconv.Atoi(string(s.x.attr("max")))
+	if err1 != nil || err2 != nil || first < 1 || first > last || len(s.sheet.HiddenCols) == MaxCol {
+		return damaged(s.x.part, "the hidden columns %q to %q", clip(s.x.attr("min")), clip(s.x.attr("max")))
+	}
+	s.sheet.HiddenCols = append(s.sheet.HiddenCols, Area{FirstCol: first, LastCol: min(last, MaxCol)})
+	return nil
+}
+
+func (s *sheetReader) merged() error {
+	if !s.x.is("mergeCell") {
+		return nil
+	}
+	ref := s.x.attr("ref")
+	from, to, ok := strings.Cut(string(ref), ":")
+	if !ok {
+		to = from
+	}
+	c1, r1, ok1 := Parse(from)
+	c2, r2, ok2 := Parse(to)
+	if !ok1 || !ok2 || c2 < c1 || r2 < r1 {
+		return damaged(s.x.part, "the merged cells %q", clip(ref))
+	}
+	if err := s.count(); err != nil {
+		return err
+	}
+	s.sheet.Merged = append(s.sheet.Merged, Area{FirstCol: c1, FirstRow: r1, LastCol: c2, LastRow: r2})
+	return nil
+}
+
+// row reads one child of <sheetData>.
+func (s *sheetReader) row() error {
+	if !s.x.is("row") {
+		return s.misplaced()
+	}
+	n := s.number + 1
+	if r := s.x.attr("r"); r != nil {
+		var ok bool
+		if n, ok = whole(r); !ok {
+			return damaged(s.x.part, "the row number %q", clip(r))
 		}
 	}
 	if n < 1 || n > MaxRow {
-		return damaged(s.w.part, "the row number %d", n)
+		return damaged(s.x.part, "the row number %d", n)
 	}
-	s.last = n
-	s.sheet.Rows = append(s.sheet.Rows, Row{Number: n, Hidden: yes(attr(e, "hidden"))})
-	s.row = &s.sheet.Rows[len(s.sheet.Rows)-1]
-	return nil
-}
-
-// cell reads one <c> element to its end.
-func (s *sheetReader) cell(e xml.StartElement) error {
-	if s.row == nil {
-		return damaged(s.w.part, "a cell outside a row")
+	if len(s.sheet.Rows) == MaxRow {
+		return damaged(s.x.part, "more than %d rows", MaxRow)
 	}
-	c := Cell{Row: s.row.Number, Col: 1}
-	if n := len(s.row.Cells); n > 0 {
-		c.Col = s.row.Cells[n-1].Col + 1
+	if err := s.count(); err != nil {
+		return err
 	}
-	kind, style := "", 0
-	for _, a := range e.Attr {
-		switch a.Name.Local {
-		case "r":
-			col, row, ok := Parse(a.Value)
-			if !ok || row != c.Row {
-				return damaged(s.w.part, "the cell %q in row %d", a.Value, c.Row)
-			}
-			c.Col = col
-		case "t":
-			kind = a.Value
-		case "s":
-			n, err := strconv.Atoi(a.Value)
-			if err != nil || n < 0 {
-				return damaged(s.w.part, "the style %q in %s", a.Value, c.Name())
-			}
-			style = n
+	s.rowsMixed = s.rowsMixed || len(s.sheet.Rows) > 0 && n <= s.number
+	s.number, s.digits, s.col, s.colsMixed = n, strconv.Itoa(n), 0, false
+	hidden := yes(s.x.attr("hidden"))
+	if err := s.cells(); err != nil {
+		return err
+	}
+	if s.colsMixed {
+		if err := s.orderCells(); err != nil {
+			return err
 		}
 	}
-	if c.Col > MaxCol {
-		return damaged(s.w.part, "more than %d columns in row %d", MaxCol, c.Row)
-	}
-	value, has, err := s.content(&c)
-	if err != nil {
-		return err
-	}
-	if err := s.settle(&c, kind, style, value, has); err != nil {
-		return err
-	}
-	s.row.Cells = append(s.row.Cells, c)
+	s.sheet.Rows = append(s.sheet.Rows, Row{Number: n, Hidden: hidden, Cells: s.block.end()})
 	return nil
 }
 
-// content reads the children of <c>: the formula, the stored value and the inline text.
-func (s *sheetReader) content(c *Cell) (value string, has bool, err error) {
-	depth := len(s.w.stack)
+// cells reads the cells of a row to its end: the plain ones in one go, each other one by its tokens.
+func (s *sheetReader) cells() error {
+	depth := s.x.depth()
 	for {
-		t, err := s.w.next()
-		if err != nil {
-			return "", false, err
+		if !s.x.closing && !s.slow {
+			if err := s.plainCells(); err != nil {
+				return err
+			}
 		}
-		switch t := t.(type) {
-		case nil:
-			return "", false, damaged(s.w.part, "the end inside a cell")
-		case xml.StartElement:
-			if len(s.w.stack) != depth+1 { // of an extension
-				continue
-			}
-			switch t.Name.Local {
-			case "f":
-				c.Formula = true
-			case "v":
-				if value, err = s.w.text(); err != nil {
-					return "", false, err
-				}
-				has = true
-			case "is":
-				if value, err = s.w.rich(); err != nil {
-					return "", false, err
-				}
-				has = true
-			}
-		case xml.EndElement:
-			if len(s.w.stack) < depth {
-				return value, has, nil
-			}
+		t, err := s.x.next()
+		switch {
+		case err != nil:
+			return err
+		case t == endTag:
+			return nil
+		case t != startTag:
+			continue
+		case s.x.is("c"):
+			err = s.cell()
+		case !s.x.is("extLst"):
+			err = s.misplaced()
+		}
+		if err == nil {
+			err = s.x.leave(depth)
+		}
+		if err != nil {
+			return err
 		}
 	}
 }
 
-// settle says what the stored value is (ISO/IEC 29500-1, 18.18.11).
-func (s *sheetReader) settle(c *Cell, kind string, index int, value string, has bool) error {
-	var st style
-	if index < len(s.styles) {
-		st = s.styles[index]
+// put stores the cell of the row being read; its column decides whether the order still holds.
+func (s *sheetReader) put(c Cell) error {
+	if err := s.count(); err != nil {
+		return err
 	}
-	c.Format = st.code
-	c.Text = value
-	switch kind {
-	case "s":
-		if n := strings.TrimSpace(value); n == "" {
-			has = false
-		} else if i, err := strconv.Atoi(n); err != nil || i < 0 || i >= len(s.strings) {
-			return damaged(s.w.part, "the shared text %q in %s", value, c.Name())
-		} else {
-			c.Kind, c.Text = Text, s.strings[i]
-		}
-	case "str":
-		c.Kind, c.Text = Text, unescape(value)
-	case "inlineStr":
-		c.Kind = Text
-	case "b":
-		c.Kind = Bool
-		if c.Text = "FALSE"; yes(strings.TrimSpace(value)) {
-			c.Text = "TRUE"
-		}
-	case "e":
-		c.Kind = Error
-	case "d":
-		c.Kind = Date
-	case "", "n":
-		c.Text = strings.Trim(value, " \t\r\n")
-		has = has && c.Text != ""
-		if c.Kind = Number; st.date {
-			c.Kind = Date
-		}
-	default:
-		return damaged(s.w.part, "the cell type %q in %s", kind, c.Name())
+	s.colsMixed = s.colsMixed || c.Col <= s.col
+	s.col = c.Col
+	*s.block.add() = c
+	return nil
+}
+
+// count counts what takes memory: cells, rows and merged areas of all sheets.
+func (o *outline) count() error {
+	if o.counted++; o.counted > MaxCells {
+		return &BoundError{Found: "more than 16777216 cells", Bound: "at most 16777216 in all sheets that are read", Do: "split the file, or take out what is not readings"}
 	}
-	if !has {
-		c.Kind, c.Text = Blank, ""
-		if c.Formula {
-			c.Kind = FormulaNoValue
+	return nil
+}
+
+// orderCells puts the cells of the row in ascending order and refuses an address that stands twice: no rule says which would count.
+func (s *sheetReader) orderCells() error {
+	row := s.block.row()
+	slices.SortStableFunc(row, func(a, b Cell) int { return a.Col - b.Col })
+	for i := 1; i < len(row); i++ {
+		if row[i].Col == row[i-1].Col {
+			return damaged(s.x.part, "the cell %s twice", row[i].Name())
 		}
 	}
 	return nil
 }
 
-// order puts rows and cells in ascending order and refuses an address that stands twice: no rule says which would count.
-func (s *sheetReader) order() error {
-	byNumber := func(a, b Row) int { return a.Number - b.Number }
-	if !slices.IsSortedFunc(s.sheet.Rows, byNumber) {
-		slices.SortStableFunc(s.sheet.Rows, byNumber)
+// orderRows does the same for the rows.
+func (s *sheetReader) orderRows() error {
+	if !s.rowsMixed {
+		return nil
 	}
+	slices.SortStableFunc(s.sheet.Rows, func(a, b Row) int { return a.Number - b.Number })
 	for i, r := range s.sheet.Rows {
 		if i > 0 && s.sheet.Rows[i-1].Number == r.Number {
-			return damaged(s.w.part, "row %d twice", r.Number)
-		}
-		byCol := func(a, b Cell) int { return a.Col - b.Col }
-		if !slices.IsSortedFunc(r.Cells, byCol) {
-			slices.SortStableFunc(r.Cells, byCol)
-		}
-		for j := 1; j < len(r.Cells); j++ {
-			if r.Cells[j].Col == r.Cells[j-1].Col {
-				return damaged(s.w.part, "the cell %s twice", r.Cells[j].Name())
-			}
+			return damaged(s.x.part, "row %d twice", r.Number)
 		}
 	}
 	return nil
 }
+
+// whole reads a whole number of at most nine digits.
+func whole(b []byte) (int, bool) {
+	n := 0
+	for _, c := range b {
+		if c < '0' || c > '9' {
+			return 0, false
+		}
+		n = n*10 + int(c-'0')
+	}
+	return n, len(b) > 0 && len(b) <= 9
+}
+
+// yes reads a boolean attribute (xsd:boolean).
+func yes(b []byte) bool { return string(b) == "1" || string(b) == "true" }

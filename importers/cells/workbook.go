@@ -1,7 +1,7 @@
 package cells
 
 import (
-	"encoding/xml"
+	"bytes"
 	"fmt"
 	"path"
 	"strings"
@@ -20,6 +20,8 @@ type outline struct {
 	strings  []string
 	styles   []style
 	date1904 bool
+	counted  int  // cells, rows and merged areas so far
+	slow     bool // every cell by its tokens
 }
 
 // Read reads every worksheet of an .xlsx file. The error is a *BoundError or a *FormatError.
@@ -98,41 +100,54 @@ func (o *outline) readBook(book string, rels map[string]relation) error {
 		return err
 	}
 	defer func() { _ = r.Close() }()
+	x := newScanner(book, r)
+	if err := x.root("workbook"); err != nil {
+		return err
+	}
 	seen := map[string]bool{}
-	err = newWalker(book, r).each(func(e xml.StartElement) error {
-		switch e.Name.Local {
-		case "workbook":
+	err = x.children(func() error {
+		switch string(x.local()) {
 		case "workbookPr":
-			o.date1904 = yes(attr(e, "date1904"))
-		case "sheet":
-			rel := rels[relID(e)]
-			if !strings.HasSuffix(rel.kind, "/worksheet") { // chart and dialog sheets hold no cells
-				if rel.kind == "" {
-					return damaged(book, "the sheet %q without its part", attr(e, "name"))
-				}
-				return nil
-			}
-			if key := strings.ToLower(attr(e, "name")); seen[key] {
-				return damaged(book, "the sheet name %q twice", attr(e, "name"))
-			} else {
-				seen[key] = true
-			}
-			state := attr(e, "state")
-			o.tabs = append(o.tabs, tab{name: attr(e, "name"), part: rel.target, hidden: state == "hidden" || state == "veryHidden"})
+			o.date1904 = yes(x.attr("date1904"))
+		case "sheets":
+			return x.children(func() error { return o.tab(x, rels, seen) })
 		}
 		return nil
 	})
+	if err == nil {
+		err = x.rest()
+	}
 	if err == nil && len(o.tabs) == 0 {
 		return damaged(book, "no worksheet")
 	}
 	return err
 }
 
+// tab reads one child of <sheets>.
+func (o *outline) tab(x *scanner, rels map[string]relation, seen map[string]bool) error {
+	if !x.is("sheet") {
+		return nil
+	}
+	name, state := string(x.attr("name")), string(x.attr("state"))
+	rel := rels[relID(x)]
+	switch {
+	case rel.kind == "":
+		return damaged(x.part, "the sheet %q without its part", name)
+	case !strings.HasSuffix(rel.kind, "/worksheet"): // chart and dialog sheets hold no cells
+		return nil
+	case seen[strings.ToLower(name)]:
+		return damaged(x.part, "the sheet name %q twice", name)
+	}
+	seen[strings.ToLower(name)] = true
+	o.tabs = append(o.tabs, tab{name: name, part: rel.target, hidden: state == "hidden" || state == "veryHidden"})
+	return nil
+}
+
 // relID is the sheet's relationship id: the attribute r:id, whatever its prefix; the sheet's own "id" has none.
-func relID(e xml.StartElement) string {
-	for _, a := range e.Attr {
-		if a.Name.Local == "id" && a.Name.Space != "" {
-			return a.Value
+func relID(x *scanner) string {
+	for _, a := range x.attrs {
+		if prefix, local, ok := bytes.Cut(a.name, []byte(":")); ok && string(local) == "id" && string(prefix) != "xml" {
+			return string(a.value)
 		}
 	}
 	return ""
@@ -151,19 +166,29 @@ func relations(p *pack, part string) (map[string]relation, error) {
 	}
 	defer func() { _ = r.Close() }()
 	rels := map[string]relation{}
-	err = newWalker(name, r).each(func(e xml.StartElement) error {
-		if e.Name.Local != "Relationship" || attr(e, "TargetMode") == "External" {
+	x := newScanner(name, r)
+	if err := x.root("Relationships"); err != nil {
+		return nil, err
+	}
+	err = x.children(func() error {
+		if !x.is("Relationship") || string(x.attr("TargetMode")) == "External" {
 			return nil
 		}
-		target := attr(e, "Target")
+		if len(rels) == MaxParts {
+			return damaged(name, "more than %d relationships", MaxParts)
+		}
+		target := string(x.attr("Target"))
 		if strings.HasPrefix(target, "/") {
 			target = path.Clean(target)[1:]
 		} else {
 			target = path.Join(dir, target)
 		}
-		rels[attr(e, "Id")] = relation{kind: attr(e, "Type"), target: target}
+		rels[string(x.attr("Id"))] = relation{kind: string(x.attr("Type")), target: target}
 		return nil
 	})
+	if err == nil {
+		err = x.rest()
+	}
 	return rels, err
 }
 
@@ -175,14 +200,26 @@ func readStrings(p *pack, name string) ([]string, error) {
 	}
 	defer func() { _ = r.Close() }()
 	var all []string
-	w := newWalker(name, r)
-	err = w.each(func(e xml.StartElement) error {
-		if e.Name.Local != "si" {
+	var texts slab
+	var value []byte
+	x := newScanner(name, r)
+	if err := x.root("sst"); err != nil {
+		return nil, err
+	}
+	err = x.children(func() error {
+		if !x.is("si") {
 			return nil
 		}
-		s, err := w.rich()
-		all = append(all, s)
+		if len(all) == MaxCells {
+			return &BoundError{Part: name, Found: "more than 16777216 shared texts", Bound: "at most 16777216", Do: "split the file"}
+		}
+		var err error
+		value, err = x.rich(value[:0])
+		all = append(all, texts.keep(unescape(value)))
 		return err
 	})
+	if err == nil {
+		err = x.rest()
+	}
 	return all, err
 }

@@ -1,0 +1,99 @@
+package cells
+
+// lookahead is how many bytes must be there before a plain cell is tried: more than most have. Others go by their tokens.
+const lookahead = 512
+
+// plainCells reads the cells that stand as most programs write them,
+//
+//	<c r="B7" s="3" t="s"><v>12.5</v></c>   <c r="B7" s="3"/>
+//
+// and stops before the first that does not. It is the same reading as that by tokens, without the tokens: a value here is
+// made of characters that stand for themselves, and what follows closes the element.
+func (s *sheetReader) plainCells() error {
+	x := s.x
+	for {
+		if x.end-x.at < lookahead && !x.done {
+			if _, err := x.fill(); err != nil {
+				return err
+			}
+		}
+		b := x.buf[x.at:x.end]
+		if len(b) < lookahead {
+			return nil
+		}
+		b = b[:lookahead]
+		if string(b[:6]) != `<c r="` {
+			return nil
+		}
+		col, i := 0, 6
+		for ; i < 9 && b[i]-'A' < 26; i++ {
+			col = col*26 + int(b[i]-'A') + 1
+		}
+		end := i + len(s.digits)
+		if col == 0 || col > MaxCol || string(b[i:end]) != s.digits || b[end] != '"' {
+			return nil
+		}
+		i = end + 1
+		kind, index, styled := byte('n'), 0, false
+		for b[i] == ' ' {
+			switch {
+			case b[i+1] == 's' && b[i+2] == '=' && b[i+3] == '"' && !styled:
+				from := i + 4
+				for i = from; b[i]-'0' < 10 && i < from+9; i++ {
+					index = index*10 + int(b[i]-'0')
+				}
+				if i == from || b[i] != '"' {
+					return nil
+				}
+				styled = true
+				i++
+			case b[i+1] == 't' && b[i+2] == '=' && b[i+3] == '"' && b[i+5] == '"' && (b[i+4] == 's' || b[i+4] == 'n') && kind == 'n':
+				if kind = b[i+4]; kind == 'n' {
+					kind = 'N'
+				}
+				i += 6
+			default:
+				return nil
+			}
+		}
+		c := Cell{Row: s.number, Col: col}
+		var st style
+		if index < len(s.styles) {
+			st = s.styles[index]
+			c.Format = st.code
+		}
+		switch {
+		case string(b[i:i+4]) == "><v>":
+			i += 4
+			from := i
+			for i < lookahead-16 && class[b[i]]&plainCell != 0 {
+				i++
+			}
+			if i == from || string(b[i:i+8]) != "</v></c>" {
+				return nil
+			}
+			value := b[from:i]
+			i += 8
+			switch {
+			case kind == 's':
+				n, ok := whole(value)
+				if !ok || n >= len(s.strings) {
+					return nil
+				}
+				c.Kind, c.Text = Text, s.strings[n]
+			case st.date:
+				c.Kind, c.Text = Date, s.texts.keep(value)
+			default:
+				c.Kind, c.Text = Number, s.texts.keep(value)
+			}
+		case b[i] == '/' && b[i+1] == '>':
+			i += 2
+		default:
+			return nil
+		}
+		x.at += i
+		if err := s.put(c); err != nil {
+			return err
+		}
+	}
+}
