@@ -36,9 +36,32 @@ func (t *table) findHeading() error {
 		}
 	}
 	if t.heading == 0 {
+		if n := t.sideBySide(); n > 0 {
+			return t.refuse("reading.layout: found the lots side by side in row %d (column-per-lot), which this version does not offer, want row-per-part; put the lots below each other, the lot's name in a column", n)
+		}
 		return t.refuse("found no row of headings above numbers, want one such as Lot, Part, Bore; state header_row under [reading]")
 	}
 	return nil
+}
+
+// sideBySide is the row that names all the lots looked for, two or more, as headings; 0 where there is none.
+func (t *table) sideBySide() int {
+	if len(t.hints.lots) < 2 {
+		return 0
+	}
+	for i, r := range t.sheet.Rows {
+		found := map[string]bool{}
+		for _, c := range r.Cells {
+			found[filledText(c)] = true
+		}
+		if !slices.ContainsFunc(t.hints.lots, func(l string) bool { return !found[qa.JoinSpace(l)] }) {
+			return r.Number
+		}
+		if i == lookHeadings {
+			break
+		}
+	}
+	return 0
 }
 
 // comment says whether a row is a comment line of a text file.

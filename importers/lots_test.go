@@ -111,3 +111,22 @@ func TestReadRepeatedBlockUnderOtherIDs(t *testing.T) {
 	r := mustRead(t, xlsxPlan(), xlsx(t, sheetOf{name: "Data", rows: rows}))
 	wantWarning(t, r, "repeated-block", "C14:C19 and C20:C25")
 }
+
+func TestReadOtherLayouts(t *testing.T) {
+	rows := [][]any{{"REF-0417", "CAND-0931"}} // L2
+	for i := range d1Reference {
+		rows = append(rows, []any{num(d1Reference[i]), num(d1Candidate[i])})
+	}
+	_, err := read(t, xlsxPlan(), xlsx(t, sheetOf{name: "Data", rows: rows}))
+	wantPlanError(t, err, "reading.layout", "side by side in row 1", "row-per-part")
+	side := [][]any{} // N31: two tables side by side
+	for i, row := range long()[:13] {
+		other := long()[0]
+		if i > 0 {
+			other = long()[12+i]
+		}
+		side = append(side, append(append(append([]any{}, row...), nil), other...))
+	}
+	_, err = read(t, xlsxPlan(), xlsx(t, sheetOf{name: "Data", rows: side}))
+	wantPlanError(t, err, "lot_column", "column A", "column E")
+}
