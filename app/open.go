@@ -1,8 +1,6 @@
 package app
 
 import (
-	"crypto/sha256"
-	"encoding/hex"
 	"errors"
 	"fmt"
 	"os"
@@ -138,13 +136,7 @@ func (w *window) compareByPlan(name string, data []byte, read func(string) ([]by
 	if err != nil {
 		return qa.Record{}, err
 	}
-	return qa.NewRecord(plan, fileOf(filepath.Base(name), data), readings, result, person(), now()), nil
-}
-
-// fileOf is a file as the record names it.
-func fileOf(name string, data []byte) qa.File {
-	sum := sha256.Sum256(data)
-	return qa.File{Name: name, SHA256: hex.EncodeToString(sum[:]), Bytes: int64(len(data))}
+	return qa.NewRecord(plan, qa.FileOf(filepath.Base(name), data), readings, result, person(), now()), nil
 }
 
 // beside is a file in the folder of another.
