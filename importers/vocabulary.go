@@ -2,8 +2,6 @@ package importers
 
 import (
 	"strings"
-
-	"lotpair/qa"
 )
 
 // This file is the only one that knows the words of inspection sheets. A word stands here only where it means one thing in
@@ -79,7 +77,7 @@ func words(all ...meaning) map[string]string {
 
 // word is a cell's text as the vocabulary knows it.
 func word(text string) string {
-	return strings.TrimRight(strings.ToLower(qa.JoinSpace(text)), " .:=")
+	return strings.TrimRight(strings.ToLower(joined(text)), " .:=")
 }
 
 // headingMeans is the part that a heading names; empty for a measurement or anything else. A unit is left off first.
@@ -93,7 +91,10 @@ func headingMeans(heading string) string {
 
 // missing says whether a text is a mark for a missing value.
 func missing(text string) bool {
-	switch strings.ToLower(qa.JoinSpace(text)) {
+	if text != "" && text[0] >= '0' && text[0] <= '9' { // most cells
+		return false
+	}
+	switch strings.ToLower(joined(text)) {
 	case "", "n/a", "#n/a", "na", "n.a.", "n. a.", "n.d.", "n. d.", "-", "--", "---", "\u2013", "\u2014", "\u2212", ".", "..", "...", "…", "?":
 		return true
 	}
@@ -102,7 +103,10 @@ func missing(text string) bool {
 
 // nonDetect says whether a text states a value below or above a detection limit, by sign or by word.
 func nonDetect(text string) bool {
-	s := strings.ToLower(qa.JoinSpace(text))
+	if text != "" && text[0] >= '0' && text[0] <= '9' { // most cells
+		return false
+	}
+	s := strings.ToLower(joined(text))
 	switch s {
 	case "bdl", "<lod", "< lod", "<loq", "< loq", "below lod", "below loq", "below detection limit", "n.n.", "<bg", "< bg", "<ng", "< ng":
 		return true
@@ -151,7 +155,7 @@ func unbracket(s string) string {
 
 // splitUnit takes a unit in brackets off the end of a heading: square brackets hold one, round ones only a known one.
 func splitUnit(heading string) (name, unit string) {
-	h := qa.JoinSpace(heading)
+	h := joined(heading)
 	for _, b := range []string{"[]", "()"} {
 		if !strings.HasSuffix(h, b[1:]) {
 			continue
