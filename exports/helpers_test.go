@@ -13,6 +13,7 @@ import (
 	"lotpair/exports"
 	"lotpair/exports/identity"
 	"lotpair/exports/opcsign"
+	"lotpair/importers/cells"
 	"lotpair/qa"
 )
 
@@ -125,4 +126,40 @@ func rezip(t testing.TB, pkg []byte, edit func(name string, b []byte) []byte) []
 		t.Fatal(err)
 	}
 	return out.Bytes()
+}
+
+// sheetFile is the part of a sheet in a workbook of ours: they are numbered in their order.
+func sheetFile(t testing.TB, pkg []byte, name string) string {
+	t.Helper()
+	book, err := cells.Read(pkg)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for i, s := range book.Sheets {
+		if s.Name == name {
+			return "xl/worksheets/sheet" + strconv.Itoa(i+1) + ".xml"
+		}
+	}
+	t.Fatalf("found no sheet %s", name)
+	return ""
+}
+
+// cellsOf is the texts of a sheet's cells by their names.
+func cellsOf(t testing.TB, pkg []byte, name string) map[string]string {
+	t.Helper()
+	book, err := cells.Read(pkg)
+	if err != nil {
+		t.Fatal(err)
+	}
+	s, ok := book.Sheet(name)
+	if !ok {
+		t.Fatalf("found no sheet %s", name)
+	}
+	out := map[string]string{}
+	for _, r := range s.Rows {
+		for _, c := range r.Cells {
+			out[c.Name()] = c.Text
+		}
+	}
+	return out
 }

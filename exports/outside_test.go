@@ -47,8 +47,9 @@ func TestOutsideSciPy(t *testing.T) {
 		t.Fatal(err)
 	}
 	t.Logf("%s", command(t, "/usr/bin/python3", "testdata/outside/recompute.py", file))
+	readings := sheetFile(t, pkg, exports.SheetReadings)
 	changed := rezip(t, pkg, func(name string, b []byte) []byte {
-		if name == "xl/worksheets/sheet3.xml" {
+		if name == readings {
 			return bytes.Replace(b, []byte("<v>9.9"), []byte("<v>9.8"), 1)
 		}
 		return b
@@ -69,9 +70,9 @@ func TestOutsideLibreOfficeAndR(t *testing.T) {
 	if err := os.WriteFile(file, pkg, 0o600); err != nil {
 		t.Fatal(err)
 	}
-	// The options of the text filter: comma, quote, UTF-8, from row 1, as stored and not as shown, third sheet.
+	// The options of the text filter: comma, quote, UTF-8, from row 1, as stored and not as shown, fourth sheet.
 	command(t, "soffice", "--headless", "-env:UserInstallation=file://"+filepath.Join(dir, "profile"),
-		"--convert-to", "csv:Text - txt - csv (StarCalc):44,34,76,1,,0,false,false,false,false,false,3", "--outdir", dir, file)
+		"--convert-to", "csv:Text - txt - csv (StarCalc):44,34,76,1,,0,false,false,false,false,false,4", "--outdir", dir, file)
 	texts, err := filepath.Glob(filepath.Join(dir, "*Readings*.csv"))
 	if err != nil || len(texts) != 1 {
 		t.Fatalf("LibreOffice wrote %v, %v; want the sheet Readings as csv", texts, err)
@@ -109,7 +110,7 @@ func TestOutsidePrint(t *testing.T) {
 	if !strings.Contains(info, "A4") && !strings.Contains(info, "595") {
 		t.Errorf("page size: got %s, want A4", info)
 	}
-	for _, s := range []string{"Summary, page 1 of", "Results, page", "Readings, page", "Ledger, page"} {
+	for _, s := range []string{"Summary, page 1 of", "Results, page", "Findings, page", "Readings, page", "Ledger, page", "Workings, page", "Pictures, page", "Trail, page", "Method, page"} {
 		if text := string(command(t, "pdftotext", filepath.Join(dir, "record.pdf"), "-")); !strings.Contains(text, s) {
 			t.Errorf("print: got no page %q", s)
 		}

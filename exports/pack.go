@@ -36,14 +36,16 @@ func pack(pkg []byte, data map[string][]byte, record []byte) ([]byte, error) {
 		}
 		parts[f.Name] = b
 	}
-	parts["customXml/item1.xml"] = record
-	parts["customXml/itemProps1.xml"] = []byte(recordProps)
-	parts["customXml/_rels/item1.xml.rels"] = []byte(recordRels)
 	const rels, types = "xl/_rels/workbook.xml.rels", "[Content_Types].xml"
-	if parts[rels], err = insertBefore(parts[rels], "</Relationships>", recordRelationship); err != nil {
-		return nil, fmt.Errorf("workbook, part %s: %w", rels, err)
+	if record != nil {
+		parts["customXml/item1.xml"] = record
+		parts["customXml/itemProps1.xml"] = []byte(recordProps)
+		parts["customXml/_rels/item1.xml.rels"] = []byte(recordRels)
+		if parts[rels], err = insertBefore(parts[rels], "</Relationships>", recordRelationship); err != nil {
+			return nil, fmt.Errorf("workbook, part %s: %w", rels, err)
+		}
 	}
-	if parts[types], err = contentTypes(parts[types]); err != nil {
+	if parts[types], err = contentTypes(parts[types], record != nil); err != nil {
 		return nil, fmt.Errorf("workbook, part %s: %w", types, err)
 	}
 	for name, cells := range data {
@@ -85,7 +87,7 @@ func insertBefore(b []byte, mark, what string) ([]byte, error) {
 }
 
 // contentTypes sorts the content types, whose order the spreadsheet library leaves to chance, and adds the record's.
-func contentTypes(b []byte) ([]byte, error) {
+func contentTypes(b []byte, record bool) ([]byte, error) {
 	var t struct {
 		Defaults []struct {
 			Extension   string `xml:"Extension,attr"`
@@ -106,7 +108,9 @@ func contentTypes(b []byte) ([]byte, error) {
 	for _, o := range t.Overrides {
 		lines = append(lines, fmt.Sprintf(`<Override PartName="%s" ContentType="%s"/>`, escape(o.PartName), escape(o.ContentType)))
 	}
-	lines = append(lines, fmt.Sprintf(`<Override PartName="/customXml/itemProps1.xml" ContentType="%s"/>`, recordPropsType))
+	if record {
+		lines = append(lines, fmt.Sprintf(`<Override PartName="/customXml/itemProps1.xml" ContentType="%s"/>`, recordPropsType))
+	}
 	sort.Strings(lines)
 	return []byte(xml.Header + `<Types xmlns="http://schemas.openxmlformats.org/package/2006/content-types">` + strings.Join(lines, "") + `</Types>`), nil
 }

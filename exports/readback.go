@@ -16,6 +16,10 @@ func sheetDifferences(pkg []byte, rec qa.Record) []string {
 	if err != nil {
 		return []string{err.Error()}
 	}
+	_, digest, err := encodeRecord(rec)
+	if err != nil {
+		return []string{err.Error()}
+	}
 	var found []string
 	say := func(format string, a ...any) {
 		if len(found) < maxDifferences {
@@ -23,7 +27,7 @@ func sheetDifferences(pkg []byte, rec qa.Record) []string {
 		}
 	}
 	expected := map[string]bool{}
-	for _, want := range sheets(rec) {
+	for _, want := range sheets(rec, digest) {
 		expected[want.name] = true
 		got, ok := book.Sheet(want.name)
 		if !ok {
@@ -33,7 +37,13 @@ func sheetDifferences(pkg []byte, rec qa.Record) []string {
 		if got.Hidden {
 			say("sheet %s: found it hidden, want it in sight", want.name)
 		}
-		compareSheet(want, got, say)
+		var formulas map[string]string
+		if want.hasFormulas() {
+			if formulas, err = sheetFormulas(pkg, want.name); err != nil {
+				say("%v", err)
+			}
+		}
+		compareSheet(want, got, formulas, say)
 	}
 	for _, s := range book.Sheets {
 		if !expected[s.Name] {
@@ -43,7 +53,21 @@ func sheetDifferences(pkg []byte, rec qa.Record) []string {
 	return found
 }
 
-func compareSheet(want sheet, got cells.Sheet, say func(string, ...any)) {
+func (s sheet) hasFormulas() bool {
+	for _, r := range s.rows {
+		for _, c := range r.cells {
+			if c.formula != "" {
+				return true
+			}
+		}
+	}
+	return false
+}
+
+func compareSheet(want sheet, got cells.Sheet, formulas map[string]string, say func(string, ...any)) {
+	if len(got.HiddenCols) > 0 {
+		say("sheet %s: found hidden columns, want all in sight", want.name)
+	}
 	next := 0 // of got.Rows
 	for i, r := range want.rows {
 		number := i + 1
@@ -55,7 +79,7 @@ func compareSheet(want sheet, got cells.Sheet, say func(string, ...any)) {
 		if have.Hidden {
 			say("sheet %s: row %d is hidden", want.name, number)
 		}
-		compareRow(want.name, number, r, have, say)
+		compareRow(want.name, number, r, have, formulas, say)
 	}
 	for ; next < len(got.Rows); next++ {
 		for _, c := range got.Rows[next].Cells {
@@ -66,7 +90,7 @@ func compareSheet(want sheet, got cells.Sheet, say func(string, ...any)) {
 	}
 }
 
-func compareRow(name string, number int, want row, got cells.Row, say func(string, ...any)) {
+func compareRow(name string, number int, want row, got cells.Row, formulas map[string]string, say func(string, ...any)) {
 	expected := map[int]cell{}
 	col := 1
 	for _, c := range want.cells {
@@ -75,14 +99,16 @@ func compareRow(name string, number int, want row, got cells.Row, say func(strin
 	}
 	seen := map[int]bool{}
 	for _, g := range got.Cells {
-		if g.Kind == cells.Blank {
+		if g.Kind == cells.Blank && !g.Formula {
 			continue
 		}
 		seen[g.Col] = true
 		w := expected[g.Col]
 		switch {
-		case g.Formula:
+		case g.Formula && w.formula == "":
 			say("%s!%s: found a formula, want a value", name, g.Name())
+		case w.formula != "" && (!g.Formula || formulas[g.Name()] != w.formula):
+			say("%s!%s: found the formula %q, want %q", name, g.Name(), formulas[g.Name()], w.formula)
 		case w.number != nil:
 			if x, err := strconv.ParseFloat(g.Text, 64); err != nil || g.Kind != cells.Number || x != *w.number {
 				say("%s!%s: found %q, want %s", name, g.Name(), g.Text, shortest(*w.number))

@@ -2,12 +2,15 @@ package exports
 
 import (
 	"bytes"
+	"crypto/sha256"
+	"encoding/hex"
 	"encoding/json"
 	"encoding/xml"
 	"errors"
 	"fmt"
 	"io"
 	"strconv"
+	"strings"
 
 	"lotpair/exports/opcsign"
 	"lotpair/qa"
@@ -61,86 +64,140 @@ type readingXML struct {
 	Sheet    *string `xml:"s,attr"`
 }
 
-func encodeRecord(rec qa.Record) ([]byte, error) {
-	x := recordXML{Format: rec.Format, Calculation: rec.Result.Software.Calculation}
+// encodeRecord writes the record as XML, and gives the digest of its content: everything but the signer and the acts of
+// signing, so that a draft and the signed record made of it have one id. The readings are written by hand, because there may be
+// a million.
+func encodeRecord(rec qa.Record) (part []byte, digest string, err error) {
 	around := rec.Readings
 	around.Reference, around.Candidate = qa.Lot{}, qa.Lot{}
-	for _, f := range []struct {
-		to   *string
-		from any
-	}{{&x.Plan, rec.Plan}, {&x.PlanFile, rec.PlanFile}, {&x.Around, around}, {&x.Result, rec.Result}, {&x.Trail, rec.Trail}} {
-		if err := toJSON(f.to, f.from); err != nil {
-			return nil, err
+	var b bytes.Buffer
+	b.WriteString(xml.Header)
+	fmt.Fprintf(&b, `<record xmlns="%s" format="%s" calculation="%d">`, recordNamespace, rec.Format, rec.Result.Software.Calculation)
+	put := func(name string, v any) {
+		if err == nil {
+			err = putJSON(&b, name, v)
 		}
 	}
-	if rec.Signer != nil {
-		if err := toJSON(&x.Signer, rec.Signer); err != nil {
-			return nil, err
-		}
-	}
+	put("plan", rec.Plan)
+	put("planFile", rec.PlanFile)
 	for _, l := range []struct {
 		side qa.Side
 		lot  qa.Lot
 	}{{qa.Reference, rec.Readings.Reference}, {qa.Candidate, rec.Readings.Candidate}} {
-		one, err := encodeLot(l.side, l.lot)
-		if err != nil {
-			return nil, err
+		if err == nil {
+			err = encodeLot(&b, l.side, l.lot)
 		}
-		x.Lots = append(x.Lots, one)
 	}
-	var b bytes.Buffer
-	b.WriteString(xml.Header)
-	if err := xml.NewEncoder(&b).Encode(x); err != nil {
-		return nil, fmt.Errorf("record: %w", err)
+	put("around", around)
+	put("result", rec.Result)
+	if err != nil {
+		return nil, "", err
 	}
-	return b.Bytes(), nil
+	content := sha256.New()
+	content.Write(b.Bytes())
+	acts, err := json.Marshal(withoutSigning(rec.Trail))
+	if err != nil {
+		return nil, "", fmt.Errorf("record: %w", err)
+	}
+	content.Write(acts)
+	put("trail", rec.Trail)
+	if rec.Signer != nil {
+		put("signer", rec.Signer)
+	}
+	b.WriteString("</record>")
+	return b.Bytes(), hex.EncodeToString(content.Sum(nil)), err
 }
 
-func toJSON(to *string, from any) error {
-	b, err := json.Marshal(from)
+// signedAs begins the act of signing in the trail.
+const signedAs = "signed as "
+
+func withoutSigning(t qa.Trail) qa.Trail {
+	out := qa.Trail{}
+	for _, a := range t {
+		if !strings.HasPrefix(a.What, signedAs) {
+			out = append(out, a)
+		}
+	}
+	return out
+}
+
+func putJSON(b *bytes.Buffer, name string, v any) error {
+	text, err := json.Marshal(v)
 	if err != nil {
 		return fmt.Errorf("record: %w", err)
 	}
-	*to = string(b)
+	b.WriteString("<" + name + ">")
+	_ = xml.EscapeText(b, text) // a bytes.Buffer does not fail
+	b.WriteString("</" + name + ">")
 	return nil
 }
 
-func encodeLot(side qa.Side, l qa.Lot) (lotXML, error) {
-	out := lotXML{Side: string(side)}
+func encodeLot(b *bytes.Buffer, side qa.Side, l qa.Lot) error {
+	b.WriteString(`<lot side="` + string(side) + `">`)
 	head := l
 	head.Series = nil
-	if err := toJSON(&out.Head, head); err != nil {
-		return lotXML{}, err
+	if err := putJSON(b, "head", head); err != nil {
+		return err
 	}
 	for _, s := range l.Series {
-		one := seriesXML{Readings: make([]readingXML, 0, len(s.Readings))}
+		b.WriteString("<series>")
 		h := s
 		h.Readings = nil
-		if err := toJSON(&one.Head, h); err != nil {
-			return lotXML{}, err
+		if err := putJSON(b, "head", h); err != nil {
+			return err
 		}
 		file, sheet := "", ""
-		for _, r := range s.Readings {
-			x := readingXML{Value: shortest(r.Value), Cell: r.Source.Cell, Part: r.Part, Decimals: r.Decimals, LeftOut: r.LeftOut}
-			if r.Source.Text != x.Value {
-				t := r.Source.Text
-				x.Text = &t
+		for i := range s.Readings {
+			r := &s.Readings[i]
+			value := shortest(r.Value)
+			b.WriteString(`<r v="` + value)
+			putAttribute(b, "c", r.Source.Cell)
+			if r.Source.Text != value {
+				putAttribute(b, "t", r.Source.Text)
+			}
+			if r.Part != "" {
+				putAttribute(b, "p", r.Part)
+			}
+			if r.Decimals != 0 {
+				putAttribute(b, "d", strconv.Itoa(r.Decimals))
+			}
+			if r.LeftOut != "" {
+				putAttribute(b, "out", r.LeftOut)
 			}
 			if r.Source.File != file {
 				file = r.Source.File
-				f := file
-				x.File = &f
+				putAttribute(b, "f", file)
 			}
 			if r.Source.Sheet != sheet {
 				sheet = r.Source.Sheet
-				sh := sheet
-				x.Sheet = &sh
+				putAttribute(b, "s", sheet)
 			}
-			one.Readings = append(one.Readings, x)
+			b.WriteString(`"></r>`)
 		}
-		out.Series = append(out.Series, one)
+		b.WriteString("</series>")
 	}
-	return out, nil
+	b.WriteString("</lot>")
+	return nil
+}
+
+// putAttribute closes the attribute before and writes the next but for its last quote.
+func putAttribute(b *bytes.Buffer, name, value string) {
+	b.WriteString(`" ` + name + `="`)
+	if plainText(value) {
+		b.WriteString(value)
+		return
+	}
+	_ = xml.EscapeText(b, []byte(value)) // a bytes.Buffer does not fail
+}
+
+// plainText says that nothing of a text has to be escaped.
+func plainText(s string) bool {
+	for i := range len(s) {
+		if c := s[i]; c < ' ' || c > '~' || c == '&' || c == '<' || c == '>' || c == '"' || c == '\'' {
+			return false
+		}
+	}
+	return true
 }
 
 // ReadRecord takes the record out of a workbook. It checks nothing: Verify does.

@@ -7,35 +7,32 @@ import (
 	"lotpair/qa"
 )
 
-// resultsSheet states all figures at full precision, one a row, under the names of the result format, so that a reviewer can
-// compare each with another program's.
+// resultsSheet states all figures at full precision under the names of the result format: a row a characteristic, a column a
+// figure, so that characteristics can be sorted and filtered and another program can read them.
 func resultsSheet(rec qa.Record) sheet {
-	s := sheet{name: SheetResults, widths: []float64{38, 25, 9, 62}}
-	r := rec.Result
+	s := sheet{name: SheetResults, landscape: true, flows: true}
 	s.add(text("Results", titleLook))
-	s.addTall(30, wide("All figures at full precision. Differences are candidate minus reference. An empty value does not exist; a warning says why.", wrapLook, 4))
-	s.add(heads("Figure", "Value", "Unit", "Meaning")...)
-	s.frozen = len(s.rows)
-	s.add(text("verdict", ruledLook), text(string(r.Verdict), ruledStrongLook), text("", ruledLook), text("overall, over all characteristics", ruledLook))
-	for _, c := range r.Characteristics {
-		s.gap()
-		s.add(wide(c.Name, groupLook, 4))
-		for _, f := range flatten("", reflect.ValueOf(c)) {
-			if f.name == "name" {
-				continue
-			}
-			m := meanings[f.name]
-			unit := ""
-			if m.inUnit {
-				unit = c.Unit
-			}
-			s.add(text(f.name, ruledLook), f.value(), text(unit, ruledLook), text(m.text, ruledLook))
+	s.add(cell{}, text("All figures at full precision, a line a characteristic. Differences are candidate minus reference. An empty cell: the value does not exist; the sheet Findings says why.", plainLook))
+	s.add(cell{}, text("Overall: "+string(rec.Result.Verdict)+". "+"The same figures, one a line and with their formulas: sheet Workings.", strongLook))
+	t := resultsTable(rec.Result)
+	t.to(&s, func(name string) string {
+		m := meanings[name]
+		if m.inUnit {
+			return m.text + ", in the unit"
 		}
-		for _, w := range c.Warnings {
-			s.addTall(lines(w.Text, 80)*13.5, text("warning: "+w.Code, ruledLook), wide(w.Text, ruledWrapLook, 3))
-		}
-	}
+		return m.text
+	})
 	return s
+}
+
+// resultsTable is the figures of all characteristics, name and verdict first.
+func resultsTable(r qa.Result) *table {
+	t := &table{}
+	t.head("name", "unit", "verdict")
+	for _, c := range r.Characteristics {
+		t.add(flatten("", reflect.ValueOf(c)))
+	}
+	return t
 }
 
 // figureRow is one value of the result with its dotted name.
@@ -64,7 +61,7 @@ func flatten(prefix string, v reflect.Value) []figureRow {
 		var out []figureRow
 		for i := range v.NumField() {
 			tag := strings.Split(v.Type().Field(i).Tag.Get("json"), ",")[0]
-			if tag == "-" || v.Field(i).Kind() == reflect.Slice {
+			if tag == "-" || tag == "warnings" || tag == "sensitivity" { // they have sheets of their own
 				continue
 			}
 			name := tag
@@ -74,6 +71,8 @@ func flatten(prefix string, v reflect.Value) []figureRow {
 			out = append(out, flatten(name, v.Field(i))...)
 		}
 		return out
+	case reflect.Slice:
+		return flattenList(prefix, v)
 	case reflect.Float64:
 		x := v.Float()
 		return []figureRow{{name: prefix, number: &x}}
@@ -91,6 +90,18 @@ func flatten(prefix string, v reflect.Value) []figureRow {
 	return nil
 }
 
+// flattenList joins a list of words into one text; other lists have sheets of their own.
+func flattenList(prefix string, v reflect.Value) []figureRow {
+	if v.Type().Elem().Kind() != reflect.String || v.Len() == 0 {
+		return nil
+	}
+	words := make([]string, v.Len())
+	for i := range words {
+		words[i] = v.Index(i).String()
+	}
+	return []figureRow{{name: prefix, text: strings.Join(words, ", ")}}
+}
+
 // meaning explains a figure; inUnit says that it is in the characteristic's unit.
 type meaning struct {
 	text   string
@@ -98,7 +109,7 @@ type meaning struct {
 }
 
 var meanings = withSides(map[string]meaning{
-	"unit": {"unit of the characteristic", false}, "kind": {"kind of characteristic", false},
+	"name": {"characteristic", false}, "unit": {"unit of the characteristic", false}, "kind": {"kind of characteristic", false},
 	"limits.lower": {"lower specification limit", true}, "limits.target": {"target", true}, "limits.upper": {"upper specification limit", true},
 	"objective": {"what was to be shown", false}, "alpha": {"largest probability of a false verdict", false}, "method": {"Welch: unequal variances", false},
 	"verdict": {"what the criterion says of the readings", false}, "detectable": {"is any difference detectable: two-sided p below alpha", false},

@@ -9,21 +9,29 @@ import (
 
 // The names of the workbook's sheets, in order.
 const (
-	SheetSummary  = "Summary"
-	SheetResults  = "Results"
-	SheetReadings = "Readings"
-	SheetLedger   = "Ledger"
+	SheetSummary     = "Summary"
+	SheetResults     = "Results"
+	SheetSensitivity = "Sensitivity" // only where the result has any
+	SheetFindings    = "Findings"
+	SheetReadings    = "Readings"
+	SheetLedger      = "Ledger"
+	SheetWorkings    = "Workings"
+	SheetPictures    = "Pictures"
+	SheetTrail       = "Trail"
+	SheetMethod      = "Method"
 )
 
 // maxText is the longest text a cell of a workbook holds (ECMA-376 leaves it open; common practice of the programs).
 const maxText = 32767
 
-// cell is one cell of a sheet: text, a number, or nothing. A text is always written as text, never as a formula.
+// cell is one cell of a sheet: text, a number, or nothing. A text is always written as text, never as a formula. A formula is
+// our own, made of nothing but functions, numbers and addresses of our sheets (workings.go); text of a file never gets there.
 type cell struct {
-	text   string
-	number *float64
-	look   look
-	span   int // columns it covers, 0 and 1 alike
+	text    string
+	number  *float64
+	formula string // without "="; number or text is then what it gives, so that no program has to compute to show it
+	look    look
+	span    int // columns it covers, 0 and 1 alike
 }
 
 // look names how a cell is shown; workbook.go holds what each means.
@@ -52,6 +60,8 @@ const (
 	ruledNumberLook
 	ruledStrongLook
 	signLook
+	headPlainLook // names of the result format, over what they mean
+	headPlainRightLook
 )
 
 // row is one row of a sheet; a height of 0 leaves it to the program.
@@ -65,8 +75,24 @@ type sheet struct {
 	name      string
 	widths    []float64 // of the columns, in characters
 	rows      []row
-	frozen    int // heading rows that stay in sight and repeat on every printed page; the last of them
+	frozen    int // rows that stay in sight
+	heads     int // the last of them, which repeat on every printed page
+	columns   int // columns that stay in sight and repeat on every printed page
+	filter    int // the heading row from which the table can be filtered; 0 for none
+	filterTo  int // and its last row
 	landscape bool
+	flows     bool // over several pages side by side, where as wide as a page would be too small to read
+	breaks    []int
+	pictures  []picture
+}
+
+// picture is laid over the cells from its row and column on. It is painted when the workbook is written, and not when the
+// sheets are compared.
+type picture struct {
+	row, col      int
+	width, height float64 // points
+	about         string
+	paint         func() ([]byte, error)
 }
 
 func (s *sheet) add(cells ...cell) { s.rows = append(s.rows, row{cells: cells}) }
@@ -131,7 +157,31 @@ func xmlRune(r rune) bool {
 // shortest is the shortest text that reads back as the same double.
 func shortest(x float64) string { return strconv.FormatFloat(x, 'g', -1, 64) }
 
-// sheets lays the whole record out. It is a pure function of the record.
-func sheets(rec qa.Record) []sheet {
-	return []sheet{summarySheet(rec), resultsSheet(rec), readingsSheet(rec), ledgerSheet(rec)}
+// sheets lays the whole record out. It is a pure function of the record; digest is that of its content (encodeRecord).
+func sheets(rec qa.Record, digest string) []sheet {
+	out := []sheet{summarySheet(rec, digest), resultsSheet(rec)}
+	if s, ok := sensitivitySheet(rec); ok {
+		out = append(out, s)
+	}
+	out = append(out, findingsSheet(rec), readingsSheet(rec), ledgerSheet(rec), workingsSheet(rec), picturesSheet(rec), trailSheet(rec), methodSheet(rec))
+	if rec.Signer == nil {
+		for i := range out {
+			markDraft(&out[i])
+		}
+	}
+	return out
+}
+
+// draft stands on every sheet of a record that nobody has signed yet.
+const draft = "UNSIGNED DRAFT"
+
+// markDraft says so in the title of the sheet, besides the head of every printed page. A first column that repeats on every
+// page has no room for it.
+func markDraft(s *sheet) {
+	first := &s.rows[0]
+	if s.columns > 0 {
+		first.cells = append(first.cells, text(draft, titleLook))
+		return
+	}
+	first.cells[0].text = draft + ": " + first.cells[0].text
 }

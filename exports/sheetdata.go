@@ -52,6 +52,8 @@ func sheetData(s sheet, w *looks) ([]byte, error) {
 func writeCell(b *bytes.Buffer, c cell, name string, style int) {
 	b.WriteString(`<c r="` + name + `" s="` + strconv.Itoa(style) + `"`)
 	switch {
+	case c.formula != "":
+		writeFormula(b, c)
 	case c.number != nil:
 		b.WriteString("><v>" + shortest(*c.number) + "</v></c>")
 	case c.text != "":
@@ -62,6 +64,18 @@ func writeCell(b *bytes.Buffer, c cell, name string, style int) {
 	default:
 		b.WriteString("/>")
 	}
+}
+
+// writeFormula writes a formula with what it gives (ISO/IEC 29500-1, 18.3.1.40).
+func writeFormula(b *bytes.Buffer, c cell) {
+	value := escape(c.text)
+	if c.number != nil {
+		value = shortest(*c.number)
+		b.WriteString("><f>")
+	} else {
+		b.WriteString(` t="str"><f>`)
+	}
+	b.WriteString(escape(c.formula) + "</f><v>" + value + "</v></c>")
 }
 
 // escapeMarks keeps a text that looks like an escape as it is: programs read "_x0041_" as "A" (ISO/IEC 29500-1, 22.4.2.4), so

@@ -92,7 +92,7 @@ func SignFirst(rec qa.Record, id identity.Identity, st opcsign.Statement) ([]byt
 		Name: st.Name, Title: st.Title, Organization: st.Organization, Meaning: st.Meaning,
 		Reason: st.Reason, Disposition: st.Disposition, Time: st.Time, Fingerprint: id.Fingerprint(),
 	}
-	rec.Trail = rec.Trail.With(st.Time, st.Name, "signed as "+st.Meaning, "", st.Reason)
+	rec.Trail = rec.Trail.With(st.Time, st.Name, signedAs+st.Meaning, "", st.Reason)
 	pkg, err := Workbook(rec)
 	if err != nil {
 		return nil, err

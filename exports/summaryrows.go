@@ -22,7 +22,7 @@ const (
 var summaryWidths = []float64{23, 18, 9, 12, 18, 15.5, 15.5, 16}
 
 // summarySheet is the first page: facing lots, verdicts in words, criterion, sources, cautions and signatures.
-func summarySheet(rec qa.Record) sheet {
+func summarySheet(rec qa.Record, digest string) sheet {
 	s := sheet{name: SheetSummary, widths: summaryWidths}
 	r := rec.Result
 	s.addTall(26, wide(orDash(r.Title), titleLook, summaryColumns))
@@ -43,7 +43,7 @@ func summarySheet(rec qa.Record) sheet {
 		paragraph(&s, c, smallLook, smallRoom, 12.5)
 	}
 	s.gap()
-	signatureBlock(&s, rec)
+	signatureBlock(&s, rec, digest)
 	return s
 }
 
@@ -122,6 +122,9 @@ func fileLine(l qa.LotResult) string {
 func verdictTable(s *sheet, r qa.Result) {
 	s.add(text("Characteristic", headLook), text("Asked", headLook), text("Readings", headLook), text("Difference", headLook),
 		text("Interval", headLook), wide("on the scale of its margin", headLook, 2), text("Verdict", headLook))
+	if n := len(r.Characteristics); n > 0 && n <= maxSpineLines {
+		s.pictures = append(s.pictures, spinePicture(r, len(s.rows)+1))
+	}
 	for _, c := range r.Characteristics {
 		s.addTall(spineRowHeight, text(nameWithUnit(c), ruledWrapLook), text(askedText(c), ruledWrapLook),
 			text(fmt.Sprintf("%d | %d", c.Reference.N, c.Candidate.N), ruledLook),
@@ -272,7 +275,7 @@ func ledgerText(ledger []qa.Entry) string {
 	return "Cells in the ledger: " + strings.Join(parts, ", ") + "."
 }
 
-func signatureBlock(s *sheet, rec qa.Record) {
+func signatureBlock(s *sheet, rec qa.Record, digest string) {
 	s.add(wide("Signatures required for a complete record", groupLook, summaryColumns))
 	s.add(text("Meaning", headLook), text("Name", headLook), wide("Title, organization", headLook, 2), wide("Signed at (local time)", headLook, 2), wide("Certificate, SHA-256", headLook, 2))
 	printed := false
@@ -294,6 +297,7 @@ func signatureBlock(s *sheet, rec qa.Record) {
 		paragraph(s, "Disposition stated with it by the signer: "+g.Disposition, smallLook, smallRoom, 12.5)
 	}
 	v := rec.Result.Software
+	paragraph(s, fmt.Sprintf("Record %s: the first digits of the digest of its content, signatures apart (SHA-256): %s", RecordID(digest), digest), smallLook, smallRoom, 12.5)
 	paragraph(s, fmt.Sprintf("Made by Lotpair %s (%s), calculation %d, %s/%s.", v.Version, orWord(v.Revision, "no revision"), v.Calculation, v.OS, v.Arch), smallLook, smallRoom, 12.5)
 }
 
@@ -303,7 +307,7 @@ func signerRow(s *sheet, g qa.Signer) {
 		who = strings.TrimPrefix(who+", "+g.Organization, ", ")
 	}
 	s.addTall(38, text(g.Meaning, signLook), text(g.Name, signLook), wide(who, signLook, 2),
-		wide(localTime(g.Time), signLook, 2), wide(fingerprintLines(g.Fingerprint), signLook, 2))
+		wide(bothTimes(g.Time), signLook, 2), wide(fingerprintLines(g.Fingerprint), signLook, 2))
 }
 
 // fingerprintLines breaks a digest into groups that can be read aloud.
@@ -323,6 +327,14 @@ func orWord(s, word string) string {
 		return word
 	}
 	return s
+}
+
+// bothTimes is a time as the person saw it, and in UTC below it.
+func bothTimes(t time.Time) string {
+	if t.IsZero() {
+		return ""
+	}
+	return localTime(t) + "\n" + t.UTC().Format("2006-01-02 15:04:05") + " UTC"
 }
 
 // localTime writes a time as the person saw it, with its offset.

@@ -47,7 +47,7 @@ func TestVerifyTampering(t *testing.T) {
 	}{
 		{"verdict in the summary", replace("xl/worksheets/sheet1.xml", "Equivalent", "equivalent")},
 		{"a figure in the results", replace("xl/worksheets/sheet2.xml", "<v>0.0", "<v>0.1")},
-		{"a reading in its sheet", replace("xl/worksheets/sheet3.xml", "<v>9.9", "<v>9.8")},
+		{"a reading in its sheet", replace(sheetFile(t, signedOnce(t), exports.SheetReadings), "<v>9.9", "<v>9.8")},
 		{"a reading in the record", replace("customXml/item1.xml", `v="9.9`, `v="9.8`)},
 		{"the verdict in the record", replace("customXml/item1.xml", "&#34;verdict&#34;:&#34;equivalent&#34;", "&#34;verdict&#34;:&#34;not equivalent&#34;")},
 		{"the record gone", func(name string, b []byte) []byte {
@@ -123,8 +123,9 @@ func TestVerifySheetsDiffer(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
+	readings := sheetFile(t, pkg, exports.SheetReadings)
 	pkg = rezip(t, pkg, func(name string, b []byte) []byte {
-		if name == "xl/worksheets/sheet3.xml" {
+		if name == readings {
 			return bytes.Replace(b, []byte("<v>9.9"), []byte("<v>9.8"), 1)
 		}
 		return b

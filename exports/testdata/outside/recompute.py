@@ -12,17 +12,14 @@ book = openpyxl.load_workbook(sys.argv[1], data_only=True)
 
 readings = {}
 for row in book["Readings"].iter_rows(min_row=4, values_only=True):
-    side, _, name, value, _, _, _, _, state = row[:9]
+    side, _, name, value, _, _, _, _, _, state = row[:10]
     if side and state == "used":
         readings.setdefault(name, {}).setdefault(side, []).append(value)
 
-stated, name = {}, None
-for row in book["Results"].iter_rows(min_row=5, values_only=True):
-    if row[0] and row[1] is None and row[0] in readings:
-        name = row[0]
-        stated[name] = {}
-    elif name and row[0] and row[1] is not None:
-        stated[name][row[0]] = row[1]
+# A line a characteristic, under the names of the figures and a line of what they mean.
+rows = [r for r in book["Results"].iter_rows(values_only=True)]
+top = next(i for i, r in enumerate(rows) if r[0] == "name")
+stated = {r[0]: {k: v for k, v in zip(rows[top], r) if v is not None} for r in rows[top + 2 :] if r[0]}
 
 wrong, compared = 0, 0
 

@@ -1,0 +1,198 @@
+package exports
+
+import (
+	"bytes"
+	"fmt"
+	"image/png"
+	"strings"
+
+	"github.com/xuri/excelize/v2"
+
+	"lotpair/importers/cells"
+)
+
+// book is a workbook as it is to be written.
+type book struct {
+	title  string
+	foot   string // at the left of every page's foot
+	sheets []sheet
+	record []byte // the custom XML part; nil for a workbook that carries none
+	draft  bool
+}
+
+// epoch stands in the document properties, which are removed before signing: the true times are in the record.
+const epoch = "2000-01-01T00:00:00Z"
+
+// bytes is the package. The same book gives the same bytes.
+func (b book) bytes() ([]byte, error) {
+	f := excelize.NewFile()
+	defer f.Close()
+	w := &looks{file: f, ids: map[look]int{}}
+	if err := f.SetDefaultFont(workbookFont); err != nil {
+		return nil, fmt.Errorf("workbook: %w", err)
+	}
+	data := map[string][]byte{} // part name to its cells
+	for i, s := range b.sheets {
+		if i == 0 {
+			if err := f.SetSheetName("Sheet1", s.name); err != nil {
+				return nil, fmt.Errorf("workbook: %w", err)
+			}
+		} else if _, err := f.NewSheet(s.name); err != nil {
+			return nil, fmt.Errorf("workbook: %w", err)
+		}
+		if err := b.frame(f, s); err != nil {
+			return nil, fmt.Errorf("workbook, sheet %s: %w", s.name, err)
+		}
+		cells, err := sheetData(s, w)
+		if err != nil {
+			return nil, fmt.Errorf("workbook, sheet %s: %w", s.name, err)
+		}
+		data[fmt.Sprintf("xl/worksheets/sheet%d.xml", i+1)] = cells
+	}
+	if err := f.SetAppProps(&excelize.AppProperties{Application: "Lotpair", AppVersion: "1.0"}); err != nil {
+		return nil, fmt.Errorf("workbook: %w", err)
+	}
+	if err := f.SetDocProps(&excelize.DocProperties{Creator: "Lotpair", Title: cleanText(b.title), Created: epoch, Modified: epoch}); err != nil {
+		return nil, fmt.Errorf("workbook: %w", err)
+	}
+	var out bytes.Buffer
+	if err := f.Write(&out); err != nil {
+		return nil, fmt.Errorf("workbook: %w", err)
+	}
+	return pack(out.Bytes(), data, b.record)
+}
+
+// frame sets everything of a sheet but its cells.
+func (b book) frame(f *excelize.File, s sheet) error {
+	for i, width := range s.widths {
+		col := cells.Letters(i + 1)
+		if err := f.SetColWidth(s.name, col, col, width); err != nil {
+			return err
+		}
+	}
+	if s.frozen > 0 || s.columns > 0 {
+		pane := "bottomLeft"
+		if s.columns > 0 {
+			pane = "bottomRight"
+		}
+		if err := f.SetPanes(s.name, &excelize.Panes{
+			Freeze: true, XSplit: s.columns, YSplit: s.frozen, TopLeftCell: cells.Name(s.columns+1, s.frozen+1), ActivePane: pane,
+		}); err != nil {
+			return err
+		}
+	}
+	if err := merge(f, s); err != nil {
+		return err
+	}
+	if s.filter > 0 && s.filterTo > s.filter {
+		if err := f.AutoFilter(s.name, cells.Name(1, s.filter)+":"+cells.Name(len(s.widths), s.filterTo), nil); err != nil {
+			return err
+		}
+	}
+	if n := len(s.rows); n > 0 {
+		if err := f.SetSheetDimension(s.name, "A1:"+cells.Name(max(1, len(s.widths)), n)); err != nil {
+			return err
+		}
+	}
+	for _, row := range s.breaks {
+		if err := f.InsertPageBreak(s.name, cells.Name(1, row)); err != nil {
+			return err
+		}
+	}
+	for _, p := range s.pictures {
+		if err := p.lay(f, s.name); err != nil {
+			return err
+		}
+	}
+	return b.pageSetup(f, s)
+}
+
+// lay paints the picture and puts it over its cells.
+func (p picture) lay(f *excelize.File, sheet string) error {
+	b, err := p.paint()
+	if err != nil {
+		return err
+	}
+	size, err := png.DecodeConfig(bytes.NewReader(b))
+	if err != nil {
+		return fmt.Errorf("picture: %w", err)
+	}
+	return f.AddPictureFromBytes(sheet, cells.Name(p.col, p.row), &excelize.Picture{
+		Extension: ".png", File: b, InsertType: excelize.PictureInsertTypePlaceOverCells,
+		Format: &excelize.GraphicOptions{
+			AltText: p.about, ScaleX: p.width / pixelPoints / float64(size.Width), ScaleY: p.height / pixelPoints / float64(size.Height),
+			OffsetX: 2, OffsetY: 1, Positioning: "oneCell",
+		},
+	})
+}
+
+// pageSetup makes the sheet print on A4 (and, as nothing is set to the last line, on Letter), as wide as the page, with the
+// record's id and page numbers at the foot.
+func (b book) pageSetup(f *excelize.File, s sheet) error {
+	a4, one, none, orientation, no := 9, 1, 0, "portrait", false
+	if s.landscape {
+		orientation = "landscape"
+	}
+	layout := &excelize.PageLayoutOptions{Size: &a4, Orientation: &orientation}
+	if s.flows {
+		scale := uint(58)
+		layout.AdjustTo = &scale
+	} else {
+		yes := true
+		layout.FitToWidth, layout.FitToHeight = &one, &none
+		if err := f.SetSheetProps(s.name, &excelize.SheetPropsOptions{FitToPage: &yes}); err != nil {
+			return err
+		}
+	}
+	if err := f.SetPageLayout(s.name, layout); err != nil {
+		return err
+	}
+	side, edge, foot := 0.55, 0.7, 0.3
+	if err := f.SetPageMargins(s.name, &excelize.PageLayoutMarginsOptions{Left: &side, Right: &side, Top: &edge, Bottom: &edge, Header: &foot, Footer: &foot}); err != nil {
+		return err
+	}
+	if err := f.SetSheetView(s.name, 0, &excelize.ViewOptions{ShowGridLines: &no}); err != nil {
+		return err
+	}
+	// A space after the size: a title that begins with a digit would be read as part of it.
+	marks := &excelize.HeaderFooterOptions{OddFooter: "&L&8 " + b.foot + "&R&8 " + s.name + ", page &P of &N"}
+	if b.draft {
+		marks.OddHeader = "&C&\"" + workbookFont + ",Bold\"&10" + draft
+	}
+	if err := f.SetHeaderFooter(s.name, marks); err != nil {
+		return err
+	}
+	if titles := s.titles(); titles != "" {
+		return f.SetDefinedName(&excelize.DefinedName{Name: "_xlnm.Print_Titles", Scope: s.name, RefersTo: titles})
+	}
+	return nil
+}
+
+// titles are the columns and the rows that repeat on every printed page. Two heading rows repeat where the sheet is a table of
+// figures.
+func (s sheet) titles() string {
+	var parts []string
+	if s.columns > 0 {
+		parts = append(parts, fmt.Sprintf("'%s'!$A:$%s", s.name, cells.Letters(s.columns)))
+	}
+	if s.heads > 0 {
+		first := s.heads
+		if s.columns > 0 {
+			first--
+		}
+		parts = append(parts, fmt.Sprintf("'%s'!$%d:$%d", s.name, first, s.heads))
+	}
+	return strings.Join(parts, ",")
+}
+
+// footerText is a title and what it supports, short enough for a footer (255 characters in all) and with its codes escaped.
+func footerText(title, supports string) string {
+	if supports != "" {
+		title += ", " + supports
+	}
+	r := []rune(cleanText(title))
+	if len(r) > 80 {
+		r = append(r[:79], '…')
+	}
+	return strings.ReplaceAll(strings.ReplaceAll(string(r), "\n", " "), "&", "&&")
+}

@@ -1,0 +1,85 @@
+package exports
+
+import (
+	"bytes"
+	"fmt"
+	"image"
+	"image/png"
+
+	"lotpair/qa"
+	"lotpair/qa/figure"
+	"lotpair/qa/figure/draw"
+)
+
+// The sheet Pictures: blocks of a heading and a plot, three to a page. Many plots go into one image, because every part of the
+// package has to be signed and outside verifiers refuse packages of many parts.
+const (
+	plotWidth, plotHeight = 560, 232 // points of the figure
+	plotSize              = 0.86     // points on the sheet a point of the figure
+	plotHead              = 30.0     // points
+	plotFoot              = 8.0
+	plotRows              = 14 // rows that a plot lies over
+	plotsPage             = 3
+	plotsImage            = 12 // plots in one image
+	mostPlots             = 48
+	plotScale             = 1.6 // pixels a point of the figure
+)
+
+// picturesSheet shows the readings of each characteristic, both lots back to back about one axis.
+func picturesSheet(rec qa.Record) sheet {
+	s := sheet{name: SheetPictures, widths: []float64{13, 13, 13, 13, 13, 13, 13}}
+	s.add(text("Pictures", titleLook))
+	cs := rec.Result.Characteristics
+	note := "The readings in use of both lots back to back, the reference to the left: dots are readings, the band is the margin about the reference's mean, lines are means and limits."
+	if len(cs) > mostPlots {
+		note += fmt.Sprintf(" The first %d of %d characteristics; the sheet Readings holds all.", mostPlots, len(cs))
+		cs = cs[:mostPlots]
+	}
+	s.addTall(30, wide(note, wrapLook, 7))
+	s.frozen = len(s.rows)
+	for i, c := range cs {
+		if i > 0 && i%plotsPage == 0 {
+			s.breaks = append(s.breaks, len(s.rows)+1)
+		}
+		if i%plotsImage == 0 {
+			some := cs[i:min(i+plotsImage, len(cs))]
+			s.pictures = append(s.pictures, picture{
+				row: len(s.rows) + 1, col: 1, width: plotWidth * plotSize, height: blockHeight * float64(len(some)),
+				about: "Facing plots: readings of both lots back to back", paint: func() ([]byte, error) { return plots(some, rec.Readings) },
+			})
+		}
+		s.addTall(plotHead, wide(nameWithUnit(c)+": "+string(c.Verdict), groupLook, 7))
+		for range plotRows {
+			s.addTall(plotRow)
+		}
+		s.addTall(plotFoot)
+	}
+	return s
+}
+
+const (
+	plotRow     = plotHeight * plotSize / plotRows
+	blockHeight = plotHead + plotHeight*plotSize + plotFoot
+)
+
+// plots paints plots below each other as they lie over the rows, with nothing over their headings.
+func plots(cs []qa.Comparison, r qa.Readings) ([]byte, error) {
+	const pixels = plotScale / plotSize // a point of the sheet
+	block := blockHeight * pixels
+	img := image.NewPaletted(image.Rect(0, 0, int(plotWidth*plotScale), int(block*float64(len(cs)))), paletteOf(draw.Light()))
+	q := newQuantizer(img.Palette)
+	for i, c := range cs {
+		p := draw.Light()
+		p.Paper = white
+		one, err := draw.Image(figure.FacingAt(c, r, plotWidth, plotHeight), plotScale, p)
+		if err != nil {
+			return nil, fmt.Errorf("workbook, picture of %s: %w", c.Name, err)
+		}
+		q.lay(img, one, int(block*float64(i)+plotHead*pixels))
+	}
+	var b bytes.Buffer
+	if err := (&png.Encoder{CompressionLevel: png.BestSpeed}).Encode(&b, img); err != nil {
+		return nil, fmt.Errorf("workbook, picture: %w", err)
+	}
+	return b.Bytes(), nil
+}

@@ -1,0 +1,80 @@
+package exports
+
+import (
+	"image"
+	"image/color"
+
+	"lotpair/qa/figure/draw"
+)
+
+var white = color.NRGBA{R: 0xFF, G: 0xFF, B: 0xFF, A: 0xFF}
+
+// paletteOf is the colours of a picture and their blends with the grounds they stand on, the first one clear: enough for edges,
+// and a quarter of the bytes of a picture of full colours.
+func paletteOf(p draw.Palette) color.Palette {
+	out := color.Palette{color.NRGBA{}, white, p.Margin}
+	inks := []color.NRGBA{p.Text, p.Muted, p.Reference, p.Candidate, p.ReferenceText, p.CandidateText, p.MutedText, p.Rule}
+	const steps = 12
+	for _, ground := range []color.NRGBA{white, p.Margin} {
+		for _, ink := range inks {
+			for k := 1; k <= steps; k++ {
+				out = append(out, blend(ground, ink, k, steps))
+			}
+		}
+	}
+	for k := 1; k < steps; k++ {
+		out = append(out, blend(white, p.Margin, k, steps))
+	}
+	return out
+}
+
+func blend(a, b color.NRGBA, k, of int) color.NRGBA {
+	mix := func(x, y uint8) uint8 { return uint8((int(x)*(of-k) + int(y)*k) / of) }
+	return color.NRGBA{R: mix(a.R, b.R), G: mix(a.G, b.G), B: mix(a.B, b.B), A: 0xFF}
+}
+
+// quantizer finds the nearest colour of a palette, once for each colour of 15 bits.
+type quantizer struct {
+	palette color.Palette
+	known   [1 << 15]uint8 // 0: not looked for yet; the clear colour is never looked for
+}
+
+func newQuantizer(p color.Palette) *quantizer {
+	q := &quantizer{palette: p}
+	for i := len(p) - 1; i > 0; i-- { // what is in the palette is found exactly, its grounds before its blends
+		c := p[i].(color.NRGBA) // paletteOf makes no other
+		q.known[keyOf([]byte{c.R, c.G, c.B})] = uint8(i)
+	}
+	return q
+}
+
+func keyOf(p []byte) int { return int(p[0]>>3)<<10 | int(p[1]>>3)<<5 | int(p[2]>>3) }
+
+// lay puts an opaque picture into another at the height y.
+func (q *quantizer) lay(to *image.Paletted, from *image.NRGBA, y int) {
+	size := from.Bounds().Intersect(image.Rect(0, 0, to.Bounds().Dx(), to.Bounds().Dy()-y))
+	for row := range size.Dy() {
+		line := from.Pix[row*from.Stride:]
+		out := to.Pix[(y+row)*to.Stride:]
+		for x := range size.Dx() {
+			p := line[4*x : 4*x+3 : 4*x+3]
+			key := keyOf(p)
+			if q.known[key] == 0 {
+				q.known[key] = q.nearest(p)
+			}
+			out[x] = q.known[key]
+		}
+	}
+}
+
+func (q *quantizer) nearest(p []byte) uint8 {
+	best, least := 1, 1<<30
+	for i, c := range q.palette[1:] {
+		n := c.(color.NRGBA) // paletteOf makes no other
+		r, g, b := int(n.R)-int(p[0]), int(n.G)-int(p[1]), int(n.B)-int(p[2])
+		if d := 3*r*r + 6*g*g + b*b; d < least {
+			best, least = i+1, d
+		}
+	}
+	return uint8(best)
+}

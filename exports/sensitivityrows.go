@@ -1,0 +1,57 @@
+package exports
+
+import (
+	"reflect"
+	"strings"
+
+	"lotpair/qa"
+)
+
+// sensitivitySheet states the verdict again under each other method. It is there only where the result has any.
+func sensitivitySheet(rec qa.Record) (sheet, bool) {
+	names := make([]string, 0, len(rec.Result.Characteristics))
+	var all []reflect.Value
+	for _, c := range rec.Result.Characteristics {
+		names = append(names, nameWithUnit(c))
+		all = append(all, reflect.ValueOf(c))
+	}
+	return sensitivityOf(names, all)
+}
+
+// sensitivityOf reads the blocks under the result format's name, so that a figure that comes to them comes to the sheet.
+func sensitivityOf(names []string, all []reflect.Value) (sheet, bool) {
+	var t table
+	t.head("characteristic", "characteristic")
+	for i, c := range all {
+		list := fieldOf(c, "sensitivity")
+		if list.Kind() != reflect.Slice {
+			continue
+		}
+		for j := range list.Len() {
+			rows := append([]figureRow{{name: "characteristic", text: names[i]}}, flatten("", list.Index(j))...)
+			t.add(rows)
+		}
+	}
+	s := sheet{name: SheetSensitivity, landscape: true}
+	s.add(text("Sensitivity", titleLook))
+	s.addTall(30, wide("The verdict again under each other method. None of them changes the verdict of the criterion; where they part, look why.", wrapLook, max(2, len(t.names))))
+	t.to(&s, sensitivityMeaning)
+	return s, len(t.rows) > 0
+}
+
+func sensitivityMeaning(name string) string {
+	return map[string]string{
+		"characteristic": "with its unit", "method": "computed otherwise", "estimate": "what is held against the margin", "level": "level of the interval",
+		"lower": "lower end", "upper": "upper end", "verdict": "what the criterion would say", "p": "p that the verdict rests on",
+	}[name]
+}
+
+// fieldOf is the field of a struct with the JSON name, or the zero Value.
+func fieldOf(v reflect.Value, name string) reflect.Value {
+	for i := range v.NumField() {
+		if tag, _, _ := strings.Cut(v.Type().Field(i).Tag.Get("json"), ","); tag == name {
+			return v.Field(i)
+		}
+	}
+	return reflect.Value{}
+}
