@@ -1,0 +1,128 @@
+package dist
+
+import "math"
+
+// OwenQ1 returns the integral from 0 to r of Phi(t x/sqrt(df) - delta) over the
+// density of chi with df degrees of freedom (Owen 1965, Biometrika 52, 437-446,
+// from memory). The relative error is about 1e-13 where that is above 1e-14.
+func OwenQ1(df, t, delta, r float64) float64 {
+	return owen(df, t, delta, 0, r)
+}
+
+// OwenQ2 returns the same integral from r to infinity.
+func OwenQ2(df, t, delta, r float64) float64 {
+	return owen(df, t, delta, r, math.Inf(1))
+}
+
+func owen(df, t, delta, from, to float64) float64 {
+	if !proper(df) || math.IsNaN(t) || math.IsInf(t, 0) || math.IsNaN(delta) || math.IsInf(delta, 0) || !(from >= 0 && to >= 0) {
+		return math.NaN()
+	}
+	c := chi{df: df, rate: math.Abs(t), mixture: mixture{df: df, tau: t, delta: delta, lead: chiLead(df)}}
+	root := math.Sqrt(df)
+	if s := from / root; s > 1 && !math.IsInf(s, 1) { // a tail of chi, small against the whole
+		c.gain = df / 2 * (s*s - 1 - 2*math.Log(s))
+	}
+	return c.integral(from/root, to/root, func(u float64) float64 {
+		weight, x, _ := c.at(u)
+		return weight * NormalLower(x)
+	})
+}
+
+// StudentBetween returns P(t S - below <= Z <= above - t S) for Z standard normal
+// and df S^2 chi-square with df degrees of freedom, t above 0. It is the chance
+// that two one-sided t tests both reject: the true value lies below standard
+// errors above the lower limit and above standard errors below the upper one, and
+// t is the critical value. Either may be plus infinity, a limit that does not
+// exist, or negative, a true value beyond the limit.
+//
+// The relative error is about 1e-13 above 1e-40, 1e-12 above 1e-100.
+func StudentBetween(t, df, below, above float64) float64 {
+	switch {
+	case !proper(df) || !(t > 0) || math.IsInf(t, 1) || math.IsNaN(below) || math.IsNaN(above):
+		return math.NaN()
+	case math.IsInf(below, -1) || math.IsInf(above, -1) || below+above <= 0:
+		return 0
+	case math.IsInf(below, 1) && math.IsInf(above, 1):
+		return 1
+	case math.IsInf(above, 1):
+		return NoncentralTUpper(t, df, below)
+	case math.IsInf(below, 1):
+		return NoncentralTUpper(t, df, above)
+	}
+	c := chi{df: df, rate: t, mixture: mixture{df: df, lead: chiLead(df)}}
+	total := below + above
+	middle := (above - below) / 2
+	if near := min(below, above); near < t { // Phi(near)/Phi(near-t), roughly
+		c.gain = (near-t)*(near-t)/2 - min(0, near)*min(0, near)/2
+	}
+	return min(1, c.integral(0, total/(2*t), func(u float64) float64 {
+		weight, _, s := c.at(u)
+		return weight * normalBetween(middle, total-2*t*s)
+	}))
+}
+
+// normalBetween is P(middle - width/2 <= Z <= middle + width/2).
+func normalBetween(middle, width float64) float64 {
+	middle = math.Abs(middle)
+	switch {
+	case width <= 0:
+		return 0
+	case width < 0.01:
+		// The Taylor series about the middle; the next term is below 1e-14 of it.
+		m, w := middle*middle, width*width
+		return normalDensity(middle) * width * (1 + w/24*(m-1) + w*w/1920*(m*m-6*m+3))
+	}
+	low, high := middle-width/2, middle+width/2
+	return (math.Erfc(low*math.Sqrt2/2) - math.Erfc(high*math.Sqrt2/2)) / 2
+}
+
+// chi is an integral over s, where df s^2 is chi-square with df degrees of
+// freedom, of something that varies with s at a rate like Phi(rate s).
+// gain is how much larger that may be at s = 0 than at 1, as a logarithm.
+type chi struct {
+	df, rate, gain float64
+	mixture
+}
+
+func chiLead(df float64) float64 {
+	a := df / 2
+	return 2 * math.Sqrt(a/(2*math.Pi)) * math.Exp(-stirling(a))
+}
+
+// integral is that of value over u = log s for s from from to to.
+func (c chi) integral(from, to float64, value func(u float64) float64) float64 {
+	// Beyond these u the density is below exp(-cut) of its largest value:
+	// df/2 (e^y - 1 - y) = cut for y = 2u.
+	cut := 36 + c.gain
+	w := 2 * cut / c.df
+	y := math.Sqrt(2 * w)
+	for range 4 { // from above, as the curve is convex
+		y -= (math.Expm1(y) - y - w) / math.Expm1(y)
+	}
+	high := min(y/2, math.Log(to))
+	steep := math.Inf(-1)
+	if high < 0 { // the density rises up to high, at least as fast as there
+		above := math.Expm1(2*high) - 2*high
+		steep = high + cut/(c.df*math.Expm1(2*high))
+		w += above
+	}
+	low := max(steep, -(w+math.Sqrt(w*w+8*w))/4) // e^-y - 1 + y >= y^2/(2+y)
+	low = max(low, math.Log(from))
+	if !(low < high) {
+		return 0
+	}
+	// Panels short against the rates of the two factors, which both slow down
+	// with s; 48 points see 24 radians to the last digit, found by trial.
+	const most = 24
+	sum := 0.0
+	for low < high {
+		s := math.Exp(high)
+		fast := math.Sqrt(2*c.df*s + c.rate*s*c.rate*s)
+		width := min(high-low, max(2, most/fast))
+		panels := 1 + int(min(fast*width/most, 4096))
+		sum += legendre(value, high-width, high, panels)
+		high -= width
+	}
+	return sum
+}
