@@ -36,60 +36,71 @@ func (s *scanner) text() error {
 		return s.unsound("text outside the root")
 	}
 	s.chars = raw
-	for _, c := range raw {
+	return s.asMeant(inText)
+}
+
+// declaration takes what begins with <!: a comment is passed over, and true says that it was characters.
+func (s *scanner) declaration() (bool, error) {
+	const comment, section = "<!--", "<![CDATA["
+	for s.end-s.at < len(section) {
+		if ok, err := s.fill(); err != nil {
+			return false, err
+		} else if !ok {
+			break
+		}
+	}
+	switch b := s.buf[s.at:s.end]; {
+	case bytes.HasPrefix(b, []byte(comment)):
+		return false, s.comment(len(comment))
+	case bytes.HasPrefix(b, []byte(section)):
+		return true, s.section(len(section))
+	}
+	return false, damaged(s.part, "a document type declaration")
+}
+
+// comment passes over a comment whose beginning is i bytes long.
+func (s *scanner) comment(i int) error {
+	n, err := s.find(i, "--", "a comment")
+	if err != nil {
+		return err
+	}
+	c, ok, err := s.byteAt(n + 2)
+	if err != nil {
+		return err
+	}
+	if !ok || c != '>' {
+		return s.unsound("-- inside a comment")
+	}
+	err = s.valid(s.buf[s.at+i : s.at+n])
+	s.at += n + 3
+	return err
+}
+
+// section takes a CDATA section whose beginning is i bytes long.
+func (s *scanner) section(i int) error {
+	n, err := s.find(i, "]]>", "a CDATA section")
+	if err != nil {
+		return err
+	}
+	s.chars = s.buf[s.at+i : s.at+n]
+	s.at += n + 3
+	if len(s.marks) == 0 {
+		return s.unsound("text outside the root")
+	}
+	return s.asMeant(inCDATA)
+}
+
+// asMeant decodes s.chars where they do not stand for themselves.
+func (s *scanner) asMeant(where place) error {
+	for _, c := range s.chars {
 		if class[c]&plainText == 0 {
 			var err error
-			s.decoded, err = s.decode(s.decoded[:0], raw, inText)
+			s.decoded, err = s.decode(s.decoded[:0], s.chars, where)
 			s.chars = s.decoded
 			return err
 		}
 	}
 	return nil
-}
-
-// declaration takes what begins with <!: a comment is passed over, and true says that it was characters.
-func (s *scanner) declaration() (bool, error) {
-	for _, begin := range []string{"<!--", "<![CDATA["} {
-		i := 2
-		for ; i < len(begin); i++ {
-			if c, ok, err := s.byteAt(i); err != nil {
-				return false, err
-			} else if !ok || c != begin[i] {
-				break
-			}
-		}
-		if i < len(begin) {
-			continue
-		}
-		if begin == "<!--" {
-			n, err := s.find(i, "--", "a comment")
-			if err != nil {
-				return false, err
-			}
-			if c, ok, err := s.byteAt(n + 2); err != nil || !ok || c != '>' {
-				if err == nil {
-					err = s.unsound("-- inside a comment")
-				}
-				return false, err
-			}
-			err = s.valid(s.buf[s.at+i : s.at+n])
-			s.at += n + 3
-			return false, err
-		}
-		n, err := s.find(i, "]]>", "a CDATA section")
-		if err != nil {
-			return false, err
-		}
-		raw := s.buf[s.at+i : s.at+n]
-		s.at += n + 3
-		if len(s.marks) == 0 {
-			return false, s.unsound("text outside the root")
-		}
-		s.decoded, err = s.decode(s.decoded[:0], raw, inCDATA)
-		s.chars = s.decoded
-		return true, err
-	}
-	return false, damaged(s.part, "a document type declaration")
 }
 
 // decode appends characters as they are meant: escapes resolved, line ends as LF (XML 1.0, 2.11), white space in values as

@@ -56,12 +56,7 @@ func (s *sheetReader) plainCells() error {
 				return nil
 			}
 		}
-		c := Cell{Row: s.number, Col: col}
-		var st style
-		if index < len(s.styles) {
-			st = s.styles[index]
-			c.Format = st.code
-		}
+		var value []byte
 		switch {
 		case string(b[i:i+4]) == "><v>":
 			i += 4
@@ -69,31 +64,40 @@ func (s *sheetReader) plainCells() error {
 			for i < lookahead-16 && class[b[i]]&plainCell != 0 {
 				i++
 			}
-			if i == from || string(b[i:i+8]) != "</v></c>" {
+			if value = b[from:i]; i == from || string(b[i:i+8]) != "</v></c>" {
 				return nil
 			}
-			value := b[from:i]
 			i += 8
-			switch {
-			case kind == 's':
-				n, ok := whole(value)
-				if !ok || n >= len(s.strings) {
-					return nil
-				}
-				c.Kind, c.Text = Text, s.strings[n]
-			case st.date:
-				c.Kind, c.Text = Date, s.texts.keep(value)
-			default:
-				c.Kind, c.Text = Number, s.texts.keep(value)
-			}
 		case b[i] == '/' && b[i+1] == '>':
 			i += 2
 		default:
 			return nil
 		}
-		x.at += i
-		if err := s.put(c); err != nil {
+		shared := 0
+		if kind == 's' && value != nil {
+			if n, ok := whole(value); ok && n < len(s.strings) {
+				shared = n
+			} else {
+				return nil
+			}
+		}
+		c, err := s.add(col)
+		if err != nil {
 			return err
+		}
+		x.at += i
+		date := false
+		if index < len(s.styles) {
+			c.Format, date = s.styles[index].code, s.styles[index].date
+		}
+		switch {
+		case value == nil:
+		case kind == 's':
+			c.Kind, c.Text = Text, s.strings[shared]
+		case date:
+			c.Kind, c.Text = Date, s.texts.keep(value)
+		default:
+			c.Kind, c.Text = Number, s.texts.keep(value)
 		}
 	}
 }

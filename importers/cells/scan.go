@@ -34,7 +34,8 @@ type scanner struct {
 	marks   []int  // where each of them begins
 	closing bool   // the element just begun ends in itself: <a/>
 
-	name  []byte // of the element just begun; it and the next two hold until the next token
+	name  []byte // of the element just begun; it and the next three hold until the next token
+	colon int    // where its local part begins
 	attrs []attribute
 	chars []byte
 
@@ -128,21 +129,25 @@ func (s *scanner) next() (token, error) {
 		return endTag, nil
 	}
 	for {
-		c, ok, err := s.byteAt(0)
-		switch {
-		case err != nil:
-			return 0, err
-		case !ok:
-			return endOfPart, s.finish()
-		case c != '<':
+		for s.end-s.at < 2 {
+			if ok, err := s.fill(); err != nil {
+				return 0, err
+			} else if ok {
+				continue
+			}
+			if s.at == s.end {
+				return endOfPart, s.finish()
+			}
+			break
+		}
+		if s.buf[s.at] != '<' {
 			return charData, s.text()
 		}
-		if c, ok, err = s.byteAt(1); err != nil {
-			return 0, err
-		} else if !ok {
+		if s.end-s.at < 2 {
 			return 0, s.unsound("the end inside a tag")
 		}
-		switch c {
+		var err error
+		switch s.buf[s.at+1] {
 		case '/':
 			return endTag, s.endTag()
 		case '?':
@@ -195,7 +200,7 @@ func (s *scanner) pop() {
 }
 
 // local is the name of the element just begun without its prefix.
-func (s *scanner) local() []byte { return s.name[bytes.IndexByte(s.name, ':')+1:] }
+func (s *scanner) local() []byte { return s.name[s.colon:] }
 
 // is says whether the element just begun has the local name.
 func (s *scanner) is(local string) bool { return string(s.local()) == local }

@@ -172,15 +172,16 @@ func (s *sheetReader) cells() error {
 	}
 }
 
-// put stores the cell of the row being read; its column decides whether the order still holds.
-func (s *sheetReader) put(c Cell) error {
+// add makes room for a cell of the row being read; its column decides whether the order still holds.
+func (s *sheetReader) add(col int) (*Cell, error) {
 	if err := s.count(); err != nil {
-		return err
+		return nil, err
 	}
-	s.colsMixed = s.colsMixed || c.Col <= s.col
-	s.col = c.Col
-	*s.block.add() = c
-	return nil
+	s.colsMixed = s.colsMixed || col <= s.col
+	s.col = col
+	c := s.block.add()
+	c.Row, c.Col = s.number, col
+	return c, nil
 }
 
 // count counts what takes memory: cells, rows and merged areas of all sheets.

@@ -8,35 +8,48 @@ import (
 // tagLength gives the length of the tag that comes next, with its brackets.
 func (s *scanner) tagLength() (int, error) {
 	quote := byte(0)
-	for i := 1; ; i++ {
-		if s.at+i >= s.end {
-			if ok, err := s.fill(); err != nil {
-				return 0, err
-			} else if !ok {
-				return 0, s.unsound("the end inside a tag")
+	for i := 1; ; {
+		b := s.buf[s.at:s.end]
+		for ; i < len(b); i++ {
+			c := b[i]
+			switch {
+			case class[c]&nameByte != 0:
+			case c == '<':
+				return 0, s.unsound("a < inside a tag")
+			case c == quote:
+				quote = 0
+			case quote != 0:
+			case c == '>':
+				return i + 1, nil
+			case c == '"' || c == '\'':
+				quote = c
 			}
 		}
-		switch c := s.buf[s.at+i]; {
-		case c == quote:
-			quote = 0
-		case c == '<':
-			return 0, s.unsound("a < inside a tag")
-		case quote != 0:
-		case c == '>':
-			return i + 1, nil
-		case c == '"' || c == '\'':
-			quote = c
+		if ok, err := s.fill(); err != nil {
+			return 0, err
+		} else if !ok {
+			return 0, s.unsound("the end inside a tag")
 		}
 	}
 }
 
 func (s *scanner) endTag() error {
+	last := len(s.marks) - 1
+	if last >= 0 { // without white space
+		open := s.names[s.marks[last]:]
+		if end := s.at + 2 + len(open); end < s.end && s.buf[end] == '>' && bytes.Equal(s.buf[s.at+2:end], open) {
+			s.at = end + 1
+			s.pop()
+			return nil
+		}
+	}
 	n, err := s.tagLength()
 	if err != nil {
 		return err
 	}
-	name := bytes.TrimRight(s.buf[s.at+2:s.at+n-1], " \t\r\n")
-	if last := len(s.marks) - 1; last < 0 || !bytes.Equal(name, s.names[s.marks[last]:]) {
+	name := s.buf[s.at+2 : s.at+n-1]
+	i := nameLength(name)
+	if last < 0 || !bytes.Equal(name[:i], s.names[s.marks[last]:]) || blank(name[i:]) < len(name)-i {
 		return s.unsound("</%s> without its beginning", clip(name))
 	}
 	s.at += n
@@ -45,34 +58,47 @@ func (s *scanner) endTag() error {
 }
 
 func (s *scanner) startTag() error {
-	n, err := s.tagLength()
-	if err != nil {
-		return err
+	s.attrs, s.decoded = s.attrs[:0], s.decoded[:0]
+	i := nameLength(s.buf[s.at+1 : s.end])
+	var tag []byte
+	if end := s.at + 1 + i; end < s.end && s.buf[end] == '>' { // without attributes
+		tag = s.buf[s.at+1 : end]
+		s.at = end + 1
+	} else {
+		n, err := s.tagLength()
+		if err != nil {
+			return err
+		}
+		tag = s.buf[s.at+1 : s.at+n-1]
+		s.at += n
+		if last := len(tag) - 1; last >= 0 && tag[last] == '/' {
+			tag = tag[:last]
+			s.closing = true
+		}
+		i = nameLength(tag)
 	}
-	tag := s.buf[s.at+1 : s.at+n-1]
-	s.at += n
-	if last := len(tag) - 1; last >= 0 && tag[last] == '/' {
-		tag = tag[:last]
-		s.closing = true
-	}
-	i := nameLength(tag)
 	s.name = tag[:i]
 	if !validName(s.name) {
 		return s.unsound("the name %q", clip(s.name))
 	}
-	s.attrs, s.decoded = s.attrs[:0], s.decoded[:0]
-	for tag = tag[i:]; ; {
+	s.colon = 0
+	if i > 1 {
+		s.colon = bytes.IndexByte(s.name, ':') + 1
+	}
+	for tag = tag[i:]; len(tag) > 0; {
 		space := blank(tag)
 		if space == len(tag) {
-			return s.push()
+			break
 		}
 		if space == 0 {
 			return s.unsound("no space before an attribute of <%s>", clip(s.name))
 		}
+		var err error
 		if tag, err = s.attribute(tag[space:]); err != nil {
 			return err
 		}
 	}
+	return s.push()
 }
 
 // attribute takes one attribute off the front of the tag.
@@ -161,14 +187,25 @@ func nameLength(b []byte) int {
 
 // validName takes letters beyond ASCII without asking for their classes: such names have no meaning here.
 func validName(b []byte) bool {
-	if len(b) == 0 || b[0] >= '0' && b[0] <= '9' || b[0] == '-' || b[0] == '.' {
+	if len(b) == 0 || b[0] >= '0' && b[0] <= '9' || b[0] == '-' || b[0] == '.' || b[0] == ':' || b[len(b)-1] == ':' {
 		return false
 	}
-	colon := bytes.IndexByte(b, ':')
-	if colon == 0 || colon == len(b)-1 || bytes.IndexByte(b[colon+1:], ':') >= 0 && colon > 0 {
-		return false
+	colons, wide := 0, byte(0)
+	for _, c := range b {
+		if wide |= c; c == ':' {
+			colons++
+		}
 	}
-	return utf8.Valid(b)
+	return colons <= 1 && (wide < utf8.RuneSelf || utf8.Valid(b))
+}
+
+// trim takes white space off both ends.
+func trim(b []byte) []byte {
+	b = b[blank(b):]
+	for len(b) > 0 && blank(b[len(b)-1:]) == 1 {
+		b = b[:len(b)-1]
+	}
+	return b
 }
 
 // blank is how many white space bytes stand in front.

@@ -39,7 +39,11 @@ func (s *sheetReader) cell() error {
 	if err := s.settle(&c, kind, index < len(s.styles) && s.styles[index].date, has); err != nil {
 		return err
 	}
-	return s.put(c)
+	room, err := s.add(c.Col)
+	if err == nil {
+		*room = c
+	}
+	return err
 }
 
 // kindOf spares an allocation for the types there are.
@@ -96,7 +100,7 @@ func (s *sheetReader) content(c *Cell, kind string) (has bool, err error) {
 
 // settle says what the stored value is (ISO/IEC 29500-1, 18.18.11).
 func (s *sheetReader) settle(c *Cell, kind string, date, has bool) error {
-	trimmed := bytes.Trim(s.value, " \t\r\n")
+	trimmed := trim(s.value)
 	switch kind {
 	case "", "n":
 		has = has && len(trimmed) > 0
