@@ -60,6 +60,8 @@ type readingXML struct {
 	Part     string  `xml:"p,attr,omitempty"`
 	Decimals int     `xml:"d,attr,omitempty"`
 	LeftOut  string  `xml:"out,attr,omitempty"`
+	Group    string  `xml:"g,attr,omitempty"`
+	Order    string  `xml:"o,attr,omitempty"`
 	File     *string `xml:"f,attr"`
 	Sheet    *string `xml:"s,attr"`
 }
@@ -163,6 +165,12 @@ func encodeLot(b *bytes.Buffer, side qa.Side, l qa.Lot) error {
 			}
 			if r.LeftOut != "" {
 				putAttribute(b, "out", r.LeftOut)
+			}
+			if r.Group != "" {
+				putAttribute(b, "g", r.Group)
+			}
+			if r.Order != "" {
+				putAttribute(b, "o", r.Order)
 			}
 			if r.Source.File != file {
 				file = r.Source.File
@@ -289,7 +297,7 @@ func decodeLot(x lotXML) (qa.Lot, error) {
 				found = *r.Text
 			}
 			one.Readings = append(one.Readings, qa.Reading{
-				Value: v, Part: r.Part, Decimals: r.Decimals, LeftOut: r.LeftOut,
+				Value: v, Part: r.Part, Decimals: r.Decimals, LeftOut: r.LeftOut, Group: r.Group, Order: r.Order,
 				Source: qa.Source{File: file, Sheet: sheet, Cell: r.Cell, Text: found},
 			})
 		}

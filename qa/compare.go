@@ -103,18 +103,18 @@ func compareOne(plan Plan, ch Characteristic, ref, cand Series) (Comparison, err
 
 // sample describes one lot's readings.
 func (c *comparison) sample(side Side, s Series, sum stats.Summary) SampleResult {
-	parts := map[string]bool{}
+	parts := map[[2]string]bool{} // a part's id counts within its group
 	unnamed := 0
 	for _, r := range s.used() {
 		if r.Part == "" {
 			unnamed++
+			continue
 		}
-		parts[r.Part] = true
+		parts[[2]string{r.Group, r.Part}] = true
 	}
-	delete(parts, "")
 	out := SampleResult{
 		Rows: s.Rows, Parts: len(parts) + unnamed, N: sum.N, Excluded: s.Excluded(),
-		Missing: s.Missing, NonDetects: s.NonDetects, Unread: s.Unread,
+		Missing: s.Missing, NonDetects: s.NonDetects, Unread: s.Unread, Repeats: s.Repeats,
 	}
 	if sum.N == 0 {
 		return out

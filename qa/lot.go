@@ -19,7 +19,7 @@ type Lot struct {
 }
 
 // Series is what a lot holds of one characteristic, in the order of the file.
-// Its cells reconcile: Rows = used + left out + Missing + NonDetects + Unread.
+// Its cells reconcile: Rows = used + left out + Missing + NonDetects + Unread + Repeats.
 type Series struct {
 	Characteristic string    `json:"characteristic"`
 	Rows           int       `json:"rows"`
@@ -28,6 +28,7 @@ type Series struct {
 	NonDetects     int       `json:"non_detects"`
 	Unread         int       `json:"unread"`                    // cells that hold something that is not a number
 	ExcludedUnread int       `json:"excluded_unread,omitempty"` // left out by the plan without having been a number
+	Repeats        int       `json:"repeats,omitempty"`         // repeat readings beyond the first of each part, averaged into it
 }
 
 // Of returns the lot's series of the named characteristic.

@@ -24,12 +24,15 @@ func (s Source) Place() string {
 // String is the full address: "hub-shell.xlsx!Data!D17".
 func (s Source) String() string { return s.File + "!" + s.Place() }
 
-// Reading is one measured value, in the unit of its characteristic, with its origin.
+// Reading is one measured value, in the unit of its characteristic, with its origin. The mean of repeat readings of one part
+// is one reading: its source lists the cells and texts of all of them.
 type Reading struct {
 	Value    float64 `json:"value"` // finite
 	Source   Source  `json:"source"`
 	Part     string  `json:"part,omitempty"` // the part's id as written, empty where the file has none
 	Decimals int     `json:"decimals"`       // decimals written in the cell, for the resolution
+	Group    string  `json:"group,omitempty"` // the sub-lot, as written
+	Order    string  `json:"order,omitempty"` // when or as which it was measured, as stored
 	LeftOut  string  `json:"left_out,omitempty"`
 }
 

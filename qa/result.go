@@ -86,7 +86,8 @@ type Limits struct {
 	Upper  *float64 `json:"upper,omitempty"`
 }
 
-// SampleResult describes one lot's readings of one characteristic. Rows = N + Excluded + Missing + NonDetects + Unread.
+// SampleResult describes one lot's readings of one characteristic. Rows = N + Excluded + Missing + NonDetects + Unread +
+// Repeats.
 type SampleResult struct {
 	Rows       int      `json:"rows"`
 	Parts      int      `json:"parts"` // parts with a reading in use
@@ -95,6 +96,7 @@ type SampleResult struct {
 	Missing    int      `json:"missing"`
 	NonDetects int      `json:"non_detects"`
 	Unread     int      `json:"unread"`
+	Repeats    int      `json:"repeats,omitempty"` // repeat readings beyond the first of each part
 	Mean       *float64 `json:"mean"`
 	SD         *float64 `json:"sd"` // nil for fewer than two readings
 	Min        *float64 `json:"min"`

@@ -161,6 +161,9 @@ func Findings(c Comparison, side Side) []string {
 	if s.Unread > 0 {
 		out = append(out, Count(s.Unread, "cell", "cells")+" could not be read.")
 	}
+	if s.Repeats > 0 {
+		out = append(out, Count(s.Repeats, "repeat reading", "repeat readings")+" averaged into the reading of its part.")
+	}
 	return out
 }
 
