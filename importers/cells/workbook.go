@@ -30,6 +30,10 @@ func Read(data []byte) (Workbook, error) {
 	if err != nil {
 		return Workbook{}, err
 	}
+	return o.read()
+}
+
+func (o *outline) read() (Workbook, error) {
 	w := Workbook{Date1904: o.date1904, Macros: o.pack.parts["xl/vbaproject.bin"] != nil}
 	for _, t := range o.tabs {
 		s, err := o.sheet(t)
