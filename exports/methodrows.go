@@ -19,7 +19,7 @@ func methodSheet(rec qa.Record) sheet {
 		if m.when != "" && !uses[m.when] {
 			continue
 		}
-		s.addTall(max(lines(m.how, 82), lines(m.source, 36), lines(m.figure, 25))*13+3, text(m.figure, ruledStrongLook), text(m.how, ruledWrapLook), text(m.source, ruledWrapLook))
+		s.addTall(max(lines(m.how, 90), lines(m.source, 36), lines(m.figure, 25))*13+3, text(m.figure, ruledStrongLook), text(m.how, ruledWrapLook), text(m.source, ruledWrapLook))
 	}
 	v := rec.Result.Software
 	section := func(head string, paragraphs ...string) {

@@ -9,10 +9,10 @@ import (
 
 var white = color.NRGBA{R: 0xFF, G: 0xFF, B: 0xFF, A: 0xFF}
 
-// paletteOf is the colours of a picture and their blends with the grounds they stand on, the first one clear: enough for edges,
-// and a quarter of the bytes of a picture of full colours.
+// paletteOf is the colours of a picture and their blends with the grounds they stand on, the first one clear (and white, so that
+// scaling leaves no dark seam): enough for edges, and a quarter of the bytes of a picture of full colours.
 func paletteOf(p draw.Palette) color.Palette {
-	out := color.Palette{color.NRGBA{}, white, p.Margin}
+	out := color.Palette{color.NRGBA{R: 0xFF, G: 0xFF, B: 0xFF}, white, p.Margin}
 	inks := []color.NRGBA{p.Text, p.Muted, p.Reference, p.Candidate, p.ReferenceText, p.CandidateText, p.MutedText, p.Rule}
 	const steps = 12
 	for _, ground := range []color.NRGBA{white, p.Margin} {

@@ -12,11 +12,16 @@ import (
 // differ: a cell that shows something else, a cell too many, a cell gone, a sheet too many. Numbers must be the same doubles,
 // because the sheets state the record's own; whether the recomputation agrees with them is asked elsewhere.
 func sheetDifferences(pkg []byte, rec qa.Record) []string {
-	book, err := cells.Read(pkg)
+	_, digest, err := encodeRecord(rec)
 	if err != nil {
 		return []string{err.Error()}
 	}
-	_, digest, err := encodeRecord(rec)
+	return bookDifferences(pkg, sheets(rec, digest))
+}
+
+// bookDifferences lays sheets beside those of a file.
+func bookDifferences(pkg []byte, wanted []sheet) []string {
+	book, err := cells.Read(pkg)
 	if err != nil {
 		return []string{err.Error()}
 	}
@@ -27,7 +32,7 @@ func sheetDifferences(pkg []byte, rec qa.Record) []string {
 		}
 	}
 	expected := map[string]bool{}
-	for _, want := range sheets(rec, digest) {
+	for _, want := range wanted {
 		expected[want.name] = true
 		got, ok := book.Sheet(want.name)
 		if !ok {

@@ -72,11 +72,17 @@ func Sign(pkg []byte, id identity.Identity, st opcsign.Statement) ([]byte, error
 	default:
 		return nil, &NotSoundError{State: v.State, Reasons: v.Reasons}
 	}
-	rec, err := ReadRecord(pkg)
-	if err != nil {
-		return nil, err
+	if v.Sealed != nil {
+		return SignSeal(*v.Sealed, id, st)
 	}
-	return SignFirst(rec, id, st)
+	return SignFirst(*v.Record, id, st)
+}
+
+func signerOf(id identity.Identity, st opcsign.Statement) *qa.Signer {
+	return &qa.Signer{
+		Name: st.Name, Title: st.Title, Organization: st.Organization, Meaning: st.Meaning,
+		Reason: st.Reason, Disposition: st.Disposition, Time: st.Time, Fingerprint: id.Fingerprint(),
+	}
 }
 
 // SignFirst writes a record's workbook with its first signer and signs it.
@@ -88,10 +94,7 @@ func SignFirst(rec qa.Record, id identity.Identity, st opcsign.Statement) ([]byt
 		return nil, &UnstatedError{Keys: keys}
 	}
 	fill(&st, id)
-	rec.Signer = &qa.Signer{
-		Name: st.Name, Title: st.Title, Organization: st.Organization, Meaning: st.Meaning,
-		Reason: st.Reason, Disposition: st.Disposition, Time: st.Time, Fingerprint: id.Fingerprint(),
-	}
+	rec.Signer = signerOf(id, st)
 	rec.Trail = rec.Trail.With(st.Time, st.Name, signedAs+st.Meaning, "", st.Reason)
 	pkg, err := Workbook(rec)
 	if err != nil {

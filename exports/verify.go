@@ -38,6 +38,9 @@ type SignatureView struct {
 	Trusted      *bool  `json:"trusted"` // nil where no trusted certificates were given
 	CoversAll    bool   `json:"covers_all"`
 	Fingerprint  string `json:"fingerprint"` // SHA-256 of the certificate
+
+	Certificate *x509.Certificate `json:"-"` // nil where none could be read
+	Doubt       string            `json:"-"` // why it is not trusted, empty else
 }
 
 // Verification is what was checked of a record and what was found (contract: lotpair.verify/1).
@@ -50,6 +53,7 @@ type Verification struct {
 	Agrees          bool     // the recomputation and the sheets agree with the record
 	Differences     []string // where they do not
 	Record          *qa.Record
+	Sealed          *Sealed // of a seal, which is no record
 }
 
 // Verify checks every signature and part of a workbook, recomputes the result from the readings embedded in it and lays the
@@ -63,6 +67,13 @@ func Verify(pkg []byte, roots []*x509.Certificate) Verification {
 		return v
 	}
 	v.signatures(report)
+	if s, err := ReadSeal(pkg); err == nil {
+		v.Sealed = &s
+		v.sealed(pkg, s)
+		v.printed(report, s.Signer)
+		v.conclude(report)
+		return v
+	}
 	rec, err := ReadRecord(pkg)
 	if err != nil {
 		// Where signatures are broken besides, that is the nearer fault.
@@ -76,6 +87,42 @@ func Verify(pkg []byte, roots []*x509.Certificate) Verification {
 	v.Record = &rec
 	v.recompute(pkg, rec)
 	v.meanings(report, rec)
+	v.printed(report, rec.Signer)
+	v.conclude(report)
+	return v
+}
+
+// sealed checks a seal in itself: its digest is that of its plan, and its sheet states it.
+func (v *Verification) sealed(pkg []byte, s Sealed) {
+	v.Agrees = true
+	if s.Digest != s.Plan.SealDigest() {
+		v.disagree("seal-differs", recordPart, "the digest of the criterion is not that of the plan in the seal")
+	}
+	for _, t := range bookDifferences(pkg, s.sheets()) {
+		v.disagree("sheets-differ", "", t)
+	}
+}
+
+// printed checks that the first signature is by the signer whom the sheets name: else one person's signature would stand under
+// another's name.
+func (v *Verification) printed(report opcsign.Report, p *qa.Signer) {
+	if len(report.Signatures) == 0 {
+		return
+	}
+	first, fingerprint := report.Signatures[0], v.Signatures[0].Fingerprint
+	st := first.Statement
+	switch {
+	case p == nil:
+		v.disagree("signer-differs", first.Part, fmt.Sprintf("the sheets call this an unsigned draft, and it is signed by %s", st.Name))
+	case p.Name != st.Name || p.Meaning != st.Meaning || p.Title != st.Title || p.Organization != st.Organization || p.Reason != st.Reason ||
+		p.Disposition != st.Disposition || !p.Time.Truncate(time.Second).Equal(st.Time) || p.Fingerprint != fingerprint:
+		v.disagree("signer-differs", first.Part, fmt.Sprintf("the sheets name %s (%s, %s) as the first signer, the signature is by %s (%s, %s)",
+			p.Name, p.Meaning, localTime(p.Time), st.Name, st.Meaning, localTime(st.Time)))
+	}
+}
+
+// conclude gives the state, the first that holds.
+func (v *Verification) conclude(report opcsign.Report) {
 	switch {
 	case len(report.Reasons) > 0 || len(report.Signatures) > 0 && !report.Sound():
 		v.State = Changed
@@ -86,7 +133,6 @@ func Verify(pkg []byte, roots []*x509.Certificate) Verification {
 	case len(v.MissingMeanings) > 0 || v.has("same-signer"):
 		v.State = Incomplete
 	}
-	return v
 }
 
 func (v *Verification) reason(code, part, text string) {
@@ -110,6 +156,7 @@ func (v *Verification) signatures(report opcsign.Report) {
 		view := SignatureView{
 			Signer: s.Statement.Name, Title: s.Statement.Title, Organization: s.Statement.Organization, Meaning: s.Statement.Meaning,
 			Reason: s.Statement.Reason, Disposition: s.Statement.Disposition, Valid: s.Valid, Trusted: s.Trusted, CoversAll: s.CoversAll,
+			Certificate: s.Certificate, Doubt: s.Doubt,
 		}
 		if !s.Statement.Time.IsZero() {
 			view.Time = s.Statement.Time.Format(time.RFC3339)

@@ -9,6 +9,7 @@ import (
 	"testing"
 
 	"lotpair/exports"
+	"lotpair/exports/identity"
 	"lotpair/exports/opcsign"
 	"lotpair/qa"
 )
@@ -135,8 +136,31 @@ func TestVerifySheetsDiffer(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	if v := exports.Verify(pkg, nil); v.State != exports.Disagrees || len(v.Differences) != 1 || !strings.Contains(v.Differences[0], "Readings!D") {
-		t.Errorf("got %s, %v; want one difference in the sheet Readings", v.State, v.Differences)
+	if v := exports.Verify(pkg, nil); v.State != exports.Disagrees || len(v.Differences) != 2 || !strings.Contains(v.Differences[0], "Readings!D") || !strings.Contains(v.Differences[1], "unsigned draft") {
+		t.Errorf("got %s, %v; want a difference in the sheet Readings and the draft that is signed", v.State, v.Differences)
+	}
+}
+
+// TestVerifySigner has Eve sign a workbook whose sheets name Ada as the signer.
+func TestVerifySigner(t *testing.T) {
+	ada, eve := person(t, "Ada"), person(t, "Eve")
+	rec := record(t)
+	rec.Signer = &qa.Signer{Name: "Ada", Title: ada.Title(), Organization: ada.Organization(), Meaning: "prepared", Time: when, Fingerprint: ada.Fingerprint()}
+	pkg, err := exports.Workbook(rec)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, c := range []struct {
+		id   identity.Identity
+		want exports.State
+	}{{ada, exports.Intact}, {eve, exports.Disagrees}} {
+		signed, err := opcsign.Sign(pkg, c.id.Key, c.id.Chain, opcsign.Statement{Name: c.id.Name(), Title: c.id.Title(), Organization: c.id.Organization(), Meaning: "prepared", Time: when})
+		if err != nil {
+			t.Fatal(err)
+		}
+		if v := exports.Verify(signed, nil); v.State != c.want {
+			t.Errorf("signed by %s: got %s, %v; want %s", c.id.Name(), v.State, v.Differences, c.want)
+		}
 	}
 }
 

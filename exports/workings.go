@@ -24,7 +24,7 @@ const (
 // show the sheet. Functions are those that the programs share under one name; their t distribution cuts degrees of freedom to
 // whole numbers, so the beta distribution stands in its place.
 func workingsSheet(rec qa.Record) sheet {
-	s := sheet{name: SheetWorkings, widths: []float64{30, 24, 24, 15, 62}}
+	s := sheet{name: SheetWorkings, widths: []float64{37, 24, 24, 15, 62}}
 	s.add(text("Workings", titleLook))
 	s.addTall(44, wide("The figures derived from the sheet Readings by live formulas, beside what the record states. Compute them again with "+
 		"Ctrl+Alt+F9 (Excel) or Ctrl+Shift+F9 (LibreOffice), and look at the column Difference: rounding only. Do not save: a saved copy loses its signatures.", wrapLook, 5))
@@ -76,7 +76,7 @@ func (w *workings) line(name string, value *float64, formula, how string, stated
 		beside.number = value
 		difference = cell{number: &zero, formula: here + "-" + cells.Name(workingsStated, row), look: ruledNumberLook}
 	}
-	w.sheet.addTall(lines(how, 64)*13+2, text(name, ruledLook), computed, beside, difference, text(how, ruledWrapLook))
+	w.sheet.addTall(lines(how, 76)*13+2, text(name, ruledLook), computed, beside, difference, text(how, ruledWrapLook))
 }
 
 // given adds a line of the criterion: a number that nothing derives.

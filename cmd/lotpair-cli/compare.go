@@ -6,7 +6,6 @@ import (
 	"fmt"
 	"os"
 	"path/filepath"
-	"runtime"
 
 	"lotpair/exports"
 	"lotpair/exports/identity"
@@ -21,11 +20,12 @@ type compareFlags struct {
 	workbook, identityFile, meaning, reason string
 	passphraseFile                          string
 	referenceFile, candidateFile, candidate string
+	seal                                    string
 }
 
 func (p *program) compare(args []string) int {
 	var c compareFlags
-	f := p.flags("compare PLAN.toml [--json] [--workbook OUT.xlsx] [--reference-file F] [--candidate-file F] [--candidate-lot L] [--identity KEY.p12 --meaning prepared] [--gate] [--force]",
+	f := p.flags("compare PLAN.toml [--json] [--workbook OUT.xlsx] [--seal PLAN.seal.xlsx] [--reference-file F] [--candidate-file F] [--candidate-lot L] [--identity KEY.p12 --meaning prepared] [--gate] [--force]",
 		"Runs the plan: reads both lots, holds them against the criterion, says the verdict, and writes the workbook where one is asked for,\nsigned when an identity is given. The verdict never changes the exit code unless --gate is given.",
 		"lotpair-cli compare testdata/demo/plan.toml --workbook hub-shell.xlsx")
 	f.BoolVar(&c.json, "json", false, "print the result as JSON (lotpair.result/1)")
@@ -39,6 +39,7 @@ func (p *program) compare(args []string) int {
 	f.StringVar(&c.referenceFile, "reference-file", "", "read the reference from `FILE` instead of the plan's")
 	f.StringVar(&c.candidateFile, "candidate-file", "", "read the candidate from `FILE` instead of the plan's")
 	f.StringVar(&c.candidate, "candidate-lot", "", "take lot `L` as the candidate instead of the plan's")
+	f.StringVar(&c.seal, "seal", "", "hold the plan against the criterion sealed in `PLAN.seal.xlsx`; a plan that departs from it is refused")
 	pos, code, err := f.parse(args, "PLAN.toml")
 	if err != nil {
 		return code
@@ -118,6 +119,10 @@ func (p *program) runPlan(path string, c compareFlags) (qa.Record, int) {
 		}
 		return qa.Record{}, exitUsage
 	}
+	seal, code := p.sealOf(plan, c.seal)
+	if code != exitDone {
+		return qa.Record{}, code
+	}
 	readings, err := importers.Read(plan, func(file string) ([]byte, error) {
 		at, ok := elsewhere[file]
 		if !ok {
@@ -132,15 +137,17 @@ func (p *program) runPlan(path string, c compareFlags) (qa.Record, int) {
 		return qa.Record{}, p.failed(err)
 	}
 	result, err := qa.Compare(plan, readings, qa.Run{
-		Software: qa.Software{Version: version, Revision: revisionOf(), OS: runtime.GOOS, Arch: runtime.GOARCH},
-		Seal:     qa.Seal{Digest: plan.SealDigest(), Readings: "unknown"},
+		Software: p.software(),
+		Seal:     seal.result(plan),
 		Attempts: qa.Attempts{Known: 1, KeptBy: "not counted"},
 	})
 	if err != nil {
 		p.say(fmt.Errorf("%s: %w", name, err))
 		return qa.Record{}, exitUsage
 	}
-	return qa.NewRecord(plan, qa.FileOf(name, text), readings, result, "console", p.now()), exitDone
+	rec := qa.NewRecord(plan, qa.FileOf(name, text), readings, result, "console", p.now())
+	rec.Trail = seal.trail(rec.Trail)
+	return rec, exitDone
 }
 
 // failed prints an error of reading and gives its exit code.

@@ -53,6 +53,7 @@ type call struct {
 func calls() []call {
 	return []call{
 		{"compare", "PLAN.toml", "runs the plan: reads both lots, says the verdict, writes the workbook", (*program).compare},
+		{"seal", "PLAN.toml", "fixes the criterion of a plan: a workbook with its digest and time", (*program).seal},
 		{"inspect", "FILE", "shows how a file would be read", (*program).inspect},
 		{"identity", "new|show", "makes or shows a signing identity", (*program).identity},
 		{"sign", "RECORD.xlsx", "adds a signature to a record", (*program).sign},
@@ -84,7 +85,7 @@ func (p *program) run(args []string) (code int) {
 			return c.run(p, args[1:])
 		}
 	}
-	fmt.Fprintf(p.err, "lotpair-cli: found the call %q, want one of compare, inspect, identity, sign, verify; see lotpair-cli --help\n", args[0])
+	fmt.Fprintf(p.err, "lotpair-cli: found the call %q, want one of compare, seal, inspect, identity, sign, verify; see lotpair-cli --help\n", args[0])
 	return exitUsage
 }
 

@@ -4,21 +4,24 @@ import (
 	"crypto/x509"
 	"encoding/json"
 	"fmt"
+	"path/filepath"
 	"strings"
+	"time"
 
 	"lotpair/exports"
 	"lotpair/exports/identity"
 )
 
 func (p *program) verify(args []string) int {
-	var trust string
+	var trust, note string
 	var requireTrust, partial, asJSON bool
-	f := p.flags("verify RECORD.xlsx [--trust FILE.pem] [--require-trust] [--partial] [--json]",
+	f := p.flags("verify RECORD.xlsx [--trust FILE.pem] [--require-trust] [--partial] [--note OUT.xlsx] [--json]",
 		"Checks every signature and part of a record, computes the result again from the readings in it and compares it with the record and the sheets.\nExit code 0 for an intact record, and for an incomplete one with --partial; else 1.",
 		"lotpair-cli verify hub-shell.xlsx --trust ada.pem")
 	f.StringVar(&trust, "trust", "", "certificates to trust, in `FILE.pem`; the signers' own or those that issued them")
 	f.BoolVar(&requireTrust, "require-trust", false, "exit 1 unless every signer is trusted")
 	f.BoolVar(&partial, "partial", false, "let a record pass that still lacks a required signature")
+	f.StringVar(&note, "note", "", "write a printable statement of all signatures to `OUT.xlsx`; an existing file is never overwritten")
 	f.BoolVar(&asJSON, "json", false, "print what was found as JSON (lotpair.verify/1)")
 	pos, code, err := f.parse(args, "RECORD.xlsx")
 	if err != nil {
@@ -47,6 +50,16 @@ func (p *program) verify(args []string) int {
 		}
 	} else {
 		p.printVerification(pos[0], v)
+	}
+	if note != "" {
+		b, err := exports.Note(filepath.Base(pos[0]), pkg, v, p.software(), p.now())
+		if err == nil {
+			err = exports.Save(p.file(note), b, false)
+		}
+		if err != nil {
+			return p.notWritten(err)
+		}
+		fmt.Fprintf(p.err, "wrote %s\n", note)
 	}
 	switch {
 	case requireTrust && !v.AllTrusted():
@@ -107,6 +120,9 @@ func (p *program) printVerification(name string, v exports.Verification) {
 		fmt.Fprintf(p.out, "  missing: a signature as %s\n", m)
 	}
 	p.reasons(v)
+	if s := v.Sealed; s != nil {
+		fmt.Fprintf(p.out, "  a seal of the criterion, made %s by %s\n  digest %s\n", s.Time.Format(time.RFC3339), s.Who, s.Digest)
+	}
 	if v.Record != nil {
 		word := "the result computed again agrees with the record and its sheets"
 		if !v.Agrees {

@@ -1,0 +1,193 @@
+package exports
+
+import (
+	"bytes"
+	"encoding/json"
+	"encoding/xml"
+	"errors"
+	"fmt"
+	"slices"
+	"strings"
+	"time"
+
+	"lotpair/exports/identity"
+	"lotpair/exports/opcsign"
+	"lotpair/qa"
+)
+
+// SealFormat names the format of a seal as it is embedded in its workbook.
+const SealFormat = "lotpair.seal/1"
+
+// ErrNoSeal says that a workbook carries no seal.
+var ErrNoSeal = errors.New("seal: found none in this workbook, want one written by lotpair-cli seal; name that file")
+
+// Sealed is a criterion as it was fixed: the plan, the digest of what the seal covers, when and by whom.
+type Sealed struct {
+	Plan     qa.Plan     `json:"plan"`
+	PlanFile qa.File     `json:"plan_file"`
+	Digest   string      `json:"digest"`
+	Time     time.Time   `json:"time"`
+	Readings string      `json:"readings"` // unopened, opened or unknown at that time
+	Who      string      `json:"who"`
+	Software qa.Software `json:"software"`
+	Signer   *qa.Signer  `json:"signer,omitempty"` // who signed first; nil where nobody did
+}
+
+// Seal fixes the criterion of a plan at the time when. readings says whether the readings had been opened: unopened, opened or
+// unknown.
+func Seal(plan qa.Plan, file qa.File, software qa.Software, readings, who string, when time.Time) Sealed {
+	return Sealed{Plan: plan, PlanFile: file, Digest: plan.SealDigest(), Time: when.Truncate(time.Second), Readings: readings, Who: who, Software: software}
+}
+
+// Result is what a result says of the seal.
+func (s Sealed) Result() qa.Seal {
+	return qa.Seal{Digest: s.Digest, Time: s.Time.Format(time.RFC3339), Readings: s.Readings}
+}
+
+// Trail is a record's trail with the act of sealing before all others.
+func (s Sealed) Trail(after qa.Trail, file qa.File) qa.Trail {
+	t := qa.Trail{}.With(s.Time, s.Who, "sealed the criterion", file.Name, "sha-256 "+file.SHA256)
+	for _, a := range after {
+		t = t.With(a.Time, a.Who, a.What, a.On, a.Why)
+	}
+	return t
+}
+
+// Workbook writes the seal as an .xlsx package: one sheet that states the criterion, and the plan as custom XML. The same seal
+// gives the same bytes.
+func (s Sealed) Workbook() ([]byte, error) {
+	record, err := s.encode()
+	if err != nil {
+		return nil, err
+	}
+	b := book{title: s.Plan.Title, sheets: s.sheets(), record: record, draft: s.Signer == nil}
+	b.foot = footerText("Criterion of "+orWord(s.Plan.Title, "a comparison"), s.Plan.Supports) + "\nCriterion " + shortDigest(s.Digest)
+	return b.bytes()
+}
+
+// SignSeal writes a seal's workbook with its first signer and signs it.
+func SignSeal(s Sealed, id identity.Identity, st opcsign.Statement) ([]byte, error) {
+	if !slices.Contains(signMeanings, st.Meaning) {
+		return nil, fmt.Errorf("%w, found %q", ErrMeaning, st.Meaning)
+	}
+	fill(&st, id)
+	s.Signer = signerOf(id, st)
+	pkg, err := s.Workbook()
+	if err != nil {
+		return nil, err
+	}
+	out, err := opcsign.Sign(pkg, id.Key, id.Chain, st)
+	if err != nil {
+		return nil, fmt.Errorf("signature: %w", err)
+	}
+	return out, nil
+}
+
+func (s Sealed) encode() ([]byte, error) {
+	var b bytes.Buffer
+	b.WriteString(xml.Header)
+	fmt.Fprintf(&b, `<record xmlns="%s" format="%s">`, recordNamespace, SealFormat)
+	if err := putJSON(&b, "seal", s); err != nil {
+		return nil, err
+	}
+	b.WriteString("</record>")
+	return b.Bytes(), nil
+}
+
+// ReadSeal takes the seal out of a workbook. It checks nothing: Verify does.
+func ReadSeal(pkg []byte) (Sealed, error) {
+	b, err := opcsign.ReadPart(pkg, recordPart)
+	if err != nil {
+		return Sealed{}, fmt.Errorf("%w (%w)", ErrNoSeal, err)
+	}
+	var x struct {
+		XMLName xml.Name `xml:"urn:lotpair:record:1 record"`
+		Format  string   `xml:"format,attr"`
+		Seal    string   `xml:"seal"`
+	}
+	if err := xml.Unmarshal(b, &x); err != nil {
+		return Sealed{}, fmt.Errorf("%w (%w)", ErrNoSeal, err)
+	}
+	if x.Format != SealFormat {
+		return Sealed{}, fmt.Errorf("%w (found the format %q)", ErrNoSeal, x.Format)
+	}
+	var s Sealed
+	if err := json.Unmarshal([]byte(x.Seal), &s); err != nil {
+		return Sealed{}, fmt.Errorf("seal %s: %w", recordPart, err)
+	}
+	return s, nil
+}
+
+// SealDifferences lists where a plan departs from a sealed one, by the keys of the plan file: what the seal covers and nothing
+// else. It is empty exactly where the digests are equal.
+func SealDifferences(sealed, plan qa.Plan) []string {
+	var out []string
+	walkKeys("", coveredBy(sealed), coveredBy(plan), func(key string, was, is any) {
+		out = append(out, fmt.Sprintf("%s: sealed %s, the plan has %s", key, short(was), short(is)))
+	})
+	return out
+}
+
+// coveredBy is what a seal covers, as plain JSON values (contract: plan, "The seal").
+func coveredBy(p qa.Plan) map[string]any {
+	out := map[string]any{}
+	// What Validate let through can be written as JSON and read again.
+	b, err := json.Marshal(map[string]any{"criterion": p.Criterion, "characteristic": p.Characteristics, "performance": p.Performance})
+	if err == nil {
+		err = json.Unmarshal(b, &out)
+	}
+	if err != nil {
+		out["plan"] = err.Error()
+	}
+	return out
+}
+
+func walkKeys(key string, was, is any, say func(key string, was, is any)) {
+	switch x := was.(type) {
+	case map[string]any:
+		if y, ok := is.(map[string]any); ok {
+			for _, k := range keys(x, y) {
+				walkKeys(join(key, k), x[k], y[k], say)
+			}
+			return
+		}
+	case []any:
+		if y, ok := is.([]any); ok && len(x) == len(y) {
+			for i := range x {
+				walkKeys(fmt.Sprintf("%s %d%s", key, i+1, named(x[i], y[i])), x[i], y[i], say)
+			}
+			return
+		}
+		if y, ok := is.([]any); ok {
+			say(key, nameList(x), nameList(y))
+			return
+		}
+	default:
+		if was == is {
+			return
+		}
+	}
+	say(key, was, is)
+}
+
+// named is the name of a characteristic in brackets, where both have the same.
+func named(a, b any) string {
+	x, ok := a.(map[string]any)
+	y, ok2 := b.(map[string]any)
+	if name, is := x["name"].(string); ok && ok2 && is && y["name"] == name {
+		return " (" + name + ")"
+	}
+	return ""
+}
+
+func nameList(list []any) string {
+	var names []string
+	for _, v := range list {
+		if m, ok := v.(map[string]any); ok {
+			names = append(names, fmt.Sprint(m["name"]))
+		} else {
+			names = append(names, fmt.Sprint(v))
+		}
+	}
+	return fmt.Sprintf("%d: %s", len(list), strings.Join(names, ", "))
+}
