@@ -44,10 +44,11 @@ type scanner struct {
 
 type attribute struct{ name, value []byte }
 
-const window = 64 << 10
+func newScanner(part string, r io.Reader) *scanner { return newScannerSize(part, r, 64<<10) }
 
-func newScanner(part string, r io.Reader) *scanner {
-	return &scanner{part: part, src: r, buf: make([]byte, window)}
+// newScannerSize has a buffer of the size given at first, 16 at least; it grows with the longest token.
+func newScannerSize(part string, r io.Reader, size int) *scanner {
+	return &scanner{part: part, src: r, buf: make([]byte, size)}
 }
 
 // fill reads on behind what is not yet taken; false at the end of the part. Slices of the buffer do not outlive it.
