@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"crypto/rand"
 	"flag"
+	"image"
 	"image/png"
 	"os"
 	"path/filepath"
@@ -335,6 +336,21 @@ func TestThePictureIsSaved(t *testing.T) {
 	w.leaveDialog()
 }
 
+// kept keeps a picture where -pictures asks for that.
+func kept(t testing.TB, name string, img image.Image) {
+	t.Helper()
+	if *pictures == "" {
+		return
+	}
+	var b bytes.Buffer
+	if err := png.Encode(&b, img); err != nil {
+		t.Fatal(err)
+	}
+	if err := os.WriteFile(filepath.Join(*pictures, name+".png"), b.Bytes(), 0o600); err != nil {
+		t.Fatal(err)
+	}
+}
+
 // TestPictures renders the window in its states; with -pictures they are kept.
 func TestPictures(t *testing.T) {
 	signed := filepath.Join(t.TempDir(), "signed.xlsx")
@@ -357,15 +373,7 @@ func TestPictures(t *testing.T) {
 		if got, want := img.Bounds().Dx(), int(float64(s.Width)*s.Scale); got != want {
 			t.Errorf("%s: got %d pixels, want %d", name, got, want)
 		}
-		if *pictures != "" {
-			var b bytes.Buffer
-			if err := png.Encode(&b, img); err != nil {
-				t.Fatal(err)
-			}
-			if err := os.WriteFile(filepath.Join(*pictures, name+".png"), b.Bytes(), 0o600); err != nil {
-				t.Fatal(err)
-			}
-		}
+		kept(t, name, img)
 	}
 	for _, s := range []Shot{{Width: 10, Height: 10, Scale: 1}, {Width: 1280, Height: 800}, {File: "no such file.toml", Width: 1280, Height: 800, Scale: 1}} {
 		if _, err := Picture(s, testBuild); err == nil {

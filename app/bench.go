@@ -4,27 +4,44 @@ import (
 	"fyne.io/fyne/v2"
 )
 
+// benchHead is where the bench's picture begins: below its name and the ways of looking at it, which take a line each where
+// they do not stand beside each other.
+func (w *window) benchHead(divider float32) (top float32, beside bool) {
+	need := max(164, margin+fontName.width(w.view.bench.Name)+25)
+	for _, l := range w.view.bench.Looks {
+		need += w.act.looks[l.Look].wide() + lookGap
+	}
+	if need+w.act.picture.wide()+12 <= divider {
+		return 42, true
+	}
+	return 70, false
+}
+
+const lookGap = 14 // between the ways of looking
+
 // paintBench draws the characteristic looked at: its picture, and beside it what was found.
 func (w *window) paintBench(p *pen, size fyne.Size) {
 	v := w.view.bench
 	p.across(0, size.Width, 0.6, 1.2, p.Text)
 	divider := float32(int(size.Width * 0.489))
-	name := fontName.middle(v.Name, divider-2*margin-190)
-	end := p.text(name, margin, 28, fontName, p.Text)
-	x := max(170, end+31)
-	for _, view := range v.Views {
-		to := p.text(view, x, 27, fontButton, p.Text)
-		p.across(x, to, 33, 2, p.Text)
-		x = to + 31
+	top, beside := w.benchHead(divider)
+	wide := w.act.picture.wide()
+	x, y := float32(margin-6), float32(37)
+	if beside {
+		x, y = max(164, p.text(v.Name, margin, 28, fontName, p.Text)+25), 9
+	} else {
+		p.text(fontName.middle(v.Name, divider-2*margin-wide), margin, 28, fontName, p.Text)
 	}
-	if _, ok := w.state.Characteristic(); ok {
-		b := w.act.picture
-		wide := b.wide()
-		if at := divider - 12 - wide; at > x {
-			p.put(b, at, 9, wide, 28)
-			b.Refresh()
-		}
-		p.put(w.facing, margin, 42, divider-margin-18, size.Height-42-8)
+	for _, l := range v.Looks {
+		b := w.act.looks[l.Look]
+		p.put(b, x, y, b.wide(), 28)
+		b.Refresh()
+		x += b.wide() + lookGap
+	}
+	if len(v.Looks) > 0 {
+		p.put(w.act.picture, divider-12-wide, 9, wide, 28)
+		w.act.picture.Refresh()
+		p.put(w.picture, margin, top, divider-margin-18, size.Height-top-8)
 	}
 	p.down(divider, 16, size.Height-8, 1, p.Rule)
 	w.sentences.place(p, divider+1, 10, size.Width-divider-2, size.Height-14)

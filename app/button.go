@@ -14,9 +14,10 @@ import (
 type kind int
 
 const (
-	plain kind = iota // an outline
-	main              // filled with ink
-	quiet             // words alone
+	plain  kind = iota // an outline
+	main               // filled with ink
+	quiet              // words alone
+	choice             // words alone, one of several of which one is chosen
 )
 
 // button is a button as the drawings of the window have it, reached by Tab and pressed by space or return.
@@ -26,6 +27,7 @@ type button struct {
 	label    string
 	kind     kind
 	disabled bool
+	chosen   bool // of a choice
 	press    func()
 
 	hovered, focused bool
@@ -39,19 +41,19 @@ func newButton(palette func() draw.Palette, label string, k kind, press func()) 
 
 // font is the font of the label.
 func (b *button) font() font {
-	switch b.kind {
-	case main:
+	if b.kind == main || b.chosen {
 		return fontButton
-	case quiet:
-		return fontPlain
 	}
 	return fontPlain
 }
 
 // wide is how wide the button wants to be.
 func (b *button) wide() float32 {
-	if b.kind == quiet {
+	switch b.kind {
+	case quiet:
 		return b.font().width(b.label) + 12
+	case choice:
+		return fontButton.width(b.label) + 12 // the same chosen or not, so that nothing moves
 	}
 	return b.font().width(b.label) + 56
 }
@@ -66,13 +68,18 @@ func (b *button) paint(p *pen, size fyne.Size) {
 	if b.kind == main {
 		ink, ground = p.Paper, p.Text
 	}
+	if b.kind == choice && !b.chosen {
+		ink = p.MutedText
+	}
 	if b.disabled {
 		ink, ground = p.MutedText, color.NRGBA{}
 	}
 	r := p.box(0, 0, size.Width, size.Height, ground)
 	r.CornerRadius = 3
 	switch {
-	case b.kind == quiet:
+	case b.kind == choice && b.focused:
+		r.StrokeColor, r.StrokeWidth = p.Text, 1.2
+	case b.kind == quiet || b.kind == choice:
 	case b.disabled:
 		r.StrokeColor, r.StrokeWidth = p.Rule, 1.2
 	default:
@@ -83,6 +90,8 @@ func (b *button) paint(p *pen, size fyne.Size) {
 	base := size.Height/2 + 5
 	p.centred(label, size.Width/2, base, f, ink)
 	switch w := f.width(label); {
+	case b.chosen:
+		p.across(size.Width/2-w/2, size.Width/2+w/2, base+6, 2, ink)
 	case b.focused:
 		p.across(size.Width/2-w/2, size.Width/2+w/2, base+4, 2, ink)
 	case b.hovered || b.kind == quiet:
@@ -137,5 +146,7 @@ func (b *button) TypedKey(e *fyne.KeyEvent) {
 	switch e.Name {
 	case fyne.KeySpace, fyne.KeyReturn, fyne.KeyEnter:
 		b.act()
+	default:
+		passed(b, e)
 	}
 }

@@ -4,6 +4,8 @@ import (
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/dialog"
 	"fyne.io/fyne/v2/widget"
+
+	"lotpair/app/desk"
 )
 
 // field is a line to type in, in a dialog: return does what the dialog is for, escape leaves it.
@@ -59,9 +61,26 @@ func (w *window) leaveDialog() {
 // typed takes the keys that no control took.
 func (w *window) typed(e *fyne.KeyEvent) {
 	switch {
+	case w.dialog == nil && e.Name >= fyne.Key1 && e.Name <= fyne.Key5:
+		w.lookKey(e.Name)
 	case w.dialog == nil:
 		w.spineKey(e.Name)
 	case e.Name == fyne.KeyEscape:
 		w.leaveDialog()
+	}
+}
+
+// lookKey looks at the bench in the way of its number.
+func (w *window) lookKey(k fyne.KeyName) {
+	w.apply(func(s desk.State) desk.State { return s.WithLook(desk.Look(k[0] - '1')) })
+}
+
+// passed hands the keys that mean the same everywhere from the control that has the keys to the window.
+func passed(from fyne.CanvasObject, e *fyne.KeyEvent) {
+	if e.Name != fyne.KeyEscape && (e.Name < fyne.Key1 || e.Name > fyne.Key5) {
+		return
+	}
+	if c := fyne.CurrentApp().Driver().CanvasForObject(from); c != nil && c.OnTypedKey() != nil {
+		c.OnTypedKey()(e)
 	}
 }

@@ -24,14 +24,16 @@ func (w *window) mark(of qa.Side) fyne.CanvasObject {
 	}, w.palette())
 }
 
-// facingPicture is the facing plot of the characteristic looked at, nil where there is none.
-func (w *window) facingPicture() chart.Picture {
-	c, ok := w.state.Characteristic()
-	if !ok {
+// benchPicture is the picture of the characteristic looked at, nil where there is none.
+func (w *window) benchPicture() chart.Picture {
+	s := w.state
+	if _, ok := s.Characteristic(); !ok {
 		return nil
 	}
-	r := w.state.Record.Readings
-	return func(width, height float64) figure.Figure { return figure.FacingAt(c, r, width, height) }
+	return func(width, height float64) figure.Figure {
+		f, _ := s.Picture(width, height)
+		return f
+	}
 }
 
 // line is the interval of a characteristic on the spine.

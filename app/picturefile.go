@@ -29,7 +29,7 @@ func (w *window) askPicture() {
 			return unicode.ToLower(r)
 		}
 		return '-'
-	}, c.Name)
+	}, c.Name+"-"+w.state.Shown().String())
 	to := w.newField(filepath.Join(filepath.Dir(absolute(w.proposed())), name+".svg"))
 	to.Validator = filled("a file name that ends in .svg or .png")
 	d := dialog.NewForm("Save the picture", "Save", "Cancel", []*widget.FormItem{widget.NewFormItem("File (.svg or .png)", to)}, func(ok bool) {
@@ -40,16 +40,15 @@ func (w *window) askPicture() {
 	w.presentForm(d, to)
 }
 
-// savePicture writes the facing plot of the characteristic looked at, as ink on paper.
+// savePicture writes the picture of the bench, as ink on paper.
 func (w *window) savePicture(to string) {
-	c, ok := w.state.Characteristic()
-	if !ok {
-		return
-	}
-	readings, place := w.state.Record.Readings, "Saving "+filepath.Base(to)
+	s, place := w.state, "Saving "+filepath.Base(to)
 	to = absolute(to)
 	w.work(place, func() change {
-		f := figure.Facing(c, readings)
+		f, ok := s.Picture(figure.FacingWidth, figure.FacingHeight)
+		if !ok {
+			return desk.State.Read
+		}
 		var data []byte
 		var err error
 		switch strings.ToLower(filepath.Ext(to)) {

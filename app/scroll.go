@@ -97,6 +97,7 @@ func (s *sheet) TypedRune(rune) {}
 
 // TypedKey implements fyne.Focusable.
 func (s *sheet) TypedKey(e *fyne.KeyEvent) {
+	passed(s, e)
 	if s.key != nil {
 		s.key(e.Name)
 		return

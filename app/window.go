@@ -28,7 +28,7 @@ type window struct {
 	paper, header, banner, left, spine, right, bench   *region
 	start, foot                                        *region
 	leftRows, spineRows, rightRows, sentences, problem *scrolled
-	facing                                             *chart.Drawing
+	picture                                            *chart.Drawing         // of the bench
 	lines                                              map[int]*chart.Drawing // of the spine, by characteristic
 	cursor                                             map[qa.Side]int        // the reading that the keys are on
 	rows                                               map[qa.Side]*pageRows  // as they stand, until the state changes
@@ -46,6 +46,7 @@ type view struct {
 
 // buttons are the controls of the window.
 type buttons struct {
+	looks                                 [desk.Limits + 1]*button
 	order, picture, read, cancel          *button
 	compare, signatures, export, sign     *button
 	openPlan, openWorkbook, openTheSample *button
@@ -71,7 +72,7 @@ func newWindow(a fyne.App, b Build, l look) *window {
 	w.spineRows = w.newSpineRows()
 	w.sentences = w.newSentences()
 	w.problem = w.newProblem()
-	w.facing = chart.New(nil, w.palette())
+	w.picture = chart.New(nil, w.palette())
 	// The order of the objects is the order of the Tab key.
 	w.root = container.New(windowLayout{w}, w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot)
 	w.win.SetContent(w.root)
@@ -95,6 +96,11 @@ func (w *window) makeButtons() {
 	b.order = newButton(w.palette, "", quiet, func() {
 		w.apply(func(s desk.State) desk.State { return s.WithSortedBy(s.Sorted.Next()) })
 	})
+	for l := range b.looks {
+		b.looks[l] = newButton(w.palette, desk.Look(l).String(), choice, func() {
+			w.apply(func(s desk.State) desk.State { return s.WithLook(desk.Look(l)) })
+		})
+	}
 	b.picture = newButton(w.palette, "Save picture", quiet, w.askPicture)
 	b.read = newButton(w.palette, "Close", quiet, func() { w.apply(desk.State.Read) })
 	b.cancel = newButton(w.palette, "Cancel", plain, w.cancel)
@@ -140,11 +146,14 @@ func (w *window) show() {
 		w.win.SetTitle(title)
 	}
 	w.lines, w.rows = map[int]*chart.Drawing{}, map[qa.Side]*pageRows{}
-	w.facing.SetPicture(w.facingPicture(), w.palette())
+	w.picture.SetPicture(w.benchPicture(), w.palette())
 	b := &w.act
 	b.order.label = w.view.spine.Order
 	b.compare.label, b.signatures.label = w.view.foot.Compare, w.view.foot.Signatures
 	b.export.label, b.sign.label = w.view.foot.Export, w.view.foot.Sign
+	for _, l := range w.view.bench.Looks {
+		b.looks[l.Look].chosen = l.Chosen
+	}
 	busy := s.Job.Name != ""
 	for _, x := range []*button{b.picture, b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample} {
 		x.disabled = busy

@@ -6,10 +6,10 @@ import (
 	"lotpair/qa"
 )
 
-// BenchView is what the bench says of the characteristic looked at. Its picture is figure.Facing of the same comparison.
+// BenchView is what the bench says of the characteristic looked at. Its picture is State.Picture.
 type BenchView struct {
 	Name       string
-	Views      []string // what can be looked at
+	Looks      []LookView
 	Headline   string   // the verdict
 	Paragraphs []string // what was found, then what to look at
 	Whole      []string // what to look at in the comparison as a whole
@@ -19,10 +19,27 @@ type BenchView struct {
 
 // Bench says what was found for the characteristic looked at.
 func (s State) Bench() BenchView {
-	v := BenchView{Name: s.name(), Views: []string{"Spread"}}
+	v := BenchView{Name: s.name()}
 	c, ok := s.Characteristic()
 	if !ok {
 		v.Headline = "Not compared."
+		return v
+	}
+	shown, cautions := s.Shown(), qa.Cautions()
+	for l := range looks {
+		if offers(Look(l), c) {
+			v.Looks = append(v.Looks, LookView{Look(l), Look(l).String(), Look(l) == shown})
+		}
+	}
+	switch shown {
+	case Order:
+		v.Headline, v.Paragraphs, v.Caution = "One reading after the other.", s.orderSentences(c), cautions[3]
+		return v
+	case Shape:
+		v.Headline, v.Paragraphs, v.Caution = "Beside the normal distribution.", s.shapeSentences(c), cautions[3]
+		return v
+	case Limits:
+		v.Headline, v.Paragraphs, v.Caution = "Between the limits.", s.limitsSentences(c), cautions[5]
 		return v
 	}
 	said := qa.Sentences(c)
@@ -40,7 +57,6 @@ func (s State) Bench() BenchView {
 	if said := s.Record.Readings.Said; len(said) > 0 {
 		v.Read = "How the files were read: " + strings.Join(said, " ")
 	}
-	cautions := qa.Cautions()
 	v.Caution = cautions[5] + " " + cautions[0]
 	return v
 }

@@ -113,6 +113,13 @@ func act(t testing.TB, s desk.State, line string) (desk.State, error) {
 			s = s.WithSortedBy(s.Sorted.Next())
 		}
 		return s, nil
+	case "look":
+		for l := desk.Spread; l <= desk.Limits; l++ {
+			if l.String() == rest {
+				return s.WithLook(l), nil
+			}
+		}
+		t.Fatalf("no way of looking %q", rest)
 	case "leave": // leave CELL REASON
 		c, reason, _ := strings.Cut(rest, " ")
 		return s.LeftOut(cell(c), reason, "tester", noon)
@@ -173,6 +180,9 @@ func text(s desk.State) string {
 	say("  %s", v.Foot)
 	w := s.Bench()
 	say("bench: %s: %s", w.Name, w.Headline)
+	for _, l := range w.Looks {
+		say("  %s%s", map[bool]string{true: "> "}[l.Chosen], l.Name)
+	}
 	for _, p := range w.Paragraphs {
 		say("  %s", p)
 	}

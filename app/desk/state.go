@@ -16,6 +16,7 @@ type State struct {
 	Workbook Workbook // the signed or exported file, empty while there is none
 	Selected int      // the characteristic looked at: its place in the result
 	Sorted   Sorting
+	Looking  Look    // how the bench looks at it
 	Job      Job     // what is being done, empty while nothing is
 	Problem  Problem // what went wrong last, empty while nothing did
 	Said     string  // what was done last, for the foot

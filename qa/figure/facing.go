@@ -31,20 +31,9 @@ func Facing(c qa.Comparison, r qa.Readings) Figure {
 // reading, stacked outward where readings are alike, or bars of counts where a mark each has no room. Limits run across
 // both sides, the margin is a band about the reference's mean, each mean is a line. Sizes below the smallest are raised.
 func FacingAt(c qa.Comparison, r qa.Readings, width, height float64) Figure {
-	f := facing{c: c, Figure: Figure{Width: math.Max(width, FacingMinWidth), Height: math.Max(height, FacingMinHeight)}}
-	f.bottom = f.Height - foot
-	f.Title = fmt.Sprintf("%s: readings of both lots back to back, %d reference, %d candidate", c.Name, c.Reference.N, c.Candidate.N)
 	ref, cand := points(r.Reference.Of(c.Name)), points(r.Candidate.Of(c.Name))
-	f.low, f.high = f.span(ref, cand)
-	f.tickAt, f.tickText = f.ticks()
-	f.right = f.Width - 8 - length(f.tickText, 10.5)
-	f.axis = math.Round((edge + f.right) / 2)
-	f.words = length([]string{f.limitText("lower", c.Limits.Lower), f.limitText("upper", c.Limits.Upper), f.meanText(c.Reference.Mean), f.meanText(c.Candidate.Mean)}, 11.5) + 14 // and what stands between line and label
-
-	f.band()
-	f.limit("lower", c.Limits.Lower)
-	f.limit("upper", c.Limits.Upper)
-	f.scale()
+	f := newFacing(c, ref, cand, width, height, foot)
+	f.Title = fmt.Sprintf("%s: readings of both lots back to back, %d reference, %d candidate", c.Name, c.Reference.N, c.Candidate.N)
 	reach := f.stacks(ref, cand)
 	f.mean(qa.Reference, c.Reference.Mean, reach[0])
 	f.mean(qa.Candidate, c.Candidate.Mean, reach[1])
@@ -52,6 +41,22 @@ func FacingAt(c qa.Comparison, r qa.Readings, width, height float64) Figure {
 	f.place()
 	f.names(r)
 	return f.Figure
+}
+
+// newFacing is the plot with its scale, its margin and its limits, before any reading is in it. below is kept free under it.
+func newFacing(c qa.Comparison, ref, cand []point, width, height, below float64) *facing {
+	f := &facing{c: c, Figure: Figure{Width: math.Max(width, FacingMinWidth), Height: math.Max(height, FacingMinHeight)}}
+	f.bottom = f.Height - below
+	f.low, f.high = f.span(ref, cand)
+	f.tickAt, f.tickText = f.ticks()
+	f.right = f.Width - 8 - length(f.tickText, 10.5)
+	f.axis = math.Round((edge + f.right) / 2)
+	f.words = length([]string{f.limitText("lower", c.Limits.Lower), f.limitText("upper", c.Limits.Upper), f.meanText(c.Reference.Mean), f.meanText(c.Candidate.Mean)}, 11.5) + 14 // and what stands between line and label
+	f.band()
+	f.limit("lower", c.Limits.Lower)
+	f.limit("upper", c.Limits.Upper)
+	f.scale()
+	return f
 }
 
 // facing is the plot being drawn.
@@ -99,7 +104,7 @@ func (f *facing) span(ref, cand []point) (low, high float64) {
 		if e := f.c.Equivalence; e != nil {
 			pad = math.Max(pad, larger(e.MarginLower, e.MarginUpper))
 		}
-		low, high = low-pad, high+pad
+		low, high = math.Max(low-pad, -math.MaxFloat64), math.Min(high+pad, math.MaxFloat64)
 	}
 	most := (high - low) * far
 	take := func(v float64) {

@@ -1,5 +1,7 @@
 package figure
 
+import "lotpair/qa"
+
 // Role says what a mark stands for; the painter gives each role its colour.
 type Role string
 
@@ -45,8 +47,9 @@ type Mark struct {
 	Text         string
 	Anchor       Anchor
 	Bold         bool
-	Open         bool // a box, dot or diamond drawn as its outline, filled with paper
-	Dashed       bool // a line of short strokes
+	Open         bool        // a box, dot or diamond drawn as its outline, filled with paper
+	Dashed       bool        // a line of short strokes
+	Reading      *qa.Reading // the one it shows, which is not to be changed; nil where it shows none or several
 }
 
 // Figure is a picture: marks in the order in which they are painted.

@@ -12,13 +12,14 @@ import (
 type point struct {
 	value   float64
 	leftOut bool
+	of      *qa.Reading
 }
 
 // points are a lot's readings in order of value, those in use first among equals.
 func points(s qa.Series) []point {
 	out := make([]point, 0, len(s.Readings))
-	for _, r := range s.Readings {
-		out = append(out, point{r.Value, !r.Used()})
+	for i, r := range s.Readings {
+		out = append(out, point{r.Value, !r.Used(), &s.Readings[i]})
 	}
 	sort.SliceStable(out, func(i, j int) bool {
 		if out[i].value != out[j].value {
@@ -131,9 +132,9 @@ func (f *facing) dots(side qa.Side, ss []stack, radius, pitch float64) float64 {
 	for _, s := range ss {
 		for i, p := range s.all {
 			away := gap + float64(i)*pitch
-			m := Mark{Kind: Dot, Name: "reference reading", Role: Reference, X: f.axis - away, Y: s.y, Size: radius}
+			m := Mark{Kind: Dot, Name: "reference reading", Role: Reference, X: f.axis - away, Y: s.y, Size: radius, Reading: p.of}
 			if side == qa.Candidate {
-				m = Mark{Kind: Diamond, Name: "candidate reading", Role: Candidate, X: f.axis + away, Y: s.y, Size: radius + 0.8, Open: true}
+				m = Mark{Kind: Diamond, Name: "candidate reading", Role: Candidate, X: f.axis + away, Y: s.y, Size: radius + 0.8, Open: true, Reading: p.of}
 			}
 			if p.leftOut {
 				m.Name, m.Role, m.Open = string(side)+" left out", Muted, true

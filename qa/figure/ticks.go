@@ -22,7 +22,7 @@ func ticks(low, high float64, about int) (at []float64, decimals int) {
 	first := math.Ceil(low/step - 1e-9)
 	for i := 0.0; i <= 2*float64(about)+2; i++ {
 		v := (first + i) * step
-		if v > high+step*1e-9 {
+		if v > high+step*1e-9 || math.IsInf(v, 0) {
 			break
 		}
 		at = append(at, v)

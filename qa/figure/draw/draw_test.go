@@ -49,7 +49,7 @@ func TestSVG(t *testing.T) {
 		Name: "Run-out <max>", Objective: qa.NotHigher, Verdict: qa.Undecided,
 		Equivalence: &qa.EquivalenceResult{MarginUpper: ptr(0.008), Lower: ptr(0.003), Upper: ptr(0.5), Estimate: ptr(0.02)},
 	}
-	for name, f := range map[string]figure.Figure{"facing": figure.Facing(c, r), "spine": figure.Spine(c), "one-sided": figure.Spine(oneSided)} {
+	for name, f := range map[string]figure.Figure{"facing": figure.Facing(c, r), "order": figure.Order(c, r), "shape": figure.Shape(c, r), "limits": figure.Limits(c, r), "spine": figure.Spine(c), "one-sided": figure.Spine(oneSided)} {
 		got, path := draw.SVG(f), filepath.Join("testdata", name+".svg")
 		if *update {
 			if err := os.WriteFile(path, got, 0o644); err != nil {
@@ -63,6 +63,23 @@ func TestSVG(t *testing.T) {
 		if !bytes.Equal(got, want) {
 			t.Errorf("%s: got another picture than %s; look at it, then run with -update", name, path)
 		}
+	}
+}
+
+// TestMinusIsSeen draws a minus sign: it must leave a stroke at its height, not the box of a letter the font lacks.
+func TestMinusIsSeen(t *testing.T) {
+	at := probe(t, figure.Mark{Kind: figure.Label, X: 10, Y: 30, Size: 20, Text: "−"})
+	inked := func(x, y float64) bool { return at(x, y) != draw.Light().Paper }
+	high, low := false, false
+	for y := 10.0; y < 32; y += 0.25 {
+		for x := 8.0; x < 30; x += 0.25 {
+			if inked(x, y) {
+				high, low = high || y < 19, low || y > 28
+			}
+		}
+	}
+	if high || low {
+		t.Error("minus: got a letter as high as a capital, want one stroke")
 	}
 }
 

@@ -3,6 +3,7 @@ package draw
 import (
 	_ "embed" // the fonts are part of the program: a picture must not depend on what a machine has installed
 	"fmt"
+	"strings"
 
 	"golang.org/x/image/font"
 	"golang.org/x/image/font/opentype"
@@ -37,6 +38,18 @@ func newFaces() (*faces, error) {
 		return nil, fmt.Errorf("embedded font: %w", err)
 	}
 	return &faces{regular: r, bold: b, made: map[faceKey]font.Face{}}, nil
+}
+
+// readable is s as the fonts can set it: where they lack the minus sign, the dash that looks like it stands for it.
+func (f *faces) readable(s string) string {
+	const minus, dash = "\u2212", "\u2013"
+	if !strings.Contains(s, minus) {
+		return s
+	}
+	if i, err := f.regular.GlyphIndex(nil, []rune(minus)[0]); err == nil && i != 0 {
+		return s
+	}
+	return strings.ReplaceAll(s, minus, dash)
 }
 
 // of is the face of the given height in pixels.

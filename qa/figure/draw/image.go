@@ -147,7 +147,8 @@ func (c *canvas) label(m figure.Mark, x, y, size float64, col color.NRGBA) error
 		return err
 	}
 	d := font.Drawer{Dst: c.img, Src: image.NewUniform(col), Face: face}
-	width := d.MeasureString(m.Text)
+	text := c.fonts.readable(m.Text)
+	width := d.MeasureString(text)
 	d.Dot = fixed.Point26_6{X: fixed.Int26_6(math.Round(x * 64)), Y: fixed.Int26_6(math.Round(y * 64))}
 	switch m.Anchor {
 	case figure.Middle:
@@ -155,6 +156,6 @@ func (c *canvas) label(m figure.Mark, x, y, size float64, col color.NRGBA) error
 	case figure.End:
 		d.Dot.X -= width
 	}
-	d.DrawString(m.Text)
+	d.DrawString(text)
 	return nil
 }
