@@ -31,6 +31,7 @@ type Cell struct {
 	Format   string // the number format's code; empty for the general format
 	Kind     Kind
 	Formula  bool // the value was computed by a formula
+	Marks    Marks
 }
 
 // Name is the cell's address: "D17".

@@ -20,15 +20,16 @@ type style struct {
 	date bool
 }
 
-// readStyles gives the style of each index into cellXfs.
-func readStyles(p *pack, name string) ([]style, error) {
+// readStyles gives the style and the marks of each index into cellXfs.
+func readStyles(p *pack, name string) ([]style, []Marks, error) {
 	r, err := p.open(name)
 	if err != nil || r == nil {
-		return nil, err
+		return nil, nil, err
 	}
 	defer func() { _ = r.Close() }()
 	codes := map[int]string{}
 	var styles []style
+	var d dress
 	x := newScanner(name, r)
 	format := func() error {
 		if id, ok := whole(x.attr("numFmtId")); ok && x.is("numFmt") {
@@ -51,15 +52,20 @@ func readStyles(p *pack, name string) ([]style, error) {
 			return damaged(name, "the number format %q", clip(x.attr("numFmtId")))
 		}
 		styles = append(styles, styleOf(id, codes))
+		d.use(x)
 		return nil
 	}
 	if err := x.root("styleSheet"); err != nil {
-		return nil, err
+		return nil, nil, err
 	}
 	err = x.children(func() error {
 		switch string(x.local()) {
 		case "numFmts":
 			return x.children(format)
+		case "fonts":
+			return x.children(func() error { return d.font(x) })
+		case "fills":
+			return x.children(func() error { return d.fill(x) })
 		case "cellXfs":
 			return x.children(xf)
 		}
@@ -68,7 +74,7 @@ func readStyles(p *pack, name string) ([]style, error) {
 	if err == nil {
 		err = x.rest()
 	}
-	return styles, err
+	return styles, d.marks(), err
 }
 
 const maxStyles = 1 << 17 // spreadsheet programs hold half as many

@@ -79,17 +79,20 @@ func FuzzScan(f *testing.F) {
 	f.Fuzz(func(t *testing.T, data []byte) {
 		got, err := scanned(data, 64<<10)
 		small, smallErr := scanned(data, 16)
-		if fmt.Sprint(err) != fmt.Sprint(smallErr) || got != small {
+		if (err == nil) != (smallErr == nil) || got != small { // a large one may come to the fault behind first
 			t.Fatalf("got %q, %v; with a small buffer %q, %v", got, err, small, smallErr)
 		}
 		if err != nil {
 			known(t, err)
 			return
 		}
+		if data[0] == 0 || data[1] == 0 || data[0] >= 0xfe { // UTF-16, which encoding/xml does not read
+			return
+		}
 		want, err := tokens(data)
 		if err != nil {
-			if strings.Contains(err.Error(), "UTF-8") || strings.Contains(err.Error(), "encoding") || strings.Contains(err.Error(), "invalid XML name") || data[0] == 0 {
-				return // UTF-16, US-ASCII, and names of characters beyond ASCII, which are not asked for their classes
+			if strings.Contains(err.Error(), "encoding") || strings.Contains(err.Error(), " name") && bytes.ContainsFunc(data, func(r rune) bool { return r >= 0x80 }) {
+				return // US-ASCII, and names of characters beyond ASCII, which are not asked for their classes
 			}
 			t.Fatalf("encoding/xml: %v, got %q", err, got)
 		}

@@ -88,7 +88,7 @@ func (s *sheetReader) plainCells() error {
 		x.at += i
 		date := false
 		if index < len(s.styles) {
-			c.Format, date = s.styles[index].code, s.styles[index].date
+			c.Format, c.Marks, date = s.styles[index].code, s.marks[index], s.styles[index].date
 		}
 		switch {
 		case value == nil:

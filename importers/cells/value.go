@@ -34,7 +34,7 @@ func (s *sheetReader) cell() error {
 		return err
 	}
 	if index < len(s.styles) {
-		c.Format = s.styles[index].code
+		c.Format, c.Marks = s.styles[index].code, s.marks[index]
 	}
 	if err := s.settle(&c, kind, index < len(s.styles) && s.styles[index].date, has); err != nil {
 		return err

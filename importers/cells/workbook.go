@@ -19,6 +19,7 @@ type outline struct {
 	tabs     []tab
 	strings  []string
 	styles   []style
+	marks    []Marks // of each style
 	date1904 bool
 	counted  int  // cells, rows and merged areas so far
 	slow     bool // every cell by its tokens
@@ -37,6 +38,9 @@ func (o *outline) read() (Workbook, error) {
 	w := Workbook{Date1904: o.date1904, Macros: o.pack.parts["xl/vbaproject.bin"] != nil}
 	for _, t := range o.tabs {
 		s, err := o.sheet(t)
+		if err == nil {
+			err = o.readComments(t.part, &s)
+		}
 		if err != nil {
 			return Workbook{}, err
 		}
@@ -54,7 +58,11 @@ func ReadSheet(data []byte, name string) (Sheet, error) {
 	var names []string
 	for _, t := range o.tabs {
 		if t.name == name {
-			return o.sheet(t)
+			s, err := o.sheet(t)
+			if err == nil {
+				err = o.readComments(t.part, &s)
+			}
+			return s, err
 		}
 		names = append(names, fmt.Sprintf("%q", t.name))
 	}
@@ -89,7 +97,7 @@ func openOutline(data []byte) (*outline, error) {
 		case strings.HasSuffix(r.kind, "/sharedStrings"):
 			o.strings, err = readStrings(p, r.target)
 		case strings.HasSuffix(r.kind, "/styles"):
-			o.styles, err = readStyles(p, r.target)
+			o.styles, o.marks, err = readStyles(p, r.target)
 		}
 		if err != nil {
 			return nil, err
