@@ -4,7 +4,6 @@ import (
 	"bytes"
 	"fmt"
 	"image"
-	imagedraw "image/draw"
 	"image/png"
 
 	"lotpair/qa"
@@ -32,22 +31,34 @@ func spinePicture(r qa.Result, row int) picture {
 }
 
 func spines(r qa.Result, width float64) ([]byte, error) {
-	const scale = 2.5
-	pitch := int(spineRowHeight / width * figure.SpineWidth * scale)
-	img := image.NewNRGBA(image.Rect(0, 0, figure.SpineWidth*scale, pitch*len(r.Characteristics)))
+	const scale = 1.25 // some 200 pixels an inch
+	pitch := spineRowHeight / width * figure.SpineWidth
+	all := figure.Figure{Width: figure.SpineWidth, Height: pitch * float64(len(r.Characteristics))}
+	for i, c := range r.Characteristics {
+		appendBelow(&all, figure.Spine(c), pitch*float64(i)+(pitch-figure.SpineHeight)/2)
+	}
 	palette := draw.Light()
 	palette.Paper.A = 0 // the table's lines show through
-	for i, c := range r.Characteristics {
-		line, err := draw.Image(figure.Spine(c), scale, palette)
-		if err != nil {
-			return nil, fmt.Errorf("workbook, picture of %s: %w", c.Name, err)
-		}
-		at := image.Pt(0, i*pitch+(pitch-line.Bounds().Dy())/2)
-		imagedraw.Draw(img, line.Bounds().Add(at), line, image.Point{}, imagedraw.Src)
+	img, err := draw.Image(all, scale, palette)
+	if err != nil {
+		return nil, fmt.Errorf("workbook, picture: %w", err)
 	}
+	return encodePNG(img)
+}
+
+func encodePNG(img image.Image) ([]byte, error) {
 	var b bytes.Buffer
 	if err := (&png.Encoder{CompressionLevel: png.BestSpeed}).Encode(&b, img); err != nil {
 		return nil, fmt.Errorf("workbook, picture: %w", err)
 	}
 	return b.Bytes(), nil
+}
+
+// appendBelow puts the marks of a figure into another, so far down.
+func appendBelow(to *figure.Figure, from figure.Figure, down float64) {
+	for _, m := range from.Marks {
+		m.Y += down
+		m.Y2 += down
+		to.Marks = append(to.Marks, m)
+	}
 }

@@ -2,7 +2,9 @@ package exports
 
 import (
 	"crypto/x509"
+	"crypto/x509/pkix"
 	"fmt"
+	"strings"
 	"time"
 	"unicode"
 	"unicode/utf8"
@@ -136,7 +138,7 @@ func noteSignature(g SignatureView, when time.Time, line func(name, value string
 	}
 	line("certificate, SHA-256", g.Fingerprint)
 	if c := g.Certificate; c != nil {
-		line("certificate of", c.Subject.String())
+		line("certificate of", person(c.Subject))
 		line("issued by", issuer(c))
 		line("serial number", c.SerialNumber.Text(16))
 		line("valid", validity(c, when))
@@ -148,7 +150,20 @@ func issuer(c *x509.Certificate) string {
 	if c.Issuer.String() == c.Subject.String() {
 		return "itself"
 	}
-	return c.Issuer.String()
+	return person(c.Issuer)
+}
+
+// person is a name in a certificate as people write it.
+func person(n pkix.Name) string {
+	parts := append([]string{n.CommonName}, n.OrganizationalUnit...)
+	parts = append(append(append(parts, n.Organization...), n.Locality...), n.Country...)
+	var out []string
+	for _, s := range parts {
+		if s != "" {
+			out = append(out, s)
+		}
+	}
+	return strings.Join(out, ", ")
 }
 
 // validity says the dates, and whether it has expired since.

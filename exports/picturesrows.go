@@ -1,10 +1,8 @@
 package exports
 
 import (
-	"bytes"
 	"fmt"
 	"image"
-	"image/png"
 
 	"lotpair/qa"
 	"lotpair/qa/figure"
@@ -22,7 +20,7 @@ const (
 	plotsPage             = 3
 	plotsImage            = 12 // plots in one image
 	mostPlots             = 48
-	plotScale             = 1.6 // pixels a point of the figure
+	plotScale             = 1.5 // pixels a point of the figure
 )
 
 // picturesSheet shows the readings of each characteristic, both lots back to back about one axis.
@@ -64,22 +62,22 @@ const (
 
 // plots paints plots below each other as they lie over the rows, with nothing over their headings.
 func plots(cs []qa.Comparison, r qa.Readings) ([]byte, error) {
-	const pixels = plotScale / plotSize // a point of the sheet
-	block := blockHeight * pixels
-	img := image.NewPaletted(image.Rect(0, 0, int(plotWidth*plotScale), int(block*float64(len(cs)))), paletteOf(draw.Light()))
-	q := newQuantizer(img.Palette)
+	const block = blockHeight / plotSize // in points of the figure
+	all := figure.Figure{Width: plotWidth, Height: block * float64(len(cs))}
 	for i, c := range cs {
-		p := draw.Light()
-		p.Paper = white
-		one, err := draw.Image(figure.FacingAt(c, r, plotWidth, plotHeight), plotScale, p)
-		if err != nil {
-			return nil, fmt.Errorf("workbook, picture of %s: %w", c.Name, err)
-		}
-		q.lay(img, one, int(block*float64(i)+plotHead*pixels))
+		appendBelow(&all, figure.FacingAt(c, r, plotWidth, plotHeight), block*float64(i)+plotHead/plotSize)
 	}
-	var b bytes.Buffer
-	if err := (&png.Encoder{CompressionLevel: png.BestSpeed}).Encode(&b, img); err != nil {
+	p := draw.Light()
+	p.Paper = white
+	full, err := draw.Image(all, plotScale, p)
+	if err != nil {
 		return nil, fmt.Errorf("workbook, picture: %w", err)
 	}
-	return b.Bytes(), nil
+	img := image.NewPaletted(full.Bounds(), paletteOf(p))
+	newQuantizer(img.Palette).take(img, full)
+	for i := range cs { // nothing over the headings
+		from, to := int(block*float64(i)*plotScale), int((block*float64(i)+plotHead/plotSize)*plotScale)
+		clear(img.Pix[from*img.Stride : to*img.Stride])
+	}
+	return encodePNG(img)
 }

@@ -50,20 +50,15 @@ func newQuantizer(p color.Palette) *quantizer {
 
 func keyOf(p []byte) int { return int(p[0]>>3)<<10 | int(p[1]>>3)<<5 | int(p[2]>>3) }
 
-// lay puts an opaque picture into another at the height y.
-func (q *quantizer) lay(to *image.Paletted, from *image.NRGBA, y int) {
-	size := from.Bounds().Intersect(image.Rect(0, 0, to.Bounds().Dx(), to.Bounds().Dy()-y))
-	for row := range size.Dy() {
-		line := from.Pix[row*from.Stride:]
-		out := to.Pix[(y+row)*to.Stride:]
-		for x := range size.Dx() {
-			p := line[4*x : 4*x+3 : 4*x+3]
-			key := keyOf(p)
-			if q.known[key] == 0 {
-				q.known[key] = q.nearest(p)
-			}
-			out[x] = q.known[key]
+// take gives every pixel of an opaque picture its nearest colour.
+func (q *quantizer) take(to *image.Paletted, from *image.NRGBA) {
+	for i := range to.Pix { // both are of one size, without gaps between their lines
+		p := from.Pix[4*i : 4*i+3 : 4*i+3]
+		key := keyOf(p)
+		if q.known[key] == 0 {
+			q.known[key] = q.nearest(p)
 		}
+		to.Pix[i] = q.known[key]
 	}
 }
 

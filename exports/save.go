@@ -7,6 +7,8 @@ import (
 	"io/fs"
 	"os"
 	"path/filepath"
+	"runtime"
+	"syscall"
 
 	"lotpair/exports/opcsign"
 )
@@ -35,7 +37,7 @@ func Save(path string, data []byte, force bool) error {
 	switch {
 	case errors.Is(err, fs.ErrNotExist):
 	case err != nil:
-		return fmt.Errorf("%s: %w", path, err)
+		return notSaved(path, err)
 	case opcsign.HasSignature(old):
 		return &ExistsError{Path: path, Signed: true}
 	case !force:
@@ -48,7 +50,7 @@ func Save(path string, data []byte, force bool) error {
 func Replace(path string, before, data []byte) error {
 	now, err := os.ReadFile(path)
 	if err != nil {
-		return fmt.Errorf("%s: %w", path, err)
+		return notSaved(path, err)
 	}
 	if !bytes.Equal(now, before) {
 		return fmt.Errorf("%s: found it changed since it was read, want it unchanged; sign again", path)
@@ -56,40 +58,123 @@ func Replace(path string, before, data []byte) error {
 	return write(path, data)
 }
 
-func write(path string, data []byte) (err error) {
-	f, err := os.CreateTemp(filepath.Dir(path), ".lotpair-*")
+func write(path string, data []byte) error { return writeOn(computer{}, path, data) }
+
+// disk is what writing needs of the computer; tests give their own, which fills up, forbids or fails.
+type disk interface {
+	create(dir string) (diskFile, error) // a new file of any name in the folder
+	rename(from, to string) error
+	remove(name string) error
+	read(name string) ([]byte, error)
+	settle(dir string) // makes a renaming last through a loss of power, where the system can
+}
+
+type diskFile interface {
+	Name() string
+	Write(b []byte) (int, error)
+	Sync() error
+	Chmod(mode fs.FileMode) error
+	Close() error
+}
+
+// writeOn writes beside the file, syncs, renames and reads back. Whatever fails, the old file is as it was.
+func writeOn(d disk, path string, data []byte) (err error) {
+	f, err := d.create(filepath.Dir(path))
 	if err != nil {
-		return fmt.Errorf("%s: %w", path, err)
+		return notSaved(path, err)
 	}
+	closed := false
 	defer func() {
 		if err != nil {
-			_ = f.Close()
-			_ = os.Remove(f.Name())
+			if !closed {
+				_ = f.Close()
+			}
+			_ = d.remove(f.Name())
+			err = notSaved(path, err)
 		}
 	}()
 	if _, err = f.Write(data); err != nil {
-		return fmt.Errorf("%s: %w", path, err)
+		return err
 	}
 	if err = f.Sync(); err != nil {
-		return fmt.Errorf("%s: %w", path, err)
+		return err
 	}
 	if err = f.Chmod(0o644); err != nil {
-		return fmt.Errorf("%s: %w", path, err)
+		return err
 	}
+	closed = true
 	if err = f.Close(); err != nil {
-		return fmt.Errorf("%s: %w", path, err)
+		return err
 	}
-	if err = os.Rename(f.Name(), path); err != nil {
-		return fmt.Errorf("%s: %w", path, err)
-	}
-	back, err := os.ReadFile(path)
+	// What lies on the disk is compared before it takes the place of the old file.
+	back, err := d.read(f.Name())
 	if err != nil {
-		return fmt.Errorf("%s: %w", path, err)
+		return err
 	}
 	if !bytes.Equal(back, data) {
-		return fmt.Errorf("%s: found other bytes than were written, want the same; check the disk", path)
+		return errReadBack
 	}
+	if err = d.rename(f.Name(), path); err != nil {
+		return err
+	}
+	d.settle(filepath.Dir(path))
 	return nil
+}
+
+// errReadBack says that the disk gave back other bytes.
+var errReadBack = errors.New("found other bytes on the disk than were written, want the same")
+
+// NotSavedError says that nothing was written and what to do; what was there before is as it was.
+type NotSavedError struct {
+	Path string
+	Err  error
+}
+
+func notSaved(path string, err error) error { return &NotSavedError{Path: path, Err: err} }
+
+func (e *NotSavedError) Unwrap() error { return e.Err }
+
+func (e *NotSavedError) Error() string {
+	var step *fs.PathError
+	var link *os.LinkError
+	err := e.Err
+	if errors.As(err, &step) {
+		err = step.Err
+	} else if errors.As(err, &link) {
+		err = link.Err
+	}
+	found, do := "found "+err.Error()+", want a file that can be written", "choose another place"
+	windows := func(code syscall.Errno) bool { return runtime.GOOS == "windows" && errors.Is(err, code) }
+	switch {
+	case errors.Is(err, syscall.ENOSPC), windows(112): // ERROR_DISK_FULL
+		found, do = "found the disk full, want room for the file", "free some space or choose another disk"
+	case windows(32), windows(33): // ERROR_SHARING_VIOLATION, ERROR_LOCK_VIOLATION
+		found, do = "found the file open in another program, want it closed", "close it there and try again"
+	case errors.Is(err, fs.ErrPermission):
+		found, do = "found no permission to write here, want it", "choose another folder, or close the file where it is open"
+	case errors.Is(err, fs.ErrNotExist):
+		found, do = "found no such folder, want one that exists", "make it or choose another"
+	case errors.Is(err, errReadBack):
+		found, do = err.Error(), "check the disk and save elsewhere"
+	}
+	return fmt.Sprintf("%s: %s; %s; nothing was changed", e.Path, found, do)
+}
+
+// computer is the disk of the computer.
+type computer struct{}
+
+func (computer) create(dir string) (diskFile, error) { return os.CreateTemp(dir, ".lotpair-*") }
+func (computer) rename(from, to string) error        { return os.Rename(from, to) }
+func (computer) remove(name string) error            { return os.Remove(name) }
+func (computer) read(name string) ([]byte, error)    { return os.ReadFile(name) }
+
+func (computer) settle(dir string) {
+	f, err := os.Open(dir)
+	if err != nil {
+		return
+	}
+	_ = f.Sync() // not every system can sync a folder
+	_ = f.Close()
 }
 
 // SaveSecret writes a new file that only its owner may read; an existing one is never overwritten.

@@ -46,7 +46,11 @@ func (s Sealed) Result() qa.Seal {
 
 // Trail is a record's trail with the act of sealing before all others.
 func (s Sealed) Trail(after qa.Trail, file qa.File) qa.Trail {
-	t := qa.Trail{}.With(s.Time, s.Who, "sealed the criterion", file.Name, "sha-256 "+file.SHA256)
+	word := "; the seal is not signed"
+	if g := s.Signer; g != nil {
+		word = "; signed as " + g.Meaning + " by " + g.Name + ", certificate sha-256 " + g.Fingerprint
+	}
+	t := qa.Trail{}.With(s.Time, s.Who, "sealed the criterion", file.Name, "sha-256 "+file.SHA256+word)
 	for _, a := range after {
 		t = t.With(a.Time, a.Who, a.What, a.On, a.Why)
 	}

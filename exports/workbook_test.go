@@ -5,6 +5,7 @@ import (
 	"bytes"
 	"encoding/json"
 	"slices"
+	"strings"
 	"testing"
 
 	"lotpair/exports"
@@ -108,20 +109,25 @@ func TestWorkbookHoldsNoFormula(t *testing.T) {
 
 // TestWorkbookParts checks that few enough parts have to be signed: newer outside verifiers refuse many references.
 func TestWorkbookParts(t *testing.T) {
-	z, err := zip.NewReader(bytes.NewReader(signedOnce(t)), int64(len(signedOnce(t))))
+	if n := signedParts(t, signedOnce(t)); n > 30 {
+		t.Errorf("parts to sign: got %d, want at most 30", n)
+	}
+}
+
+// signedParts counts the parts that a signature has to name.
+func signedParts(t testing.TB, pkg []byte) int {
+	t.Helper()
+	z, err := zip.NewReader(bytes.NewReader(pkg), int64(len(pkg)))
 	if err != nil {
 		t.Fatal(err)
 	}
 	n := 0
 	for _, f := range z.File {
-		if f.Name != "[Content_Types].xml" && !bytes.HasPrefix([]byte(f.Name), []byte("_xmlsignatures/")) {
+		if f.Name != "[Content_Types].xml" && f.Name != "docProps/core.xml" && !strings.HasPrefix(f.Name, "_xmlsignatures/") {
 			n++
 		}
 	}
-	if n > 30 {
-		t.Errorf("parts to sign: got %d, want at most 30", n)
-	}
-	t.Logf("%d parts signed", n)
+	return n
 }
 
 var once []byte
