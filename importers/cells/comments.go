@@ -1,6 +1,9 @@
 package cells
 
-import "strings"
+import (
+	"slices"
+	"strings"
+)
 
 // readComments marks the cells of a sheet on which a comment hangs. What the comments say is not read.
 func (o *outline) readComments(part string, s *Sheet) error {
@@ -52,10 +55,7 @@ func (s *Sheet) mark(col, row int, m Marks) {
 	if !ok {
 		return
 	}
-	for i := range r.Cells {
-		if r.Cells[i].Col == col {
-			r.Cells[i].Marks |= m
-			return
-		}
+	if i, ok := slices.BinarySearchFunc(r.Cells, col, func(c Cell, col int) int { return c.Col - col }); ok {
+		r.Cells[i].Marks |= m
 	}
 }

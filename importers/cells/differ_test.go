@@ -66,8 +66,10 @@ func different(a, b Workbook) string {
 				return fmt.Sprintf("row %d and %d: %d and %d cells", r.Number, q.Number, len(r.Cells), len(q.Cells))
 			}
 			for k, c := range r.Cells {
-				if c != q.Cells[k] {
-					return fmt.Sprintf("%+v and %+v", c, q.Cells[k])
+				other := q.Cells[k]
+				c.Marks, other.Marks = 0, 0 // which the reader over encoding/xml does not know
+				if c != other {
+					return fmt.Sprintf("%+v and %+v", c, other)
 				}
 			}
 		}
