@@ -35,45 +35,38 @@ func isolate(a, b float64, f func(float64) float64, below func(a, b float64) boo
 }
 
 // bracketed returns the root of f between a and b, where f(a) and f(b) have
-// different signs, by Ridders' method (1979, IEEE Transactions on Circuits and
-// Systems 26, 979-980, from memory): the bracket at least halves each step.
+// different signs, to the last digit: inverse quadratic steps where they are safe,
+// else halves (Chandrupatla 1997, Advances in Engineering Software 28, 145-149,
+// from memory).
 func bracketed(a, b float64, f func(float64) float64) float64 {
 	fa, fb := f(a), f(b)
-	if fa == 0 {
-		return a
+	c, fc := a, fa
+	t := 0.5
+	for range 300 {
+		x := a + t*(b-a)
+		fx := f(x)
+		if (fx < 0) == (fa < 0) {
+			c, fc = a, fa
+		} else {
+			c, fc, b, fb = b, fb, a, fa
+		}
+		a, fa = x, fx
+		best, least := a, fa
+		if math.Abs(fb) < math.Abs(fa) {
+			best, least = b, fb
+		}
+		near := (0x1p-53*math.Abs(best) + 1e-300) / math.Abs(b-a)
+		if least == 0 || near > 0.5 {
+			return best
+		}
+		xi, phi := (a-b)/(c-b), (fa-fb)/(fc-fb)
+		t = 0.5
+		if phi*phi < xi && (1-phi)*(1-phi) < 1-xi {
+			t = fa/(fb-fa)*(fc/(fb-fc)) + (c-a)/(b-a)*(fa/(fc-fa))*(fb/(fc-fb))
+		}
+		t = min(1-near, max(near, t))
 	}
-	if fb == 0 {
-		return b
-	}
-	best := b
-	for range 200 {
-		middle := a + (b-a)/2
-		if middle == a || middle == b {
-			break
-		}
-		fm := f(middle)
-		if fm == 0 {
-			return middle
-		}
-		next := middle + (middle-a)*math.Copysign(1, fa)*fm/math.Sqrt(fm*fm-fa*fb)
-		if !(next > min(a, b) && next < max(a, b)) {
-			next = middle
-		}
-		fn := f(next)
-		if fn == 0 || math.Abs(next-best) <= 0x1p-53*math.Abs(next) {
-			return next
-		}
-		best = next
-		switch {
-		case (fm < 0) != (fn < 0):
-			a, fa, b, fb = middle, fm, next, fn
-		case (fa < 0) != (fn < 0):
-			b, fb = next, fn
-		default:
-			a, fa = next, fn
-		}
-	}
-	return best
+	return a
 }
 
 // A convex is p (1-w)^2 + q w^2 for w in 0..1, with p and q at least 0: one over
