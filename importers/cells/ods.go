@@ -9,11 +9,11 @@ import (
 // odsReader reads content.xml of an OpenDocument spreadsheet (OASIS OpenDocument 1.3, part 3: Schema) in one pass.
 type odsReader struct {
 	*outline
-	x      *scanner
-	rename map[string]string // the file's prefix of a name space to the usual one; nil where they are the usual ones
-	styles map[string]odsStyle
-	hides  map[string]bool // table styles of hidden sheets
-	linked int             // sheets that are copies of other files, left out
+	x       *scanner
+	rename  map[string]string // the file's prefix of a name space to the usual one; nil where they are the usual ones
+	styles  map[string]odsStyle
+	hides   map[string]bool // table styles of hidden sheets
+	repeats int
 
 	sheet   Sheet
 	texts   slab

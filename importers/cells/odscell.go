@@ -7,6 +7,7 @@ type odsCell struct {
 	kind, value, style string
 	formula, failed    bool
 	has                bool // a value of its kind is stored
+	inText             bool // the paragraphs hold it
 	columns, across    int
 	down               int
 }
@@ -48,7 +49,7 @@ func (o *odsReader) cell(rows int) error {
 		out.Marks |= Commented
 	}
 	for col := first; col <= o.col; col++ {
-		if err := o.count(); err != nil {
+		if err := o.again(col > first); err != nil {
 			return err
 		}
 		room := o.block.add()
@@ -68,7 +69,7 @@ func (o *odsReader) cellAttributes() (odsCell, error) {
 		}
 		return n
 	}
-	values := map[string]string{}
+	var plain, date, time, boolean, text []byte
 	for _, a := range o.x.attrs {
 		switch string(o.usual(a.name)) {
 		case "table:style-name":
@@ -85,19 +86,32 @@ func (o *odsReader) cellAttributes() (odsCell, error) {
 			c.kind = string(a.value)
 		case "calcext:value-type":
 			c.failed = string(a.value) == "error"
-		case "office:value", "office:date-value", "office:time-value", "office:boolean-value", "office:string-value":
-			values[string(o.usual(a.name))[len("office:"):]] = o.texts.keep(a.value)
+		case "office:value":
+			plain = a.value
+		case "office:date-value":
+			date = a.value
+		case "office:time-value":
+			time = a.value
+		case "office:boolean-value":
+			boolean = a.value
+		case "office:string-value":
+			text = a.value
 		}
 	}
-	name := map[string]string{"date": "date-value", "time": "time-value", "boolean": "boolean-value", "string": "string-value"}[c.kind]
-	if name == "" {
-		name = "value"
+	c.has = c.kind != ""
+	value := plain
+	switch c.kind {
+	case "date":
+		value = date
+	case "time":
+		value = time
+	case "boolean":
+		value = boolean
+	case "string":
+		value, c.inText = text, text == nil
 	}
-	c.value, c.has = values[name], c.kind != ""
-	_, stated := values[name]
-	if c.kind == "string" && !stated {
-		c.value = "\x00" // the paragraphs hold it
-	} else if c.kind != "" && !stated {
+	c.value = o.texts.keep(value)
+	if c.has && value == nil && c.kind != "string" {
 		return c, damaged(o.x.part, "a cell of the kind %q without its value in row %d", c.kind, o.number+1)
 	}
 	return c, err
@@ -107,7 +121,7 @@ func (o *odsReader) cellAttributes() (odsCell, error) {
 func (o *odsReader) settleODS(c odsCell) (Cell, bool) {
 	shown := strings.TrimSpace(string(o.text))
 	out := Cell{Formula: c.formula, Text: c.value}
-	if c.value == "\x00" {
+	if c.inText {
 		out.Text = o.texts.keep(o.text)
 	}
 	switch {

@@ -9,7 +9,6 @@ import (
 func (o *odsReader) table(w *Workbook) error {
 	name, style := string(o.attr("table:name")), string(o.attr("table:style-name"))
 	if strings.HasPrefix(name, "'file:") || strings.HasPrefix(name, "'http") {
-		o.linked++
 		return nil
 	}
 	for _, s := range w.Sheets {
@@ -102,16 +101,14 @@ func (o *odsReader) tableRow() error {
 		row := cells
 		if number > first {
 			row = slices.Clone(cells)
-			for range row {
-				if err := o.count(); err != nil {
+			for i := range row {
+				row[i].Row = number
+				if err := o.again(true); err != nil {
 					return err
 				}
 			}
-			for i := range row {
-				row[i].Row = number
-			}
 		}
-		if err := o.count(); err != nil {
+		if err := o.again(number > first); err != nil {
 			return err
 		}
 		o.sheet.Rows = append(o.sheet.Rows, Row{Number: number, Hidden: hidden, Cells: row})
@@ -129,4 +126,20 @@ func (o *odsReader) defaultStyle(col int) string {
 		return o.spans[i].style
 	}
 	return ""
+}
+
+// maxRepeats is how many cells and rows may stand in a file once and count many times: a small file could else fill the memory.
+const maxRepeats = 1 << 20
+
+// again counts a cell or row; repeated says that it stands in the file only once, further in front.
+func (o *odsReader) again(repeated bool) error {
+	if repeated {
+		if o.repeats++; o.repeats > maxRepeats {
+			return &BoundError{
+				Part: o.x.part, Found: "more than 1048576 cells that repeat others", Bound: "at most so many",
+				Do: "take out what is not readings, or split the file",
+			}
+		}
+	}
+	return o.count()
 }
