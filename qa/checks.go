@@ -12,65 +12,174 @@ import (
 // Common practice, no source.
 const farReadingP = 0.01
 
-// checkSamples looks at the readings for what a reader of the verdict must know.
-func (c *comparison) checkSamples(ref, cand Series, x, y []float64, sx, sy stats.Summary) {
-	c.Checks.Reference = c.checkOne(Reference, ref, x, sx)
-	c.Checks.Candidate = c.checkOne(Candidate, cand, y, sy)
+// fewestToJudge is the number of readings from which a far one can be told from rounding. Common practice, no source.
+const fewestToJudge = 5
+
+// notNormalP is the p-value of Shapiro and Wilk's test below which a lot is said not to look normal (contract: result).
+const notNormalP = 0.01
+
+// driftP is the p-value of the runs test below which a lot is said to drift or jump. Common practice, no source.
+const driftP = 0.01
+
+// cutOffP is the p-value below which a lot is said to end sharply at a limit. Common practice, no source.
+const cutOffP = 0.01
+
+// mostForShapiro is the most readings Royston's approximation holds for (Royston 1995, AS R94).
+const mostForShapiro = 5000
+
+// checkSamples looks at the readings for what a reader of the verdict must know. It decides nothing.
+func (c *comparison) checkSamples() {
+	ref, cand := c.ref, c.cand
+	c.Checks.Reference, c.Checks.Candidate = c.checkOne(ref), c.checkOne(cand)
 	for _, s := range []struct {
 		side Side
 		SampleChecks
 	}{{Reference, c.Checks.Reference}, {Candidate, c.Checks.Candidate}} {
-		smaller := math.Min(sx.SD, sy.SD)
-		if s.Resolution != nil && sx.N > 1 && sy.N > 1 && *s.Resolution > smaller {
+		smaller := math.Min(ref.summary.SD, cand.summary.SD)
+		if s.Resolution != nil && ref.summary.N > 1 && cand.summary.N > 1 && *s.Resolution > smaller {
 			c.warn(WarnCoarse, s.side, "checks."+string(s.side)+".resolution",
 				fmt.Sprintf("The readings step by %s, more than the smaller standard deviation: the gauge resolves too little to see the spread.", Plain(*s.Resolution)))
 		}
 	}
-	if len(x) == len(y) && len(x) > 2 {
-		a, b := slices.Clone(x), slices.Clone(y)
+	if len(ref.values) == len(cand.values) && len(ref.values) > 2 {
+		a, b := slices.Clone(ref.values), slices.Clone(cand.values)
 		slices.Sort(a)
 		slices.Sort(b)
 		if slices.Equal(a, b) {
 			c.warn(WarnIdentical, "", "difference", "Both lots hold the same readings: a copy is likelier than chance. Check the file.")
 		}
 	}
+	if c.Method == "paired" {
+		c.checkDifferences()
+	}
 }
 
-func (c *comparison) checkOne(side Side, s Series, x []float64, sum stats.Summary) SampleChecks {
+func (c *comparison) checkOne(s sample) SampleChecks {
 	var out SampleChecks
+	n := s.summary.N
 	switch {
-	case sum.N >= 2 && sum.Constant():
-		c.warn(WarnNoVariation, side, string(side)+".sd", fmt.Sprintf("All %d readings of the %s lot are equal.", sum.N, side))
-	case sum.N >= 2 && sum.N < 5:
+	case n >= 2 && s.summary.Constant():
+		c.warn(WarnNoVariation, s.side, string(s.side)+".sd", fmt.Sprintf("All %d readings of the %s lot are equal.", n, s.side))
+	case n >= 2 && n < 5:
 		// Common practice, no source: below five readings neither spread nor shape can be judged.
-		c.warn(WarnFew, side, string(side)+".n", fmt.Sprintf("Only %d readings in the %s lot: the verdict rests on the assumption of a normal distribution, which so few cannot show.", sum.N, side))
+		c.warn(WarnFew, s.side, string(s.side)+".n", fmt.Sprintf("Only %d readings in the %s lot: the verdict rests on the assumption of a normal distribution, which so few cannot show.", n, s.side))
 	}
-	places := 0
-	used := s.used()
-	for _, r := range used {
-		places = max(places, r.Decimals)
-	}
-	if step := stats.Resolution(x, places); step > 0 {
+	if step := stats.Resolution(s.values, max(0, written(s))); step > 0 {
 		out.Resolution = &step
 	}
-	if g, err := stats.GrubbsTest(x); err == nil && finite(g.G, g.P) {
-		r := used[g.Index]
-		out.Grubbs = &GrubbsResult{G: g.G, P: g.P, Cell: r.Source.Place()}
-		if g.P < farReadingP {
-			c.warn(WarnFarReading, side, "checks."+string(side)+".grubbs",
-				fmt.Sprintf("One far reading: %s in %s (Grubbs p %s). It is used; no reading is left out because of its size alone.", r.Source.Text, r.Source.Place(), FormatP(g.P)))
+	x := s.values
+	if c.Method == "log" {
+		var ok bool
+		if x, ok = s.logarithms(); !ok {
+			c.warn(WarnNotPositive, s.side, "equivalence", fmt.Sprintf("A reading of the %s lot is not above 0: it has no logarithm, and nothing is tested.", s.side))
+			return out
 		}
 	}
+	c.shape(s, x, &out)
+	c.order(s, x, &out)
+	c.cutOff(s)
 	return out
 }
 
-// checkMarginWidth warns of a margin that reaches beyond the whole tolerance: it could never refute anything that matters.
-func (c *comparison) checkMarginWidth(ch Characteristic) {
-	width, ok := ch.Tolerance()
+// shape asks whether the readings look normal and which lie far from the others.
+func (c *comparison) shape(s sample, x []float64, out *SampleChecks) {
+	path := "checks." + string(s.side)
+	if len(x) > mostForShapiro {
+		c.warn(WarnNotComputable, s.side, path+".shapiro_wilk", fmt.Sprintf("Shapiro and Wilk's test holds for at most %d readings and is left out.", mostForShapiro))
+	} else if w, err := stats.ShapiroWilk(x); err == nil && finite(w.W, w.P) {
+		out.ShapiroWilk = &ShapiroWilkResult{W: w.W, P: w.P}
+		if w.P < notNormalP {
+			c.warn(WarnNotNormal, s.side, path+".shapiro_wilk", fmt.Sprintf("The readings of the %s lot do not look normal (Shapiro–Wilk p %s). The means are judged all the same; what lies outside the limits is estimated less surely. No method is switched because of it.", s.side, FormatP(w.P)))
+		}
+	}
+	if g, err := stats.GrubbsTest(x); err == nil && finite(g.G, g.P) {
+		r := s.used[g.Index]
+		out.Grubbs = &GrubbsResult{G: g.G, P: g.P, Cell: r.Source.Place()}
+		if g.P < farReadingP && len(x) >= fewestToJudge {
+			c.warn(WarnFarReading, s.side, path+".grubbs",
+				fmt.Sprintf("One far reading: %s in %s (Grubbs p %s). It is used; no reading is left out because of its size alone.", r.Source.Text, r.Source.Place(), FormatP(g.P)))
+		}
+	}
+	out.ESDOutliers = []string{}
+	if steps, found, err := stats.GeneralizedESD(x, stats.ESDSought(len(x)), esdAlpha); err == nil {
+		for _, step := range steps[:found] {
+			out.ESDOutliers = append(out.ESDOutliers, s.used[step.Index].Source.Place())
+			out.outlying = append(out.outlying, step.Index)
+		}
+	}
+}
+
+// esdAlpha is the alpha of the generalized ESD test (contract: result, "Definitions").
+const esdAlpha = 0.05
+
+// order asks whether the readings drift: in the order column where there is one, else in the order of the file.
+func (c *comparison) order(s sample, x []float64, out *SampleChecks) {
+	path := "checks." + string(s.side)
+	if r, err := stats.RunsTest(x); err == nil && finite(r.P) {
+		out.Runs = &RunsResult{Runs: r.Runs, P: r.P}
+		if r.P < driftP {
+			c.warn(WarnDrift, s.side, path+".runs", fmt.Sprintf("The readings of the %s lot are not in random order (runs about the median p %s): a drift or a jump makes the interval too narrow, and a claim about the process unsafe.", s.side, FormatP(r.P)))
+		}
+	}
+	if l, err := stats.Lag1(x); err == nil && finite(l) {
+		out.Lag1 = &l
+		if n := float64(len(x)); len(x) >= 20 && math.Abs(l) > 3/math.Sqrt(n) { // three standard errors of a lag-1 correlation of independent readings
+			c.warn(WarnLag, s.side, path+".lag1", fmt.Sprintf("Neighbouring readings of the %s lot are alike (correlation %s): as far as that goes they count as about %s readings, not %d.", s.side, Fixed(l, 2), Fixed(stats.EffectiveN(len(x), l), 0), len(x)))
+		}
+	}
+}
+
+// cutOff asks whether a lot ends sharply at a specification limit, as one does that was sorted.
+func (c *comparison) cutOff(s sample) {
+	for _, l := range []struct {
+		limit *float64
+		upper bool
+		name  string
+	}{{c.ch.Lower, false, "lower"}, {c.ch.Upper, true, "upper"}} {
+		if l.limit == nil {
+			continue
+		}
+		if k, err := stats.CutOffAt(s.values, s.summary, *l.limit, l.upper); err == nil && k.P < cutOffP {
+			c.warn(WarnCutOff, s.side, string(s.side), fmt.Sprintf("The readings of the %s lot end sharply at the %s limit (%d just inside, %d just beyond): a lot that was sorted does not represent the process.", s.side, l.name, k.Inside, k.Beyond))
+		}
+	}
+}
+
+// checkDifferences holds the checks of the pairs' differences, which a paired test rests on.
+func (c *comparison) checkDifferences() {
+	d := c.pairDifferences()
+	s := sample{values: d, used: c.cand.used, summary: stats.Summarize(d)}
+	out := &SampleChecks{}
+	if w, err := stats.ShapiroWilk(d); err == nil && finite(w.W, w.P) {
+		out.ShapiroWilk = &ShapiroWilkResult{W: w.W, P: w.P}
+	}
+	if g, err := stats.GrubbsTest(d); err == nil && finite(g.G, g.P) {
+		out.Grubbs = &GrubbsResult{G: g.G, P: g.P, Cell: s.used[g.Index].Source.Place()}
+	}
+	if r, err := stats.RunsTest(d); err == nil && finite(r.P) {
+		out.Runs = &RunsResult{Runs: r.Runs, P: r.P}
+	}
+	if l, err := stats.Lag1(d); err == nil && finite(l) {
+		out.Lag1 = &l
+	}
+	c.Checks.Difference = out
+}
+
+// checkMargin warns of a margin that reaches beyond the whole tolerance, that rests on the sample it judges, or that keeps a
+// Ppk without asking for the spread.
+func (c *comparison) checkMargin() {
+	if c.margin.fromSample {
+		c.warn(WarnMarginFromSample, "", "equivalence.margin_lower", "The margin rests on the reference sample itself: good for planning, no verdict is given. State the standard deviation (and for keep_ppk the mean) beforehand.")
+	}
+	if c.margin.stated.Kind == "keep_ppk" && c.asked.spreadRatio == nil {
+		c.warn(WarnSpreadNotAsked, "", "spread.verdict", "The margin keeps a Ppk at the stated standard deviation; without spread_ratio a wider candidate is not noticed.")
+	}
+	width, ok := c.ch.Tolerance()
 	if !ok {
 		return
 	}
-	for _, end := range []*float64{c.margin.lower, c.margin.upper} {
+	lower, upper := c.margin.ends(c.ref.summary.Mean)
+	for _, end := range []*float64{lower, upper} {
 		if end != nil && math.Abs(*end) > width {
 			c.warn(WarnMarginTolerance, "", "equivalence.margin_upper", "The margin is wider than the whole tolerance.")
 			return
@@ -80,13 +189,14 @@ func (c *comparison) checkMarginWidth(ch Characteristic) {
 
 // checkUncertainty warns where the stated uncertainty of the measuring systems' bias comes near the margin: margin below
 // twice the standard uncertainty of the difference (contract: result).
-func (c *comparison) checkUncertainty(ch Characteristic) {
-	u := ch.Uncertainty
+func (c *comparison) checkUncertainty() {
+	u := c.ch.Uncertainty
 	if u == nil {
 		return
 	}
 	combined := math.Hypot(u.Reference, u.Candidate)
-	for _, end := range []*float64{c.margin.lower, c.margin.upper} {
+	lower, upper := c.margin.ends(c.ref.summary.Mean)
+	for _, end := range []*float64{lower, upper} {
 		if end != nil && math.Abs(*end) < 2*combined {
 			c.warn(WarnUncertainty, "", "equivalence.margin_upper",
 				fmt.Sprintf("The margin is less than twice the standard uncertainty of the difference (%s): the gauges themselves may make or hide a difference of this size.", Plain(combined)))
@@ -95,33 +205,15 @@ func (c *comparison) checkUncertainty(ch Characteristic) {
 	}
 }
 
-func (c *comparison) spread(ref, cand stats.Summary) {
-	s := &SpreadResult{Verdict: "not asked"}
-	level := 1 - 2*c.Alpha
-	v, err := stats.FRatio(ref, cand, level)
-	if err != nil || !finite(v.SDRatio, v.F, v.P, v.Interval.Lower, v.Interval.Upper) {
-		// The reason stands in the warnings of the samples: too few readings, or no variation.
-		c.warn(WarnNotComputable, "", "spread", "The ratio of standard deviations needs two readings and some variation in each lot.")
-		c.Spread = s
+func (c *comparison) performance() {
+	if c.ch.Lower == nil && c.ch.Upper == nil || c.ref.summary.N == 0 || c.cand.summary.N == 0 {
 		return
 	}
-	s.SDRatio, s.Level, s.Lower, s.Upper = &v.SDRatio, &level, &v.Interval.Lower, &v.Interval.Upper
-	s.F = &FResult{Statistic: v.F, DF1: v.DF1, DF2: v.DF2, P: max(v.P, smallestP)}
-	if v.P < smallestP {
-		c.warn(WarnPBelowRange, "", "spread.f.p", "The p-value is below 1e-300 and is given as 1e-300.")
-	}
-	c.Spread = s
+	c.Performance = &PerformanceResult{Reference: c.lotPerformance(c.ref), Candidate: c.lotPerformance(c.cand)}
 }
 
-func (c *comparison) performance(ch Characteristic, x, y []float64, sx, sy stats.Summary) {
-	if ch.Lower == nil && ch.Upper == nil || sx.N == 0 || sy.N == 0 {
-		return
-	}
-	c.Performance = &PerformanceResult{Reference: c.lotPerformance(ch, x, sx), Candidate: c.lotPerformance(ch, y, sy)}
-}
-
-func (c *comparison) lotPerformance(ch Characteristic, x []float64, sum stats.Summary) LotPerformance {
-	p := stats.Performance(x, sum, ch.Lower, ch.Upper)
+func (c *comparison) lotPerformance(s sample) LotPerformance {
+	p := stats.Performance(s.values, s.summary, c.ch.Lower, c.ch.Upper)
 	out := LotPerformance{OutsideCounted: p.OutsideCounted}
 	if p.HasPp && finite(p.Pp) {
 		out.Pp = &p.Pp

@@ -44,6 +44,9 @@ func Compare(plan Plan, readings Readings, run Run) (Result, error) {
 		r.Warnings = append(r.Warnings, Warning{Code: WarnGauges, Text: "The lots were measured with different gauges (" + g.GaugeReference +
 			"; " + g.GaugeCandidate + "): a difference between the gauges is part of every difference shown."})
 	}
+	if plan.Criterion.SecondSample == "one" {
+		r.Warnings = append(r.Warnings, Warning{Code: WarnSecondSample, Text: "The plan allows one enlargement of the sample: each of the two looks is held against half of the alpha stated."})
+	}
 	r.Verdict = overall(r.Characteristics)
 	r.Sentence = Sentence(r)
 	return r, nil
@@ -64,7 +67,10 @@ func unread(ledger []Entry) []UnreadResult {
 // comparison gathers one characteristic's result and its warnings while it is made.
 type comparison struct {
 	Comparison
-	margin tested
+	ch        Characteristic
+	asked     asked
+	margin    tested
+	ref, cand sample
 }
 
 func (c *comparison) warn(code string, side Side, path, text string) {
@@ -73,39 +79,50 @@ func (c *comparison) warn(code string, side Side, path, text string) {
 
 func compareOne(plan Plan, ch Characteristic, ref, cand Series) (Comparison, error) {
 	a := plan.askedOf(ch)
-	c := &comparison{Comparison: Comparison{
+	c := &comparison{ch: ch, asked: a, Comparison: Comparison{
 		Name: ch.Name, Unit: ch.Unit, Kind: "numeric", Limits: Limits{Lower: ch.Lower, Target: ch.Target, Upper: ch.Upper},
 		Objective: a.objective, Alpha: a.alpha, Method: a.method, Warnings: []Warning{},
 	}}
+	c.ref, c.cand = newSample(Reference, ref, ref.used()), newSample(Candidate, cand, cand.used())
+	if a.method == "paired" {
+		if err := c.match(ref, cand); err != nil {
+			return Comparison{}, err
+		}
+	}
 	if a.margin != nil {
-		t, err := a.margin.resolve(ch, a.objective, a.guard)
+		t, err := a.margin.resolve(ch, a, c.ref.summary)
 		if err != nil {
 			return Comparison{}, err
 		}
 		c.margin = t
-		c.margin.stated.Reason, c.margin.stated.ApprovedBy = a.margin.Reason, a.margin.ApprovedBy
-		c.checkMarginWidth(ch)
+		c.checkMargin()
 	} else if a.objective.AgainstMargin() {
 		return Comparison{}, fmt.Errorf("margin of %q: found none, want one for the objective %s; state it under [criterion] or in the characteristic", ch.Name, a.objective)
 	}
-	x, y := ref.Values(), cand.Values()
-	sx, sy := stats.Summarize(x), stats.Summarize(y)
-	c.Reference, c.Candidate = c.sample(Reference, ref, sx), c.sample(Candidate, cand, sy)
+	c.Reference, c.Candidate = c.sample(c.ref), c.sample(c.cand)
 	c.Decimals = Decimals(ch, ref, cand)
-	c.checkSamples(ref, cand, x, y, sx, sy)
-	c.test(ch, sx, sy)
-	c.spread(sx, sy)
-	c.performance(ch, x, y, sx, sy)
+	c.checkSamples()
+	c.groups()
+	if err := c.test(); err != nil {
+		return Comparison{}, err
+	}
+	c.spread()
+	c.performance()
+	c.ranks()
+	c.otherMethods(ref, cand)
 	c.decide(ref, cand)
-	c.checkUncertainty(ch)
+	c.nonDetects(plan, ch, ref, cand)
+	c.absence()
+	c.checkUncertainty()
 	return c.Comparison, nil
 }
 
 // sample describes one lot's readings.
-func (c *comparison) sample(side Side, s Series, sum stats.Summary) SampleResult {
+func (c *comparison) sample(from sample) SampleResult {
+	side, s, sum := from.side, from.series, from.summary
 	parts := map[[2]string]bool{} // a part's id counts within its group
 	unnamed := 0
-	for _, r := range s.used() {
+	for _, r := range from.used {
 		if r.Part == "" {
 			unnamed++
 			continue
@@ -114,7 +131,7 @@ func (c *comparison) sample(side Side, s Series, sum stats.Summary) SampleResult
 	}
 	out := SampleResult{
 		Rows: s.Rows, Parts: len(parts) + unnamed, N: sum.N, Excluded: s.Excluded(),
-		Missing: s.Missing, NonDetects: s.NonDetects, Unread: s.Unread, Repeats: s.Repeats,
+		Missing: s.Missing, NonDetects: s.NonDetects, Unread: s.Unread, Repeats: s.Repeats, Unmatched: len(s.used()) - sum.N,
 	}
 	if sum.N == 0 {
 		return out
@@ -149,8 +166,8 @@ func (c *comparison) pValue(p float64, path string) *float64 {
 	return c.number(p, path)
 }
 
-// test fills difference and equivalence: Welch's estimate, its test and its intervals.
-func (c *comparison) test(ch Characteristic, ref, cand stats.Summary) {
+// test fills difference and equivalence: the estimate by the method asked, its tests and its intervals.
+func (c *comparison) test() error {
 	d := &c.Difference
 	d.Alternative = "two-sided"
 	switch c.Objective {
@@ -159,33 +176,30 @@ func (c *comparison) test(ch Characteristic, ref, cand stats.Summary) {
 	case Higher:
 		d.Alternative = "higher"
 	}
-	if a := c.margin; a.stated.Kind != "" {
-		e := &EquivalenceResult{Scale: "difference", Margin: a.stated, MarginLower: a.lower, MarginUpper: a.upper, Verdict: Undecided}
+	ref, cand := c.ref.summary, c.cand.summary
+	if m := c.margin; m.stated.Kind != "" {
+		e := &EquivalenceResult{Scale: m.scale, Margin: m.stated, MarginLower: m.lower, MarginUpper: m.upper, Verdict: Undecided}
 		if ref.N > 1 {
-			e.Permits = permits(ch, a, ref.Mean, ref.SD)
+			e.Permits = permits(c.ch, m, ref.Mean, ref.SD)
 		}
 		c.Equivalence = e
 	}
 	if ref.N > 0 && cand.N > 0 {
 		d.Estimate = c.number(cand.Mean-ref.Mean, "difference.estimate")
-		if c.Equivalence != nil {
+		if c.Equivalence != nil && c.margin.scale == scaleDifference {
 			c.Equivalence.Estimate = d.Estimate
 		}
 	}
-	est, err := stats.Welch(ref, cand)
+	est, err := c.estimate()
 	if err != nil || !finite(est.Value, est.SE, est.DF) {
-		switch {
-		case errors.Is(err, stats.ErrTooFew):
-			c.warn(WarnTooFew, "", "difference", "A test needs at least two readings in each lot.")
-		case errors.Is(err, stats.ErrConstant):
-			c.warn(WarnNoVariation, "", "difference", "The readings of both lots are constant to within rounding: there is no standard error, no test and no interval.")
-		default:
-			c.warn(WarnNotComputable, "", "difference", "The difference lies outside the range of the arithmetic; no test was made.")
+		c.testFailed(err)
+		if c.margin.scale != scaleShift {
+			return nil
 		}
-		return
+	} else {
+		c.difference(est)
 	}
-	c.difference(est)
-	c.equivalence(est)
+	return c.equivalence(est)
 }
 
 func finite(vs ...float64) bool {
@@ -220,60 +234,14 @@ func (c *comparison) difference(est stats.Estimate) {
 	c.Detectable = d.PTwoSided != nil && *d.PTwoSided < c.Alpha
 }
 
-func (c *comparison) equivalence(est stats.Estimate) {
-	e := c.Equivalence
-	if e == nil {
-		return
-	}
-	low, high := math.Inf(-1), math.Inf(1)
-	if e.MarginLower != nil {
-		low = *e.MarginLower
-	}
-	if e.MarginUpper != nil {
-		high = *e.MarginUpper
-	}
-	t := stats.TwoOneSided(est, low, high, c.Alpha)
-	e.Estimate, e.SE, e.DF = &est.Value, &est.SE, &est.DF
-	level := 1 - 2*c.Alpha
-	e.Level = &level
-	e.Lower, e.Upper = c.number(t.Interval.Lower, "equivalence.lower"), c.number(t.Interval.Upper, "equivalence.upper")
-	if e.MarginLower != nil {
-		e.TLower, e.PLower = c.number(t.TLower, "equivalence.t_lower"), c.pValue(t.PLower, "equivalence.p_lower")
-		e.P = e.PLower
-	}
-	if e.MarginUpper != nil {
-		e.TUpper, e.PUpper = c.number(t.TUpper, "equivalence.t_upper"), c.pValue(t.PUpper, "equivalence.p_upper")
-		if e.P == nil || e.PUpper != nil && *e.PUpper > *e.P {
-			e.P = e.PUpper
-		}
-	}
-	if e.Lower == nil || e.Upper == nil {
-		return
-	}
-	smallest := math.Max(math.Abs(*e.Lower), math.Abs(*e.Upper))
-	switch c.Objective {
-	case NotLower:
-		smallest = math.Max(0, -*e.Lower)
-	case NotHigher:
-		smallest = math.Max(0, *e.Upper)
-	}
-	smallest += e.Margin.Guard
-	e.SmallestMargin = &smallest
-	if c.Objective.AgainstMargin() {
-		e.Verdict = againstMargin(c.Objective, *e.Lower, *e.Upper, e.MarginLower, e.MarginUpper)
-	} else {
-		e.Verdict = againstMargin(Equivalence, *e.Lower, *e.Upper, e.MarginLower, e.MarginUpper)
-	}
-}
-
-// decide gives the characteristic's verdict. Cells that could not be read, and non-detects without a rule, stop it whatever
-// the interval: a verdict on part of the readings would be a silent choice.
+// decide gives the characteristic's verdict. Cells that could not be read stop it whatever the interval: a verdict on part of
+// the readings would be a silent choice.
 func (c *comparison) decide(ref, cand Series) {
 	switch {
 	case c.Objective.AgainstMargin():
 		c.Verdict = Undecided
 		if c.Equivalence != nil {
-			c.Verdict = c.Equivalence.Verdict
+			c.Verdict = c.withSpread(c.Equivalence.Verdict)
 		}
 	case c.Difference.P == nil:
 		c.Verdict = Undecided
@@ -285,9 +253,10 @@ func (c *comparison) decide(ref, cand Series) {
 	if n := ref.Unread + cand.Unread; n > 0 {
 		c.undecided(WarnUnread, fmt.Sprintf("%s that could not be read as a number: undecided until each is corrected, or left out with a reason under exclude.", Count(n, "cell", "cells")))
 	}
-	if n := ref.NonDetects + cand.NonDetects; n > 0 {
-		c.undecided(WarnNonDetects, fmt.Sprintf("%s below or above a detection limit: what such a cell counts as is not settled, so nothing is decided.", Count(n, "cell", "cells")))
-	}
+}
+
+// absence warns that no difference shown shows nothing.
+func (c *comparison) absence() {
 	if c.Verdict == NoDifference {
 		c.warn(WarnAbsence, "", "verdict", "No difference shown is not evidence that there is none: state a margin to show equivalence.")
 	}

@@ -43,6 +43,9 @@ type asked struct {
 	method    string
 	margin    *Margin
 	guard     float64
+
+	spreadRatio *float64
+	grouped     bool // sub-lots are random: the group means are what is tested
 }
 
 // askedOf merges the plan's criterion with what the characteristic overrides.
@@ -59,6 +62,9 @@ func (p Plan) askedOf(c Characteristic) asked {
 			a.alpha = *v
 		}
 	}
+	if p.Criterion.SecondSample == "one" {
+		a.alpha /= 2 // each of the two looks has half (Bonferroni)
+	}
 	for _, v := range []*float64{p.Criterion.Guard, c.Guard} {
 		if v != nil {
 			a.guard = *v
@@ -73,6 +79,11 @@ func (p Plan) askedOf(c Characteristic) asked {
 	if c.Margin != nil {
 		a.margin = c.Margin
 	}
+	a.spreadRatio = p.Criterion.SpreadRatio
+	if c.SpreadRatio != nil {
+		a.spreadRatio = c.SpreadRatio
+	}
+	a.grouped = p.Criterion.Groups == "random" || p.Criterion.Claim == "sources"
 	return a
 }
 

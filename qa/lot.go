@@ -29,6 +29,8 @@ type Series struct {
 	Unread         int       `json:"unread"`                    // cells that hold something that is not a number
 	ExcludedUnread int       `json:"excluded_unread,omitempty"` // left out by the plan without having been a number
 	Repeats        int       `json:"repeats,omitempty"`         // repeat readings beyond the first of each part, averaged into it
+
+	NonDetected []NonDetect `json:"non_detected,omitempty"` // every cell below or above a limit, also those that count as a reading
 }
 
 // Of returns the lot's series of the named characteristic.

@@ -29,10 +29,11 @@ func (s Source) String() string { return s.File + "!" + s.Place() }
 type Reading struct {
 	Value    float64 `json:"value"` // finite
 	Source   Source  `json:"source"`
-	Part     string  `json:"part,omitempty"` // the part's id as written, empty where the file has none
-	Decimals int     `json:"decimals"`       // decimals written in the cell, for the resolution
+	Part     string  `json:"part,omitempty"`  // the part's id as written, empty where the file has none
+	Decimals int     `json:"decimals"`        // decimals written in the cell, for the resolution
 	Group    string  `json:"group,omitempty"` // the sub-lot, as written
 	Order    string  `json:"order,omitempty"` // when or as which it was measured, as stored
+	Pair     string  `json:"pair,omitempty"`  // the id that its partner in the other lot has, as written
 	LeftOut  string  `json:"left_out,omitempty"`
 }
 

@@ -58,23 +58,25 @@ type LotResult struct {
 
 // Comparison is the result for one characteristic. All values are in its unit.
 type Comparison struct {
-	Name        string             `json:"name"`
-	Unit        string             `json:"unit"`
-	Kind        string             `json:"kind"`
-	Limits      Limits             `json:"limits"`
-	Objective   Objective          `json:"objective"`
-	Alpha       float64            `json:"alpha"`
-	Method      string             `json:"method"`
-	Reference   SampleResult       `json:"reference"`
-	Candidate   SampleResult       `json:"candidate"`
-	Difference  DifferenceResult   `json:"difference"`
-	Equivalence *EquivalenceResult `json:"equivalence,omitempty"`
-	Verdict     Verdict            `json:"verdict"`
-	Detectable  bool               `json:"detectable"` // two-sided p below alpha; never replaces the verdict
-	Spread      *SpreadResult      `json:"spread,omitempty"`
-	Checks      Checks             `json:"checks"`
-	Performance *PerformanceResult `json:"performance,omitempty"`
-	Warnings    []Warning          `json:"warnings"`
+	Name        string              `json:"name"`
+	Unit        string              `json:"unit"`
+	Kind        string              `json:"kind"`
+	Limits      Limits              `json:"limits"`
+	Objective   Objective           `json:"objective"`
+	Alpha       float64             `json:"alpha"`
+	Method      string              `json:"method"`
+	Reference   SampleResult        `json:"reference"`
+	Candidate   SampleResult        `json:"candidate"`
+	Difference  DifferenceResult    `json:"difference"`
+	Equivalence *EquivalenceResult  `json:"equivalence,omitempty"`
+	Verdict     Verdict             `json:"verdict"`
+	Detectable  bool                `json:"detectable"` // two-sided p below alpha; never replaces the verdict
+	Spread      *SpreadResult       `json:"spread,omitempty"`
+	Ranks       *RanksResult        `json:"ranks,omitempty"`
+	Checks      Checks              `json:"checks"`
+	Performance *PerformanceResult  `json:"performance,omitempty"`
+	Sensitivity []SensitivityResult `json:"sensitivity,omitempty"`
+	Warnings    []Warning           `json:"warnings"`
 
 	Decimals int `json:"-"` // decimals to show; not part of the result
 }
@@ -96,7 +98,8 @@ type SampleResult struct {
 	Missing    int      `json:"missing"`
 	NonDetects int      `json:"non_detects"`
 	Unread     int      `json:"unread"`
-	Repeats    int      `json:"repeats,omitempty"` // repeat readings beyond the first of each part
+	Unmatched  int      `json:"unmatched,omitempty"` // paired: without a partner in the other lot
+	Repeats    int      `json:"repeats,omitempty"`   // repeat readings beyond the first of each part
 	Mean       *float64 `json:"mean"`
 	SD         *float64 `json:"sd"` // nil for fewer than two readings
 	Min        *float64 `json:"min"`
@@ -127,6 +130,8 @@ type EquivalenceResult struct {
 	Estimate       *float64     `json:"estimate"`
 	SE             *float64     `json:"se"`
 	DF             *float64     `json:"df"`
+	DFLower        *float64     `json:"df_lower,omitempty"` // ratio of means: each end has its own
+	DFUpper        *float64     `json:"df_upper,omitempty"`
 	Margin         MarginResult `json:"margin"`
 	MarginLower    *float64     `json:"margin_lower"` // as tested, after the guard; nil where not asked
 	MarginUpper    *float64     `json:"margin_upper"`
@@ -153,6 +158,8 @@ type MarginResult struct {
 	Full        *float64 `json:"full,omitempty"`
 	Half        *float64 `json:"half,omitempty"`
 	Guard       float64  `json:"guard"`
+	Mean        *float64 `json:"mean,omitempty"` // keep_ppk: the mean and standard deviation it is kept at
+	SD          *float64 `json:"sd,omitempty"`
 	Reason      string   `json:"reason,omitempty"`
 	ApprovedBy  string   `json:"approved_by,omitempty"`
 }
@@ -170,7 +177,36 @@ type SpreadResult struct {
 	Lower   *float64 `json:"lower"`
 	Upper   *float64 `json:"upper"`
 	F       *FResult `json:"f,omitempty"`
-	Verdict string   `json:"verdict"`
+
+	Bonett       *IntervalResult     `json:"bonett,omitempty"`        // robust to shape (Bonett 2006)
+	PitmanMorgan *PitmanMorganResult `json:"pitman_morgan,omitempty"` // paired: in the place of F
+	Asked        *float64            `json:"asked,omitempty"`         // the largest acceptable ratio
+	Verdict      SpreadVerdict       `json:"verdict"`
+}
+
+// SpreadVerdict says whether the ratio of standard deviations is acceptable.
+type SpreadVerdict string
+
+// The verdicts on the spread.
+const (
+	SpreadAcceptable    SpreadVerdict = "acceptable"
+	SpreadNotAcceptable SpreadVerdict = "not acceptable"
+	SpreadUndecided     SpreadVerdict = "undecided"
+	SpreadNotAsked      SpreadVerdict = "not asked"
+)
+
+// IntervalResult is an interval with its level.
+type IntervalResult struct {
+	Level float64 `json:"level"`
+	Lower float64 `json:"lower"`
+	Upper float64 `json:"upper"`
+}
+
+// PitmanMorganResult is the test of equal spread of the same parts in two lots (Pitman 1939, Morgan 1939).
+type PitmanMorganResult struct {
+	T  float64 `json:"t"`
+	DF float64 `json:"df"`
+	P  float64 `json:"p"`
 }
 
 // FResult is the variance ratio, candidate over reference; the p-value is two-sided, twice the smaller tail.
@@ -183,14 +219,33 @@ type FResult struct {
 
 // Checks are looks at the readings that decide nothing.
 type Checks struct {
-	Reference SampleChecks `json:"reference"`
-	Candidate SampleChecks `json:"candidate"`
+	Reference  SampleChecks  `json:"reference"`
+	Candidate  SampleChecks  `json:"candidate"`
+	Difference *SampleChecks `json:"difference,omitempty"` // paired: of the differences
 }
 
 // SampleChecks are the checks of one lot's readings.
 type SampleChecks struct {
-	Grubbs     *GrubbsResult `json:"grubbs,omitempty"`
-	Resolution *float64      `json:"resolution,omitempty"`
+	ShapiroWilk *ShapiroWilkResult `json:"shapiro_wilk,omitempty"`
+	Grubbs      *GrubbsResult      `json:"grubbs,omitempty"`
+	ESDOutliers []string           `json:"esd_outliers,omitempty"` // cells, by the generalized ESD test (Rosner 1983)
+	Runs        *RunsResult        `json:"runs,omitempty"`
+	Lag1        *float64           `json:"lag1,omitempty"` // correlation of neighbouring readings
+	Resolution  *float64           `json:"resolution,omitempty"`
+
+	outlying []int // of ESDOutliers, places among the readings used
+}
+
+// ShapiroWilkResult is Shapiro and Wilk's test of a normal distribution (Royston 1995, AS R94).
+type ShapiroWilkResult struct {
+	W float64 `json:"w"`
+	P float64 `json:"p"`
+}
+
+// RunsResult counts the runs about the median; equal readings are left out, the p-value is exact.
+type RunsResult struct {
+	Runs int     `json:"runs"`
+	P    float64 `json:"p"`
 }
 
 // GrubbsResult is Grubbs' test of the farthest reading, two-sided (Grubbs 1969).

@@ -53,8 +53,10 @@ func differenceSentence(c Comparison) string {
 }
 
 func marginSentence(c Comparison, e *EquivalenceResult) string {
-	if c.Verdict == Undecided && againstMargin(c.Objective, *e.Lower, *e.Upper, e.MarginLower, e.MarginUpper) != Undecided {
+	if of := againstMargin(c.Objective, *e.Lower, *e.Upper, e.MarginLower, e.MarginUpper); c.Verdict == Undecided && of != Undecided {
 		return "No verdict is given; see the findings."
+	} else if of != e.Verdict {
+		return "The verdict rests on the bounds of the non-detects; see the findings."
 	}
 	if c.Objective != Equivalence {
 		side, bound := "below", MarginText(c)

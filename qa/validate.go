@@ -45,11 +45,12 @@ func (p Plan) Validate() []PlanFault {
 		}
 		names[c.Name] = true
 		v.characteristic(key, c)
-		v.asked(key, p.askedOf(c))
+		v.asked(key, p, c)
 	}
 	if len(p.Characteristics) == 0 {
-		v.asked("criterion", p.askedOf(Characteristic{}))
+		v.asked("criterion", p, Characteristic{})
 	}
+	v.family(p)
 	for i, s := range p.Signatures {
 		v.oneOf(fmt.Sprintf("signatures %d.meaning", i+1), s.Meaning, "prepared", "reviewed", "approved")
 	}
@@ -117,20 +118,16 @@ func (v *validator) lot(key string, l LotPlan) {
 	if l.File == "" {
 		v.fault(key+".file", "none", "the name of the file with the readings, relative to the plan", "name it")
 	}
-	v.only(key+".values", l.Values, []string{"absolute"}, []string{"deviation"})
+	v.oneOf(key+".values", l.Values, "absolute", "deviation")
 }
 
 func (v *validator) reading(r ReadingPlan) {
-	v.only("reading.layout", r.Layout, []string{"row-per-part"}, []string{"column-per-lot", "sheet-per-lot", "row-per-characteristic"})
+	v.oneOf("reading.layout", r.Layout, "row-per-part", "column-per-lot", "sheet-per-lot", "row-per-characteristic")
 	v.oneOf("reading.decimal", r.Decimal, ".", ",")
 	if r.HeaderRow < 0 {
 		v.fault("reading.header_row", fmt.Sprint(r.HeaderRow), "a row number from 1", "correct the plan")
 	}
-	for _, f := range [][2]string{{"reading.pair_column", r.PairColumn}, {"reading.group_column", r.GroupColumn}, {"reading.non_detect", r.NonDetect}} {
-		if f[1] != "" {
-			v.notYet(f[0], fmt.Sprintf("%q", f[1]), "it left out")
-		}
-	}
+	v.oneOf("reading.non_detect", r.NonDetect, NonDetectExclude, NonDetectLimit, NonDetectHalfLimit, NonDetectZero)
 	for i, e := range r.Exclude {
 		key := fmt.Sprintf("reading.exclude %d", i+1)
 		if strings.TrimSpace(e.Reason) == "" {
@@ -143,16 +140,17 @@ func (v *validator) reading(r ReadingPlan) {
 }
 
 func (v *validator) criterion(key string, c Criterion) {
-	v.only(key+".claim", c.Claim, []string{"lots"}, []string{"sources"})
-	v.only(key+".groups", c.Groups, []string{"none"}, []string{"random"})
+	v.oneOf(key+".claim", c.Claim, "lots", "sources")
+	v.oneOf(key+".groups", c.Groups, "none", "random")
 	v.oneOf(key+".overall", c.Overall, "all")
-	v.only(key+".second_sample", c.SecondSample, []string{"none"}, []string{"one"})
+	v.oneOf(key+".second_sample", c.SecondSample, "none", "one")
+	if c.Claim == "sources" && c.Groups == "none" {
+		v.fault(key+".groups", "none beside the claim sources", "random, which that claim implies", "leave groups out")
+	}
 	if c.Power != nil && !(*c.Power > 0 && *c.Power < 1) {
 		v.fault(key+".power", fmt.Sprint(*c.Power), "a number above 0 and below 1", "correct the plan")
 	}
-	if c.SpreadRatio != nil {
-		v.notYet(key+".spread_ratio", fmt.Sprint(*c.SpreadRatio), "it left out")
-	}
+	v.positive(key+".spread_ratio", c.SpreadRatio)
 	if c.Margin != nil {
 		v.margin(key+".margin", *c.Margin)
 	}
@@ -170,55 +168,11 @@ func (v *validator) characteristic(key string, c Characteristic) {
 	if c.Decimals != nil && (*c.Decimals < 0 || *c.Decimals > 12) {
 		v.fault(key+".decimals", fmt.Sprint(*c.Decimals), "0 to 12", "correct the plan")
 	}
-	if c.SpreadRatio != nil {
-		v.notYet(key+".spread_ratio", fmt.Sprint(*c.SpreadRatio), "it left out")
-	}
+	v.positive(key+".spread_ratio", c.SpreadRatio)
 	if u := c.Uncertainty; u != nil && !(u.Reference >= 0 && u.Candidate >= 0 && !math.IsInf(u.Reference+u.Candidate, 0)) {
 		v.fault(key+".uncertainty", fmt.Sprint(*u), "two standard uncertainties from 0", "correct the plan")
 	}
 	if c.Margin != nil {
 		v.margin(key+".margin", *c.Margin)
-	}
-}
-
-// asked checks what holds after the characteristic's own settings are merged with the criterion.
-func (v *validator) asked(key string, a asked) {
-	v.oneOf(key+".objective", string(a.objective), string(Equivalence), string(NotLower), string(NotHigher), string(Difference), string(Lower), string(Higher))
-	if !(a.alpha > 0 && a.alpha < 0.5) {
-		v.fault(key+".alpha", fmt.Sprint(a.alpha), "a number above 0 and below 0.5", "correct the plan")
-	}
-	v.only(key+".method", a.method, []string{"welch"}, []string{"pooled", "paired", "log"})
-	if !(a.guard >= 0) || math.IsInf(a.guard, 0) {
-		v.fault(key+".guard", fmt.Sprint(a.guard), "a number from 0 in the unit", "correct the plan")
-	}
-	if a.margin == nil && a.objective.AgainstMargin() {
-		v.fault(key+".margin", "none", fmt.Sprintf("a margin for the objective %s", a.objective), "state absolute, lower and upper, or tolerance_fraction")
-	}
-}
-
-func (v *validator) margin(key string, m Margin) {
-	kinds := m.Kinds()
-	if len(kinds) != 1 {
-		v.fault(key, orNone(kinds), "exactly one kind of margin", "state absolute, lower and upper, or tolerance_fraction")
-		return
-	}
-	switch kinds[0] {
-	case "absolute", "bounds", "tolerance_fraction":
-	default:
-		v.notYet(key, kinds[0], "absolute, lower and upper, or tolerance_fraction")
-	}
-	v.finite(key+".lower", m.Lower)
-	v.finite(key+".upper", m.Upper)
-	v.positive(key+".absolute", m.Absolute)
-	v.positive(key+".tolerance_fraction", m.ToleranceFraction)
-	if m.Lower != nil && m.Upper != nil && !(*m.Lower < *m.Upper) {
-		v.fault(key, fmt.Sprintf("lower = %v and upper = %v", *m.Lower, *m.Upper), "lower below upper", "correct the plan")
-	}
-	v.oneOf(key+".of", m.Of, "full", "half")
-	if m.Of != "" && m.ToleranceFraction == nil {
-		v.fault(key+".of", fmt.Sprintf("%q", m.Of), "it only beside tolerance_fraction", "remove it")
-	}
-	if m.Mean != nil || m.SD != nil {
-		v.fault(key, "mean or sd", "them only beside keep_ppk or sd_multiple", "remove them")
 	}
 }

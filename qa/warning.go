@@ -20,11 +20,26 @@ const (
 	WarnAbsence         = "absence-of-evidence"
 	WarnUnread          = "unread-cells"
 	WarnNonDetects      = "non-detects"
+	WarnFlips           = "verdict-flips"
 	WarnNotComputable   = "not-computable"
 	WarnGauges          = "different-gauges"
 	WarnUncertainty     = "margin-near-uncertainty"
 	WarnFarReading      = "far-reading"
 	WarnMarginTolerance = "margin-wider-than-tolerance"
+
+	WarnMarginFromSample = "margin-from-sample"
+	WarnSpreadNotAsked   = "spread-not-asked"
+	WarnSpreadNormal     = "spread-assumes-normal"
+	WarnRatioUndefined   = "ratio-undefined"
+	WarnNotPositive      = "not-positive"
+	WarnNotNormal        = "not-normal"
+	WarnUnmatched        = "unmatched"
+	WarnDrift            = "not-in-random-order"
+	WarnLag              = "neighbours-alike"
+	WarnCutOff           = "cut-off"
+	WarnSecondSample     = "second-sample"
+	WarnOneGroup         = "one-group"
+	WarnIndependence     = "assumes-independence"
 )
 
 // Has says whether a warning of the code is among w.
