@@ -132,13 +132,24 @@ func (m mixture) at(u float64) (weight, x, s float64) {
 	}
 	// Near s = 1 both differences are written so that they do not cancel.
 	e := math.Expm1(u)
-	square := e * (2 + e)
-	excess := square - 2*u
-	if !away(square) {
-		excess = logExcess(square, 1+square)
-	}
-	return m.lead * math.Exp(-m.df/2*excess), m.tau - m.delta + m.tau*e, 1 + e
+	return m.lead * math.Exp(-m.df/2*expExcess(2*u)), m.tau - m.delta + m.tau*e, 1 + e
 }
+
+// expExcess is e^y - 1 - y for y from -1 to 1, by its series.
+func expExcess(y float64) float64 {
+	terms := 18 // the next one is below 1e-17 of the sum
+	if math.Abs(y) < 0.25 {
+		terms = 12
+	}
+	sum := 0.0
+	for k := terms; k > 2; k-- {
+		sum = (1 + sum) * y * inverse[k]
+	}
+	return (1 + sum) * y * y / 2
+}
+
+// inverse holds 1/k at k.
+var inverse = [...]float64{0, 1, 1.0 / 2, 1.0 / 3, 1.0 / 4, 1.0 / 5, 1.0 / 6, 1.0 / 7, 1.0 / 8, 1.0 / 9, 1.0 / 10, 1.0 / 11, 1.0 / 12, 1.0 / 13, 1.0 / 14, 1.0 / 15, 1.0 / 16, 1.0 / 17, 1.0 / 18}
 
 // value is the integrand at w.
 func (m mixture) value(w float64) float64 {

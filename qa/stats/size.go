@@ -1,0 +1,159 @@
+package stats
+
+import (
+	"errors"
+	"fmt"
+	"math"
+
+	"lotpair/qa/stats/dist"
+)
+
+// mostReadings is the largest sample size that is sought.
+const mostReadings = 100_000_000
+
+// ErrNoSize says that more readings would be needed than anyone takes.
+var ErrNoSize = errors.New("more than 100,000,000 readings would be needed")
+
+// Size returns the smallest number of reference readings (pairs), at least 2, with
+// which the design shows its aim with at least the given power, the candidate's,
+// ratio times as many and rounded up, and the power they have. It returns
+// ErrBeyondMargin where no number would do. NRef and NCand of d are not read.
+func Size(d Design, ratio, power float64) (nRef, nCand int, achieved float64, err error) {
+	return d.size(ratio, power, Design.power)
+}
+
+// SpreadSize is Size for the ratio of the standard deviations alone.
+func SpreadSize(d Design, ratio, power float64) (nRef, nCand int, achieved float64, err error) {
+	if !(d.SpreadRatio > 0) {
+		return 0, 0, 0, fmt.Errorf("spread ratio: found %v, want a number above 0", d.SpreadRatio)
+	}
+	d.Aim, d.Shift, d.Lower, d.Upper = AimWithin, 0, -1, 1 // of no account
+	return d.size(ratio, power, Design.spread)
+}
+
+func (d Design) size(ratio, power float64, of func(Design) float64) (nRef, nCand int, achieved float64, err error) {
+	if d.Paired {
+		ratio = 1
+	}
+	switch {
+	case !(ratio > 0) || math.IsInf(ratio, 1):
+		return 0, 0, 0, fmt.Errorf("ratio: found %v, want a number above 0", ratio)
+	case !(power > 0 && power < 1):
+		return 0, 0, 0, fmt.Errorf("power: found %v, want a number above 0 and below 1", power)
+	}
+	d.NRef, d.NCand = 2, 2
+	if err := d.check(); err != nil {
+		return 0, 0, 0, err
+	}
+	if d.room() <= 0 || d.SpreadRatio > 0 && d.SDCand/d.SDRef >= d.SpreadRatio {
+		return 0, 0, 0, ErrBeyondMargin
+	}
+	at := func(n int) float64 {
+		e := d
+		e.NRef, e.NCand = n, share(n, ratio)
+		return of(e)
+	}
+	// With too few candidates there is no test; from the first number on that
+	// allows one, a power that is not there at once is not there for a while.
+	first := 2
+	if share(first, ratio) < 2 {
+		first = int(1/ratio) + 1
+		for share(first, ratio) < 2 {
+			first++
+		}
+	}
+	n, achieved, err := smallest(at, first, d.guess(ratio, power), power)
+	if err != nil {
+		return 0, 0, 0, err
+	}
+	if d.Welch || d.SDRef != d.SDCand {
+		// One reading more in the group of the smaller standard deviation may lower
+		// the power a little, so that a number before may have had it.
+		back := 2 + 2*int(math.Ceil(1/min(ratio, 1)))
+		for k := n - 1; k >= max(first, n-back); k-- {
+			if p := at(k); p >= power {
+				n, achieved = k, p
+			}
+		}
+	}
+	return n, share(n, ratio), achieved, nil
+}
+
+// share is how many candidate readings go with n of the reference. A product that
+// is whole but for rounding is taken as whole.
+func share(n int, ratio float64) int {
+	c := float64(n) * ratio
+	if near := math.Round(c); math.Abs(c-near) <= 1e-12*c {
+		return int(min(near, math.MaxInt32))
+	}
+	return int(min(math.Ceil(c), math.MaxInt32))
+}
+
+// guess is the sample size that the normal distribution would need.
+func (d Design) guess(ratio, power float64) float64 {
+	sd := math.Hypot(d.SDRef, d.SDCand/math.Sqrt(ratio))
+	if d.Paired {
+		sd = d.SDRef
+	}
+	tail := d.Alpha
+	if d.Aim == AimDifference {
+		tail /= 2
+	}
+	miss := 1 - power
+	if d.Aim == AimWithin && d.Upper-d.Shift == d.Shift-d.Lower {
+		miss /= 2
+	}
+	z := max(0.1, -dist.NormalQuantile(tail)-dist.NormalQuantile(miss)) * sd / d.room()
+	return z*z + 1
+}
+
+// smallest finds the least n from first on with at(n) at least want, where at
+// rises from there or falls first and then rises. The normal quantile of a power
+// is nearly a straight line over the root of n, which leads to the answer in a few
+// steps; it is done when n has the power and n-1 has been seen not to.
+func smallest(at func(n int) float64, first int, guess, want float64) (int, float64, error) {
+	p := at(first)
+	if p >= want {
+		return first, p, nil
+	}
+	line := dist.NormalQuantile(want)
+	below, zBelow := first, dist.NormalQuantile(p)
+	above, zAbove, pAbove := 0, 0.0, 0.0
+	next := max(guess, float64(first+1))
+	for step := 0; ; step++ {
+		n := int(min(next, mostReadings))
+		if above > 0 {
+			n = min(n, above-1)
+		}
+		n = max(n, below+1)
+		p := at(n)
+		if z := dist.NormalQuantile(p); p >= want {
+			above, zAbove, pAbove = n, z, p
+		} else {
+			if n >= mostReadings {
+				return 0, 0, ErrNoSize
+			}
+			below, zBelow = n, z
+		}
+		if above-below == 1 {
+			return above, pAbove, nil
+		}
+		x, y := math.Sqrt(float64(below)), math.Sqrt(float64(above))
+		switch {
+		case above == 0 && step < 3 && line-zBelow < 1:
+			// The line rises by about (z of alpha + z of power) over the root of n.
+			next = float64(n) * square(1+(line-zBelow)/3) // overshoots a little
+		case above == 0:
+			next = 2 * float64(n)
+		case step > 12 || math.IsInf(zBelow, -1) || math.IsInf(zAbove, 1):
+			next = float64(below) + float64(above-below)/2
+		default:
+			next = math.Ceil(square(x + (y-x)*(line-zBelow)/(zAbove-zBelow)))
+			if step%2 == 1 && p >= want { // close in from below
+				next--
+			}
+		}
+	}
+}
+
+func square(x float64) float64 { return x * x }
