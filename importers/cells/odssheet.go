@@ -7,7 +7,7 @@ import (
 
 // table reads one sheet. Sheets that hold copies of other files' cells, which formulas refer to, are left out.
 func (o *odsReader) table(w *Workbook) error {
-	name, style := string(o.attr("table:name")), string(o.attr("table:style-name"))
+	name, hidden := string(o.attr("table:name")), o.hides[string(o.attr("table:style-name"))]
 	if strings.HasPrefix(name, "'file:") || strings.HasPrefix(name, "'http") {
 		return nil
 	}
@@ -16,7 +16,7 @@ func (o *odsReader) table(w *Workbook) error {
 			return damaged(o.x.part, "the sheet name %q twice", name)
 		}
 	}
-	o.sheet = Sheet{Name: name, Hidden: o.hides[style]}
+	o.sheet = Sheet{Name: name, Hidden: hidden}
 	o.spans, o.number, o.col = nil, 0, 0
 	if err := o.tableChildren(); err != nil {
 		return err
