@@ -127,8 +127,9 @@ func (d *dev) checkWindow() error {
 			return err
 		}
 		defer end()
-		// Software GL: the same pictures everywhere, and no driver needed.
-		env = append(env, "DISPLAY="+display, "WAYLAND_DISPLAY=", "LIBGL_ALWAYS_SOFTWARE=1")
+		// Software GL: the same pictures everywhere, and no driver needed. A bare machine sets no locale, and without one the
+		// title of a window loses what is not ASCII on its way to another program.
+		env = append(env, "DISPLAY="+display, "WAYLAND_DISPLAY=", "LIBGL_ALWAYS_SOFTWARE=1", "LC_ALL=C.UTF-8")
 	}
 	return d.run(env, "go", append([]string{"test", "-count=1", "-tags", windowTags}, windowPackages...)...)
 }
