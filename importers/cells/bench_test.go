@@ -55,7 +55,7 @@ func numbersBook(tb testing.TB, rows, cols int, odd bool) []byte {
 	} else {
 		b.WriteString("</sheetData></worksheet>")
 	}
-	return packOf(tb, "", wholeParts(b.String(), "<sst/>"))
+	return packOf(tb, "", wholeParts(b.String(), `<sst xmlns="http://schemas.openxmlformats.org/spreadsheetml/2006/main"/>`))
 }
 
 // unzip is the floor: the sheet part inflated and thrown away.
