@@ -205,25 +205,6 @@ func (c *comparison) checkUncertainty() {
 	}
 }
 
-func (c *comparison) performance() {
-	if c.ch.Lower == nil && c.ch.Upper == nil || c.ref.summary.N == 0 || c.cand.summary.N == 0 {
-		return
-	}
-	c.Performance = &PerformanceResult{Reference: c.lotPerformance(c.ref), Candidate: c.lotPerformance(c.cand)}
-}
-
-func (c *comparison) lotPerformance(s sample) LotPerformance {
-	p := stats.Performance(s.values, s.summary, c.ch.Lower, c.ch.Upper)
-	out := LotPerformance{OutsideCounted: p.OutsideCounted}
-	if p.HasPp && finite(p.Pp) {
-		out.Pp = &p.Pp
-	}
-	if p.HasPpk && finite(p.Ppk, p.OutsideEstimated) {
-		out.Ppk, out.OutsideEstimated = &p.Ppk, &p.OutsideEstimated
-	}
-	return out
-}
-
 // Decimals is how many decimals to show: what the plan says, else what the readings show, 10 at most.
 func Decimals(ch Characteristic, ref, cand Series) int {
 	if ch.Decimals != nil {

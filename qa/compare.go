@@ -78,6 +78,9 @@ func (c *comparison) warn(code string, side Side, path, text string) {
 }
 
 func compareOne(plan Plan, ch Characteristic, ref, cand Series) (Comparison, error) {
+	if ch.Kind == "attribute" {
+		return compareAttribute(plan, ch, ref, cand)
+	}
 	a := plan.askedOf(ch)
 	c := &comparison{ch: ch, asked: a, Comparison: Comparison{
 		Name: ch.Name, Unit: ch.Unit, Kind: "numeric", Limits: Limits{Lower: ch.Lower, Target: ch.Target, Upper: ch.Upper},
@@ -107,7 +110,7 @@ func compareOne(plan Plan, ch Characteristic, ref, cand Series) (Comparison, err
 		return Comparison{}, err
 	}
 	c.spread()
-	c.performance()
+	c.performance(plan)
 	c.ranks()
 	c.otherMethods(ref, cand)
 	c.decide(ref, cand)

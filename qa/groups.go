@@ -6,6 +6,15 @@ import (
 	"lotpair/qa/stats"
 )
 
+// GroupsResult counts the groups of each lot and splits the variation: between groups and within them, pooled over both lots
+// (one-way analysis of variance inside each lot; a negative component is shown as 0).
+type GroupsResult struct {
+	Reference int      `json:"reference"`
+	Candidate int      `json:"candidate"`
+	SDBetween *float64 `json:"sd_between,omitempty"`
+	SDWithin  *float64 `json:"sd_within,omitempty"`
+}
+
 // groupMeans are the summaries of the unweighted means of each lot's groups; false, with the reason said, where a lot has fewer
 // than two groups or readings without one.
 func (c *comparison) groupMeans() (ref, cand stats.Summary, ok bool) {
@@ -46,6 +55,7 @@ func (c *comparison) groups() {
 		return
 	}
 	x, y := groupsOf(c.ref), groupsOf(c.cand)
+	c.Groups = &GroupsResult{Reference: len(x), Candidate: len(y)}
 	for _, s := range []struct {
 		side Side
 		n    int

@@ -72,6 +72,8 @@ type Comparison struct {
 	Verdict     Verdict             `json:"verdict"`
 	Detectable  bool                `json:"detectable"` // two-sided p below alpha; never replaces the verdict
 	Spread      *SpreadResult       `json:"spread,omitempty"`
+	Fisher      *FisherResult       `json:"fisher,omitempty"`
+	Groups      *GroupsResult       `json:"groups,omitempty"`
 	Ranks       *RanksResult        `json:"ranks,omitempty"`
 	Checks      Checks              `json:"checks"`
 	Performance *PerformanceResult  `json:"performance,omitempty"`
@@ -100,13 +102,15 @@ type SampleResult struct {
 	Unread     int      `json:"unread"`
 	Unmatched  int      `json:"unmatched,omitempty"` // paired: without a partner in the other lot
 	Repeats    int      `json:"repeats,omitempty"`   // repeat readings beyond the first of each part
-	Mean       *float64 `json:"mean"`
-	SD         *float64 `json:"sd"` // nil for fewer than two readings
-	Min        *float64 `json:"min"`
-	Q1         *float64 `json:"q1"` // quartiles of type 7 (Hyndman and Fan 1996)
-	Median     *float64 `json:"median"`
-	Q3         *float64 `json:"q3"`
-	Max        *float64 `json:"max"`
+	Failed     *int     `json:"failed,omitempty"`    // attribute: parts that failed
+	Fraction   *float64 `json:"fraction,omitempty"`
+	Mean       *float64 `json:"mean,omitempty"`
+	SD         *float64 `json:"sd,omitempty"` // nil for fewer than two readings
+	Min        *float64 `json:"min,omitempty"`
+	Q1         *float64 `json:"q1,omitempty"` // quartiles of type 7 (Hyndman and Fan 1996)
+	Median     *float64 `json:"median,omitempty"`
+	Q3         *float64 `json:"q3,omitempty"`
+	Max        *float64 `json:"max,omitempty"`
 }
 
 // DifferenceResult is candidate minus reference by Welch's test (Welch 1947), with its 1 - alpha interval.
@@ -119,6 +123,7 @@ type DifferenceResult struct {
 	PTwoSided   *float64 `json:"p_two_sided"`
 	PHolm       *float64 `json:"p_holm,omitempty"` // Holm 1979, over the characteristics asked for a difference
 	Alternative string   `json:"alternative"`      // two-sided, lower, higher
+	Method      string   `json:"method,omitempty"` // attribute: miettinen-nurminen
 	Level       *float64 `json:"level"`
 	Lower       *float64 `json:"lower"`
 	Upper       *float64 `json:"upper"`
@@ -137,6 +142,8 @@ type EquivalenceResult struct {
 	MarginUpper    *float64     `json:"margin_upper"`
 	TLower         *float64     `json:"t_lower"` // H0: difference <= margin_lower
 	PLower         *float64     `json:"p_lower"`
+	ZLower         *float64     `json:"z_lower,omitempty"` // attribute: score statistics in the place of t
+	ZUpper         *float64     `json:"z_upper,omitempty"`
 	TUpper         *float64     `json:"t_upper"` // H0: difference >= margin_upper
 	PUpper         *float64     `json:"p_upper"`
 	P              *float64     `json:"p"`
@@ -253,20 +260,6 @@ type GrubbsResult struct {
 	G    float64 `json:"g"`
 	P    float64 `json:"p"`
 	Cell string  `json:"cell"`
-}
-
-// PerformanceResult compares both lots with the specification limits; without a claim of stability.
-type PerformanceResult struct {
-	Reference LotPerformance `json:"reference"`
-	Candidate LotPerformance `json:"candidate"`
-}
-
-// LotPerformance is Pp, Ppk and what lies outside the limits, as fractions (ISO 22514-2, from memory).
-type LotPerformance struct {
-	Pp               *float64 `json:"pp,omitempty"`
-	Ppk              *float64 `json:"ppk,omitempty"`
-	OutsideCounted   float64  `json:"outside_counted"`
-	OutsideEstimated *float64 `json:"outside_estimated,omitempty"` // plug-in normal
 }
 
 // UnreadResult is a cell that was not taken as a plain number.

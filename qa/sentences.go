@@ -20,6 +20,9 @@ func Sentences(c Comparison) []string {
 	if t := performanceSentence(c); t != "" {
 		s = append(s, t)
 	}
+	if t := sensitivitySentence(c); t != "" {
+		s = append(s, t)
+	}
 	return s
 }
 
@@ -31,6 +34,9 @@ func differenceSentence(c Comparison) string {
 	if d.Estimate == nil {
 		return "There are no readings to compare."
 	}
+	if c.Kind == "attribute" {
+		return fractionSentence(c)
+	}
 	where := "equals the reference's"
 	if *d.Estimate > 0 {
 		where = "is " + unit(shown(c, *d.Estimate), c.Unit) + " above the reference's"
@@ -38,15 +44,55 @@ func differenceSentence(c Comparison) string {
 		where = "is " + unit(shown(c, -*d.Estimate), c.Unit) + " below the reference's"
 	}
 	s := "The candidate's mean " + where
+	e := c.Equivalence
+	if e != nil && e.Scale != scaleDifference {
+		return s + ". " + otherScaleSentence(c, e)
+	}
 	level, low, high := d.Level, d.Lower, d.Upper
-	if e := c.Equivalence; e != nil {
+	if e != nil {
 		level, low, high = e.Level, e.Lower, e.Upper
 	}
 	if low == nil || high == nil {
 		return s + "; there is no interval."
 	}
 	s += fmt.Sprintf(" (%s interval of the difference %s).", Percent(*level, 2), unit(shown(c, *low)+" to "+shown(c, *high), c.Unit))
-	if e := c.Equivalence; e != nil && c.Objective.AgainstMargin() {
+	if e != nil && c.Objective.AgainstMargin() {
+		s += " " + marginSentence(c, e)
+	}
+	return s
+}
+
+// otherScaleSentence says what was held against a margin that is a ratio, or a shift from a stated mean.
+func otherScaleSentence(c Comparison, e *EquivalenceResult) string {
+	what := "The ratio of the means, candidate over reference,"
+	show := func(x float64) string { return Fixed(x, 4) }
+	switch {
+	case e.Scale == scaleShift:
+		what = "The candidate's mean less the stated mean"
+		show = func(x float64) string { return unit(shown(c, x), c.Unit) }
+	case c.Method == "log":
+		what = "The ratio of the geometric means, candidate over reference,"
+	}
+	if e.Estimate == nil || e.Lower == nil || e.Upper == nil {
+		return what + " has no interval."
+	}
+	return fmt.Sprintf("%s is %s (%s interval %s to %s). %s", what, show(*e.Estimate), Percent(*e.Level, 2), show(*e.Lower), show(*e.Upper), marginSentence(c, e))
+}
+
+// fractionSentence says the fractions of failed parts.
+func fractionSentence(c Comparison) string {
+	x, y := c.Reference, c.Candidate
+	s := fmt.Sprintf("Of the candidate %d of %d parts failed, of the reference %d of %d", *y.Failed, y.N, *x.Failed, x.N)
+	level, low, high := c.Difference.Level, c.Difference.Lower, c.Difference.Upper
+	e := c.Equivalence
+	if e != nil {
+		level, low, high = e.Level, e.Lower, e.Upper
+	}
+	if low == nil || high == nil {
+		return s + "; there is no interval."
+	}
+	s += fmt.Sprintf(" (%s interval of the difference %s to %s).", Percent(*level, 2), minus(Percent(*low, 2)), minus(Percent(*high, 2)))
+	if e != nil && c.Objective.AgainstMargin() {
 		s += " " + marginSentence(c, e)
 	}
 	return s
@@ -57,6 +103,9 @@ func marginSentence(c Comparison, e *EquivalenceResult) string {
 		return "No verdict is given; see the findings."
 	} else if of != e.Verdict {
 		return "The verdict rests on the bounds of the non-detects; see the findings."
+	}
+	if e.Verdict != c.Verdict {
+		return "The mean alone is " + string(e.Verdict) + "; the verdict rests on the spread as well."
 	}
 	if c.Objective != Equivalence {
 		side, bound := "below", MarginText(c)
@@ -82,7 +131,7 @@ func marginSentence(c Comparison, e *EquivalenceResult) string {
 
 func detectableSentence(c Comparison) string {
 	d := c.Difference
-	if d.PTwoSided == nil || d.DF == nil {
+	if d.PTwoSided == nil || d.DF == nil && c.Kind != "attribute" {
 		return ""
 	}
 	word := "is detectable"
@@ -93,11 +142,26 @@ func detectableSentence(c Comparison) string {
 	if p[0] != '<' && p[0] != '>' {
 		p = "= " + p
 	}
-	s := fmt.Sprintf("A difference %s: two-sided p %s, %s, %s degrees of freedom.", word, p, methodName(c.Method), Fixed(*d.DF, 1))
+	s := fmt.Sprintf("A difference %s: two-sided p %s, %s.", word, p, methodWords(c))
 	if d.PHolm != nil {
 		s += fmt.Sprintf(" Adjusted for the number of characteristics (Holm): p %s; the intervals are not adjusted.", FormatP(*d.PHolm))
 	}
 	return s
+}
+
+// methodWords names the method behind the difference and its degrees of freedom.
+func methodWords(c Comparison) string {
+	if c.Kind == "attribute" {
+		return "score method of Miettinen and Nurminen"
+	}
+	name := methodName(c.Method)
+	if c.Method == "log" {
+		name = "Welch on the readings"
+	}
+	if c.Groups != nil {
+		name += " on the means of the groups"
+	}
+	return name + ", " + Fixed(*c.Difference.DF, 1) + " degrees of freedom"
 }
 
 func spreadSentence(c Comparison) string {
@@ -105,7 +169,15 @@ func spreadSentence(c Comparison) string {
 	if s == nil || s.SDRatio == nil {
 		return ""
 	}
-	return fmt.Sprintf("It spreads %s times as wide (%s interval %s to %s).", Fixed(*s.SDRatio, 2), Percent(*s.Level, 2), Fixed(*s.Lower, 2), Fixed(*s.Upper, 2))
+	level, low, high := *s.Level, *s.Lower, *s.Upper
+	if b := s.Bonett; b != nil && s.Asked != nil {
+		level, low, high = b.Level, b.Lower, b.Upper
+	}
+	t := fmt.Sprintf("It spreads %s times as wide (%s interval %s to %s", Fixed(*s.SDRatio, 2), Percent(level, 2), Fixed(low, 2), Fixed(high, 2))
+	if asked := spreadAskedText(s); asked != "" {
+		t += "; " + asked
+	}
+	return t + ")."
 }
 
 func performanceSentence(c Comparison) string {
@@ -127,6 +199,23 @@ func performanceSentence(c Comparison) string {
 		s += fmt.Sprintf("; expected outside the limits: %s (reference %s)", ShareText(*p.Candidate.OutsideEstimated), ShareText(*p.Reference.OutsideEstimated))
 	}
 	return s + "."
+}
+
+// sensitivitySentence says whether the verdict on the mean is the same however it is computed.
+func sensitivitySentence(c Comparison) string {
+	if c.Equivalence == nil || len(c.Sensitivity) == 0 {
+		return ""
+	}
+	same := 0
+	for _, s := range c.Sensitivity {
+		if s.Verdict == c.Equivalence.Verdict {
+			same++
+		}
+	}
+	if same == len(c.Sensitivity) {
+		return fmt.Sprintf("The verdict on the mean is the same in all %d other ways of computing it.", same)
+	}
+	return fmt.Sprintf("The verdict on the mean is the same in %d of %d other ways of computing it.", same, len(c.Sensitivity))
 }
 
 // ShareText writes a fraction outside the limits as a per cent, with enough decimals to see a small one.

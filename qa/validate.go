@@ -157,7 +157,10 @@ func (v *validator) criterion(key string, c Criterion) {
 }
 
 func (v *validator) characteristic(key string, c Characteristic) {
-	v.only(key+".kind", c.Kind, []string{"numeric"}, []string{"attribute"})
+	v.oneOf(key+".kind", c.Kind, "numeric", "attribute")
+	if c.Kind == "attribute" && len(c.Failed) == 0 {
+		v.fault(key+".failed", "none", "the words that mark a failed part", "list them, as in failed = [\"NOK\", \"1\"]")
+	}
 	v.finite(key+".lower", c.Lower)
 	v.finite(key+".target", c.Target)
 	v.finite(key+".upper", c.Upper)

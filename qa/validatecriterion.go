@@ -30,7 +30,23 @@ func (v *validator) asked(key string, p Plan, c Characteristic) {
 			v.fault(key+".method", fmt.Sprintf("%q beside random groups", a.method), "welch or pooled", "change one")
 		}
 	}
+	if c.Kind == "attribute" {
+		v.attribute(key, a)
+		return
+	}
 	v.together(key, a)
+}
+
+// attribute checks what a comparison of fractions may ask: a margin in fractions, and nothing that needs measured values.
+func (v *validator) attribute(key string, a asked) {
+	if a.margin != nil {
+		if k := a.margin.Kinds(); len(k) == 1 && k[0] != "absolute" && k[0] != "bounds" {
+			v.fault(key+".margin", k[0]+" for an attribute", "absolute, or lower and upper, in fractions", "state it in the characteristic")
+		}
+	}
+	if a.grouped {
+		v.fault(key+".kind", "attribute beside random groups", "numeric", "leave one out")
+	}
 }
 
 // together checks what margin, method, objective and guard allow each other.

@@ -192,7 +192,11 @@ func Asked(r Result) string {
 		s += fmt.Sprintf(" (%d otherwise)", rest)
 	}
 	c := r.Characteristics[0]
-	return s + ", alpha " + Plain(c.Alpha) + ", " + methodName(c.Method)
+	s += ", alpha " + Plain(c.Alpha) + ", " + methodName(c.Method)
+	if c.Spread != nil && c.Spread.Asked != nil {
+		s += "; spread ratio below " + Fixed(*c.Spread.Asked, 2)
+	}
+	return s
 }
 
 func methodName(m string) string { return upperFirst(m) }
@@ -214,24 +218,39 @@ func askedMargin(c Comparison) string {
 		}
 		return fmt.Sprintf("%s within ±%s of the tolerance (%s)", word, Percent(*m.Stated, 4), width)
 	}
+	switch m.Kind {
+	case "reference_fraction":
+		return fmt.Sprintf("%s within ±%s of the reference's mean", word, Percent(*m.Stated, 4))
+	case "sd_multiple":
+		return fmt.Sprintf("%s within ±%s standard deviations", word, Plain(*m.Stated))
+	case "keep_ppk":
+		return fmt.Sprintf("%s so far as Ppk stays at least %s", word, Plain(*m.Stated))
+	}
 	return word + " within " + MarginText(c)
 }
 
-// MarginText is the margin as tested, in the unit: "±0.005 mm", "−0.01 to 0.02 mm", "+0.008 mm".
+// MarginText is the margin as tested: "±0.005 mm", "−0.01 to 0.02 mm", "+0.008 mm", "0.8 to 1.25 times".
 func MarginText(c Comparison) string {
 	e := c.Equivalence
 	if e == nil {
 		return "no margin"
 	}
+	u, end := c.Unit, signed
+	switch {
+	case e.Scale == scaleRatio:
+		u, end = "times", margin
+	case c.Kind == "attribute":
+		u = ""
+	}
 	switch {
 	case e.MarginLower != nil && e.MarginUpper != nil && *e.MarginLower == -*e.MarginUpper:
-		return unit("±"+margin(*e.MarginUpper), c.Unit)
+		return unit("±"+margin(*e.MarginUpper), u)
 	case e.MarginLower != nil && e.MarginUpper != nil:
-		return unit(margin(*e.MarginLower)+" to "+margin(*e.MarginUpper), c.Unit)
+		return unit(margin(*e.MarginLower)+" to "+margin(*e.MarginUpper), u)
 	case e.MarginUpper != nil:
-		return unit(signed(*e.MarginUpper), c.Unit)
+		return unit(end(*e.MarginUpper), u)
 	case e.MarginLower != nil:
-		return unit(signed(*e.MarginLower), c.Unit)
+		return unit(end(*e.MarginLower), u)
 	}
 	return "no margin"
 }
