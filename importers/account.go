@@ -24,7 +24,11 @@ func (r *reader) finish() {
 				}
 			}
 		}
-		t.giveRest(used)
+		if t.turned {
+			r.giveRestTurned(t)
+		} else {
+			t.giveRest(used)
+		}
 		r.out.Account = append(r.out.Account, t.account(r.blanks(t))...)
 		for _, s := range t.said {
 			if !slices.Contains(r.out.Said, s) {
@@ -101,6 +105,8 @@ func (t *table) giveRest(used map[int]bool) {
 				as = rolePart
 			case c.Col == t.order:
 				as = roleOrder
+			case c.Col == t.group:
+				as = roleGroup
 			case headed[c.Col]:
 				as = roleOtherColumn
 			default:
@@ -143,6 +149,7 @@ func (t *table) account(blanks int) []qa.Account {
 			}
 		}
 	}
+	counts[roleOutside] += t.cut
 	var out []qa.Account
 	for as, n := range counts {
 		if n > 0 {

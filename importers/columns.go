@@ -15,7 +15,7 @@ func (t *table) detectPart() {
 	}
 	var worded []int
 	for _, c := range t.columns {
-		if c.col != t.lot && c.col != t.order && headingMeans(c.heading) == partHeading && !t.planned(c) && !t.constant(c.col) && t.fills(c.col) {
+		if c.col != t.lot && c.col != t.order && c.col != t.group && headingMeans(c.heading) == partHeading && !t.planned(c) && !t.constant(c.col) && t.fills(c.col) {
 			worded = append(worded, c.col)
 		}
 	}
@@ -32,7 +32,7 @@ func (t *table) detectPart() {
 		if t.part > 0 {
 			break
 		}
-		if c.col != t.lot && c.col != t.order && !t.planned(c) && t.counts(c.col) {
+		if c.col != t.lot && c.col != t.order && c.col != t.group && !t.planned(c) && t.counts(c.col) {
 			t.part = c.col
 		}
 	}
@@ -66,7 +66,12 @@ func (t *table) wanted() []row {
 	return t.wantedRows
 }
 
-func (t *table) cell(r row, col int) cells.Cell { return t.sheet.Rows[r.at].At(col) }
+func (t *table) cell(r row, col int) cells.Cell {
+	if t.turned {
+		return r.cells[col-1]
+	}
+	return t.sheet.Rows[r.at].At(col)
+}
 
 // constant says whether a column says the same in every row: a part number, not an id.
 func (t *table) constant(col int) bool {
@@ -85,24 +90,32 @@ func (t *table) fills(col int) bool {
 
 // repeats says whether an id stands twice in one lot.
 func (t *table) repeats(col int) bool {
-	seen := map[[2]string]bool{}
+	seen := map[[3]string]bool{}
 	for _, r := range t.wanted() {
-		id := filledText(t.cell(r, col))
-		if id == "" {
+		id := [3]string{r.lot, t.groupOf(r), filledText(t.cell(r, col))}
+		if id[2] == "" {
 			continue
 		}
-		if seen[[2]string{r.lot, id}] {
+		if seen[id] {
 			return true
 		}
-		seen[[2]string{r.lot, id}] = true
+		seen[id] = true
 	}
 	return false
 }
 
-// counts says whether a column holds whole numbers that count up by one within each lot, three rows or more, at least two of
+// groupOf is the group of a row; empty without a group column.
+func (t *table) groupOf(r row) string {
+	if t.group == 0 {
+		return ""
+	}
+	return filledText(t.cell(r, t.group))
+}
+
+// counts says whether a column holds whole numbers that count up by one within each lot and group, three rows or more, at least two of
 // them in one lot.
 func (t *table) counts(col int) bool {
-	last := map[string]int{}
+	last := map[[2]string]int{}
 	rows := t.wanted()
 	if len(rows) < 3 {
 		return false
@@ -117,13 +130,14 @@ func (t *table) counts(col int) bool {
 		if err != nil {
 			return false
 		}
-		if before, ok := last[r.lot]; ok {
+		in := [2]string{r.lot, t.groupOf(r)}
+		if before, ok := last[in]; ok {
 			if n != before+1 {
 				return false
 			}
 			steps++
 		}
-		last[r.lot] = n
+		last[in] = n
 	}
 	return steps > 0
 }
@@ -139,7 +153,7 @@ func (t *table) findMeasured() error {
 				faults = append(faults, faultsOf(err)...)
 				continue
 			}
-			if col == t.lot || col == t.part && t.reading.PartColumn != "" || slices.Contains(t.measured, col) {
+			if col == t.lot || col == t.group || col == t.part && t.reading.PartColumn != "" || slices.Contains(t.measured, col) {
 				faults = append(faults, Fault{Place: t.place(), Text: "characteristic " + quoted(ch.Name) + ": found " + t.columnText(col) +
 					", which plays another part already, want a column of its own; correct the plan"})
 			}
@@ -152,7 +166,7 @@ func (t *table) findMeasured() error {
 	}
 	rows := t.wanted()
 	for _, c := range t.columns {
-		if c.col == t.lot || c.col == t.part || c.col == t.order {
+		if c.col == t.lot || c.col == t.part || c.col == t.order || c.col == t.group {
 			continue
 		}
 		numbers, dates, filled := 0, 0, 0
@@ -177,6 +191,10 @@ func (t *table) findMeasured() error {
 			why = "it holds dates or an order"
 		case headingMeans(c.heading) == partHeading:
 			why = "it holds part numbers or ids"
+		case headingMeans(c.heading) == groupHeading:
+			why = "it holds groups; name it as group_column to keep them"
+		case headingMeans(c.heading) == takerHeading:
+			why = "it says who or what measured"
 		case t.counts(c.col):
 			why = "it counts up by one"
 		case 2*numbers < filled:

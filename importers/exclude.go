@@ -37,7 +37,7 @@ func (r *reader) resolveExclusions() error {
 				continue
 			}
 			files = append(files, t)
-			if !hasSheet || sheet == t.sheet.Name {
+			if beside := t.keep.LastCol > 0 && (x.col < t.keep.FirstCol || x.col > t.keep.LastCol); !beside && (!hasSheet || sheet == t.sheet.Name) {
 				fits = append(fits, t)
 			}
 		}

@@ -36,9 +36,6 @@ func (t *table) findHeading() error {
 		}
 	}
 	if t.heading == 0 {
-		if n := t.sideBySide(); n > 0 {
-			return t.refuse("reading.layout: found the lots side by side in row %d (column-per-lot), which this version does not offer, want row-per-part; put the lots below each other, the lot's name in a column", n)
-		}
 		return t.refuse("found no row of headings above numbers, want one such as Lot, Part, Bore; state header_row under [reading]")
 	}
 	return nil
@@ -50,11 +47,7 @@ func (t *table) sideBySide() int {
 		return 0
 	}
 	for i, r := range t.sheet.Rows {
-		found := map[string]bool{}
-		for _, c := range r.Cells {
-			found[filledText(c)] = true
-		}
-		if !slices.ContainsFunc(t.hints.lots, func(l string) bool { return !found[qa.JoinSpace(l)] }) {
+		if t.namesLots(i) && !t.readingsAbove(i) {
 			return r.Number
 		}
 		if i == lookHeadings {
@@ -112,6 +105,10 @@ func (t *table) readHeadings() error {
 			break
 		}
 		if r.Number < t.heading {
+			if t.headingTop > 0 && r.Number >= t.headingTop {
+				t.mark(i, roleHeading)
+				continue
+			}
 			if t.comment(r) {
 				t.mark(i, roleComment)
 				continue
@@ -123,14 +120,13 @@ func (t *table) readHeadings() error {
 			continue
 		}
 		t.mark(i, roleHeading)
-		for _, c := range r.Cells {
-			if h := filledText(c); h != "" {
-				name, unit := splitUnit(h)
-				t.columns = append(t.columns, column{col: c.Col, heading: h, name: name, unit: unit})
-			}
-		}
+		t.columns = t.headingsOf(r)
 	}
-	t.say("the headings stand in row %d.", t.heading)
+	if t.headingTop > 0 && t.headingTop < t.heading && t.layout != ColumnPerLot {
+		t.say("the headings stand in rows %d to %d and are read from top to bottom.", t.headingTop, t.heading)
+	} else {
+		t.say("the headings stand in row %d.", t.heading)
+	}
 	if above > 0 {
 		t.say("%s above the headings not read.", qa.Count(above, "row", "rows"))
 	}
@@ -139,7 +135,7 @@ func (t *table) readHeadings() error {
 		seen[c.heading] = append(seen[c.heading], cells.Name(c.col, t.heading))
 	}
 	for _, c := range t.columns {
-		if at := seen[c.heading]; len(at) > 1 {
+		if at := seen[c.heading]; len(at) > 1 && t.layout != ColumnPerLot {
 			t.warn("duplicate-headings", "the heading %s stands in %s.", quoted(c.heading), join2(at))
 			delete(seen, c.heading)
 		}
@@ -169,6 +165,9 @@ func (t *table) findLotColumn() error {
 		col, err := t.only("reading.lot_column", name)
 		t.lot = col
 		return err
+	}
+	if t.reading.Layout == SheetPerLot {
+		return t.oneLotASheet()
 	}
 	var byHeading, byContent []int
 	for _, c := range t.columns {
@@ -205,6 +204,9 @@ func (t *table) findLotColumn() error {
 		}
 		return t.refuse("reading.lot_column: found %s, want one column that names the lots; state lot_column under [reading]", join2(texts))
 	default:
+		if t.findSections() {
+			return nil
+		}
 		if t.whole {
 			t.say("no column names the lots; every row of the sheet is taken as the one lot.")
 			return nil
@@ -263,7 +265,7 @@ func (t *table) holds(col int) bool {
 	return false
 }
 
-// findPartColumn takes the plan's columns for parts and order; what the plan leaves out is found once the rows are known.
+// findPartColumn takes the plan's columns for parts, order and groups; what the plan leaves out is found once the rows are known.
 func (t *table) findPartColumn() (err error) {
 	if name := t.reading.PartColumn; name != "" {
 		if t.part, err = t.only("reading.part_column", name); err != nil {
@@ -271,7 +273,32 @@ func (t *table) findPartColumn() (err error) {
 		}
 	}
 	if name := t.reading.OrderColumn; name != "" {
-		t.order, err = t.only("reading.order_column", name)
+		if t.order, err = t.only("reading.order_column", name); err != nil {
+			return err
+		}
+	}
+	if name := t.reading.GroupColumn; name != "" {
+		t.group, err = t.only("reading.group_column", name)
 	}
 	return err
+}
+
+// oneLotASheet takes every row as the one lot of the sheet, as the plan says; a column that names several lots speaks against it.
+func (t *table) oneLotASheet() error {
+	for _, c := range t.columns {
+		if headingMeans(c.heading) != lotHeading {
+			continue
+		}
+		var names []string
+		for _, r := range t.below() {
+			if name := filledText(r.At(c.col)); name != "" && !slices.Contains(names, name) && len(names) < 30 && labelWords[word(name)] == "" {
+				names = append(names, name)
+			}
+		}
+		if len(names) > 1 {
+			return t.refuse("reading.layout: found the lots %s in %s, want one lot a sheet; state the layout row-per-part", list(names), t.columnText(c.col))
+		}
+	}
+	t.say("every row of the sheet is taken as the one lot.")
+	return nil
 }

@@ -247,8 +247,8 @@ func reconcile(t testing.TB, r qa.Readings, data map[string][]byte, enc string) 
 	for _, l := range []qa.Lot{r.Reference, r.Candidate} {
 		for _, s := range l.Series {
 			used := len(s.Values())
-			if sum := used + s.Excluded() + s.Missing + s.NonDetects + s.Unread; sum != s.Rows {
-				t.Errorf("%s %s: got %d used + %d left out + %d missing + %d non-detects + %d unread, want %d rows", l.Name, s.Characteristic, used, s.Excluded(), s.Missing, s.NonDetects, s.Unread, s.Rows)
+			if sum := used + s.Excluded() + s.Missing + s.NonDetects + s.Unread + s.Repeats; sum != s.Rows {
+				t.Errorf("%s %s: got %d used + %d left out + %d missing + %d non-detects + %d unread + %d repeats, want %d rows", l.Name, s.Characteristic, used, s.Excluded(), s.Missing, s.NonDetects, s.Unread, s.Repeats, s.Rows)
 			}
 		}
 	}

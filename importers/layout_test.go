@@ -267,8 +267,14 @@ func TestReadDoubledBlock(t *testing.T) { // N16: never n 24
 func TestReadPartColumnRepeats(t *testing.T) {
 	rows := append(long(), []any{"CAND-0931", num("3"), num("11.998")})
 	p := xlsxPlan(func(p *qa.Plan) { p.Reading.PartColumn = "Part" })
-	_, err := read(t, p, xlsx(t, sheetOf{name: "Data", rows: rows}))
-	wantPlanError(t, err, "not averaged in this version", `"3" in Data!C16 and Data!C26`)
+	r := mustRead(t, p, xlsx(t, sheetOf{name: "Data", rows: rows}))
+	s := r.Candidate.Series[0]
+	if x := s.Readings[2]; len(s.Values()) != 12 || s.Repeats != 1 || r.Candidate.Rows != 12 || x.Value != 11.9975 || x.Source.Cell != "C16, C26" || x.Source.Text != "11.997; 11.998" {
+		t.Errorf("got %d values, %d repeats, %+v, want 12 with the mean of C16 and C26", len(s.Values()), s.Repeats, x)
+	}
+	wantWarning(t, r, "unequal-repeats", "1 to 2")
+	_, err := read(t, xlsxPlan(), xlsx(t, sheetOf{name: "Data", rows: rows}))
+	wantPlanError(t, err, "part_column", `"3" in Data!C16 and Data!C26`)
 }
 
 func TestReadUnitsMustAgree(t *testing.T) { // N10

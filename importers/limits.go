@@ -31,6 +31,9 @@ func (t *table) takeLimits(at int, means string) {
 // limitsOf are the limits that the sheet states for a column. A cell that cannot be read as a number, and two limits of one
 // kind that differ, are faults.
 func (t *table) limitsOf(col int, unit string, decimal byte) (qa.Characteristic, error) {
+	if err := t.unclear[col]; err != nil {
+		return qa.Characteristic{}, err
+	}
 	values := map[string]*float64{}
 	places := map[string]int{}
 	signed := false
@@ -111,7 +114,7 @@ func (t *table) mergeLimits(c *qa.Characteristic, plan, file qa.Characteristic) 
 
 // mergeUnit settles the unit of a characteristic between the plan and the sheet: they must be the same.
 func (t *table) mergeUnit(c *qa.Characteristic, col column, side qa.LotPlan, sideName qa.Side) error {
-	at := fmt.Sprintf("%s!%s", t.place(), cells.Name(col.col, t.heading))
+	at := fmt.Sprintf("%s!%s", t.place(), t.address(col.col))
 	if side.Unit != "" && col.unit != "" && unitKey(side.Unit) != unitKey(col.unit) {
 		return planError(at, "found the unit %s, want %s as %s.unit states; correct the plan or the sheet", quoted(col.unit), quoted(side.Unit), sideName)
 	}

@@ -140,8 +140,11 @@ func (t *table) nearSpellings(counts func(string) bool) {
 // hidden warns of hidden rows, columns and sheets: what they hold is read all the same.
 func (t *table) hidden() {
 	rows, cols := 0, 0
+	if t.turned {
+		rows, cols = t.hiddenCells()
+	}
 	for _, r := range t.rows {
-		if t.sheet.Rows[r.at].Hidden {
+		if !t.turned && t.sheet.Rows[r.at].Hidden {
 			rows++
 		}
 	}
@@ -149,7 +152,7 @@ func (t *table) hidden() {
 		t.warn("hidden-rows", "%s hidden; what they hold is used.", qa.Count(rows, "row of the table is", "rows of the table are"))
 	}
 	for _, c := range t.columns {
-		if t.sheet.HiddenCol(c.col) {
+		if !t.turned && t.sheet.HiddenCol(c.col) {
 			cols++
 		}
 	}

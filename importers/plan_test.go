@@ -138,7 +138,7 @@ func TestLoadPlanFaults(t *testing.T) {
 		{`reason = "dropped part, NCR-77"`, `reason = " "`, []string{"plan.toml:40: ", "want why the cell is left out"}},
 		{`meaning = "reviewed"`, `meaning = "seen"`, []string{"plan.toml:7: ", `found "seen"`, "prepared, reviewed, approved"}},
 		{`"lotpair.plan/1"`, `"lotpair.plan/2"`, []string{"plan.toml:1: ", `found "lotpair.plan/2", want "lotpair.plan/1"`}},
-		{`layout = "row-per-part"`, `layout = "sheet-per-lot"`, []string{"plan.toml:31: ", "this version does not offer"}},
+		{`layout = "row-per-part"`, `layout = "lot-per-sheet"`, []string{"plan.toml:31: ", "row-per-part, column-per-lot, sheet-per-lot, row-per-characteristic"}},
 		{"[candidate]", "[candidate", []string{"plan.toml:26: ", "want TOML"}},
 		{"[candidate]", "[reference]", []string{"plan.toml:26: ", "want TOML"}},
 		{`title = "Hub`, `title = Hub`, []string{"plan.toml:2: ", "want TOML"}},

@@ -15,12 +15,13 @@ func Read(plan qa.Plan, open func(file string) ([]byte, error)) (qa.Readings, er
 	r := &reader{plan: plan, books: map[string]Book{}}
 	for _, step := range []func() error{
 		func() error { return r.openBooks(open) }, r.chooseTables, r.chooseLots, r.chooseCharacteristics, r.settleMarks, r.resolveExclusions,
-		r.takeReadings, r.checkExclusions, r.checkRepeats,
+		r.takeReadings, r.checkExclusions, r.checkDoubled, r.averageRepeats, r.checkRepeats,
 	} {
 		if err := step(); err != nil {
 			return qa.Readings{}, err
 		}
 	}
+	r.warnMix()
 	r.finish()
 	return r.out, nil
 }
@@ -95,8 +96,11 @@ func (r *reader) chooseTables() error {
 			}
 		}
 		t, err := newTable(r.books[s.plan.File], sheets[i], h)
+		if err != nil && shared && torn(err) {
+			return r.chooseTorn(sheets[i], h)
+		}
 		if err != nil {
-			return err
+			return faultsError(err)
 		}
 		s.table = t
 		r.tables = append(r.tables, t)
@@ -204,7 +208,7 @@ func (r *reader) chooseLots() error {
 // beyondHeadings refuses a text file whose rows have more fields than headings: a decimal comma that split a number in two
 // looks like this.
 func (t *table) beyondHeadings() error {
-	if !t.book.IsText || len(t.columns) == 0 {
+	if !t.book.IsText || len(t.columns) == 0 || t.turned {
 		return nil
 	}
 	last := t.columns[len(t.columns)-1].col
@@ -254,7 +258,7 @@ func (r *reader) chooseCharacteristics() error {
 				continue
 			}
 			s.cols = append(s.cols, col)
-			if err := s.table.mergeUnit(&list[i], s.table.column(col), s.plan, s.side); err != nil {
+			if err := s.table.mergeUnit(&list[i], s.table.columnOf(col, s.lot.Name), s.plan, s.side); err != nil {
 				faults = append(faults, faultsOf(err)...)
 			}
 		}
@@ -360,7 +364,7 @@ func (t *table) settleColumn(c *qa.Characteristic, plan qa.Characteristic, col i
 	}
 	file, err := t.limitsOf(col, c.Unit, m.decimal)
 	switch {
-	case err != nil && (plan.Lower != nil || plan.Upper != nil):
+	case err != nil && (plan.Lower != nil || plan.Target != nil || plan.Upper != nil):
 		t.warn("limits-unread", "%s; the plan's limits are taken.", err)
 		return m, nil
 	case err != nil:

@@ -18,14 +18,25 @@ func (t *table) sortRows() error {
 			continue
 		}
 		switch {
+		case t.beyondTable(r.Number):
+			continue
+		case t.sectionTitle(r.Number):
+			t.mark(i, roleLot)
 		case len(data) == 0 && r.Number == t.heading+1 && t.isUnitRow(r):
 			t.takeUnits(r)
 			t.mark(i, roleUnit)
 		case t.repeatsHeading(r):
 			if !t.sameHeading(r) {
-				return t.refuse("row %d: found a second table with other headings, want one table a sheet; put it on its own sheet", r.Number)
+				if t.reading.HeaderRow == 0 {
+					return t.refuse("row %d: found a second table with other headings than in row %d, want one; state header_row = %d or %d under [reading], or put it on its own sheet", r.Number, t.heading, t.heading, r.Number)
+				}
+				t.warn("second-table", "row %d begins a table with other headings, which is not read.", r.Number)
+				t.end = r.Number
+				continue
 			}
-			t.warn("second-table", "row %d repeats the headings; the rows below it are read as the same table.", r.Number)
+			if len(t.sections) == 0 {
+				t.warn("second-table", "row %d repeats the headings; the rows below it are read as the same table.", r.Number)
+			}
 			t.mark(i, roleHeading)
 		default:
 			data = append(data, row{at: i})
@@ -35,7 +46,9 @@ func (t *table) sortRows() error {
 	if err := t.fillLots(data); err != nil {
 		return err
 	}
-	t.detectPart()
+	if t.layout != ColumnPerLot {
+		t.detectPart()
+	}
 	return nil
 }
 
@@ -83,12 +96,13 @@ func (t *table) repeatsHeading(r cells.Row) bool {
 		text := filledText(r.At(t.lot))
 		return text != "" && text == t.column(t.lot).heading && !slices.ContainsFunc(t.hints.lots, func(l string) bool { return qa.JoinSpace(l) == text })
 	}
-	return len(t.columns) > 1 && t.sameHeading(r)
+	return (len(t.columns) > 1 || len(t.sections) > 0) && t.sameHeading(r)
 }
 
 func (t *table) sameHeading(r cells.Row) bool {
+	head, _ := t.sheet.Row(t.heading)
 	for _, c := range t.columns {
-		if filledText(r.At(c.col)) != c.heading {
+		if filledText(r.At(c.col)) != filledText(head.At(c.col)) {
 			return false
 		}
 	}

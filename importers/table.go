@@ -22,12 +22,16 @@ type column struct {
 	heading string // white space joined
 	name    string // without the unit in brackets
 	unit    string // from brackets or the unit row
+
+	head  cells.Cell        // of a turned table: the cell that names it
+	units map[string]string // of a turned table: the unit of each lot
 }
 
-// row is one row of the table that belongs to a lot.
+// row is one part of a lot: a row of the sheet, or in a turned table the cells wherever they stand.
 type row struct {
-	at  int    // index into the sheet's rows
-	lot string // white space joined; empty where the sheet is one lot
+	at    int          // index into the sheet's rows; of a turned table without meaning
+	lot   string       // white space joined; empty where the sheet is one lot
+	cells []cells.Cell // of a turned table, by its columns from 1
 }
 
 // table is one sheet as it is read: which row and column plays which part. Every cell of the sheet has a role.
@@ -36,9 +40,25 @@ type table struct {
 	sheet cells.Sheet
 	hints
 
-	heading          int // row number
+	layout     string // as in the plan
+	confidence Confidence
+	reasons    []string // for the layout
+
+	heading          int // row number of the last row of headings
+	headingTop       int // of the first; 0 where it is the last
 	columns          []column
 	lot, part, order int // columns; 0 where there is none
+	group            int
+	turned           bool // rows have their own cells: the lots or the parts stand in columns
+	feet             []footCell
+	keep             cells.Area    // the columns of this one of several tables side by side; none where 0
+	cut              int           // cells of the others
+	torn             bool          // no one of them holds all the lots looked for
+	end              int           // the row where another table begins; 0 where none does
+	sections         []section     // tables below each other, each under its lot's name
+	blocks           []block       // the lots side by side
+	headed           bool          // and headings below their names
+	unclear          map[int]error // limits that only a person can read, by column
 	rows             []row
 	wantedRows       []row           // of the lots looked for
 	limits           map[int][]limit // by column
@@ -67,6 +87,7 @@ const (
 	roleLot
 	rolePart
 	roleOrder
+	roleGroup
 	roleOtherColumn
 	roleNoHeading
 	roleOtherLot
@@ -83,7 +104,7 @@ const (
 var roleNames = [roles]string{
 	roleOutside: "not in the table", roleAbove: "above the heading", roleComment: "comment lines", roleHeading: "headings",
 	roleUnit: "unit row", roleLimit: "limits and nominal values", roleSummary: "summary rows", roleLot: "lot names", rolePart: "part ids",
-	roleOrder: "order", roleOtherColumn: "columns not taken as measurements", roleNoHeading: "columns without a heading",
+	roleOrder: "order", roleGroup: "groups", roleOtherColumn: "columns not taken as measurements", roleNoHeading: "columns without a heading",
 	roleOtherLot: "other lots", roleNote: "notes", roleUsed: "readings used", roleLeftOut: "readings left out", roleMissing: "missing",
 	roleNonDetect: "non-detects", roleUnread: "not read as numbers",
 }
@@ -95,8 +116,11 @@ func newTable(book Book, sheet cells.Sheet, h hints) (*table, error) {
 	for i, r := range sheet.Rows {
 		t.roles[i] = make([]role, len(r.Cells))
 	}
-	for _, step := range []func() error{t.findHeading, t.readHeadings, t.findLotColumn, t.findPartColumn, t.sortRows, t.findMeasured} {
+	for _, step := range t.steps() {
 		if err := step(); err != nil {
+			if t.torn {
+				return nil, &tornError{err}
+			}
 			return nil, err
 		}
 	}
@@ -138,7 +162,22 @@ func (t *table) column(col int) column {
 	return column{col: col}
 }
 
+// address is where a column's heading stands.
+func (t *table) address(col int) string {
+	if c := t.column(col); c.head.Col > 0 {
+		return c.head.Name()
+	}
+	return cells.Name(col, t.heading)
+}
+
 func (t *table) columnText(col int) string {
+	if t.turned {
+		c := t.column(col)
+		if c.head.Col > 0 {
+			return fmt.Sprintf("%s in %s", quoted(c.heading), c.head.Name())
+		}
+		return quoted(c.heading)
+	}
 	return fmt.Sprintf("column %s %s", cells.Letters(col), quoted(t.column(col).heading))
 }
 
@@ -175,7 +214,7 @@ func (t *table) only(key, name string) (int, error) {
 	}
 	addresses := make([]string, 0, len(found))
 	for _, col := range found {
-		addresses = append(addresses, cells.Name(col, t.heading))
+		addresses = append(addresses, t.address(col))
 	}
 	return 0, t.refuse("%s: found the heading %s in %s, want it once; give each column its own heading in the file", key, quoted(name), strings.Join(addresses, ", "))
 }

@@ -66,6 +66,12 @@ func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row ro
 		if t.part > 0 {
 			reading.Part = filledText(t.cell(row, t.part))
 		}
+		if t.group > 0 {
+			reading.Group = filledText(t.cell(row, t.group))
+		}
+		if t.order > 0 {
+			reading.Order = filledText(t.cell(row, t.order))
+		}
 		series.Readings = append(series.Readings, reading)
 		value := got.value
 		switch {
@@ -75,24 +81,42 @@ func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row ro
 			entry.TakenAs, entry.Reason, entry.Value = qa.TakenNumber, got.converted, &value
 		}
 	}
-	t.give(row.at, cell.Col, as)
+	t.give(cell, as)
 	if entry.TakenAs != "" {
 		r.out.Ledger = append(r.out.Ledger, entry)
 	}
 	return got
 }
 
-// give gives one cell of a row its role; a cell that is not stored has none.
-func (t *table) give(at, col int, as role) {
-	for j, c := range t.sheet.Rows[at].Cells {
-		if c.Col == col && stored(c) {
-			t.roles[at][j] = as
-		}
+// give gives one cell its role; a cell that is not stored has none. A cell that holds several readings keeps the role that
+// says most: the last of them.
+func (t *table) give(c cells.Cell, as role) {
+	at, found := slices.BinarySearchFunc(t.sheet.Rows, c.Row, func(r cells.Row, n int) int { return r.Number - n })
+	if !found {
+		return
+	}
+	j, found := slices.BinarySearchFunc(t.sheet.Rows[at].Cells, c.Col, func(x cells.Cell, n int) int { return x.Col - n })
+	if !found || !stored(t.sheet.Rows[at].Cells[j]) {
+		return
+	}
+	if had := t.roles[at][j]; had < roleUsed || as > had {
+		t.roles[at][j] = as
 	}
 }
 
 // takeSummaries lists what the summary rows hold under the characteristics.
 func (r *reader) takeSummaries(t *table) {
+	for _, f := range t.feet {
+		t.give(f.cell, roleSummary)
+		for k, c := range r.out.Characteristics {
+			if slices.ContainsFunc(r.sides[:], func(s lotSide) bool { return s.table == t && s.cols[k] == f.col }) {
+				r.out.Ledger = append(r.out.Ledger, qa.Entry{Source: t.book.source(t.sheet.Name, f.cell), Characteristic: c.Name, TakenAs: qa.TakenSummary})
+			}
+		}
+	}
+	if t.turned {
+		return
+	}
 	for _, at := range t.summary {
 		t.mark(at, roleSummary)
 		for k, c := range r.out.Characteristics {
@@ -113,6 +137,9 @@ func (r *reader) takeSummaries(t *table) {
 
 // unmerged refuses merged cells among the readings: one value cannot stand for several parts.
 func (t *table) unmerged(rows []row, col int) error {
+	if t.turned {
+		return t.unmergedCells(rows, col)
+	}
 	for _, a := range t.sheet.Merged {
 		if col < a.FirstCol || col > a.LastCol || a == (cells.Area{FirstCol: a.FirstCol, FirstRow: a.FirstRow, LastCol: a.FirstCol, LastRow: a.FirstRow}) {
 			continue
@@ -189,7 +216,7 @@ func (t *table) ordered(rows []row) []row {
 	return sorted
 }
 
-// checkRepeats refuses what would count one part twice: an id twice in a lot, and a lot whose second half repeats its first.
+// checkRepeats refuses an id that stands twice in a lot: the part would count twice.
 func (r *reader) checkRepeats() error {
 	var faults []Fault
 	for i := range r.sides {
@@ -197,17 +224,33 @@ func (r *reader) checkRepeats() error {
 		if s.table.part > 0 {
 			if f, ok := r.repeatedIDs(s); ok {
 				faults = append(faults, f)
-				continue
 			}
 		}
+	}
+	if len(faults) > 0 {
+		return &PlanError{Faults: faults}
+	}
+	return nil
+}
+
+// checkDoubled refuses a lot without ids whose second half repeats its first, and warns of one with other ids there.
+func (r *reader) checkDoubled() error {
+	var faults []Fault
+	for i := range r.sides {
+		s := &r.sides[i]
 		ranges, ok := s.doubled()
+		_, repeated := r.repeatedIDs(s)
 		switch {
 		case !ok:
-		case s.table.part > 0:
-			s.table.warn("repeated-block", "the second half of the lot %s repeats the first exactly (%s), under other ids.", quoted(s.lot.Name), ranges)
-		default:
+		case s.table.part == 0:
 			faults = append(faults, Fault{Place: s.table.place(), Text: fmt.Sprintf(
 				"found the readings of the lot %s twice (doubled block: %s), want each part once; delete the second block, or name its cells under exclude with a reason", quoted(s.lot.Name), ranges)})
+		case !repeated || r.plan.Reading.PartColumn != "":
+			ids := "under other ids"
+			if repeated {
+				ids = "under the same ids: they are averaged as repeat readings, but look like a copy"
+			}
+			s.table.warn("repeated-block", "the second half of the lot %s repeats the first exactly (%s), %s.", quoted(s.lot.Name), ranges, ids)
 		}
 	}
 	if len(faults) > 0 {
@@ -218,19 +261,19 @@ func (r *reader) checkRepeats() error {
 
 // repeatedIDs finds ids that stand twice among the readings used of one characteristic.
 func (r *reader) repeatedIDs(s *lotSide) (Fault, bool) {
-	places := map[string][]string{}
-	var repeated []string
+	places := map[[2]string][]string{}
+	var repeated [][2]string
 	for _, series := range s.lot.Series {
-		at := map[string][]string{}
+		at := map[[2]string][]string{}
 		for _, x := range series.Readings {
 			if x.Used() && x.Part != "" {
-				at[x.Part] = append(at[x.Part], x.Source.Place())
+				at[partOf(x)] = append(at[partOf(x)], x.Source.Place())
 			}
 		}
 		for _, x := range series.Readings {
-			if x.Used() && len(at[x.Part]) > 1 && places[x.Part] == nil {
-				places[x.Part] = at[x.Part]
-				repeated = append(repeated, x.Part)
+			if id := partOf(x); x.Used() && len(at[id]) > 1 && places[id] == nil {
+				places[id] = at[id]
+				repeated = append(repeated, id)
 			}
 		}
 	}
@@ -239,50 +282,9 @@ func (r *reader) repeatedIDs(s *lotSide) (Fault, bool) {
 	}
 	var listed []string
 	for _, id := range repeated {
-		listed = append(listed, fmt.Sprintf("%s in %s", quoted(id), strings.Join(places[id], " and ")))
+		listed = append(listed, fmt.Sprintf("%s in %s", quoted(id[1]), strings.Join(places[id], " and ")))
 	}
-	do := "if they are repeat readings of one part, name part_column under [reading] (averaging is not offered in this version); else correct the ids, or name the cells under exclude with a reason"
-	if r.plan.Reading.PartColumn != "" {
-		do = "repeat readings of a part are not averaged in this version: leave one reading a part and name the others under exclude with a reason"
-	}
+	do := "if they are repeat readings of one part, name part_column under [reading] and they are averaged; else correct the ids, or name the cells under exclude with a reason"
 	return Fault{Place: s.table.place(), Text: fmt.Sprintf("found %s more than once in the lot %s (%s), want each part once; %s",
 		qa.Count(len(repeated), "part id", "part ids"), quoted(s.lot.Name), join2(listed), do)}, true
-}
-
-// doubled says whether the second half of the lot's rows repeats the first exactly in every characteristic: four rows or more
-// with three distinct ones.
-func (s *lotSide) doubled() (string, bool) {
-	keys := map[int]string{}
-	for _, series := range s.lot.Series {
-		for _, x := range series.Readings {
-			if _, n, ok := cells.Parse(x.Source.Cell); ok && x.Used() {
-				keys[n] += series.Characteristic + "\x00" + strconv.FormatFloat(x.Value, 'g', -1, 64) + "\x00"
-			}
-		}
-	}
-	numbers := make([]int, 0, len(keys))
-	for n := range keys {
-		numbers = append(numbers, n)
-	}
-	slices.Sort(numbers)
-	half := len(numbers) / 2
-	if len(numbers) < 4 || len(numbers)%2 != 0 {
-		return "", false
-	}
-	distinct := map[string]bool{}
-	for i := range half {
-		if keys[numbers[i]] != keys[numbers[half+i]] {
-			return "", false
-		}
-		distinct[keys[numbers[i]]] = true
-	}
-	if len(distinct) < 3 {
-		return "", false
-	}
-	var ranges []string
-	for _, col := range s.cols {
-		l := cells.Letters(col)
-		ranges = append(ranges, fmt.Sprintf("%s%d:%s%d and %s%d:%s%d", l, numbers[0], l, numbers[half-1], l, numbers[half], l, numbers[len(numbers)-1]))
-	}
-	return join2(ranges), true
 }

@@ -12,6 +12,8 @@ const (
 	lotHeading   = "lot"
 	partHeading  = "part"
 	orderHeading = "order"
+	groupHeading = "group"
+	takerHeading = "taker" // who or what took the readings
 
 	unitLabel    = "unit"
 	nominalLabel = "nominal"
@@ -33,6 +35,8 @@ var headingWords = words(
 	means(partHeading, "part|part no|part nr|part number|part id|partno|parts|serial|serial no|serial nr|serial number|s/n|sn|no|nr|#|id|number|"+
 		"sample|sample no|sample nr|sample id|sample number|specimen|specimen no|specimen id|piece|piece no|item|item no|unit no|"+
 		"teil|teil nr|teil-nr|teilenr|teilenummer|teil-id|nummer|seriennummer|serien-nr|probe|proben-nr|probe nr|stück|lfd. nr|lfd nr"),
+	means(groupHeading, "cavity|cavity no|cav|kavität|nest|heat|heat no|melt|schmelze|subgroup|sublot|sub-lot|supplier|lieferant|machine|machine no|maschine|mould|mold|tool no"),
+	means(takerHeading, "operator|inspector|prüfer|gauge no|gage no|messmittel|prüfmittel"),
 	means(orderHeading, "date|time|date/time|timestamp|datum|zeit|uhrzeit|measured at|measured on|order|sequence|reihenfolge"),
 )
 

@@ -1,0 +1,105 @@
+package importers
+
+import (
+	"slices"
+
+	"lotpair/qa"
+)
+
+// The layouts (contract: plan, "Layouts").
+const (
+	RowPerPart           = "row-per-part"
+	ColumnPerLot         = "column-per-lot"
+	SheetPerLot          = "sheet-per-lot"
+	RowPerCharacteristic = "row-per-characteristic"
+)
+
+// Layouts are the layouts that a plan may name.
+var Layouts = []string{RowPerPart, ColumnPerLot, SheetPerLot, RowPerCharacteristic}
+
+// Confidence says how sure a proposed layout is, in a word.
+type Confidence string
+
+// The confidences.
+const (
+	Stated Confidence = "stated"  // the plan says so
+	Clear  Confidence = "clear"   // the sheet can hardly be meant otherwise
+	Likely Confidence = "likely"  // another reading is possible: look at it
+	Unsure Confidence = "unclear" // nothing speaks for another layout, little for this one
+)
+
+// steps are the ways of reading the sheet's layout, in order.
+func (t *table) steps() []func() error {
+	t.chooseLayout()
+	switch t.layout {
+	case RowPerCharacteristic:
+		return []func() error{t.readCharacteristicRows, t.measureTurned}
+	case ColumnPerLot:
+		return []func() error{t.findLotColumns, t.readHeadings, t.sortRows, t.turnLots, t.measureTurned}
+	}
+	return []func() error{
+		t.findHeading, t.choosePanel, t.readHeadings, t.findLotColumn, t.findPartColumn, t.sortRows, t.turnSections, t.findMeasured,
+	}
+}
+
+// chooseLayout takes the plan's layout, else the one that the sheet speaks for. Within a sheet of one lot (sheet-per-lot) the
+// rows may still be parts or characteristics.
+func (t *table) chooseLayout() {
+	because := func(layout string, c Confidence, reason string) {
+		t.layout, t.confidence, t.reasons = layout, c, append(t.reasons, reason)
+	}
+	said := t.reading.Layout
+	if said != "" && said != SheetPerLot {
+		because(said, Stated, "the layout is stated.")
+		return
+	}
+	rowsOfCharacteristics := t.characteristicHeading() > 0
+	lotHeadings := slices.ContainsFunc(t.lookRows(), func(i int) bool { return t.headingScore(i) >= 1000 })
+	switch row := t.sideBySide(); {
+	case said == SheetPerLot && rowsOfCharacteristics:
+		because(RowPerCharacteristic, Likely, "the layout is stated, a lot a sheet; in the sheet the headings name a characteristic, its limits and then a column a part.")
+	case said == SheetPerLot:
+		because(RowPerPart, Stated, "the layout is stated, a lot a sheet; in the sheet a row is a part.")
+	case rowsOfCharacteristics && !lotHeadings:
+		because(RowPerCharacteristic, Clear, "the headings name a characteristic, its limits and then a column a part.")
+	case lotHeadings:
+		because(RowPerPart, Clear, "a heading says that its column names the lot, and a row is a part.")
+	case row > 0 && !t.titles():
+		because(ColumnPerLot, Clear, "the lots are named side by side in row "+itoa(row)+", each above its readings.")
+	case len(t.hints.lots) == 0 && t.lotsAsHeadings():
+		because(ColumnPerLot, Likely, "the headings look like names of lots, each above its readings; if they are characteristics, state the layout row-per-part.")
+	case t.titles() || len(t.hints.lots) > 0 && !t.whole:
+		because(RowPerPart, Likely, "the lots are named below each other.")
+	default:
+		because(RowPerPart, Likely, "a row is a part and a column a characteristic; if the columns are lots, state the layout column-per-lot.")
+	}
+}
+
+// lookRows are the indices of the rows that may be headings.
+func (t *table) lookRows() []int {
+	var at []int
+	for i, r := range t.sheet.Rows {
+		if len(at) == lookHeadings {
+			break
+		}
+		if !t.comment(r) && slices.ContainsFunc(r.Cells, stored) {
+			at = append(at, i)
+		}
+	}
+	return at
+}
+
+// firstHeading is the plan's row of headings as an index, -1 where the plan states none.
+func (t *table) firstHeading() int {
+	for i, r := range t.sheet.Rows {
+		if t.reading.HeaderRow > 0 && r.Number == t.reading.HeaderRow {
+			return i
+		}
+	}
+	return -1
+}
+
+// isLot says whether a text is the name of a lot looked for.
+func (t *table) isLot(text string) bool {
+	return slices.ContainsFunc(t.hints.lots, func(l string) bool { return qa.JoinSpace(l) == text })
+}

@@ -1,0 +1,123 @@
+package importers
+
+import (
+	"fmt"
+	"math/big"
+	"strconv"
+	"strings"
+
+	"lotpair/qa"
+)
+
+// maxRepeats is how many readings of one part are averaged: a column that says the same in every row is no part's id.
+const maxRepeats = 500
+
+// averageRepeats makes one reading of several rows of one part in a lot, where the plan names the column of the parts: their
+// mean, with the cells and texts of all of them. Readings left out have no part in it. Repeats beyond the first are counted.
+func (r *reader) averageRepeats() error {
+	if r.plan.Reading.PartColumn == "" {
+		return nil
+	}
+	for i := range r.sides {
+		s := &r.sides[i]
+		most, least, parts := 0, 0, 0
+		for k := range s.lot.Series {
+			series := &s.lot.Series[k]
+			by := map[[2]string][]int{}
+			for j, x := range series.Readings {
+				if x.Used() {
+					by[partOf(x)] = append(by[partOf(x)], j)
+				}
+			}
+			if len(by) == len(series.Readings) {
+				continue
+			}
+			averaged, err := s.average(series, by)
+			if err != nil {
+				return err
+			}
+			for _, at := range by {
+				if most = max(most, len(at)); least == 0 || len(at) < least {
+					least = len(at)
+				}
+			}
+			series.Readings, parts = averaged, max(parts, len(by))
+		}
+		if most < 2 {
+			continue
+		}
+		s.lot.Rows = s.countParts()
+		s.table.say("%s: repeat readings of a part are averaged, %d a part at most; a part counts once.", s.lot.Name, most)
+		if least < most {
+			s.table.warn("unequal-repeats", "%s: the parts have %d to %d readings each, averaged to one; means of fewer readings vary more.", s.lot.Name, least, most)
+		}
+	}
+	return nil
+}
+
+// partOf is a part's id within its group.
+func partOf(x qa.Reading) [2]string { return [2]string{x.Group, x.Part} }
+
+// average replaces the readings of each part by their mean, in the place of the first.
+func (s *lotSide) average(series *qa.Series, by map[[2]string][]int) ([]qa.Reading, error) {
+	var out []qa.Reading
+	for j, x := range series.Readings {
+		at := by[partOf(x)]
+		switch {
+		case !x.Used() || len(at) == 1:
+			out = append(out, x)
+			continue
+		case x.Part == "":
+			return nil, planError(x.Source.String(), "found a reading without a part's id under part_column, want the id in each row; write it there, or name the cell under exclude with a reason")
+		case len(at) > maxRepeats:
+			return nil, s.table.refuse("reading.part_column: found %d readings of the part %s in the lot %s, want at most %d; name the column of the parts' ids", len(at), quoted(x.Part), quoted(s.lot.Name), maxRepeats)
+		case at[0] != j:
+			continue
+		}
+		values, cellNames, texts := make([]float64, len(at)), make([]string, len(at)), make([]string, len(at))
+		for i, k := range at {
+			one := series.Readings[k]
+			values[i], cellNames[i], texts[i] = one.Value, one.Source.Cell, one.Source.Text
+			x.Decimals = max(x.Decimals, one.Decimals)
+		}
+		x.Value = exactMean(values)
+		x.Source.Cell, x.Source.Text = strings.Join(cellNames, ", "), strings.Join(texts, "; ")
+		series.Repeats += len(at) - 1
+		out = append(out, x)
+	}
+	return out, nil
+}
+
+// exactMean is the double nearest to the exact mean of the values as decimals in their shortest form: the mean of 11.997 and
+// 11.998 is 11.9975.
+func exactMean(values []float64) float64 {
+	sum, x := new(big.Rat), new(big.Rat)
+	for _, v := range values {
+		if _, ok := x.SetString(strconv.FormatFloat(v, 'e', -1, 64)); ok { // readings are finite
+			sum.Add(sum, x)
+		}
+	}
+	mean, _ := sum.Quo(sum, new(big.Rat).SetInt64(int64(len(values)))).Float64()
+	return mean
+}
+
+// countParts counts the parts among the lot's rows.
+func (s *lotSide) countParts() int {
+	ids, unnamed := map[string]bool{}, 0
+	for _, r := range s.rows {
+		id := ""
+		if s.table.part > 0 {
+			id = filledText(s.table.cell(r, s.table.part))
+		}
+		if id == "" {
+			unnamed++
+			continue
+		}
+		group := ""
+		if s.table.group > 0 {
+			group = filledText(s.table.cell(r, s.table.group))
+		}
+		ids[fmt.Sprintf("%q %q", group, id)] = true
+	}
+	return len(ids) + unnamed
+}
