@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"fmt"
 	"image/png"
+	"io"
 	"strings"
 
 	"github.com/xuri/excelize/v2"
@@ -16,7 +17,7 @@ type book struct {
 	title  string
 	foot   string // at the left of every page's foot
 	sheets []sheet
-	record []byte // the custom XML part; nil for a workbook that carries none
+	record func(w io.Writer) error // writes the custom XML part; nil for a workbook that carries none
 	draft  bool
 }
 
@@ -27,12 +28,13 @@ const epoch = "2000-01-01T00:00:00Z"
 func (b book) bytes() ([]byte, error) {
 	f := excelize.NewFile()
 	defer f.Close()
-	w := &looks{file: f, ids: map[look]int{}}
+	w := &looks{file: f}
 	if err := f.SetDefaultFont(workbookFont); err != nil {
 		return nil, fmt.Errorf("workbook: %w", err)
 	}
-	data := map[string][]byte{} // part name to its cells
-	for i, s := range b.sheets {
+	data := map[string]func(io.Writer) error{} // part name to what writes its cells
+	for i := range b.sheets {
+		s := &b.sheets[i]
 		if i == 0 {
 			if err := f.SetSheetName("Sheet1", s.name); err != nil {
 				return nil, fmt.Errorf("workbook: %w", err)
@@ -40,14 +42,15 @@ func (b book) bytes() ([]byte, error) {
 		} else if _, err := f.NewSheet(s.name); err != nil {
 			return nil, fmt.Errorf("workbook: %w", err)
 		}
-		if err := b.frame(f, s); err != nil {
+		if err := b.frame(f, *s); err != nil {
 			return nil, fmt.Errorf("workbook, sheet %s: %w", s.name, err)
 		}
-		cells, err := sheetData(s, w)
-		if err != nil {
-			return nil, fmt.Errorf("workbook, sheet %s: %w", s.name, err)
+		data[fmt.Sprintf("xl/worksheets/sheet%d.xml", i+1)] = func(to io.Writer) error { return writeSheetData(to, s, w) }
+	}
+	for k := range look(lastLook + 1) { // the styles stand in the file before the cells are written
+		if _, err := w.id(k); err != nil {
+			return nil, fmt.Errorf("workbook: %w", err)
 		}
-		data[fmt.Sprintf("xl/worksheets/sheet%d.xml", i+1)] = cells
 	}
 	if err := f.SetAppProps(&excelize.AppProperties{Application: "Lotpair", AppVersion: "1.0"}); err != nil {
 		return nil, fmt.Errorf("workbook: %w", err)
@@ -89,7 +92,7 @@ func (b book) frame(f *excelize.File, s sheet) error {
 			return err
 		}
 	}
-	if n := len(s.rows); n > 0 {
+	if n := max(len(s.rows), s.filterTo); n > 0 {
 		if err := f.SetSheetDimension(s.name, "A1:"+cells.Name(max(1, len(s.widths)), n)); err != nil {
 			return err
 		}

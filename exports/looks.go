@@ -16,11 +16,11 @@ const (
 // looks holds the style ids of a workbook, made on first use.
 type looks struct {
 	file *excelize.File
-	ids  map[look]int
+	ids  [lastLook + 1]int // 0: not made yet
 }
 
 func (l *looks) id(k look) (int, error) {
-	if id, ok := l.ids[k]; ok {
+	if id := l.ids[k]; id != 0 {
 		return id, nil
 	}
 	s := style(k)

@@ -97,7 +97,7 @@ func noteContent(v Verification, line func(name, value string)) {
 	}
 	r := v.Record.Result
 	line("content", orWord(r.Title, "a comparison")+prefixed(", supports ", r.Supports))
-	if _, digest, err := encodeRecord(*v.Record); err == nil {
+	if digest, err := contentDigest(*v.Record); err == nil {
 		line("record", RecordID(digest)+", digest of its content "+digest)
 	}
 	line("verdict in it", r.Sentence)

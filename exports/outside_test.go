@@ -70,9 +70,9 @@ func TestOutsideLibreOfficeAndR(t *testing.T) {
 	if err := os.WriteFile(file, pkg, 0o600); err != nil {
 		t.Fatal(err)
 	}
-	// The options of the text filter: comma, quote, UTF-8, from row 1, as stored and not as shown, fourth sheet.
+	// The options of the text filter: comma, quote, UTF-8, from row 1, as stored and not as shown, fifth sheet.
 	command(t, "soffice", "--headless", "-env:UserInstallation=file://"+filepath.Join(dir, "profile"),
-		"--convert-to", "csv:Text - txt - csv (StarCalc):44,34,76,1,,0,false,false,false,false,false,4", "--outdir", dir, file)
+		"--convert-to", "csv:Text - txt - csv (StarCalc):44,34,76,1,,0,false,false,false,false,false,5", "--outdir", dir, file)
 	texts, err := filepath.Glob(filepath.Join(dir, "*Readings*.csv"))
 	if err != nil || len(texts) != 1 {
 		t.Fatalf("LibreOffice wrote %v, %v; want the sheet Readings as csv", texts, err)

@@ -12,7 +12,7 @@ import (
 // differ: a cell that shows something else, a cell too many, a cell gone, a sheet too many. Numbers must be the same doubles,
 // because the sheets state the record's own; whether the recomputation agrees with them is asked elsewhere.
 func sheetDifferences(pkg []byte, rec qa.Record) []string {
-	_, digest, err := encodeRecord(rec)
+	digest, err := contentDigest(rec)
 	if err != nil {
 		return []string{err.Error()}
 	}
@@ -48,7 +48,7 @@ func bookDifferences(pkg []byte, wanted []sheet) []string {
 				say("%v", err)
 			}
 		}
-		compareSheet(want, got, formulas, say)
+		compareSheet(&want, got, formulas, say)
 	}
 	for _, s := range book.Sheets {
 		if !expected[s.Name] {
@@ -69,13 +69,12 @@ func (s sheet) hasFormulas() bool {
 	return false
 }
 
-func compareSheet(want sheet, got cells.Sheet, formulas map[string]string, say func(string, ...any)) {
+func compareSheet(want *sheet, got cells.Sheet, formulas map[string]string, say func(string, ...any)) {
 	if len(got.HiddenCols) > 0 {
 		say("sheet %s: found hidden columns, want all in sight", want.name)
 	}
 	next := 0 // of got.Rows
-	for i, r := range want.rows {
-		number := i + 1
+	want.lines(func(number int, r row) bool {
 		var have cells.Row
 		if next < len(got.Rows) && got.Rows[next].Number == number {
 			have = got.Rows[next]
@@ -85,7 +84,8 @@ func compareSheet(want sheet, got cells.Sheet, formulas map[string]string, say f
 			say("sheet %s: row %d is hidden", want.name, number)
 		}
 		compareRow(want.name, number, r, have, formulas, say)
-	}
+		return true
+	})
 	for ; next < len(got.Rows); next++ {
 		for _, c := range got.Rows[next].Cells {
 			if c.Kind != cells.Blank {
@@ -95,36 +95,49 @@ func compareSheet(want sheet, got cells.Sheet, formulas map[string]string, say f
 	}
 }
 
+// compareRow goes along both rows together: columns ascend in each.
 func compareRow(name string, number int, want row, got cells.Row, formulas map[string]string, say func(string, ...any)) {
-	expected := map[int]cell{}
-	col := 1
-	for _, c := range want.cells {
-		expected[col] = c
-		col += max(c.span, 1)
+	next, col := 0, 1
+	for i := range want.cells {
+		w := &want.cells[i]
+		for ; next < len(got.Cells) && got.Cells[next].Col < col; next++ {
+			surplus(name, &got.Cells[next], say)
+		}
+		if next < len(got.Cells) && got.Cells[next].Col == col {
+			compareCell(name, w, &got.Cells[next], formulas, say)
+			next++
+		} else if w.number != nil || w.text != "" {
+			say("%s!%s: found nothing, want what the record gives", name, cells.Name(col, number))
+		}
+		col += max(w.span, 1)
 	}
-	seen := map[int]bool{}
-	for _, g := range got.Cells {
-		if g.Kind == cells.Blank && !g.Formula {
-			continue
-		}
-		seen[g.Col] = true
-		w := expected[g.Col]
-		switch {
-		case g.Formula && w.formula == "":
-			say("%s!%s: found a formula, want a value", name, g.Name())
-		case w.formula != "" && (!g.Formula || formulas[g.Name()] != w.formula):
-			say("%s!%s: found the formula %q, want %q", name, g.Name(), formulas[g.Name()], w.formula)
-		case w.number != nil:
-			if x, err := strconv.ParseFloat(g.Text, 64); err != nil || g.Kind != cells.Number || x != *w.number {
-				say("%s!%s: found %q, want %s", name, g.Name(), g.Text, shortest(*w.number))
-			}
-		case g.Kind != cells.Text || g.Text != w.text:
-			say("%s!%s: found %q, want %q", name, g.Name(), g.Text, w.text)
-		}
+	for ; next < len(got.Cells); next++ {
+		surplus(name, &got.Cells[next], say)
 	}
-	for c := 1; c < col; c++ {
-		if w := expected[c]; !seen[c] && (w.number != nil || w.text != "") {
-			say("%s!%s: found nothing, want what the record gives", name, cells.Name(c, number))
+}
+
+// surplus is a cell where the record gives none.
+func surplus(name string, g *cells.Cell, say func(string, ...any)) {
+	if g.Formula {
+		say("%s!%s: found a formula, want nothing", name, g.Name())
+	} else if g.Kind != cells.Blank {
+		say("%s!%s: found %q, want nothing", name, g.Name(), g.Text)
+	}
+}
+
+func compareCell(name string, w *cell, g *cells.Cell, formulas map[string]string, say func(string, ...any)) {
+	switch {
+	case g.Formula && w.formula == "":
+		say("%s!%s: found a formula, want a value", name, g.Name())
+	case w.formula != "" && (!g.Formula || formulas[g.Name()] != w.formula):
+		say("%s!%s: found the formula %q, want %q", name, g.Name(), formulas[g.Name()], w.formula)
+	case w.number != nil:
+		if x, err := strconv.ParseFloat(g.Text, 64); err != nil || g.Kind != cells.Number || x != *w.number {
+			say("%s!%s: found %q, want %s", name, g.Name(), g.Text, shortest(*w.number))
 		}
+	case w.text == "" && g.Kind != cells.Blank:
+		say("%s!%s: found %q, want nothing", name, g.Name(), g.Text)
+	case w.text != "" && (g.Kind != cells.Text || g.Text != w.text):
+		say("%s!%s: found %q, want %q", name, g.Name(), g.Text, w.text)
 	}
 }

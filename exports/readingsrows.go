@@ -21,29 +21,43 @@ func readingsSheet(rec qa.Record) sheet {
 	s.addTall(30, wide("Every reading at full precision, with the text and the place it was read from. What is left out stays here, in a column of its own, and is not used.", wrapLook, 10))
 	s.add(heads("Side", "Lot", "Characteristic", "Value", "Value left out", "Unit", "Text found", "File", "Cell", "State")...)
 	s.frozen, s.heads, s.filter = len(s.rows), len(s.rows), len(s.rows)
+	s.filterTo = len(s.rows)
+	for _, side := range []qa.Side{qa.Reference, qa.Candidate} {
+		for _, series := range lotOf(rec, side).Series {
+			s.filterTo += len(series.Readings)
+		}
+	}
+	s.more = func(yield func(row) bool) { readingRows(rec, yield) }
+	return s
+}
+
+// readingRows makes the line of each reading, in one room for all.
+func readingRows(rec qa.Record, yield func(row) bool) {
 	units := map[string]string{}
 	for _, c := range rec.Readings.Characteristics {
 		units[c.Name] = c.Unit
 	}
+	line := make([]cell, 10)
+	used := text("used", ruledLook)
 	for _, side := range []qa.Side{qa.Reference, qa.Candidate} {
 		lot := lotOf(rec, side)
-		sideCell, lotCell := text(string(side), ruledLook), text(lot.Name, ruledLook)
+		line[0], line[1] = text(string(side), ruledLook), text(lot.Name, ruledLook)
 		for _, series := range lot.Series {
-			name, unit := text(series.Characteristic, ruledLook), text(units[series.Characteristic], ruledLook)
+			line[2], line[5] = text(series.Characteristic, ruledLook), text(units[series.Characteristic], ruledLook)
 			for i := range series.Readings {
 				r := &series.Readings[i]
-				state, value, left := "used", number(&r.Value, ruledNumberLook), cell{look: ruledNumberLook}
+				line[3], line[4], line[9] = number(&r.Value, ruledNumberLook), cell{look: ruledNumberLook}, used
 				if !r.Used() {
-					state = "left out: " + r.LeftOut
-					value, left = left, value
+					line[3], line[4] = line[4], line[3]
+					line[9] = text("left out: "+r.LeftOut, ruledLook)
 				}
-				s.add(sideCell, lotCell, name, value, left, unit, text(r.Source.Text, ruledLook),
-					text(r.Source.File, ruledLook), text(r.Source.Place(), ruledLook), text(state, ruledLook))
+				line[6], line[7], line[8] = text(r.Source.Text, ruledLook), text(r.Source.File, ruledLook), text(r.Source.Place(), ruledLook)
+				if !yield(row{cells: line}) {
+					return
+				}
 			}
 		}
 	}
-	s.filterTo = len(s.rows)
-	return s
 }
 
 // readingRanges gives, for a side and a characteristic, the cells of the sheet Readings that hold the values in use.

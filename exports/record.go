@@ -66,49 +66,40 @@ type readingXML struct {
 	Sheet    *string `xml:"s,attr"`
 }
 
-// encodeRecord writes the record as XML, and gives the digest of its content: everything but the signer and the acts of
-// signing, so that a draft and the signed record made of it have one id. The readings are written by hand, because there may be
-// a million.
-func encodeRecord(rec qa.Record) (part []byte, digest string, err error) {
+// writeRecord writes the record as XML, and gives the digest of its content: everything but the signer and the acts of signing,
+// so that a draft and the signed record made of it have one id. The readings are written by hand, because there may be a
+// million.
+func writeRecord(w io.Writer, rec qa.Record) (digest string, err error) {
 	around := rec.Readings
 	around.Reference, around.Candidate = qa.Lot{}, qa.Lot{}
-	var b bytes.Buffer
-	b.WriteString(xml.Header)
-	fmt.Fprintf(&b, `<record xmlns="%s" format="%s" calculation="%d">`, recordNamespace, rec.Format, rec.Result.Software.Calculation)
-	put := func(name string, v any) {
-		if err == nil {
-			err = putJSON(&b, name, v)
-		}
-	}
-	put("plan", rec.Plan)
-	put("planFile", rec.PlanFile)
-	for _, l := range []struct {
-		side qa.Side
-		lot  qa.Lot
-	}{{qa.Reference, rec.Readings.Reference}, {qa.Candidate, rec.Readings.Candidate}} {
-		if err == nil {
-			err = encodeLot(&b, l.side, l.lot)
-		}
-	}
-	put("around", around)
-	put("result", rec.Result)
-	if err != nil {
-		return nil, "", err
-	}
 	content := sha256.New()
-	content.Write(b.Bytes())
+	b := &recordWriter{to: io.MultiWriter(w, content)}
+	b.WriteString(xml.Header)
+	fmt.Fprintf(b, `<record xmlns="%s" format="%s" calculation="%d">`, recordNamespace, rec.Format, rec.Result.Software.Calculation)
+	b.json("plan", rec.Plan)
+	b.json("planFile", rec.PlanFile)
+	b.lot(qa.Reference, rec.Readings.Reference)
+	b.lot(qa.Candidate, rec.Readings.Candidate)
+	b.json("around", around)
+	b.json("result", rec.Result)
+	b.flush()
 	acts, err := json.Marshal(withoutSigning(rec.Trail))
 	if err != nil {
-		return nil, "", fmt.Errorf("record: %w", err)
+		return "", fmt.Errorf("record: %w", err)
 	}
 	content.Write(acts)
-	put("trail", rec.Trail)
+	b.to = w
+	b.json("trail", rec.Trail)
 	if rec.Signer != nil {
-		put("signer", rec.Signer)
+		b.json("signer", rec.Signer)
 	}
 	b.WriteString("</record>")
-	return b.Bytes(), hex.EncodeToString(content.Sum(nil)), err
+	b.flush()
+	return hex.EncodeToString(content.Sum(nil)), b.err
 }
+
+// contentDigest is the digest of a record's content.
+func contentDigest(rec qa.Record) (string, error) { return writeRecord(io.Discard, rec) }
 
 // signedAs begins the act of signing in the trail.
 const signedAs = "signed as "
@@ -123,79 +114,90 @@ func withoutSigning(t qa.Trail) qa.Trail {
 	return out
 }
 
-func putJSON(b *bytes.Buffer, name string, v any) error {
-	text, err := json.Marshal(v)
-	if err != nil {
-		return fmt.Errorf("record: %w", err)
-	}
-	b.WriteString("<" + name + ">")
-	_ = xml.EscapeText(b, text) // a bytes.Buffer does not fail
-	b.WriteString("</" + name + ">")
-	return nil
+// recordWriter gathers XML and passes it on; the first error stays.
+type recordWriter struct {
+	bytes.Buffer
+	to  io.Writer
+	err error
 }
 
-func encodeLot(b *bytes.Buffer, side qa.Side, l qa.Lot) error {
+func (b *recordWriter) flush() {
+	if b.err == nil {
+		_, b.err = b.to.Write(b.Bytes())
+	}
+	b.Reset()
+}
+
+// json writes an element that holds a value as JSON.
+func (b *recordWriter) json(name string, v any) {
+	text, err := json.Marshal(v)
+	if err != nil && b.err == nil {
+		b.err = fmt.Errorf("record: %w", err)
+	}
+	b.WriteString("<" + name + ">")
+	_ = xml.EscapeText(b, text) // a buffer does not fail
+	b.WriteString("</" + name + ">")
+}
+
+func (b *recordWriter) lot(side qa.Side, l qa.Lot) {
 	b.WriteString(`<lot side="` + string(side) + `">`)
 	head := l
 	head.Series = nil
-	if err := putJSON(b, "head", head); err != nil {
-		return err
-	}
+	b.json("head", head)
 	for _, s := range l.Series {
 		b.WriteString("<series>")
 		h := s
 		h.Readings = nil
-		if err := putJSON(b, "head", h); err != nil {
-			return err
-		}
+		b.json("head", h)
 		file, sheet := "", ""
 		for i := range s.Readings {
+			const full = 1 << 16
+			if b.Len() > full {
+				b.flush()
+			}
 			r := &s.Readings[i]
-			value := shortest(r.Value)
-			b.WriteString(`<r v="` + value)
-			putAttribute(b, "c", r.Source.Cell)
+			var room [32]byte
+			value := string(strconv.AppendFloat(room[:0], r.Value, 'g', -1, 64))
+			b.WriteString(`<r v="`)
+			b.WriteString(value)
+			b.attribute("c", r.Source.Cell)
 			if r.Source.Text != value {
-				putAttribute(b, "t", r.Source.Text)
+				b.attribute("t", r.Source.Text)
 			}
 			if r.Part != "" {
-				putAttribute(b, "p", r.Part)
+				b.attribute("p", r.Part)
 			}
 			if r.Decimals != 0 {
-				putAttribute(b, "d", strconv.Itoa(r.Decimals))
+				b.attribute("d", strconv.Itoa(r.Decimals))
 			}
 			if r.LeftOut != "" {
-				putAttribute(b, "out", r.LeftOut)
-			}
-			if r.Group != "" {
-				putAttribute(b, "g", r.Group)
-			}
-			if r.Order != "" {
-				putAttribute(b, "o", r.Order)
+				b.attribute("out", r.LeftOut)
 			}
 			if r.Source.File != file {
 				file = r.Source.File
-				putAttribute(b, "f", file)
+				b.attribute("f", file)
 			}
 			if r.Source.Sheet != sheet {
 				sheet = r.Source.Sheet
-				putAttribute(b, "s", sheet)
+				b.attribute("s", sheet)
 			}
 			b.WriteString(`"></r>`)
 		}
 		b.WriteString("</series>")
 	}
 	b.WriteString("</lot>")
-	return nil
 }
 
-// putAttribute closes the attribute before and writes the next but for its last quote.
-func putAttribute(b *bytes.Buffer, name, value string) {
-	b.WriteString(`" ` + name + `="`)
+// attribute closes the attribute before and writes the next but for its last quote.
+func (b *recordWriter) attribute(name, value string) {
+	b.WriteString(`" `)
+	b.WriteString(name)
+	b.WriteString(`="`)
 	if plainText(value) {
 		b.WriteString(value)
 		return
 	}
-	_ = xml.EscapeText(b, []byte(value)) // a bytes.Buffer does not fail
+	_ = xml.EscapeText(b, []byte(value)) // a buffer does not fail
 }
 
 // plainText says that nothing of a text has to be escaped.

@@ -62,6 +62,7 @@ const (
 	signLook
 	headPlainLook // names of the result format, over what they mean
 	headPlainRightLook
+	lastLook = iota - 1
 )
 
 // row is one row of a sheet; a height of 0 leaves it to the program.
@@ -75,11 +76,12 @@ type sheet struct {
 	name      string
 	widths    []float64 // of the columns, in characters
 	rows      []row
-	frozen    int // rows that stay in sight
-	heads     int // the last of them, which repeat on every printed page
-	columns   int // columns that stay in sight and repeat on every printed page
-	filter    int // the heading row from which the table can be filtered; 0 for none
-	filterTo  int // and its last row
+	more      func(yield func(row) bool) // lines after rows, made one at a time: there may be a million
+	frozen    int                        // rows that stay in sight
+	heads     int                        // the last of them, which repeat on every printed page
+	columns   int                        // columns that stay in sight and repeat on every printed page
+	filter    int                        // the heading row from which the table can be filtered; 0 for none
+	filterTo  int                        // and its last row
 	landscape bool
 	flows     bool // over several pages side by side, where as wide as a page would be too small to read
 	breaks    []int
@@ -93,6 +95,23 @@ type picture struct {
 	width, height float64 // points
 	about         string
 	paint         func() ([]byte, error)
+}
+
+// lines are all rows of the sheet with their numbers. A row is good until the next one.
+func (s *sheet) lines(yield func(number int, r row) bool) {
+	for i, r := range s.rows {
+		if !yield(i+1, r) {
+			return
+		}
+	}
+	if s.more == nil {
+		return
+	}
+	n := len(s.rows)
+	s.more(func(r row) bool {
+		n++
+		return yield(n, r)
+	})
 }
 
 func (s *sheet) add(cells ...cell) { s.rows = append(s.rows, row{cells: cells}) }

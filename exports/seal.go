@@ -1,11 +1,11 @@
 package exports
 
 import (
-	"bytes"
 	"encoding/json"
 	"encoding/xml"
 	"errors"
 	"fmt"
+	"io"
 	"slices"
 	"strings"
 	"time"
@@ -60,11 +60,7 @@ func (s Sealed) Trail(after qa.Trail, file qa.File) qa.Trail {
 // Workbook writes the seal as an .xlsx package: one sheet that states the criterion, and the plan as custom XML. The same seal
 // gives the same bytes.
 func (s Sealed) Workbook() ([]byte, error) {
-	record, err := s.encode()
-	if err != nil {
-		return nil, err
-	}
-	b := book{title: s.Plan.Title, sheets: s.sheets(), record: record, draft: s.Signer == nil}
+	b := book{title: s.Plan.Title, sheets: s.sheets(), record: s.encode, draft: s.Signer == nil}
 	b.foot = footerText("Criterion of "+orWord(s.Plan.Title, "a comparison"), s.Plan.Supports) + "\nCriterion " + shortDigest(s.Digest)
 	return b.bytes()
 }
@@ -87,15 +83,14 @@ func SignSeal(s Sealed, id identity.Identity, st opcsign.Statement) ([]byte, err
 	return out, nil
 }
 
-func (s Sealed) encode() ([]byte, error) {
-	var b bytes.Buffer
+func (s Sealed) encode(w io.Writer) error {
+	b := &recordWriter{to: w}
 	b.WriteString(xml.Header)
-	fmt.Fprintf(&b, `<record xmlns="%s" format="%s">`, recordNamespace, SealFormat)
-	if err := putJSON(&b, "seal", s); err != nil {
-		return nil, err
-	}
+	fmt.Fprintf(b, `<record xmlns="%s" format="%s">`, recordNamespace, SealFormat)
+	b.json("seal", s)
 	b.WriteString("</record>")
-	return b.Bytes(), nil
+	b.flush()
+	return b.err
 }
 
 // ReadSeal takes the seal out of a workbook. It checks nothing: Verify does.

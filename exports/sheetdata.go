@@ -3,7 +3,7 @@ package exports
 import (
 	"bytes"
 	"encoding/xml"
-	"fmt"
+	"io"
 	"strconv"
 	"strings"
 
@@ -16,50 +16,101 @@ import (
 // needs the double that was computed. Everything around the cells (columns, merged areas, panes, printing, pictures, styles)
 // is the library's.
 
-// sheetData is the <sheetData> element of a sheet (ISO/IEC 29500-1, 18.3.1.80): numbers in the shortest form that reads back
-// as the same double, texts inline.
-func sheetData(s sheet, w *looks) ([]byte, error) {
+// writeSheetData writes the <sheetData> element of a sheet (ISO/IEC 29500-1, 18.3.1.80): numbers in the shortest form that
+// reads back as the same double, texts inline.
+func writeSheetData(to io.Writer, s *sheet, w *looks) error {
+	const full = 1 << 16
 	var b bytes.Buffer
+	var err error
 	b.WriteString("<sheetData>")
-	for i, r := range s.rows {
+	s.lines(func(number int, r row) bool {
 		if len(r.cells) == 0 && r.height == 0 {
-			continue
+			return true
 		}
-		n := strconv.Itoa(i + 1)
-		b.WriteString(`<row r="` + n + `"`)
-		if r.height > 0 {
-			b.WriteString(` ht="` + strconv.FormatFloat(min(r.height, 409), 'f', -1, 64) + `" customHeight="1"`)
+		if err = writeRow(&b, number, r, w); err == nil && b.Len() >= full {
+			_, err = to.Write(b.Bytes())
+			b.Reset()
 		}
-		b.WriteString(">")
-		col := 1
-		for _, c := range r.cells {
-			id, err := w.id(c.look)
-			if err != nil {
-				return nil, err
-			}
-			writeCell(&b, c, cells.Name(col, i+1), id)
-			for k := 1; k < c.span; k++ {
-				fmt.Fprintf(&b, `<c r="%s" s="%d"/>`, cells.Name(col+k, i+1), id)
-			}
-			col += max(c.span, 1)
-		}
-		b.WriteString("</row>")
+		return err == nil
+	})
+	if err != nil {
+		return err
 	}
 	b.WriteString("</sheetData>")
-	return b.Bytes(), nil
+	_, err = to.Write(b.Bytes())
+	return err
 }
 
-func writeCell(b *bytes.Buffer, c cell, name string, style int) {
-	b.WriteString(`<c r="` + name + `" s="` + strconv.Itoa(style) + `"`)
+func writeRow(b *bytes.Buffer, number int, r row, w *looks) error {
+	var room [8]byte
+	at := strconv.AppendInt(room[:0], int64(number), 10)
+	b.WriteString(`<row r="`)
+	b.Write(at)
+	if r.height > 0 {
+		b.WriteString(`" ht="` + strconv.FormatFloat(min(r.height, 409), 'f', -1, 64) + `" customHeight="1`)
+	}
+	b.WriteString(`">`)
+	col := 1
+	for i := range r.cells {
+		c := &r.cells[i]
+		id, err := w.id(c.look)
+		if err != nil {
+			return err
+		}
+		writeCell(b, c, col, at, id)
+		for k := 1; k < c.span; k++ {
+			startCell(b, col+k, at, id)
+			b.WriteString("/>")
+		}
+		col += max(c.span, 1)
+	}
+	b.WriteString("</row>")
+	return nil
+}
+
+// letters are the names of the columns, made once.
+var letters = func() (out [cells.MaxCol + 1]string) {
+	for i := 1; i <= 256; i++ {
+		out[i] = cells.Letters(i)
+	}
+	return out
+}()
+
+func startCell(b *bytes.Buffer, col int, row []byte, style int) {
+	var room [8]byte
+	b.WriteString(`<c r="`)
+	if name := letters[col]; name != "" {
+		b.WriteString(name)
+	} else {
+		b.WriteString(cells.Letters(col))
+	}
+	b.Write(row)
+	b.WriteString(`" s="`)
+	b.Write(strconv.AppendInt(room[:0], int64(style), 10))
+	b.WriteByte('"')
+}
+
+func writeCell(b *bytes.Buffer, c *cell, col int, row []byte, style int) {
+	var room [32]byte
+	startCell(b, col, row, style)
 	switch {
 	case c.formula != "":
-		writeFormula(b, c)
+		writeFormula(b, *c)
 	case c.number != nil:
-		b.WriteString("><v>" + shortest(*c.number) + "</v></c>")
+		b.WriteString("><v>")
+		b.Write(strconv.AppendFloat(room[:0], *c.number, 'g', -1, 64))
+		b.WriteString("</v></c>")
 	case c.text != "":
-		b.WriteString(` t="inlineStr"><is><t xml:space="preserve">`)
-		// Writing into a buffer cannot fail.
-		_ = xml.EscapeText(b, []byte(escapeMarks(c.text)))
+		b.WriteString(` t="inlineStr"><is><t`)
+		if first, last := c.text[0], c.text[len(c.text)-1]; first <= ' ' || last <= ' ' || strings.ContainsAny(c.text, "\n\t") || strings.Contains(c.text, "  ") {
+			b.WriteString(` xml:space="preserve"`)
+		}
+		b.WriteByte('>')
+		if plainText(c.text) && !strings.Contains(c.text, "_x") {
+			b.WriteString(c.text)
+		} else {
+			_ = xml.EscapeText(b, []byte(escapeMarks(c.text))) // a bytes.Buffer does not fail
+		}
 		b.WriteString("</t></is></c>")
 	default:
 		b.WriteString("/>")

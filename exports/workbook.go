@@ -2,6 +2,7 @@ package exports
 
 import (
 	"fmt"
+	"io"
 
 	"lotpair/qa"
 )
@@ -28,9 +29,13 @@ func Workbook(rec qa.Record) ([]byte, error) {
 	if n > MaxReadings {
 		return nil, TooManyReadings{N: n}
 	}
-	record, digest, err := encodeRecord(rec)
+	digest, err := contentDigest(rec)
 	if err != nil {
 		return nil, err
+	}
+	record := func(w io.Writer) error {
+		_, err := writeRecord(w, rec)
+		return err
 	}
 	b := book{title: rec.Result.Title, sheets: sheets(rec, digest), record: record, draft: rec.Signer == nil}
 	b.foot = footerText(rec.Result.Title, rec.Result.Supports) + fmt.Sprintf("\nRecord %s, criterion %s", RecordID(digest), shortDigest(rec.Result.Seal.Digest))

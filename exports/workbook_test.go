@@ -83,7 +83,7 @@ func TestWorkbookHoldsNoFormula(t *testing.T) {
 	for _, s := range book.Sheets {
 		names = append(names, s.Name)
 	}
-	if want := []string{"Summary", "Results", "Findings", "Readings", "Ledger", "Workings", "Pictures", "Trail", "Method"}; !slices.Equal(names, want) {
+	if want := []string{"Summary", "Results", "Sensitivity", "Findings", "Readings", "Ledger", "Workings", "Pictures", "Trail", "Method"}; !slices.Equal(names, want) {
 		t.Errorf("sheets: got %v, want %v", names, want)
 	}
 	found := 0
