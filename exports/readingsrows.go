@@ -17,9 +17,14 @@ const (
 // use and values left out stand in columns of their own, so that a range over the first never takes one of the others.
 func readingsSheet(rec qa.Record) sheet {
 	s := sheet{name: SheetReadings, widths: []float64{11, 14, 24, 20, 20, 8, 16, 22, 13, 32}, landscape: true}
+	names := []string{"Side", "Lot", "Characteristic", "Value", "Value left out", "Unit", "Text found", "File", "Cell", "State"}
+	extra := extraColumns(rec)
+	for _, e := range extra {
+		names, s.widths = append(names, e.name), append(s.widths, 14)
+	}
 	s.add(text("Readings", titleLook))
 	s.addTall(30, wide("Every reading at full precision, with the text and the place it was read from. What is left out stays here, in a column of its own, and is not used.", wrapLook, 10))
-	s.add(heads("Side", "Lot", "Characteristic", "Value", "Value left out", "Unit", "Text found", "File", "Cell", "State")...)
+	s.add(heads(names...)...)
 	s.frozen, s.heads, s.filter = len(s.rows), len(s.rows), len(s.rows)
 	s.filterTo = len(s.rows)
 	for _, side := range []qa.Side{qa.Reference, qa.Candidate} {
@@ -27,17 +32,17 @@ func readingsSheet(rec qa.Record) sheet {
 			s.filterTo += len(series.Readings)
 		}
 	}
-	s.more = func(yield func(row) bool) { readingRows(rec, yield) }
+	s.more = func(yield func(row) bool) { readingRows(rec, extra, yield) }
 	return s
 }
 
 // readingRows makes the line of each reading, in one room for all.
-func readingRows(rec qa.Record, yield func(row) bool) {
+func readingRows(rec qa.Record, extra []extraColumn, yield func(row) bool) {
 	units := map[string]string{}
 	for _, c := range rec.Readings.Characteristics {
 		units[c.Name] = c.Unit
 	}
-	line := make([]cell, 10)
+	line := make([]cell, 10+len(extra))
 	used := text("used", ruledLook)
 	for _, side := range []qa.Side{qa.Reference, qa.Candidate} {
 		lot := lotOf(rec, side)
@@ -52,12 +57,50 @@ func readingRows(rec qa.Record, yield func(row) bool) {
 					line[9] = text("left out: "+r.LeftOut, ruledLook)
 				}
 				line[6], line[7], line[8] = text(r.Source.Text, ruledLook), text(r.Source.File, ruledLook), text(r.Source.Place(), ruledLook)
+				for k, e := range extra {
+					line[10+k] = text(e.of(r), ruledLook)
+				}
 				if !yield(row{cells: line}) {
 					return
 				}
 			}
 		}
 	}
+}
+
+// extraColumn is a column that stands there only where a reading has something for it.
+type extraColumn struct {
+	name string
+	of   func(r *qa.Reading) string
+}
+
+func extraColumns(rec qa.Record) []extraColumn {
+	all := []extraColumn{
+		{"Part", func(r *qa.Reading) string { return r.Part }},
+		{"Group", func(r *qa.Reading) string { return r.Group }},
+		{"Order", func(r *qa.Reading) string { return r.Order }},
+		{"Pair", func(r *qa.Reading) string { return r.Pair }},
+	}
+	var out []extraColumn
+	for _, e := range all {
+		if anyReading(rec, func(r *qa.Reading) bool { return e.of(r) != "" }) {
+			out = append(out, e)
+		}
+	}
+	return out
+}
+
+func anyReading(rec qa.Record, has func(r *qa.Reading) bool) bool {
+	for _, lot := range []*qa.Lot{&rec.Readings.Reference, &rec.Readings.Candidate} {
+		for i := range lot.Series {
+			for j := range lot.Series[i].Readings {
+				if has(&lot.Series[i].Readings[j]) {
+					return true
+				}
+			}
+		}
+	}
+	return false
 }
 
 // readingRanges gives, for a side and a characteristic, the cells of the sheet Readings that hold the values in use.

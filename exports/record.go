@@ -62,6 +62,7 @@ type readingXML struct {
 	LeftOut  string  `xml:"out,attr,omitempty"`
 	Group    string  `xml:"g,attr,omitempty"`
 	Order    string  `xml:"o,attr,omitempty"`
+	Pair     string  `xml:"a,attr,omitempty"`
 	File     *string `xml:"f,attr"`
 	Sheet    *string `xml:"s,attr"`
 }
@@ -172,6 +173,15 @@ func (b *recordWriter) lot(side qa.Side, l qa.Lot) {
 			}
 			if r.LeftOut != "" {
 				b.attribute("out", r.LeftOut)
+			}
+			if r.Group != "" {
+				b.attribute("g", r.Group)
+			}
+			if r.Order != "" {
+				b.attribute("o", r.Order)
+			}
+			if r.Pair != "" {
+				b.attribute("a", r.Pair)
 			}
 			if r.Source.File != file {
 				file = r.Source.File
@@ -299,7 +309,7 @@ func decodeLot(x lotXML) (qa.Lot, error) {
 				found = *r.Text
 			}
 			one.Readings = append(one.Readings, qa.Reading{
-				Value: v, Part: r.Part, Decimals: r.Decimals, LeftOut: r.LeftOut, Group: r.Group, Order: r.Order,
+				Value: v, Part: r.Part, Decimals: r.Decimals, LeftOut: r.LeftOut, Group: r.Group, Order: r.Order, Pair: r.Pair,
 				Source: qa.Source{File: file, Sheet: sheet, Cell: r.Cell, Text: found},
 			})
 		}

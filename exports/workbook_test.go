@@ -4,6 +4,7 @@ import (
 	"archive/zip"
 	"bytes"
 	"encoding/json"
+	"reflect"
 	"slices"
 	"strings"
 	"testing"
@@ -56,6 +57,43 @@ func TestRecordRoundTrip(t *testing.T) {
 	}
 	if !bytes.Equal(pkg, again) {
 		t.Error("the record read back gives another workbook")
+	}
+}
+
+// TestRecordKeepsEveryField fills every field of a reading, one that comes later as well: all come back.
+func TestRecordKeepsEveryField(t *testing.T) {
+	rec := record(t)
+	r := &rec.Readings.Candidate.Series[2].Readings[5]
+	fillFields(reflect.ValueOf(r).Elem(), 1)
+	want := *r
+	pkg, err := exports.Workbook(rec)
+	if err != nil {
+		t.Fatal(err)
+	}
+	back, err := exports.ReadRecord(pkg)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if got := back.Readings.Candidate.Series[2].Readings[5]; !reflect.DeepEqual(got, want) {
+		t.Errorf("got %+v, want %+v", got, want)
+	}
+	if v := exports.Verify(pkg, nil); len(v.Differences) == 0 { // the reading is another one now
+		t.Error("a changed reading: got no differences")
+	}
+}
+
+func fillFields(v reflect.Value, n int) {
+	for i := range v.NumField() {
+		switch f := v.Field(i); f.Kind() {
+		case reflect.String:
+			f.SetString(v.Type().Field(i).Name + " & more")
+		case reflect.Float64:
+			f.SetFloat(float64(n) + 0.1)
+		case reflect.Int:
+			f.SetInt(int64(n))
+		case reflect.Struct:
+			fillFields(f, n+1)
+		}
 	}
 }
 

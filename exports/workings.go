@@ -99,14 +99,31 @@ func (w *workings) characteristic(rec qa.Record, c qa.Comparison, ranges map[str
 	}
 	w.lot("reference", c.Reference, ranges["reference"+c.Name])
 	w.lot("candidate", c.Candidate, ranges["candidate"+c.Name])
-	if c.Method == "welch" || c.Method == "pooled" {
+	if restsOnMeans(c) {
 		w.difference(c)
 		w.equivalence(c)
-		w.spread(c)
 	} else {
-		w.say("The test by the method " + c.Method + " is not derived here; see the sheet Method.")
+		w.say("The test by the method " + c.Method + " does not rest on these means and standard deviations alone and is not derived here; see the sheet Method.")
 	}
+	w.spread(c)
 	w.performance(c)
+}
+
+// restsOnMeans says whether the test is the one that these formulas make: not of pairs, logarithms or means of groups.
+func restsOnMeans(c qa.Comparison) bool {
+	d, r, k := c.Difference, c.Reference, c.Candidate
+	if c.Method != "welch" && c.Method != "pooled" {
+		return false
+	}
+	if d.SE == nil || d.Estimate == nil || r.SD == nil || k.SD == nil || r.Mean == nil || k.Mean == nil {
+		return true // no figure, no line
+	}
+	n, m := float64(r.N), float64(k.N)
+	se := math.Hypot(*r.SD/math.Sqrt(n), *k.SD/math.Sqrt(m))
+	if c.Method == "pooled" {
+		se = math.Hypot(*r.SD*math.Sqrt(n-1), *k.SD*math.Sqrt(m-1)) / math.Sqrt(n+m-2) * math.Sqrt(1/n+1/m)
+	}
+	return sameNumber(se, *d.SE, 0) && sameNumber(*k.Mean-*r.Mean, *d.Estimate, math.Max(math.Abs(*k.Mean), math.Abs(*r.Mean)))
 }
 
 // describes says whether a lot's figures are those of its readings in use, one by one: not of repeats averaged, pairs or
@@ -213,7 +230,7 @@ func (w *workings) interval(what string, level, estimate, se, lower, upper *floa
 
 func (w *workings) equivalence(c qa.Comparison) {
 	e := c.Equivalence
-	if e == nil || e.Scale != "difference" {
+	if e == nil || e.Scale != "difference" || e.SE == nil || c.Difference.SE == nil || *e.SE != *c.Difference.SE {
 		return
 	}
 	w.given("equivalence.margin_lower", e.MarginLower, "lower end of the margin as tested, from the criterion")
@@ -245,8 +262,12 @@ func (w *workings) equivalence(c qa.Comparison) {
 
 func (w *workings) spread(c qa.Comparison) {
 	s := c.Spread
-	if s == nil || s.SDRatio == nil || s.F == nil {
-		return
+	if s == nil || s.SDRatio == nil || s.F == nil || c.Reference.SD == nil || c.Candidate.SD == nil || !sameNumber(*s.SDRatio, *c.Candidate.SD / *c.Reference.SD, 0) {
+		return // of logarithms, or of pairs
+	}
+	if _, ok := w.at["alpha"]; !ok {
+		alpha := c.Alpha
+		w.given("alpha", &alpha, "from the criterion")
 	}
 	w.derive("spread.sd_ratio", s.SDRatio, "{candidate.sd}/{reference.sd}", "standard deviation of the candidate over the reference")
 	f, f1, f2 := s.F.Statistic, s.F.DF1, s.F.DF2

@@ -123,12 +123,12 @@ func hexFloat(t *testing.T, s string) float64 {
 
 // strength is the comparison of batches 1 and 2 of NIST's ceramic strength data (JAHANMI2), 240 readings each.
 func strength(t *testing.T) qa.Record {
-	return compared(t, "Strength", "MPa", column(t, "../qa/stats/testdata/nist_jahanmi2_strength_batch.csv"), 20, qa.Equivalence)
+	return compared(t, "Strength", "MPa", column(t, "../qa/stats/testdata/nist_jahanmi2_strength_batch.csv"), 20, qa.Equivalence, "welch")
 }
 
 // small is the case D1 of the project's needs: 12 readings each.
 func small(t *testing.T) qa.Record {
-	return compared(t, "Bore", "mm", column(t, "../qa/stats/testdata/d1.csv"), 0.01, qa.Equivalence)
+	return compared(t, "Bore", "mm", column(t, "../qa/stats/testdata/d1.csv"), 0.01, qa.Equivalence, "welch")
 }
 
 // column reads a csv of two columns, a group and a value.
@@ -183,16 +183,17 @@ func generate(t *testing.T, seed uint64) qa.Record {
 		}
 	}
 	objective := []qa.Objective{qa.Equivalence, qa.NotLower, qa.NotHigher, qa.Difference, qa.Lower, qa.Higher}[rng.IntN(6)]
-	return compared(t, "Made up", "mm", x, sd*(0.2+2*rng.Float64()), objective)
+	method := []string{"welch", "pooled"}[rng.IntN(2)]
+	return compared(t, "Made up", "mm", x, sd*(0.2+2*rng.Float64()), objective, method)
 }
 
-func compared(t *testing.T, name, unit string, x [2][]float64, margin float64, objective qa.Objective) qa.Record {
+func compared(t *testing.T, name, unit string, x [2][]float64, margin float64, objective qa.Objective, method string) qa.Record {
 	t.Helper()
 	low, high := x[0][0]-10*margin, x[0][0]+12*margin
 	plan := qa.Plan{
 		Format: qa.PlanFormat, Title: name, Supports: "DEV-1", Record: qa.Particulars{Part: "A", Revision: "B"},
 		Reference: qa.LotPlan{Lot: "R", File: "a.csv"}, Candidate: qa.LotPlan{Lot: "C", File: "a.csv"},
-		Criterion:       qa.Criterion{Objective: objective, Margin: &qa.Margin{Absolute: &margin}},
+		Criterion:       qa.Criterion{Objective: objective, Method: method, Margin: &qa.Margin{Absolute: &margin}},
 		Characteristics: []qa.Characteristic{{Name: name, Unit: unit, Lower: &low, Upper: &high}},
 	}
 	r := qa.Readings{Characteristics: plan.Characteristics}
