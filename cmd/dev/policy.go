@@ -20,6 +20,7 @@ const (
 	gonumModule    = "gonum.org/v1/gonum"
 	imageModule    = "golang.org/x/image"
 	termModule     = "golang.org/x/term"
+	sqliteModule   = "modernc.org/sqlite"
 	rapidModule    = "pgregory.net/rapid"
 	scriptModule   = "github.com/rogpeppe/go-internal/testscript"
 )
@@ -47,7 +48,7 @@ var policy = map[string]rule{
 
 	"app/desk":     {own: []string{"qa", "qa/figure", "importers"}},
 	"app/chart":    {own: []string{"qa/figure", "qa/figure/draw"}, outside: []string{fyneModule}, tests: []string{"qa"}},
-	"app/register": {},
+	"app/register": {outside: []string{sqliteModule}},
 	"app": {
 		own: []string{
 			"app/desk", "app/chart", "app/register", "importers", "exports", "exports/identity", "exports/opcsign",
