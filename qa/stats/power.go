@@ -67,6 +67,20 @@ func (d Design) shown(t, df, se float64) float64 {
 	return dist.StudentBetween(t, df, (d.Shift-d.Lower)/se, (d.Upper-d.Shift)/se)
 }
 
+// near is about the power, with the degrees of freedom that the true standard
+// deviations have in Welch's test: quick, and good enough to start a search.
+func (d Design) near() float64 {
+	if d.Paired || !d.Welch && d.SDRef == d.SDCand {
+		return d.power()
+	}
+	nr, nc := float64(d.NRef), float64(d.NCand)
+	a, b := d.SDRef/math.Sqrt(nr), d.SDCand/math.Sqrt(nc)
+	se := math.Hypot(a, b)
+	p, q := (a/se)*(a/se), (b/se)*(b/se)
+	df := 1 / (p*p/(nr-1) + q*q/(nc-1))
+	return d.shown(d.critical(df), df, se)
+}
+
 // unequal is the power where the standard error found does not follow one
 // chi-square: Welch's test, or the pooled one of unequal standard deviations.
 //

@@ -19,7 +19,10 @@ var ErrNoSize = errors.New("more than 100,000,000 readings would be needed")
 // ratio times as many and rounded up, and the power they have. It returns
 // ErrBeyondMargin where no number would do. NRef and NCand of d are not read.
 func Size(d Design, ratio, power float64) (nRef, nCand int, achieved float64, err error) {
-	return d.size(ratio, power, Design.power)
+	if d.Paired {
+		ratio = 1
+	}
+	return d.size(ratio, power, false)
 }
 
 // SpreadSize is Size for the ratio of the standard deviations alone.
@@ -28,13 +31,11 @@ func SpreadSize(d Design, ratio, power float64) (nRef, nCand int, achieved float
 		return 0, 0, 0, fmt.Errorf("spread ratio: found %v, want a number above 0", d.SpreadRatio)
 	}
 	d.Aim, d.Shift, d.Lower, d.Upper = AimWithin, 0, -1, 1 // of no account
-	return d.size(ratio, power, Design.spread)
+	return d.size(ratio, power, true)
 }
 
-func (d Design) size(ratio, power float64, of func(Design) float64) (nRef, nCand int, achieved float64, err error) {
-	if d.Paired {
-		ratio = 1
-	}
+// size is Size, or with alone that of the spread alone.
+func (d Design) size(ratio, power float64, alone bool) (nRef, nCand int, achieved float64, err error) {
 	switch {
 	case !(ratio > 0) || math.IsInf(ratio, 1):
 		return 0, 0, 0, fmt.Errorf("ratio: found %v, want a number above 0", ratio)
@@ -48,10 +49,12 @@ func (d Design) size(ratio, power float64, of func(Design) float64) (nRef, nCand
 	if d.room() <= 0 || d.SpreadRatio > 0 && d.SDCand/d.SDRef >= d.SpreadRatio {
 		return 0, 0, 0, ErrBeyondMargin
 	}
-	at := func(n int) float64 {
-		e := d
-		e.NRef, e.NCand = n, share(n, ratio)
-		return of(e)
+	with := func(of func(Design) float64) func(n int) float64 {
+		return func(n int) float64 {
+			e := d
+			e.NRef, e.NCand = n, share(n, ratio)
+			return of(e)
+		}
 	}
 	// With too few candidates there is no test; from the first number on that
 	// allows one, a power that is not there at once is not there for a while.
@@ -62,11 +65,23 @@ func (d Design) size(ratio, power float64, of func(Design) float64) (nRef, nCand
 			first++
 		}
 	}
-	n, achieved, err := smallest(at, first, d.guess(ratio, power), power)
+	at, guess := with(Design.power), d.guess(ratio, power)
+	double := !alone && !d.Paired && (d.Welch || d.SDRef != d.SDCand)
+	switch {
+	case alone:
+		at, guess = with(Design.spread), d.spreadGuess(ratio, power)
+	case double: // each power is a double integral: start from a nearer guess
+		start, _, err := smallest(with(Design.near), first, guess, power)
+		if err != nil {
+			return 0, 0, 0, err
+		}
+		guess = float64(start)
+	}
+	n, achieved, err := smallest(at, first, guess, power)
 	if err != nil {
 		return 0, 0, 0, err
 	}
-	if d.Welch || d.SDRef != d.SDCand {
+	if double && ratio != math.Trunc(ratio) {
 		// One reading more in the group of the smaller standard deviation may lower
 		// the power a little, so that a number before may have had it.
 		back := 2 + 2*int(math.Ceil(1/min(ratio, 1)))
@@ -140,6 +155,10 @@ func smallest(at func(n int) float64, first int, guess, want float64) (int, floa
 		}
 		x, y := math.Sqrt(float64(below)), math.Sqrt(float64(above))
 		switch {
+		case step == 0 && p >= want: // the guess may be right
+			next = float64(n - 1)
+		case step == 0:
+			next = float64(n + 1)
 		case above == 0 && step < 3 && line-zBelow < 1:
 			// The line rises by about (z of alpha + z of power) over the root of n.
 			next = float64(n) * square(1+(line-zBelow)/3) // overshoots a little

@@ -1,6 +1,10 @@
 package stats
 
-import "lotpair/qa/stats/dist"
+import (
+	"math"
+
+	"lotpair/qa/stats/dist"
+)
 
 // spread is the probability that the ratio of the standard deviations is shown to
 // lie below SpreadRatio: that the upper end of its F interval does.
@@ -31,4 +35,11 @@ func (d Design) SpreadPower() (float64, error) {
 		return 0, err
 	}
 	return d.spread(), nil
+}
+
+// spreadGuess is the sample size by the normal distribution of the logarithm of the
+// ratio, whose variance is about 1/(2 d1) + 1/(2 d2).
+func (d Design) spreadGuess(ratio, power float64) float64 {
+	z := max(0.1, -dist.NormalQuantile(d.Alpha)+dist.NormalQuantile(power))
+	return square(z/math.Log(d.SpreadRatio/(d.SDCand/d.SDRef)))*(1+1/ratio)/2 + 2
 }

@@ -24,7 +24,7 @@ func TestBetaIntegral(t *testing.T) {
 			{func(x, _ float64) float64 { return x }, mean},
 			{func(x, _ float64) float64 { return x * x }, mean * (a + 1) / (a + b + 1)},
 		} {
-			if got := BetaIntegral(a, b, 0, math.Inf(1), c.f); math.Abs(got-c.want) > 2e-12*c.want {
+			if got := BetaIntegral(a, b, 0, math.Inf(1), c.f); math.Abs(got-c.want) > 1e-12*c.want+1e-13 {
 				t.Fatalf("d %v %v: got %v, want %v", d1, d2, got, c.want)
 			}
 		}
@@ -38,7 +38,7 @@ func TestBetaIntegral(t *testing.T) {
 			t.Fatalf("d %v %v, f %v: got %v, want %v", d1, d2, f, got, want)
 		}
 	})
-	for _, c := range [][4]float64{{0.4, 1, 0, 1}, {1, math.Inf(1), 0, 1}, {1, 1, 0.5, 0.4}, {1, math.NaN(), 0, 1}} {
+	for _, c := range [][4]float64{{0, 1, 0, 1}, {1, math.Inf(1), 0, 1}, {1, 1, 0.5, 0.4}, {1, math.NaN(), 0, 1}} {
 		if got := BetaIntegral(c[0], c[1], c[2], c[3], func(_, _ float64) float64 { return 1 }); !math.IsNaN(got) {
 			t.Errorf("%v: got %v, want NaN", c, got)
 		}
