@@ -1,12 +1,10 @@
 package importers
 
 import (
-	"bytes"
 	"crypto/sha256"
 	"encoding/hex"
 	"errors"
 	"fmt"
-	"path"
 	"strings"
 
 	"lotpair/importers/cells"
@@ -21,30 +19,38 @@ type Book struct {
 	Delimiter string // ";", ",", "\t"; empty for a workbook and where each record is one field
 	Sheets    []cells.Sheet
 	Comments  []int    // records of a text file that are comments
+	report    *report  // the text is a measuring report
 	Said      []string // what was detected or done, a sentence each
 }
 
-// Open reads one file: .xlsx or text (.csv, .tsv, .txt). The name is the one that messages and the record show; enc is the
-// encoding of a text file as the plan states it, empty where it does not. The error is a *FileError.
+// Open reads one file: a workbook (.xlsx, .xlsm), an .ods spreadsheet or text, told apart by what it holds. The name is the
+// one that messages and the record show; enc is the encoding of a text file as the plan states it, empty where it does not.
+// The error is a *FileError.
 func Open(name string, data []byte, enc string) (Book, error) {
 	sum := sha256.Sum256(data)
 	b := Book{File: qa.File{Name: name, SHA256: hex.EncodeToString(sum[:]), Bytes: int64(len(data))}}
-	extension := strings.ToLower(path.Ext(strings.ReplaceAll(name, `\`, "/")))
 	switch {
 	case len(data) > cells.MaxFile:
 		return Book{}, fileError(name, "found %d bytes, want at most 256 MiB; use a smaller file", len(data))
 	case len(data) == 0:
-		return Book{}, fileError(name, "found an empty file, want an .xlsx workbook or a text file; copy the file again from where it came")
-	case extension == ".xlsx" || extension == ".xlsm":
-		return b.workbook(data)
-	case extension == ".csv" || extension == ".tsv" || extension == ".txt":
+		return Book{}, fileError(name, "found an empty file, want a workbook or a text file; copy the file again from where it came")
+	}
+	is, err := checkContent(name, data)
+	if err != nil {
+		return Book{}, err
+	}
+	if is.kind == textContent {
 		return b.text(data, enc)
 	}
-	return Book{}, fileError(name, "found a name ending in %q, want .xlsx, .csv, .tsv or .txt; save the readings in one of these", extension)
+	return b.workbook(data, is.kind)
 }
 
-func (b Book) workbook(data []byte) (Book, error) {
-	w, err := cells.Read(data)
+func (b Book) workbook(data []byte, kind contentKind) (Book, error) {
+	read := cells.Read
+	if kind == odsContent {
+		read = cells.ReadODS
+	}
+	w, err := read(data)
 	if err != nil {
 		e := fileError(b.File.Name, "%s", err)
 		var bound *cells.BoundError
@@ -62,19 +68,11 @@ func (b Book) workbook(data []byte) (Book, error) {
 }
 
 func (b Book) text(data []byte, enc string) (Book, error) {
-	switch {
-	case bytes.HasPrefix(data, []byte("PK\x03\x04")):
-		return Book{}, fileError(b.File.Name, "found a zip file or workbook, want text; name it .xlsx if it is a workbook")
-	case bytes.HasPrefix(data, []byte("\xd0\xcf\x11\xe0")):
-		return Book{}, fileError(b.File.Name, "found an old .xls (or password-protected) file, want text or .xlsx; save it as .xlsx")
-	case bytes.HasPrefix(data, []byte("%PDF")):
-		return Book{}, fileError(b.File.Name, "found a PDF file, want text or .xlsx; export the readings as a table")
-	}
 	text, encoding, said, err := decodeText(data, enc)
 	if err != nil {
 		return Book{}, fileError(b.File.Name, "%s", err)
 	}
-	b.IsText, b.Encoding = true, encoding
+	b.Encoding = encoding
 	if said != "" {
 		b.Said = append(b.Said, b.File.Name+": "+said)
 	}
@@ -82,12 +80,19 @@ func (b Book) text(data []byte, enc string) (Book, error) {
 	if err != nil {
 		return Book{}, fileError(b.File.Name, "%s", err)
 	}
-	b.Delimiter, b.Comments = t.delimiter, t.comments
+	return b.taken(t), nil
+}
+
+// taken puts what a text file was taken apart into.
+func (b Book) taken(t textFile) Book {
+	b.IsText, b.Delimiter, b.Comments, b.report = true, t.delimiter, t.comments, t.report
 	b.Sheets = []cells.Sheet{{Rows: t.rows}}
-	if n := len(t.comments); n > 0 {
+	if t.delimiter == alignedDelimiter {
+		b.Said = append(b.Said, b.File.Name+": no delimiter; the columns stand below each other and are split at spaces.")
+	} else if n := len(t.comments); n > 0 {
 		b.Said = append(b.Said, fmt.Sprintf("%s: %s before the heading skipped as comments.", b.File.Name, qa.Count(n, "line", "lines")))
 	}
-	return b, nil
+	return b
 }
 
 // sheet finds a sheet by its name; the only sheet of a text file by the empty name.

@@ -45,6 +45,11 @@ func decodeText(data []byte, declared string) (text, encoding, said string, err 
 	}
 	if encoding = want; mark != "" {
 		encoding = mark
+	} else if wide := wideText(data); want == "" && wide != "" {
+		encoding, said = "utf-16", "no byte order mark, read as UTF-16 because every second byte is 0."
+		if wide == "utf-16be" {
+			order = binary.BigEndian
+		}
 	}
 	switch encoding {
 	case "utf-16":
@@ -70,6 +75,29 @@ func decodeText(data []byte, declared string) (text, encoding, said string, err 
 		}
 	}
 	return text, encoding, said, err
+}
+
+// wideText says whether text without a byte order mark is UTF-16 and in which order: at least nine of ten characters of its
+// beginning are below U+0100, which no other text has; empty where it is not.
+func wideText(data []byte) string {
+	head := data[:min(len(data), 4<<10)&^1]
+	if len(head) < 4 || len(data)%2 != 0 {
+		return ""
+	}
+	var zeros [2]int
+	for i, c := range head {
+		if c == 0 {
+			zeros[i%2]++
+		}
+	}
+	half := len(head) / 2
+	switch {
+	case zeros[0] == 0 && 10*zeros[1] >= 9*half:
+		return "utf-16le"
+	case zeros[1] == 0 && 10*zeros[0] >= 9*half:
+		return "utf-16be"
+	}
+	return ""
 }
 
 // badUTF8 is the line of the first byte that is not UTF-8; 0 where all are.

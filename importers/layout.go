@@ -30,6 +30,9 @@ const (
 
 // steps are the ways of reading the sheet's layout, in order.
 func (t *table) steps() []func() error {
+	if t.book.report != nil {
+		return []func() error{t.readReport, t.measureTurned}
+	}
 	t.chooseLayout()
 	switch t.layout {
 	case RowPerCharacteristic:

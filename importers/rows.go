@@ -20,6 +20,8 @@ func (t *table) sortRows() error {
 		switch {
 		case t.beyondTable(r.Number):
 			continue
+		case t.comment(r):
+			t.mark(i, roleComment)
 		case t.sectionTitle(r.Number):
 			t.mark(i, roleLot)
 		case len(data) == 0 && r.Number == t.heading+1 && t.isUnitRow(r):

@@ -12,6 +12,7 @@ type textFile struct {
 	delimiter string
 	rows      []cells.Row
 	comments  []int
+	report    *report // the text is a measuring report
 }
 
 // readText splits the text into records and fields. A field in double quotes may hold delimiters, line breaks and doubled
@@ -44,6 +45,13 @@ func readText(text string) (textFile, error) {
 		t.delimiter = detectDelimiter(s.rest)
 	}
 	if t.delimiter != "" {
+	if t.delimiter == "" || t.delimiter == "\t" {
+		if spaced, ok, err := readSpaced(s.rest, record, t.delimiter); ok || err != nil {
+			spaced.comments = append(t.comments, spaced.comments...)
+			spaced.rows = append(t.rows, spaced.rows...)
+			return spaced, err
+		}
+	}
 		s.delimiter = t.delimiter[0]
 	}
 	for s.rest != "" {
