@@ -112,10 +112,11 @@ func compareOne(plan Plan, ch Characteristic, ref, cand Series) (Comparison, err
 	c.spread()
 	c.performance(plan)
 	c.ranks()
-	c.otherMethods(ref, cand)
+	c.otherMethods(plan, ref, cand)
 	c.decide(ref, cand)
 	c.nonDetects(plan, ch, ref, cand)
 	c.absence()
+	c.newStudy(plan)
 	c.checkUncertainty()
 	return c.Comparison, nil
 }

@@ -10,7 +10,7 @@ import (
 
 // otherMethods gives the verdict again under each other sound method on the same margin, with the exclusions put back and with
 // the outlying readings removed. None of them changes the verdict; one that differs is a warning.
-func (c *comparison) otherMethods(ref, cand Series) {
+func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
 	if c.Equivalence == nil || c.margin.scale != scaleDifference || !c.Objective.AgainstMargin() || c.margin.fromSample || c.Equivalence.Lower == nil {
 		return
 	}
@@ -28,10 +28,10 @@ func (c *comparison) otherMethods(ref, cand Series) {
 		c.again("trimmed", e, err)
 	}
 	if r := c.Ranks; r != nil && r.Lower != nil && r.Upper != nil {
-		c.Sensitivity = append(c.Sensitivity, SensitivityResult{
-			Method: "ranks", Estimate: ptr(r.Shift), Level: ptr(r.Level), Lower: r.Lower, Upper: r.Upper,
-			Verdict: againstMargin(c.Objective, *r.Lower, *r.Upper, c.margin.lower, c.margin.upper),
-		})
+		c.interval("ranks", r.Shift, stats.Interval{Level: r.Level, Lower: *r.Lower, Upper: *r.Upper}, nil)
+	}
+	if r := plan.Sensitivity; r != nil && r.Resamples > 0 && !paired && !c.asked.grouped {
+		c.resampled(stats.Resampling{Seed: uint64(r.Seed), Resamples: r.Resamples})
 	}
 	if !paired {
 		c.putBack(ref, cand)
@@ -40,19 +40,44 @@ func (c *comparison) otherMethods(ref, cand Series) {
 	c.flips()
 }
 
+// The fewest and the most resamples that a plan may ask for: fewer give no interval, more take minutes.
+const (
+	fewestResamples = 100
+	mostResamples   = 1_000_000
+)
+
+// resampled adds the bootstrap (BCa, Efron 1987) and the permutation of Welch's t, with the seed and number that the plan states.
+func (c *comparison) resampled(r stats.Resampling) {
+	level := 1 - 2*c.Alpha
+	if b, err := stats.BootstrapMeans(c.ref.values, c.cand.values, level, r); err == nil {
+		c.interval("bootstrap", b.Value, b.Interval, &r)
+	}
+	if p, err := stats.Permute(c.ref.values, c.cand.values, r); err == nil {
+		c.interval("permutation", c.cand.summary.Mean-c.ref.summary.Mean, p.Interval(level), &r)
+	}
+}
+
+// interval adds an interval to the list, where it has two ends.
+func (c *comparison) interval(method string, value float64, in stats.Interval, r *stats.Resampling) {
+	if !finite(value, in.Lower, in.Upper) {
+		return
+	}
+	s := SensitivityResult{
+		Method: method, Estimate: ptr(value), Level: ptr(in.Level), Lower: ptr(in.Lower), Upper: ptr(in.Upper),
+		Verdict: againstMargin(c.Objective, in.Lower, in.Upper, c.margin.lower, c.margin.upper),
+	}
+	if r != nil {
+		s.Seed, s.Resamples = ptr(int64(r.Seed)), r.Resamples
+	}
+	c.Sensitivity = append(c.Sensitivity, s)
+}
+
 // again adds one method's answer to the list, where it has one.
 func (c *comparison) again(method string, e stats.Estimate, err error) {
 	if err != nil || !finite(e.Value, e.SE, e.DF) {
 		return
 	}
-	in := e.Interval(1 - 2*c.Alpha)
-	if !finite(in.Lower, in.Upper) {
-		return
-	}
-	c.Sensitivity = append(c.Sensitivity, SensitivityResult{
-		Method: method, Estimate: ptr(e.Value), Level: ptr(in.Level), Lower: ptr(in.Lower), Upper: ptr(in.Upper),
-		Verdict: againstMargin(c.Objective, in.Lower, in.Upper, c.margin.lower, c.margin.upper),
-	})
+	c.interval(method, e.Value, e.Interval(1-2*c.Alpha), nil)
 }
 
 // putBack compares with every reading that was left out put back.

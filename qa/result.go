@@ -71,6 +71,7 @@ type Comparison struct {
 	Equivalence *EquivalenceResult  `json:"equivalence,omitempty"`
 	Verdict     Verdict             `json:"verdict"`
 	Detectable  bool                `json:"detectable"` // two-sided p below alpha; never replaces the verdict
+	NewStudy    *NewStudyResult     `json:"new_study,omitempty"`
 	Spread      *SpreadResult       `json:"spread,omitempty"`
 	Fisher      *FisherResult       `json:"fisher,omitempty"`
 	Groups      *GroupsResult       `json:"groups,omitempty"`

@@ -8,6 +8,9 @@ type SensitivityResult struct {
 	Lower    *float64 `json:"lower"`
 	Upper    *float64 `json:"upper"`
 	Verdict  Verdict  `json:"verdict"`
+
+	Seed      *int64 `json:"seed,omitempty"` // bootstrap and permutation
+	Resamples int    `json:"resamples,omitempty"`
 }
 
 // sensitivityOf says a comparison that was made otherwise in the few figures of the block.

@@ -3,6 +3,7 @@ package qa
 import (
 	"fmt"
 	"math"
+	"strings"
 )
 
 // Sentences say what was found for one characteristic, the verdict first, then what it rests on.
@@ -15,6 +16,9 @@ func Sentences(c Comparison) []string {
 		s = append(s, t)
 	}
 	if t := spreadSentence(c); t != "" {
+		s = append(s, t)
+	}
+	if t := newStudySentence(c); t != "" {
 		s = append(s, t)
 	}
 	if t := performanceSentence(c); t != "" {
@@ -178,6 +182,41 @@ func spreadSentence(c Comparison) string {
 		t += "; " + asked
 	}
 	return t + ")."
+}
+
+// newStudySentence says what a new study would take, and that it is a new one.
+func newStudySentence(c Comparison) string {
+	n := c.NewStudy
+	if n == nil || n.AtZero == nil && n.AtEstimate == nil {
+		return ""
+	}
+	parts := func(p *StudyParts) string {
+		switch {
+		case p.Reference != p.Candidate:
+			return fmt.Sprintf("%d reference and %d candidate parts", p.Reference, p.Candidate)
+		case c.Method == "paired":
+			return Count(p.Reference, "pair", "pairs")
+		}
+		return fmt.Sprintf("%d a lot", p.Reference)
+	}
+	none := "the difference is 0"
+	if e := c.Equivalence; e != nil && e.Scale == scaleRatio {
+		none = "the ratio is 1"
+	}
+	var of []string
+	if n.AtZero != nil {
+		of = append(of, "of "+parts(n.AtZero)+" would show it with probability "+Fixed(n.Power, 2)+" if "+none)
+	}
+	if n.AtEstimate != nil {
+		also := ""
+		if len(of) == 0 {
+			also = " would show it with probability " + Fixed(n.Power, 2)
+		}
+		of = append(of, "of "+parts(n.AtEstimate)+also+" if it is as found here")
+	} else {
+		of = append(of, "of no size if it is as found here")
+	}
+	return "A new study " + strings.Join(of, ", one ") + "; these readings are not to be extended unless the plan allowed it."
 }
 
 func performanceSentence(c Comparison) string {

@@ -58,8 +58,8 @@ func (p Plan) Validate() []PlanFault {
 		v.share("performance.coverage", f.Coverage)
 		v.share("performance.confidence", f.Confidence)
 	}
-	if s := p.Sensitivity; s != nil && s.Resamples != 0 {
-		v.notYet("sensitivity.resamples", fmt.Sprint(s.Resamples), "0")
+	if s := p.Sensitivity; s != nil && s.Resamples != 0 && (s.Resamples < fewestResamples || s.Resamples > mostResamples) {
+		v.fault("sensitivity.resamples", fmt.Sprint(s.Resamples), fmt.Sprintf("0, or %d to %d", fewestResamples, mostResamples), "correct the plan")
 	}
 	return v.faults
 }
@@ -77,23 +77,6 @@ func (v *validator) oneOf(key, value string, allowed ...string) bool {
 	}
 	v.fault(key, fmt.Sprintf("%q", value), strings.Join(allowed, ", "), "choose one of these")
 	return false
-}
-
-// notYet refuses a value that the plan format knows and this version does not offer: better no answer than another one.
-func (v *validator) notYet(key, found, want string) {
-	v.fault(key, found+", which this version does not offer", want, "change the plan or use a later version")
-}
-
-// only checks against what the format knows, then against what this version offers.
-func (v *validator) only(key, value string, offered, known []string) {
-	if value == "" || slices.Contains(offered, value) {
-		return
-	}
-	if slices.Contains(known, value) {
-		v.notYet(key, fmt.Sprintf("%q", value), strings.Join(offered, ", "))
-		return
-	}
-	v.oneOf(key, value, append(append([]string{}, offered...), known...)...)
 }
 
 func (v *validator) finite(key string, x *float64) {
