@@ -27,7 +27,7 @@ type Inspection struct {
 	Unread          []qa.UnreadResult         `json:"unread"`
 	Warnings        []qa.Warning              `json:"warnings"`
 
-	lotColumn, partColumn string // headings, for Plan
+	mapping Mapping // for Plan
 }
 
 // InspectedSheet is one sheet of the file.
@@ -61,15 +61,12 @@ type InspectedReading struct {
 
 // Inspect says how a file would be read without a plan. The sheet and the layout are found where they are empty.
 func Inspect(name string, data []byte, sheet, layout string) (Inspection, error) {
-	if layout != "" && layout != "row-per-part" {
-		return Inspection{}, planError(name, "found the layout %s, which this version does not offer, want row-per-part; bring the readings into rows", quoted(layout))
-	}
 	b, err := Open(name, data, "")
 	if err != nil {
 		return Inspection{}, err
 	}
 	in := Inspection{
-		Format: InspectFormat, File: b.File, Layout: "row-per-part", Encoding: b.Encoding, Delimiter: b.Delimiter,
+		Format: InspectFormat, File: b.File, Encoding: b.Encoding, Delimiter: b.Delimiter,
 		Sheets: []InspectedSheet{}, Lots: []InspectedLot{}, Characteristics: []InspectedCharacteristic{}, Unread: []qa.UnreadResult{}, Warnings: []qa.Warning{},
 	}
 	for _, s := range b.Sheets {
@@ -84,117 +81,28 @@ func Inspect(name string, data []byte, sheet, layout string) (Inspection, error)
 			in.Warnings = append(in.Warnings, qa.Warning{Code: "hidden-sheets", Text: b.File.Name + ": the sheet " + quoted(s.Name) + " is hidden."})
 		}
 	}
-	t, err := inspectTable(b, sheet)
+	m, err := Propose(b, qa.ReadingPlan{Layout: layout, Sheet: sheet})
 	if err != nil {
 		return Inspection{}, err
 	}
-	if err := t.beyondHeadings(); err != nil {
-		return Inspection{}, err
-	}
-	in.Sheet, in.HeaderRow = t.sheet.Name, t.heading
-	in.lotColumn, in.partColumn = t.column(t.lot).heading, t.column(t.part).heading
-	lots := t.foundLots()
-	if t.lot == 0 {
-		name := t.sheet.Name
-		if name == "" {
-			name = b.File.Name
+	in.mapping, in.Layout, in.Sheet, in.HeaderRow = m, m.Reading.Layout, m.tables[0].sheet.Name, m.tables[0].heading
+	in.Reasons = append(slices.Clone(b.Said), "the layout "+in.Layout+" is "+string(m.Confidence)+": "+m.Reasons[0])
+	in.Reasons = append(in.Reasons, m.Reasons[1:]...)
+	for _, t := range m.tables {
+		if err := t.beyondHeadings(); err != nil {
+			return Inspection{}, err
 		}
-		lots = []found{{name: name, rows: len(t.rows)}}
+		t.nearSpellings(func(string) bool { return true })
 	}
-	for _, l := range lots {
-		in.Lots = append(in.Lots, InspectedLot{Lot: l.name, Rows: l.rows})
+	for _, l := range m.Lots {
+		in.Lots = append(in.Lots, InspectedLot{Lot: l.Name, Rows: l.Rows})
 	}
-	t.nearSpellings(func(string) bool { return true })
-	in.characteristics(t, lots)
-	in.Reasons = append(b.Said, t.said...)
-	in.Warnings = append(in.Warnings, t.warnings...)
+	in.characteristics(m)
+	for _, t := range m.tables {
+		in.Reasons = append(in.Reasons, t.said...)
+		in.Warnings = append(in.Warnings, t.warnings...)
+	}
 	return in, nil
-}
-
-// inspectTable reads the sheet that is named, else the first visible one that can be read.
-func inspectTable(b Book, name string) (*table, error) {
-	if name != "" {
-		s, ok := b.sheet(name)
-		if !ok {
-			return nil, planError(b.File.Name, "found the sheets %s, want %s; name one of these", list(sheetNames(b.Sheets)), quoted(name))
-		}
-		return newTable(b, s, hints{whole: true})
-	}
-	var first error
-	for _, hidden := range []bool{false, true} {
-		for _, s := range b.Sheets {
-			if s.Hidden != hidden {
-				continue
-			}
-			t, err := newTable(b, s, hints{whole: true})
-			if err == nil {
-				return t, nil
-			}
-			if first == nil {
-				first = err
-			}
-		}
-	}
-	if first == nil {
-		first = fileError(b.File.Name, "found no sheet, want readings; copy the file again from where it came")
-	}
-	return nil, first
-}
-
-// characteristics reads every column of measurements in every lot.
-func (in *Inspection) characteristics(t *table, lots []found) {
-	marks := map[byte]bool{}
-	for _, col := range t.measured {
-		c := t.column(col)
-		ch := qa.Characteristic{Name: c.heading, Unit: c.unit}
-		if len(t.named(c.name)) == 1 {
-			ch.Name = c.name
-		}
-		m, err := t.settleColumn(&ch, qa.Characteristic{}, col)
-		if err != nil {
-			for _, f := range faultsOf(err) {
-				t.warnings = append(t.warnings, qa.Warning{Code: DecimalAmbiguous, Text: f.Place + ": " + f.Text})
-			}
-		}
-		marks[m.decimal] = true
-		out := InspectedCharacteristic{
-			Name: ch.Name, Unit: ch.Unit, Kind: "numeric", Limits: qa.Limits{Lower: ch.Lower, Target: ch.Target, Upper: ch.Upper}, Lots: []InspectedReading{},
-		}
-		values := map[string][]float64{}
-		for _, row := range t.rows {
-			got := takeCell(t.cell(row, col), t.book.IsText, ch.Unit, m.decimal)
-			if got.isValue {
-				values[row.lot] = append(values[row.lot], got.value)
-			}
-			in.unread(t, row, col, got)
-		}
-		for _, l := range lots {
-			r := InspectedReading{Lot: l.name}
-			v := values[l.name]
-			if t.lot == 0 {
-				v = values[""]
-			}
-			if r.N = len(v); r.N > 0 {
-				mean := meanOf(v)
-				r.Mean = &mean
-			}
-			out.Lots = append(out.Lots, r)
-		}
-		t.sayFormats(t.rows, col, ch.Name)
-		for _, at := range t.summary {
-			if cell := t.sheet.Rows[at].At(col); stored(cell) {
-				in.list(t, cell, qa.TakenSummary, nil)
-			}
-		}
-		in.Characteristics = append(in.Characteristics, out)
-	}
-	switch {
-	case marks[0]:
-	case marks[',']:
-		in.Decimal = ","
-	default:
-		in.Decimal = "."
-	}
 }
 
 // unread lists a cell that is not a plain number.

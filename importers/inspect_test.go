@@ -87,7 +87,7 @@ func TestInspectRefuses(t *testing.T) {
 	_, err := Inspect("a.csv", []byte("1,2\n3,4\n"), "", "")
 	wantPlanError(t, err, "a.csv", "header_row")
 	_, err = Inspect("a.csv", []byte("lot,x\nA,1\n"), "", "column-per-lot")
-	wantPlanError(t, err, "column-per-lot")
+	wantPlanError(t, err, "reading.layout", "side by side")
 	_, err = Inspect("a.xlsx", xlsx(t, sheetOf{name: "Data", rows: long()}), "data", "")
 	wantPlanError(t, err, `"Data"`)
 	_, err = Inspect("a.xlsx", []byte("x"), "", "")

@@ -41,7 +41,7 @@ func (t *table) steps() []func() error {
 		return []func() error{t.findLotColumns, t.readHeadings, t.sortRows, t.turnLots, t.measureTurned}
 	}
 	return []func() error{
-		t.findHeading, t.choosePanel, t.readHeadings, t.findLotColumn, t.findPartColumn, t.sortRows, t.turnSections, t.findMeasured,
+		t.findHeading, t.choosePanel, t.readHeadings, t.findLotColumn, t.findPartColumn, t.sortRows, t.turnSections, t.turnReplicates, t.findMeasured,
 	}
 }
 

@@ -2,6 +2,7 @@ package importers
 
 import (
 	"fmt"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -20,32 +21,39 @@ func (in Inspection) Plan() string {
 	line("[record]")
 	line("part = \"\"")
 	line("revision = \"\"")
+	m := in.mapping
+	named := m.tables[0].lot > 0
 	for i, side := range []string{"reference", "candidate"} {
 		line("")
 		line("[%s]", side)
 		switch {
-		case i < len(in.Lots) && in.lotColumn != "":
-			line("lot = %s", tomlText(in.Lots[i].Lot))
-		case i < len(in.Lots):
-			line("lot = %s # the file names no lot: call it as it is called", tomlText(in.Lots[i].Lot))
+		case i < len(m.Lots) && named:
+			line("lot = %s", tomlText(m.Lots[i].Name))
+		case i < len(m.Lots):
+			line("lot = %s # the sheet names no lot: call it as it is called", tomlText(m.Lots[i].Name))
 		default:
 			line("lot = \"\" # fill in: the lot's name")
 		}
-		if in.lotColumn != "" || i == 0 {
+		if named || i < len(m.Lots) {
 			line("file = %s", tomlText(in.File.Name))
 		} else {
 			line("file = \"\" # fill in: the file of the other lot")
+		}
+		if len(m.tables) > 1 && i < len(m.Lots) {
+			line("sheet = %s", tomlText(m.Lots[i].Sheet))
 		}
 	}
 	line("")
 	line("[reading]")
 	line("layout = %s", tomlText(in.Layout))
-	if in.Sheet != "" {
-		line("sheet = %s", tomlText(in.Sheet))
+	if m.Reading.Sheet != "" {
+		line("sheet = %s", tomlText(m.Reading.Sheet))
 	}
-	line("header_row = %d", in.HeaderRow)
-	if in.lotColumn != "" {
-		line("lot_column = %s", tomlText(in.lotColumn))
+	if !slices.ContainsFunc(m.tables, func(t *table) bool { return t.heading != in.HeaderRow }) {
+		line("header_row = %d", in.HeaderRow)
+	}
+	if m.Reading.LotColumn != "" {
+		line("lot_column = %s", tomlText(m.Reading.LotColumn))
 	}
 	switch {
 	case in.Decimal == "":

@@ -1,0 +1,103 @@
+package importers
+
+import (
+	"lotpair/qa"
+)
+
+// characteristics reads every characteristic in every lot.
+func (in *Inspection) characteristics(m Mapping) {
+	marks := map[byte]bool{}
+	first := m.tables[0]
+	for _, col := range first.measured {
+		c := first.column(col)
+		ch := qa.Characteristic{Name: c.heading, Unit: c.unit}
+		if len(first.named(c.name)) == 1 {
+			ch.Name = c.name
+		}
+		values := map[*table]map[string][]float64{}
+		for _, t := range m.tables {
+			if at := t.named(ch.Name); len(at) == 1 {
+				values[t] = in.readColumn(t, &ch, at[0], marks)
+			}
+		}
+		out := InspectedCharacteristic{
+			Name: ch.Name, Unit: ch.Unit, Kind: "numeric", Limits: qa.Limits{Lower: ch.Lower, Target: ch.Target, Upper: ch.Upper}, Lots: []InspectedReading{},
+		}
+		for _, l := range m.Lots {
+			r := InspectedReading{Lot: l.Name}
+			v := values[l.table][l.Name]
+			if l.table.lot == 0 {
+				v = values[l.table][""]
+			}
+			if r.N = len(v); r.N > 0 {
+				mean := meanOf(v)
+				r.Mean = &mean
+			}
+			out.Lots = append(out.Lots, r)
+		}
+		in.warnUnits(m, ch)
+		in.Characteristics = append(in.Characteristics, out)
+	}
+	switch {
+	case marks[0]:
+	case marks[',']:
+		in.Decimal = ","
+	default:
+		in.Decimal = "."
+	}
+}
+
+// readColumn reads one characteristic of one table: the values of each lot, and what is not a plain number.
+func (in *Inspection) readColumn(t *table, ch *qa.Characteristic, col int, marks map[byte]bool) map[string][]float64 {
+	m, err := t.settleColumn(ch, qa.Characteristic{}, col)
+	if err != nil {
+		code := "limits-unread"
+		if len(m.unclear) > 0 {
+			code = DecimalAmbiguous
+		}
+		for _, f := range faultsOf(err) {
+			t.warnings = append(t.warnings, qa.Warning{Code: code, Text: f.Place + ": " + f.Text})
+		}
+	}
+	marks[m.decimal] = true
+	values := map[string][]float64{}
+	for _, row := range t.rows {
+		got := takeCell(t.cell(row, col), t.book.IsText, ch.Unit, m.decimal)
+		if got.isValue {
+			values[row.lot] = append(values[row.lot], got.value)
+		}
+		in.unread(t, row, col, got)
+	}
+	t.sayFormats(t.rows, col, ch.Name)
+	for _, at := range t.summary {
+		if cell := t.sheet.Rows[at].At(col); stored(cell) {
+			in.list(t, cell, qa.TakenSummary, nil)
+		}
+	}
+	for _, f := range t.feet {
+		if f.col == col {
+			in.list(t, f.cell, qa.TakenSummary, nil)
+		}
+	}
+	return values
+}
+
+// warnUnits tells of lots whose units differ.
+func (in *Inspection) warnUnits(m Mapping, ch qa.Characteristic) {
+	first, unit := "", ""
+	for _, l := range m.Lots {
+		at := l.table.named(ch.Name)
+		if len(at) != 1 {
+			continue
+		}
+		u := l.table.columnOf(at[0], l.Name).unit
+		switch {
+		case u == "":
+		case unit == "":
+			first, unit = l.Name, u
+		case unitKey(u) != unitKey(unit):
+			in.Warnings = append(in.Warnings, qa.Warning{Code: "units-differ", Text: l.table.place() + ": " + ch.Name + " is in " + unit + " in the lot " + quoted(first) + " and in " + u + " in the lot " + quoted(l.Name) + "."})
+			return
+		}
+	}
+}
