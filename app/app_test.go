@@ -250,7 +250,7 @@ func TestTabReachesEveryControl(t *testing.T) {
 	w := opened(t, demo(t), 1280, 800)
 	want := []fyne.Focusable{w.leftRows.content, w.act.order, w.spineRows.content, w.rightRows.content, w.act.picture, w.sentences.content, w.act.export, w.act.sign}
 	seen := map[fyne.Focusable]bool{}
-	for range 12 {
+	for range 20 {
 		w.win.Canvas().FocusNext()
 		seen[w.win.Canvas().Focused()] = true
 	}

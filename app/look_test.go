@@ -19,7 +19,7 @@ func TestKeysChooseTheLook(t *testing.T) {
 			for _, c := range []struct {
 				key  fyne.KeyName
 				want desk.Look
-			}{{fyne.Key2, desk.Order}, {fyne.Key3, desk.Shape}, {fyne.Key5, desk.Limits}, {fyne.Key1, desk.Spread}} {
+			}{{fyne.Key2, desk.Order}, {fyne.Key3, desk.Shape}, {fyne.Key4, desk.Sensitivity}, {fyne.Key5, desk.Limits}, {fyne.Key1, desk.Spread}} {
 				press(&fyne.KeyEvent{Name: c.key})
 				if got := w.state.Shown(); got != c.want {
 					t.Fatalf("key %s: got %v, want %v", c.key, got, c.want)

@@ -38,6 +38,9 @@ func (s State) Bench() BenchView {
 	case Shape:
 		v.Headline, v.Paragraphs, v.Caution = "Beside the normal distribution.", s.shapeSentences(c), cautions[3]
 		return v
+	case Sensitivity:
+		v.Headline, v.Paragraphs, v.Caution = "The same question, asked otherwise.", s.sensitivitySentences(c), cautions[2]
+		return v
 	case Limits:
 		v.Headline, v.Paragraphs, v.Caution = "Between the limits.", s.limitsSentences(c), cautions[5]
 		return v

@@ -3,6 +3,7 @@ package desk
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"lotpair/qa"
 	"lotpair/qa/figure"
@@ -41,12 +42,14 @@ type LookView struct {
 // offers says whether there is something to look at in this way.
 func offers(l Look, c qa.Comparison) bool {
 	switch l {
-	case Spread, Order, Shape:
+	case Spread:
 		return true
-	case Limits:
-		return c.Performance != nil
+	case Order, Shape:
+		return c.Kind != "attribute"
+	case Sensitivity:
+		return len(c.Sensitivity) > 0
 	}
-	return false
+	return c.Performance != nil
 }
 
 // WithLook looks at the characteristic in another way. One that is not offered changes nothing.
@@ -79,6 +82,8 @@ func (s State) Picture(width, height float64) (figure.Figure, bool) {
 		return figure.OrderAt(c, r, width, height), true
 	case Shape:
 		return figure.ShapeAt(c, r, width, height), true
+	case Sensitivity:
+		return figure.SensitivityAt(c, width, height), true
 	case Limits:
 		return figure.LimitsAt(c, r, width, height), true
 	}
@@ -119,11 +124,11 @@ type aLot struct {
 func (s State) orderSentences(c qa.Comparison) []string {
 	var out []string
 	for _, l := range s.lots(c) {
-		lag, ok := figure.NextCorrelation(l.series)
-		if !ok {
+		if l.checks.Lag1 == nil {
 			out = append(out, l.name+": too few readings, or all of them equal, to see how they follow each other.")
 			continue
 		}
+		lag := *l.checks.Lag1
 		// Chance alone leaves it within about two of its standard errors, 1/sqrt(n) (Bartlett 1946, from memory).
 		chance := 2 / math.Sqrt(float64(l.sample.N))
 		text := fmt.Sprintf("%s: the correlation of each reading with the next is %s; chance alone leaves it within about ±%s for %s.",
@@ -133,6 +138,9 @@ func (s State) orderSentences(c qa.Comparison) []string {
 			text += " It is more: look for a drift, a change of tool or readings taken in groups."
 		case lag < -chance:
 			text += " It is less: a high reading is followed by a low one, as where a process is corrected after every part."
+		}
+		if r := l.checks.Runs; r != nil {
+			text += fmt.Sprintf(" %s about the median: p %s.", qa.Count(r.Runs, "run", "runs"), pText(r.P))
 		}
 		out = append(out, text)
 	}
@@ -149,6 +157,9 @@ func (s State) shapeSentences(c qa.Comparison) []string {
 			continue
 		}
 		text := fmt.Sprintf("%s: the farthest reading stands in %s, %s standard deviations from the mean (Grubbs p %s).", l.name, g.Cell, qa.Fixed(g.G, 1), pText(g.P))
+		if w := l.checks.ShapiroWilk; w != nil {
+			text += fmt.Sprintf(" Shapiro–Wilk: W %s, p %s.", qa.Fixed(w.W, 3), pText(w.P))
+		}
 		if r := l.checks.Resolution; r != nil {
 			text += " The readings step by " + withUnit(qa.Plain(*r), c.Unit) + "."
 		}
@@ -170,6 +181,22 @@ func withUnit(s, unit string) string {
 		return s
 	}
 	return s + " " + unit
+}
+
+// sensitivitySentences say how much the verdict rests on the way it is computed.
+func (s State) sensitivitySentences(c qa.Comparison) []string {
+	var out []string
+	for _, t := range qa.Sentences(c) {
+		if strings.HasPrefix(t, "The verdict on the mean is the same") {
+			out = append(out, t)
+		}
+	}
+	for _, w := range c.Warnings {
+		if w.Code == qa.WarnFlips {
+			out = append(out, w.Text)
+		}
+	}
+	return append(out, "None of these lines changes the verdict: the plan's own method decides. Where they part, look why before you sign.")
 }
 
 // limitsSentences say how the lots lie between the limits.

@@ -71,29 +71,6 @@ func TestOrderOfManyIsStrokes(t *testing.T) {
 	near(t, "lowest", high, y(*c.Reference.Min))
 }
 
-// TestNextCorrelation holds it against the certified value of NumAcc1 of the univariate data of NIST StRD, r1 = -0.5, and a sum
-// by hand: of 1, 2, 3, 4 the products are 0.75 - 0.25 + 0.75 = 1.25 over 5.
-func TestNextCorrelation(t *testing.T) {
-	for _, c := range []struct {
-		name   string
-		values []float64
-		want   float64
-	}{
-		{"NumAcc1", []float64{10000001, 10000003, 10000002}, -0.5},
-		{"rising", []float64{1, 2, 3, 4}, 0.25},
-	} {
-		got, ok := figure.NextCorrelation(lot("R", c.values, nil).Series[0])
-		if !ok || math.Abs(got-c.want) > 1e-12 {
-			t.Errorf("%s: got %v, %v, want %v", c.name, got, ok, c.want)
-		}
-	}
-	for _, x := range [][]float64{nil, {1}, {1, 2}, {3, 3, 3}, {0, 0, 0}} {
-		if got, ok := figure.NextCorrelation(lot("R", x, nil).Series[0]); ok {
-			t.Errorf("%v: got %v, want none", x, got)
-		}
-	}
-}
-
 // TestShapeStandsOnQuantiles checks the places against the normal distribution's: of 3 readings the middle one stands at 0 and
 // the others at the quantile of (3 - 3/8)/(3 + 1/4) = 0.8077, which is 0.8694 (Abramowitz and Stegun, table 26.1, between 0.86
 // and 0.87).
@@ -180,4 +157,51 @@ func TestEveryLookSurvivesWhateverTheReadings(t *testing.T) {
 			}
 		}
 	})
+}
+
+// otherwise is a comparison with its verdict by two other ways.
+func otherwise(t testing.TB) qa.Comparison {
+	t.Helper()
+	c, _ := looked(t)
+	c.Sensitivity = []qa.SensitivityResult{
+		{Method: "pooled", Estimate: ptr(0.01), Level: ptr(0.9), Lower: ptr(-0.01), Upper: ptr(0.03), Verdict: qa.Undecided},
+		{Method: "exclusions-put-back", Estimate: ptr(0), Level: ptr(0.9), Lower: ptr(-0.01), Upper: ptr(0.01), Verdict: qa.Equivalent},
+	}
+	return c
+}
+
+func TestSensitivityIsALineAWay(t *testing.T) {
+	f := figure.Sensitivity(otherwise(t))
+	if n := len(f.All("interval")); n != 3 {
+		t.Fatalf("intervals: got %d, want the plan's own and 2 others", n)
+	}
+	centre := at(t, f, "zero").X
+	one := at(t, f, "upper post").X - centre
+	second := f.All("interval")[1]
+	near(t, "interval from", second.X, centre-one/2)
+	near(t, "interval to", second.X2, centre+1.5*one)
+	var text []string
+	for _, m := range f.Marks {
+		if m.Kind == figure.Label {
+			text = append(text, m.Text)
+		}
+	}
+	for _, want := range []string{"Welch, as planned", "pooled", "exclusions put back", "undecided", "equivalent", "not equivalent"} {
+		if !strings.Contains(strings.Join(text, "|"), want) {
+			t.Errorf("words: got %q, want %q among them", text, want)
+		}
+	}
+}
+
+func TestRatiosStandAboutOne(t *testing.T) {
+	c := equivalence(qa.Equivalence, ptr(0.9), ptr(1.1), ptr(0.95), ptr(1.05), ptr(1))
+	c.Equivalence.Scale = "ratio"
+	f := figure.Spine(c)
+	near(t, "estimate", at(t, f, "estimate").X, at(t, f, "zero").X)
+	near(t, "interval", at(t, f, "interval").X2-at(t, f, "zero").X, (at(t, f, "upper post").X-at(t, f, "zero").X)/2)
+	c = equivalence(qa.Equivalence, ptr(0.8), ptr(1.25), ptr(0.8), ptr(1.25), ptr(1))
+	c.Equivalence.Scale, c.Method = "ratio", "log"
+	f = figure.Spine(c)
+	near(t, "lower post", at(t, f, "zero").X-at(t, f, "lower post").X, at(t, f, "upper post").X-at(t, f, "zero").X)
+	near(t, "lower end", at(t, f, "interval").X, at(t, f, "lower post").X)
 }

@@ -26,8 +26,8 @@ func OrderAt(c qa.Comparison, r qa.Readings, width, height float64) Figure {
 	f.sayMargin(f.Width)
 	f.place()
 	f.names(r)
-	f.follow(qa.Reference, ref)
-	f.follow(qa.Candidate, cand)
+	f.follow(qa.Reference, c.Checks.Reference.Lag1)
+	f.follow(qa.Candidate, c.Checks.Candidate.Lag1)
 	return f.Figure
 }
 
@@ -147,12 +147,11 @@ func (f *facing) strokes(side qa.Side, all []qa.Reading, from, to float64) {
 }
 
 // follow says how each reading goes with the next, below the pane where there is room.
-func (f *facing) follow(side qa.Side, s qa.Series) {
-	lag, ok := NextCorrelation(s)
-	if !ok {
+func (f *facing) follow(side qa.Side, lag *float64) {
+	if lag == nil {
 		return
 	}
-	l := Mark{Kind: Label, Name: string(side) + " next", Role: Muted, X: edge, Y: f.Height - 6, Size: 10.5, Text: "with the next: r = " + qa.Fixed(lag, 2)}
+	l := Mark{Kind: Label, Name: string(side) + " next", Role: Muted, X: edge, Y: f.Height - 6, Size: 10.5, Text: "with the next: r = " + qa.Fixed(*lag, 2)}
 	room := f.axis - edge - 110
 	if side == qa.Candidate {
 		l.X, l.Anchor = f.right, End
@@ -161,38 +160,4 @@ func (f *facing) follow(side qa.Side, s qa.Series) {
 	if room >= length([]string{l.Text}, l.Size) {
 		f.add(l)
 	}
-}
-
-// NextCorrelation is the correlation of each reading in use with the next one in the file, about the one mean of all (the
-// definition of the NIST StRD univariate data); false below three readings and where all are equal.
-func NextCorrelation(s qa.Series) (float64, bool) {
-	x := s.Values()
-	if len(x) < 3 {
-		return 0, false
-	}
-	// About the first reading, so that no digit is lost to a large mean; in quarters, so that no difference is too large.
-	scale, mean := 0.0, 0.0
-	first := x[0]
-	for i, v := range x {
-		x[i] = v/4 - first/4
-		scale = math.Max(scale, math.Abs(x[i]))
-	}
-	if scale == 0 {
-		return 0, false
-	}
-	for i := range x {
-		x[i] /= scale
-		mean += x[i] / float64(len(x))
-	}
-	above, below := 0.0, 0.0
-	for i, v := range x {
-		if i > 0 {
-			above += (x[i-1] - mean) * (v - mean)
-		}
-		below += (v - mean) * (v - mean)
-	}
-	if !(below > 0) {
-		return 0, false
-	}
-	return above / below, true
 }

@@ -26,21 +26,24 @@ const SpineMinWidth = 120
 
 // SpineAt is Spine at another width; less than the smallest is raised to it.
 func SpineAt(c qa.Comparison, width float64) Figure {
-	s := spine{Figure: Figure{Width: math.Max(width, SpineMinWidth), Height: SpineHeight, Title: c.Name + ": " + string(c.Verdict)}}
-	low, high, estimate := decision(c)
-	s.unit = scale(c, low, high)
-	if e := c.Equivalence; e != nil {
-		s.margin(c, e)
+	return newSpine(c, math.Max(width, SpineMinWidth), SpineHeight).Figure
+}
+
+// newSpine draws one line of the spine.
+func newSpine(c qa.Comparison, width, height float64) spine {
+	s := spine{Figure: Figure{Width: width, Height: height, Title: c.Name + ": " + string(c.Verdict)}}
+	d := decision(c)
+	s.unit = d.unit()
+	s.margin(c, d)
+	s.add(Mark{Kind: Line, Name: "zero", Role: Muted, X: s.x(0), Y: 0, X2: s.x(0), Y2: height, Size: 0.7, Dashed: true})
+	s.interval(d.low, d.high)
+	if d.estimate != nil && math.Abs(*d.estimate/s.unit) <= Reach {
+		s.add(Mark{Kind: Diamond, Name: "estimate", Role: Candidate, X: s.x(*d.estimate), Y: height / 2, Size: 4.8, Open: true})
 	}
-	s.add(Mark{Kind: Line, Name: "zero", Role: Muted, X: s.x(0), Y: 0, X2: s.x(0), Y2: SpineHeight, Size: 0.7, Dashed: true})
-	s.interval(low, high)
-	if estimate != nil && math.Abs(*estimate/s.unit) <= Reach {
-		s.add(Mark{Kind: Diamond, Name: "estimate", Role: Candidate, X: s.x(*estimate), Y: SpineHeight / 2, Size: 4.8, Open: true})
+	if d.low == nil || d.high == nil {
+		s.add(Mark{Kind: Label, Name: "no interval", Role: Muted, X: width / 2, Y: height/2 + math.Min(16, height/2-2), Size: 10.5, Anchor: Middle, Text: "no interval"})
 	}
-	if low == nil || high == nil {
-		s.add(Mark{Kind: Label, Name: "no interval", Role: Muted, X: s.Width / 2, Y: SpineHeight/2 + 16, Size: 10.5, Anchor: Middle, Text: "no interval"})
-	}
-	return s.Figure
+	return s
 }
 
 // spine is a line of the spine being drawn.
@@ -49,22 +52,50 @@ type spine struct {
 	unit float64 // how much of the characteristic's unit is 1 on the scale
 }
 
-// decision is the interval the verdict rests on, and its centre.
-func decision(c qa.Comparison) (low, high, estimate *float64) {
-	if e := c.Equivalence; e != nil && c.Objective.AgainstMargin() {
-		return e.Lower, e.Upper, e.Estimate
+// decided is the interval the verdict rests on, its centre and the margin, all on a scale whose zero says "alike".
+type decided struct{ low, high, estimate, marginLower, marginUpper *float64 }
+
+// decision is what a characteristic's line shows. Ratios are shown as what they are more or less than 1, and those of
+// geometric means as their logarithms, so that the margin is as wide on either side as it was meant.
+func decision(c qa.Comparison) decided {
+	e := c.Equivalence
+	if e == nil {
+		return decided{c.Difference.Lower, c.Difference.Upper, c.Difference.Estimate, nil, nil}
 	}
-	return c.Difference.Lower, c.Difference.Upper, c.Difference.Estimate
+	if !c.Objective.AgainstMargin() {
+		d := decided{low: c.Difference.Lower, high: c.Difference.Upper, estimate: c.Difference.Estimate}
+		if e.Scale != "ratio" { // else the margin lies on another scale than the difference asked for
+			d.marginLower, d.marginUpper = e.MarginLower, e.MarginUpper
+		}
+		return d
+	}
+	on := func(v *float64) *float64 { return v }
+	switch {
+	case e.Scale == "ratio" && c.Method == "log":
+		on = func(v *float64) *float64 {
+			if v == nil || !(*v > 0) {
+				return nil
+			}
+			l := math.Log(*v)
+			return &l
+		}
+	case e.Scale == "ratio":
+		on = func(v *float64) *float64 {
+			if v == nil {
+				return nil
+			}
+			l := *v - 1
+			return &l
+		}
+	}
+	return decided{on(e.Lower), on(e.Upper), on(e.Estimate), on(e.MarginLower), on(e.MarginUpper)}
 }
 
-// scale is the larger bound of the margin; without a margin the interval fills two thirds of the line.
-func scale(c qa.Comparison, low, high *float64) float64 {
-	unit := 0.0
-	if e := c.Equivalence; e != nil {
-		unit = larger(e.MarginLower, e.MarginUpper)
-	}
+// unit is the larger bound of the margin; without a margin the interval fills two thirds of the line.
+func (d decided) unit() float64 {
+	unit := larger(d.marginLower, d.marginUpper)
 	if unit == 0 {
-		unit = larger(low, high) / Reach * 1.5
+		unit = larger(d.low, d.high) / Reach * 1.5
 	}
 	if !(unit > 0) || math.IsInf(unit, 0) {
 		return 1
@@ -89,26 +120,26 @@ func (s spine) x(difference float64) float64 {
 	return s.Width / 2 * (1 + t/Reach)
 }
 
-func (s *spine) margin(c qa.Comparison, e *qa.EquivalenceResult) {
+func (s *spine) margin(c qa.Comparison, d decided) {
 	left, right := 0.0, s.Width
-	if e.MarginLower != nil {
-		left = s.x(*e.MarginLower)
+	if d.marginLower != nil {
+		left = s.x(*d.marginLower)
 	}
-	if e.MarginUpper != nil {
-		right = s.x(*e.MarginUpper)
+	if d.marginUpper != nil {
+		right = s.x(*d.marginUpper)
 	}
-	if e.MarginLower == nil && e.MarginUpper == nil {
+	if d.marginLower == nil && d.marginUpper == nil {
 		return
 	}
-	s.add(Mark{Kind: Box, Name: "margin", Role: Margin, X: left, Y: 0, X2: right, Y2: SpineHeight})
+	s.add(Mark{Kind: Box, Name: "margin", Role: Margin, X: left, Y: 0, X2: right, Y2: s.Height})
 	post := func(name string, bound *float64) {
 		if bound == nil {
 			return
 		}
-		s.add(Mark{Kind: Line, Name: name, Role: Muted, X: s.x(*bound), Y: 0, X2: s.x(*bound), Y2: SpineHeight, Size: 1, Dashed: !c.Objective.AgainstMargin()})
+		s.add(Mark{Kind: Line, Name: name, Role: Muted, X: s.x(*bound), Y: 0, X2: s.x(*bound), Y2: s.Height, Size: 1, Dashed: !c.Objective.AgainstMargin()})
 	}
-	post("lower post", e.MarginLower)
-	post("upper post", e.MarginUpper)
+	post("lower post", d.marginLower)
+	post("upper post", d.marginUpper)
 }
 
 // interval draws the interval with a cap at each end, or an arrow where an end lies beyond the scale.
@@ -120,7 +151,7 @@ func (s *spine) interval(low, high *float64) {
 		width, tall, arrow = 2.2, 6.0, 5.0
 		stub               = 26.0 // what is drawn of an interval that lies beyond the scale altogether
 	)
-	middle := float64(SpineHeight) / 2
+	middle := s.Height / 2
 	a, b := s.x(*low), s.x(*high)
 	beyondLeft, beyondRight := *low/s.unit < -Reach, *high/s.unit > Reach
 	switch {

@@ -49,7 +49,7 @@ func TestSVG(t *testing.T) {
 		Name: "Run-out <max>", Objective: qa.NotHigher, Verdict: qa.Undecided,
 		Equivalence: &qa.EquivalenceResult{MarginUpper: ptr(0.008), Lower: ptr(0.003), Upper: ptr(0.5), Estimate: ptr(0.02)},
 	}
-	for name, f := range map[string]figure.Figure{"facing": figure.Facing(c, r), "order": figure.Order(c, r), "shape": figure.Shape(c, r), "limits": figure.Limits(c, r), "spine": figure.Spine(c), "one-sided": figure.Spine(oneSided)} {
+	for name, f := range map[string]figure.Figure{"facing": figure.Facing(c, r), "order": figure.Order(c, r), "shape": figure.Shape(c, r), "limits": figure.Limits(c, r), "sensitivity": figure.Sensitivity(c), "spine": figure.Spine(c), "one-sided": figure.Spine(oneSided)} {
 		got, path := draw.SVG(f), filepath.Join("testdata", name+".svg")
 		if *update {
 			if err := os.WriteFile(path, got, 0o644); err != nil {
