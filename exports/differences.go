@@ -38,7 +38,12 @@ func sameNumber(a, b, largest float64) bool {
 
 // differences lists where two results differ, by the names of the result format. Words, verdicts and counts must be equal.
 func differences(stated, again qa.Result, largest float64) []string {
-	d := differ{largest: largest}
+	d := differ{largest: largest, unitless: map[string]bool{}}
+	for i, c := range stated.Characteristics {
+		if e := c.Equivalence; e != nil && e.Scale == "ratio" || c.Kind == "attribute" {
+			d.unitless[fmt.Sprintf("characteristics[%d].equivalence.", i)] = true
+		}
+	}
 	d.walk("", tree(stated), tree(again))
 	return d.found
 }
@@ -57,8 +62,9 @@ func tree(r qa.Result) any {
 }
 
 type differ struct {
-	largest float64
-	found   []string
+	largest  float64
+	unitless map[string]bool // blocks whose figures are ratios or fractions
+	found    []string
 }
 
 func (d *differ) say(path string, stated, again any) {
@@ -112,7 +118,7 @@ func (d *differ) walk(path string, a, b any) {
 // scale is the largest reading for a figure in the unit of the readings, and 1 for the others: rounding of readings near
 // 1e12 must not excuse a p-value.
 func (d *differ) scale(path string) float64 {
-	if _, name, ok := strings.Cut(path, "]."); ok && meanings[name].inUnit {
+	if _, name, ok := strings.Cut(path, "]."); ok && meanings[name].inUnit && !d.unitless[path[:strings.LastIndex(path, ".")+1]] {
 		return d.largest
 	}
 	return 1

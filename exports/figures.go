@@ -2,6 +2,7 @@ package exports
 
 import (
 	"fmt"
+	"strings"
 
 	"lotpair/qa"
 	"lotpair/qa/figure"
@@ -12,12 +13,32 @@ import (
 const (
 	FigureFacing = "facing" // the readings of both lots back to back
 	FigureSpine  = "spine"  // the interval on the scale of its margin
+	FigureOrder  = "order"  // the readings in the order measured
+	FigureShape  = "shape"  // against the quantiles of a normal distribution
+	FigureLimits = "limits" // against the specification limits
 )
 
 // figures are the painters' functions by the names of the figures.
 var figures = map[string]func(qa.Comparison, qa.Readings) figure.Figure{
-	FigureFacing: figure.Facing,
+	FigureFacing: func(c qa.Comparison, r qa.Readings) figure.Figure { return figure.Facing(onUnit(c), r) },
+	FigureOrder:  figure.Order,
+	FigureShape:  figure.Shape,
+	FigureLimits: figure.Limits,
 	FigureSpine:  func(c qa.Comparison, _ qa.Readings) figure.Figure { return figure.Spine(c) },
+}
+
+// FigureNames are the names of the figures in their order.
+func FigureNames() []string {
+	return []string{FigureFacing, FigureOrder, FigureShape, FigureLimits, FigureSpine}
+}
+
+// onUnit takes the margin away from a comparison whose margin is not in the unit of the readings (a ratio, a fraction): it cannot
+// be drawn as a band among them.
+func onUnit(c qa.Comparison) qa.Comparison {
+	if e := c.Equivalence; e != nil && e.Scale != "difference" {
+		c.Equivalence = nil
+	}
+	return c
 }
 
 // FigurePNG paints one figure of a characteristic as a PNG file, scale pixels a point.
@@ -45,7 +66,7 @@ func FigureSVG(rec qa.Record, characteristic, name string) ([]byte, error) {
 func figureOf(rec qa.Record, characteristic, name string) (figure.Figure, error) {
 	paint, ok := figures[name]
 	if !ok {
-		return figure.Figure{}, fmt.Errorf("figure: found %q, want %s or %s; choose one", name, FigureFacing, FigureSpine)
+		return figure.Figure{}, fmt.Errorf("figure: found %q, want %s; choose one", name, strings.Join(FigureNames(), ", "))
 	}
 	for _, c := range rec.Result.Characteristics {
 		if c.Name == characteristic {

@@ -73,7 +73,7 @@ func TestResultsSheet(t *testing.T) {
 // TestFigures saves each figure both ways.
 func TestFigures(t *testing.T) {
 	rec := record(t)
-	for _, name := range []string{exports.FigureFacing, exports.FigureSpine} {
+	for _, name := range exports.FigureNames() {
 		b, err := exports.FigurePNG(rec, "Bore", name, 2)
 		if err != nil {
 			t.Fatal(err)

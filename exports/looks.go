@@ -104,6 +104,10 @@ func style(k look) excelize.Style {
 	case ruledWrapLook:
 		s.Border = below(ruleColour, 1)
 		a.WrapText = true
+	case ruledSmallLook:
+		s.Font = font(7.5, inkColour, false)
+		s.Border = below(ruleColour, 1)
+		a.WrapText = true
 	case ruledStrongLook:
 		s.Font.Bold = true
 		s.Border = below(ruleColour, 1)

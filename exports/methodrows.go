@@ -54,6 +54,15 @@ func methodsUsed(r qa.Result) map[string]bool {
 		if c.Performance != nil {
 			uses["performance"] = true
 		}
+		if c.Groups != nil {
+			uses["groups"] = true
+		}
+		if c.Spread != nil && c.Spread.Bonett != nil {
+			uses["bonett"] = true
+		}
+		if len(c.Sensitivity) > 0 {
+			uses["sensitivity"] = true
+		}
 	}
 	return uses
 }
@@ -69,6 +78,12 @@ var methodLines = []methodLine{
 	{"standard error (Welch)", "Root of (s_r²/n_r + s_c²/n_c); no assumption of equal variances.", "Welch 1947", "welch"},
 	{"degrees of freedom (Welch)", "(s_r²/n_r + s_c²/n_c)² / ((s_r²/n_r)²/(n_r − 1) + (s_c²/n_c)²/(n_c − 1)); seldom a whole number and never rounded.", "Satterthwaite 1946", "welch"},
 	{"standard error (pooled)", "Root of s²·(1/n_r + 1/n_c), s² the pooled variance with n_r + n_c − 2 degrees of freedom.", "Student 1908; common textbooks", "pooled"},
+	{"paired", "The differences of the same parts, candidate minus reference: their mean, standard error s_d/√n and n − 1 degrees of freedom. Parts without a partner are left out and listed.", "Student 1908; common textbooks", "paired"},
+	{"on logarithms", "Welch's test on natural logarithms of the readings; the estimate and its interval are the ratio of geometric means.", "common textbooks", "log"},
+	{"ratio of means", "candidate − theta·reference is tested at both ends of the margin, each with its own standard error and degrees of freedom; the interval is every theta that is not rejected.", "Fieller 1954; Sasabuchi 1988; from memory", "scale ratio"},
+	{"shift that keeps Ppk", "The candidate mean minus the middle of the room that the wanted Ppk leaves, one-sample t with the candidate's own standard deviation and n − 1 degrees of freedom.", "own", "scale shift"},
+	{"sub-lots as a random effect", "The test on the unweighted means of the groups, degrees of freedom from the number of groups; variation between and within by analysis of variance.", "common textbooks", "groups"},
+	{"fractions that failed", "Difference of the fractions with the score interval: every difference that the score test with the factor N/(N − 1) does not reject. Fisher's exact p stands beside it and decides nothing.", "Miettinen and Nurminen 1985; Fisher 1935", "kind attribute"},
 	{"difference, its test", "Candidate mean minus reference mean; t = difference / standard error; two-sided p = P(|T| > |t|).", "Welch 1947", "kind numeric"},
 	{"difference, its interval", "Difference ± t(level, df) · standard error, level 1 − alpha (1 − 2·alpha where one direction is asked).", "Welch 1947", "kind numeric"},
 	{"against the margin", "Two one-sided tests: t_lower = (difference − lower end)/standard error, p_lower = P(T > t_lower); t_upper = (difference − upper end)/standard error, p_upper = P(T < t_upper). Equivalent where both are below alpha; the same as the 1 − 2·alpha interval lying strictly inside the margin.", "Schuirmann 1987; ASTM E2935", "margin"},
@@ -77,8 +92,16 @@ var methodLines = []methodLine{
 	{"what the margin permits", "Ppk and normal share outside the limits, were the mean shifted to the worse end of the margin at the reference's mean and standard deviation.", "ISO 22514-2", "margin"},
 	{"adjusted p", "The p-values of the characteristics asked for a difference, adjusted as one family.", "Holm 1979", "holm"},
 	{"ratio of spread", "s_c/s_r with the F interval: ratio / root of F(1 − alpha; n_c − 1, n_r − 1) to ratio · root of F(1 − alpha; n_r − 1, n_c − 1). It assumes normal readings.", "common textbooks", "kind numeric"},
+	{"ratio of spread, robust", "Interval of the ratio of standard deviations that allows for the shape of the readings, inverted from the test.", "Bonett 2006, from memory", "bonett"},
+	{"by ranks", "Pairs in which the candidate is above the reference (ties one half), and the shift between the lots by the median of all differences, with its interval; paired: signed ranks. Decides nothing.", "Mann and Whitney 1947; Wilcoxon 1945; Hodges and Lehmann 1963", "kind numeric"},
+	{"verdict by other methods", "The same criterion with another estimate of the difference or its error, a line each in the sheet Sensitivity. Decides nothing.", "own", "sensitivity"},
+	{"closeness to normal", "W from 3 to 5000 readings with its p.", "Shapiro and Wilk 1965; Royston 1995, AS R94", "kind numeric"},
+	{"outlying readings", "Generalized extreme studentized deviates, up to a tenth of the readings sought, alpha 0.05. It removes nothing.", "Rosner 1983", "kind numeric"},
+	{"runs, neighbours", "Runs about the median, readings equal to it left out, exact two-sided p; correlation of neighbours in the order measured.", "Wald and Wolfowitz 1940; common definitions", "kind numeric"},
 	{"farthest reading", "Largest distance from the mean in standard deviations; p from t with n − 2 degrees of freedom, times 2·n, at most 1. It removes nothing.", "Grubbs 1969", "kind numeric"},
 	{"Pp, Ppk", "Tolerance / (6·s); distance of the mean to the nearer limit / (3·s). No claim that the process is stable.", "ISO 22514-2", "performance"},
+	{"interval of Ppk", "Ppk ± normal quantile · √(1/(9·n) + Ppk²/(2·(n − 1))).", "Bissell 1990", "performance"},
+	{"tolerance interval", "Mean ± k·s that holds the stated part of a normal lot with the stated confidence, exact factor; with one limit one bound.", "ISO 16269-6, from memory", "performance"},
 	{"share outside, estimated", "Normal shares beyond the limits at the lot's mean and standard deviation.", "ISO 22514-2", "performance"},
 }
 

@@ -65,7 +65,7 @@ func plots(cs []qa.Comparison, r qa.Readings) ([]byte, error) {
 	const block = blockHeight / plotSize // in points of the figure
 	all := figure.Figure{Width: plotWidth, Height: block * float64(len(cs))}
 	for i, c := range cs {
-		appendBelow(&all, figure.FacingAt(c, r, plotWidth, plotHeight), block*float64(i)+plotHead/plotSize)
+		appendBelow(&all, figure.FacingAt(onUnit(c), r, plotWidth, plotHeight), block*float64(i)+plotHead/plotSize)
 	}
 	p := draw.Light()
 	p.Paper = white

@@ -59,6 +59,7 @@ const (
 	ruledWrapLook
 	ruledNumberLook
 	ruledStrongLook
+	ruledSmallLook
 	signLook
 	headPlainLook // names of the result format, over what they mean
 	headPlainRightLook

@@ -36,6 +36,9 @@ func sensitivityOf(names []string, all []reflect.Value) (sheet, bool) {
 	s.add(text("Sensitivity", titleLook))
 	s.addTall(30, wide("The verdict again under each other method. None of them changes the verdict of the criterion; where they part, look why.", wrapLook, max(2, len(t.names))))
 	t.to(&s, sensitivityMeaning)
+	for i, w := range s.widths {
+		s.widths[i] = max(w, 20)
+	}
 	return s, len(t.rows) > 0
 }
 

@@ -126,11 +126,24 @@ func verdictTable(s *sheet, r qa.Result) {
 		s.pictures = append(s.pictures, spinePicture(r, len(s.rows)+1))
 	}
 	for _, c := range r.Characteristics {
-		s.addTall(spineRowHeight, text(nameWithUnit(c), ruledWrapLook), text(askedText(c), ruledWrapLook),
+		s.addTall(spineRowHeight, nameCell(c), text(askedText(c), ruledWrapLook),
 			text(fmt.Sprintf("%d | %d", c.Reference.N, c.Candidate.N), ruledLook),
 			text(optional(c.Difference.Estimate, c.Decimals+1), ruledLook), text(intervalText(c), ruledWrapLook),
 			wide("", ruledLook, 2), text(verdictText(c), ruledStrongLook))
 	}
+}
+
+// nameCell is a name in the room of a line of the spine; the sheet Results has it in full.
+func nameCell(c qa.Comparison) cell {
+	const plain, most = 44, 84
+	name := []rune(nameWithUnit(c))
+	if len(name) <= plain {
+		return text(string(name), ruledWrapLook)
+	}
+	if len(name) > most {
+		name = append(name[:most-1], '…')
+	}
+	return text(string(name), ruledSmallLook)
 }
 
 func nameWithUnit(c qa.Comparison) string {
