@@ -12,6 +12,13 @@ import (
 // with a decimal mark behind them, several of them, or with the mark that the plan says is not the decimal mark.
 // The value is rounded once (strconv, to nearest even); decimals are the decimal places written.
 func ParseNumber(text string, decimal byte) (value float64, decimals int, err *Problem) {
+	if value, decimals, ok := plainNumber(text, decimal); ok {
+		return value, decimals, nil
+	}
+	return parseNumber(text, decimal)
+}
+
+func parseNumber(text string, decimal byte) (value float64, decimals int, err *Problem) {
 	n, err := splitNumber(text, decimal)
 	if err != nil {
 		return 0, 0, err

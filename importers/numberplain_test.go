@@ -1,0 +1,29 @@
+package importers
+
+import (
+	"math"
+	"testing"
+
+	"pgregory.net/rapid"
+)
+
+// The short way reads a number exactly as the long one does, or not at all.
+func TestPlainNumber(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		text := rapid.OneOf(rapid.StringMatching(`-?[0-9]{1,17}([.,][0-9]{1,9})?`), rapid.StringMatching(`[-+0-9.,e ]{0,8}`)).Draw(t, "text")
+		decimal := rapid.SampledFrom([]byte{0, '.', ','}).Draw(t, "decimal")
+		value, decimals, ok := plainNumber(text, decimal)
+		if !ok {
+			return
+		}
+		want, wantDecimals, err := parseNumber(text, decimal)
+		if err != nil || math.Float64bits(value) != math.Float64bits(want) || decimals != wantDecimals {
+			t.Fatalf("%q with %q: got %v, %d decimals, want %v, %d, %v", text, decimal, value, decimals, want, wantDecimals, err)
+		}
+	})
+	for _, text := range []string{"12", "-0", "0.050", "12.003000000000001", "-7.5"} {
+		if _, _, ok := plainNumber(text, '.'); !ok {
+			t.Errorf("%q: got it left to the long way, want it read", text)
+		}
+	}
+}
