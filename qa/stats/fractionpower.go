@@ -98,7 +98,7 @@ func (d FractionDesign) power() float64 {
 	}
 	total := 0.0
 	for x, px := range ref {
-		if px == 0 {
+		if px == 0 { // far from what is likely
 			continue
 		}
 		p.x = float64(x)
@@ -115,17 +115,18 @@ func (d FractionDesign) power() float64 {
 // countChances is the probabilities of 0 to n of n at p, from the largest outwards
 // and scaled to add to 1, so that no factorial is needed.
 func countChances(n int, p float64) []float64 {
+	const least = 1e-20 // of the largest: what lies beyond adds to less than 1e-18
 	mass := make([]float64, n+1)
 	top := min(n, int(float64(n+1)*p))
 	mass[top] = 1
 	sum := 1.0
 	if p > 0 && p < 1 {
 		odds := p / (1 - p)
-		for k := top; k < n && mass[k] > 1e-300; k++ {
+		for k := top; k < n && mass[k] > least; k++ {
 			mass[k+1] = mass[k] * odds * float64(n-k) / float64(k+1)
 			sum += mass[k+1]
 		}
-		for k := top; k > 0 && mass[k] > 1e-300; k-- {
+		for k := top; k > 0 && mass[k] > least; k-- {
 			mass[k-1] = mass[k] / odds * float64(k) / float64(n-k+1)
 			sum += mass[k-1]
 		}

@@ -6,9 +6,10 @@ import "math"
 // the candidate.
 type fractionPair struct{ x, n, y, m float64 }
 
-// score is the score statistic of the hypothesis that the difference of the true
+// score is Proportions.Score by the closed form of the cubic, quick enough to be
+// gone through for every pair of counts: the score statistic of the hypothesis that the difference of the true
 // fractions, candidate minus reference, is s (Miettinen & Nurminen 1985,
-// Statistics in Medicine 4, 213-226, equations 8 and A2, from memory): the
+// Statistics in Medicine 4, 213-226, from memory): the
 // difference found less s over its standard error at the most likely pair of
 // fractions with that difference, with the factor N/(N-1).
 func (p fractionPair) score(s float64) float64 {
