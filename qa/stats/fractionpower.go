@@ -3,6 +3,7 @@ package stats
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"lotpair/qa/stats/dist"
 )
@@ -54,11 +55,7 @@ func (d FractionDesign) Power() (float64, error) {
 }
 
 func (d FractionDesign) power() float64 {
-	ref, cand := countChances(d.NRef, d.PRef), countChances(d.NCand, d.PCand)
-	sums := make([]float64, d.NCand+2) // sums[y] is P(Y < y)
-	for y, p := range cand {
-		sums[y+1] = sums[y] + p
-	}
+	ref, cand := chancesOf(d.NRef, d.PRef), chancesOf(d.NCand, d.PCand)
 	z := -dist.NormalQuantile(d.Alpha)
 	p := fractionPair{n: float64(d.NRef), m: float64(d.NCand)}
 	// The score rises with y, so each test rejects from or up to one y, which
@@ -97,44 +94,59 @@ func (d FractionDesign) power() float64 {
 		lower, upper = from(0, math.Nextafter(-two, math.Inf(-1))), from(0, two)
 	}
 	total := 0.0
-	for x, px := range ref {
-		if px == 0 { // far from what is likely
-			continue
-		}
-		p.x = float64(x)
+	for i, chance := range ref.mass {
+		p.x = float64(ref.first + i)
 		a, b := lower(), upper()
 		if d.Aim == AimDifference { // shown outside
-			total += px * (sums[a] + sums[d.NCand+1] - sums[b])
+			total += chance * (cand.below(a) + 1 - cand.below(b))
 		} else if a < b {
-			total += px * (sums[b] - sums[a])
+			total += chance * (cand.below(b) - cand.below(a))
 		}
 	}
 	return min(1, total)
 }
 
-// countChances is the probabilities of 0 to n of n at p, from the largest outwards
-// and scaled to add to 1, so that no factorial is needed.
-func countChances(n int, p float64) []float64 {
+// A chances holds the binomial probabilities of first and more of n, as far as they
+// are not far from what is likely, and the sums before each.
+type chances struct {
+	first      int
+	mass, sums []float64
+}
+
+// chancesOf goes from the largest probability outwards and scales them to add to 1,
+// so that no factorial is needed.
+func chancesOf(n int, p float64) chances {
 	const least = 1e-20 // of the largest: what lies beyond adds to less than 1e-18
-	mass := make([]float64, n+1)
 	top := min(n, int(float64(n+1)*p))
-	mass[top] = 1
-	sum := 1.0
+	up, down := []float64{1}, []float64{}
 	if p > 0 && p < 1 {
 		odds := p / (1 - p)
-		for k := top; k < n && mass[k] > least; k++ {
-			mass[k+1] = mass[k] * odds * float64(n-k) / float64(k+1)
-			sum += mass[k+1]
+		for k, v := top, 1.0; k < n && v > least; k++ {
+			v *= odds * float64(n-k) / float64(k+1)
+			up = append(up, v)
 		}
-		for k := top; k > 0 && mass[k] > least; k-- {
-			mass[k-1] = mass[k] / odds * float64(k) / float64(n-k+1)
-			sum += mass[k-1]
+		for k, v := top, 1.0; k > 0 && v > least; k-- {
+			v *= float64(k) / float64(n-k+1) / odds
+			down = append(down, v)
 		}
 	}
-	for k := range mass {
-		mass[k] /= sum
+	slices.Reverse(down)
+	c := chances{first: top - len(down), mass: append(down, up...)}
+	c.sums = make([]float64, len(c.mass)+1)
+	for i, v := range c.mass {
+		c.sums[i+1] = c.sums[i] + v
 	}
-	return mass
+	whole := c.sums[len(c.mass)]
+	for i := range c.mass {
+		c.mass[i] /= whole
+		c.sums[i+1] /= whole
+	}
+	return c
+}
+
+// below is the probability of less than k.
+func (c chances) below(k int) float64 {
+	return c.sums[min(max(k-c.first, 0), len(c.mass))]
 }
 
 // room is how far the true difference is from what is to be refuted.

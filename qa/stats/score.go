@@ -6,12 +6,10 @@ import "math"
 // the candidate.
 type fractionPair struct{ x, n, y, m float64 }
 
-// score is Proportions.Score by the closed form of the cubic, quick enough to be
-// gone through for every pair of counts: the score statistic of the hypothesis that the difference of the true
-// fractions, candidate minus reference, is s (Miettinen & Nurminen 1985,
-// Statistics in Medicine 4, 213-226, from memory): the
-// difference found less s over its standard error at the most likely pair of
-// fractions with that difference, with the factor N/(N-1).
+// score is Proportions.Score by the closed form of the cubic (Miettinen & Nurminen
+// 1985, Statistics in Medicine 4, 213-226, from memory), quick enough to be gone
+// through for many pairs of counts: the statistic of the hypothesis that the true
+// difference is s.
 func (p fractionPair) score(s float64) float64 {
 	total, failed := p.n+p.m, p.x+p.y
 	r := p.likeliest(s)
