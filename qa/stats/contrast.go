@@ -146,14 +146,20 @@ func (c Contrast) Interval(level float64) (Interval, error) {
 //
 //	theta^2 (m1^2 - v11) - 2 theta (m1 m2 - v12) + m2^2 - v22 = 0
 func (c Contrast) fieller(t float64) (lower, upper float64) {
-	// Everything in units of the reference's mean, so that nothing overflows.
+	// Everything in units of the reference's mean and of the larger of the other
+	// two, so that nothing overflows.
 	g, h, m := t*c.seRef/c.ref, t*c.se/c.ref, c.cand/c.ref
+	unit := max(math.Abs(h), math.Abs(m))
+	if unit == 0 {
+		return 0, 0
+	}
+	h, m = h/unit, m/unit
 	lead := (1 - g) * (1 + g)
 	r := c.correlation
 	across := g * c.apart
 	square := math.Sqrt(max(0, (h-m*r*g)*(h-m*r*g)+across*across*(m-h)*(m+h)))
 	centre := m - r*g*h
-	return (centre - square) / lead, (centre + square) / lead
+	return unit * ((centre - square) / lead), unit * ((centre + square) / lead)
 }
 
 // end is the end of Welch's interval on one side of the estimate. With a and b

@@ -81,7 +81,7 @@ func shapiroWeights(n int) []float64 {
 // shapiroP is the probability of a W so small; short is 1-W.
 func shapiroP(w, short float64, n int) float64 {
 	if n == 3 { // exact
-		return max(0, 6/math.Pi*(math.Asin(math.Sqrt(w))-math.Asin(math.Sqrt(0.75))))
+		return min(1, max(0, 6/math.Pi*(math.Asin(math.Sqrt(w))-math.Asin(math.Sqrt(0.75)))))
 	}
 	size := float64(n)
 	y := math.Log(short)

@@ -23,8 +23,8 @@ func twoLots(n, decimals int) (ref, cand []float64) {
 	return draw(12), draw(12.001)
 }
 
-// BenchmarkRanks is the whole of MannWhitney; sort-only is its floor, the two
-// sorts.
+// BenchmarkRanks is the whole of MannWhitney; sort-only is its floor, the two sorts,
+// and all-differences a peer that sorts them all.
 func BenchmarkRanks(b *testing.B) {
 	for _, n := range []int{100, 1000, 20000, 1000000} {
 		for _, decimals := range []int{3, 15} {
@@ -39,6 +39,19 @@ func BenchmarkRanks(b *testing.B) {
 			})
 		}
 		ref, cand := twoLots(n, 15)
+		if n <= 1000 {
+			b.Run(fmt.Sprintf("all-differences/n=%d", n), func(b *testing.B) {
+				for b.Loop() {
+					all := make([]float64, 0, n*n)
+					for _, y := range cand {
+						for _, x := range ref {
+							all = append(all, y-x)
+						}
+					}
+					slices.Sort(all)
+				}
+			})
+		}
 		b.Run(fmt.Sprintf("sort-only/n=%d", n), func(b *testing.B) {
 			for b.Loop() {
 				slices.Sort(slices.Clone(ref))
@@ -75,4 +88,49 @@ func BenchmarkSignedRank(b *testing.B) {
 			}
 		})
 	}
+}
+
+func BenchmarkRatioAndSpread(b *testing.B) {
+	ref, cand := twoLots(100, 3)
+	c, err := stats.WelchContrast(stats.Summarize(ref), stats.Summarize(cand))
+	if err != nil {
+		b.Fatal(err)
+	}
+	b.Run("ratio-interval", func(b *testing.B) {
+		for b.Loop() {
+			if _, err := c.Interval(0.90); err != nil {
+				b.Fatal(err)
+			}
+		}
+	})
+	b.Run("bonett", func(b *testing.B) {
+		for b.Loop() {
+			if _, err := stats.BonettRatio(ref, cand, 0.90); err != nil {
+				b.Fatal(err)
+			}
+		}
+	})
+	b.Run("shapiro-wilk", func(b *testing.B) {
+		for b.Loop() {
+			if _, err := stats.ShapiroWilk(ref); err != nil {
+				b.Fatal(err)
+			}
+		}
+	})
+	b.Run("esd", func(b *testing.B) {
+		for b.Loop() {
+			if _, _, err := stats.GeneralizedESD(ref, 10, 0.05); err != nil {
+				b.Fatal(err)
+			}
+		}
+	})
+	p, err := stats.CompareProportions(stats.Counts{N: 80, Failed: 48}, stats.Counts{N: 70, Failed: 56})
+	if err != nil {
+		b.Fatal(err)
+	}
+	b.Run("miettinen-nurminen", func(b *testing.B) {
+		for b.Loop() {
+			p.Interval(0.90)
+		}
+	})
 }
