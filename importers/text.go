@@ -20,11 +20,12 @@ type textFile struct {
 func readText(text string) (textFile, error) {
 	var t textFile
 	s := &splitter{rest: text, line: 1}
+	var room cellRoom
 	record := 0
 	comment := func(line string) {
 		record++
 		t.comments = append(t.comments, record)
-		t.rows = append(t.rows, textRow(record, []string{line}))
+		t.rows = append(t.rows, room.row(record, []string{line}))
 	}
 	for { // what stands before the heading
 		line, after, _ := strings.Cut(s.rest, "\n")
@@ -44,7 +45,6 @@ func readText(text string) (textFile, error) {
 	if t.delimiter == "" {
 		t.delimiter = detectDelimiter(s.rest)
 	}
-	if t.delimiter != "" {
 	if t.delimiter == "" || t.delimiter == "\t" {
 		if spaced, ok, err := readSpaced(s.rest, record, t.delimiter); ok || err != nil {
 			spaced.comments = append(t.comments, spaced.comments...)
@@ -52,6 +52,7 @@ func readText(text string) (textFile, error) {
 			return spaced, err
 		}
 	}
+	if t.delimiter != "" {
 		s.delimiter = t.delimiter[0]
 	}
 	for s.rest != "" {
@@ -66,7 +67,7 @@ func readText(text string) (textFile, error) {
 		if len(fields) > cells.MaxCol {
 			return textFile{}, fmt.Errorf("record %d: found %d fields, want at most %d; split the file", record, len(fields), cells.MaxCol)
 		}
-		if row := textRow(record, fields); len(row.Cells) > 0 {
+		if row := room.row(record, fields); len(row.Cells) > 0 {
 			t.rows = append(t.rows, row)
 		}
 	}
@@ -86,14 +87,22 @@ func headingOfNumbers(line string) bool {
 	return false
 }
 
-func textRow(number int, fields []string) cells.Row {
-	row := cells.Row{Number: number}
+// cellRoom gives rows their cells out of few allocations.
+type cellRoom []cells.Cell
+
+func (room *cellRoom) row(number int, fields []string) cells.Row {
+	const block = 4096
+	if len(*room) < len(fields) {
+		*room = make([]cells.Cell, max(len(fields), min(block, 2*len(*room)+64*len(fields))))
+	}
+	row := (*room)[:0]
 	for i, f := range fields {
 		if f != "" {
-			row.Cells = append(row.Cells, cells.Cell{Row: number, Col: i + 1, Kind: cells.Text, Text: f})
+			row = append(row, cells.Cell{Row: number, Col: i + 1, Kind: cells.Text, Text: f})
 		}
 	}
-	return row
+	*room = (*room)[len(row):]
+	return cells.Row{Number: number, Cells: row[:len(row):len(row)]}
 }
 
 // splitter takes one record after the other off a text.
@@ -101,18 +110,20 @@ type splitter struct {
 	rest      string
 	line      int
 	delimiter byte // 0: each record is one field
+	fields    []string
 }
 
+// record gives the fields of the next record; they hold until the one after.
 func (s *splitter) record() ([]string, error) {
-	var fields []string
+	s.fields = s.fields[:0]
 	for {
 		field, more, err := s.field()
 		if err != nil {
 			return nil, err
 		}
-		fields = append(fields, field)
+		s.fields = append(s.fields, field)
 		if !more {
-			return fields, nil
+			return s.fields, nil
 		}
 	}
 }
@@ -149,36 +160,33 @@ func (s *splitter) endLine(i int) {
 
 func (s *splitter) quoted() (string, bool, error) {
 	begun := s.line
-	var b strings.Builder
-	i := 1
-	for ; ; i++ {
-		if i >= len(s.rest) {
+	i, doubled := 1, false
+	for {
+		n := strings.IndexByte(s.rest[i:], '"')
+		if n < 0 {
 			return "", false, fmt.Errorf("line %d: found a quoted field without its end, want a closing quote; correct the line", begun)
 		}
-		c := s.rest[i]
-		if c == '"' {
-			if strings.HasPrefix(s.rest[i+1:], `"`) {
-				i++
-			} else {
-				break
-			}
+		if i += n; !strings.HasPrefix(s.rest[i+1:], `"`) {
+			break
 		}
-		if c == '\n' {
-			s.line++
-		}
-		b.WriteByte(c)
+		i, doubled = i+2, true
+	}
+	field := s.rest[1:i]
+	s.line += strings.Count(field, "\n")
+	if doubled {
+		field = strings.ReplaceAll(field, `""`, `"`)
 	}
 	i++
 	switch {
 	case i == len(s.rest):
 		s.rest = ""
-		return b.String(), false, nil
+		return field, false, nil
 	case s.delimiter != 0 && s.rest[i] == s.delimiter:
 		s.rest = s.rest[i+1:]
-		return b.String(), true, nil
+		return field, true, nil
 	case s.rest[i] == '\n' || s.rest[i] == '\r':
 		s.endLine(i)
-		return b.String(), false, nil
+		return field, false, nil
 	}
 	return "", false, fmt.Errorf("line %d: found %s behind a closing quote, want a delimiter or the line end; correct the line", s.line, quoted(s.rest[i:min(len(s.rest), i+10)]))
 }
