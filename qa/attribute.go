@@ -41,6 +41,7 @@ func compareAttribute(plan Plan, ch Characteristic, ref, cand Series) (Compariso
 	}
 	c.decide(ref, cand)
 	c.absence()
+	c.newStudyOfFractions(plan)
 	return c.Comparison, nil
 }
 

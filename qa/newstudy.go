@@ -24,6 +24,22 @@ type StudyParts struct {
 	Candidate int `json:"candidate"`
 }
 
+// power is what the plan asks of a study.
+func (p Plan) power() float64 {
+	if p.Criterion.Power == nil {
+		return DefaultPower
+	}
+	return *p.Criterion.Power
+}
+
+// aimOf is what an objective comes to for a design.
+func aimOf(o Objective) stats.Aim {
+	return map[Objective]stats.Aim{
+		Equivalence: stats.AimWithin, NotLower: stats.AimNotLower, NotHigher: stats.AimNotHigher,
+		Difference: stats.AimDifference, Lower: stats.AimLower, Higher: stats.AimHigher,
+	}[o]
+}
+
 // newStudy sizes a new study where this one left the verdict undecided (contract: result, "Definitions").
 func (c *comparison) newStudy(plan Plan) {
 	e := c.Equivalence
@@ -34,10 +50,7 @@ func (c *comparison) newStudy(plan Plan) {
 		c.warn(WarnNotComputable, "", "new_study", "How many groups a new study needs is not computed.")
 		return
 	}
-	p := DefaultPower
-	if plan.Criterion.Power != nil {
-		p = *plan.Criterion.Power
-	}
+	p := plan.power()
 	mean, estimate, ok := c.studyOfMean()
 	if !ok {
 		c.warn(WarnNotComputable, "", "new_study", "The size of a new study needs some variation in each lot.")
@@ -58,8 +71,7 @@ func (c *comparison) newStudy(plan Plan) {
 func (c *comparison) studyOfMean() (d stats.Design, estimate float64, ok bool) {
 	e := c.Equivalence
 	d = stats.Design{
-		Aim:   map[Objective]stats.Aim{Equivalence: stats.AimWithin, NotLower: stats.AimNotLower, NotHigher: stats.AimNotHigher}[c.Objective],
-		Alpha: c.Alpha, Paired: c.Method == "paired" || e.Scale == scaleShift, Welch: c.Method != "pooled",
+		Aim: aimOf(c.Objective), Alpha: c.Alpha, Paired: c.Method == "paired" || e.Scale == scaleShift, Welch: c.Method != "pooled",
 		SDRef: c.ref.summary.SD, SDCand: c.cand.summary.SD, Lower: math.Inf(-1), Upper: math.Inf(1),
 	}
 	onScale := func(v float64) float64 { return v }
