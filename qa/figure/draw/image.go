@@ -5,7 +5,6 @@ import (
 	"fmt"
 	"image"
 	"image/color"
-	imagedraw "image/draw"
 	"image/png"
 	"math"
 
@@ -30,7 +29,7 @@ func Image(f figure.Figure, scale float64, p Palette) (*image.NRGBA, error) {
 		return nil, err
 	}
 	img := image.NewNRGBA(image.Rect(0, 0, int(w), int(h)))
-	imagedraw.Draw(img, img.Bounds(), image.NewUniform(p.Paper), image.Point{}, imagedraw.Src)
+	ground(img, p.Paper)
 	c := canvas{img: img, scale: scale, palette: p, fonts: fonts}
 	for _, m := range f.Marks {
 		if err := c.mark(m); err != nil {
@@ -38,6 +37,17 @@ func Image(f figure.Figure, scale float64, p Palette) (*image.NRGBA, error) {
 		}
 	}
 	return img, nil
+}
+
+// ground lays paper under a picture; image/draw takes a slow path to images of this kind, a colour at a time.
+func ground(img *image.NRGBA, paper color.NRGBA) {
+	line := img.Pix[:4*img.Rect.Dx()]
+	for i := 0; i < len(line); i += 4 {
+		line[i], line[i+1], line[i+2], line[i+3] = paper.R, paper.G, paper.B, paper.A
+	}
+	for at := len(line); at < len(img.Pix); at += len(line) {
+		copy(img.Pix[at:], line)
+	}
 }
 
 // PNG is a figure as a PNG file at scale pixels a point.
