@@ -188,7 +188,7 @@ func TestGroupsLaws(t *testing.T) {
 		v, err := stats.OneWay([][]float64{ref, cand})
 		p, err2 := stats.Pooled(stats.Summarize(ref), stats.Summarize(cand))
 		tee, two := p.TwoSided(0)
-		if err != nil || err2 != nil || !alike(v.F, tee*tee, 1e-11) && v.F > 1e-20 || math.Abs(v.P-two) > 1e-9 {
+		if err != nil || err2 != nil || math.Abs(math.Sqrt(v.F)-math.Abs(tee)) > 1e-14/p.SE+1e-11*math.Abs(tee) || math.Abs(v.P-two) > 1e-9 {
 			t.Fatalf("got %+v, want F %v and p %v", v, tee*tee, two)
 		}
 	})

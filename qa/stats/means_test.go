@@ -105,6 +105,15 @@ func TestPublishedMeans(t *testing.T) {
 	near(t, "sleep t", tee, -4.06212768338, 1e-11)
 	near(t, "sleep p", p, 0.00283289019738, 1e-11)
 
+	// Boys' shoes, paired (from memory): printed d .41, t 3.35.
+	shoes := stats.Differences(readings2(t, "bhh_shoes.csv", 1), readings2(t, "bhh_shoes.csv", 2), 1)
+	e = pooled(stats.Paired(stats.Summarize(shoes)))
+	tee, p = e.TwoSided(0)
+	near(t, "shoes d", e.Value, 0.41, 1e-15)
+	near(t, "shoes se", e.SE, 0.122429118, 5e-9)
+	near(t, "shoes t", tee, 3.34887653622, 1e-12)
+	near(t, "shoes p", p, 0.0085387807, 1e-8)
+
 	for _, c := range []struct {
 		name                        string
 		column                      int

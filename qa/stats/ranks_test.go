@@ -279,3 +279,43 @@ func TestRankLaws(t *testing.T) {
 		}
 	})
 }
+
+// Without ties the interval is the test: 0 lies outside exactly where p is at most
+// 1-level; for signed ranks too.
+func TestRankIntervalIsTheTest(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		n := rapid.IntRange(4, 90).Draw(t, "n")
+		all := rapid.Permutation(count(n)).Draw(t, "order")
+		at := rapid.IntRange(2, n-2).Draw(t, "at")
+		ref, cand := all[:at], mapped(all[at:], func(v float64) float64 { return v + 0.5 })
+		r, err := stats.MannWhitney(ref, cand, 0.90, 1, nil)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if outside := r.Interval.Lower > 0 || r.Interval.Upper < 0; outside != (r.P <= 0.1*(1+1e-12)) || !r.Exact {
+			t.Fatalf("got %+v, want p and interval to say the same", r)
+		}
+		// Sizes 1..n, each with a sign: no two differences are equal in size.
+		d := mapped(all, func(v float64) float64 { return v + 1 })
+		for i := range d {
+			if rapid.Bool().Draw(t, "minus") {
+				d[i] = -d[i]
+			}
+		}
+		s, err := stats.WilcoxonSignedRank(d, 0.90, 0)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if outside := s.Interval.Lower > 0 || s.Interval.Upper < 0; outside != (s.P <= 0.1*(1+1e-12)) && s.Interval.Lower != 0 && s.Interval.Upper != 0 {
+			t.Fatalf("got %+v, want p and interval to say the same", s)
+		}
+	})
+}
+
+func count(n int) []float64 {
+	x := make([]float64, n)
+	for i := range x {
+		x[i] = float64(i)
+	}
+	return x
+}
