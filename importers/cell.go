@@ -14,9 +14,12 @@ type taken struct {
 	decimals  int
 	isValue   bool
 	isMissing bool
-	isBelow   bool   // a non-detect
-	converted string // why the value goes into the ledger; empty for a plain number
-	thousands bool   // one mark was taken for a thousands mark because of the plan's decimal mark
+	isBelow   bool // a non-detect: below a limit, or above one
+	above     bool
+	limit     *float64 // of a non-detect; nil where it states none
+	text      string   // as found
+	converted string   // why the value goes into the ledger; empty for a plain number
+	thousands bool     // one mark was taken for a thousands mark because of the plan's decimal mark
 	problem   *Problem
 }
 
@@ -48,7 +51,7 @@ func takeCell(c cells.Cell, isText bool, unit string, decimal byte) taken {
 	case missing(c.Text):
 		return taken{isMissing: true}
 	case nonDetect(c.Text):
-		return taken{isBelow: true}
+		return takeBound(c.Text, unit, decimal, want)
 	}
 	return takeText(c.Text, isText, unit, decimal, want)
 }

@@ -24,7 +24,7 @@ func settleDecimal(texts []cells.Cell, plan string, lower, upper *float64) mark 
 	}
 	var points, commas, open, grouping []cells.Cell
 	for _, c := range texts {
-		number, _, _ := cutUnit(c.Text)
+		number, _, _ := cutUnit(unsigned(c.Text))
 		w, err := splitNumber(number, 0)
 		switch {
 		case err != nil && err.Code == DecimalAmbiguous:
@@ -67,7 +67,7 @@ func near(texts []cells.Cell, decimal byte, lower, upper float64) int {
 	n := 0
 	width := upper - lower
 	for _, c := range texts {
-		number, _, _ := cutUnit(c.Text)
+		number, _, _ := cutUnit(unsigned(c.Text))
 		if v, _, err := ParseNumber(number, decimal); err == nil && v >= lower-width && v <= upper+width {
 			n++
 		}

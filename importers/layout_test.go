@@ -285,7 +285,7 @@ func TestReadUnitsMustAgree(t *testing.T) { // N10
 	other[0][2] = "Bore dia [in]"
 	p = xlsxPlan(func(p *qa.Plan) { p.Candidate.File = "other.xlsx" })
 	_, err = Read(p, files(map[string][]byte{"d1.xlsx": xlsx(t, sheetOf{name: "Data", rows: long()}), "other.xlsx": xlsx(t, sheetOf{name: "Data", rows: other})}))
-	wantPlanError(t, err, "other.xlsx!Data!C1", "not converted")
+	wantPlanError(t, err, "other.xlsx!Data!C1", `state unit = "in" under [candidate]`, "25.4")
 }
 
 func TestReadMissingColumn(t *testing.T) {

@@ -1,7 +1,6 @@
 package importers
 
 import (
-	"fmt"
 	"math"
 	"strconv"
 	"strings"
@@ -108,28 +107,6 @@ func (t *table) mergeLimits(c *qa.Characteristic, plan, file qa.Characteristic) 
 		default:
 			return t.refuse("characteristic %s: found the %s %s here and %s in the other lot's sheet, want the same; state the limits in the plan", quoted(c.Name), l.name, qa.Plain(*l.file), qa.Plain(**l.is))
 		}
-	}
-	return nil
-}
-
-// mergeUnit settles the unit of a characteristic between the plan and the sheet: they must be the same.
-func (t *table) mergeUnit(c *qa.Characteristic, col column, side qa.LotPlan, sideName qa.Side) error {
-	at := fmt.Sprintf("%s!%s", t.place(), t.address(col.col))
-	if side.Unit != "" && col.unit != "" && unitKey(side.Unit) != unitKey(col.unit) {
-		return planError(at, "found the unit %s, want %s as %s.unit states; correct the plan or the sheet", quoted(col.unit), quoted(side.Unit), sideName)
-	}
-	unit := col.unit
-	if side.Unit != "" {
-		unit = side.Unit
-	}
-	switch {
-	case unit == "" && c.Unit != "":
-		t.say("%s states no unit for %s; taken as %s.", t.columnText(col.col), c.Name, c.Unit)
-	case c.Unit == "":
-		c.Unit = unit
-	case unitKey(unit) != unitKey(c.Unit):
-		return planError(at, "found the unit %s, want %s as for the characteristic %s; units are not converted in this version: bring both lots to one unit, or correct unit in the plan",
-			quoted(unit), quoted(c.Unit), quoted(c.Name))
 	}
 	return nil
 }

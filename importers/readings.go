@@ -14,7 +14,7 @@ import (
 func Read(plan qa.Plan, open func(file string) ([]byte, error)) (qa.Readings, error) {
 	r := &reader{plan: plan, books: map[string]Book{}}
 	for _, step := range []func() error{
-		func() error { return r.openBooks(open) }, r.chooseTables, r.chooseLots, r.chooseCharacteristics, r.settleMarks, r.resolveExclusions,
+		func() error { return r.openBooks(open) }, r.chooseTables, r.chooseLots, r.chooseCharacteristics, r.settleMarks, r.settleNominals, r.resolveExclusions,
 		r.takeReadings, r.checkExclusions, r.checkDoubled, r.averageRepeats, r.checkRepeats,
 	} {
 		if err := step(); err != nil {
@@ -44,7 +44,9 @@ type lotSide struct {
 	rows  []row
 	cols  []int  // of each characteristic
 	marks []mark // of each characteristic
-	lot   *qa.Lot
+
+	conversions []*conversion // of each characteristic; nil where the numbers stand as they are
+	lot         *qa.Lot
 }
 
 func (r *reader) openBooks(open func(string) ([]byte, error)) error {
@@ -258,9 +260,11 @@ func (r *reader) chooseCharacteristics() error {
 				continue
 			}
 			s.cols = append(s.cols, col)
-			if err := s.table.mergeUnit(&list[i], s.table.columnOf(col, s.lot.Name), s.plan, s.side); err != nil {
+			v, err := s.table.mergeUnit(&list[i], s.table.columnOf(col, s.lot.Name), s.plan, s.side)
+			if err != nil {
 				faults = append(faults, faultsOf(err)...)
 			}
+			s.conversions = append(s.conversions, v)
 		}
 	}
 	if len(faults) > 0 {
@@ -282,7 +286,7 @@ func (r *reader) settleMarks() error {
 					col = s.cols[i]
 				}
 			}
-			m, err := t.settleColumn(c, r.planned(i), col)
+			m, err := t.settleConverted(c, r.planned(i), col, r.conversionOf(t, i))
 			if err != nil {
 				faults = append(faults, faultsOf(err)...)
 			}
@@ -330,6 +334,11 @@ func (r *reader) mixedMarks() []Fault {
 
 // settleColumn settles the decimal mark of one column and merges its limits into the characteristic.
 func (t *table) settleColumn(c *qa.Characteristic, plan qa.Characteristic, col int) (mark, error) {
+	return t.settleConverted(c, plan, col, nil)
+}
+
+// settleConverted does so for a column whose readings are converted.
+func (t *table) settleConverted(c *qa.Characteristic, plan qa.Characteristic, col int, v *conversion) (mark, error) {
 	var texts []cells.Cell
 	for _, r := range t.wanted() {
 		if cell := t.cell(r, col); cell.Kind == cells.Text {
@@ -338,13 +347,16 @@ func (t *table) settleColumn(c *qa.Characteristic, plan qa.Characteristic, col i
 	}
 	lower, upper := c.Lower, c.Upper
 	quiet := *t // a first look: what it says is said later
-	if file, err := quiet.limitsOf(col, c.Unit, 0); err == nil {
+	if file, err := quiet.limitsIn(col, c, v, 0); err == nil {
 		if lower == nil {
 			lower = file.Lower
 		}
 		if upper == nil {
 			upper = file.Upper
 		}
+	}
+	if v != nil { // the limits are in another unit than the texts
+		lower, upper = nil, nil
 	}
 	m := settleDecimal(texts, t.reading.Decimal, lower, upper)
 	if n := len(m.unclear); n > 0 {
@@ -362,7 +374,7 @@ func (t *table) settleColumn(c *qa.Characteristic, plan qa.Characteristic, col i
 		}
 		t.say("%s is read with a %s: %s.", t.columnText(col), mark, m.said)
 	}
-	file, err := t.limitsOf(col, c.Unit, m.decimal)
+	file, err := t.limitsIn(col, c, v, m.decimal)
 	switch {
 	case err != nil && (plan.Lower != nil || plan.Target != nil || plan.Upper != nil):
 		t.warn("limits-unread", "%s; the plan's limits are taken.", err)

@@ -36,6 +36,7 @@ func (r *reader) takeReadings() error {
 	for _, t := range r.tables {
 		r.takeSummaries(t)
 	}
+	r.sayConversions()
 	return nil
 }
 
@@ -43,7 +44,7 @@ func (r *reader) takeReadings() error {
 func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row row, k int) taken {
 	t := s.table
 	cell := t.cell(row, s.cols[k])
-	got := takeCell(cell, t.book.IsText, c.Unit, s.marks[k].decimal)
+	got := s.conversions[k].apply(takeCell(cell, t.book.IsText, s.unitIn(k, c), s.marks[k].decimal))
 	entry := qa.Entry{Source: t.book.source(t.sheet.Name, cell), Side: s.side, Characteristic: c.Name}
 	out := r.excluded(t, cell, got)
 	as := roleUsed
@@ -55,23 +56,14 @@ func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row ro
 		series.ExcludedUnread++
 		entry.TakenAs, entry.Reason, as = qa.TakenExcluded, out, roleLeftOut
 	case got.isBelow:
-		series.NonDetects++
-		entry.TakenAs, as = qa.TakenNonDetect, roleNonDetect
+		r.takeNonDetect(series, &entry, got, t, row)
+		as = roleNonDetect
 	case got.problem != nil:
 		series.Unread++
 		entry.TakenAs, entry.Reason, entry.Want, entry.Do = qa.TakenNotANumber, got.problem.Code, got.problem.Want, got.problem.Do
 		as = roleUnread
 	default:
-		reading := qa.Reading{Value: got.value, Source: entry.Source, Decimals: got.decimals, LeftOut: out}
-		if t.part > 0 {
-			reading.Part = filledText(t.cell(row, t.part))
-		}
-		if t.group > 0 {
-			reading.Group = filledText(t.cell(row, t.group))
-		}
-		if t.order > 0 {
-			reading.Order = filledText(t.cell(row, t.order))
-		}
+		reading := t.ofRow(row, qa.Reading{Value: got.value, Source: entry.Source, Decimals: got.decimals, LeftOut: out})
 		series.Readings = append(series.Readings, reading)
 		value := got.value
 		switch {
