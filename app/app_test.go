@@ -17,6 +17,7 @@ import (
 	"fyne.io/fyne/v2/theme"
 
 	"lotpair/app/desk"
+	"lotpair/app/register"
 	"lotpair/exports"
 	"lotpair/exports/identity"
 	"lotpair/qa"
@@ -26,11 +27,17 @@ var pictures = flag.String("pictures", "", "keep the pictures of the window in `
 
 var testBuild = Build{Version: "test"}
 
-// opened is a window of the software driver with a file open.
+// opened is a window of the software driver with a file open, which keeps nothing.
 func opened(t testing.TB, file string, width, height float32) *window {
 	t.Helper()
+	return openedWith(t, nil, file, width, height)
+}
+
+// openedWith is the same with a register.
+func openedWith(t testing.TB, r *register.Register, file string, width, height float32) *window {
+	t.Helper()
 	light := theme.VariantLight
-	w := newWindow(test.NewTempApp(t), testBuild, look{forced: &light})
+	w := newWindow(test.NewTempApp(t), testBuild, look{forced: &light}, r)
 	w.jobs.atOnce = true
 	w.win.Resize(fyne.NewSize(width, height))
 	if file != "" {
@@ -336,8 +343,8 @@ func TestThePictureIsSaved(t *testing.T) {
 	w.leaveDialog()
 }
 
-// kept keeps a picture where -pictures asks for that.
-func kept(t testing.TB, name string, img image.Image) {
+// shotOf keeps a picture where -pictures asks for that.
+func shotOf(t testing.TB, name string, img image.Image) {
 	t.Helper()
 	if *pictures == "" {
 		return
@@ -373,7 +380,7 @@ func TestPictures(t *testing.T) {
 		if got, want := img.Bounds().Dx(), int(float64(s.Width)*s.Scale); got != want {
 			t.Errorf("%s: got %d pixels, want %d", name, got, want)
 		}
-		kept(t, name, img)
+		shotOf(t, name, img)
 	}
 	for _, s := range []Shot{{Width: 10, Height: 10, Scale: 1}, {Width: 1280, Height: 800}, {File: "no such file.toml", Width: 1280, Height: 800, Scale: 1}} {
 		if _, err := Picture(s, testBuild); err == nil {

@@ -16,6 +16,14 @@ func (w *window) paintHeader(p *pen, size fyne.Size) {
 	text := f.fit(v.Right, most)
 	left := min(p.ending(text, right, 34, f, p.Text), p.ending(fontPlain.fit(v.Note, most), right, 54, fontPlain, p.MutedText))
 	p.text(fontTitle.fit(v.Title, left-2*margin), margin, 34, fontTitle, p.Text)
-	p.text(fontPlain.fit(v.Supports, left-2*margin), margin, 55, fontPlain, p.MutedText)
+	supports := left - 2*margin
+	if b := w.act.leave; w.state.Open && w.register != nil {
+		supports -= b.wide() + 12
+		end := p.text(fontPlain.fit(v.Supports, supports), margin, 55, fontPlain, p.MutedText)
+		p.put(b, end+12, 37, b.wide(), 26)
+		b.Refresh()
+	} else {
+		p.text(fontPlain.fit(v.Supports, supports), margin, 55, fontPlain, p.MutedText)
+	}
 	p.across(0, size.Width, size.Height-0.6, 1.2, p.Text)
 }

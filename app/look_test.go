@@ -41,7 +41,7 @@ func TestEveryLookIsSaved(t *testing.T) {
 		if got := w.state.Shown(); got != l.Look {
 			t.Errorf("%s: got %v", l.Name, got)
 		}
-		kept(t, "bench-"+strings.ToLower(l.Name), w.win.Canvas().Capture())
+		shotOf(t, "bench-"+strings.ToLower(l.Name), w.win.Canvas().Capture())
 		to := filepath.Join(t.TempDir(), l.Name+".svg")
 		w.savePicture(to)
 		noProblem(t, w)

@@ -65,6 +65,7 @@ func (w *window) askOpen() {
 func (w *window) open(name string, read func(string) ([]byte, error)) {
 	place := "Opening " + filepath.Base(name)
 	w.work(place, func() change {
+		read := w.keeping(read)
 		data, err := read(name)
 		if err != nil {
 			return failed(place, err)
@@ -76,6 +77,9 @@ func (w *window) open(name string, read func(string) ([]byte, error)) {
 		if err != nil {
 			return failed(place, err)
 		}
+		if c := w.sameAgain(place, origin(rec.PlanFile, rec.Readings)); c != nil {
+			return c
+		}
 		return func(s desk.State) desk.State { return s.Opened(name, rec) }
 	})
 }
@@ -86,8 +90,35 @@ func openWorkbook(place, name string, data []byte) change {
 	if v.Record == nil {
 		return failed(place, errors.New(strings.Join(workbookOf(name, v).Reasons, "\n")))
 	}
-	rec := *v.Record
-	return func(s desk.State) desk.State { return s.OpenedWorkbook(rec, workbookOf(name, v)) }
+	rec, book := *v.Record, workbookOf(name, v)
+	book.SHA256 = qa.FileOf(name, data).SHA256
+	return func(s desk.State) desk.State { return s.OpenedWorkbook(rec, book) }
+}
+
+// sameAgain opens the record that was made of the same plan and the same files before, where that one is still open to
+// changes: it goes on where it was left. It is nil where there is none.
+func (w *window) sameAgain(place, of string) change {
+	if w.register == nil {
+		return nil
+	}
+	e, ok, err := w.register.From(of)
+	if err != nil {
+		return failed(place, err)
+	}
+	if !ok {
+		return nil
+	}
+	e, next, view, err := w.again(e.ID)
+	if err != nil || next.Closed() {
+		return nil // it is made anew
+	}
+	return func(s desk.State) desk.State {
+		w.entry = e
+		if err := w.register.At(e.ID); err != nil {
+			return s.Failed(place, err)
+		}
+		return s.Reopened(next, view)
+	}
 }
 
 // workbookOf is what verification found, as the desk keeps it. No certificates are trusted here: who signed is established
@@ -128,15 +159,28 @@ func (w *window) compareByPlan(name string, data []byte, read func(string) ([]by
 	if err != nil {
 		return qa.Record{}, err
 	}
+	attempts, err := w.attempts(plan)
+	if err != nil {
+		return qa.Record{}, err
+	}
 	result, err := qa.Compare(plan, readings, qa.Run{
 		Software: w.build.software(),
 		Seal:     qa.Seal{Digest: plan.SealDigest(), Readings: "unknown"},
-		Attempts: qa.Attempts{Known: 1, KeptBy: "not counted"},
+		Attempts: attempts,
 	})
 	if err != nil {
 		return qa.Record{}, err
 	}
 	return qa.NewRecord(plan, qa.FileOf(filepath.Base(name), data), readings, result, person(), now()), nil
+}
+
+// attempts counts the run that is about to be made with those that the register knows of.
+func (w *window) attempts(p qa.Plan) (qa.Attempts, error) {
+	if w.register == nil {
+		return qa.Attempts{Known: 1, KeptBy: "not counted"}, nil
+	}
+	n, err := w.register.Attempts(attempt(p))
+	return qa.Attempts{Known: n + 1, KeptBy: "register of this machine"}, err
 }
 
 // beside is a file in the folder of another.

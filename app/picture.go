@@ -16,6 +16,7 @@ type Shot struct {
 	Width, Height int     // of the window, in points
 	Scale         float64 // pixels a point
 	Dark          bool
+	Register      string // the folder of a register; "" for none
 }
 
 // Picture renders the window with the toolkit's software painter: no display, no C. It fails where the file cannot be
@@ -32,8 +33,13 @@ func Picture(s Shot, b Build) (image.Image, error) {
 	if s.Dark {
 		l = wanted(true)
 	}
-	w := newWindow(test.NewApp(), b, l)
+	r, said, err := openRegister(s.Register)
+	if err != nil {
+		return nil, err
+	}
+	w := newWindow(test.NewApp(), b, l, r)
 	defer w.win.Close()
+	defer w.end()
 	w.jobs.atOnce = true
 	w.win.Canvas().(test.WindowlessCanvas).SetScale(float32(s.Scale))
 	w.win.Resize(fyne.NewSize(float32(s.Width), float32(s.Height)))
@@ -43,6 +49,9 @@ func Picture(s Shot, b Build) (image.Image, error) {
 		w.openSample()
 	default:
 		w.open(absolute(s.File), readFile)
+	}
+	if said != "" {
+		return nil, errors.New(said)
 	}
 	if t := w.state.Problem; t.Text != "" {
 		return nil, errors.New(t.Place + ": " + t.Text)

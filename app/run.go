@@ -1,10 +1,12 @@
 package app
 
 import (
+	"errors"
 	"runtime"
 
 	"fyne.io/fyne/v2"
 
+	"lotpair/app/register"
 	"lotpair/qa"
 )
 
@@ -18,16 +20,60 @@ func (b Build) software() qa.Software {
 	return qa.Software{Version: b.Version, Revision: b.Revision, OS: runtime.GOOS, Arch: runtime.GOARCH}
 }
 
-// Run opens the window, with the file named in args where there is one, and returns when it is closed: what the user did, an
-// act a line.
-func Run(a fyne.App, args []string, b Build, dark bool) []string {
-	w := newWindow(a, b, wanted(dark))
+// Options say how the window opens.
+type Options struct {
+	File     string // a plan or a workbook; "" for the register, or for what a program that was killed had open
+	Register string // the folder of the register; "" where nothing is to be kept
+	Build    Build
+	Dark     bool
+}
+
+// Run opens the window and returns when it is closed: what the user did, an act a line.
+func Run(a fyne.App, o Options) []string {
+	r, said, err := openRegister(o.Register)
+	w := newWindow(a, o.Build, wanted(o.Dark), r)
 	w.win.SetMaster()
 	w.win.CenterOnScreen()
-	if len(args) > 0 {
-		file := absolute(args[0])
-		a.Lifecycle().SetOnStarted(func() { w.open(file, readFile) })
-	}
+	a.Lifecycle().SetOnStarted(func() { w.begin(o.File, said, err) })
 	w.win.ShowAndRun()
+	w.end()
 	return w.state.Acts
+}
+
+// openRegister opens the register of a folder, and says what was found where it was damaged.
+func openRegister(dir string) (*register.Register, string, error) {
+	if dir == "" {
+		return nil, "", nil
+	}
+	r, d, err := register.Open(dir, now())
+	return r, d.String(), err
+}
+
+// begin shows what the window opens with.
+func (w *window) begin(file, said string, err error) {
+	switch {
+	case err != nil:
+		w.apply(failed("The register cannot be opened; nothing will be kept", err))
+	case said != "":
+		w.apply(failed("The register", errors.New(said)))
+	}
+	if file != "" {
+		w.open(absolute(file), readFile)
+		return
+	}
+	if w.register == nil {
+		return
+	}
+	if id, err := w.register.Place(); err == nil && id != 0 {
+		w.reopen(id)
+	}
+	w.win.Canvas().Focus(w.search)
+}
+
+// end closes the register. Who closes the window finds the register the next time, not the record.
+func (w *window) end() {
+	if w.register != nil {
+		_ = w.register.At(0)   // the record would open again, nothing more
+		_ = w.register.Close() // every act was kept when it was done
+	}
 }

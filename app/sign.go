@@ -103,7 +103,11 @@ func (w *window) sign(x signing) {
 		if v.Record != nil {
 			rec = *v.Record
 		}
-		return func(s desk.State) desk.State { return s.Signed(rec, workbookOf(to, v)) }
+		book := workbookOf(to, v)
+		if book.SHA256, err = w.keepFile(data); err != nil {
+			return failed(place, err)
+		}
+		return func(s desk.State) desk.State { return s.Signed(rec, book) }
 	})
 }
 

@@ -1,6 +1,8 @@
 package app
 
 import (
+	"encoding/json"
+
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/dialog"
@@ -8,6 +10,7 @@ import (
 
 	"lotpair/app/chart"
 	"lotpair/app/desk"
+	"lotpair/app/register"
 	"lotpair/qa"
 	"lotpair/qa/figure/draw"
 )
@@ -20,6 +23,11 @@ type window struct {
 	look  look
 	jobs  jobs
 
+	register *register.Register // nil where nothing is kept
+	entry    register.Entry     // the record on the desk, as the register has it
+	list     listing
+	search   *search
+
 	state  desk.State
 	view   view
 	dialog dialog.Dialog // the one that is open, nil where none is
@@ -28,6 +36,7 @@ type window struct {
 	paper, header, banner, left, spine, right, bench   *region
 	start, foot                                        *region
 	leftRows, spineRows, rightRows, sentences, problem *scrolled
+	listRows                                           *scrolled
 	picture                                            *chart.Drawing         // of the bench
 	lines                                              map[int]*chart.Drawing // of the spine, by characteristic
 	cursor                                             map[qa.Side]int        // the reading that the keys are on
@@ -47,13 +56,14 @@ type view struct {
 // buttons are the controls of the window.
 type buttons struct {
 	looks                                 [desk.Limits + 1]*button
-	order, picture, read, cancel          *button
+	order, picture, read, cancel, leave   *button
 	compare, signatures, export, sign     *button
 	openPlan, openWorkbook, openTheSample *button
 }
 
-func newWindow(a fyne.App, b Build, l look) *window {
-	w := &window{app: a, build: b, look: l, cursor: map[qa.Side]int{}, lines: map[int]*chart.Drawing{}, rows: map[qa.Side]*pageRows{}}
+// newWindow makes the window; without a register nothing is kept.
+func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
+	w := &window{app: a, build: b, look: l, register: r, cursor: map[qa.Side]int{}, lines: map[int]*chart.Drawing{}, rows: map[qa.Side]*pageRows{}}
 	a.Settings().SetTheme(l)
 	w.win = a.NewWindow("Lotpair")
 	w.win.SetPadded(false)
@@ -72,6 +82,8 @@ func newWindow(a fyne.App, b Build, l look) *window {
 	w.spineRows = w.newSpineRows()
 	w.sentences = w.newSentences()
 	w.problem = w.newProblem()
+	w.listRows = w.newListRows()
+	w.search = newSearch(func() { w.find(); w.start.Refresh() }, w.listKey)
 	w.picture = chart.New(nil, w.palette())
 	// The order of the objects is the order of the Tab key.
 	w.root = container.New(windowLayout{w}, w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot)
@@ -81,12 +93,14 @@ func newWindow(a fyne.App, b Build, l look) *window {
 	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyO, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.askOpen() })
 	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyE, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.act.export.act() })
 	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyQ, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.win.Close() })
+	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyL, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.leave() })
 	w.win.SetOnDropped(func(_ fyne.Position, files []fyne.URI) {
 		if len(files) > 0 && w.dialog == nil {
 			w.open(files[0].Path(), readFile)
 		}
 	})
 	a.Settings().AddListener(func(fyne.Settings) { w.show() })
+	w.find()
 	w.show()
 	return w
 }
@@ -102,6 +116,7 @@ func (w *window) makeButtons() {
 		})
 	}
 	b.picture = newButton(w.palette, "Save picture", quiet, w.askPicture)
+	b.leave = newButton(w.palette, "All records", quiet, w.leave)
 	b.read = newButton(w.palette, "Close", quiet, func() { w.apply(desk.State.Read) })
 	b.cancel = newButton(w.palette, "Cancel", plain, w.cancel)
 	b.compare = newButton(w.palette, "", main, w.compare)
@@ -121,7 +136,7 @@ func (w *window) palette() draw.Palette {
 // apply does an act: the state changes, and everything is shown anew.
 func (w *window) apply(change func(desk.State) desk.State) {
 	before := w.state
-	w.state = change(w.state)
+	w.state = w.acknowledged(before, change(before))
 	if before.Path != w.state.Path || before.Selected != w.state.Selected {
 		w.cursor = map[qa.Side]int{}
 		for _, s := range []*scrolled{w.leftRows, w.rightRows, w.sentences} {
@@ -129,6 +144,32 @@ func (w *window) apply(change func(desk.State) desk.State) {
 		}
 	}
 	w.show()
+}
+
+// acknowledged is the state that an act led to, once the act is kept. One that cannot be kept is not done, unless it has
+// left the window already: that is said either way.
+func (w *window) acknowledged(before, next desk.State) desk.State {
+	var err error
+	switch {
+	case next.Number != before.Number:
+		if err = w.keep(next); err != nil && next.Workbook.Path == before.Workbook.Path {
+			next = before
+		}
+	case w.register == nil:
+	case next.Open && next.View() != before.View():
+		var view []byte
+		if view, err = json.Marshal(next.View()); err == nil {
+			err = w.register.SetView(w.entry.ID, view)
+		}
+	case before.Open && !next.Open:
+		w.entry = register.Entry{}
+		err = w.register.At(0)
+		w.find()
+	}
+	if err != nil {
+		return next.Failed("Keeping what was done", err)
+	}
+	return next
 }
 
 // show sets everything from the state.
@@ -155,7 +196,7 @@ func (w *window) show() {
 		b.looks[l.Look].chosen = l.Chosen
 	}
 	busy := s.Job.Name != ""
-	for _, x := range []*button{b.picture, b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample} {
+	for _, x := range []*button{b.picture, b.leave, b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample} {
 		x.disabled = busy
 	}
 	if w.root.Size().Width > 0 {

@@ -9,13 +9,33 @@ import (
 
 // Opened lays a comparison made from a plan file on the desk. Whatever lay there is gone: every act was kept in its record.
 func (s State) Opened(path string, rec qa.Record) State {
-	return State{Open: true, Compared: true, Path: path, Record: rec, Selected: weightiest(rec.Result), Acts: s.Acts}.did("opened the plan " + path)
+	return State{Open: true, Compared: true, Path: path, Record: rec, Selected: weightiest(rec.Result), Acts: s.Acts, Number: s.Number}.acted("opened the plan " + path)
 }
 
 // OpenedWorkbook lays the record of a workbook on the desk, with what verification found of the file.
 func (s State) OpenedWorkbook(rec qa.Record, w Workbook) State {
 	w.Opened = true
-	return State{Open: true, Compared: true, Path: w.Path, Record: rec, Workbook: w, Selected: weightiest(rec.Result), Acts: s.Acts}.did("opened the workbook " + w.Path)
+	return State{Open: true, Compared: true, Path: w.Path, Record: rec, Workbook: w, Selected: weightiest(rec.Result), Acts: s.Acts, Number: s.Number}.acted("opened the workbook " + w.Path)
+}
+
+// Reopened lays a record of the register on the desk as it lay there, looked at as it was.
+func (s State) Reopened(next State, view View) State {
+	next.Open, next.Acts, next.Number = true, s.Acts, s.Number
+	if next.Compared {
+		next.Selected = weightiest(next.Record.Result)
+	}
+	if n := len(next.Record.Readings.Characteristics); view.Known && view.Selected >= 0 && view.Selected < n {
+		next.Selected, next.Sorted, next.Looking = view.Selected, view.Sorted, view.Looking
+	}
+	return next.did("opened the record again: " + next.Path)
+}
+
+// Left lays nothing on the desk: the register is seen.
+func (s State) Left() State {
+	if !s.Open {
+		return s
+	}
+	return State{Acts: s.Acts, Number: s.Number}.did("left the record")
 }
 
 // weightiest is the first of the characteristics that stand most in the way: what is looked at first.
@@ -52,7 +72,7 @@ func (s State) Exported(path string) State {
 	s.Workbook = Workbook{Path: path}
 	s.Problem, s.Job = Problem{}, Job{}
 	s.Said = "Exported to " + path + ", unsigned."
-	return s.did("exported " + path)
+	return s.acted("exported " + path)
 }
 
 // SavedPicture says that the picture of the bench was written to a file. It is no part of the record.
@@ -72,7 +92,7 @@ func (s State) Signed(rec qa.Record, w Workbook) State {
 		meaning = w.Signatures[n-1].Meaning
 	}
 	s.Said = "Signed as " + meaning + ", kept in " + w.Path + "."
-	return s.did("signed as " + meaning + " in " + w.Path)
+	return s.acted("signed as " + meaning + " in " + w.Path)
 }
 
 // Compare runs the comparison again after a reading was left out or put back. It is one more attempt.
@@ -91,7 +111,7 @@ func (s State) Compare() (State, error) {
 func (s State) WithResult(res qa.Result) State {
 	s.Record.Result, s.Compared = res, true
 	s.Selected = max(0, min(s.Selected, len(res.Characteristics)-1))
-	return s.did("compared")
+	return s.acted("compared")
 }
 
 // Working says what runs off the window's thread, and how much of it is done (below 0 where that is not known).

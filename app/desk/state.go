@@ -21,11 +21,26 @@ type State struct {
 	Problem  Problem // what went wrong last, empty while nothing did
 	Said     string  // what was done last, for the foot
 	Acts     []string
+	Number   int // of the acts that changed the record or left the window: each is kept in the register
+}
+
+// View is how the record is looked at: what a program that was killed finds again.
+type View struct {
+	Known    bool
+	Selected int
+	Sorted   Sorting
+	Looking  Look
+}
+
+// View is how the record is looked at now.
+func (s State) View() View {
+	return View{Known: true, Selected: s.Selected, Sorted: s.Sorted, Looking: s.Looking}
 }
 
 // Workbook is the file that holds the record, and what verification found of it.
 type Workbook struct {
 	Path       string
+	SHA256     string // of its bytes, where they are kept
 	Opened     bool   // the record came from this file: nothing in it is changed here
 	State      string // "intact", "changed", …; "" for a workbook just exported
 	Trusted    bool   // whether who signed was established with trusted certificates
@@ -59,6 +74,20 @@ type Problem struct {
 func (s State) did(act string) State {
 	s.Acts = append(append([]string{}, s.Acts...), act)
 	return s
+}
+
+// acted is the state with one more act that is to be kept.
+func (s State) acted(act string) State {
+	s.Number++
+	return s.did(act)
+}
+
+// Last is the act done last, as it is kept.
+func (s State) Last() string {
+	if len(s.Acts) == 0 {
+		return ""
+	}
+	return s.Acts[len(s.Acts)-1]
 }
 
 // Characteristic is the comparison that is looked at; false where there is none.

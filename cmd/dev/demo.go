@@ -107,8 +107,9 @@ func (d *dev) open(window, workbook string) error {
 	if err != nil {
 		return err
 	}
-	d.show(nil, window, workbook)
-	c := d.command(nil, d.path(window), workbook)
+	args := []string{"--register", filepath.Join("out", "register"), workbook}
+	d.show(nil, window, args...)
+	c := d.command(nil, d.path(window), args...)
 	c.Stdout, c.Stderr = log, log
 	if err := c.Start(); err != nil {
 		return err

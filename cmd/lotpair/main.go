@@ -8,6 +8,7 @@ import (
 	"fmt"
 	"image/png"
 	"os"
+	"path/filepath"
 	"runtime/debug"
 	"strings"
 
@@ -33,6 +34,7 @@ func run(args []string) error {
 	f.Float64Var(&shot.Scale, "scale", 1, "with --picture: pixels a point")
 	f.BoolVar(&shot.Dark, "dark", false, "the dark colours")
 	acts := f.String("acts", "", "when the window is closed, write what was done in it to `FILE`, an act a line")
+	f.StringVar(&shot.Register, "register", "", "keep the records in `DIR` instead of the user's own folder; with --picture: show those of DIR")
 	f.Usage = func() {
 		fmt.Fprintln(f.Output(), "lotpair [FILE]\nOpens the window, with a plan (.toml) or a record (.xlsx). Example: lotpair testdata/demo/plan.toml")
 		f.PrintDefaults()
@@ -47,7 +49,15 @@ func run(args []string) error {
 	}
 	build := app.Build{Version: version, Revision: revision()}
 	if *picture == "" {
-		done, err := window(f.Args(), build, shot.Dark)
+		dir := shot.Register
+		if dir == "" {
+			own, err := os.UserConfigDir()
+			if err != nil {
+				return fmt.Errorf("register: %w; name a folder with --register", err)
+			}
+			dir = filepath.Join(own, "lotpair")
+		}
+		done, err := window(app.Options{File: f.Arg(0), Register: dir, Build: build, Dark: shot.Dark})
 		if err == nil && *acts != "" {
 			err = os.WriteFile(*acts, []byte(strings.Join(done, "\n")+"\n"), 0o600)
 		}

@@ -9,6 +9,6 @@ import (
 )
 
 // window opens the window and returns what was done in it when it is closed.
-func window(args []string, build app.Build, dark bool) ([]string, error) {
-	return app.Run(fyneapp.NewWithID("org.lotpair.desktop"), args, build, dark), nil
+func window(o app.Options) ([]string, error) {
+	return app.Run(fyneapp.NewWithID("org.lotpair.desktop"), o), nil
 }

@@ -49,7 +49,7 @@ func TestTheWindowOpensAnswersAndCloses(t *testing.T) {
 		t.Fatalf("build: %v\n%s", err, out)
 	}
 	var said bytes.Buffer
-	c := exec.Command(program, "--acts", acts, filepath.Join("..", "..", "testdata", "demo", "plan.toml"))
+	c := exec.Command(program, "--acts", acts, "--register", filepath.Join(dir, "register"), filepath.Join("..", "..", "testdata", "demo", "plan.toml"))
 	c.Stdout, c.Stderr = &said, &said
 	if err := c.Start(); err != nil {
 		t.Fatal(err)
