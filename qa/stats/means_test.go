@@ -233,6 +233,28 @@ func TestRatioIntervalIsTheTests(t *testing.T) {
 	}
 }
 
+// A ratio is the same whatever the unit and the sign of both lots.
+func TestRatioUnits(t *testing.T) {
+	for _, kind := range []string{"welch", "pooled", "paired"} {
+		rapid.Check(t, func(t *rapid.T) {
+			ref, cand := lot(t, "ref"), lot(t, "cand")
+			if kind == "paired" {
+				n := min(len(ref), len(cand))
+				ref, cand = ref[:n], cand[:n]
+				if _, err := stats.PairedContrast(ref, cand); err != nil {
+					return
+				}
+			}
+			minus := func(v float64) float64 { return math.Ldexp(-v, 300) }
+			i, err := contrastOf(t, kind, ref, cand).Interval(0.90)
+			j, err2 := contrastOf(t, kind, mapped(ref, minus), mapped(cand, minus)).Interval(0.90)
+			if !errors.Is(err, err2) || err == nil && (!alike(i.Lower, j.Lower, 1e-12) || !alike(i.Upper, j.Upper, 1e-12)) {
+				t.Fatalf("%s: got %+v %v, want %+v %v", kind, j, err2, i, err)
+			}
+		})
+	}
+}
+
 // Exchanging the lots turns the spread ratio over, and no shift of a lot counts.
 func TestPitmanMorganLaws(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {

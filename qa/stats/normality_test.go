@@ -169,3 +169,36 @@ func TestChecksLaws(t *testing.T) {
 		}
 	})
 }
+
+// Each step is the reading farthest from the mean of those left, by summing them
+// anew.
+func TestESDSteps(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		x := lot(t, "x")
+		if len(x) < 3 {
+			return
+		}
+		if rapid.Bool().Draw(t, "wild") {
+			x[len(x)/2] = math.Ldexp(x[len(x)/2], rapid.IntRange(0, 200).Draw(t, "power"))
+		}
+		steps, _, err := stats.GeneralizedESD(x, 10, 0.05)
+		if err != nil {
+			t.Fatal(err)
+		}
+		left := x
+		for _, s := range steps {
+			g, err := stats.GrubbsTest(left)
+			if len(left) < 3 || err != nil || !alike(g.G, s.R, 1e-14) || left[g.Index] != x[s.Index] && !alike(g.G, s.R, 1e-15) {
+				t.Fatalf("got %+v, want %+v %v of %v", s, g, err, left)
+			}
+			at := g.Index
+			for i, v := range left {
+				if v == x[s.Index] {
+					at = i
+					break
+				}
+			}
+			left = append(append([]float64{}, left[:at]...), left[at+1:]...)
+		}
+	})
+}
