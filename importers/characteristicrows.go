@@ -34,6 +34,9 @@ func (t *table) characteristicHeading() int {
 		if t.reading.HeaderRow > 0 && t.sheet.Rows[i].Number != t.reading.HeaderRow {
 			continue
 		}
+		if !t.mayNameCharacteristics(i) {
+			continue
+		}
 		s := t.characteristicColumns(i)
 		asked := len(s.limits)
 		if s.requirement > 0 {
@@ -41,11 +44,51 @@ func (t *table) characteristicHeading() int {
 		}
 		named := s.name > 0 || s.number > 0
 		results := len(s.parts) > 1 || len(s.parts) == 1 && partNumbered.MatchString(filledText(s.parts[0])) || s.result > 0
-		if named && results && (asked > 0 || s.name > 0 && len(s.parts) > 1) && t.numbersUnder(s) {
+		if named && results && (asked > 0 || s.name > 0 && len(s.parts) > 1) && t.numbersUnder(s) && s.differ() {
 			return t.sheet.Rows[i].Number
 		}
 	}
 	return 0
+}
+
+// mayNameCharacteristics says whether a row has a heading for characteristics or their numbers and none of the plan's.
+func (t *table) mayNameCharacteristics(i int) bool {
+	named := false
+	for _, c := range t.sheet.Rows[i].Cells {
+		text := filledText(c)
+		if c.Kind != cells.Text || text == "" || len(text) > 60 || text[0] >= '0' && text[0] <= '9' && text[len(text)-1] <= '9' {
+			continue
+		}
+		if slices.ContainsFunc(t.characteristics, func(ch qa.Characteristic) bool {
+			want := joined(ch.Heading())
+			name, _ := splitUnit(text)
+			return want == text || want == name
+		}) {
+			return false
+		}
+		means := rowColumnMeans(text)
+		named = named || means == nameHeading || means == numberHeading
+	}
+	return named
+}
+
+// differ says whether the rows are characteristics and not parts: their names differ, or without a name their limits do.
+func (s *characteristicSheet) differ() bool {
+	col := s.name
+	if col == 0 {
+		col = s.requirement
+		for _, cols := range s.limits {
+			col = cols[0]
+		}
+	}
+	seen, n := map[string]bool{}, 0
+	for j := s.at + 1; j < len(s.sheet.Rows) && j <= s.at+lookBelow; j++ {
+		if text := filledText(s.sheet.Rows[j].At(col)); text != "" {
+			seen[text] = true
+			n++
+		}
+	}
+	return n < 2 || 2*len(seen) > n
 }
 
 // numbersUnder says whether a number stands under a heading of a part or result.
@@ -176,6 +219,11 @@ func (s *characteristicSheet) findLines() error {
 		name := filledText(r.At(s.name))
 		switch {
 		case name != "" && name == filledText(s.sheet.Rows[s.at].At(s.name)):
+			for _, p := range s.parts {
+				if again := r.At(p.Col); filledText(again) != filledText(p) {
+					return s.refuse("row %d: found the headings again with other parts (%s in %s, want %s), want all parts of a characteristic in its row; bring them into one table", r.Number, quoted(again.Text), again.Name(), quoted(p.Text))
+				}
+			}
 			s.mark(i, roleHeading)
 			s.warn("second-table", "row %d repeats the headings; the rows below it are read as the same table.", r.Number)
 		case name == "" && !numbers:
@@ -223,6 +271,15 @@ func (s *characteristicSheet) sayColumns() {
 	s.say("the headings stand in row %d; the characteristics are named in column %s, a row each.", s.heading, cells.Letters(s.name))
 	if n := len(s.parts); n > 0 {
 		s.say("%s: %s to %s.", qa.Count(n, "column of a part", "columns of parts"), cells.Letters(s.parts[0].Col), cells.Letters(s.parts[n-1].Col))
+	}
+	var none []string
+	for _, p := range s.parts {
+		if _, ok := s.lotOf[p.Col]; s.lot > 0 && !ok {
+			none = append(none, p.Name())
+		}
+	}
+	if len(none) > 0 {
+		s.warn("column-without-heading", "the columns of %s stand under no lot and are not read.", join2(none))
 	}
 	if len(s.other) > 0 {
 		s.say("columns not read: %s.", list(s.other))

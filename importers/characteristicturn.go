@@ -172,6 +172,10 @@ func (s *characteristicSheet) column(l line, names map[string]int) column {
 	r := t.sheet.Rows[l.at]
 	c := column{col: turnedFixed + len(t.columns) + 1, heading: filledText(r.At(s.name)), head: r.At(s.name)}
 	c.name, c.unit = splitUnit(c.heading)
+	if s.name == s.number { // Char No 1
+		head := fieldNumber.ReplaceAllString(filledText(t.sheet.Rows[s.at].At(s.name)), "")
+		c.name = joined(head + " " + c.heading)
+	}
 	if number := filledText(r.At(s.number)); names[c.name] > 1 && s.number > 0 && s.number != s.name && number != "" {
 		c.heading = number + " " + c.heading
 		c.name, _ = splitUnit(c.heading)

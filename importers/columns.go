@@ -191,6 +191,8 @@ func (t *table) findMeasured() error {
 			why = "it holds dates or an order"
 		case headingMeans(c.heading) == partHeading:
 			why = "it holds part numbers or ids"
+		case limitHeading(c.heading):
+			why = "it holds limits or nominal values; state them in the plan"
 		case headingMeans(c.heading) == groupHeading:
 			why = "it holds groups; name it as group_column to keep them"
 		case headingMeans(c.heading) == takerHeading:
@@ -209,6 +211,15 @@ func (t *table) findMeasured() error {
 		return t.refuse("found no column of measurements, want at least one; name it under [[characteristic]] in the plan")
 	}
 	return nil
+}
+
+// limitHeading says whether a heading names a nominal value, a limit or a tolerance.
+func limitHeading(heading string) bool {
+	switch labelWords[word(heading)] {
+	case nominalLabel, upperLabel, lowerLabel, upperTol, lowerTol:
+		return true
+	}
+	return false
 }
 
 // faultsOf are the faults of an error of this package.

@@ -93,6 +93,9 @@ func Inspect(name string, data []byte, sheet, layout string) (Inspection, error)
 			return Inspection{}, err
 		}
 		t.nearSpellings(func(string) bool { return true })
+		if !t.turned && t.part > 0 && t.repeats(t.part) {
+			t.warn("repeated-parts", "ids in %s stand more than once in a lot; name it as part_column where they are repeat readings of a part, else correct them.", t.columnText(t.part))
+		}
 	}
 	for _, l := range m.Lots {
 		in.Lots = append(in.Lots, InspectedLot{Lot: l.Name, Rows: l.Rows})

@@ -36,9 +36,9 @@ func (t *table) steps() []func() error {
 	t.chooseLayout()
 	switch t.layout {
 	case RowPerCharacteristic:
-		return []func() error{t.readCharacteristicRows, t.measureTurned}
+		return []func() error{t.uselessKeys, t.readCharacteristicRows, t.measureTurned}
 	case ColumnPerLot:
-		return []func() error{t.findLotColumns, t.readHeadings, t.sortRows, t.turnLots, t.measureTurned}
+		return []func() error{t.uselessKeys, t.findLotColumns, t.readHeadings, t.sortRows, t.turnLots, t.measureTurned}
 	}
 	return []func() error{
 		t.findHeading, t.choosePanel, t.readHeadings, t.findLotColumn, t.findPartColumn, t.sortRows, t.turnSections, t.turnReplicates, t.findMeasured,
@@ -69,6 +69,8 @@ func (t *table) chooseLayout() {
 		because(RowPerPart, Clear, "a heading says that its column names the lot, and a row is a part.")
 	case row > 0 && !t.titles():
 		because(ColumnPerLot, Clear, "the lots are named side by side in row "+itoa(row)+", each above its readings.")
+	case len(t.hints.lots) == 1 && t.whole && t.lotAlone():
+		because(ColumnPerLot, Likely, "the lot's name stands above its readings and there is no other heading.")
 	case len(t.hints.lots) == 0 && t.lotsAsHeadings():
 		because(ColumnPerLot, Likely, "the headings look like names of lots, each above its readings; if they are characteristics, state the layout row-per-part.")
 	case t.titles() || len(t.hints.lots) > 0 && !t.whole:
@@ -105,4 +107,23 @@ func (t *table) firstHeading() int {
 // isLot says whether a text is the name of a lot looked for.
 func (t *table) isLot(text string) bool {
 	return slices.ContainsFunc(t.hints.lots, func(l string) bool { return qa.JoinSpace(l) == text })
+}
+
+// uselessKeys refuses keys of the plan that a layout has no use for: they would be passed over in silence.
+func (t *table) uselessKeys() error {
+	keys := [][2]string{{"reading.lot_column", t.reading.LotColumn}}
+	if t.layout == RowPerCharacteristic {
+		keys = append(keys, [][2]string{
+			{"reading.part_column", t.reading.PartColumn},
+			{"reading.order_column", t.reading.OrderColumn},
+			{"reading.group_column", t.reading.GroupColumn},
+			{"reading.pair_column", t.reading.PairColumn},
+		}...)
+	}
+	for _, k := range keys {
+		if k[1] != "" {
+			return t.refuse("%s: found %s, want none with the layout %s; take it out of the plan, or state another layout", k[0], quoted(k[1]), t.layout)
+		}
+	}
+	return nil
 }

@@ -24,12 +24,9 @@ func (t *table) findLotColumns() error {
 		return t.refuse("reading.layout: found no row of names above columns of numbers, want the lots side by side; correct header_row or layout in the plan")
 	}
 	names := t.namesIn(at)
-	for i, c := range names {
+	for _, c := range names {
 		b := block{lot: c, first: c.Col, last: c.Col}
-		limit := t.lastColumn()
-		if i+1 < len(names) {
-			limit = names[i+1].Col - 1
-		}
+		limit := t.nextInRow(at, c.Col)
 		if area, ok := t.mergedAt(c); ok {
 			limit = min(limit, area.LastCol)
 		}
@@ -48,6 +45,16 @@ func (t *table) findLotColumns() error {
 		t.blocks[i].last = t.blocks[i].first
 	}
 	return nil
+}
+
+// nextInRow is the last column before the next text of a row.
+func (t *table) nextInRow(at, col int) int {
+	for _, c := range t.sheet.Rows[at].Cells {
+		if c.Col > col && filledText(c) != "" {
+			return c.Col - 1
+		}
+	}
+	return t.lastColumn()
 }
 
 // lotNamesRow is the index of the row that names the lots: the plan's, or the row above it that does; -1 where there is none.
@@ -226,4 +233,14 @@ func (t *table) readingsAbove(i int) bool {
 	return i > 0 && t.reading.HeaderRow == 0 && slices.ContainsFunc(t.sheet.Rows[i].Cells, func(c cells.Cell) bool {
 		return t.isLot(filledText(c)) && numeric(c) && filledText(t.sheet.Rows[i-1].At(c.Col)) != ""
 	})
+}
+
+// lotAlone says whether the one lot looked for is named above numbers and no row can be one of headings besides.
+func (t *table) lotAlone() bool {
+	for _, i := range t.lookRows() {
+		if t.headingScore(i) > 0 {
+			return false
+		}
+	}
+	return t.lotNamesRow() >= 0
 }

@@ -60,7 +60,7 @@ func Propose(b Book, stated qa.ReadingPlan) (Mapping, error) {
 
 // proposeTable reads the sheet that is stated, else the first visible one that can be read.
 func proposeTable(b Book, stated qa.ReadingPlan) (*table, error) {
-	h := hints{reading: stated, whole: true}
+	h := hints{reading: stated, whole: true, show: true}
 	if name := stated.Sheet; name != "" {
 		s, ok := b.sheet(name)
 		if !ok {
@@ -97,7 +97,7 @@ func (m *Mapping) alike(b Book, stated qa.ReadingPlan) {
 		if s.Hidden || s.Name == first.sheet.Name || !slices.ContainsFunc(s.Rows, func(r cells.Row) bool { return slices.ContainsFunc(r.Cells, stored) }) {
 			continue
 		}
-		t, err := newTable(b, s, hints{reading: stated, whole: true})
+		t, err := newTable(b, s, hints{reading: stated, whole: true, show: true})
 		if err != nil || t.lot > 0 || t.layout != first.layout || !sameHeadings(t, first) {
 			continue
 		}

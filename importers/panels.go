@@ -25,12 +25,19 @@ func (t *table) choosePanel() error {
 	for _, a := range withLots {
 		texts = append(texts, cells.Letters(a.FirstCol)+" to "+cells.Letters(a.LastCol))
 	}
+	if t.show {
+		fit = withLots[:1]
+	}
 	if len(fit) != 1 {
 		t.torn = len(fit) == 0
 		return t.refuse("found tables side by side in the columns %s, %d of which hold the lots and characteristics asked for, want one; name a characteristic that one of them alone has, or put each table on its own sheet", join2(texts), len(fit))
 	}
 	keep := fit[0]
-	t.warn("second-table", "tables stand side by side in the columns %s; the one in %s to %s alone holds the lots and characteristics asked for and is read.", join2(texts), cells.Letters(keep.FirstCol), cells.Letters(keep.LastCol))
+	why := "alone holds the lots and characteristics asked for and is read"
+	if t.show {
+		why = "is shown; a plan takes the one that holds its lots and characteristics"
+	}
+	t.warn("second-table", "tables stand side by side in the columns %s; the one in %s to %s %s.", join2(texts), cells.Letters(keep.FirstCol), cells.Letters(keep.LastCol), why)
 	t.keepColumns(keep)
 	t.spanHeadings()
 	return nil

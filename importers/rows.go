@@ -29,10 +29,10 @@ func (t *table) sortRows() error {
 			t.mark(i, roleUnit)
 		case t.repeatsHeading(r):
 			if !t.sameHeading(r) {
-				if t.reading.HeaderRow == 0 {
+				if t.reading.HeaderRow == 0 && !t.show {
 					return t.refuse("row %d: found a second table with other headings than in row %d, want one; state header_row = %d or %d under [reading], or put it on its own sheet", r.Number, t.heading, t.heading, r.Number)
 				}
-				t.warn("second-table", "row %d begins a table with other headings, which is not read.", r.Number)
+				t.warn("second-table", "row %d begins a table with other headings, which is not read; header_row = %d under [reading] picks it.", r.Number, r.Number)
 				t.end = r.Number
 				continue
 			}

@@ -40,16 +40,22 @@ func (t *table) titles() bool {
 
 // title is the name that a row of one or two cells gives what stands below: "REF-0417", "Lot: REF-0417" or "Lot", "REF-0417".
 func title(r cells.Row) (cells.Cell, string) {
-	var filled []cells.Cell
+	var filled [2]cells.Cell
+	n := 0
 	for _, c := range r.Cells {
-		if filledText(c) != "" {
-			filled = append(filled, c)
+		if filledText(c) == "" {
+			continue
 		}
+		if n == 2 {
+			return cells.Cell{}, ""
+		}
+		filled[n] = c
+		n++
 	}
-	if len(filled) == 0 || len(filled) > 2 || len(filled) == 2 && headingMeans(filled[0].Text) != lotHeading {
+	if n == 0 || n == 2 && headingMeans(filled[0].Text) != lotHeading {
 		return cells.Cell{}, ""
 	}
-	c := filled[len(filled)-1]
+	c := filled[n-1]
 	name := filledText(c)
 	if before, after, ok := strings.Cut(name, ":"); ok && headingMeans(before) == lotHeading {
 		name = joined(after)

@@ -55,6 +55,9 @@ func (in Inspection) Plan() string {
 	if m.Reading.LotColumn != "" {
 		line("lot_column = %s", tomlText(m.Reading.LotColumn))
 	}
+	if t := m.tables[0]; !t.turned && t.part > 0 && t.repeats(t.part) {
+		line("# part_column = %s # ids repeat in a lot: take the # off where they are repeat readings of a part, to be averaged", tomlText(t.column(t.part).heading))
+	}
 	switch {
 	case in.Decimal == "":
 		line("decimal = \"\" # fill in: \".\" or \",\"; the file does not settle it")

@@ -14,6 +14,7 @@ type hints struct {
 	lots            []string
 	characteristics []qa.Characteristic
 	whole           bool // the sheet may hold one lot without naming it
+	show            bool // nothing is asked for yet: what a plan must settle is shown, not refused
 }
 
 // column is one column of the table with its heading taken apart.

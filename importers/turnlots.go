@@ -47,6 +47,9 @@ func (t *table) turnLots() error {
 			where[c.name] = had
 		}
 	}
+	if err := t.besideFound(append(own, shared), physical); err != nil {
+		return err
+	}
 	if err := t.lotsOnce(); err != nil {
 		return err
 	}
@@ -65,6 +68,9 @@ func (t *table) turnLots() error {
 		t.give(b.lot, roleLot)
 	}
 	t.say("the lots are named in row %d.", t.headingTop)
+	if !t.headed && len(t.characteristics) == 0 {
+		t.say("nothing names what was measured; it is called %s after the sheet or file.", quoted(t.onlyName()))
+	}
 	return nil
 }
 
@@ -107,6 +113,27 @@ func (t *table) besideOf(physical []column, among func(column) bool) (beside, er
 		}
 	}
 	return b, nil
+}
+
+// besideFound refuses a column of the plan that no lot and no column beside them has.
+func (t *table) besideFound(all []beside, physical []column) error {
+	var headings []string
+	for _, c := range physical {
+		headings = append(headings, c.heading)
+	}
+	for _, p := range []struct {
+		key, name string
+		col       func(beside) int
+	}{
+		{"reading.part_column", t.reading.PartColumn, func(b beside) int { return b.part }},
+		{"reading.order_column", t.reading.OrderColumn, func(b beside) int { return b.order }},
+		{"reading.group_column", t.reading.GroupColumn, func(b beside) int { return b.group }},
+	} {
+		if p.name != "" && !slices.ContainsFunc(all, func(b beside) bool { return p.col(b) > 0 }) {
+			return t.refuse("%s: found the headings %s, want %s; the nearest is %s: correct the name in the plan", p.key, list(headings), quoted(p.name), quoted(nearest(p.name, headings)))
+		}
+	}
+	return nil
 }
 
 // blockColumns are the columns of measurements of one lot.
