@@ -51,7 +51,11 @@ func (f *flags) parse(args []string, want ...string) ([]string, int, error) {
 		args = rest[1:]
 	}
 	if len(positional) != len(want) {
-		err := fmt.Errorf("found %d arguments %q, want %s", len(positional), positional, strings.Join(want, " "))
+		names := strings.Join(want, " ")
+		if len(want) == 0 {
+			names = "none"
+		}
+		err := fmt.Errorf("found %d arguments %q, want %s", len(positional), positional, names)
 		return nil, f.p.usageError(f, err.Error()), err
 	}
 	return positional, exitDone, nil

@@ -175,7 +175,7 @@ func FractionSize(d FractionDesign, ratio, power float64) (nRef, nCand int, achi
 		return 0, 0, 0, ErrBeyondMargin
 	}
 	at := func(n int) float64 {
-		d.NRef, d.NCand = n, share(n, ratio)
+		d.NRef, d.NCand = n, Share(n, ratio)
 		if d.NCand < 2 {
 			return 0
 		}

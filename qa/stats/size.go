@@ -52,16 +52,16 @@ func (d Design) size(ratio, power float64, alone bool) (nRef, nCand int, achieve
 	with := func(of func(Design) float64) func(n int) float64 {
 		return func(n int) float64 {
 			e := d
-			e.NRef, e.NCand = n, share(n, ratio)
+			e.NRef, e.NCand = n, Share(n, ratio)
 			return of(e)
 		}
 	}
 	// With too few candidates there is no test; from the first number on that
 	// allows one, a power that is not there at once is not there for a while.
 	first := 2
-	if share(first, ratio) < 2 {
+	if Share(first, ratio) < 2 {
 		first = int(1/ratio) + 1
-		for share(first, ratio) < 2 {
+		for Share(first, ratio) < 2 {
 			first++
 		}
 	}
@@ -91,12 +91,12 @@ func (d Design) size(ratio, power float64, alone bool) (nRef, nCand int, achieve
 			}
 		}
 	}
-	return n, share(n, ratio), achieved, nil
+	return n, Share(n, ratio), achieved, nil
 }
 
-// share is how many candidate readings go with n of the reference. A product that
+// Share returns how many candidate readings go with n of the reference. A product that
 // is whole but for rounding is taken as whole.
-func share(n int, ratio float64) int {
+func Share(n int, ratio float64) int {
 	c := float64(n) * ratio
 	if near := math.Round(c); math.Abs(c-near) <= 1e-12*c {
 		return int(min(near, math.MaxInt32))
