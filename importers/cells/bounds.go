@@ -86,6 +86,7 @@ func openPack(data []byte) (*pack, error) {
 			Want:  "a whole .xlsx workbook", Do: "copy the file again from where it came",
 		}
 	}
+	z.RegisterDecompressor(zip.Deflate, newInflater)
 	p := &pack{parts: map[string]*zip.File{}}
 	for _, f := range z.File {
 		if strings.HasSuffix(f.Name, "/") {
