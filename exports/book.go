@@ -67,11 +67,15 @@ func (b book) bytes() ([]byte, error) {
 
 // frame sets everything of a sheet but its cells.
 func (b book) frame(f *excelize.File, s sheet) error {
-	for i, width := range s.widths {
-		col := cells.Letters(i + 1)
-		if err := f.SetColWidth(s.name, col, col, width); err != nil {
+	for i := 0; i < len(s.widths); {
+		last := i // of the columns of one width: the library goes over all of them at every call
+		for last+1 < len(s.widths) && s.widths[last+1] == s.widths[i] {
+			last++
+		}
+		if err := f.SetColWidth(s.name, cells.Letters(i+1), cells.Letters(last+1), s.widths[i]); err != nil {
 			return err
 		}
+		i = last + 1
 	}
 	if s.frozen > 0 || s.columns > 0 {
 		pane := "bottomLeft"

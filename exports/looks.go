@@ -76,10 +76,10 @@ func style(k look) excelize.Style {
 		s.Border = below(inkColour, 1)
 		a.WrapText, a.Vertical, a.Horizontal, a.Indent = true, "bottom", "right", 1
 	case headPlainLook:
-		s.Font = font(8.5, inkColour, true)
+		s.Font = font(8, inkColour, true)
 		a.WrapText, a.Vertical = true, "bottom"
 	case headPlainRightLook:
-		s.Font = font(8.5, inkColour, true)
+		s.Font = font(8, inkColour, true)
 		a.WrapText, a.Vertical, a.Horizontal, a.Indent = true, "bottom", "right", 1
 	case groupLook:
 		s.Font = font(11, inkColour, true)

@@ -146,7 +146,14 @@ func writeZip(parts map[string][]byte, written map[string]func(io.Writer) error)
 	sort.Strings(names) // "[Content_Types].xml" comes first, where programs look for it
 	var out bytes.Buffer
 	w := zip.NewWriter(&out)
-	w.RegisterCompressor(zip.Deflate, func(to io.Writer) (io.WriteCloser, error) { return flate.NewWriter(to, flate.BestSpeed) })
+	packer, err := flate.NewWriter(io.Discard, flate.BestSpeed)
+	if err != nil {
+		return nil, fmt.Errorf("workbook: %w", err)
+	}
+	w.RegisterCompressor(zip.Deflate, func(to io.Writer) (io.WriteCloser, error) { // one after the other: all share one
+		packer.Reset(to)
+		return packer, nil
+	})
 	for _, n := range names {
 		e, err := w.Create(n)
 		if err != nil {

@@ -32,10 +32,12 @@ func resultsSheet(rec qa.Record) sheet {
 	return s
 }
 
-// resultsTable is the figures of all characteristics, name and verdict first.
+// resultsTable is the figures of all characteristics: first those that are looked at first, then all others in the order of the
+// result format.
 func resultsTable(r qa.Result) *table {
 	t := &table{}
-	t.head("name", "unit", "verdict")
+	t.head("name", "unit", "verdict", "reference.n", "candidate.n", "reference.mean", "candidate.mean", "reference.sd", "candidate.sd", "difference.estimate",
+		"equivalence.lower", "equivalence.upper", "equivalence.margin_lower", "equivalence.margin_upper", "equivalence.p", "spread.sd_ratio")
 	for _, c := range r.Characteristics {
 		t.add(flatten("", reflect.ValueOf(c)))
 	}

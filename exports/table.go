@@ -1,6 +1,9 @@
 package exports
 
-import "math"
+import (
+	"math"
+	"strings"
+)
 
 // table is a table of figures, a column a figure: the columns of all rows together, in the order in which the result format
 // has them; a figure that a row does not have is an empty cell.
@@ -50,10 +53,11 @@ func (t *table) add(figures []figureRow) {
 // to writes the table under its headings: the names of the result format, and under them what each means in plain words.
 func (t *table) to(s *sheet, meaning func(name string) string) {
 	var names, words []cell
-	tall := 1.0
+	tall, nameTall := 1.0, 1.0
 	for i, n := range t.names {
 		look, wordLook := headPlainLook, headLook
-		width := math.Max(11, math.Min(26, 0.95*float64(len(n))+2))
+		// Long names break into lines where they must: a table of a hundred columns has to stay within few pages.
+		width := math.Max(10, math.Min(14.5, 0.95*float64(len(n))+2))
 		if i > 0 && t.numeric(n) {
 			look, wordLook = headPlainRightLook, headRightLook
 		}
@@ -61,11 +65,14 @@ func (t *table) to(s *sheet, meaning func(name string) string) {
 			width = math.Max(width, math.Min(40, float64(len([]rune(r[n].text)))+2))
 		}
 		w := meaning(n)
-		tall = math.Max(tall, lines(w, int(width)-3))
+		for _, word := range strings.Fields(w) {
+			width = math.Max(width, math.Min(17, float64(len([]rune(word)))+2))
+		}
+		tall, nameTall = math.Max(tall, lines(w, int(width)-2)), math.Max(nameTall, lines(n, int(width)-1))
 		s.widths = append(s.widths, width)
 		names, words = append(names, text(n, look)), append(words, text(w, wordLook))
 	}
-	s.addTall(28, names...)
+	s.addTall(nameTall*11.5+4, names...)
 	s.addTall(tall*12.5+3, words...)
 	s.frozen, s.heads, s.columns, s.filter, s.filterTo = len(s.rows), len(s.rows), 1, len(s.rows), len(s.rows)+len(t.rows)
 	for _, r := range t.rows {
