@@ -32,8 +32,9 @@ func Compare(plan Plan, readings Readings, run Run) (Result, error) {
 	if len(readings.Characteristics) == 0 {
 		return Result{}, errors.New("characteristics: found none, want at least one column of measurements; name them in the plan under [[characteristic]]")
 	}
+	var shared known
 	for _, c := range readings.Characteristics {
-		one, err := compareOne(plan, c, readings.Reference.Of(c.Name), readings.Candidate.Of(c.Name))
+		one, err := compareOne(plan, c, &shared, readings.Reference.Of(c.Name), readings.Candidate.Of(c.Name))
 		if err != nil {
 			return Result{}, err
 		}
@@ -71,18 +72,19 @@ type comparison struct {
 	asked     asked
 	margin    tested
 	ref, cand sample
+	known     *known // shared by all characteristics of a comparison
 }
 
 func (c *comparison) warn(code string, side Side, path, text string) {
 	c.Warnings = append(c.Warnings, Warning{Code: code, Side: side, Path: path, Text: text})
 }
 
-func compareOne(plan Plan, ch Characteristic, ref, cand Series) (Comparison, error) {
+func compareOne(plan Plan, ch Characteristic, k *known, ref, cand Series) (Comparison, error) {
 	if ch.Kind == "attribute" {
 		return compareAttribute(plan, ch, ref, cand)
 	}
 	a := plan.askedOf(ch)
-	c := &comparison{ch: ch, asked: a, Comparison: Comparison{
+	c := &comparison{ch: ch, asked: a, known: k, Comparison: Comparison{
 		Name: ch.Name, Unit: ch.Unit, Kind: "numeric", Limits: Limits{Lower: ch.Lower, Target: ch.Target, Upper: ch.Upper},
 		Objective: a.objective, Alpha: a.alpha, Method: a.method, Warnings: []Warning{},
 	}}

@@ -1,7 +1,9 @@
 package qa
 
 import (
+	"errors"
 	"fmt"
+	"math"
 
 	"lotpair/qa/stats"
 )
@@ -22,7 +24,7 @@ func (c *comparison) groupMeans() (ref, cand stats.Summary, ok bool) {
 	if len(x) < 2 || len(y) < 2 {
 		return ref, cand, false
 	}
-	return stats.Summarize(means(x)), stats.Summarize(means(y)), true
+	return stats.Summarize(stats.GroupMeans(x)), stats.Summarize(stats.GroupMeans(y)), true
 }
 
 // groupsOf are the values of each group, in the order in which the groups first appear.
@@ -41,14 +43,6 @@ func groupsOf(s sample) [][]float64 {
 	return out
 }
 
-func means(groups [][]float64) []float64 {
-	out := make([]float64, len(groups))
-	for i, g := range groups {
-		out[i] = stats.Summarize(g).Mean
-	}
-	return out
-}
-
 // groups says how many groups each lot has, and what cannot be shown with one.
 func (c *comparison) groups() {
 	if !c.asked.grouped {
@@ -56,6 +50,7 @@ func (c *comparison) groups() {
 	}
 	x, y := groupsOf(c.ref), groupsOf(c.cand)
 	c.Groups = &GroupsResult{Reference: len(x), Candidate: len(y)}
+	c.components(x, y)
 	for _, s := range []struct {
 		side Side
 		n    int
@@ -65,4 +60,30 @@ func (c *comparison) groups() {
 		}
 	}
 	c.warn(WarnIndependence, "", "spread", "Everything but the means is computed as if the readings were independent, which readings of one group are not.")
+}
+
+// components splits the variation inside the lots into that between groups and that within them, pooled over both lots: mean
+// squares by their degrees of freedom, the group size likewise (Searle, Casella and McCulloch 1992, Variance Components,
+// section 3.6, from memory).
+func (c *comparison) components(lots ...[][]float64) {
+	var ssBetween, dfBetween, ssWithin, dfWithin, size float64
+	for _, groups := range lots {
+		a, err := stats.OneWay(groups)
+		if err != nil && !errors.Is(err, stats.ErrConstant) {
+			return
+		}
+		ssBetween, dfBetween = ssBetween+a.SSBetween, dfBetween+a.DFBetween
+		ssWithin, dfWithin = ssWithin+a.SSWithin, dfWithin+a.DFWithin
+		n, squares := 0.0, 0.0
+		for _, g := range groups {
+			n += float64(len(g))
+			squares += float64(len(g) * len(g))
+		}
+		size += n - squares/n // (k - 1) n0
+	}
+	within := ssWithin / dfWithin
+	between := math.Max(0, (ssBetween/dfBetween-within)/(size/dfBetween))
+	if finite(within, between) {
+		c.Groups.SDWithin, c.Groups.SDBetween = ptr(math.Sqrt(within)), ptr(math.Sqrt(between))
+	}
 }

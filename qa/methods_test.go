@@ -95,9 +95,14 @@ func TestGroupsRandom(t *testing.T) {
 	if naive.Verdict != qa.Equivalent || got.Verdict != qa.Undecided {
 		t.Errorf("verdicts: got %q and %q, want equivalent (naive) and undecided", naive.Verdict, got.Verdict)
 	}
-	if g := got.Groups; g == nil || g.Reference != 3 || g.Candidate != 3 {
-		t.Errorf("groups: got %v, want 3 and 3", g)
+	g := got.Groups
+	if g == nil || g.Reference != 3 || g.Candidate != 3 {
+		t.Fatalf("groups: got %v, want 3 and 3", g)
 	}
+	// R 4 gives 0.00428 and 0.00429 within, 0.01074 and 0.00851 between for the two suppliers; groups of one size pool as the
+	// root of the mean square.
+	near(t, "within", g.SDWithin, math.Hypot(0.00428, 0.00429)/math.Sqrt2, 2e-3)
+	near(t, "between", g.SDBetween, math.Hypot(0.01074, 0.00851)/math.Sqrt2, 2e-3)
 	alone := grouped(qa.Candidate)
 	for i := range alone.Readings {
 		alone.Readings[i].Group = "L1"

@@ -91,8 +91,8 @@ func (c *comparison) nonDetects(plan Plan, ch Characteristic, ref, cand Series) 
 	}
 	ruled := plan.Reading.NonDetect != "" && (open == 0 || plan.Reading.NonDetect == NonDetectExclude)
 	cells := Count(max(all, ref.NonDetects+cand.NonDetects), "cell", "cells")
-	higher, ok1 := atEnds(plan, ch, ref, cand, false)
-	lower, ok2 := atEnds(plan, ch, ref, cand, true)
+	higher, ok1 := atEnds(plan, ch, c.known, ref, cand, false)
+	lower, ok2 := atEnds(plan, ch, c.known, ref, cand, true)
 	if !ok1 || !ok2 || all == 0 {
 		if ruled {
 			c.warn(WarnNonDetects, "", "verdict", fmt.Sprintf("%s below or above a detection limit, taken as the plan says (non_detect = %q). What the verdict would be at their bounds cannot be computed: one of them has no such bound.", cells, plan.Reading.NonDetect))
@@ -127,13 +127,13 @@ func (c *comparison) nonDetects(plan Plan, ch Characteristic, ref, cand Series) 
 }
 
 // atEnds is the comparison with the reference's non-detects at one end and the candidate's at the other.
-func atEnds(plan Plan, ch Characteristic, ref, cand Series, refHigh bool) (Comparison, bool) {
+func atEnds(plan Plan, ch Characteristic, k *known, ref, cand Series, refHigh bool) (Comparison, bool) {
 	x, ok1 := ref.at(refHigh)
 	y, ok2 := cand.at(!refHigh)
 	if !ok1 || !ok2 {
 		return Comparison{}, false
 	}
-	c, err := compareOne(plan, ch, x, y)
+	c, err := compareOne(plan, ch, k, x, y)
 	return c, err == nil
 }
 

@@ -91,11 +91,7 @@ func (c *comparison) tolerance(s stats.Summary, coverage, confidence float64) *T
 	}
 	t := &ToleranceIntervalResult{Coverage: coverage, Confidence: confidence}
 	var err error
-	if c.ch.Lower != nil && c.ch.Upper != nil {
-		t.K, err = stats.ToleranceFactor(s.N, float64(s.N-1), coverage, confidence)
-	} else {
-		t.K, err = stats.ToleranceFactorOneSided(s.N, coverage, confidence)
-	}
+	t.K, err = c.known.factor(factorOf{s.N, c.ch.Lower != nil && c.ch.Upper != nil, coverage, confidence})
 	if err != nil || !finite(t.K, s.Mean-t.K*s.SD, s.Mean+t.K*s.SD) {
 		return nil
 	}
@@ -106,4 +102,39 @@ func (c *comparison) tolerance(s stats.Summary, coverage, confidence float64) *T
 		t.Upper = ptr(s.Mean + t.K*s.SD)
 	}
 	return t
+}
+
+// factorOf is what a tolerance factor depends on.
+type factorOf struct {
+	n                    int
+	twoSided             bool
+	coverage, confidence float64
+}
+
+// known keeps what characteristics of the same size share and what takes long to compute: tolerance factors, and how often
+// each U comes up.
+type known struct {
+	factors map[factorOf]float64
+	ranks   stats.NullU
+}
+
+func (k *known) factor(f factorOf) (float64, error) {
+	if v, ok := k.factors[f]; ok {
+		return v, nil
+	}
+	var v float64
+	var err error
+	if f.twoSided {
+		v, err = stats.ToleranceFactor(f.n, float64(f.n-1), f.coverage, f.confidence)
+	} else {
+		v, err = stats.ToleranceFactorOneSided(f.n, f.coverage, f.confidence)
+	}
+	if err != nil {
+		return 0, err
+	}
+	if k.factors == nil {
+		k.factors = map[factorOf]float64{}
+	}
+	k.factors[f] = v
+	return v, nil
 }

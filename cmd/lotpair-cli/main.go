@@ -8,6 +8,7 @@ import (
 	"os"
 	"runtime"
 	"runtime/debug"
+	"strings"
 	"time"
 )
 
@@ -55,8 +56,10 @@ func calls() []call {
 		{"compare", "PLAN.toml", "runs the plan: reads both lots, says the verdict, writes the workbook", (*program).compare},
 		{"seal", "PLAN.toml", "fixes the criterion of a plan: a workbook with its digest and time", (*program).seal},
 		{"inspect", "FILE", "shows how a file would be read", (*program).inspect},
+		{"size", "--sd S …", "says how many readings a study needs, or the power that it has", (*program).size},
 		{"identity", "new|show", "makes or shows a signing identity", (*program).identity},
 		{"sign", "RECORD.xlsx", "adds a signature to a record", (*program).sign},
+		{"qualify", "", "runs the published checks on this machine", (*program).qualify},
 		{"verify", "RECORD.xlsx", "checks every signature and part of a record and computes it again", (*program).verify},
 	}
 }
@@ -85,8 +88,17 @@ func (p *program) run(args []string) (code int) {
 			return c.run(p, args[1:])
 		}
 	}
-	fmt.Fprintf(p.err, "lotpair-cli: found the call %q, want one of compare, seal, inspect, identity, sign, verify; see lotpair-cli --help\n", args[0])
+	fmt.Fprintf(p.err, "lotpair-cli: found the call %q, want one of %s; see lotpair-cli --help\n", args[0], callNames())
 	return exitUsage
+}
+
+// callNames lists the calls for a message.
+func callNames() string {
+	var names []string
+	for _, c := range calls() {
+		names = append(names, c.name)
+	}
+	return strings.Join(names, ", ")
 }
 
 func (p *program) usage(w io.Writer) {

@@ -1,0 +1,149 @@
+package main
+
+import (
+	"bytes"
+	"crypto/rand"
+	_ "embed"
+	"encoding/json"
+	"fmt"
+
+	"lotpair/exports"
+	"lotpair/exports/identity"
+	"lotpair/exports/opcsign"
+	"lotpair/importers"
+	"lotpair/qa"
+	"lotpair/qa/published"
+)
+
+// qualifyPlan and qualifyReadings are the small comparison that the installation check reads, signs, verifies and tampers with.
+var (
+	//go:embed qualify/plan.toml
+	qualifyPlan []byte
+	//go:embed qualify/readings.csv
+	qualifyReadings []byte
+)
+
+func (p *program) qualify(args []string) int {
+	var report string
+	var asJSON bool
+	f := p.flags("qualify [--report OUT.xlsx] [--json]",
+		"Runs the published checks on this machine and reports each against its source, then reads, signs, verifies and tampers with one record.\nExit code 0 when all hold, else 1. Validation for your intended use stays with your organization.",
+		"lotpair-cli qualify")
+	f.StringVar(&report, "report", "", "write what was found to `OUT.xlsx`")
+	f.BoolVar(&asJSON, "json", false, "print what was found as JSON (lotpair.qualify/1)")
+	if _, code, err := f.parse(args); err != nil {
+		return code
+	}
+	q := exports.NewQualification(p.now(), p.software(), publishedLines(), []exports.StepLine{
+		step("a signed record is read, computed again and found intact", p.soundRecord()),
+		step("a record changed in one bit is refused", p.tamperedRecord()),
+	})
+	if asJSON {
+		b, err := json.MarshalIndent(q, "", "  ")
+		if err != nil {
+			p.say(err)
+			return exitFault
+		}
+		fmt.Fprintf(p.out, "%s\n", b)
+	} else {
+		p.printQualification(q)
+	}
+	if report != "" {
+		b, err := exports.QualificationReport(q)
+		if err != nil {
+			p.say(err)
+			return exitFault
+		}
+		if err := exports.Save(p.file(report), b, false); err != nil {
+			return p.notWritten(err)
+		}
+		fmt.Fprintf(p.err, "wrote %s\n", report)
+	}
+	if q.Off > 0 {
+		return exitCheck
+	}
+	return exitDone
+}
+
+// publishedLines runs the published checks.
+func publishedLines() []exports.CheckLine {
+	var out []exports.CheckLine
+	for _, o := range published.Run() {
+		l := exports.CheckLine{ID: o.ID, Quantity: o.Quantity, Source: o.Source, Want: o.Want, Got: o.Got, Error: o.Error, Allowed: o.Relative, Holds: o.Holds}
+		if o.Err != nil {
+			l.Got, l.Error, l.Fault = 0, 0, o.Err.Error()
+		}
+		out = append(out, l)
+	}
+	return out
+}
+
+func step(name string, err error) exports.StepLine {
+	if err != nil {
+		return exports.StepLine{Step: name, Fault: err.Error()}
+	}
+	return exports.StepLine{Step: name, Holds: true}
+}
+
+func (p *program) printQualification(q exports.Qualification) {
+	word := map[bool]string{true: "holds", false: "IS OFF"}
+	for _, c := range q.Checks {
+		fmt.Fprintf(p.out, "%s: %s, %s\n  published %v, here %v, difference %.1e, allowed %.1e\n  %s\n", c.ID, c.Quantity, word[c.Holds], c.Want, c.Got, c.Error, c.Allowed, c.Source)
+		if c.Fault != "" {
+			fmt.Fprintf(p.out, "  %s\n", c.Fault)
+		}
+	}
+	for _, s := range q.Record {
+		fmt.Fprintf(p.out, "record: %s: %s%s\n", s.Step, word[s.Holds], after(": ", s.Fault))
+	}
+	fmt.Fprintf(p.out, "\n%d published checks and %d of the record, %d off. Lotpair %s on %s/%s, calculation %d.\n",
+		len(q.Checks), len(q.Record), q.Off, q.Software.Version, q.Software.OS, q.Software.Arch, q.Software.Calculation)
+	fmt.Fprintln(p.out, "This shows that the program computes as published on this machine; validation for your intended use stays with your organization.")
+}
+
+// record makes the small record and signs it with an identity made for the occasion.
+func (p *program) record() ([]byte, error) {
+	plan, err := importers.LoadPlan("plan.toml", qualifyPlan)
+	if err != nil {
+		return nil, err
+	}
+	readings, err := importers.Read(plan, func(string) ([]byte, error) { return qualifyReadings, nil })
+	if err != nil {
+		return nil, err
+	}
+	result, err := qa.Compare(plan, readings, qa.Run{Software: p.software(), Seal: qa.Seal{Digest: plan.SealDigest(), Readings: "unknown"}, Attempts: qa.Attempts{Known: 1, KeptBy: "not counted"}})
+	if err != nil {
+		return nil, err
+	}
+	id, err := identity.New("Installation check", "", "", p.now(), rand.Reader)
+	if err != nil {
+		return nil, err
+	}
+	rec := qa.NewRecord(plan, qa.FileOf("plan.toml", qualifyPlan), readings, result, "installation check", p.now())
+	return exports.SignFirst(rec, id, opcsign.Statement{Meaning: "prepared", Time: p.now(), Zone: zoneOf(p.now())})
+}
+
+func (p *program) soundRecord() error {
+	b, err := p.record()
+	if err != nil {
+		return err
+	}
+	if v := exports.Verify(b, nil); v.State != exports.Intact || !v.Agrees {
+		return fmt.Errorf("found the record %s, want it intact: %v", v.State, v.Reasons)
+	}
+	return nil
+}
+
+// tamperedRecord changes one byte of the signed file, wherever it lies, and wants it noticed.
+func (p *program) tamperedRecord() error {
+	b, err := p.record()
+	if err != nil {
+		return err
+	}
+	changed := bytes.Clone(b)
+	changed[len(changed)/2] ^= 1
+	if v := exports.Verify(changed, nil); v.State == exports.Intact || v.State == exports.Incomplete {
+		return fmt.Errorf("found the changed record %s, want it refused", v.State)
+	}
+	return nil
+}
