@@ -17,14 +17,15 @@ type listing struct {
 // mostListed is how many records the list shows; a word more in the search finds the others.
 const mostListed = 200
 
-// search is the line in which the register is searched: the keys of the list work in it too.
+// search is the line in which the register is searched: the keys of the list and of the window work in it too.
 type search struct {
 	widget.Entry
-	key func(fyne.KeyName) bool // false where the list has no use for the key
+	key      func(fyne.KeyName) bool // false where the list has no use for the key
+	shortcut func(fyne.Shortcut) bool
 }
 
-func newSearch(changed func(), key func(fyne.KeyName) bool) *search {
-	s := &search{key: key}
+func newSearch(changed func(), key func(fyne.KeyName) bool, shortcut func(fyne.Shortcut) bool) *search {
+	s := &search{key: key, shortcut: shortcut}
 	s.ExtendBaseWidget(s)
 	s.SetPlaceHolder("Search the register: title, what it supports, lots, verdict, signer")
 	s.OnChanged = func(string) { changed() }
@@ -36,6 +37,13 @@ func newSearch(changed func(), key func(fyne.KeyName) bool) *search {
 func (s *search) TypedKey(e *fyne.KeyEvent) {
 	if !s.key(e.Name) {
 		s.Entry.TypedKey(e)
+	}
+}
+
+// TypedShortcut implements fyne.Shortcutable.
+func (s *search) TypedShortcut(x fyne.Shortcut) {
+	if !s.shortcut(x) {
+		s.Entry.TypedShortcut(x)
 	}
 }
 

@@ -66,6 +66,7 @@ func (w *window) begin(file, said string, err error) {
 	}
 	if id, err := w.register.Place(); err == nil && id != 0 {
 		w.reopen(id)
+		return
 	}
 	w.win.Canvas().Focus(w.search)
 }

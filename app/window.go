@@ -83,17 +83,16 @@ func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
 	w.sentences = w.newSentences()
 	w.problem = w.newProblem()
 	w.listRows = w.newListRows()
-	w.search = newSearch(func() { w.find(); w.start.Refresh() }, w.listKey)
+	w.search = newSearch(func() { w.find(); w.start.Refresh() }, w.listKey, w.shortcut)
 	w.picture = chart.New(nil, w.palette())
 	// The order of the objects is the order of the Tab key.
 	w.root = container.New(windowLayout{w}, w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot)
 	w.win.SetContent(w.root)
 	w.win.Resize(fyne.NewSize(1280, 800))
 	w.win.Canvas().SetOnTypedKey(w.typed)
-	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyO, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.askOpen() })
-	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyE, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.act.export.act() })
-	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyQ, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.win.Close() })
-	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyL, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { w.leave() })
+	for _, k := range w.shortcuts() {
+		w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: k.key, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { k.act() })
+	}
 	w.win.SetOnDropped(func(_ fyne.Position, files []fyne.URI) {
 		if len(files) > 0 && w.dialog == nil {
 			w.open(files[0].Path(), readFile)
@@ -139,6 +138,9 @@ func (w *window) apply(change func(desk.State) desk.State) {
 	w.state = w.acknowledged(before, change(before))
 	if before.Path != w.state.Path || before.Selected != w.state.Selected {
 		w.cursor = map[qa.Side]int{}
+		if w.state.Open && w.win.Canvas().Focused() == w.search {
+			w.win.Canvas().Unfocus()
+		}
 		for _, s := range []*scrolled{w.leftRows, w.rightRows, w.sentences} {
 			s.scroll.ScrollToTop()
 		}

@@ -38,44 +38,75 @@ func appears(t *testing.T, name string, gone <-chan error) string {
 	return ""
 }
 
-func TestTheWindowOpensAnswersAndCloses(t *testing.T) {
+// program builds the program and says where it is.
+func program(t *testing.T) string {
+	t.Helper()
 	if os.Getenv("DISPLAY") == "" {
 		t.Fatal("DISPLAY: found none, want a display; run it as check does, under Xvfb")
 	}
-	dir := t.TempDir()
-	program, acts := filepath.Join(dir, "lotpair"), filepath.Join(dir, "acts.txt")
-	build := exec.Command("go", "build", "-tags", "migrated_fynedo", "-o", program, ".")
+	path := filepath.Join(t.TempDir(), "lotpair")
+	build := exec.Command("go", "build", "-tags", "migrated_fynedo", "-o", path, ".")
 	if out, err := build.CombinedOutput(); err != nil {
 		t.Fatalf("build: %v\n%s", err, out)
 	}
-	var said bytes.Buffer
-	c := exec.Command(program, "--acts", acts, "--register", filepath.Join(dir, "register"), filepath.Join("..", "..", "testdata", "demo", "plan.toml"))
-	c.Stdout, c.Stderr = &said, &said
-	if err := c.Start(); err != nil {
+	return path
+}
+
+// running is the program while it runs.
+type running struct {
+	*exec.Cmd
+	said bytes.Buffer
+	gone chan error
+}
+
+func start(t *testing.T, path string, args ...string) *running {
+	t.Helper()
+	r := &running{Cmd: exec.Command(path, args...), gone: make(chan error, 1)}
+	r.Stdout, r.Stderr = &r.said, &r.said
+	if err := r.Start(); err != nil {
 		t.Fatal(err)
 	}
-	gone := make(chan error, 1)
-	go func() { gone <- c.Wait() }()
-	defer func() { _ = c.Process.Kill() }() // it may have ended by itself
+	go func() { r.gone <- r.Wait() }()
+	t.Cleanup(func() { _ = r.Process.Kill() }) // it may have ended by itself
+	return r
+}
 
-	id := appears(t, "Hub shell HS-40: second foundry – Lotpair", gone)
-	for _, args := range [][]string{
-		{"windowfocus", "--sync", id},
-		{"key", "--delay", "200", "Home", "Down", "Down"},
-		{"key", "--delay", "200", "ctrl+q"},
-	} {
+// press presses keys in the window of the name.
+func (r *running) press(t *testing.T, name string, keys ...string) {
+	t.Helper()
+	id := appears(t, name, r.gone)
+	for _, args := range [][]string{{"windowfocus", "--sync", id}, append([]string{"key", "--delay", "200"}, keys...)} {
 		if out, err := tool(args...); err != nil {
 			t.Fatalf("xdotool %v: %v %s", args, err, out)
 		}
 	}
+}
+
+// closes waits for a clean end.
+func (r *running) closes(t *testing.T) {
+	t.Helper()
 	select {
-	case err := <-gone:
+	case err := <-r.gone:
 		if err != nil {
-			t.Fatalf("closed: got %v, want a clean end\n%s", err, said.String())
+			t.Fatalf("closed: got %v, want a clean end\n%s", err, r.said.String())
 		}
 	case <-time.After(30 * time.Second):
-		t.Fatalf("the program did not end within 30 seconds after ctrl+q\n%s", said.String())
+		t.Fatalf("the program did not end within 30 seconds after ctrl+q\n%s", r.said.String())
 	}
+	if strings.Contains(r.said.String(), "fyne.Do") {
+		t.Errorf("the toolkit complains of a call from the wrong thread:\n%s", r.said.String())
+	}
+}
+
+const demoTitle = "Hub shell HS-40: second foundry – Lotpair"
+
+func TestTheWindowOpensAnswersAndCloses(t *testing.T) {
+	path, dir := program(t), t.TempDir()
+	acts := filepath.Join(dir, "acts.txt")
+	r := start(t, path, "--acts", acts, "--register", filepath.Join(dir, "register"), filepath.Join("..", "..", "testdata", "demo", "plan.toml"))
+	r.press(t, demoTitle, "Home", "Down", "Down")
+	r.press(t, demoTitle, "ctrl+q")
+	r.closes(t)
 	got, err := os.ReadFile(acts)
 	if err != nil {
 		t.Fatal(err)
@@ -85,7 +116,37 @@ func TestTheWindowOpensAnswersAndCloses(t *testing.T) {
 	if len(lines) < 4 || !strings.HasPrefix(lines[0], "opened the plan") || !slices.Equal(lines[1:4], want) {
 		t.Errorf("acts: got %q, want the plan opened, then %q", lines, want)
 	}
-	if strings.Contains(said.String(), "fyne.Do") {
-		t.Errorf("the toolkit complains of a call from the wrong thread:\n%s", said.String())
+}
+
+// TestAKilledWindowOpensWhereItWas kills the program and starts it again without a file: the record lies open, on the line and
+// in the look that it was left in. Closed by its user it opens with the register, from which return opens the record.
+func TestAKilledWindowOpensWhereItWas(t *testing.T) {
+	path, dir := program(t), t.TempDir()
+	register := filepath.Join(dir, "register")
+	r := start(t, path, "--register", register, filepath.Join("..", "..", "testdata", "demo", "plan.toml"))
+	r.press(t, demoTitle, "End", "3")
+	time.Sleep(time.Second)
+	if err := r.Process.Kill(); err != nil {
+		t.Fatal(err)
+	}
+	<-r.gone
+	acts := filepath.Join(dir, "acts.txt")
+	r = start(t, path, "--acts", acts, "--register", register)
+	r.press(t, demoTitle, "Up", "2", "ctrl+l")
+	r.press(t, "^Lotpair$", "Return")
+	r.press(t, demoTitle, "ctrl+q")
+	r.closes(t)
+	got, err := os.ReadFile(acts)
+	if err != nil {
+		t.Fatal(err)
+	}
+	plan, err := filepath.Abs(filepath.Join("..", "..", "testdata", "demo", "plan.toml"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	again := "opened the record again: " + plan
+	want := []string{again, "selected 5", "looked at Order", "left the record", again}
+	if lines := strings.Split(strings.TrimSpace(string(got)), "\n"); !slices.Equal(lines, want) {
+		t.Errorf("acts: got %q, want %q", lines, want)
 	}
 }

@@ -1,0 +1,38 @@
+package app
+
+import (
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/driver/desktop"
+)
+
+// shortcut is a key that does an act together with the control key.
+type shortcut struct {
+	key fyne.KeyName
+	act func()
+}
+
+// shortcuts are the window's own.
+func (w *window) shortcuts() []shortcut {
+	return []shortcut{
+		{fyne.KeyO, w.askOpen},
+		{fyne.KeyE, w.act.export.act},
+		{fyne.KeyL, w.leave},
+		{fyne.KeyQ, w.win.Close},
+	}
+}
+
+// shortcut does what a shortcut stands for; false where it is none of the window's. The toolkit gives shortcuts to a line that
+// has the keys and not to the window.
+func (w *window) shortcut(s fyne.Shortcut) bool {
+	x, ok := s.(*desktop.CustomShortcut)
+	if !ok || x.Modifier != fyne.KeyModifierShortcutDefault {
+		return false
+	}
+	for _, k := range w.shortcuts() {
+		if k.key == x.KeyName {
+			k.act()
+			return true
+		}
+	}
+	return false
+}
