@@ -10,17 +10,22 @@ type huffman struct {
 
 const firstBits = 10
 
-// entry is a symbol and how many bits its code has, 0 where there is none; farther points into the second table.
-type entry struct {
-	symbol  uint16
-	bits    uint8
-	farther bool
-}
+// entry is a symbol (from bit 16), the mark farther, where the symbol points into the second table, and how many bits the
+// code has, 0 where there is none.
+type entry uint32
+
+const farther entry = 1 << 8
+
+func newEntry(symbol int, bits uint8) entry { return entry(symbol)<<16 | entry(bits) }
+
+func (e entry) symbol() int { return int(e >> 16) }
+
+func (e entry) bits() uint { return uint(e & 15) }
 
 func (h *huffman) find(hold uint64) entry {
 	e := h.first[hold&(1<<firstBits-1)]
-	if e.farther {
-		return h.second[uint64(e.symbol)<<5|hold>>firstBits&31]
+	if e&farther != 0 {
+		return h.second[uint64(e>>16)<<5|hold>>firstBits&31]
 	}
 	return e
 }
@@ -55,7 +60,7 @@ func (h *huffman) build(lengths []uint8) error {
 		}
 		c := int(bits.Reverse16(uint16(next[l]))) >> (16 - l)
 		next[l]++
-		e := entry{symbol: uint16(symbol), bits: l}
+		e := newEntry(symbol, l)
 		if l <= firstBits {
 			for i := c; i < 1<<firstBits; i += 1 << l {
 				h.first[i] = e
@@ -63,12 +68,12 @@ func (h *huffman) build(lengths []uint8) error {
 			continue
 		}
 		p := &h.first[c&(1<<firstBits-1)]
-		if !p.farther {
-			*p = entry{symbol: uint16(len(h.second) >> 5), farther: true}
+		if *p&farther == 0 {
+			*p = newEntry(len(h.second)>>5, 0) | farther
 			h.second = append(h.second, make([]entry, 32)...)
 		}
 		for i := c >> firstBits; i < 32; i += 1 << (l - firstBits) {
-			h.second[int(p.symbol)<<5|i] = e
+			h.second[p.symbol()<<5|i] = e
 		}
 	}
 	return nil
@@ -125,19 +130,19 @@ func (z *inflater) tables() error {
 			return err
 		}
 		e := z.literals.find(z.hold)
-		if e.bits == 0 {
+		if e.bits() == 0 {
 			return z.cut(errPacked)
 		}
-		if _, err := z.take(uint(e.bits)); err != nil {
+		if _, err := z.take(e.bits()); err != nil {
 			return err
 		}
-		if e.symbol < 16 {
-			lengths[i] = uint8(e.symbol)
+		if e.symbol() < 16 {
+			lengths[i] = uint8(e.symbol())
 			i++
 			continue
 		}
 		extra, base, value := uint(7), 11, uint8(0)
-		switch e.symbol {
+		switch e.symbol() {
 		case 16:
 			if i == 0 {
 				return errPacked

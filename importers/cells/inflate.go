@@ -184,37 +184,36 @@ var (
 	farExtra    = [30]uint8{0, 0, 0, 0, 1, 1, 2, 2, 3, 3, 4, 4, 5, 5, 6, 6, 7, 7, 8, 8, 9, 9, 10, 10, 11, 11, 12, 12, 13, 13}
 )
 
-// codes unpacks a block of codes until it ends or the room is used. A code with its distance has at most 48 bits.
+// codes unpacks a block of codes until it ends or the room is used. A length and a distance have at most 48 bits together.
 func (z *inflater) codes() error {
 	const longest = 258
 	for z.n <= len(z.out)-longest {
 		if err := z.need(); err != nil {
 			return err
 		}
-		e := z.literals.find(z.hold)
-		z.hold >>= e.bits
-		z.bits -= uint(e.bits)
-		for e.bits != 0 && e.symbol < 256 { // more literals, as long as bits and room last
-			z.out[z.n] = byte(e.symbol)
-			z.n++
-			if z.bits < 48 || z.n > len(z.out)-longest {
-				break
-			}
-			e = z.literals.find(z.hold)
-			z.hold >>= e.bits
-			z.bits -= uint(e.bits)
+		n, hold, known := z.n, z.hold, z.bits
+		e := z.literals.find(hold)
+		for e.bits() != 0 && e.symbol() < 256 && n < len(z.out)-longest && known >= 2*15 { // this code and the next
+			z.out[n] = byte(e.symbol())
+			n++
+			hold >>= e.bits()
+			known -= e.bits()
+			e = z.literals.find(hold)
 		}
-		switch {
-		case e.bits == 0:
+		z.n, z.hold, z.bits = n, hold>>e.bits(), known-e.bits()
+		switch symbol := e.symbol(); {
+		case e.bits() == 0:
 			return z.cut(errPacked)
-		case e.symbol < 256:
-			continue
-		case e.symbol == 256:
+		case symbol < 256:
+			z.out[z.n] = byte(symbol)
+			z.n++
+		case symbol == 256:
 			z.inBlock = false
 			return z.cut(nil)
-		}
-		if err := z.repeat(int(e.symbol) - 257); err != nil {
-			return z.cut(err)
+		default:
+			if err := z.repeat(symbol - 257); err != nil {
+				return z.cut(err)
+			}
 		}
 	}
 	return z.cut(nil)
@@ -238,29 +237,30 @@ func (z *inflater) repeat(code int) error {
 			return err
 		}
 	}
-	hold, used := z.hold, uint(lengthExtra[code])
-	length := int(lengthBase[code]) + int(hold&(1<<used-1))
-	hold >>= used
+	hold, known := z.hold, z.bits
+	extra := uint(lengthExtra[code])
+	length := int(lengthBase[code]) + int(hold&(1<<extra-1))
+	hold >>= extra
+	known -= extra
 	d := z.distance.find(hold)
-	if d.bits == 0 || int(d.symbol) >= len(farBase) {
+	if d.bits() == 0 || d.symbol() >= len(farBase) {
 		return errPacked
 	}
-	hold >>= d.bits
-	extra := uint(farExtra[d.symbol])
-	far := int(farBase[d.symbol]) + int(hold&(1<<extra-1))
-	z.hold = hold >> extra
-	z.bits -= used + uint(d.bits) + extra
+	hold >>= d.bits()
+	extra = uint(farExtra[d.symbol()])
+	far := int(farBase[d.symbol()]) + int(hold&(1<<extra-1))
+	z.hold, z.bits = hold>>extra, known-d.bits()-extra
 	n := z.n
 	if far > n {
 		return errPacked
 	}
-	if far >= length {
-		copy(z.out[n:n+length], z.out[n-far:n-far+length])
-	} else {
-		for i := n; i < n+length; i++ {
-			z.out[i] = z.out[i-far]
-		}
-	}
 	z.n = n + length
+	if far >= length {
+		copy(z.out[n:n+length], z.out[n-far:])
+		return nil
+	}
+	for from := n - far; n < z.n; n, from = n+1, from+1 {
+		z.out[n] = z.out[from]
+	}
 	return nil
 }
