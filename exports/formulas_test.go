@@ -24,6 +24,7 @@ func TestVerifyFormulas(t *testing.T) {
 		{"shared with other cells", workings, "<f>COUNT", `<f t="shared" ref="B6:B9" si="0">COUNT`, "Workings!B"},
 		{"over an area", workings, "<f>COUNT", `<f t="array" ref="B6:C9">COUNT`, "Workings!B"},
 		{"a formula among the results", results, "<v>12</v>", "<f>6+6</f><v>12</v>", "Results!"},
+		{"a number format", "xl/styles.xml", `<xf numFmtId="0" fontId="2" fillId="0" borderId="0" xfId="0" applyFont`, `<xf numFmtId="10" fontId="2" fillId="0" borderId="0" xfId="0" applyFont`, "number format"},
 		{"a hidden column", workings, `max="4" `, `max="4" hidden="1" `, "hidden"},
 	} {
 		t.Run(c.name, func(t *testing.T) {

@@ -131,6 +131,8 @@ func compareCell(name string, w *cell, g *cells.Cell, formulas map[string]string
 		say("%s!%s: found a formula, want a value", name, g.Name())
 	case w.formula != "" && (!g.Formula || formulas[g.Name()] != w.formula):
 		say("%s!%s: found the formula %q, want %q", name, g.Name(), formulas[g.Name()], w.formula)
+	case g.Format != "": // no sheet of ours has one: it could show another number than the cell holds
+		say("%s!%s: found the number format %q, want none", name, g.Name(), g.Format)
 	case w.number != nil:
 		if x, err := strconv.ParseFloat(g.Text, 64); err != nil || g.Kind != cells.Number || x != *w.number {
 			say("%s!%s: found %q, want %s", name, g.Name(), g.Text, shortest(*w.number))

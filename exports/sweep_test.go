@@ -6,6 +6,7 @@ import (
 	"compress/flate"
 	"flag"
 	"io"
+	"strings"
 	"testing"
 
 	"lotpair/exports"
@@ -37,6 +38,50 @@ func TestVerifyByteFlips(t *testing.T) {
 		}
 	}
 	t.Logf("%d bytes, every %dth twice; %d called intact, all %d with the same content", len(pkg), *sweepStep, intact, same)
+}
+
+// TestVerifyEveryPart changes, drops and doubles the content of every part of a signed record, one at a time.
+func TestVerifyEveryPart(t *testing.T) {
+	pkg := signedOnce(t)
+	for part := range unzip(t, pkg) {
+		for what, edit := range map[string]func([]byte) []byte{
+			"a byte more":    func(b []byte) []byte { return append(bytes.Clone(b), ' ') },
+			"a byte less":    func(b []byte) []byte { return bytes.Clone(b[:max(0, len(b)-1)]) },
+			"another byte":   func(b []byte) []byte { return flipped(b) },
+			"no such part":   func([]byte) []byte { return nil },
+			"nothing inside": func([]byte) []byte { return []byte{} },
+		} {
+			changed := false
+			b := rezip(t, pkg, func(name string, b []byte) []byte {
+				if name != part {
+					return b
+				}
+				out := edit(b)
+				changed = out == nil || !bytes.Equal(out, b)
+				return out
+			})
+			v := exports.Verify(b, nil)
+			if changed && (v.State == exports.Intact || v.State == exports.Incomplete) && !harmless(part, what) {
+				t.Errorf("%s, %s: called %s", part, what, v.State)
+			}
+			if changed && len(v.Reasons) == 0 && !harmless(part, what) {
+				t.Errorf("%s, %s: no reason", part, what)
+			}
+		}
+	}
+}
+
+// harmless are changes that carry no content: white space after the end of a document that no signature covers by its bytes.
+func harmless(part, what string) bool {
+	return what == "a byte more" && (part == "[Content_Types].xml" || strings.HasSuffix(part, ".rels") || strings.HasPrefix(part, "_xmlsignatures/sig"))
+}
+
+func flipped(b []byte) []byte {
+	out := bytes.Clone(b)
+	if len(out) > 0 {
+		out[len(out)/2] ^= 0x20
+	}
+	return out
 }
 
 // sameContent says whether two archives hold the same entries with the same bytes.

@@ -3,7 +3,6 @@ package exports
 import (
 	"fmt"
 	"math"
-	"regexp"
 	"strings"
 
 	"lotpair/importers/cells"
@@ -46,8 +45,6 @@ type workings struct {
 	at    map[string]string // name of a figure to the cell that holds it
 }
 
-var placeholder = regexp.MustCompile(`\{[a-z0-9_.]+\}`)
-
 // derive adds a line whose formula names other figures in braces. A figure that the record does not state has no line.
 func (w *workings) derive(name string, stated *float64, formula, how string) {
 	if stated == nil {
@@ -58,13 +55,8 @@ func (w *workings) derive(name string, stated *float64, formula, how string) {
 
 func (w *workings) line(name string, value *float64, formula, how string, stated bool) {
 	row := len(w.sheet.rows) + 1
-	complete := true
-	formula = placeholder.ReplaceAllStringFunc(formula, func(m string) string {
-		at, ok := w.at[m[1:len(m)-1]]
-		complete = complete && ok
-		return at
-	})
-	if !complete { // rests on a figure that does not exist
+	formula, ok := w.fill(formula)
+	if !ok { // rests on a figure that does not exist
 		return
 	}
 	here := cells.Name(workingsFormula, row)
@@ -77,6 +69,25 @@ func (w *workings) line(name string, value *float64, formula, how string, stated
 		difference = cell{number: &zero, formula: here + "-" + cells.Name(workingsStated, row), look: ruledNumberLook}
 	}
 	w.sheet.addTall(lines(how, 76)*13+2, text(name, ruledLook), computed, beside, difference, text(how, ruledWrapLook))
+}
+
+// fill puts cells in the place of the names in braces; false where a figure has none.
+func (w *workings) fill(formula string) (string, bool) {
+	var b strings.Builder
+	for {
+		before, rest, ok := strings.Cut(formula, "{")
+		b.WriteString(before)
+		if !ok {
+			return b.String(), true
+		}
+		name, after, _ := strings.Cut(rest, "}")
+		at, known := w.at[name]
+		if !known {
+			return "", false
+		}
+		b.WriteString(at)
+		formula = after
+	}
 }
 
 // given adds a line of the criterion: a number that nothing derives.
