@@ -12,7 +12,7 @@ import (
 // with a decimal mark behind them, several of them, or with the mark that the plan says is not the decimal mark.
 // The value is rounded once (strconv, to nearest even); decimals are the decimal places written.
 func ParseNumber(text string, decimal byte) (value float64, decimals int, err *Problem) {
-	if value, decimals, ok := plainNumber(text, decimal); ok {
+	if value, decimals, ok := quickNumber(text, decimal); ok {
 		return value, decimals, nil
 	}
 	return parseNumber(text, decimal)

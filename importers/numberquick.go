@@ -2,9 +2,9 @@ package importers
 
 import "strconv"
 
-// plainNumber reads what most cells hold without taking it apart: perhaps a minus sign, digits, perhaps the known decimal
+// quickNumber reads what most cells hold without taking it apart: perhaps a minus sign, digits, perhaps the known decimal
 // mark and more digits. Everything else, and what is wrong, is left to splitNumber; both give the same.
-func plainNumber(text string, decimal byte) (value float64, decimals int, ok bool) {
+func quickNumber(text string, decimal byte) (value float64, decimals int, ok bool) {
 	var b [24]byte
 	if len(text) > len(b) {
 		return 0, 0, false
