@@ -37,11 +37,11 @@ func numbersBook(tb testing.TB, rows, cols int, odd bool) []byte {
 			v := strconv.AppendFloat(nil, 25+0.01*random.NormFloat64(), 'g', 17, 64)
 			switch {
 			case odd && c%2 == 0:
-				fmt.Fprintf(&b, "<x:c s='1' ><x:v><![CDATA[%s]]></x:v></x:c>", v)
+				fmt.Fprintf(&b, "<x:c s='2' ><x:v><![CDATA[%s]]></x:v></x:c>", v)
 			case odd:
 				fmt.Fprintf(&b, "<x:c r='%s'><!-- --><x:v>%s</x:v></x:c>", Name(c, r), v)
 			default:
-				fmt.Fprintf(&b, `<c r="%s" s="1"><v>%s</v></c>`, Name(c, r), v)
+				fmt.Fprintf(&b, `<c r="%s" s="2"><v>%s</v></c>`, Name(c, r), v)
 			}
 		}
 		if odd {

@@ -44,10 +44,10 @@ func TestInflate(t *testing.T) {
 			}
 			half := len(want) / 2
 			for _, part := range [][]byte{want[:half], want[half:]} {
-				if _, err := w.Write(part); err == nil {
-					err = w.Flush() // ends a block and begins a stored one
+				if _, err := w.Write(part); err != nil {
+					t.Fatal(err)
 				}
-				if err != nil {
+				if err := w.Flush(); err != nil { // ends a block and begins a stored one
 					t.Fatal(err)
 				}
 			}
