@@ -10,19 +10,34 @@ import (
 // alignedDelimiter is what Book.Delimiter says of a text whose columns stand below each other.
 const alignedDelimiter = "spaces"
 
+// rare says whether a delimiter stands in fewer than half of the first lines that hold something: it belongs to the text of
+// a report rather than to its table.
+func rare(text, delimiter string) bool {
+	with, all := 0, 0
+	for _, line := range strings.SplitN(text[:min(len(text), 64<<10)], "\n", 200) {
+		if strings.TrimSpace(line) != "" {
+			all++
+		}
+		if strings.Contains(line, delimiter) {
+			with++
+		}
+	}
+	return 2*with < all
+}
+
 // readSpaced reads a text that is a measuring report, or that has no delimiter and is a table whose columns stand below each
 // other; false where it is neither. Reports may have tabs between their columns.
 func readSpaced(text string, offset int, delimiter string) (textFile, bool, error) {
-	if delimiter != "" && !slices.ContainsFunc(strings.SplitN(text[:min(len(text), 64<<10)], "\n", 2*lookHeadings), func(l string) bool { _, _, ok := reportHeading(l); return ok }) {
+	if delimiter == "\t" && !slices.ContainsFunc(strings.SplitN(text[:min(len(text), 64<<10)], "\n", 2*lookHeadings), func(l string) bool { _, _, ok := reportHeading(l); return ok }) {
 		return textFile{}, false, nil
 	}
 	lines := lineTexts(text)
 	if err := tooMany(lines); err != nil {
-		return textFile{}, delimiter == "", err
+		return textFile{}, delimiter != "\t", err
 	}
 	t, ok, err := readReport(lines, offset)
 	switch {
-	case delimiter != "" && (!ok || err == nil && t.report.plain()):
+	case delimiter == "\t" && (!ok || err == nil && t.report.plain()):
 		return textFile{}, false, nil
 	case ok:
 		return t, true, err

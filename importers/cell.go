@@ -37,6 +37,9 @@ func takeCell(c cells.Cell, isText bool, unit string, decimal byte) taken {
 		if err != nil {
 			return taken{problem: err}
 		}
+		if u := formatUnit(c.Format); u != "" && unit != "" && unitKey(u) != unitKey(unit) {
+			return taken{problem: problem(OtherUnit, c.Text, want+"; its number format shows "+u)}
+		}
 		return taken{isValue: true, value: v, decimals: storedDecimals(v)}
 	case cells.FormulaNoValue:
 		return taken{problem: problem(FormulaWithoutValue, c.Text, want+", not a formula without a stored value")}
@@ -62,7 +65,13 @@ func takeText(text string, isText bool, unit string, decimal byte, want string) 
 	number := text
 	if err != nil {
 		n, u, ok := cutUnit(text)
+		if !ok && err.Code == NotANumber && dateText(text) {
+			return taken{problem: problem(DateValue, text, want+", not a date or time")}
+		}
 		if !ok {
+			if odd := oddCharacter(text); odd != "" && err.Code == NotANumber {
+				err.Want += " in the digits 0 to 9; it holds the character " + odd
+			}
 			return taken{problem: err}
 		}
 		if unit == "" || unitKey(u) != unitKey(unit) {

@@ -20,7 +20,7 @@ func (t *table) sortRows() error {
 		switch {
 		case t.beyondTable(r.Number):
 			continue
-		case t.comment(r):
+		case t.comment(r), t.book.IsText && len(r.Cells) == 1 && len(r.Cells[0].Text) > 3 && ruler(r.Cells[0].Text):
 			t.mark(i, roleComment)
 		case t.sectionTitle(r.Number):
 			t.mark(i, roleLot)

@@ -2,9 +2,7 @@ package importers
 
 import (
 	"fmt"
-	"math"
 	"slices"
-	"strconv"
 	"strings"
 
 	"lotpair/importers/cells"
@@ -37,7 +35,9 @@ func (r *reader) takeReadings() error {
 		r.takeSummaries(t)
 	}
 	r.sayConversions()
-	return nil
+	r.sayMixed()
+	r.sayOdd()
+	return r.checkScales()
 }
 
 // take puts one cell where it belongs: a reading, or an entry of the ledger, or both.
@@ -162,50 +162,9 @@ func (t *table) sayFormats(rows []row, col int, name string) {
 		t.warn("percent-format", "%s: %s shown in percent and taken as stored, a hundredth of what is shown (%s).", name, qa.Count(len(percent), "cell is", "cells are"), join2(percent))
 	}
 	if len(formulas) > 0 {
-		t.warn("formula-cells", "%s: %s computed by a formula; the stored value is taken (%s).", name, qa.Count(len(formulas), "reading is", "readings are"), join2(formulas))
+		t.warn("formula-cells", "%s: %s computed by a formula; the value stored when the file was last calculated is taken, which may be stale (%s).", name, qa.Count(len(formulas), "reading is", "readings are"), join2(formulas))
 	}
-}
-
-// ordered puts the rows in the order of the order column where it holds numbers, dates or ISO times in every row, else it
-// leaves the order of the file, which is said.
-func (t *table) ordered(rows []row) []row {
-	if t.order == 0 {
-		return rows
-	}
-	type key struct {
-		number float64
-		text   string
-	}
-	keys := map[int]key{}
-	texts, numbers := 0, 0
-	for _, r := range rows {
-		c := t.cell(r, t.order)
-		s := trimmed(c.Text)
-		if v, err := strconv.ParseFloat(s, 64); err == nil && (c.Kind == cells.Number || c.Kind == cells.Date || c.Kind == cells.Text) && !math.IsNaN(v) {
-			keys[r.at] = key{number: v}
-			numbers++
-		} else if len(s) >= 10 && s[4] == '-' && s[7] == '-' && digits(s[:4]+s[5:7]+s[8:10]) {
-			keys[r.at] = key{text: strings.Replace(s, "T", " ", 1)}
-			texts++
-		}
-	}
-	if numbers != len(rows) && texts != len(rows) {
-		t.say("%s does not hold a number, date or ISO time in every row; the readings stay in the order of the file.", t.columnText(t.order))
-		return rows
-	}
-	sorted := slices.Clone(rows)
-	slices.SortStableFunc(sorted, func(a, b row) int {
-		x, y := keys[a.at], keys[b.at]
-		switch {
-		case x.number < y.number:
-			return -1
-		case x.number > y.number:
-			return 1
-		}
-		return strings.Compare(x.text, y.text)
-	})
-	t.say("the readings are put in the order of %s.", t.columnText(t.order))
-	return sorted
+	t.sayCells(rows, col, name)
 }
 
 // checkRepeats refuses an id that stands twice in a lot: the part would count twice.

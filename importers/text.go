@@ -45,7 +45,7 @@ func readText(text string) (textFile, error) {
 	if t.delimiter == "" {
 		t.delimiter = detectDelimiter(s.rest)
 	}
-	if t.delimiter == "" || t.delimiter == "\t" {
+	if t.delimiter == "" || t.delimiter == "\t" || record == 0 && rare(s.rest, t.delimiter) {
 		if spaced, ok, err := readSpaced(s.rest, record, t.delimiter); ok || err != nil {
 			spaced.comments = append(t.comments, spaced.comments...)
 			spaced.rows = append(t.rows, spaced.rows...)
