@@ -50,6 +50,9 @@ func record(t testing.TB) qa.Record {
 				if j == 0 && i < len(hostile) {
 					one.Source.Text = hostile[i]
 				}
+				if j == 2 {
+					one.Group, one.Order = "heat "+hostile[i%3], "2026-03-02T10:"+strconv.Itoa(i)
+				}
 				if j == 1 && i == 3 {
 					one.LeftOut = "@dropped"
 				}

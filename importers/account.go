@@ -107,6 +107,8 @@ func (t *table) giveRest(used map[int]bool) {
 				as = roleOrder
 			case c.Col == t.group:
 				as = roleGroup
+			case c.Col == t.pair:
+				as = rolePair
 			case headed[c.Col]:
 				as = roleOtherColumn
 			default:

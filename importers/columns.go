@@ -109,7 +109,7 @@ func (t *table) groupOf(r row) string {
 	if t.group == 0 {
 		return ""
 	}
-	return filledText(t.cell(r, t.group))
+	return filledText(t.merged(r, t.group))
 }
 
 // counts says whether a column holds whole numbers that count up by one within each lot and group, three rows or more, at least two of
@@ -153,7 +153,7 @@ func (t *table) findMeasured() error {
 				faults = append(faults, faultsOf(err)...)
 				continue
 			}
-			if col == t.lot || col == t.group || col == t.part && t.reading.PartColumn != "" || slices.Contains(t.measured, col) {
+			if col == t.lot || col == t.group || col == t.pair || col == t.part && t.reading.PartColumn != "" || slices.Contains(t.measured, col) {
 				faults = append(faults, Fault{Place: t.place(), Text: "characteristic " + quoted(ch.Name) + ": found " + t.columnText(col) +
 					", which plays another part already, want a column of its own; correct the plan"})
 			}
@@ -166,7 +166,7 @@ func (t *table) findMeasured() error {
 	}
 	rows := t.wanted()
 	for _, c := range t.columns {
-		if c.col == t.lot || c.col == t.part || c.col == t.order || c.col == t.group {
+		if c.col == t.lot || c.col == t.part || c.col == t.order || c.col == t.group || c.col == t.pair {
 			continue
 		}
 		numbers, dates, filled := 0, 0, 0

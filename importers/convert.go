@@ -5,6 +5,7 @@ import (
 	"math"
 	"math/big"
 	"strconv"
+	"strings"
 
 	"lotpair/qa"
 )
@@ -202,6 +203,7 @@ func spaceUnit(u string) string {
 
 // writtenDecimals are the decimals of a number as its cell holds it.
 func writtenDecimals(text string) int {
+	text, _, _ = strings.Cut(text, "; ") // repeats of a part
 	number, _, _ := cutUnit(text)
 	for _, mark := range []byte{'.', ','} {
 		if v, d, err := ParseNumber(number, mark); err == nil {

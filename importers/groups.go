@@ -5,6 +5,7 @@ import (
 	"math"
 	"slices"
 
+	"lotpair/importers/cells"
 	"lotpair/qa"
 )
 
@@ -76,9 +77,54 @@ func (s *lotSide) shares(heading string) map[string]float64 {
 	}
 	out := map[string]float64{}
 	for _, r := range s.rows {
-		if g := filledText(t.cell(r, col)); g != "" {
+		if g := filledText(t.merged(r, col)); g != "" {
 			out[g]++
 		}
 	}
 	return out
+}
+
+// merged is a cell of a column of names; where it lies in cells merged down, the first of them.
+func (t *table) merged(r row, col int) cells.Cell {
+	c := t.cell(r, col)
+	if filledText(c) != "" || c.Row == 0 {
+		return c
+	}
+	for _, a := range t.sheet.Merged {
+		if a.FirstCol == c.Col && a.LastCol == c.Col && a.FirstRow < c.Row && c.Row <= a.LastRow {
+			return t.sheet.At(a.FirstCol, a.FirstRow)
+		}
+	}
+	return c
+}
+
+// checkNames refuses readings without a group or pair where the plan names a column for them.
+func (r *reader) checkNames() error {
+	var faults []Fault
+	for _, s := range r.sides {
+		for _, p := range []struct {
+			key, what string
+			col       int
+			of        func(qa.Reading) string
+		}{
+			{"reading.group_column", "group", s.table.group, func(x qa.Reading) string { return x.Group }},
+			{"reading.pair_column", "pair", s.table.pair, func(x qa.Reading) string { return x.Pair }},
+		} {
+			var at []string
+			for _, series := range s.lot.Series {
+				for _, x := range series.Readings {
+					if p.col > 0 && x.Used() && p.of(x) == "" {
+						at = append(at, x.Source.Place())
+					}
+				}
+			}
+			if len(at) > 0 {
+				faults = append(faults, Fault{Place: s.table.place(), Text: fmt.Sprintf("%s: found readings without a %s (%s), want one in each row; write it there, or name the cells under exclude with a reason", p.key, p.what, join2(at))})
+			}
+		}
+	}
+	if len(faults) > 0 {
+		return &PlanError{Faults: faults}
+	}
+	return nil
 }

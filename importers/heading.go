@@ -265,7 +265,7 @@ func (t *table) holds(col int) bool {
 	return false
 }
 
-// findPartColumn takes the plan's columns for parts, order and groups; what the plan leaves out is found once the rows are known.
+// findPartColumn takes the plan's columns for parts, order, groups and pairs; what the plan leaves out is found once the rows are known.
 func (t *table) findPartColumn() (err error) {
 	if name := t.reading.PartColumn; name != "" {
 		if t.part, err = t.only("reading.part_column", name); err != nil {
@@ -278,7 +278,12 @@ func (t *table) findPartColumn() (err error) {
 		}
 	}
 	if name := t.reading.GroupColumn; name != "" {
-		t.group, err = t.only("reading.group_column", name)
+		if t.group, err = t.only("reading.group_column", name); err != nil {
+			return err
+		}
+	}
+	if name := t.reading.PairColumn; name != "" {
+		t.pair, err = t.only("reading.pair_column", name)
 	}
 	return err
 }

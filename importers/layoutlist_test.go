@@ -47,6 +47,11 @@ func layoutCases() []layoutCase {
 			want: layoutWant{n: [2]int{15, 15}, mean: [2]float64{180.063 / 15, 180.205 / 15}, groups: []string{"L1", "L2", "L3"}, upper: 0.01521395},
 		},
 		{
+			name: "l7-d2-sources", shows: "the same for the claim on sources: the lots' means decide, not 15 against 15", files: one(nestedD2()),
+			plan: strings.Replace(planOf("lot = \"S1\"\nfile = \"own.xlsx\"", "lot = \"S2\"\nfile = \"own.xlsx\"", "lot_column = \"Supplier\"\ngroup_column = \"Lot\"", ""), "margin", "claim = \"sources\"\nmargin", 1),
+			want: layoutWant{n: [2]int{15, 15}, mean: [2]float64{180.063 / 15, 180.205 / 15}, groups: []string{"L1", "L2", "L3"}, upper: 0.02690429},
+		},
+		{
 			name: "l7-d3", shows: "cavities in another mix are told (D3)", files: one(nestedD3()),
 			plan: planOf("lot = \"REF\"\nfile = \"own.xlsx\"", "lot = \"CAND\"\nfile = \"own.xlsx\"", `group_column = "Cavity"`, ""),
 			want: layoutWant{n: [2]int{12, 12}, mean: [2]float64{60.53 / 12, 60.93 / 12}, groups: []string{"1", "2"}, upper: 0.068295, warnings: []string{"group-mix"}},

@@ -81,6 +81,15 @@ func nastyCases() []layoutCase {
 		}
 		columns = append(columns, []any{lot, num(fmt.Sprint(part)), num(v[0]), num(v[1]), num(v[2])})
 	})
+	groups := nestedD2()
+	for i, r := range groups[1:] {
+		if i%15 > 0 {
+			r[0] = nil
+		}
+		if i%5 > 0 {
+			r[1] = nil
+		}
+	}
 	averaged := d1.with(func(w *layoutWant) { w.repeats = 24 })
 	return []layoutCase{
 		{name: "n01", shows: "the table begins at D9", files: one(n01), plan: plain, want: d1},
@@ -89,6 +98,11 @@ func nastyCases() []layoutCase {
 		{name: "n04-wide", shows: "a mean without a label under the last reading", files: one(unlabelled), plan: plain, want: d1},
 		{name: "n04-unequal", shows: "the same under the shorter lot, beside a reading of the other", files: one(unequal), plan: plain, want: layoutWant{n: [2]int{12, 7}, mean: [2]float64{d1MeanReference, 84.044 / 7}}},
 		{name: "n09", shows: "the lot in the first of merged cells", files: one(merged, "A2:A13", "A14:A25"), plan: plain, want: d1.with(func(w *layoutWant) { w.warnings = []string{"lot-filled-down"} })},
+		{
+			name: "n09-groups", shows: "the supplier and the lot within it each in the first of merged cells", files: one(groups, "A2:A16", "A17:A31", "B2:B6", "B7:B11", "B12:B16", "B17:B21", "B22:B26", "B27:B31"),
+			plan: planOf("lot = \"S1\"\nfile = \"own.xlsx\"", "lot = \"S2\"\nfile = \"own.xlsx\"", "lot_column = \"Supplier\"\ngroup_column = \"Lot\"", ""),
+			want: layoutWant{n: [2]int{15, 15}, mean: [2]float64{180.063 / 15, 180.205 / 15}, groups: []string{"L1", "L2", "L3"}, upper: 0.01521395},
+		},
 		{name: "n10-wide", shows: "one lot in mm, the other in inch: stop", files: one(append([][]any{{"REF-0417 [mm]", "CAND-0931 [in]"}}, wide()[1:]...)), plan: planOf("lot = \"REF-0417 [mm]\"\nfile = \"own.xlsx\"", "lot = \"CAND-0931 [in]\"\nfile = \"own.xlsx\"", "", ""), want: layoutWant{fault: []string{`"in"`, `"mm"`}}},
 		{name: "n16", shows: "the candidate twice: not 0.009091", files: one(lotTwice), plan: plain, want: layoutWant{fault: []string{"12 part ids more than once", "part_column"}}},
 		{name: "n17", shows: "the candidate's column is a copy: read as it is, the comparison warns", files: one(copied), plan: plain, want: layoutWant{n: [2]int{12, 12}, mean: [2]float64{d1MeanReference, d1MeanReference}, finding: qa.WarnIdentical}},
@@ -96,6 +110,10 @@ func nastyCases() []layoutCase {
 		{name: "n20-unnamed", shows: "the same without part_column: stop", files: one(repeats), plan: plain, want: layoutWant{fault: []string{"part_column", "more than once"}}},
 		{name: "n20-columns", shows: "three readings a part in columns, averaged", files: one(columns, "C1:E1", "A1:A2", "B1:B2"), plan: planFor("own.xlsx", `part_column = "Part"`, characteristicOf(`name = "Bore dia"`)), want: averaged},
 		{name: "n22", shows: "the same parts in both lots in another order: each reading keeps its part", files: one(shuffled), plan: plain, want: d1},
+		{
+			name: "n22-paired", shows: "and is paired by it", files: one(shuffled), plan: strings.Replace(planFor("own.xlsx", `pair_column = "Part"`, ""), "margin", "method = \"paired\"\nmargin", 1),
+			want: d1.with(func(w *layoutWant) { w.upper = 0.009638 }),
+		},
 		{name: "n25", shows: "the lots' sheets state other limits: stop", files: []layoutFile{{name: "own.xlsx", sheets: []sheetOf{limitSheet("REF-0417", d1Reference, "12.05"), limitSheet("CAND-0931", d1Candidate, "12.04")}}}, plan: bySheet, want: layoutWant{fault: []string{"12.04", "12.05", "upper limit"}}},
 		{name: "n31-beside", shows: "two named tables side by side", files: one(abreast(append([][]any{{"REF-0417", nil}}, perLot("", d1Reference).rows...), append([][]any{{"CAND-0931", nil}}, perLot("", d1Candidate).rows...), 1)), plan: plain, want: d1},
 		{name: "n31-stacked", shows: "two named tables below each other", files: one(stacked), plan: plain, want: d1},

@@ -72,13 +72,16 @@ func (r *reader) takeNonDetect(series *qa.Series, entry *qa.Entry, got taken, t 
 	series.Readings = append(series.Readings, of)
 }
 
-// ofRow gives a reading what its row says beside the value: part, group and order.
+// ofRow gives a reading what its row says beside the value: part, group, pair and order.
 func (t *table) ofRow(row row, x qa.Reading) qa.Reading {
 	if t.part > 0 {
 		x.Part = filledText(t.cell(row, t.part))
 	}
 	if t.group > 0 {
-		x.Group = filledText(t.cell(row, t.group))
+		x.Group = filledText(t.merged(row, t.group))
+	}
+	if t.pair > 0 {
+		x.Pair = filledText(t.cell(row, t.pair))
 	}
 	if t.order > 0 {
 		x.Order = filledText(t.cell(row, t.order))

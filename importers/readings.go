@@ -15,7 +15,7 @@ func Read(plan qa.Plan, open func(file string) ([]byte, error)) (qa.Readings, er
 	r := &reader{plan: plan, books: map[string]Book{}}
 	for _, step := range []func() error{
 		func() error { return r.openBooks(open) }, r.chooseTables, r.chooseLots, r.chooseCharacteristics, r.settleMarks, r.settleNominals, r.resolveExclusions,
-		r.takeReadings, r.checkExclusions, r.checkDoubled, r.averageRepeats, r.checkRepeats,
+		r.takeReadings, r.checkExclusions, r.checkDoubled, r.checkNames, r.averageRepeats, r.checkRepeats,
 	} {
 		if err := step(); err != nil {
 			return qa.Readings{}, err

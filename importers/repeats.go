@@ -29,6 +29,11 @@ func (r *reader) averageRepeats() error {
 					by[partOf(x)] = append(by[partOf(x)], j)
 				}
 			}
+			for _, n := range series.NonDetected {
+				if at := by[[2]string{n.Group, n.Part}]; len(at) > 1 || len(at) == 1 && n.Substitute == nil {
+					return planError(n.Source.String(), "found %s among the repeat readings of the part %s, want numbers to average; name the cell or the part's others under exclude with a reason", quoted(n.Source.Text), quoted(n.Part))
+				}
+			}
 			if len(by) == len(series.Readings) {
 				continue
 			}
@@ -77,6 +82,9 @@ func (s *lotSide) average(series *qa.Series, by map[[2]string][]int) ([]qa.Readi
 		values, cellNames, texts := make([]float64, len(at)), make([]string, len(at)), make([]string, len(at))
 		for i, k := range at {
 			one := series.Readings[k]
+			if one.Pair != x.Pair {
+				return nil, planError(one.Source.String(), "found the pair %s, want %s as of the part's other readings (%s); correct the file, or part_column or pair_column in the plan", quoted(one.Pair), quoted(x.Pair), x.Source.Place())
+			}
 			values[i], cellNames[i], texts[i] = one.Value, one.Source.Cell, one.Source.Text
 			x.Decimals = max(x.Decimals, one.Decimals)
 		}

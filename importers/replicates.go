@@ -59,7 +59,7 @@ func (t *table) replicates(ch qa.Characteristic) []column {
 func (t *table) replicateRows(all [][]column, n int) {
 	head, _ := t.sheet.Row(t.heading)
 	rows, limits, physical, summary := t.rows, t.limits, t.columns, t.summary
-	lot, part, order, group := t.lot, t.part, t.order, t.group
+	lot, part, order, group, pair := t.lot, t.part, t.order, t.group, t.pair
 	at := func(r cells.Row, col int) cells.Cell {
 		if col == 0 {
 			return cells.Cell{}
@@ -68,6 +68,7 @@ func (t *table) replicateRows(all [][]column, n int) {
 	}
 	t.columns, t.rows, t.limits, t.summary, t.turned = nil, nil, map[int][]limit{}, nil, true
 	t.lot, t.part, t.order, t.group = min(lot, 1)*turnedLot, turnedPart, min(order, 1)*turnedOrder, min(group, 1)*turnedGroup
+	t.pair = min(pair, 1) * turnedPair
 	for i, cols := range all {
 		v := turnedFixed + i + 1
 		name := qa.JoinSpace(t.characteristics[i].Heading())
@@ -79,7 +80,7 @@ func (t *table) replicateRows(all [][]column, n int) {
 		t.say("%s is read from %s of repeat readings.", quoted(name), qa.Count(n, "column", "columns"))
 	}
 	turn := func(r cells.Row, name string, k int) row {
-		out := row{lot: name, cells: []cells.Cell{at(r, lot), at(r, part), at(r, order), at(r, group)}}
+		out := row{lot: name, cells: []cells.Cell{at(r, lot), at(r, part), at(r, order), at(r, group), at(r, pair)}}
 		for _, cols := range all {
 			out.cells = append(out.cells, r.At(cols[k].col))
 		}

@@ -55,7 +55,7 @@ func (t *table) readReport() error {
 	return nil
 }
 
-// reportKeys are the keys of the lines above each part that name lot, part, order and group.
+// reportKeys are the keys of the lines above each part that name lot, part, order, group and pair.
 func (t *table) reportKeys() ([turnedFixed]string, error) {
 	var keys [turnedFixed]string
 	var all []string
@@ -75,6 +75,7 @@ func (t *table) reportKeys() ([turnedFixed]string, error) {
 		{"reading.part_column", t.reading.PartColumn, partHeading},
 		{"reading.order_column", t.reading.OrderColumn, ""},
 		{"reading.group_column", t.reading.GroupColumn, ""},
+		{"reading.pair_column", t.reading.PairColumn, ""},
 	} {
 		if p.name != "" && values[word(p.name)] == nil {
 			return keys, t.refuse("%s: found the lines %s above the parts, want %s; correct the name in the plan", p.key, list(all), quoted(p.name))
@@ -99,8 +100,8 @@ func (t *table) reportKeys() ([turnedFixed]string, error) {
 			}
 		}
 	}
-	t.lot, t.part, t.order, t.group = 0, 0, 0, 0
-	for i, into := range []*int{&t.lot, &t.part, &t.order, &t.group} {
+	t.lot, t.part, t.order, t.group, t.pair = 0, 0, 0, 0, 0
+	for i, into := range []*int{&t.lot, &t.part, &t.order, &t.group, &t.pair} {
 		if keys[i] != "" {
 			*into = i + 1
 		}

@@ -111,7 +111,7 @@ func (t *table) turnSections() error {
 		return nil
 	}
 	physical, rows, summary := t.columns, t.rows, t.summary
-	part, order, group := t.part, t.order, t.group
+	part, order, group, pair := t.part, t.order, t.group, t.pair
 	for _, c := range physical {
 		if t.limits[c.col] != nil {
 			return t.refuse("found limits in tables below each other, want them in one place; state the limits in the plan and take them out of the sheet, or bring the tables into one")
@@ -119,8 +119,9 @@ func (t *table) turnSections() error {
 	}
 	t.columns, t.rows, t.summary, t.turned, t.lot = nil, nil, nil, true, turnedLot
 	t.part, t.order, t.group = min(part, 1)*turnedPart, min(order, 1)*turnedOrder, min(group, 1)*turnedGroup
+	t.pair = min(pair, 1) * turnedPair
 	for _, p := range physical {
-		if p.col == part || p.col == order || p.col == group || headingMeans(p.heading) == orderHeading {
+		if p.col == part || p.col == order || p.col == group || p.col == pair || headingMeans(p.heading) == orderHeading {
 			continue
 		}
 		head, _ := t.sheet.Row(t.heading)
@@ -134,7 +135,7 @@ func (t *table) turnSections() error {
 				s = x
 			}
 		}
-		out := row{lot: s.lot, cells: []cells.Cell{s.title, r.At(part), r.At(order), r.At(group)}}
+		out := row{lot: s.lot, cells: []cells.Cell{s.title, r.At(part), r.At(order), r.At(group), r.At(pair)}}
 		for _, c := range t.columns {
 			out.cells = append(out.cells, r.At(c.head.Col))
 		}

@@ -49,7 +49,7 @@ type table struct {
 	headingTop       int // of the first; 0 where it is the last
 	columns          []column
 	lot, part, order int // columns; 0 where there is none
-	group            int
+	group, pair      int
 	turned           bool // rows have their own cells: the lots or the parts stand in columns
 	feet             []footCell
 	keep             cells.Area    // the columns of this one of several tables side by side; none where 0
@@ -89,6 +89,7 @@ const (
 	rolePart
 	roleOrder
 	roleGroup
+	rolePair
 	roleOtherColumn
 	roleNoHeading
 	roleOtherLot
@@ -105,7 +106,7 @@ const (
 var roleNames = [roles]string{
 	roleOutside: "not in the table", roleAbove: "above the heading", roleComment: "comment lines", roleHeading: "headings",
 	roleUnit: "unit row", roleLimit: "limits and nominal values", roleSummary: "summary rows", roleLot: "lot names", rolePart: "part ids",
-	roleOrder: "order", roleGroup: "groups", roleOtherColumn: "columns not taken as measurements", roleNoHeading: "columns without a heading",
+	roleOrder: "order", roleGroup: "groups", rolePair: "pairs", roleOtherColumn: "columns not taken as measurements", roleNoHeading: "columns without a heading",
 	roleOtherLot: "other lots", roleNote: "notes", roleUsed: "readings used", roleLeftOut: "readings left out", roleMissing: "missing",
 	roleNonDetect: "non-detects", roleUnread: "not read as numbers",
 }

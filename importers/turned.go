@@ -7,13 +7,14 @@ import (
 	"lotpair/importers/cells"
 )
 
-// The columns of a turned table: the lot, the part, the order and the group of each row, then the characteristics.
+// The columns of a turned table: the lot, the part, the order, the group and the pair of each row, then the characteristics.
 const (
 	turnedLot = iota + 1
 	turnedPart
 	turnedOrder
 	turnedGroup
-	turnedFixed = turnedGroup
+	turnedPair
+	turnedFixed = turnedPair
 )
 
 // footCell is one cell of a summary in a turned table.
@@ -100,6 +101,10 @@ func (t *table) markTurned() {
 				t.give(c, roleOrder)
 			case turnedGroup:
 				t.give(c, roleGroup)
+			case turnedPair:
+				if c != r.cells[turnedPart-1] {
+					t.give(c, rolePair)
+				}
 			default:
 				t.give(c, roleOtherLot)
 			}

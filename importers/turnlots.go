@@ -9,7 +9,7 @@ import (
 )
 
 // parts of the columns that a block or the columns beside the blocks hold; 0 where there is none.
-type beside struct{ part, order, group int }
+type beside struct{ part, order, group, pair int }
 
 // turnLots turns a sheet with the lots side by side into rows: a row a part of a lot.
 func (t *table) turnLots() error {
@@ -53,7 +53,7 @@ func (t *table) turnLots() error {
 	if err := t.lotsOnce(); err != nil {
 		return err
 	}
-	t.columns, t.rows, t.limits, t.turned, t.part, t.order, t.group, t.lot = nil, nil, map[int][]limit{}, true, 0, 0, 0, turnedLot
+	t.columns, t.rows, t.limits, t.turned, t.part, t.order, t.group, t.pair, t.lot = nil, nil, map[int][]limit{}, true, 0, 0, 0, 0, turnedLot
 	for _, name := range names {
 		if err := t.turnColumn(name, where[name], limits); err != nil {
 			return err
@@ -97,6 +97,7 @@ func (t *table) besideOf(physical []column, among func(column) bool) (beside, er
 		{"reading.part_column", t.reading.PartColumn, partHeading, &b.part},
 		{"reading.order_column", t.reading.OrderColumn, "", &b.order},
 		{"reading.group_column", t.reading.GroupColumn, "", &b.group},
+		{"reading.pair_column", t.reading.PairColumn, "", &b.pair},
 	} {
 		var found []string
 		for _, c := range physical {
@@ -128,6 +129,7 @@ func (t *table) besideFound(all []beside, physical []column) error {
 		{"reading.part_column", t.reading.PartColumn, func(b beside) int { return b.part }},
 		{"reading.order_column", t.reading.OrderColumn, func(b beside) int { return b.order }},
 		{"reading.group_column", t.reading.GroupColumn, func(b beside) int { return b.group }},
+		{"reading.pair_column", t.reading.PairColumn, func(b beside) int { return b.pair }},
 	} {
 		if p.name != "" && !slices.ContainsFunc(all, func(b beside) bool { return p.col(b) > 0 }) {
 			return t.refuse("%s: found the headings %s, want %s; the nearest is %s: correct the name in the plan", p.key, list(headings), quoted(p.name), quoted(nearest(p.name, headings)))
@@ -150,7 +152,7 @@ func (t *table) blockColumns(b block, physical []column, own beside) []column {
 	}
 	var out []column
 	for _, c := range physical {
-		if c.col < b.first || c.col > b.last || c.col == own.part || c.col == own.order || c.col == own.group {
+		if c.col < b.first || c.col > b.last || c.col == own.part || c.col == own.order || c.col == own.group || c.col == own.pair {
 			continue
 		}
 		if means := headingMeans(c.heading); means == orderHeading || means == partHeading && !t.planned(c) {
@@ -223,11 +225,11 @@ func (t *table) turnBlock(i int, b block, rows []row, names []string, where map[
 		}
 		return shared
 	}
-	part, order, group := pick(own.part, shared.part), pick(own.order, shared.order), pick(own.group, shared.group)
+	part, order, group, pair := pick(own.part, shared.part), pick(own.order, shared.order), pick(own.group, shared.group), pick(own.pair, shared.pair)
 	for _, p := range []struct {
 		col, turned int
 		into        *int
-	}{{part, turnedPart, &t.part}, {order, turnedOrder, &t.order}, {group, turnedGroup, &t.group}} {
+	}{{part, turnedPart, &t.part}, {order, turnedOrder, &t.order}, {group, turnedGroup, &t.group}, {pair, turnedPair, &t.pair}} {
 		if p.col > 0 {
 			*p.into = p.turned
 		}
@@ -246,7 +248,7 @@ func (t *table) turnBlock(i int, b block, rows []row, names []string, where map[
 	}
 	turn := func(r cells.Row) row {
 		out := row{lot: filledText(b.lot), cells: make([]cells.Cell, 0, turnedFixed+len(taken))}
-		out.cells = append(out.cells, b.lot, at(r, part), at(r, order), at(r, group))
+		out.cells = append(out.cells, b.lot, at(r, part), at(r, order), at(r, group), at(r, pair))
 		for _, col := range taken {
 			out.cells = append(out.cells, at(r, col))
 		}

@@ -17,7 +17,7 @@ func (p *program) inspect(args []string) int {
 		"Shows how a file would be read: layout, heading, lots, characteristics, limits, and every cell that is not a number.",
 		"lotpair-cli inspect testdata/demo/hub-shell.xlsx")
 	f.StringVar(&sheet, "sheet", "", "look at sheet `S`")
-	f.StringVar(&layout, "layout", "", "read it in layout `L`: row-per-part")
+	f.StringVar(&layout, "layout", "", "read it in layout `L`: "+strings.Join(importers.Layouts, ", "))
 	f.BoolVar(&asJSON, "json", false, "print it as JSON (lotpair.inspect/1)")
 	f.BoolVar(&asPlan, "plan", false, "print a plan file to start from")
 	pos, code, err := f.parse(args, "FILE")
