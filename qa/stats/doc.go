@@ -3,6 +3,8 @@
 // one-sided tests, the ratio of standard deviations, and a few checks on one
 // group (outlier, runs, lag-1 correlation, resolution, capability).
 //
+// Design, FractionDesign and Size plan a study: its power, and its sample size.
+//
 // It takes float64 and returns structs; it knows no names, units or verdicts.
 // No function changes its input. Readings must be finite numbers.
 package stats

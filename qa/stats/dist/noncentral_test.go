@@ -74,6 +74,14 @@ func TestNoncentralEdges(t *testing.T) {
 		{"NoncentralTUpper", []float64{1, 7, 1000}, 1},
 		{"NoncentralTLower", []float64{-1e9, 1e6, 1}, 0},
 		{"NoncentralTLower", []float64{1, 0, 2}, nan},
+		{"NoncentralTLower", []float64{1, 0.49, 2}, nan},
+		{"NoncentralTUpper", []float64{1.7, 18, 1e300}, 1},
+		{"NoncentralTLower", []float64{-1.7, 18, 1e300}, 0},
+		{"NoncentralTLower", []float64{0, 18, 1e60}, 0},
+		{"NoncentralTLower", []float64{1e60, 4, 1e60}, ChiSquareUpper(4, 4)},
+		{"NoncentralTUpper", []float64{1e300, 7, 3}, 0},
+		{"NoncentralTLower", []float64{-1e300, 7, 3}, 0},
+		{"NoncentralTQuantile", []float64{0.5, 3, 1e60}, nan},
 		{"NoncentralTLower", []float64{nan, 3, 2}, nan},
 		{"NoncentralTLower", []float64{1, 3, nan}, nan},
 		{"NoncentralTLower", []float64{1, 3, inf}, nan},
@@ -85,7 +93,7 @@ func TestNoncentralEdges(t *testing.T) {
 		{"NoncentralTQuantile", []float64{nan, 3, 2}, nan},
 		{"NoncentralTQuantile", []float64{0.5, -3, 2}, nan},
 		{"NoncentralTQuantile", []float64{0.5, 3, inf}, nan},
-		{"NoncentralTQuantile", []float64{1e-300, 0.1, 2}, -inf},
+		{"NoncentralTQuantile", []float64{1e-300, 0.5, 2}, -inf},
 	} {
 		got := functions[c.name](c.args)
 		if got != c.want && !(math.IsNaN(got) && math.IsNaN(c.want)) {
@@ -130,6 +138,36 @@ func TestNoncentralRoundTrip(t *testing.T) {
 		moved := math.Abs(q) * noncentralDensity(q, df, delta) / p
 		if !(math.Abs(got-p) <= p*(1e-12+moved*2e-13)) {
 			t.Fatalf("df %v delta %v: got p %v of quantile %v, want %v", df, delta, got, q, p)
+		}
+	})
+}
+
+// FuzzNoncentral: whatever the arguments, an answer is a probability or NaN, in
+// finite time.
+func FuzzNoncentral(f *testing.F) {
+	for _, c := range [][4]float64{
+		{1.5, 58, 2, 0.3},
+		{-1e300, 0.5, 1e300, 1e-300},
+		{1e-300, 1e19, -1e49, 0.5},
+		{1e99, 0.5, 3, 1 - 0x1p-53},
+		{3e49, 1e9, 1e50, 0.9},
+		{-40, 1e6, 38, 1e-9},
+		{1e100, 2, 1e50, 1e-15},
+	} {
+		f.Add(c[0], c[1], c[2], c[3])
+	}
+	f.Fuzz(func(t *testing.T, v, df, delta, p float64) {
+		for _, got := range []float64{
+			NoncentralTLower(v, df, delta), NoncentralTUpper(v, df, delta), ChiSquareLower(v, min(df, 1e12)), ChiSquareUpper(v, min(df, 1e12)),
+			OwenQ1(df, v, delta, p), StudentBetween(v, df, delta, p),
+		} {
+			if !math.IsNaN(got) && !(got >= 0 && got <= 1+1e-12) {
+				t.Errorf("t %v, df %v, delta %v, p %v: got %v, want a probability", v, df, delta, p, got)
+			}
+		}
+		q := NoncentralTQuantile(p, df, delta)
+		if back := NoncentralTLower(q, df, delta); df >= 1 && df < 1e6 && math.Abs(delta) < 1e6 && p > 1e-12 && p < 0.999 && !(math.Abs(back-p) <= 1e-7) {
+			t.Errorf("df %v, delta %v: got %v of the quantile %v, want %v", df, delta, back, q, p)
 		}
 	})
 }

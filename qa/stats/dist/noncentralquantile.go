@@ -5,10 +5,11 @@ import "math"
 // NoncentralTQuantile returns the t with P(T <= t) = p for the noncentral t
 // distribution with df degrees of freedom and noncentrality delta. It is minus
 // and plus infinity at p = 0 and 1. Its relative error is at most 2e-13 where the
-// probability pins it down so far, which it does not near t = 0.
+// probability pins it down so far, which it does not near t = 0. A df below 0.5 and
+// a delta beyond 1e50 give NaN.
 func NoncentralTQuantile(p, df, delta float64) float64 {
 	switch {
-	case !(p >= 0 && p <= 1) || math.IsNaN(df) || df <= 0 || math.IsNaN(delta) || math.IsInf(delta, 0):
+	case !(p >= 0 && p <= 1) || !(df >= fewestFreedoms) || !(math.Abs(delta) <= farDelta):
 		return math.NaN()
 	case p == 0 || p == 1 || delta == 0:
 		return StudentQuantile(p, df)
@@ -118,6 +119,10 @@ func (s search) root(v float64) float64 {
 
 // noncentralDensity is the density at t to about seven digits.
 func noncentralDensity(t, df, delta float64) float64 {
+	if math.Abs(t) > farT {
+		lower, upper := noncentralTails(t, df, delta)
+		return df * min(lower, upper) / math.Abs(t)
+	}
 	tau, d := t, delta
 	if t >= delta {
 		tau, d = -t, -delta

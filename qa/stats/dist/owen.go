@@ -15,18 +15,24 @@ func OwenQ2(df, t, delta, r float64) float64 {
 }
 
 func owen(df, t, delta, from, to float64) float64 {
-	if !proper(df) || math.IsNaN(t) || math.IsInf(t, 0) || math.IsNaN(delta) || math.IsInf(delta, 0) || !(from >= 0 && to >= 0) {
+	if !(df >= fewestFreedoms) || !proper(df) || math.IsNaN(t) || math.IsInf(t, 0) || math.IsNaN(delta) || math.IsInf(delta, 0) || !(from >= 0 && to >= 0) {
 		return math.NaN()
 	}
-	c := chi{df: df, rate: math.Abs(t), mixture: mixture{df: df, tau: t, delta: delta, lead: chiLead(df)}}
+	c := chi{df: df, mixture: mixture{df: df, tau: t, delta: delta, lead: chiLead(df)}}
+	switch {
+	case t > 0:
+		c.rate, c.steep, c.flat = t, (delta-nothing)/t, (delta+whole)/t
+	case t < 0:
+		c.rate, c.steep, c.flat = -t, (delta+whole)/t, (delta-nothing)/t
+	}
 	root := math.Sqrt(df)
 	if s := from / root; s > 1 && !math.IsInf(s, 1) { // a tail of chi, small against the whole
 		c.gain = df / 2 * (s*s - 1 - 2*math.Log(s))
 	}
-	return c.integral(from/root, to/root, func(u float64) float64 {
+	return min(1, c.integral(from/root, to/root, func(u float64) float64 {
 		weight, x, _ := c.at(u)
 		return weight * NormalLower(x)
-	})
+	}))
 }
 
 // StudentBetween returns P(t S - below <= Z <= above - t S) for Z standard normal
@@ -39,7 +45,7 @@ func owen(df, t, delta, from, to float64) float64 {
 // The relative error is about 1e-13 above 1e-40, 1e-12 above 1e-100.
 func StudentBetween(t, df, below, above float64) float64 {
 	switch {
-	case !proper(df) || !(t > 0) || math.IsInf(t, 1) || math.IsNaN(below) || math.IsNaN(above):
+	case !(df >= fewestFreedoms) || !proper(df) || !(t > 0) || math.IsInf(t, 1) || math.IsNaN(below) || math.IsNaN(above):
 		return math.NaN()
 	case math.IsInf(below, -1) || math.IsInf(above, -1) || below+above <= 0:
 		return 0
@@ -50,9 +56,10 @@ func StudentBetween(t, df, below, above float64) float64 {
 	case math.IsInf(below, 1):
 		return NoncentralTUpper(t, df, above)
 	}
-	c := chi{df: df, rate: t, mixture: mixture{df: df, lead: chiLead(df)}}
+	near := min(below, above)
+	c := chi{df: df, rate: t, steep: (near - whole) / t, flat: (near + nothing) / t, mixture: mixture{df: df, lead: chiLead(df)}}
 	total := below + above
-	if near := min(below, above); near < t { // Phi(near)/Phi(near-t), roughly
+	if near < t { // Phi(near)/Phi(near-t), roughly
 		c.gain = (near-t)*(near-t)/2 - min(0, near)*min(0, near)/2
 	}
 	return min(1, c.integral(0, total/(2*t), func(u float64) float64 {
@@ -77,11 +84,17 @@ func normalBetween(low, high, width float64) float64 {
 	return (math.Erfc(low*math.Sqrt2/2) - math.Erfc(high*math.Sqrt2/2)) / 2
 }
 
+// Beyond these a normal tail is nothing to float64, or nothing beside 1.
+const (
+	nothing = 40
+	whole   = 9
+)
+
 // chi is an integral over s, where df s^2 is chi-square with df degrees of
-// freedom, of something that varies with s at a rate like Phi(rate s).
-// gain is how much larger that may be at s = 0 than at 1, as a logarithm.
+// freedom, of something that varies like Phi(rate s) from s = steep to flat and not
+// elsewhere. gain is how much larger that may be at s = 0 than at 1, as a logarithm.
 type chi struct {
-	df, rate, gain float64
+	df, rate, steep, flat, gain float64
 	mixture
 }
 
@@ -112,27 +125,35 @@ func (c chi) integral(from, to float64, value func(u float64) float64) float64 {
 	if !(low < high) {
 		return 0
 	}
-	if c.df >= 20 && high < math.Log(to) && low > math.Log(from) {
+	s := math.Exp(high)
+	if fast := c.fast(s); c.df >= 20 && high < math.Log(to) && low > math.Log(from) && (high-low)*fast < 200 {
 		// Nothing is cut off: the trapezoidal rule does it with half the points. Its
 		// error is 2 exp(-2 (pi/0.7)^2), 4e-18 (see mixture).
-		s := math.Exp(high)
-		step := 0.7 / math.Sqrt(2*c.df*s+c.rate*s*c.rate*s)
 		sum := 0.0
-		for u := low; u < high; u += step {
+		for u := low; u < high; u += 0.7 / fast {
 			sum += value(u)
 		}
-		return sum * step
+		return sum * 0.7 / fast
 	}
-	// Panels short against the rates of the two factors, which both slow down
-	// with s; 48 points see 24 radians to the last digit, found by trial.
+	first, second := math.Log(max(0, c.steep)), math.Log(max(0, c.flat))
+	calm := c
+	calm.rate = 0
+	return calm.panels(low, min(high, first), value) + c.panels(max(low, first), min(high, second), value) + calm.panels(max(low, second), high, value)
+}
+
+// fast is how fast the integrand may vary over u at s.
+func (c chi) fast(s float64) float64 { return math.Sqrt(2*c.df*s + c.rate*s*c.rate*s) }
+
+// panels integrates from low to high in panels that are short against the rates of
+// the two factors, which both slow down with s; 48 points see 24 radians to the last
+// digit, found by trial.
+func (c chi) panels(low, high float64, value func(u float64) float64) float64 {
 	const most = 24
 	sum := 0.0
 	for low < high {
-		s := math.Exp(high)
-		fast := math.Sqrt(2*c.df*s + c.rate*s*c.rate*s)
+		fast := c.fast(math.Exp(high))
 		width := min(high-low, max(2, most/fast))
-		panels := 1 + int(min(fast*width/most, 4096))
-		sum += legendre(value, high-width, high, panels)
+		sum += legendre(value, high-width, high, 1+int(min(fast*width/most, 4096)))
 		high -= width
 	}
 	return sum
