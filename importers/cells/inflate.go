@@ -186,7 +186,7 @@ var (
 
 // codes unpacks a block of codes until it ends or the room is used. A length and a distance have at most 48 bits together.
 func (z *inflater) codes() error {
-	const longest = 258
+	const longest = 258 + 7 // copied eight bytes at once
 	for z.n <= len(z.out)-longest {
 		if err := z.need(); err != nil {
 			return err
@@ -255,11 +255,14 @@ func (z *inflater) repeat(code int) error {
 		return errPacked
 	}
 	z.n = n + length
-	if far >= length {
-		copy(z.out[n:n+length], z.out[n-far:])
+	from := n - far
+	if far >= 8 {
+		for ; n < z.n; n, from = n+8, from+8 {
+			binary.LittleEndian.PutUint64(z.out[n:], binary.LittleEndian.Uint64(z.out[from:]))
+		}
 		return nil
 	}
-	for from := n - far; n < z.n; n, from = n+1, from+1 {
+	for ; n < z.n; n, from = n+1, from+1 {
 		z.out[n] = z.out[from]
 	}
 	return nil
