@@ -1,6 +1,7 @@
 package exports
 
 import (
+	"bytes"
 	"encoding/json"
 	"encoding/xml"
 	"errors"
@@ -101,20 +102,34 @@ func ReadSeal(pkg []byte) (Sealed, error) {
 	}
 	var x struct {
 		XMLName xml.Name `xml:"urn:lotpair:record:1 record"`
-		Format  string   `xml:"format,attr"`
 		Seal    string   `xml:"seal"`
+	}
+	// A record may hold a million readings: it is not read to its end to see that it is no seal.
+	if format := formatOf(b); format != SealFormat {
+		return Sealed{}, fmt.Errorf("%w (found the format %q)", ErrNoSeal, format)
 	}
 	if err := xml.Unmarshal(b, &x); err != nil {
 		return Sealed{}, fmt.Errorf("%w (%w)", ErrNoSeal, err)
-	}
-	if x.Format != SealFormat {
-		return Sealed{}, fmt.Errorf("%w (found the format %q)", ErrNoSeal, x.Format)
 	}
 	var s Sealed
 	if err := json.Unmarshal([]byte(x.Seal), &s); err != nil {
 		return Sealed{}, fmt.Errorf("seal %s: %w", recordPart, err)
 	}
 	return s, nil
+}
+
+// formatOf is the format that the root element of a custom XML part names.
+func formatOf(part []byte) string {
+	d := xml.NewDecoder(bytes.NewReader(part))
+	for {
+		t, err := d.Token()
+		if err != nil {
+			return ""
+		}
+		if e, ok := t.(xml.StartElement); ok {
+			return attribute(e, "format")
+		}
+	}
 }
 
 // SealDifferences lists where a plan departs from a sealed one, by the keys of the plan file: what the seal covers and nothing
