@@ -15,7 +15,6 @@ type report struct {
 	columns  map[string]int // by what a column means, from 1: feature, measured, deviation and the limits
 	first    int            // the line of the first headings
 	blocks   []reportBlock
-	unit     string
 }
 
 // reportBlock is one part of a report.
