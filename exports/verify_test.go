@@ -244,6 +244,9 @@ func FuzzVerify(f *testing.F) {
 	f.Add([]byte("PK\x03\x04"))
 	f.Add([]byte(""))
 	f.Add(signed(f))
+	if seal, err := sealed(f).Workbook(); err == nil {
+		f.Add(seal)
+	}
 	f.Fuzz(func(t *testing.T, b []byte) {
 		v := exports.Verify(b, nil)
 		if v.State == exports.Intact && len(v.Signatures) == 0 {
