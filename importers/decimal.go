@@ -30,6 +30,7 @@ func settleDecimal(texts []cells.Cell, plan string, lower, upper *float64) mark 
 		case err != nil && err.Code == DecimalAmbiguous:
 			open = append(open, c)
 		case err != nil:
+		case nonDetect(c.Text): // a bound that can be read in one way only says nothing of the readings' mark
 		case w.comma:
 			commas = append(commas, c)
 		case w.fraction != "" || w.grouped:

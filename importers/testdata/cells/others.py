@@ -1,0 +1,28 @@
+"""Writes openpyxl.xlsx, libreoffice.xlsx and libreoffice.ods beside own.xlsx of the cases: the same cells as other programs
+write them. n14 is left out: they calculate anew, or drop the stored values.
+
+Run in this directory: python3 others.py   (needs openpyxl, and soffice on the path)
+"""
+
+import glob
+import os
+import shutil
+import subprocess
+import tempfile
+
+import openpyxl
+
+for own in sorted(glob.glob("*/own.xlsx")):
+    case = os.path.dirname(own)
+    if case == "n14":
+        continue
+    openpyxl.load_workbook(own).save(os.path.join(case, "openpyxl.xlsx"))
+    for ending in ("xlsx", "ods"):
+        with tempfile.TemporaryDirectory() as out:
+            subprocess.run(
+                ["soffice", "-env:UserInstallation=file://" + out + "/profile", "--headless", "--convert-to", ending, "--outdir", out, own],
+                check=True,
+                stdout=subprocess.DEVNULL,
+                stderr=subprocess.DEVNULL,
+            )
+            shutil.move(os.path.join(out, "own." + ending), os.path.join(case, "libreoffice." + ending))
