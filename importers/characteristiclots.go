@@ -77,28 +77,30 @@ func (s *characteristicSheet) filledAbove() int {
 // giveLots gives each part the nearest name at or left of its column; a merged name reaches as far as it is merged, and an
 // empty column ends it.
 func (s *characteristicSheet) giveLots(names []cells.Cell) {
+	start, last := 0, -1 // of the run of headings without a gap
+	runs := map[int]int{}
+	for _, c := range s.sheet.Rows[s.at].Cells {
+		if filledText(c) == "" {
+			continue
+		}
+		if c.Col != last+1 {
+			start = c.Col
+		}
+		last = c.Col
+		runs[c.Col] = start
+	}
 	for _, p := range s.parts {
 		for _, n := range names {
 			if n.Col > p.Col {
 				break
 			}
-			if a, ok := s.mergedAt(n); ok && p.Col > a.LastCol || s.gap(n.Col, p.Col) {
+			if a, ok := s.mergedAt(n); ok && p.Col > a.LastCol || n.Col < runs[p.Col] {
 				delete(s.lotOf, p.Col)
 				continue
 			}
 			s.lotOf[p.Col] = n
 		}
 	}
-}
-
-// gap says whether a column without a heading lies between two columns.
-func (s *characteristicSheet) gap(from, to int) bool {
-	for col := from; col < to; col++ {
-		if filledText(s.sheet.Rows[s.at].At(col)) == "" {
-			return true
-		}
-	}
-	return false
 }
 
 // prefix is what stands before a part's number, without the marks between.

@@ -3,6 +3,7 @@ package importers
 import (
 	"slices"
 
+	"lotpair/importers/cells"
 	"lotpair/qa"
 )
 
@@ -57,7 +58,7 @@ func (t *table) chooseLayout() {
 		return
 	}
 	rowsOfCharacteristics := t.characteristicHeading() > 0
-	lotHeadings := slices.ContainsFunc(t.lookRows(), func(i int) bool { return t.headingScore(i) >= 1000 })
+	lotHeadings := slices.ContainsFunc(t.lookRows(), func(i int) bool { return t.namesLotColumn(i) && t.headingScore(i) > 0 })
 	switch row := t.sideBySide(); {
 	case said == SheetPerLot && rowsOfCharacteristics:
 		because(RowPerCharacteristic, Likely, "the layout is stated, a lot a sheet; in the sheet the headings name a characteristic, its limits and then a column a part.")
@@ -78,6 +79,19 @@ func (t *table) chooseLayout() {
 	default:
 		because(RowPerPart, Likely, "a row is a part and a column a characteristic; if the columns are lots, state the layout column-per-lot.")
 	}
+}
+
+// namesLotColumn says whether a row has the heading of a column that names the lots.
+func (t *table) namesLotColumn(i int) bool {
+	return slices.ContainsFunc(t.sheet.Rows[i].Cells, func(c cells.Cell) bool {
+		text := filledText(c)
+		if c.Kind != cells.Text || text == "" {
+			return false
+		}
+		name, _ := splitUnit(text)
+		want := qa.JoinSpace(t.reading.LotColumn)
+		return headingMeans(text) == lotHeading || want != "" && (want == text || want == name)
+	})
 }
 
 // lookRows are the indices of the rows that may be headings.

@@ -2,6 +2,7 @@ package importers
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"lotpair/importers/cells"
@@ -48,6 +49,7 @@ type table struct {
 	heading          int // row number of the last row of headings
 	headingTop       int // of the first; 0 where it is the last
 	columns          []column
+	names            columnNames
 	lot, part, order int // columns; 0 where there is none
 	group, pair      int
 	turned           bool // rows have their own cells: the lots or the parts stand in columns
@@ -71,6 +73,12 @@ type table struct {
 
 	said     []string
 	warnings []qa.Warning
+}
+
+// columnNames finds columns by the whole heading and by the heading without its unit.
+type columnNames struct {
+	of          *column // the first of the columns that it was made of
+	whole, bare map[string][]int
 }
 
 // role is the part that one cell plays; over a sheet the counts of all roles add up to all its cells.
@@ -156,10 +164,8 @@ func (t *table) warn(code, format string, args ...any) {
 
 // column is the table's column at a column number.
 func (t *table) column(col int) column {
-	for _, c := range t.columns {
-		if c.col == col {
-			return c
-		}
+	if i, ok := slices.BinarySearchFunc(t.columns, col, func(c column, n int) int { return c.col - n }); ok {
+		return t.columns[i]
 	}
 	return column{col: col}
 }
@@ -186,19 +192,22 @@ func (t *table) columnText(col int) string {
 // named finds the columns that a name from the plan means: by the whole heading, else by the heading without its unit.
 func (t *table) named(name string) []int {
 	want := qa.JoinSpace(name)
-	var whole, bare []int
-	for _, c := range t.columns {
-		switch want {
-		case c.heading:
-			whole = append(whole, c.col)
-		case c.name:
-			bare = append(bare, c.col)
+	if len(t.columns) == 0 {
+		return nil
+	}
+	if t.names.of != &t.columns[0] { // new headings
+		t.names = columnNames{of: &t.columns[0], whole: map[string][]int{}, bare: map[string][]int{}}
+		for _, c := range t.columns {
+			t.names.whole[c.heading] = append(t.names.whole[c.heading], c.col)
+			if c.name != c.heading {
+				t.names.bare[c.name] = append(t.names.bare[c.name], c.col)
+			}
 		}
 	}
-	if len(whole) > 0 {
+	if whole := t.names.whole[want]; len(whole) > 0 {
 		return whole
 	}
-	return bare
+	return t.names.bare[want]
 }
 
 // only is the one column that a name from the plan means; key is the plan's key for messages.
