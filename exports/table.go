@@ -3,6 +3,7 @@ package exports
 import (
 	"math"
 	"strings"
+	"unicode/utf8"
 )
 
 // table is a table of figures, a column a figure: the columns of all rows together, in the order in which the result format
@@ -56,19 +57,15 @@ func (t *table) to(s *sheet, meaning func(name string) string) {
 	tall, nameTall := 1.0, 1.0
 	for i, n := range t.names {
 		look, wordLook := headPlainLook, headLook
-		// Long names break into lines where they must: a table of a hundred columns has to stay within few pages.
-		width := math.Max(10, math.Min(14.5, 0.95*float64(len(n))+2))
+		w := meaning(n)
+		width := headWidth(n, w)
 		if i > 0 && t.numeric(n) {
 			look, wordLook = headPlainRightLook, headRightLook
 		}
 		for _, r := range t.rows {
 			width = math.Max(width, math.Min(40, float64(len([]rune(r[n].text)))+2))
 		}
-		w := meaning(n)
-		for _, word := range strings.Fields(w) {
-			width = math.Max(width, math.Min(17, float64(len([]rune(word)))+2))
-		}
-		tall, nameTall = math.Max(tall, lines(w, int(width)-2)), math.Max(nameTall, lines(n, int(width)-1))
+		tall, nameTall = math.Max(tall, wordLines(w, int(width)-1)), math.Max(nameTall, lines(n, int(width)-1))
 		s.widths = append(s.widths, width)
 		names, words = append(names, text(n, look)), append(words, text(w, wordLook))
 	}
@@ -97,4 +94,40 @@ func (t *table) numeric(name string) bool {
 		}
 	}
 	return false
+}
+
+// headWidth is the narrowest column in which a name and its meaning take few lines, because all headings are as tall as the
+// tallest. It still is narrow: a table of a hundred columns has to stay within few pages.
+func headWidth(name, words string) float64 {
+	const (
+		mostNameLines, mostWordLines = 2, 4
+		least, whole, widest         = 11, 15, 27 // characters; whole: what shorter is stands in one line
+		air                          = 2
+	)
+	width := max(least, min(whole, utf8.RuneCountInString(name)+air))
+	for _, word := range strings.Fields(words) {
+		width = max(width, min(whole, utf8.RuneCountInString(word)+air))
+	}
+	for width < widest && (lines(name, width-1) > mostNameLines || wordLines(words, width-1) > mostWordLines) {
+		width++
+	}
+	return float64(width)
+}
+
+// wordLines is how many lines a text takes that breaks between words; a word longer than a line breaks inside.
+func wordLines(s string, room int) float64 {
+	n, at := 1, 0
+	for _, word := range strings.Fields(s) {
+		size := utf8.RuneCountInString(word)
+		if at > 0 && at+1+size > room {
+			n, at = n+1, 0
+		} else if at > 0 {
+			at++
+		}
+		for size > room {
+			n, size = n+1, size-room
+		}
+		at += size
+	}
+	return float64(n)
 }
