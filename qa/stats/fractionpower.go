@@ -24,6 +24,10 @@ type FractionDesign struct {
 // through.
 const mostParts = 1_000_000
 
+// mostWalked is the largest number of parts up to which FractionSize looks below
+// the number that it has found: each look goes through all likely counts.
+const mostWalked = 20_000
+
 func (d FractionDesign) check() error {
 	in := func(p float64) bool { return p >= 0 && p <= 1 }
 	within := func(v float64) bool { return v > -1 && v < 1 }
@@ -157,9 +161,10 @@ func (d FractionDesign) room() float64 {
 // FractionSize returns the smallest number of reference parts, at least 2, with
 // which the design shows its aim with at least the given power, the candidate's,
 // and the power they have. The power of counted parts goes up and down a little
-// from one number to the next; the first that has it is given, where above 600
-// parts none is tried that is more than a tenth below one that does and follows
-// one that does not.
+// from one number to the next, by about the probability of one count, which is
+// made good by about the root of the number in parts; the first that has it is
+// given. Above 600 parts none is tried that is more than a tenth, or four roots,
+// below one that does and follows one that does not; above 20,000 none at all.
 func FractionSize(d FractionDesign, ratio, power float64) (nRef, nCand int, achieved float64, err error) {
 	switch {
 	case !(ratio > 0) || math.IsInf(ratio, 1):
@@ -195,7 +200,9 @@ func FractionSize(d FractionDesign, ratio, power float64) (nRef, nCand int, achi
 				high = middle
 			}
 		}
-		first = high - high/10
+		if first = high; high <= mostWalked {
+			first -= min(high/10, 4*int(math.Sqrt(float64(high))))
+		}
 	}
 	for n := first; n <= most; n++ {
 		if p := at(n); p >= power {
