@@ -124,21 +124,7 @@ func (r *reader) sayOdd() {
 					values, at = append(values, x.Value), append(at, x.Source)
 				}
 			}
-			var sentinels, factors []string
-			for _, o := range oddReadings(values) {
-				found := fmt.Sprintf("%s in %s", at[o.at].Text, at[o.at].Place())
-				if o.text == "" {
-					sentinels = append(sentinels, found)
-				} else {
-					factors = append(factors, found+" is "+o.text)
-				}
-			}
-			if len(sentinels) > 0 {
-				s.table.warn("sentinel", "%s: far from the others and written for \"no value\" in many files: %s. It is used; if it is no reading, name the cell under exclude with a reason.", series.Characteristic, join2(sentinels))
-			}
-			if len(factors) > 0 {
-				s.table.warn("factor", "%s: the decimal mark may have slipped, or the unit is another: %s. It is used; correct the cell, or name it under exclude with a reason.", series.Characteristic, join2(factors))
-			}
+			s.table.warnOdd(series.Characteristic, values, at)
 		}
 	}
 }

@@ -1,0 +1,53 @@
+package importers
+
+import (
+	"fmt"
+
+	"lotpair/qa"
+)
+
+// warnOdd warns of readings of one lot that may be marks for "no value" or slips of the decimal mark, with their places.
+func (t *table) warnOdd(name string, values []float64, at []qa.Source) {
+	var sentinels, factors []string
+	for _, o := range oddReadings(values) {
+		found := fmt.Sprintf("%s in %s", at[o.at].Text, at[o.at].Place())
+		if o.text == "" {
+			sentinels = append(sentinels, found)
+		} else {
+			factors = append(factors, found+" is "+o.text)
+		}
+	}
+	if len(sentinels) > 0 {
+		t.warn("sentinel", "%s: far from the others and written for \"no value\" in many files: %s. It is used; if it is no reading, name the cell under exclude with a reason.", name, join2(sentinels))
+	}
+	if len(factors) > 0 {
+		t.warn("factor", "%s: the decimal mark may have slipped, or the unit is another: %s. It is used; correct the cell, or name it under exclude with a reason.", name, join2(factors))
+	}
+}
+
+// inspectOdd tells of them where no plan is there yet, lot by lot, and of cells that state only a bound.
+func (t *table) inspectOdd(name, unit string, col int, decimal byte) {
+	var lots []string
+	values, at := map[string][]float64{}, map[string][]qa.Source{}
+	var bounds []string
+	for _, row := range t.rows {
+		cell := t.cell(row, col)
+		got := takeCell(cell, t.book.IsText, unit, decimal)
+		switch {
+		case got.isBelow:
+			bounds = append(bounds, cell.Name())
+		case got.isValue:
+			if values[row.lot] == nil {
+				lots = append(lots, row.lot)
+			}
+			values[row.lot], at[row.lot] = append(values[row.lot], got.value), append(at[row.lot], t.book.source(t.sheet.Name, cell))
+		}
+	}
+	for _, l := range lots {
+		t.warnOdd(name, values[l], at[l])
+	}
+	if len(bounds) > 0 {
+		t.warn(qa.WarnNonDetects, "%s: %s below or above a limit (%s). A verdict is given only where it does not matter what they are; else state non_detect under [reading] before the readings are compared.",
+			name, qa.Count(len(bounds), "cell states only that the value is", "cells state only that the value is"), join2(bounds))
+	}
+}
