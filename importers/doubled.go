@@ -9,10 +9,13 @@ import (
 )
 
 // doubled says whether the second half of the lot's rows repeats the first exactly in every characteristic: four rows or more
-// with three distinct ones.
-func (s *lotSide) doubled() (string, bool) {
+// with three distinct ones. Attributes do not count.
+func (s *lotSide) doubled(attribute func(k int) bool) (string, bool) {
 	keys := map[int]string{}
 	for k, series := range s.lot.Series {
+		if attribute(k) { // parts that pass are alike
+			continue
+		}
 		place := s.places(k)
 		for _, x := range series.Readings {
 			if n, ok := place(x.Source.Cell); ok && x.Used() {

@@ -82,6 +82,7 @@ func (t *table) headingScore(i int) int {
 		for _, ch := range t.characteristics {
 			if want := qa.JoinSpace(ch.Heading()); want == text || want == name {
 				score += 100
+				below = below || ch.Kind == kindAttribute && i+1 < len(t.sheet.Rows) && stored(t.sheet.Rows[i+1].At(c.Col))
 			}
 		}
 		if c.Kind == cells.Text && !numeric(c) && !missing(text) {

@@ -110,3 +110,11 @@ func (t *table) mergeLimits(c *qa.Characteristic, plan, file qa.Characteristic) 
 	}
 	return nil
 }
+
+// planned is what the plan itself says of a characteristic.
+func (r *reader) planned(i int) qa.Characteristic {
+	if i < len(r.plan.Characteristics) {
+		return r.plan.Characteristics[i]
+	}
+	return qa.Characteristic{}
+}

@@ -94,6 +94,9 @@ func formatUnit(format string) string {
 // sayMixed warns of a characteristic whose readings are stored as numbers in some cells and as text in others.
 func (r *reader) sayMixed() {
 	for k, c := range r.out.Characteristics {
+		if c.Kind == kindAttribute {
+			continue
+		}
 		numbers, texts := [2]int{}, [2]int{}
 		for i, s := range r.sides {
 			if s.table.book.IsText {

@@ -116,7 +116,10 @@ func oddReadings(values []float64) []oddReading {
 // sayOdd warns of readings that may be marks for "no value" or slips of the decimal mark. They are used until the plan says otherwise.
 func (r *reader) sayOdd() {
 	for _, s := range r.sides {
-		for _, series := range s.lot.Series {
+		for k, series := range s.lot.Series {
+			if r.isAttribute(k) {
+				continue
+			}
 			var values []float64
 			var at []qa.Source
 			for _, x := range series.Readings {
@@ -135,7 +138,7 @@ func (r *reader) checkScales() error {
 	var faults []Fault
 	for k, c := range r.out.Characteristics {
 		var m, s [2]float64
-		var few bool
+		few := c.Kind == kindAttribute
 		for i := range r.sides {
 			v := r.sides[i].lot.Series[k].Values()
 			if few = few || len(v) < oddFewest; !few {

@@ -260,6 +260,10 @@ func (r *reader) chooseCharacteristics() error {
 				continue
 			}
 			s.cols = append(s.cols, col)
+			if list[i].Kind == kindAttribute {
+				s.conversions = append(s.conversions, nil)
+				continue
+			}
 			v, err := s.table.mergeUnit(&list[i], s.table.columnOf(col, s.lot.Name), s.plan, s.side)
 			if err != nil {
 				faults = append(faults, faultsOf(err)...)
@@ -279,6 +283,12 @@ func (r *reader) settleMarks() error {
 	var faults []Fault
 	for i := range r.out.Characteristics {
 		c := &r.out.Characteristics[i]
+		if c.Kind == kindAttribute { // words have no decimal mark and no limits
+			for j := range r.sides {
+				r.sides[j].marks = append(r.sides[j].marks, mark{})
+			}
+			continue
+		}
 		for _, t := range r.tables {
 			var col int
 			for _, s := range r.sides {
@@ -383,12 +393,4 @@ func (t *table) settleConverted(c *qa.Characteristic, plan qa.Characteristic, co
 		return m, err
 	}
 	return m, t.mergeLimits(c, plan, file)
-}
-
-// planned is what the plan itself says of a characteristic.
-func (r *reader) planned(i int) qa.Characteristic {
-	if i < len(r.plan.Characteristics) {
-		return r.plan.Characteristics[i]
-	}
-	return qa.Characteristic{}
 }

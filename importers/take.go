@@ -28,13 +28,16 @@ func (r *reader) takeReadings() error {
 				s.table.warn("thousands-mark", "%s: a mark between groups of three digits is taken for a thousands mark in %s (%s).", c.Name, qa.Count(len(thousands), "cell", "cells"), join2(thousands))
 			}
 			s.lot.Series = append(s.lot.Series, series)
-			s.table.sayFormats(s.rows, s.cols[k], c.Name)
+			if c.Kind != kindAttribute {
+				s.table.sayFormats(s.rows, s.cols[k], c.Name)
+			}
 		}
 	}
 	for _, t := range r.tables {
 		r.takeSummaries(t)
 	}
 	r.sayConversions()
+	r.sayAttributes()
 	r.sayMixed()
 	r.sayOdd()
 	return r.checkScales()
@@ -44,7 +47,12 @@ func (r *reader) takeReadings() error {
 func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row row, k int) taken {
 	t := s.table
 	cell := t.cell(row, s.cols[k])
-	got := s.conversions[k].apply(takeCell(cell, t.book.IsText, s.unitIn(k, c), s.marks[k].decimal))
+	got := taken{}
+	if c.Kind == kindAttribute {
+		got = takeAttribute(cell, c.Failed)
+	} else {
+		got = s.conversions[k].apply(takeCell(cell, t.book.IsText, s.unitIn(k, c), s.marks[k].decimal))
+	}
 	entry := qa.Entry{Source: t.book.source(t.sheet.Name, cell), Side: s.side, Characteristic: c.Name}
 	out := r.excluded(t, cell, got)
 	as := roleUsed
@@ -189,7 +197,7 @@ func (r *reader) checkDoubled() error {
 	var faults []Fault
 	for i := range r.sides {
 		s := &r.sides[i]
-		ranges, ok := s.doubled()
+		ranges, ok := s.doubled(r.isAttribute)
 		_, repeated := r.repeatedIDs(s)
 		switch {
 		case !ok:

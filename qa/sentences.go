@@ -251,6 +251,9 @@ func sensitivitySentence(c Comparison) string {
 			same++
 		}
 	}
+	if len(c.Sensitivity) == 1 && same == 1 {
+		return "The verdict is the same in the one other way of computing it."
+	}
 	if same == len(c.Sensitivity) {
 		return fmt.Sprintf("The verdict on the mean is the same in all %d other ways of computing it.", same)
 	}

@@ -54,7 +54,11 @@ func (p *program) printInterval(c qa.Comparison) {
 	if d.Lower == nil || d.Upper == nil {
 		return
 	}
-	fmt.Fprintf(p.out, "  difference %v, %s interval %v to %v, df %v\n", *d.Estimate, qa.Percent(*d.Level, 4), *d.Lower, *d.Upper, *d.DF)
+	fmt.Fprintf(p.out, "  difference %v, %s interval %v to %v", *d.Estimate, qa.Percent(*d.Level, 4), *d.Lower, *d.Upper)
+	if d.DF != nil { // fractions have none
+		fmt.Fprintf(p.out, ", df %v", *d.DF)
+	}
+	fmt.Fprintln(p.out)
 	if e := c.Equivalence; e != nil && e.Lower != nil && e.P != nil {
 		fmt.Fprintf(p.out, "  decision   %s interval %v to %v, p %v\n", qa.Percent(*e.Level, 4), *e.Lower, *e.Upper, *e.P)
 	}
