@@ -48,7 +48,7 @@ func TestReadAttributeOfSheets(t *testing.T) {
 	for _, c := range []any{failed("#DIV/0!"), formula{"A1", ""}, truth(true), num("1"), "-", styled{"44000", 1}} {
 		rows = append(rows, []any{"REF-0417", c}, []any{"CAND-0931", "OK"})
 	}
-	p := attributePlan(func(p *qa.Plan) { 
+	p := attributePlan(func(p *qa.Plan) {
 		p.Reference.File, p.Candidate.File = "a.xlsx", "a.xlsx"
 		p.Characteristics[0].Failed = []string{"TRUE", "1", "-"}
 	})
