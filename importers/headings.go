@@ -104,6 +104,10 @@ func (t *table) headingsOf(r cells.Row) []column {
 				above = filledText(upper.At(s.FirstCol))
 			}
 		}
+		if h == "" && t.layout == ColumnPerLot && !slices.ContainsFunc(t.blocks, func(b block) bool { return b.first <= col && col <= b.last }) {
+			beside, _ := t.sheet.Row(t.headingTop) // a column beside the lots has its heading in the row of their names
+			above = filledText(beside.At(col))
+		}
 		switch {
 		case h == "":
 			h = above

@@ -54,16 +54,16 @@ func (t *table) chooseLayout() {
 	}
 	said := t.reading.Layout
 	if said != "" && said != SheetPerLot {
-		because(said, Stated, "the layout is stated.")
+		because(said, Stated, "the plan or the call says so.")
 		return
 	}
 	rowsOfCharacteristics := t.characteristicHeading() > 0
 	lotHeadings := slices.ContainsFunc(t.lookRows(), func(i int) bool { return t.namesLotColumn(i) && t.headingScore(i) > 0 })
 	switch row := t.sideBySide(); {
 	case said == SheetPerLot && rowsOfCharacteristics:
-		because(RowPerCharacteristic, Likely, "the layout is stated, a lot a sheet; in the sheet the headings name a characteristic, its limits and then a column a part.")
+		because(RowPerCharacteristic, Likely, "a lot a sheet, as the plan or the call says; in the sheet the headings name a characteristic, its limits and then a column a part.")
 	case said == SheetPerLot:
-		because(RowPerPart, Stated, "the layout is stated, a lot a sheet; in the sheet a row is a part.")
+		because(RowPerPart, Stated, "a lot a sheet, as the plan or the call says; in the sheet a row is a part.")
 	case rowsOfCharacteristics && !lotHeadings:
 		because(RowPerCharacteristic, Clear, "the headings name a characteristic, its limits and then a column a part.")
 	case lotHeadings:

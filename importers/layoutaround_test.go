@@ -3,6 +3,7 @@ package importers
 import (
 	"fmt"
 	"slices"
+	"strings"
 	"testing"
 
 	"pgregory.net/rapid"
@@ -12,10 +13,9 @@ import (
 
 // drawn is a sheet made at random around D1, and where each reading stands.
 type drawn struct {
-	rows    [][]any
-	merged  []string
-	layout  string
-	unnamed bool // nothing in the sheet names the characteristic
+	rows   [][]any
+	layout string
+	ids    bool // the parts have ids
 }
 
 // abreastDrawn puts the lots side by side: each a block with or without its own headings and part ids.
@@ -28,6 +28,7 @@ func abreastDrawn(rt *rapid.T) drawn {
 	}
 	names, heads := []any{}, []any{}
 	shared := rapid.Bool().Draw(rt, "shared ids") && !own
+	d.ids = shared || own
 	if shared {
 		names, heads = append(names, "No"), append(heads, nil)
 	}
@@ -72,7 +73,7 @@ func abreastDrawn(rt *rapid.T) drawn {
 		}
 	}
 	d.rows = append(d.rows, names)
-	if d.unnamed = !headed; headed {
+	if headed {
 		d.rows = append(d.rows, heads)
 	}
 	if rapid.Bool().Draw(rt, "units") {
@@ -106,7 +107,7 @@ func abreastDrawn(rt *rapid.T) drawn {
 
 // turnedDrawn makes a row of the characteristic and a column of each part.
 func turnedDrawn(rt *rapid.T) drawn {
-	d := drawn{layout: RowPerCharacteristic}
+	d := drawn{layout: RowPerCharacteristic, ids: true}
 	for range rapid.IntRange(0, 3).Draw(rt, "above") {
 		d.rows = append(d.rows, []any{rapid.SampledFrom([]any{"Report", nil, num("4711")}).Draw(rt, "block")})
 	}
@@ -196,6 +197,9 @@ func TestReadTurnedWhateverStandsAround(t *testing.T) {
 				rt.Fatalf("lot %s: got %d readings and %d missing, want %d: %v", want.lot.Name, len(got), want.lot.Series[0].Missing, len(want.values), d.rows)
 			}
 			for i, x := range got {
+				if id := strings.TrimLeft(x.Part, "S#Part "); d.ids != (x.Part != "") || d.ids && id != fmt.Sprint(i+1) {
+					rt.Fatalf("lot %s: got the part %q, want %d: %v", want.lot.Name, x.Part, i+1, d.rows)
+				}
 				if x.Source.Text != want.values[i] || x.Value != mustFloat(want.values[i]) {
 					rt.Fatalf("lot %s: got %+v, want %s", want.lot.Name, x, want.values[i])
 				}

@@ -87,6 +87,7 @@ func roundTo(x float64, decimals int) float64 {
 // mergeLimits lets the plan's limits win over the sheet's, which is a warning where they differ. Two sheets that differ, with
 // no word in the plan, are a fault: they may be of two revisions of the drawing.
 func (t *table) mergeLimits(c *qa.Characteristic, plan, file qa.Characteristic) error {
+	var taken []string
 	for _, l := range []struct {
 		name       string
 		is         **float64
@@ -100,13 +101,16 @@ func (t *table) mergeLimits(c *qa.Characteristic, plan, file qa.Characteristic) 
 		case l.file == nil:
 		case *l.is == nil:
 			*l.is = l.file
-			t.say("the %s of %s is taken from the sheet: %s.", l.name, c.Name, qa.Plain(*l.file))
+			taken = append(taken, l.name+" "+qa.Plain(*l.file))
 		case **l.is == *l.file:
 		case l.plan != nil:
 			t.warn("limits-differ", "%s: the %s is %s in the plan and %s in the sheet; the plan's is taken.", c.Name, l.name, qa.Plain(*l.plan), qa.Plain(*l.file))
 		default:
 			return t.refuse("characteristic %s: found the %s %s here and %s in the other lot's sheet, want the same; state the limits in the plan", quoted(c.Name), l.name, qa.Plain(*l.file), qa.Plain(**l.is))
 		}
+	}
+	if len(taken) > 0 {
+		t.say("%s: taken from the sheet: %s.", c.Name, strings.Join(taken, ", "))
 	}
 	return nil
 }
