@@ -69,7 +69,7 @@ func (in *Inspection) readColumn(t *table, ch *qa.Characteristic, col int, marks
 		in.unread(t, row, col, got)
 	}
 	t.sayFormats(t.rows, col, ch.Name)
-	t.inspectOdd(ch.Name, ch.Unit, col, m.decimal)
+	t.inspectOdd(ch.Name, ch.Unit, col, m.decimal, values)
 	for _, at := range t.summary {
 		if cell := t.sheet.Rows[at].At(col); stored(cell) {
 			in.list(t, cell, qa.TakenSummary, nil)

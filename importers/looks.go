@@ -48,14 +48,15 @@ func (t *table) sayCells(rows []row, col int, name string) {
 			found["unit"] = append(found["unit"], c.Name())
 			first = f.Text
 		}
-		if v, _, err := ParseNumber(c.Text, '.'); err == nil && f.Places >= 0 && f.Thousand == 0 {
-			places := f.Places
-			if f.Percent {
-				places += 2
-			}
-			if storedDecimals(v) > places {
-				found["hidden"] = append(found["hidden"], c.Name())
-			}
+		places := f.Places
+		if f.Percent {
+			places += 2
+		}
+		if f.Places < 0 || f.Thousand > 0 || fewDecimals(c.Text, places) {
+			continue
+		}
+		if v, _, err := ParseNumber(c.Text, '.'); err == nil && storedDecimals(v) > places {
+			found["hidden"] = append(found["hidden"], c.Name())
 		}
 	}
 	if 2*filled > len(rows) { // the table's own dress
@@ -78,6 +79,12 @@ func (t *table) sayCells(rows []row, col int, name string) {
 	if at := found["unit"]; len(at) > 0 {
 		t.say("%s: the number format of %s shows the unit %s (%s).", name, qa.Count(len(at), "cell", "cells"), first, join2(at))
 	}
+}
+
+// fewDecimals says quickly that a stored number has no more decimals than so many.
+func fewDecimals(text string, places int) bool {
+	mark := strings.IndexByte(text, '.')
+	return !strings.ContainsAny(text, "eE") && (mark < 0 || len(text)-mark-1 <= places)
 }
 
 // formatUnit is the unit that a cell's number format shows behind the number; empty where it shows none.

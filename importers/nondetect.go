@@ -14,6 +14,9 @@ var boundSigns = []struct {
 
 // unsigned is a text without the sign of a bound.
 func unsigned(text string) string {
+	if text != "" && text[0] >= '0' && text[0] <= '9' { // most cells
+		return text
+	}
 	s := trimmed(text)
 	for _, b := range boundSigns {
 		if rest, ok := strings.CutPrefix(s, b.sign); ok {

@@ -44,9 +44,16 @@ var slips = []struct {
 	{1 / 25.4, "1/25.4 of (inch and millimetre)"},
 }
 
+// enough is how many readings, evenly spaced, say where the middle of a lot is.
+const enough = 20000
+
 // middle is the median and the robust standard deviation: 1.4826 times the median distance from it, for a normal distribution.
 func middle(values []float64) (median, spread float64) {
-	s := slices.Clone(values)
+	step := 1 + len(values)/enough
+	s := make([]float64, 0, len(values)/step+1)
+	for i := 0; i < len(values); i += step {
+		s = append(s, values[i])
+	}
 	slices.Sort(s)
 	median = half(s)
 	for i, v := range s {
@@ -120,11 +127,14 @@ func (r *reader) sayOdd() {
 			if r.isAttribute(k) {
 				continue
 			}
-			var values []float64
-			var at []qa.Source
+			values := series.Values()
+			if len(oddReadings(values)) == 0 {
+				continue
+			}
+			at := make([]qa.Source, 0, len(values))
 			for _, x := range series.Readings {
 				if x.Used() {
-					values, at = append(values, x.Value), append(at, x.Source)
+					at = append(at, x.Source)
 				}
 			}
 			s.table.warnOdd(series.Characteristic, values, at)

@@ -3,6 +3,7 @@ package importers
 import (
 	"fmt"
 
+	"lotpair/importers/cells"
 	"lotpair/qa"
 )
 
@@ -25,29 +26,35 @@ func (t *table) warnOdd(name string, values []float64, at []qa.Source) {
 	}
 }
 
-// inspectOdd tells of them where no plan is there yet, lot by lot, and of cells that state only a bound.
-func (t *table) inspectOdd(name, unit string, col int, decimal byte) {
+// inspectOdd tells of them where no plan is there yet, lot by lot, and of cells that state only a bound. The values are those of
+// the column, by lot.
+func (t *table) inspectOdd(name, unit string, col int, decimal byte, values map[string][]float64) {
+	odd := map[string][]oddReading{}
 	var lots []string
-	values, at := map[string][]float64{}, map[string][]qa.Source{}
 	var bounds []string
 	for _, row := range t.rows {
-		cell := t.cell(row, col)
-		got := takeCell(cell, t.book.IsText, unit, decimal)
-		switch {
-		case got.isBelow:
+		if _, ok := odd[row.lot]; !ok {
+			odd[row.lot] = oddReadings(values[row.lot])
+			lots = append(lots, row.lot)
+		}
+		if cell := t.cell(row, col); cell.Kind == cells.Text && nonDetect(cell.Text) {
 			bounds = append(bounds, cell.Name())
-		case got.isValue:
-			if values[row.lot] == nil {
-				lots = append(lots, row.lot)
-			}
-			values[row.lot], at[row.lot] = append(values[row.lot], got.value), append(at[row.lot], t.book.source(t.sheet.Name, cell))
 		}
 	}
 	for _, l := range lots {
-		t.warnOdd(name, values[l], at[l])
+		if len(odd[l]) == 0 {
+			continue
+		}
+		var at []qa.Source
+		for _, row := range t.rows {
+			if cell := t.cell(row, col); row.lot == l && takeCell(cell, t.book.IsText, unit, decimal).isValue {
+				at = append(at, t.book.source(t.sheet.Name, cell))
+			}
+		}
+		t.warnOdd(name, values[l], at)
 	}
 	if len(bounds) > 0 {
-		t.warn(qa.WarnNonDetects, "%s: %s below or above a limit (%s). A verdict is given only where it does not matter what they are; else state non_detect under [reading] before the readings are compared.",
-			name, qa.Count(len(bounds), "cell states only that the value is", "cells state only that the value is"), join2(bounds))
+		t.warn(qa.WarnNonDetects, "%s: %s only that the value is below or above a limit (%s). A verdict is given only where it does not matter what they are; else state non_detect under [reading] before the readings are compared.",
+			name, qa.Count(len(bounds), "cell states", "cells state"), join2(bounds))
 	}
 }
