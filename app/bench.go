@@ -59,6 +59,9 @@ type paragraph struct {
 // paragraphs is what the bench says, wrapped.
 func (w *window) paragraphs(width float32) []paragraph {
 	v, room := w.view.bench, width-2*margin
+	if w.state.Drafting {
+		v.Headline, v.Paragraphs, v.Whole, v.Caution, v.Read = w.drafted.Headline, w.drafted.Paragraphs, nil, "", ""
+	}
 	set := func(s string, f font, leading, above float32, muted bool) paragraph {
 		return paragraph{f.wrap(s, room, room), f, leading, above, muted}
 	}

@@ -18,6 +18,9 @@ const (
 	main               // filled with ink
 	quiet              // words alone
 	choice             // words alone, one of several of which one is chosen
+	strong             // a word of a sentence that is a choice: bold and underlined
+	word               // a choice at the left of its line
+	bare               // nothing of its own: what lies below it is pressed
 )
 
 // button is a button as the drawings of the window have it, reached by Tab and pressed by space or return.
@@ -41,8 +44,13 @@ func newButton(palette func() draw.Palette, label string, k kind, press func()) 
 
 // font is the font of the label.
 func (b *button) font() font {
-	if b.kind == main || b.chosen {
+	switch {
+	case b.kind == main || b.chosen:
 		return fontButton
+	case b.kind == strong:
+		return fontStrong
+	case b.kind == word:
+		return fontBody
 	}
 	return fontPlain
 }
@@ -77,9 +85,9 @@ func (b *button) paint(p *pen, size fyne.Size) {
 	r := p.box(0, 0, size.Width, size.Height, ground)
 	r.CornerRadius = 3
 	switch {
-	case b.kind == choice && b.focused:
+	case (b.kind == choice || b.kind == word || b.kind == bare) && b.focused:
 		r.StrokeColor, r.StrokeWidth = p.Text, 1.2
-	case b.kind == quiet || b.kind == choice:
+	case b.kind == quiet || b.kind == choice || b.kind == strong || b.kind == word || b.kind == bare:
 	case b.disabled:
 		r.StrokeColor, r.StrokeWidth = p.Rule, 1.2
 	default:
@@ -88,13 +96,20 @@ func (b *button) paint(p *pen, size fyne.Size) {
 	f := b.font()
 	label := f.fit(b.label, size.Width-8)
 	base := size.Height/2 + 5
+	if b.kind == word {
+		p.text(label, 2, base, f, ink)
+		if !b.disabled {
+			p.ending("▾", size.Width-4, base, fontTiny, p.MutedText)
+		}
+		return
+	}
 	p.centred(label, size.Width/2, base, f, ink)
 	switch w := f.width(label); {
 	case b.chosen:
 		p.across(size.Width/2-w/2, size.Width/2+w/2, base+6, 2, ink)
 	case b.focused:
 		p.across(size.Width/2-w/2, size.Width/2+w/2, base+4, 2, ink)
-	case b.hovered || b.kind == quiet:
+	case b.hovered && b.kind != bare || b.kind == quiet || b.kind == strong:
 		p.across(size.Width/2-w/2, size.Width/2+w/2, base+3, 1, ink)
 	}
 }

@@ -19,9 +19,20 @@ func (w *window) paintHeader(p *pen, size fyne.Size) {
 	supports := left - 2*margin
 	if b := w.act.leave; w.state.Open && w.register != nil {
 		supports -= b.wide() + 12
+		if w.state.Drafting {
+			supports -= w.act.particulars.wide() + 8
+		}
 		end := p.text(fontPlain.fit(v.Supports, supports), margin, 55, fontPlain, p.MutedText)
 		p.put(b, end+12, 37, b.wide(), 26)
 		b.Refresh()
+		if x := w.act.particulars; w.state.Drafting {
+			p.put(x, end+12+b.wide()+8, 37, x.wide(), 26)
+			x.Refresh()
+		}
+	} else if x := w.act.particulars; w.state.Drafting {
+		end := p.text(fontPlain.fit(v.Supports, supports-x.wide()-12), margin, 55, fontPlain, p.MutedText)
+		p.put(x, end+12, 37, x.wide(), 26)
+		x.Refresh()
 	} else {
 		p.text(fontPlain.fit(v.Supports, supports), margin, 55, fontPlain, p.MutedText)
 	}

@@ -21,6 +21,8 @@ type kept struct {
 	Plan     *qa.Plan     `json:"plan,omitempty"`
 	PlanFile qa.File      `json:"plan_file"`
 	Files    []qa.File    `json:"files,omitempty"`
+	Drafting bool         `json:"drafting,omitempty"`
+	Seen     bool         `json:"seen,omitempty"`
 	Trail    qa.Trail     `json:"trail,omitempty"`
 	Compared bool         `json:"compared"`
 	Seal     qa.Seal      `json:"seal"`
@@ -42,6 +44,11 @@ func keptOf(s desk.State) kept {
 	k := kept{
 		Format: keptFormat, Path: s.Path, Plan: &r.Plan, PlanFile: r.PlanFile, Trail: r.Trail, Compared: s.Compared, Seal: r.Result.Seal, Attempts: r.Result.Attempts,
 		Workbook: keptWorkbook{Path: s.Workbook.Path, SHA256: s.Workbook.SHA256, Opened: s.Workbook.Opened},
+	}
+	k.Drafting, k.Seen = s.Drafting, s.Seen
+	if s.Drafting {
+		k.Files = s.Files
+		return k
 	}
 	seen := map[string]bool{}
 	for _, l := range []qa.Lot{r.Readings.Reference, r.Readings.Candidate} {
@@ -75,9 +82,18 @@ func entryOf(s desk.State, e register.Entry) register.Entry {
 	p := s.Record.Plan
 	e.Title, e.Supports = s.Header().Title, p.Supports
 	e.Reference, e.Candidate = s.Page(qa.Reference).Lot, s.Page(qa.Candidate).Lot
-	e.Verdict = "not compared"
-	if s.Compared {
+	switch {
+	case s.Compared:
 		e.Verdict = string(s.Record.Result.Verdict)
+	case s.Drafting && s.Sealed():
+		e.Verdict = "criterion sealed"
+	case s.Drafting:
+		e.Verdict = "being prepared"
+	default:
+		e.Verdict = "not compared"
+	}
+	if s.Drafting {
+		e.Reference, e.Candidate = p.Reference.Lot, p.Candidate.Lot
 	}
 	var signed []string
 	for _, g := range s.Workbook.Signatures {
@@ -101,14 +117,17 @@ func (w *window) keep(next desk.State) error {
 		return fmt.Errorf("keeping: %w", err)
 	}
 	act := register.Act{Time: now(), Who: person(), What: next.Last(), State: state}
-	if strings.HasPrefix(act.What, "opened the plan") || act.What == "compared" {
+	if strings.HasPrefix(act.What, "opened the plan") || strings.HasPrefix(act.What, "took the readings") || act.What == "compared" {
 		act.Attempt = attempt(next.Record.Plan)
 	}
 	e := entryOf(next, w.entry)
-	if opened := strings.HasPrefix(act.What, "opened "); opened || e.ID == 0 {
+	if begins := strings.HasPrefix(act.What, "opened the ") || strings.HasPrefix(act.What, "began "); begins || e.ID == 0 {
 		e.ID, e.Acts, e.Origin = 0, 0, origin(next.Record.PlanFile, next.Record.Readings)
-		if next.Workbook.Opened {
+		switch {
+		case next.Workbook.Opened:
 			e.Origin = "workbook " + next.Workbook.SHA256
+		case next.Drafting:
+			e.Origin = ""
 		}
 		e, err = w.register.Add(e, act)
 	} else {
@@ -196,6 +215,10 @@ func (w *window) rebuilt(k kept) (desk.State, error) {
 	}
 	if k.Plan == nil {
 		return desk.State{}, errors.New("record: found no plan, want one; the register does not hold what it should")
+	}
+	if k.Drafting {
+		rec := qa.Record{Format: qa.RecordFormat, Plan: *k.Plan, Trail: k.Trail, Result: qa.Result{Seal: k.Seal}}
+		return desk.State{Path: k.Path, Record: rec, Drafting: true, Seen: k.Seen, Files: k.Files}, nil
 	}
 	digests := map[string]string{}
 	for _, f := range k.Files {

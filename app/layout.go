@@ -33,21 +33,31 @@ func (l windowLayout) Layout(_ []fyne.CanvasObject, size fyne.Size) {
 		r.Resize(fyne.NewSize(width, height))
 		r.Show()
 	}
-	open := w.state.Open
+	over := w.state.Sheet != nil // a file lies over the window
+	open := w.state.Open && !over
 	top, bottom := float32(headerHeight), size.Height-footHeight
 	place(w.paper, 0, 0, size.Width, size.Height, true)
-	place(w.header, 0, 0, size.Width, headerHeight, true)
-	place(w.foot, 0, bottom, size.Width, footHeight, true)
+	place(w.header, 0, 0, size.Width, headerHeight, !over)
+	place(w.foot, 0, bottom, size.Width, footHeight, !over)
 	banner := w.bannerHeight(size.Width)
 	place(w.banner, 0, top, size.Width, banner, banner > 0)
 	top += banner
-	place(w.start, 0, top, size.Width, bottom-top, !open)
+	place(w.start, 0, top, size.Width, bottom-top, !open && !over)
 	page := pageWidth(size.Width)
 	middle := w.spineHeight(size.Width-2*page, bottom-top)
 	place(w.left, 0, top, page, middle, open)
 	place(w.spine, page, top, size.Width-2*page, middle, open)
 	place(w.right, size.Width-page, top, page, middle, open)
 	place(w.bench, 0, top+middle, size.Width, bottom-top-middle, open)
+	at := float32(0)
+	if banner > 0 {
+		at = banner // what went wrong stays in sight
+		w.banner.Move(fyne.NewPos(0, 0))
+		if !over {
+			w.banner.Move(fyne.NewPos(0, headerHeight))
+		}
+	}
+	place(w.sheet, 0, at, size.Width, size.Height-at, over)
 }
 
 // pageWidth is 268 in the drawing; pages grow less than the window.
@@ -59,6 +69,9 @@ func pageWidth(window float32) float32 {
 // than its picture and a few sentences need.
 func (w *window) spineHeight(width, room float32) float32 {
 	wanted := w.spineHeadHeight(width) + float32(len(w.view.spine.Rows))*rowHeight + spineFoot
+	if w.state.Drafting {
+		wanted = 382
+	}
 	wanted = max(wanted, 360)
 	bench := max(250, room*0.4)
 	return max(200, min(wanted, room-bench))

@@ -73,6 +73,6 @@ func (w *window) compare() {
 		if err != nil {
 			return failed("Comparing", err)
 		}
-		return func(s desk.State) desk.State { return s.WithResult(next.Record.Result) }
+		return func(s desk.State) desk.State { return s.ComparedAgain(next.Record.Result, person(), now()) }
 	})
 }

@@ -27,7 +27,7 @@ type search struct {
 func newSearch(changed func(), key func(fyne.KeyName) bool, shortcut func(fyne.Shortcut) bool) *search {
 	s := &search{key: key, shortcut: shortcut}
 	s.ExtendBaseWidget(s)
-	s.SetPlaceHolder("Search the register: title, what it supports, lots, verdict, signer")
+	s.SetPlaceHolder("Search: title, lots, verdict, signer")
 	s.OnChanged = func(string) { changed() }
 	s.OnSubmitted = func(string) { key(fyne.KeyReturn) }
 	return s
@@ -141,7 +141,7 @@ func (w *window) paintListRow(p *pen, width float32, i int, focused bool) {
 // paintList draws the register: the first thing seen.
 func (w *window) paintList(p *pen, size fyne.Size) {
 	right := size.Width - margin
-	for _, b := range []*button{w.act.openTheSample, w.act.openWorkbook, w.act.openPlan} {
+	for _, b := range []*button{w.act.openTheSample, w.act.openWorkbook, w.act.openPlan, w.act.begin} {
 		wide := b.font().width(b.label) + 36
 		p.put(b, right-wide, 22, wide, 32)
 		b.Refresh()

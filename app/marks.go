@@ -27,6 +27,12 @@ func (w *window) mark(of qa.Side) fyne.CanvasObject {
 // benchPicture is the picture of the characteristic looked at, nil where there is none.
 func (w *window) benchPicture() chart.Picture {
 	s := w.state
+	if s.Drafting {
+		if f := w.powerPicture(); f != nil {
+			return f
+		}
+		return nil
+	}
 	if _, ok := s.Characteristic(); !ok {
 		return nil
 	}

@@ -15,6 +15,7 @@ import (
 
 	"lotpair/app/desk"
 	"lotpair/exports"
+	"lotpair/exports/opcsign"
 	"lotpair/importers"
 	"lotpair/qa"
 )
@@ -52,7 +53,7 @@ func (w *window) askOpen() {
 		_ = r.Close() // opened for its name only
 		w.open(name, readFile)
 	}, w.win)
-	d.SetFilter(storage.NewExtensionFileFilter([]string{".toml", ".xlsx"}))
+	d.SetFilter(storage.NewExtensionFileFilter([]string{".toml", ".xlsx", ".csv", ".tsv", ".txt"}))
 	if w.state.Open {
 		if at, err := storage.ListerForURI(storage.NewFileURI(absolute(filepath.Dir(w.state.Path)))); err == nil {
 			d.SetLocation(at)
@@ -61,8 +62,25 @@ func (w *window) askOpen() {
 	w.present(d, 820, 560)
 }
 
-// open opens a plan or a workbook, whichever the name says.
-func (w *window) open(name string, read func(string) ([]byte, error)) {
+// sideAt is the page at a place of the window; empty where there is none.
+func (w *window) sideAt(at fyne.Position) qa.Side {
+	page := pageWidth(w.win.Canvas().Size().Width)
+	switch {
+	case !w.state.Open:
+		return ""
+	case at.X < page:
+		return qa.Reference
+	case at.X > w.win.Canvas().Size().Width-page:
+		return qa.Candidate
+	}
+	return ""
+}
+
+// open opens a plan, a workbook or a file of readings, whichever it is.
+func (w *window) open(name string, read func(string) ([]byte, error)) { w.bring(name, "", read) }
+
+// bring opens a file on the page of one lot.
+func (w *window) bring(name string, side qa.Side, read func(string) ([]byte, error)) {
 	place := "Opening " + filepath.Base(name)
 	w.work(place, func() change {
 		read := w.keeping(read)
@@ -70,8 +88,15 @@ func (w *window) open(name string, read func(string) ([]byte, error)) {
 		if err != nil {
 			return failed(place, err)
 		}
-		if strings.EqualFold(filepath.Ext(name), ".xlsx") {
-			return openWorkbook(place, name, data)
+		switch strings.ToLower(filepath.Ext(name)) {
+		case ".toml":
+		case ".xlsx":
+			if _, err := exports.ReadRecord(data); !errors.Is(err, exports.ErrNoRecord) || opcsign.HasSignature(data) {
+				return openWorkbook(place, name, data)
+			}
+			return w.lookInto(name, data, "", side)
+		default:
+			return w.lookInto(name, data, "", side)
 		}
 		rec, err := w.compareByPlan(name, data, read)
 		if err != nil {

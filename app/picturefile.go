@@ -24,12 +24,7 @@ func (w *window) askPicture() {
 	if !ok || w.state.Job.Name != "" || w.dialog != nil {
 		return
 	}
-	name := strings.Map(func(r rune) rune {
-		if unicode.IsLetter(r) || unicode.IsDigit(r) {
-			return unicode.ToLower(r)
-		}
-		return '-'
-	}, c.Name+"-"+w.state.Shown().String())
+	name := fileName(c.Name + "-" + w.state.Shown().String())
 	to := w.newField(filepath.Join(filepath.Dir(absolute(w.proposed())), name+".svg"))
 	to.Validator = filled("a file name that ends in .svg or .png")
 	d := dialog.NewForm("Save the picture", "Save", "Cancel", []*widget.FormItem{widget.NewFormItem("File (.svg or .png)", to)}, func(ok bool) {
@@ -38,6 +33,16 @@ func (w *window) askPicture() {
 		}
 	}, w.win)
 	w.presentForm(d, to)
+}
+
+// fileName is words as the name of a file.
+func fileName(words string) string {
+	return strings.Map(func(r rune) rune {
+		if unicode.IsLetter(r) || unicode.IsDigit(r) {
+			return unicode.ToLower(r)
+		}
+		return '-'
+	}, words)
 }
 
 // savePicture writes the picture of the bench, as ink on paper.

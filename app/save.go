@@ -20,6 +20,13 @@ func (w *window) proposed() string {
 		return w.state.Workbook.Path
 	}
 	name := w.state.Path
+	if name == "" {
+		home, err := os.UserHomeDir()
+		if err != nil {
+			home = "."
+		}
+		return filepath.Join(home, fileName(w.view.header.Title)+".xlsx")
+	}
 	if strings.HasPrefix(name, "example/") {
 		home, err := os.UserHomeDir()
 		if err != nil {

@@ -27,7 +27,7 @@ func (w *window) paintStart(p *pen, size fyne.Size) {
 	x, y := size.Width/2-wide/2, size.Height/2-110
 	p.centred("Open a comparison", size.Width/2, y, fontVerdict, p.Text)
 	y += 24
-	for _, b := range []*button{w.act.openPlan, w.act.openWorkbook, w.act.openTheSample} {
+	for _, b := range []*button{w.act.begin, w.act.openPlan, w.act.openWorkbook, w.act.openTheSample} {
 		p.put(b, x, y, wide, tall)
 		b.Refresh()
 		y += tall + 12

@@ -28,15 +28,25 @@ type window struct {
 	list     listing
 	search   *search
 
-	state  desk.State
-	view   view
+	state desk.State
+	view  view
+
+	draft       draftLines
+	drafted     desk.DraftView
+	shift       float64 // the true difference that is thought of while planning
+	stated      qa.Plan // the draft of the plan as it was kept last
+	sheetSaid   desk.SheetView
+	looked      []byte            // of the file that is looked at
+	bytes       map[string][]byte // of the files that were brought in, by their digest
+	partButtons map[int]*button
+
 	dialog dialog.Dialog // the one that is open, nil where none is
 
 	root                                               *fyne.Container
 	paper, header, banner, left, spine, right, bench   *region
-	start, foot                                        *region
+	start, foot, sheet                                 *region
 	leftRows, spineRows, rightRows, sentences, problem *scrolled
-	listRows                                           *scrolled
+	listRows, draftRows, sheetRows, sheetLedger        *scrolled
 	picture                                            *chart.Drawing         // of the bench
 	lines                                              map[int]*chart.Drawing // of the spine, by characteristic
 	cursor                                             map[qa.Side]int        // the reading that the keys are on
@@ -58,12 +68,17 @@ type buttons struct {
 	looks                                 [desk.Limits + 1]*button
 	order, picture, read, cancel, leave   *button
 	compare, signatures, export, sign     *button
+	begin, particulars, seal, take, amend *button
+	objective, method, of, characteristic *button
+	kinds                                 [desk.MultipleOfSD + 1]*button
+	sheet, decimal, unmask, leaveSheet    *button
+	takeHeadings, takeReadings            *button
 	openPlan, openWorkbook, openTheSample *button
 }
 
 // newWindow makes the window; without a register nothing is kept.
 func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
-	w := &window{app: a, build: b, look: l, register: r, cursor: map[qa.Side]int{}, lines: map[int]*chart.Drawing{}, rows: map[qa.Side]*pageRows{}}
+	w := &window{app: a, build: b, look: l, register: r, cursor: map[qa.Side]int{}, lines: map[int]*chart.Drawing{}, rows: map[qa.Side]*pageRows{}, bytes: map[string][]byte{}, partButtons: map[int]*button{}}
 	a.Settings().SetTheme(l)
 	w.win = a.NewWindow("Lotpair")
 	w.win.SetPadded(false)
@@ -72,30 +87,43 @@ func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
 	w.paper = newRegion(w.palette, func(p *pen, s fyne.Size) { p.box(0, 0, s.Width, s.Height, p.Paper) })
 	w.header = newRegion(w.palette, w.paintHeader)
 	w.banner = newRegion(w.palette, w.paintBanner)
-	w.left = newRegion(w.palette, func(p *pen, s fyne.Size) { w.paintPage(p, s, qa.Reference) })
-	w.right = newRegion(w.palette, func(p *pen, s fyne.Size) { w.paintPage(p, s, qa.Candidate) })
-	w.spine = newRegion(w.palette, w.paintSpine)
-	w.bench = newRegion(w.palette, w.paintBench)
+	// What stands in a region while the criterion is written, and what stands there once it is decided.
+	either := func(draft, decided func(*pen, fyne.Size)) *region {
+		return newRegion(w.palette, func(p *pen, s fyne.Size) {
+			if w.state.Drafting {
+				draft(p, s)
+				return
+			}
+			decided(p, s)
+		})
+	}
+	page := func(of qa.Side) *region {
+		return either(func(p *pen, s fyne.Size) { w.paintDraftPage(p, s, of) }, func(p *pen, s fyne.Size) { w.paintPage(p, s, of) })
+	}
+	w.left, w.right = page(qa.Reference), page(qa.Candidate)
+	w.spine, w.bench = either(w.paintDraft, w.paintSpine), either(w.paintPlanning, w.paintBench)
 	w.foot = newRegion(w.palette, w.paintFoot)
 	w.start = newRegion(w.palette, w.paintStart)
 	w.leftRows, w.rightRows = w.newPageRows(qa.Reference), w.newPageRows(qa.Candidate)
 	w.spineRows = w.newSpineRows()
 	w.sentences = w.newSentences()
 	w.problem = w.newProblem()
-	w.listRows = w.newListRows()
+	w.listRows, w.draftRows, w.sheetRows, w.sheetLedger = w.newListRows(), w.newDraftRows(), w.newSheetRows(), w.newSheetLedger()
+	w.draft = w.newDraftLines()
+	w.sheet = newRegion(w.palette, w.paintSheet)
 	w.search = newSearch(func() { w.find(); w.start.Refresh() }, w.listKey, w.shortcut)
 	w.picture = chart.New(nil, w.palette())
 	// The order of the objects is the order of the Tab key.
-	w.root = container.New(windowLayout{w}, w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot)
+	w.root = container.New(windowLayout{w}, w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot, w.sheet)
 	w.win.SetContent(w.root)
 	w.win.Resize(fyne.NewSize(1280, 800))
 	w.win.Canvas().SetOnTypedKey(w.typed)
 	for _, k := range w.shortcuts() {
 		w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: k.key, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { k.act() })
 	}
-	w.win.SetOnDropped(func(_ fyne.Position, files []fyne.URI) {
+	w.win.SetOnDropped(func(at fyne.Position, files []fyne.URI) {
 		if len(files) > 0 && w.dialog == nil {
-			w.open(files[0].Path(), readFile)
+			w.bring(files[0].Path(), w.sideAt(at), readFile)
 		}
 	})
 	a.Settings().AddListener(func(fyne.Settings) { w.show() })
@@ -122,7 +150,29 @@ func (w *window) makeButtons() {
 	b.signatures = newButton(w.palette, "", quiet, w.showSignatures)
 	b.export = newButton(w.palette, "", plain, w.askExport)
 	b.sign = newButton(w.palette, "", main, w.askSign)
-	b.openPlan = newButton(w.palette, "Open a plan", main, w.askOpen)
+	b.begin = newButton(w.palette, "New comparison", main, w.beginComparison)
+	b.particulars = newButton(w.palette, "Particulars", quiet, w.askParticulars)
+	b.seal = newButton(w.palette, "", main, w.sealDraft)
+	b.amend = newButton(w.palette, "", quiet, w.askAmend)
+	b.take = newButton(w.palette, "", main, w.takeKept)
+	b.objective = newButton(w.palette, "", strong, w.offerObjective)
+	b.method = newButton(w.palette, "", word, w.offerMethod)
+	b.of = newButton(w.palette, "", word, w.offerOf)
+	b.characteristic = newButton(w.palette, "Add a characteristic", quiet, func() { w.askCharacteristic(len(w.state.Record.Plan.Characteristics)) })
+	for k := range b.kinds {
+		b.kinds[k] = newButton(w.palette, desk.MarginKinds[k], choice, func() { w.chooseKind(desk.MarginKind(k)) })
+	}
+	b.sheet = newButton(w.palette, "", strong, w.offerSheets)
+	b.decimal = newButton(w.palette, "", strong, w.offerDecimal)
+	b.unmask = newButton(w.palette, "Show the readings", plain, func() {
+		w.apply(func(s desk.State) desk.State { return s.WithSight(person(), now()) })
+	})
+	b.leaveSheet = newButton(w.palette, "Leave", plain, func() {
+		w.apply(func(s desk.State) desk.State { return s.WithSheet(nil) })
+	})
+	b.takeHeadings = newButton(w.palette, "Take headings and limits only", plain, w.takeHeadings)
+	b.takeReadings = newButton(w.palette, "Take these readings", main, w.takeReadings)
+	b.openPlan = newButton(w.palette, "Open a plan", plain, w.askOpen)
 	b.openWorkbook = newButton(w.palette, "Open a workbook", plain, w.askOpen)
 	b.openTheSample = newButton(w.palette, "Open the worked example", plain, w.openSample)
 }
@@ -174,6 +224,36 @@ func (w *window) acknowledged(before, next desk.State) desk.State {
 	return next
 }
 
+// showDraft sets what is said while the criterion is written and while a file is looked at.
+func (w *window) showDraft() {
+	s := w.state
+	if s.Sheet != nil {
+		w.sheetSaid = s.Sheet.View(s.Record.Plan)
+		w.act.sheet.label = w.sheetSaid.Sheet
+	}
+	if !s.Drafting {
+		w.drafted = desk.DraftView{}
+		return
+	}
+	w.drafted = s.Draft(w.shift)
+	for _, d := range w.draft {
+		if d.name == "true difference" {
+			continue
+		}
+		d.line.show(d.show(s.Record.Plan, s.Selected))
+		if lots := d.name == "reference lot" || d.name == "candidate lot" || d.name == "reference source" || d.name == "candidate source"; !lots && s.Sealed() {
+			d.Disable()
+		} else {
+			d.Enable()
+		}
+	}
+	w.act.method.label = methodText(s.Record.Plan.Criterion.Method)
+	w.act.of.label = "full width"
+	if m := s.Record.Plan.Criterion.Margin; m != nil && m.Of == "half" {
+		w.act.of.label = "half width"
+	}
+}
+
 // show sets everything from the state.
 func (w *window) show() {
 	s := w.state
@@ -188,6 +268,7 @@ func (w *window) show() {
 	if w.win.Title() != title {
 		w.win.SetTitle(title)
 	}
+	w.showDraft()
 	w.lines, w.rows = map[int]*chart.Drawing{}, map[qa.Side]*pageRows{}
 	w.picture.SetPicture(w.benchPicture(), w.palette())
 	b := &w.act
@@ -197,14 +278,15 @@ func (w *window) show() {
 	for _, l := range w.view.bench.Looks {
 		b.looks[l.Look].chosen = l.Chosen
 	}
+	b.seal.label, b.take.label, b.amend.label = w.view.foot.Seal, w.view.foot.Take, w.view.foot.Amend
 	busy := s.Job.Name != ""
-	for _, x := range []*button{b.picture, b.leave, b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample} {
+	for _, x := range []*button{b.picture, b.leave, b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample, b.begin, b.particulars, b.seal, b.take, b.amend, b.takeHeadings, b.takeReadings, b.unmask} {
 		x.disabled = busy
 	}
 	if w.root.Size().Width > 0 {
 		w.root.Layout.Layout(w.root.Objects, w.root.Size())
 	}
-	for _, r := range []*region{w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot} {
+	for _, r := range []*region{w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot, w.sheet} {
 		r.Refresh()
 	}
 	w.revealSelected()

@@ -3,6 +3,7 @@ package desk
 import (
 	"fmt"
 	"strconv"
+	"time"
 
 	"lotpair/qa"
 )
@@ -24,7 +25,11 @@ func (s State) Reopened(next State, view View) State {
 	if next.Compared {
 		next.Selected = weightiest(next.Record.Result)
 	}
-	if n := len(next.Record.Readings.Characteristics); view.Known && view.Selected >= 0 && view.Selected < n {
+	n := len(next.Record.Readings.Characteristics)
+	if next.Drafting {
+		n = len(next.Record.Plan.Characteristics)
+	}
+	if view.Known && view.Selected >= 0 && view.Selected < n {
 		next.Selected, next.Sorted, next.Looking = view.Selected, view.Sorted, view.Looking
 	}
 	return next.did("opened the record again: " + next.Path)
@@ -51,7 +56,11 @@ func weightiest(r qa.Result) int {
 
 // WithSelected looks at another characteristic. A place that does not exist changes nothing.
 func (s State) WithSelected(i int) State {
-	if !s.Compared || i < 0 || i >= len(s.Record.Result.Characteristics) || i == s.Selected {
+	n := len(s.Record.Result.Characteristics)
+	if s.Drafting {
+		n = len(s.Record.Plan.Characteristics)
+	}
+	if !s.Compared && !s.Drafting || i < 0 || i >= n || i == s.Selected {
 		return s
 	}
 	s.Selected = i
@@ -112,6 +121,12 @@ func (s State) WithResult(res qa.Result) State {
 	s.Record.Result, s.Compared = res, true
 	s.Selected = max(0, min(s.Selected, len(res.Characteristics)-1))
 	return s.acted("compared")
+}
+
+// ComparedAgain takes a result as WithResult does, and puts the comparison into the trail.
+func (s State) ComparedAgain(res qa.Result, who string, when time.Time) State {
+	s.Record.Trail = s.Record.Trail.With(when, who, "compared", string(res.Verdict), "")
+	return s.WithResult(res)
 }
 
 // Working says what runs off the window's thread, and how much of it is done (below 0 where that is not known).

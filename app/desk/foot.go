@@ -14,6 +14,9 @@ type FootView struct {
 	Sign       string // the label of the button; "" where there is nothing to sign
 	Meaning    string // what would be signed
 	Signatures string // the label of the button that lists them; "" where there are none and nothing is wrong
+	Seal       string // the label of the button that fixes the criterion
+	Amend      string // the label of the button that changes a sealed criterion, with a reason
+	Take       string // the label of the button that opens the kept file to take its readings
 	Compare    string // the label of the button that compares again
 }
 
@@ -22,10 +25,20 @@ func (s State) Foot() FootView {
 	if !s.Open {
 		return FootView{Next: "Next: open a record, a plan or a workbook."}
 	}
+	if s.Drafting {
+		return s.draftFoot()
+	}
 	if !s.Compared {
-		return FootView{Next: "Next: compare again.", Compare: "Compare"}
+		v := FootView{Next: "Next: compare again.", Compare: "Compare"}
+		if s.Sealed() && !s.Closed() {
+			v.Amend = "Amend"
+		}
+		return v
 	}
 	v := FootView{Said: s.Said}
+	if s.Sealed() && !s.Closed() {
+		v.Amend = "Amend"
+	}
 	w := s.Workbook
 	if !w.Opened && len(w.Signatures) == 0 {
 		v.Export = "Export workbook"
@@ -42,6 +55,28 @@ func (s State) Foot() FootView {
 		v.Meaning, v.Sign = m, "Sign as "+m
 	}
 	v.Next = s.next(v)
+	return v
+}
+
+// draftFoot says the one next thing to do before a comparison was made.
+func (s State) draftFoot() FootView {
+	v := FootView{Said: s.Said}
+	faults := s.Faults()
+	if s.Sealed() {
+		v.Amend = "Amend"
+	}
+	switch {
+	case s.Sealed() && s.Missing() == "":
+		v.Next, v.Take = "Next: take the readings.", "Take the readings"
+	case s.Sealed():
+		v.Next = "Next: bring in the readings of the " + string(s.Missing()) + "."
+	case len(s.Record.Plan.Characteristics) == 0:
+		v.Next = "Next: bring a file in and take its headings and limits, or add a characteristic."
+	case len(faults) > 0:
+		v.Next = "Next: " + faults[0]
+	default:
+		v.Next, v.Seal = "Next: seal the criterion. It can be amended later, with a reason that stays in the record.", "Seal criterion"
+	}
 	return v
 }
 

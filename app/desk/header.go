@@ -21,17 +21,35 @@ func (s State) Header() HeaderView {
 		return HeaderView{Title: "Lotpair", Supports: "is a candidate lot equivalent to a reference lot?"}
 	}
 	v := HeaderView{Title: s.Record.Plan.Title, Supports: "supports " + s.Record.Plan.Supports}
-	if v.Title == "" {
+	if v.Title == "" && s.Path == "" {
+		v.Title = "Comparison without a title"
+	} else if v.Title == "" {
 		v.Title = base(s.Path)
 	}
 	if s.Record.Plan.Supports == "" {
 		v.Supports = "supports: not stated"
+	}
+	if s.Drafting {
+		return s.draftHeader(v)
 	}
 	seal, note := sealText(s.Record.Result.Seal)
 	v.Right, v.Note = seal, note
 	if w := s.Workbook; w.State != "" {
 		v.Right, v.Alarm = StateText(w), w.State != "intact"
 		v.Note = seal
+	}
+	return v
+}
+
+// draftHeader says what is known of the criterion before a comparison was made.
+func (s State) draftHeader(v HeaderView) HeaderView {
+	if s.Sealed() {
+		v.Right, v.Note = sealText(s.Record.Result.Seal)
+		return v
+	}
+	v.Right, v.Note = "criterion not sealed", "no readings opened yet"
+	if s.Seen {
+		v.Note = "readings were looked at: the record will say so"
 	}
 	return v
 }

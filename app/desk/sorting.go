@@ -34,9 +34,16 @@ func (b Sorting) Next() Sorting { return (b + 1) % 3 }
 // lines are the places of the characteristics in the order of the spine.
 func (s State) lines() []int {
 	cs := s.Record.Result.Characteristics
-	out := make([]int, len(cs))
+	n := len(cs)
+	if s.Drafting {
+		n = len(s.Record.Plan.Characteristics)
+	}
+	out := make([]int, n)
 	for i := range out {
 		out[i] = i
+	}
+	if s.Drafting {
+		return out
 	}
 	var key func(qa.Comparison) float64
 	switch s.Sorted {

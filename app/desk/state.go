@@ -13,8 +13,12 @@ type State struct {
 	Path     string    // the file that was opened, as the user named it
 	Record   qa.Record // plan, readings, result and trail; the result is empty while Compared is false
 	Compared bool
-	Workbook Workbook // the signed or exported file, empty while there is none
-	Selected int      // the characteristic looked at: its place in the result
+	Drafting bool      // the criterion is being written: no comparison was made yet
+	Seen     bool      // a reading was seen while the criterion was written
+	Files    []qa.File // whose bytes are kept for a comparison that is being prepared
+	Sheet    *Sheet    // the file that is looked at before anything is taken from it; nil while none is
+	Workbook Workbook  // the signed or exported file, empty while there is none
+	Selected int       // the characteristic looked at: its place in the result
 	Sorted   Sorting
 	Looking  Look    // how the bench looks at it
 	Job      Job     // what is being done, empty while nothing is

@@ -1,0 +1,153 @@
+package desk
+
+import (
+	"strings"
+
+	"lotpair/qa"
+)
+
+// DraftView is what is said while the criterion is written.
+type DraftView struct {
+	Reference, Candidate string // the lots, as they are called
+	Objective            string
+	Kind                 MarginKind
+	Rows                 []DraftRow
+	Together             string // how likely all pass
+	Name                 string // of the characteristic looked at
+	Headline             string
+	Paragraphs           []string
+	Lacks                string // what stands in the way of the seal; empty where nothing does
+	Sealed               bool
+	Looked               Planned // the characteristic looked at
+}
+
+// DraftRow is what the criterion comes to for one characteristic.
+type DraftRow struct {
+	Name, Lower, Upper, Margin, SD, Permits, Parts string
+	Selected                                       bool
+}
+
+// MarginKind is a way of stating the margin.
+type MarginKind int
+
+// The ways of stating the margin, in their order on the screen.
+const (
+	PartOfTolerance MarginKind = iota
+	InTheUnit
+	RatioOfMeans
+	KeepsPpk
+	MultipleOfSD
+)
+
+// MarginKinds are the words for the ways of stating the margin.
+var MarginKinds = []string{"part of the tolerance", "in the unit", "ratio of means", "keeps a Ppk", "multiple of a known SD"}
+
+// MarginKindsShort are shorter words for the same, for a narrow window.
+var MarginKindsShort = []string{"of the tolerance", "in the unit", "ratio", "keeps a Ppk", "times an SD"}
+
+// KindOf is the way in which the plan states its margin.
+func KindOf(p qa.Plan) MarginKind {
+	m := p.Criterion.Margin
+	switch {
+	case m == nil || m.ToleranceFraction != nil:
+		return PartOfTolerance
+	case m.ReferenceFraction != nil:
+		return RatioOfMeans
+	case m.KeepPpk != nil:
+		return KeepsPpk
+	case m.SDMultiple != nil:
+		return MultipleOfSD
+	}
+	return InTheUnit
+}
+
+// ObjectiveText is the objective as the claim says it.
+func ObjectiveText(o qa.Objective) string {
+	switch o {
+	case qa.NotLower:
+		return "not lower than"
+	case qa.NotHigher:
+		return "not higher than"
+	}
+	return "equivalent to"
+}
+
+// Draft says what the criterion comes to; shift is the true difference that is thought of.
+func (s State) Draft(shift float64) DraftView {
+	p := Settled(s.Record.Plan)
+	v := DraftView{Reference: p.Reference.Lot, Candidate: p.Candidate.Lot, Objective: ObjectiveText(p.Criterion.Objective), Kind: KindOf(p), Sealed: s.Sealed()}
+	if v.Reference == "" {
+		v.Reference = "the reference"
+	}
+	if v.Candidate == "" {
+		v.Candidate = "The candidate"
+	}
+	var all []Planned
+	for i, c := range p.Characteristics {
+		one := planned(p, c)
+		all = append(all, one)
+		v.Rows = append(v.Rows, rowOfDraft(one, i == s.Selected))
+		if i == s.Selected {
+			v.Looked, v.Name = one, c.Name
+			v.Headline, v.Paragraphs = one.sentences(p, shift)
+		}
+	}
+	v.Together = together(all)
+	if len(p.Characteristics) == 0 {
+		v.Headline = "What is measured?"
+		v.Paragraphs = []string{"Bring a file in on either side and take its headings and limits: no reading is seen. Or add the characteristics by hand."}
+	}
+	if faults := s.Faults(); len(faults) > 0 {
+		v.Lacks = strings.ReplaceAll(faults[0], "\n", " ")
+	}
+	return v
+}
+
+func rowOfDraft(p Planned, selected bool) DraftRow {
+	c := p.Characteristic
+	r := DraftRow{Name: c.Name, Margin: p.Margin, Selected: selected}
+	number := func(v *float64) string {
+		if v == nil {
+			return ""
+		}
+		return qa.Plain(*v)
+	}
+	r.Lower, r.Upper, r.SD = number(c.Lower), number(c.Upper), number(c.SD)
+	if p.Fault != "" {
+		r.Margin = "not settled"
+	}
+	if p.Permits != nil {
+		r.Permits = qa.Fixed(p.Permits.Ppk, 2)
+	}
+	if p.N > 0 {
+		r.Parts = qa.Plain(float64(p.N))
+	}
+	return r
+}
+
+// Settled is the plan with the margins that each characteristic has to state for itself: what keeps a Ppk and what is a
+// multiple of a standard deviation rests on the characteristic's own target and planned standard deviation.
+func Settled(p qa.Plan) qa.Plan {
+	m := p.Criterion.Margin
+	if m == nil || m.KeepPpk == nil && m.SDMultiple == nil {
+		return p
+	}
+	out := make([]qa.Characteristic, 0, len(p.Characteristics))
+	for _, c := range p.Characteristics {
+		if own := c.Margin; own == nil || own.KeepPpk != nil || own.SDMultiple != nil {
+			c.Margin = nil
+			if c.SD != nil {
+				settled := *m
+				settled.SD = c.SD
+				if m.KeepPpk != nil {
+					centre := centreOf(c)
+					settled.Mean = &centre
+				}
+				c.Margin = &settled
+			}
+		}
+		out = append(out, c)
+	}
+	p.Characteristics = out
+	return p
+}

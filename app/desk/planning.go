@@ -1,0 +1,266 @@
+package desk
+
+import (
+	"errors"
+	"fmt"
+	"math"
+
+	"lotpair/qa"
+	"lotpair/qa/figure"
+	"lotpair/qa/stats"
+)
+
+// Planned is what the criterion comes to for one characteristic before its readings are known.
+type Planned struct {
+	Characteristic qa.Characteristic
+	Fault          string // why nothing can be said
+	Margin         string // in the unit
+	Lower, Upper   *float64
+	Permits        *qa.Permits
+	SD             float64 // 0 where none is planned
+	N              int     // parts a lot for the wanted power; 0 where it is not known
+	Power          float64 // reached with N
+
+	design stats.Design
+	ready  bool // whether design can be asked
+}
+
+// planned says what the plan comes to for one characteristic. The margin in the unit and what it permits are taken from the
+// comparison itself, run on two readings a lot that have the target as their mean and the planned standard deviation.
+func planned(p qa.Plan, c qa.Characteristic) Planned {
+	out := Planned{Characteristic: c}
+	centre, step := centreOf(c), 1.0
+	if c.SD != nil && *c.SD > 0 {
+		out.SD, step = *c.SD, *c.SD
+	}
+	at := func(mean float64) qa.Lot {
+		s := qa.Series{Characteristic: c.Name, Rows: 2}
+		for _, v := range []float64{mean - step/math.Sqrt2, mean + step/math.Sqrt2} {
+			s.Readings = append(s.Readings, qa.Reading{Value: v})
+		}
+		return qa.Lot{Series: []qa.Series{s}}
+	}
+	// The candidate stands far off: a verdict that is left undecided would be asked how large a new study must be.
+	far := 1000 * (step + math.Abs(centre))
+	if w, ok := c.Tolerance(); ok {
+		far += 1000 * w
+	}
+	r := qa.Readings{Characteristics: []qa.Characteristic{c}, Reference: at(centre), Candidate: at(centre + far)}
+	p.Characteristics, p.Sensitivity = []qa.Characteristic{c}, nil
+	res, err := qa.Compare(p, r, qa.Run{})
+	if err != nil {
+		out.Fault = err.Error()
+		return out
+	}
+	x := res.Characteristics[0]
+	e := x.Equivalence
+	if e == nil || e.MarginLower == nil && e.MarginUpper == nil {
+		out.Margin = "no margin"
+		return out
+	}
+	out.Margin, out.Lower, out.Upper = qa.MarginText(x), e.MarginLower, e.MarginUpper
+	if e.Scale == "ratio" {
+		out.Lower, out.Upper = inUnit(e.MarginLower, centre), inUnit(e.MarginUpper, centre)
+		if centre == 0 {
+			return out
+		}
+	}
+	if out.SD > 0 {
+		if c.Target != nil || c.Lower != nil && c.Upper != nil { // else it is not known where the reference sits
+			out.Permits = e.Permits
+		}
+		out.size(p, x)
+	}
+	return out
+}
+
+// inUnit is a ratio's end as a difference from the mean it is a ratio of.
+func inUnit(ratio *float64, mean float64) *float64 {
+	if ratio == nil {
+		return nil
+	}
+	d := (*ratio - 1) * mean
+	return &d
+}
+
+// centreOf is where a characteristic is expected: its target, the middle of its limits, or the one limit it has.
+func centreOf(c qa.Characteristic) float64 {
+	switch {
+	case c.Target != nil:
+		return *c.Target
+	case c.Lower != nil && c.Upper != nil:
+		return *c.Lower + (*c.Upper-*c.Lower)/2
+	case c.Lower != nil:
+		return *c.Lower
+	case c.Upper != nil:
+		return *c.Upper
+	}
+	return 0
+}
+
+// mostParts is the largest study that is thought of.
+const mostParts = 100_000
+
+// size finds how many parts a lot the wanted power needs.
+func (p *Planned) size(plan qa.Plan, x qa.Comparison) {
+	aims := map[qa.Objective]stats.Aim{qa.Equivalence: stats.AimWithin, qa.NotLower: stats.AimNotLower, qa.NotHigher: stats.AimNotHigher}
+	aim, ok := aims[x.Objective]
+	if !ok {
+		return
+	}
+	p.design = stats.Design{Aim: aim, SDRef: p.SD, SDCand: p.SD, Alpha: x.Alpha, Lower: math.Inf(-1), Upper: math.Inf(1)}
+	if p.Lower != nil {
+		p.design.Lower = *p.Lower
+	}
+	if p.Upper != nil {
+		p.design.Upper = *p.Upper
+	}
+	power := wantedPower(plan)
+	n, _, reached, err := stats.Size(p.design, 1, power)
+	if err != nil || n > mostParts {
+		return
+	}
+	p.N, p.Power, p.ready = n, reached, true
+}
+
+func wantedPower(p qa.Plan) float64 {
+	if p.Criterion.Power != nil {
+		return *p.Criterion.Power
+	}
+	return 0.9
+}
+
+// at is the power with n parts a lot at a true difference.
+func (p Planned) at(n int, shift float64) (float64, error) {
+	if !p.ready {
+		return 0, errors.New("power: found no planned standard deviation, want one; type it below")
+	}
+	d := p.design
+	d.NRef, d.NCand, d.Shift = n, n, shift
+	return d.Power()
+}
+
+// Curves are the power curves: of the parts needed, of half as many and of a good half more.
+func (p Planned) Curves() (figure.PowerCurves, bool) {
+	out := figure.PowerCurves{Name: p.Characteristic.Name, Unit: p.Characteristic.Unit, Lower: p.Lower, Upper: p.Upper}
+	if !p.ready {
+		return out, false
+	}
+	reach := 1.3 * math.Max(absolute(p.Lower), absolute(p.Upper))
+	out.Low, out.High = -reach, reach
+	const steps = 60
+	for _, k := range []figure.Curve{{N: p.N * 7 / 4}, {N: p.N, Main: true}, {N: p.N / 2, Fewer: true}} {
+		if k.N < 2 || k.N == p.N && !k.Main {
+			continue
+		}
+		for i := range steps + 1 {
+			power, err := p.at(k.N, -reach+2*reach*float64(i)/steps)
+			if err != nil {
+				return out, false
+			}
+			k.Powers = append(k.Powers, power)
+		}
+		out.Curves = append(out.Curves, k)
+	}
+	return out, true
+}
+
+func absolute(v *float64) float64 {
+	if v == nil {
+		return 0
+	}
+	return math.Abs(*v)
+}
+
+// sentences say what the plan needs and what it lets through. shift is the true difference that is thought of.
+func (p Planned) sentences(plan qa.Plan, shift float64) (headline string, out []string) {
+	unit, power := p.Characteristic.Unit, wantedPower(plan)
+	switch {
+	case p.Fault != "":
+		return "The margin is not settled.", []string{p.Fault}
+	case p.SD == 0:
+		return "How many parts are needed?", []string{"The margin is " + p.Margin + ". With a standard deviation expected beforehand it is said how many parts a lot show it; type it below."}
+	case !p.ready:
+		return "No number of parts would do.", []string{fmt.Sprintf("The margin is %s; at a standard deviation of %s more than %d parts a lot would be needed, or none is enough.", p.Margin, withUnit(qa.Plain(p.SD), unit), mostParts)}
+	}
+	headline = fmt.Sprintf("%d parts a lot show it with probability %s", p.N, qa.Fixed(p.Power, 2))
+	text := fmt.Sprintf("if the true means are equal and the standard deviation is %s in both lots, normal and independent.", withUnit(qa.Plain(p.SD), unit))
+	if half := p.halfway(); half != 0 {
+		d := p.design
+		d.Shift = half
+		if n, _, _, err := stats.Size(d, 1, power); err == nil && n <= mostParts {
+			text += fmt.Sprintf(" If the candidate really sits half a margin off, %d are needed.", n)
+		}
+	}
+	out = append(out, text)
+	if shift != 0 {
+		d := p.design
+		d.Shift = shift
+		if n, _, reached, err := stats.Size(d, 1, power); err == nil && n <= mostParts {
+			out = append(out, fmt.Sprintf("At a true difference of %s, %d parts a lot show it with probability %s.", withUnit(qa.Plain(shift), unit), n, qa.Fixed(reached, 2)))
+		} else {
+			out = append(out, fmt.Sprintf("At a true difference of %s no number of parts shows it: that is at or beyond the margin, or more than %d parts.", withUnit(qa.Plain(shift), unit), mostParts))
+		}
+	}
+	if few := p.N / 2; few >= 2 {
+		d := p.design
+		d.NRef, d.NCand = few, few
+		if m, err := stats.SmallestMargin(d, power); err == nil {
+			out = append(out, fmt.Sprintf("With %d parts a lot the smallest margin that can be shown with probability %s is ±%s.", few, qa.Plain(power), withUnit(threeDigits(m), unit)))
+		}
+	}
+	if m := p.Permits; m != nil {
+		out = append(out, fmt.Sprintf("A mean at the margin would leave Ppk %s and %s outside the limits, for a reference that sits on %s.",
+			qa.Fixed(m.Ppk, 2), qa.ShareText(m.Outside), withUnit(qa.Plain(centreOf(p.Characteristic)), unit)))
+	}
+	if r := plan.Criterion.SpreadRatio; r != nil && *r > 1 {
+		d := p.design
+		d.SpreadRatio = *r
+		if n, _, _, err := stats.SpreadSize(d, 1, power); err == nil && n <= mostParts {
+			out = append(out, fmt.Sprintf("To show a spread ratio below %s needs %d a lot.", qa.Plain(*r), n))
+		}
+	}
+	return headline, out
+}
+
+// halfway is half the margin, towards its nearer end.
+func (p Planned) halfway() float64 {
+	switch {
+	case p.Upper != nil && (p.Lower == nil || *p.Upper <= -*p.Lower) && *p.Upper > 0:
+		return *p.Upper / 2
+	case p.Lower != nil && *p.Lower < 0:
+		return *p.Lower / 2
+	}
+	return 0
+}
+
+// threeDigits writes a number with three digits that count.
+func threeDigits(v float64) string {
+	if v == 0 || math.IsInf(v, 0) {
+		return qa.Plain(v)
+	}
+	decimals := 2 - int(math.Floor(math.Log10(math.Abs(v))))
+	return qa.Fixed(v, max(0, min(12, decimals)))
+}
+
+// together says how likely all characteristics pass with as many parts as the one that needs most.
+func together(all []Planned) string {
+	most, chance := 0, 1.0
+	for _, p := range all {
+		if !p.ready {
+			return ""
+		}
+		most = max(most, p.N)
+	}
+	if len(all) < 2 {
+		return ""
+	}
+	for _, p := range all {
+		power, err := p.at(most, 0)
+		if err != nil {
+			return ""
+		}
+		chance *= power
+	}
+	return fmt.Sprintf("With %d parts a lot all %d pass with probability %s if there is no true difference and they are independent.", most, len(all), qa.Fixed(chance, 2))
+}

@@ -1,0 +1,152 @@
+package app
+
+import (
+	"errors"
+	"fmt"
+	"path/filepath"
+	"strings"
+
+	"fyne.io/fyne/v2"
+
+	"lotpair/app/desk"
+	"lotpair/importers"
+	"lotpair/qa"
+)
+
+// lookInto opens a file of readings over the window. Where no comparison is being prepared one is begun. Until the criterion is
+// sealed every reading is masked.
+func (w *window) lookInto(name string, data []byte, sheet string, side qa.Side) change {
+	place := "Opening " + filepath.Base(name)
+	x, err := desk.LookedInto(filepath.Base(name), data, sheet, !w.state.Sealed())
+	if err != nil {
+		return failed(place, err)
+	}
+	x.Side = side
+	if _, err := w.keepFile(data); err != nil {
+		return failed(place, err)
+	}
+	return func(s desk.State) desk.State {
+		if !s.Drafting {
+			s = s.Begun(person(), now())
+		}
+		w.looked = data
+		return s.WithSheet(&x)
+	}
+}
+
+// onSheet looks into another sheet of the same file.
+func (w *window) onSheet(name string) {
+	x, data := w.state.Sheet, w.looked
+	w.work("Opening sheet "+name, func() change { return w.lookInto(x.File.Name, data, name, x.Side) })
+}
+
+// offerSheets offers the other sheets of the file.
+func (w *window) offerSheets() {
+	var items []*fyne.MenuItem
+	for _, name := range w.state.Sheet.Sheets() {
+		items = append(items, fyne.NewMenuItem(name, func() { w.onSheet(name) }))
+	}
+	w.offer(w.act.sheet, items...)
+}
+
+// offerDecimal offers the decimal marks of a text file.
+func (w *window) offerDecimal() {
+	item := func(name, mark string) *fyne.MenuItem {
+		return fyne.NewMenuItem(name, func() {
+			w.apply(func(s desk.State) desk.State {
+				x := s.Sheet.WithDecimal(mark)
+				return s.WithSheet(&x)
+			})
+		})
+	}
+	w.offer(w.act.decimal, item("point", "."), item("comma", ","))
+}
+
+// remember keeps the bytes of the file that is taken, for as long as the window is open.
+func (w *window) remember() {
+	w.bytes[w.state.Sheet.File.SHA256] = w.looked
+}
+
+// takeHeadings takes names, units and limits, and no reading.
+func (w *window) takeHeadings() {
+	if w.state.Sheet == nil {
+		return
+	}
+	w.remember()
+	w.change("Taking headings", func(s desk.State) (desk.State, error) { return s.TookHeadings(person(), now()) })
+	w.stated = w.state.Record.Plan
+}
+
+// fileOf gives the bytes of a file that was brought in.
+func (w *window) fileOf(files []qa.File, name string) ([]byte, error) {
+	for _, f := range files {
+		if f.Name != name {
+			continue
+		}
+		if data, ok := w.bytes[f.SHA256]; ok {
+			return data, nil
+		}
+		if w.register != nil {
+			return w.register.File(f.SHA256)
+		}
+	}
+	return nil, fmt.Errorf("%s: found no bytes, want those that were brought in; drop the file again", name)
+}
+
+// takeReadings takes the readings of the file that is looked at. With both lots at hand the comparison is made; else the other
+// lot is still to come.
+func (w *window) takeReadings() {
+	if w.state.Sheet == nil {
+		return
+	}
+	const place = "Taking the readings"
+	w.remember()
+	next, err := w.state.Taking()
+	if err != nil {
+		w.apply(failed(place, err))
+		return
+	}
+	if next.Missing() != "" {
+		w.apply(func(desk.State) desk.State { return next.Placed(person(), now()) })
+		return
+	}
+	w.compareDraft(place, next)
+}
+
+// takeKept takes the readings of the files whose headings were taken before.
+func (w *window) takeKept() { w.compareDraft("Taking the readings", w.state) }
+
+// compareDraft reads the files by the draft of the plan and compares.
+func (w *window) compareDraft(place string, s desk.State) {
+	w.work(place, func() change {
+		plan := desk.Settled(s.Record.Plan)
+		if faults := plan.Validate(); len(faults) > 0 {
+			var lines []string
+			for _, f := range faults {
+				lines = append(lines, f.Error())
+			}
+			return failed(place, errors.New(strings.Join(lines, "\n")))
+		}
+		readings, err := importers.Read(plan, func(name string) ([]byte, error) { return w.fileOf(s.Files, name) })
+		if err != nil {
+			return failed(place, err)
+		}
+		attempts, err := w.attempts(plan)
+		if err != nil {
+			return failed(place, err)
+		}
+		seal := s.Record.Result.Seal
+		if seal.Time == "" {
+			seal = qa.Seal{Digest: plan.SealDigest(), Readings: "unknown"}
+		}
+		result, err := qa.Compare(plan, readings, qa.Run{Software: w.build.software(), Seal: seal, Attempts: attempts})
+		if err != nil {
+			return failed(place, err)
+		}
+		s.Record.Plan = plan
+		return func(now0 desk.State) desk.State {
+			s.Acts, s.Job = now0.Acts, now0.Job
+			return s.Took(readings, result, person(), now())
+		}
+	})
+}
