@@ -1,8 +1,12 @@
 package importers
 
 import (
+	"maps"
 	"regexp"
+	"slices"
 	"strings"
+
+	"lotpair/importers/cells"
 )
 
 // The parts of the columns where a row is a characteristic, beside those of labelWords.
@@ -44,4 +48,30 @@ func rowColumnMeans(heading string) string {
 	}
 	name, _ := splitUnit(w)
 	return characteristicWords[strings.TrimSpace(name)]
+}
+
+// characteristicColumn are the headings of a column that names what each row measured.
+var characteristicColumn = words(means(nameHeading, "characteristic|characteristics|characteristic name|feature|feature name|dimension|parameter|merkmal|prüfmerkmal|"+
+	"merkmalsbezeichnung|charakteristik"))
+
+// oneCharacteristic refuses a sheet with a row a part and a characteristic: one column would hold readings of several.
+func (t *table) oneCharacteristic() error {
+	for _, c := range t.columns {
+		if c.col == t.lot || c.col == t.group || characteristicColumn[word(c.name)] == "" || t.planned(c) {
+			continue
+		}
+		seen := map[string]int{}
+		rows := 0
+		for _, r := range t.wanted() {
+			if cell := t.cell(r, c.col); cell.Kind == cells.Text && filledText(cell) != "" && !numeric(cell) {
+				seen[filledText(cell)]++
+				rows++
+			}
+		}
+		if len(seen) > 1 && rows >= 2*len(seen) {
+			names := slices.Sorted(maps.Keys(seen))
+			return t.refuse("%s: found the characteristics %s below each other, want a column (or a row) for each; bring the sheet into such a form, or keep the rows of one characteristic alone", t.columnText(c.col), list(names))
+		}
+	}
+	return nil
 }

@@ -76,7 +76,7 @@ func (t *table) headingScore(i int) int {
 			return 0
 		}
 		name, _ := splitUnit(text)
-		if headingMeans(text) == lotHeading || t.reading.LotColumn != "" && (qa.JoinSpace(t.reading.LotColumn) == text || qa.JoinSpace(t.reading.LotColumn) == name) {
+		if headingMeans(text) == lotHeading && !t.field(i) || t.reading.LotColumn != "" && (qa.JoinSpace(t.reading.LotColumn) == text || qa.JoinSpace(t.reading.LotColumn) == name) {
 			score += 1000
 		}
 		for _, ch := range t.characteristics {
@@ -95,7 +95,43 @@ func (t *table) headingScore(i int) int {
 	if !below {
 		return 0
 	}
+	if t.numbersFollow(i) {
+		score++
+	}
 	return score
+}
+
+// numbersFollow says whether under one of a row's texts but the first the next rows hold numbers: so it is under headings,
+// hardly under the fields of a block.
+func (t *table) numbersFollow(i int) bool {
+	first := true
+	for _, c := range t.sheet.Rows[i].Cells {
+		if filledText(c) == "" {
+			continue
+		}
+		if first || c.Kind != cells.Text || numeric(c) {
+			first = false
+			continue
+		}
+		numbers, other, rows := 0, 0, 0
+		for j := i + 1; j < len(t.sheet.Rows) && rows < 3; j++ {
+			r := t.sheet.Rows[j]
+			if !slices.ContainsFunc(r.Cells, stored) {
+				continue
+			}
+			rows++
+			switch below := r.At(c.Col); {
+			case numeric(below):
+				numbers++
+			case filledText(below) != "" && !missing(below.Text) && !isUnit(below.Text):
+				other++
+			}
+		}
+		if numbers > 0 && other == 0 {
+			return true
+		}
+	}
+	return false
 }
 
 // readHeadings takes the headings apart and gives the rows above them their role.

@@ -42,7 +42,7 @@ func (t *table) steps() []func() error {
 		return []func() error{t.uselessKeys, t.findLotColumns, t.readHeadings, t.sortRows, t.turnLots, t.measureTurned}
 	}
 	return []func() error{
-		t.findHeading, t.choosePanel, t.readHeadings, t.findLotColumn, t.findPartColumn, t.sortRows, t.turnSections, t.turnReplicates, t.findMeasured,
+		t.findHeading, t.choosePanel, t.readHeadings, t.findLotColumn, t.findPartColumn, t.sortRows, t.oneCharacteristic, t.turnSections, t.turnReplicates, t.findMeasured,
 	}
 }
 
@@ -57,14 +57,15 @@ func (t *table) chooseLayout() {
 		because(said, Stated, "the plan or the call says so.")
 		return
 	}
-	rowsOfCharacteristics := t.characteristicHeading() > 0
+	characteristics, _ := slices.BinarySearchFunc(t.sheet.Rows, t.characteristicHeading(), func(r cells.Row, n int) int { return r.Number - n })
+	rowsOfCharacteristics := t.characteristicHeading() > 0 && !t.namesLotColumn(characteristics) // a lot's name may stand in the block above
 	lotHeadings := slices.ContainsFunc(t.lookRows(), func(i int) bool { return t.namesLotColumn(i) && t.headingScore(i) > 0 })
 	switch row := t.sideBySide(); {
 	case said == SheetPerLot && rowsOfCharacteristics:
 		because(RowPerCharacteristic, Likely, "a lot a sheet, as the plan or the call says; in the sheet the headings name a characteristic, its limits and then a column a part.")
 	case said == SheetPerLot:
 		because(RowPerPart, Stated, "a lot a sheet, as the plan or the call says; in the sheet a row is a part.")
-	case rowsOfCharacteristics && !lotHeadings:
+	case rowsOfCharacteristics:
 		because(RowPerCharacteristic, Clear, "the headings name a characteristic, its limits and then a column a part.")
 	case lotHeadings:
 		because(RowPerPart, Clear, "a heading says that its column names the lot, and a row is a part.")
@@ -90,8 +91,26 @@ func (t *table) namesLotColumn(i int) bool {
 		}
 		name, _ := splitUnit(text)
 		want := qa.JoinSpace(t.reading.LotColumn)
-		return headingMeans(text) == lotHeading || want != "" && (want == text || want == name)
+		return headingMeans(text) == lotHeading && !t.field(i) || want != "" && (want == text || want == name)
 	})
+}
+
+// field says whether a row is a field of a block above the table and no headings: a name and one value, and below it no number.
+func (t *table) field(i int) bool {
+	filled := 0
+	var last cells.Cell
+	for _, c := range t.sheet.Rows[i].Cells {
+		if filledText(c) != "" {
+			filled++
+			last = c
+		}
+	}
+	next := t.nextFilled(i)
+	if filled != 2 || next < 0 {
+		return false
+	}
+	below := t.sheet.Rows[next].At(last.Col)
+	return !numeric(below) && !missing(below.Text) && !isUnit(below.Text) || filledText(below) == ""
 }
 
 // lookRows are the indices of the rows that may be headings.
