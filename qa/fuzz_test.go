@@ -9,10 +9,10 @@ import (
 	"lotpair/qa"
 )
 
-// bytes deals out the fuzzer's input, and zeros when it is used up.
-type bytes struct{ left []byte }
+// dealt deals out the fuzzer's input, and zeros when it is used up.
+type dealt struct{ left []byte }
 
-func (b *bytes) next() int {
+func (b *dealt) next() int {
 	if len(b.left) == 0 {
 		return 0
 	}
@@ -22,10 +22,10 @@ func (b *bytes) next() int {
 }
 
 // of picks one of n.
-func (b *bytes) of(n int) int { return b.next() % n }
+func (b *dealt) of(n int) int { return b.next() % n }
 
 // number is a reading or margin: mostly plain, sometimes at the ends of the arithmetic.
-func (b *bytes) number() float64 {
+func (b *dealt) number() float64 {
 	whole := float64(b.next()) - 128
 	switch b.of(8) {
 	case 0, 1, 2, 3:
@@ -41,7 +41,7 @@ func (b *bytes) number() float64 {
 }
 
 // some is a pointer to a number in a quarter of the cases or more.
-func (b *bytes) some(odds int) *float64 {
+func (b *dealt) some(odds int) *float64 {
 	if b.of(odds) > 0 {
 		return nil
 	}
@@ -49,7 +49,7 @@ func (b *bytes) some(odds int) *float64 {
 }
 
 // fuzzedPlan is any plan, sound or not.
-func fuzzedPlan(b *bytes) qa.Plan {
+func fuzzedPlan(b *dealt) qa.Plan {
 	p := plan([]qa.Objective{qa.Equivalence, qa.NotLower, qa.NotHigher, qa.Difference, qa.Lower, qa.Higher}[b.of(6)], nil)
 	c := &p.Criterion
 	c.Method = []string{"", "welch", "pooled", "paired", "log"}[b.of(5)]
@@ -107,7 +107,7 @@ func fuzzedPlan(b *bytes) qa.Plan {
 }
 
 // fuzzedSeries is any readings of one lot.
-func fuzzedSeries(b *bytes, name string) qa.Series {
+func fuzzedSeries(b *dealt, name string) qa.Series {
 	s := qa.Series{Characteristic: name}
 	n := b.of(24)
 	same := b.of(8) == 0
@@ -141,7 +141,7 @@ func FuzzCompare(f *testing.F) {
 	f.Add([]byte{})
 	f.Add([]byte("equivalence of two plain lots, long enough to fill the plan and some readings of each lot"))
 	f.Fuzz(func(t *testing.T, input []byte) {
-		b := &bytes{left: input}
+		b := &dealt{left: input}
 		p := fuzzedPlan(b)
 		ch := qa.Characteristic{Name: "X", Lower: b.some(3), Target: b.some(6), Upper: b.some(3), SD: b.some(8)}
 		if b.of(8) == 0 {

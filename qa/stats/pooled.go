@@ -13,7 +13,7 @@ func Pooled(ref, cand Summary) (Estimate, error) {
 	if ref.N < 2 || cand.N < 2 {
 		return Estimate{}, ErrTooFew
 	}
-	e := Estimate{Value: cand.Mean - ref.Mean}
+	e := Estimate{Value: cand.above(ref)}
 	a, b := float64(ref.N), float64(cand.N)
 	se := pooledSD(ref, cand) * math.Sqrt(1/a+1/b)
 	if unmeasured(se, ref.Mean, cand.Mean) {

@@ -11,6 +11,8 @@ type Summary struct {
 	N                        int
 	Mean, SD                 float64
 	Min, Q1, Median, Q3, Max float64
+
+	rest float64 // what rounding took from Mean
 }
 
 // Summarize returns the summary of x. The quartiles are of type 7 in Hyndman &
@@ -37,11 +39,16 @@ func Summarize(x []float64) Summary {
 	}
 	m := momentsOf(x)
 	s.Mean = math.Ldexp(m.mean.value(), m.exp)
+	s.rest = math.Ldexp(m.mean.high-m.mean.value()+m.mean.low, m.exp)
 	if s.N > 1 {
 		s.SD = math.Ldexp(math.Sqrt(m.squares.value()/float64(s.N-1)), m.exp)
 	}
 	return s
 }
+
+// above is the mean of s minus that of t: of means far from 0 the difference keeps
+// the digits that each alone has lost.
+func (s Summary) above(t Summary) float64 { return (s.Mean - t.Mean) + (s.rest - t.rest) }
 
 // Constant says that all readings are equal.
 func (s Summary) Constant() bool { return s.Min == s.Max }

@@ -34,7 +34,7 @@ func Welch(ref, cand Summary) (Estimate, error) {
 	if ref.N < 2 || cand.N < 2 {
 		return Estimate{}, ErrTooFew
 	}
-	e := Estimate{Value: cand.Mean - ref.Mean}
+	e := Estimate{Value: cand.above(ref)}
 	a := ref.SD / math.Sqrt(float64(ref.N))
 	b := cand.SD / math.Sqrt(float64(cand.N))
 	se := math.Hypot(a, b) // of standard errors, so that no variance overflows
