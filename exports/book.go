@@ -26,6 +26,15 @@ const epoch = "2000-01-01T00:00:00Z"
 
 // bytes is the package. The same book gives the same bytes.
 func (b book) bytes() ([]byte, error) {
+	parts, err := b.parts()
+	if err != nil {
+		return nil, err
+	}
+	return writeZip(parts)
+}
+
+// parts is what the package is made of, by name.
+func (b book) parts() (map[string]part, error) {
 	f := excelize.NewFile()
 	defer f.Close()
 	w := &looks{file: f}
@@ -62,7 +71,7 @@ func (b book) bytes() ([]byte, error) {
 	if err := f.Write(&out); err != nil {
 		return nil, fmt.Errorf("workbook: %w", err)
 	}
-	return pack(out.Bytes(), data, b.record)
+	return assemble(out.Bytes(), data, b.record)
 }
 
 // frame sets everything of a sheet but its cells.

@@ -22,41 +22,64 @@ const (
 	recordRelationship = `<Relationship Id="rIdRecord" Type="http://schemas.openxmlformats.org/officeDocument/2006/relationships/customXml" Target="../customXml/item1.xml"/>`
 )
 
-// pack puts the sheets' cells and the record's parts into a package as the spreadsheet library writes it, and writes every
-// entry anew in a fixed order, so that the same record gives the same bytes.
-func pack(pkg []byte, data map[string]func(io.Writer) error, record func(io.Writer) error) ([]byte, error) {
+// part is one part of a package: its bytes, or what writes them where they are many.
+type part struct {
+	bytes []byte
+	write func(io.Writer) error
+}
+
+func (p part) to(w io.Writer) error {
+	if p.write != nil {
+		return p.write(w)
+	}
+	_, err := w.Write(p.bytes)
+	return err
+}
+
+// The parts that are written anew when a package is signed, besides the core properties, which are then removed.
+const (
+	contentTypesPart = "[Content_Types].xml"
+	rootRelsPart     = "_rels/.rels"
+	corePart         = "docProps/core.xml"
+)
+
+// assemble puts the sheets' cells and the record's parts among the parts that the spreadsheet library wrote, and the content
+// types in order, so that the same record gives the same bytes.
+func assemble(pkg []byte, data map[string]func(io.Writer) error, record func(io.Writer) error) (map[string]part, error) {
 	in, err := zip.NewReader(bytes.NewReader(pkg), int64(len(pkg)))
 	if err != nil {
 		return nil, fmt.Errorf("workbook: %w", err)
 	}
-	parts := map[string][]byte{}
+	parts := map[string]part{}
 	for _, f := range in.File {
 		b, err := readEntry(f)
 		if err != nil {
 			return nil, fmt.Errorf("workbook, part %s: %w", f.Name, err)
 		}
-		parts[f.Name] = b
+		parts[f.Name] = part{bytes: b}
 	}
-	const rels, types = "xl/_rels/workbook.xml.rels", "[Content_Types].xml"
-	written := map[string]func(io.Writer) error{}
 	if record != nil {
-		parts["customXml/item1.xml"] = nil
-		written["customXml/item1.xml"] = record
-		parts["customXml/itemProps1.xml"] = []byte(recordProps)
-		parts["customXml/_rels/item1.xml.rels"] = []byte(recordRels)
-		if parts[rels], err = insertBefore(parts[rels], "</Relationships>", recordRelationship); err != nil {
+		const rels = "xl/_rels/workbook.xml.rels"
+		parts["customXml/item1.xml"] = part{write: record}
+		parts["customXml/itemProps1.xml"] = part{bytes: []byte(recordProps)}
+		parts["customXml/_rels/item1.xml.rels"] = part{bytes: []byte(recordRels)}
+		b, err := insertBefore(parts[rels].bytes, "</Relationships>", recordRelationship)
+		if err != nil {
 			return nil, fmt.Errorf("workbook, part %s: %w", rels, err)
 		}
+		parts[rels] = part{bytes: b}
 	}
-	if parts[types], err = contentTypes(parts[types], record != nil); err != nil {
-		return nil, fmt.Errorf("workbook, part %s: %w", types, err)
+	types, err := contentTypes(parts[contentTypesPart].bytes, record != nil)
+	if err != nil {
+		return nil, fmt.Errorf("workbook, part %s: %w", contentTypesPart, err)
 	}
+	parts[contentTypesPart] = part{bytes: types}
 	for name, cells := range data {
-		before, after, err := aroundCells(parts[name])
+		before, after, err := aroundCells(parts[name].bytes)
 		if err != nil {
 			return nil, fmt.Errorf("workbook, part %s: %w", name, err)
 		}
-		written[name] = func(w io.Writer) error {
+		parts[name] = part{write: func(w io.Writer) error {
 			if _, err := w.Write(before); err != nil {
 				return err
 			}
@@ -65,9 +88,9 @@ func pack(pkg []byte, data map[string]func(io.Writer) error, record func(io.Writ
 			}
 			_, err := w.Write(after)
 			return err
-		}
+		}}
 	}
-	return writeZip(parts, written)
+	return parts, nil
 }
 
 func readEntry(f *zip.File) ([]byte, error) {
@@ -100,19 +123,28 @@ func insertBefore(b []byte, mark, what string) ([]byte, error) {
 	return append(append(append([]byte{}, b[:i]...), what...), b[i:]...), nil
 }
 
+// typesXML is [Content_Types].xml.
+type typesXML struct {
+	Defaults []struct {
+		Extension   string `xml:"Extension,attr"`
+		ContentType string `xml:"ContentType,attr"`
+	} `xml:"Default"`
+	Overrides []struct {
+		PartName    string `xml:"PartName,attr"`
+		ContentType string `xml:"ContentType,attr"`
+	} `xml:"Override"`
+}
+
+func parseContentTypes(b []byte) (typesXML, error) {
+	var t typesXML
+	err := xml.Unmarshal(b, &t)
+	return t, err
+}
+
 // contentTypes sorts the content types, whose order the spreadsheet library leaves to chance, and adds the record's.
 func contentTypes(b []byte, record bool) ([]byte, error) {
-	var t struct {
-		Defaults []struct {
-			Extension   string `xml:"Extension,attr"`
-			ContentType string `xml:"ContentType,attr"`
-		} `xml:"Default"`
-		Overrides []struct {
-			PartName    string `xml:"PartName,attr"`
-			ContentType string `xml:"ContentType,attr"`
-		} `xml:"Override"`
-	}
-	if err := xml.Unmarshal(b, &t); err != nil {
+	t, err := parseContentTypes(b)
+	if err != nil {
 		return nil, err
 	}
 	var lines []string
@@ -136,9 +168,9 @@ func escape(s string) string {
 	return b.String()
 }
 
-// writeZip writes the parts in the order of their names; those in written write themselves. Packed fast: the difference in size
-// is small and the one in time is not.
-func writeZip(parts map[string][]byte, written map[string]func(io.Writer) error) ([]byte, error) {
+// writeZip writes the parts in the order of their names; packed fast: the difference in size is small and the
+// one in time is not.
+func writeZip(parts map[string]part) ([]byte, error) {
 	names := make([]string, 0, len(parts))
 	for n := range parts {
 		names = append(names, n)
@@ -159,14 +191,7 @@ func writeZip(parts map[string][]byte, written map[string]func(io.Writer) error)
 		if err != nil {
 			return nil, fmt.Errorf("workbook, part %s: %w", n, err)
 		}
-		write := written[n]
-		if write == nil {
-			write = func(to io.Writer) error {
-				_, err := to.Write(parts[n])
-				return err
-			}
-		}
-		if err := write(e); err != nil {
+		if err := parts[n].to(e); err != nil {
 			return nil, fmt.Errorf("workbook, part %s: %w", n, err)
 		}
 	}

@@ -5,21 +5,11 @@ import (
 	"strconv"
 
 	"lotpair/importers/cells"
-	"lotpair/qa"
 )
 
-// sheetDifferences lays the sheets that the record must give beside those the file holds, cell by cell, and lists where they
+// bookDifferences lays the sheets that a record or a seal must give beside those of a file, cell by cell, and lists where they
 // differ: a cell that shows something else, a cell too many, a cell gone, a sheet too many. Numbers must be the same doubles,
 // because the sheets state the record's own; whether the recomputation agrees with them is asked elsewhere.
-func sheetDifferences(pkg []byte, rec qa.Record) []string {
-	digest, err := contentDigest(rec)
-	if err != nil {
-		return []string{err.Error()}
-	}
-	return bookDifferences(pkg, sheets(rec, digest))
-}
-
-// bookDifferences lays sheets beside those of a file.
 func bookDifferences(pkg []byte, wanted []sheet) []string {
 	book, err := cells.Read(pkg)
 	if err != nil {

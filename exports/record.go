@@ -38,6 +38,7 @@ type recordXML struct {
 	Result      string   `xml:"result"`
 	Trail       string   `xml:"trail"`
 	Signer      string   `xml:"signer,omitempty"`
+	Layout      int      `xml:"layout"`
 }
 
 type lotXML struct {
@@ -94,6 +95,7 @@ func writeRecord(w io.Writer, rec qa.Record) (digest string, err error) {
 	if rec.Signer != nil {
 		b.json("signer", rec.Signer)
 	}
+	b.layout()
 	b.WriteString("</record>")
 	b.flush()
 	return hex.EncodeToString(content.Sum(nil)), b.err
@@ -139,6 +141,9 @@ func (b *recordWriter) json(name string, v any) {
 	_ = xml.EscapeText(b, text) // a buffer does not fail
 	b.WriteString("</" + name + ">")
 }
+
+// layout says which layout of the workbook the record came in.
+func (b *recordWriter) layout() { fmt.Fprintf(b, "<layout>%d</layout>", Layout) }
 
 func (b *recordWriter) lot(side qa.Side, l qa.Lot) {
 	b.WriteString(`<lot side="` + string(side) + `">`)
@@ -222,17 +227,24 @@ func plainText(s string) bool {
 
 // ReadRecord takes the record out of a workbook. It checks nothing: Verify does.
 func ReadRecord(pkg []byte) (qa.Record, error) {
-	b, err := opcsign.ReadPart(pkg, recordPart)
-	if err != nil {
-		return qa.Record{}, fmt.Errorf("%w (%w)", ErrNoRecord, err)
-	}
-	return decodeRecord(b)
+	rec, _, err := readRecord(pkg)
+	return rec, err
 }
 
-func decodeRecord(b []byte) (qa.Record, error) {
+// readRecord gives the record and the layout of its workbook.
+func readRecord(pkg []byte) (qa.Record, int, error) {
+	b, err := opcsign.ReadPart(pkg, recordPart)
+	if err != nil {
+		return qa.Record{}, 0, fmt.Errorf("%w (%w)", ErrNoRecord, err)
+	}
 	var x recordXML
+	rec, err := decodeRecord(b, &x)
+	return rec, x.Layout, err
+}
+
+func decodeRecord(b []byte, x *recordXML) (qa.Record, error) {
 	d := xml.NewDecoder(bytes.NewReader(b))
-	if err := d.Decode(&x); err != nil {
+	if err := d.Decode(x); err != nil {
 		if errors.Is(err, io.EOF) {
 			return qa.Record{}, ErrNoRecord
 		}

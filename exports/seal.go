@@ -61,9 +61,13 @@ func (s Sealed) Trail(after qa.Trail, file qa.File) qa.Trail {
 // Workbook writes the seal as an .xlsx package: one sheet that states the criterion, and the plan as custom XML. The same seal
 // gives the same bytes.
 func (s Sealed) Workbook() ([]byte, error) {
+	return s.book().bytes()
+}
+
+func (s Sealed) book() book {
 	b := book{title: s.Plan.Title, sheets: s.sheets(), record: s.encode, draft: s.Signer == nil}
 	b.foot = footerText("Criterion of "+orWord(s.Plan.Title, "a comparison"), s.Plan.Supports) + "\nCriterion " + shortDigest(s.Digest)
-	return b.bytes()
+	return b
 }
 
 // SignSeal writes a seal's workbook with its first signer and signs it.
@@ -89,6 +93,7 @@ func (s Sealed) encode(w io.Writer) error {
 	b.WriteString(xml.Header)
 	fmt.Fprintf(b, `<record xmlns="%s" format="%s">`, recordNamespace, SealFormat)
 	b.json("seal", s)
+	b.layout()
 	b.WriteString("</record>")
 	b.flush()
 	return b.err
@@ -96,26 +101,33 @@ func (s Sealed) encode(w io.Writer) error {
 
 // ReadSeal takes the seal out of a workbook. It checks nothing: Verify does.
 func ReadSeal(pkg []byte) (Sealed, error) {
+	s, _, err := readSeal(pkg)
+	return s, err
+}
+
+// readSeal gives the seal and the layout of its workbook.
+func readSeal(pkg []byte) (Sealed, int, error) {
 	b, err := opcsign.ReadPart(pkg, recordPart)
 	if err != nil {
-		return Sealed{}, fmt.Errorf("%w (%w)", ErrNoSeal, err)
+		return Sealed{}, 0, fmt.Errorf("%w (%w)", ErrNoSeal, err)
 	}
 	var x struct {
 		XMLName xml.Name `xml:"urn:lotpair:record:1 record"`
 		Seal    string   `xml:"seal"`
+		Layout  int      `xml:"layout"`
 	}
 	// A record may hold a million readings: it is not read to its end to see that it is no seal.
 	if format := formatOf(b); format != SealFormat {
-		return Sealed{}, fmt.Errorf("%w (found the format %q)", ErrNoSeal, format)
+		return Sealed{}, 0, fmt.Errorf("%w (found the format %q)", ErrNoSeal, format)
 	}
 	if err := xml.Unmarshal(b, &x); err != nil {
-		return Sealed{}, fmt.Errorf("%w (%w)", ErrNoSeal, err)
+		return Sealed{}, 0, fmt.Errorf("%w (%w)", ErrNoSeal, err)
 	}
 	var s Sealed
 	if err := json.Unmarshal([]byte(x.Seal), &s); err != nil {
-		return Sealed{}, fmt.Errorf("seal %s: %w", recordPart, err)
+		return Sealed{}, 0, fmt.Errorf("seal %s: %w", recordPart, err)
 	}
-	return s, nil
+	return s, x.Layout, nil
 }
 
 // formatOf is the format that the root element of a custom XML part names.

@@ -52,8 +52,11 @@ type Verification struct {
 	Reasons         []opcsign.Reason
 	Agrees          bool     // the recomputation and the sheets agree with the record
 	Differences     []string // where they do not
+	Rebuilt         bool     // the workbook is, part for part, what this program makes of the record in it
 	Record          *qa.Record
 	Sealed          *Sealed // of a seal, which is no record
+
+	broken bool // the signatures are
 }
 
 // Verify checks every signature and part of a workbook, recomputes the result from the readings embedded in it and lays the
@@ -67,14 +70,15 @@ func Verify(pkg []byte, roots []*x509.Certificate) Verification {
 		return v
 	}
 	v.signatures(report)
-	if s, err := ReadSeal(pkg); err == nil {
+	v.broken = !unsignedOrSound(report)
+	if s, layout, err := readSeal(pkg); err == nil {
 		v.Sealed = &s
-		v.sealed(pkg, s)
+		v.sealed(pkg, s, layout)
 		v.printed(report, s.Signer)
 		v.conclude(report)
 		return v
 	}
-	rec, err := ReadRecord(pkg)
+	rec, layout, err := readRecord(pkg)
 	if err != nil {
 		// Where signatures are broken besides, that is the nearer fault.
 		v.reason("no-record", recordPart, err.Error())
@@ -85,7 +89,7 @@ func Verify(pkg []byte, roots []*x509.Certificate) Verification {
 		return v
 	}
 	v.Record = &rec
-	v.recompute(pkg, rec)
+	v.recompute(pkg, rec, layout)
 	v.meanings(report, rec)
 	v.printed(report, rec.Signer)
 	v.conclude(report)
@@ -93,14 +97,12 @@ func Verify(pkg []byte, roots []*x509.Certificate) Verification {
 }
 
 // sealed checks a seal in itself: its digest is that of its plan, and its sheet states it.
-func (v *Verification) sealed(pkg []byte, s Sealed) {
+func (v *Verification) sealed(pkg []byte, s Sealed, layout int) {
 	v.Agrees = true
 	if s.Digest != s.Plan.SealDigest() {
 		v.disagree("seal-differs", recordPart, "the digest of the criterion is not that of the plan in the seal")
 	}
-	for _, t := range bookDifferences(pkg, s.sheets()) {
-		v.disagree("sheets-differ", "", t)
-	}
+	v.laid(pkg, s.book(), layout)
 }
 
 // printed checks that the first signature is by the signer whom the sheets name: else one person's signature would stand under
@@ -124,7 +126,7 @@ func (v *Verification) printed(report opcsign.Report, p *qa.Signer) {
 // conclude gives the state, the first that holds.
 func (v *Verification) conclude(report opcsign.Report) {
 	switch {
-	case len(report.Reasons) > 0 || len(report.Signatures) > 0 && !report.Sound():
+	case v.broken:
 		v.State = Changed
 	case len(report.Signatures) == 0:
 		v.State = Unsigned
@@ -133,6 +135,11 @@ func (v *Verification) conclude(report opcsign.Report) {
 	case len(v.MissingMeanings) > 0 || v.has("same-signer"):
 		v.State = Incomplete
 	}
+}
+
+// unsignedOrSound says that nothing is wrong with the signatures, of which there may be none.
+func unsignedOrSound(r opcsign.Report) bool {
+	return len(r.Reasons) == 0 && (len(r.Signatures) == 0 || r.Sound())
 }
 
 func (v *Verification) reason(code, part, text string) {
@@ -173,7 +180,7 @@ func (v *Verification) signatures(report opcsign.Report) {
 }
 
 // recompute runs the comparison again and compares it with the record and the record with the sheets.
-func (v *Verification) recompute(pkg []byte, rec qa.Record) {
+func (v *Verification) recompute(pkg []byte, rec qa.Record, layout int) {
 	v.Agrees = true
 	again, err := rec.Recompute()
 	if err != nil {
@@ -196,9 +203,12 @@ func (v *Verification) recompute(pkg []byte, rec qa.Record) {
 	if rec.Result.Seal.Digest != rec.Plan.SealDigest() {
 		v.disagree("seal-differs", recordPart, "the digest of the criterion is not that of the plan in the record")
 	}
-	for _, t := range sheetDifferences(pkg, rec) {
-		v.disagree("sheets-differ", "", t)
+	b, err := bookOf(rec)
+	if err != nil {
+		v.disagree("sheets-differ", "", err.Error())
+		return
 	}
+	v.laid(pkg, b, layout)
 }
 
 func (v *Verification) disagree(code, part, text string) {

@@ -164,6 +164,23 @@ func TestVerifySigner(t *testing.T) {
 	}
 }
 
+// TestVerifySignedDraft signs a draft past our own checks: nothing in it is wrong but that its sheets call it unsigned, and it
+// is refused for that one difference.
+func TestVerifySignedDraft(t *testing.T) {
+	pkg, err := exports.Workbook(record(t))
+	if err != nil {
+		t.Fatal(err)
+	}
+	id := person(t, "Ada")
+	if pkg, err = opcsign.Sign(pkg, id.Key, id.Chain, opcsign.Statement{Name: "Ada", Meaning: "prepared", Time: when}); err != nil {
+		t.Fatal(err)
+	}
+	v := exports.Verify(pkg, nil)
+	if v.State != exports.Disagrees || len(v.Differences) != 1 || len(v.Reasons) != 1 || v.Reasons[0].Code != "signer-differs" || !v.Rebuilt {
+		t.Errorf("got %s, %v, %v, rebuilt %v; want one difference, signer-differs, in a workbook that is otherwise as its record gives it", v.State, v.Reasons, v.Differences, v.Rebuilt)
+	}
+}
+
 // TestSignLater checks the second signature, who may give it, and what a record without one is.
 func TestSignLater(t *testing.T) {
 	rec := record(t)

@@ -29,9 +29,17 @@ func Workbook(rec qa.Record) ([]byte, error) {
 	if n > MaxReadings {
 		return nil, TooManyReadings{N: n}
 	}
-	digest, err := contentDigest(rec)
+	b, err := bookOf(rec)
 	if err != nil {
 		return nil, err
+	}
+	return b.bytes()
+}
+
+func bookOf(rec qa.Record) (book, error) {
+	digest, err := contentDigest(rec)
+	if err != nil {
+		return book{}, err
 	}
 	record := func(w io.Writer) error {
 		_, err := writeRecord(w, rec)
@@ -39,7 +47,7 @@ func Workbook(rec qa.Record) ([]byte, error) {
 	}
 	b := book{title: rec.Result.Title, sheets: sheets(rec, digest), record: record, draft: rec.Signer == nil}
 	b.foot = footerText(rec.Result.Title, rec.Result.Supports) + fmt.Sprintf("\nRecord %s, criterion %s", RecordID(digest), shortDigest(rec.Result.Seal.Digest))
-	return b.bytes()
+	return b, nil
 }
 
 // RecordID is the name of a record that survives copies and renaming: the first twelve digits of the digest of its content.
