@@ -185,3 +185,48 @@ func TestTheReadingViewShowsTheFile(t *testing.T) {
 		t.Error("left: got the sheet")
 	}
 }
+
+// TestUndoWalksTheTrail undoes what was typed, a choice and the headings, does them again, and stops at the seal.
+func TestUndoWalksTheTrail(t *testing.T) {
+	folder := t.TempDir()
+	w := openedWith(t, inRegister(t, folder), "", 1280, 800)
+	w.beginComparison()
+	w.open(sheetFile(t), readFile)
+	w.takeHeadings()
+	w.chooseKind(desk.InTheUnit)
+	typing(w, "margin", "0.02")
+	noProblem(t, w)
+	w.undo()
+	if m := w.state.Record.Plan.Criterion.Margin; m == nil || *m.Absolute != 0 {
+		t.Errorf("undo of the number: got %+v, want 0", m)
+	}
+	w.undo()
+	if m := w.state.Record.Plan.Criterion.Margin; m != nil {
+		t.Errorf("undo of the choice: got %+v, want none", m)
+	}
+	w.undo()
+	if n := len(w.state.Record.Plan.Characteristics); n != 0 {
+		t.Errorf("undo of the headings: got %d characteristics, want none", n)
+	}
+	w.undo() // nothing is left to undo
+	for range 4 {
+		w.redo()
+	}
+	if m := w.state.Record.Plan.Criterion.Margin; m == nil || *m.Absolute != 0.02 || len(w.state.Record.Plan.Characteristics) != 6 {
+		t.Errorf("redo: got %+v", m)
+	}
+	noProblem(t, w)
+	w.sealDraft()
+	noProblem(t, w)
+	w.undo()
+	if !w.state.Sealed() {
+		t.Error("undo: took the seal back")
+	}
+	if n := len(w.state.Record.Trail); n != 11 || w.state.Record.Trail.Broken() >= 0 {
+		t.Errorf("trail: got %d entries, want every act, every undo and every redo: %+v", n, w.state.Record.Trail)
+	}
+	_, acts, err := w.register.Record(w.entry.ID)
+	if err != nil || len(acts) != 11 {
+		t.Errorf("register: got %d acts, %v, want 11", len(acts), err)
+	}
+}

@@ -147,14 +147,21 @@ func (w *window) leftDraft(d *draftLine) {
 	w.keepDraft(d.name + " " + d.Text)
 }
 
-// keepDraft keeps the draft of the plan, where it is not what was kept last.
+// keepDraft keeps the draft of the plan, where something was typed that it did not say before.
 func (w *window) keepDraft(what string) {
+	before := w.state.Typing
+	if before == nil {
+		return
+	}
 	p := desk.Settled(w.state.Record.Plan)
-	if same(p, w.stated) {
+	if same(p, *before) {
+		w.apply(func(s desk.State) desk.State {
+			s.Typing = nil
+			return s
+		})
 		return
 	}
 	w.change("Writing the criterion", func(s desk.State) (desk.State, error) { return s.Stated(p, what, person(), now()) })
-	w.stated = w.state.Record.Plan
 }
 
 // offer opens a menu below a word of the claim.

@@ -3,6 +3,8 @@ package app
 import (
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/driver/desktop"
+
+	"lotpair/app/desk"
 )
 
 // shortcut is a key that does an act together with the control key.
@@ -18,6 +20,20 @@ func (w *window) shortcuts() []shortcut {
 		{fyne.KeyE, w.act.export.act},
 		{fyne.KeyL, w.leave},
 		{fyne.KeyQ, w.win.Close},
+	}
+}
+
+// undo takes the last act back.
+func (w *window) undo() {
+	if w.state.Job.Name == "" && w.dialog == nil && w.state.Sheet == nil {
+		w.apply(func(s desk.State) desk.State { return s.Undone(person(), now()) })
+	}
+}
+
+// redo does again what was undone last.
+func (w *window) redo() {
+	if w.state.Job.Name == "" && w.dialog == nil && w.state.Sheet == nil {
+		w.apply(func(s desk.State) desk.State { return s.Redone(person(), now()) })
 	}
 }
 

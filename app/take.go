@@ -74,7 +74,6 @@ func (w *window) takeHeadings() {
 	}
 	w.remember()
 	w.change("Taking headings", func(s desk.State) (desk.State, error) { return s.TookHeadings(person(), now()) })
-	w.stated = w.state.Record.Plan
 }
 
 // fileOf gives the bytes of a file that was brought in.

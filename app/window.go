@@ -34,7 +34,6 @@ type window struct {
 	draft       draftLines
 	drafted     desk.DraftView
 	shift       float64 // the true difference that is thought of while planning
-	stated      qa.Plan // the draft of the plan as it was kept last
 	sheetSaid   desk.SheetView
 	looked      []byte            // of the file that is looked at
 	bytes       map[string][]byte // of the files that were brought in, by their digest
@@ -69,6 +68,7 @@ type buttons struct {
 	order, picture, read, cancel, leave   *button
 	compare, signatures, export, sign     *button
 	begin, particulars, seal, take, amend *button
+	undo, redo                            *button
 	objective, method, of, characteristic *button
 	kinds                                 [desk.MultipleOfSD + 1]*button
 	sheet, decimal, unmask, leaveSheet    *button
@@ -121,6 +121,9 @@ func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
 	for _, k := range w.shortcuts() {
 		w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: k.key, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { k.act() })
 	}
+	w.win.Canvas().AddShortcut(&fyne.ShortcutUndo{}, func(fyne.Shortcut) { w.undo() })
+	w.win.Canvas().AddShortcut(&fyne.ShortcutRedo{}, func(fyne.Shortcut) { w.redo() })
+	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyZ, Modifier: fyne.KeyModifierShortcutDefault | fyne.KeyModifierShift}, func(fyne.Shortcut) { w.redo() })
 	w.win.SetOnDropped(func(at fyne.Position, files []fyne.URI) {
 		if len(files) > 0 && w.dialog == nil {
 			w.bring(files[0].Path(), w.sideAt(at), readFile)
@@ -154,6 +157,8 @@ func (w *window) makeButtons() {
 	b.particulars = newButton(w.palette, "Particulars", quiet, w.askParticulars)
 	b.seal = newButton(w.palette, "", main, w.sealDraft)
 	b.amend = newButton(w.palette, "", quiet, w.askAmend)
+	b.undo = newButton(w.palette, "Undo", quiet, w.undo)
+	b.redo = newButton(w.palette, "Redo", quiet, w.redo)
 	b.take = newButton(w.palette, "", main, w.takeKept)
 	b.objective = newButton(w.palette, "", strong, w.offerObjective)
 	b.method = newButton(w.palette, "", word, w.offerMethod)
@@ -279,8 +284,15 @@ func (w *window) show() {
 		b.looks[l.Look].chosen = l.Chosen
 	}
 	b.seal.label, b.take.label, b.amend.label = w.view.foot.Seal, w.view.foot.Take, w.view.foot.Amend
+	b.undo.label, b.redo.label = "", ""
+	if s.CanUndo() != "" {
+		b.undo.label = "Undo"
+	}
+	if s.CanRedo() != "" {
+		b.redo.label = "Redo"
+	}
 	busy := s.Job.Name != ""
-	for _, x := range []*button{b.picture, b.leave, b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample, b.begin, b.particulars, b.seal, b.take, b.amend, b.takeHeadings, b.takeReadings, b.unmask} {
+	for _, x := range []*button{b.picture, b.leave, b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample, b.begin, b.particulars, b.seal, b.take, b.amend, b.undo, b.redo, b.takeHeadings, b.takeReadings, b.unmask} {
 		x.disabled = busy
 	}
 	if w.root.Size().Width > 0 {

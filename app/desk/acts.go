@@ -81,7 +81,7 @@ func (s State) Exported(path string) State {
 	s.Workbook = Workbook{Path: path}
 	s.Problem, s.Job = Problem{}, Job{}
 	s.Said = "Exported to " + path + ", unsigned."
-	return s.acted("exported " + path)
+	return s.final("exported " + path)
 }
 
 // SavedPicture says that the picture of the bench was written to a file. It is no part of the record.
@@ -101,7 +101,7 @@ func (s State) Signed(rec qa.Record, w Workbook) State {
 		meaning = w.Signatures[n-1].Meaning
 	}
 	s.Said = "Signed as " + meaning + ", kept in " + w.Path + "."
-	return s.acted("signed as " + meaning + " in " + w.Path)
+	return s.final("signed as " + meaning + " in " + w.Path)
 }
 
 // Compare runs the comparison again after a reading was left out or put back. It is one more attempt.

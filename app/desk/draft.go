@@ -66,7 +66,7 @@ func (s State) TookHeadings(who string, when time.Time) (State, error) {
 	next.Sheet = nil
 	next.Selected = max(0, min(next.Selected, len(p.Characteristics)-1))
 	next.Record.Trail = s.Record.Trail.With(when, who, what, x.File.Name, "sha-256 "+x.File.SHA256)
-	return next.acted(what), nil
+	return next.undoable(s, what), nil
 }
 
 // withLayout is the state whose plan says where the readings of the file stand.
@@ -106,13 +106,17 @@ func (s State) WithSight(who string, when time.Time) State {
 	s.Sheet, s.Seen = &x, true
 	what := "looked at the readings of " + x.File.Name
 	s.Record.Trail = s.Record.Trail.With(when, who, what, x.File.Name, "sha-256 "+x.File.SHA256)
-	return s.acted(what)
+	return s.final(what)
 }
 
 // Typed is the state with another draft of the plan, not yet an act. What a seal covers is not changed.
 func (s State) Typed(p qa.Plan) State {
 	if !s.Drafting || s.Sealed() && p.SealDigest() != s.Record.Result.Seal.Digest {
 		return s
+	}
+	if s.Typing == nil {
+		before := s.Record.Plan
+		s.Typing = &before
 	}
 	s.Record.Plan = p
 	return s
@@ -123,9 +127,13 @@ func (s State) Stated(p qa.Plan, what, who string, when time.Time) (State, error
 	if s.Sealed() && p.SealDigest() != s.Record.Result.Seal.Digest {
 		return s, ErrSealed
 	}
-	s.Record.Plan = p
-	s.Record.Trail = s.Record.Trail.With(when, who, what, "", "")
-	return s.acted(what), nil
+	next := s
+	if s.Typing != nil {
+		s.Record.Plan = *s.Typing
+	}
+	next.Record.Plan, next.Typing = p, nil
+	next.Record.Trail = s.Record.Trail.With(when, who, what, "", "")
+	return next.undoable(s, what), nil
 }
 
 // Faults lists what the draft lacks before it can be sealed; where its readings stand is asked for later.
@@ -162,7 +170,7 @@ func (s State) Seal(who string, when time.Time) (State, error) {
 	s.Problem = Problem{}
 	s.Said = "Criterion sealed, sha-256 " + shortDigest(seal.Digest) + "."
 	s.Record.Trail = s.Record.Trail.With(when, who, "sealed the criterion", "sha-256 "+seal.Digest, "readings "+seal.Readings)
-	return s.acted("sealed the criterion " + seal.Digest), nil
+	return s.final("sealed the criterion " + seal.Digest), nil
 }
 
 // Amended changes a sealed criterion, with a reason. A result made under the old one is gone from the desk, not from the trail.
@@ -193,7 +201,7 @@ func (s State) Amended(p qa.Plan, reason, who string, when time.Time) (State, er
 	s.Record.Result = qa.Result{Seal: seal, Attempts: was.Attempts, Software: was.Software}
 	s.Compared, s.Workbook, s.Said = false, Workbook{}, ""
 	s.Record.Trail = s.Record.Trail.With(when, who, "amended the criterion", "sha-256 "+old.Digest+" to "+seal.Digest+verdict, reason)
-	return s.acted(fmt.Sprintf("amended the criterion: %s", reason)), nil
+	return s.final(fmt.Sprintf("amended the criterion: %s", reason)), nil
 }
 
 // Taking says what is needed to take the readings of the file that is looked at: the plan with its layout.
@@ -229,7 +237,7 @@ func (s State) Placed(who string, when time.Time) State {
 	what := "brought in " + f.Name
 	s.Seen = true
 	s.Record.Trail = s.Record.Trail.With(when, who, what, f.Name, "sha-256 "+f.SHA256)
-	return s.acted(what)
+	return s.final(what)
 }
 
 // Took takes the readings that were read under the plan and the result they gave.
@@ -248,5 +256,5 @@ func (s State) Took(readings qa.Readings, res qa.Result, who string, when time.T
 	s.Record.Readings, s.Record.Result = readings, res
 	s.Selected = weightiest(res)
 	s.Record.Trail = s.Record.Trail.With(when, who, "opened the readings", strings.Join(on, ", "), "").With(when, who, "compared", string(res.Verdict), "")
-	return s.acted("took the readings of " + strings.Join(on, ", ") + " and compared")
+	return s.final("took the readings of " + strings.Join(on, ", ") + " and compared")
 }

@@ -37,7 +37,7 @@ func (s State) LeftOut(at qa.Source, reason, who string, when time.Time) (State,
 	next.Record.Readings.Ledger = append(append([]qa.Entry{}, s.Record.Readings.Ledger...), entries...)
 	next.Record.Plan.Reading.Exclude = append(append([]qa.Exclusion{}, s.Record.Plan.Reading.Exclude...), qa.Exclusion{Cell: at.Place(), File: at.File, Reason: reason})
 	next.Record.Trail = s.Record.Trail.With(when, who, "left out", at.String(), reason)
-	return next.acted("left out " + at.String() + ": " + reason), nil
+	return next.undoable(s, "left out "+at.String()+": "+reason), nil
 }
 
 // PutBack takes the readings of one cell back into use. The result is cleared.
@@ -66,7 +66,7 @@ func (s State) PutBack(at qa.Source, who string, when time.Time) (State, error) 
 		}
 	}
 	next.Record.Trail = s.Record.Trail.With(when, who, "put back", at.String(), "")
-	return next.acted("put back " + at.String()), nil
+	return next.undoable(s, "put back "+at.String()), nil
 }
 
 func same(a, b qa.Source) bool { return a.File == b.File && a.Sheet == b.Sheet && a.Cell == b.Cell }

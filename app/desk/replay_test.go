@@ -62,12 +62,24 @@ func example(t testing.TB) qa.Record {
 	return qa.NewRecord(plan, qa.File{Name: "plan.toml", SHA256: strings.Repeat("ab", 32)}, readings, res, "tester", noon)
 }
 
+var made *qa.Record
+
+// once is the example, compared once for all scripts.
+func once(t testing.TB) qa.Record {
+	t.Helper()
+	if made == nil {
+		rec := example(t)
+		made = &rec
+	}
+	return *made
+}
+
 var noon = time.Date(2026, 12, 1, 12, 0, 0, 0, time.FixedZone("", 3600))
 
 // act does one line of a script.
 func act(t testing.TB, s desk.State, line string) (desk.State, error) {
 	t.Helper()
-	rec := example(t)
+	rec := once(t)
 	cell := func(text string) qa.Source {
 		part := strings.Split(text, "!")
 		if len(part) != 3 {
@@ -125,6 +137,10 @@ func act(t testing.TB, s desk.State, line string) (desk.State, error) {
 		return s.LeftOut(cell(c), reason, "tester", noon)
 	case "back":
 		return s.PutBack(cell(rest), "tester", noon)
+	case "undo":
+		return s.Undone("tester", noon), nil
+	case "redo":
+		return s.Redone("tester", noon), nil
 	case "compare":
 		return s.Compare()
 	case "export":

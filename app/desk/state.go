@@ -20,10 +20,13 @@ type State struct {
 	Workbook Workbook  // the signed or exported file, empty while there is none
 	Selected int       // the characteristic looked at: its place in the result
 	Sorted   Sorting
-	Looking  Look    // how the bench looks at it
-	Job      Job     // what is being done, empty while nothing is
-	Problem  Problem // what went wrong last, empty while nothing did
-	Said     string  // what was done last, for the foot
+	Looking  Look     // how the bench looks at it
+	Job      Job      // what is being done, empty while nothing is
+	Problem  Problem  // what went wrong last, empty while nothing did
+	Said     string   // what was done last, for the foot
+	Typing   *qa.Plan // the plan before what is being typed; nil while nothing is
+	Past     []moment // before each act that can be undone, the last one last
+	Future   []moment // after each act that was undone
 	Acts     []string
 	Number   int // of the acts that changed the record or left the window: each is kept in the register
 }
