@@ -107,6 +107,28 @@ func TestOpenByContent(t *testing.T) {
 	}
 }
 
+func TestOpenMacros(t *testing.T) { // they are neither run nor read
+	whole := xlsx(t, sheetOf{name: "Data", rows: long()})
+	var b bytes.Buffer
+	z := zip.NewWriter(&b)
+	old, err := zip.NewReader(bytes.NewReader(whole), int64(len(whole)))
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, f := range old.File {
+		if err := z.Copy(f); err != nil {
+			t.Fatal(err)
+		}
+	}
+	write(t, z, "xl/vbaProject.bin", "Sub Auto_Open()")
+	if err := z.Close(); err != nil {
+		t.Fatal(err)
+	}
+	r := mustRead(t, plan("d1.xlsm"), b.Bytes())
+	wantD1(t, r)
+	wantWords(t, strings.Join(r.Said, "\n"), "macros; they are neither run nor read")
+}
+
 // Bombs and endless texts end in words, fast and without much memory.
 func TestOpenBombs(t *testing.T) {
 	var bomb bytes.Buffer

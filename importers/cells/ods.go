@@ -9,9 +9,14 @@ import (
 // odsReader reads content.xml of an OpenDocument spreadsheet (OASIS OpenDocument 1.3, part 3: Schema) in one pass.
 type odsReader struct {
 	*outline
-	x       *scanner
-	rename  map[string]string // the file's prefix of a name space to the usual one; nil where they are the usual ones
-	styles  map[string]odsStyle
+	x      *scanner
+	rename map[string]string // the file's prefix of a name space to the usual one; nil where they are the usual ones
+	styles map[string]odsStyle
+	last   struct { // the style asked for last: most cells have that of the one before
+		known bool
+		name  string
+		style odsStyle
+	}
 	hides   map[string]bool // table styles of hidden sheets
 	repeats int
 
@@ -24,6 +29,7 @@ type odsReader struct {
 	rowOf   string // the style that the row gives its cells
 	text    []byte
 	comment bool
+	plain   bool // the text of the cell being read is passed over
 }
 
 // span is a run of columns with one default style.
@@ -177,7 +183,7 @@ var odsSpaces = map[string]string{
 
 // spaces finds the prefixes that the root declares.
 func (o *odsReader) spaces() {
-	o.rename = nil
+	o.rename, o.last.known = nil, false
 	for _, a := range o.x.attrs {
 		prefix, ok := bytes.CutPrefix(a.name, []byte("xmlns:"))
 		if usual := odsSpaces[string(a.value)]; ok && usual != "" && usual != string(prefix) {

@@ -18,6 +18,15 @@ func styleKey(family, name string) string { return family + "\x00" + name }
 
 // style follows a cell style to its number format's code and its marks.
 func (o *odsReader) style(name string) odsStyle {
+	if o.last.known && o.last.name == name {
+		return o.last.style
+	}
+	out := o.follow(name)
+	o.last.known, o.last.name, o.last.style = true, name, out
+	return out
+}
+
+func (o *odsReader) follow(name string) odsStyle {
 	var out odsStyle
 	format := ""
 	for range MaxDepth { // parents never go that deep, and a circle ends here
