@@ -3,7 +3,8 @@
 // another part to play that is counted. Nothing is dropped, converted or guessed in silence; what stands in the way of an
 // unambiguous reading is refused with the place, what was found, what was wanted and what to do.
 //
-//	Open          bytes -> Book: every cell as text, kind and address, nothing parsed
+//	Open          bytes -> Book: every cell as text, kind and address, nothing parsed; the kind of file by what it holds
+//	OpenText      the clipboard's text -> Book
 //	LoadPlan      bytes -> qa.Plan, checked to the last key
 //	Read          plan and files -> qa.Readings
 //	Inspect       one file -> how it would be read, and a plan to start from
