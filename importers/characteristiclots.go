@@ -11,7 +11,7 @@ import (
 // before the parts' numbers (R1, R2 … C1, C2 …); else the sheet is one lot.
 func (s *characteristicSheet) findLots() error {
 	s.lotOf = map[int]cells.Cell{}
-	for i := s.at - 1; i >= max(0, s.at-10); i-- {
+	for i := s.partsAt - 1; i >= max(0, s.at-10); i-- {
 		if names := s.lotsAbove(i); names != nil {
 			s.giveLots(names)
 			s.headingTop = s.sheet.Rows[i].Number
@@ -66,7 +66,7 @@ func (s *characteristicSheet) lotsAbove(i int) []cells.Cell {
 
 // filledAbove is the index of the nearest row above the headings that holds something.
 func (s *characteristicSheet) filledAbove() int {
-	for i := s.at - 1; i >= 0; i-- {
+	for i := s.partsAt - 1; i >= 0; i-- {
 		if slices.ContainsFunc(s.sheet.Rows[i].Cells, stored) {
 			return i
 		}
@@ -79,7 +79,7 @@ func (s *characteristicSheet) filledAbove() int {
 func (s *characteristicSheet) giveLots(names []cells.Cell) {
 	start, last := 0, -1 // of the run of headings without a gap
 	runs := map[int]int{}
-	for _, c := range s.sheet.Rows[s.at].Cells {
+	for _, c := range s.sheet.Rows[s.partsAt].Cells {
 		if filledText(c) == "" {
 			continue
 		}

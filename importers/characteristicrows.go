@@ -11,7 +11,7 @@ import (
 // characteristicSheet is a sheet with a row a characteristic while it is read.
 type characteristicSheet struct {
 	*table
-	at                  int // the headings, an index
+	at, partsAt         int // the headings and those of the parts, indices: one row or two
 	name, number, unit  int // columns; 0 where there is none
 	requirement, result int
 	limits              map[string][]int // columns of nominal values, limits and tolerances
@@ -94,7 +94,7 @@ func (s *characteristicSheet) differ() bool {
 // numbersUnder says whether a number stands under a heading of a part or result.
 func (t *table) numbersUnder(s *characteristicSheet) bool {
 	for _, p := range s.parts {
-		if t.numbersBelow(s.at, p.Col) {
+		if t.numbersBelow(s.partsAt, p.Col) {
 			return true
 		}
 	}
@@ -111,13 +111,13 @@ func (t *table) numbersUnder(s *characteristicSheet) bool {
 
 // characteristicColumns says which part each column plays with the headings in a row.
 func (t *table) characteristicColumns(at int) *characteristicSheet {
-	s := &characteristicSheet{table: t, at: at, limits: map[string][]int{}}
+	s := &characteristicSheet{table: t, at: at, partsAt: at, limits: map[string][]int{}}
 	first := func(into *int, col int) {
 		if *into == 0 {
 			*into = col
 		}
 	}
-	var unknown []cells.Cell
+	var unknown, summaries []cells.Cell
 	for _, c := range t.sheet.Rows[at].Cells {
 		text := filledText(c)
 		if text == "" {
@@ -135,7 +135,7 @@ func (t *table) characteristicColumns(at int) *characteristicSheet {
 		case means == resultHeading:
 			first(&s.result, c.Col)
 		case means == summaryLabel:
-			s.other = append(s.other, text)
+			summaries = append(summaries, c)
 		case means != "":
 			s.limits[means] = append(s.limits[means], c.Col)
 		case partNumbered.MatchString(text) && c.Kind != cells.Date:
@@ -149,6 +149,9 @@ func (t *table) characteristicColumns(at int) *characteristicSheet {
 		last = max(last, slices.Max(cols))
 	}
 	s.parts = slices.DeleteFunc(s.parts, func(c cells.Cell) bool { return c.Col < max(s.name, s.number) })
+	if s.partsBelow() { // the lots' names stand beside the headings, the parts' below
+		unknown = slices.DeleteFunc(unknown, func(c cells.Cell) bool { return c.Col >= s.parts[0].Col })
+	}
 	if len(s.parts) == 0 && s.result == 0 {
 		for _, c := range unknown { // parts under their serial numbers
 			if c.Col > last && t.numbersBelow(at, c.Col) {
@@ -157,10 +160,47 @@ func (t *table) characteristicColumns(at int) *characteristicSheet {
 		}
 		unknown = slices.DeleteFunc(unknown, func(c cells.Cell) bool { return slices.Contains(s.parts, c) })
 	}
+	for _, c := range summaries { // Min and Max are limits before the readings, and summaries behind them
+		means := ""
+		switch word(c.Text) {
+		case "min", "minimum":
+			means = lowerLabel
+		case "max", "maximum":
+			means = upperLabel
+		}
+		if before := len(s.parts) > 0 && c.Col < s.parts[0].Col || len(s.parts) == 0 && c.Col < s.result; means != "" && before {
+			s.limits[means] = append(s.limits[means], c.Col)
+			continue
+		}
+		s.other = append(s.other, filledText(c))
+	}
 	for _, c := range unknown {
 		s.other = append(s.other, filledText(c))
 	}
 	return s
+}
+
+// partsBelow takes the parts from the row below the headings, where it holds their numbers and nothing else and more of them.
+func (s *characteristicSheet) partsBelow() bool {
+	if s.at+1 >= len(s.sheet.Rows) {
+		return false
+	}
+	var parts []cells.Cell
+	for _, c := range s.sheet.Rows[s.at+1].Cells {
+		text := filledText(c)
+		if text == "" {
+			continue
+		}
+		if c.Col <= max(s.name, s.number) || !partNumbered.MatchString(text) {
+			return false
+		}
+		parts = append(parts, c)
+	}
+	if len(parts) < max(2, len(s.parts)+1) || !s.numbersBelow(s.at+1, parts[0].Col) {
+		return false
+	}
+	s.parts, s.partsAt = parts, s.at+1
+	return true
 }
 
 // readCharacteristicRows turns a sheet with a row a characteristic into rows of parts.
@@ -202,7 +242,7 @@ func (s *characteristicSheet) findLines() error {
 		case s.comment(r):
 			s.mark(i, roleComment)
 			continue
-		case i == s.at:
+		case i == s.at || i == s.partsAt:
 			s.mark(i, roleHeading)
 			continue
 		case i < s.at:

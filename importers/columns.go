@@ -207,6 +207,7 @@ func (t *table) findMeasured() error {
 		}
 		t.say("%s is not taken as a measurement: %s.", t.columnText(c.col), why)
 	}
+	t.warnReplicates()
 	if len(t.measured) == 0 {
 		return t.refuse("found no column of measurements, want at least one; name it under [[characteristic]] in the plan")
 	}

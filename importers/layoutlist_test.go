@@ -37,6 +37,7 @@ func layoutCases() []layoutCase {
 		{name: "l5-5", shows: "a row a characteristic, five", files: book(inspection("REF-0417", d1Reference, 5), inspection("CAND-0931", d1Candidate, 5)), plan: stated(bySheet, "row-per-characteristic"), want: several(5)},
 		{name: "l5-64", shows: "a row a characteristic, 64", files: book(inspection("REF-0417", d1Reference, 64), inspection("CAND-0931", d1Candidate, 64)), plan: bySheet, want: several(64)},
 		{name: "l6", shows: "a row a characteristic, the lots merged above", files: one(transposedLots(), "G1:R1", "T1:AE1"), plan: planFor("own.xlsx", "", ""), want: several(5)},
+		{name: "l6-below", shows: "the lots' names beside the headings, the parts' numbers below", files: one(transposedBelow(), "A1:A2", "B1:B2", "C1:C2", "D1:D2", "E1:E2", "F1:F2", "G1:R1", "T1:AE1"), plan: planFor("own.xlsx", "", ""), want: several(5)},
 		{
 			name: "l6-prefix", shows: "the lots told apart by the letters before the parts' numbers", files: one(transposedLots()[1:]),
 			plan: planOf("lot = \"R\"\nfile = \"own.xlsx\"", "lot = \"C\"\nfile = \"own.xlsx\"", "", ""), want: several(5),
@@ -98,6 +99,18 @@ func transposedLots() [][]any {
 	names := make([]any, len(out[0]))
 	names[6], names[19] = "REF-0417", "CAND-0931"
 	return append([][]any{names}, out...)
+}
+
+// transposedBelow is L6 with the headings in the row of the lots' names.
+func transposedBelow() [][]any {
+	rows := transposedLots()
+	for i := range 6 {
+		rows[0][i], rows[1][i] = rows[1][i], nil
+	}
+	for i := range d1Reference {
+		rows[1][6+i], rows[1][19+i] = num(fmt.Sprint(i+1)), num(fmt.Sprint(i+1))
+	}
+	return rows
 }
 
 // form is L9.

@@ -55,6 +55,25 @@ func (t *table) replicates(ch qa.Characteristic) []column {
 	return out
 }
 
+// warnReplicates tells of columns that may hold repeat readings of one characteristic and are read as characteristics of their own.
+func (t *table) warnReplicates() {
+	var names []string
+	counts := map[string]int{}
+	for _, col := range t.measured {
+		m := repeatNumber.FindStringSubmatch(t.column(col).name)
+		if m == nil || m[1] == "" {
+			continue
+		}
+		if counts[m[1]]++; counts[m[1]] == 2 {
+			names = append(names, m[1])
+		}
+	}
+	for _, n := range names {
+		t.warn("repeat-columns", "%s are read as a characteristic each; if they are repeat readings of a part, name the characteristic %s and part_column, and they are averaged.",
+			qa.Count(counts[n], "column", "columns")+" called "+quoted(n)+" and a number", quoted(n))
+	}
+}
+
 // replicateRows makes a row of each repeat reading of each part.
 func (t *table) replicateRows(all [][]column, n int) {
 	head, _ := t.sheet.Row(t.heading)
