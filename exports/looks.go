@@ -89,6 +89,9 @@ func style(k look) excelize.Style {
 		a.WrapText = true
 	case wrapLook:
 		a.WrapText, a.Vertical = true, "top"
+	case strongWrapLook:
+		s.Font.Bold = true
+		a.WrapText, a.Vertical = true, "top"
 	case strongLook:
 		s.Font.Bold = true
 	case numberLook:

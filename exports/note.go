@@ -100,6 +100,9 @@ func noteContent(v Verification, line func(name, value string)) {
 	if digest, err := contentDigest(*v.Record); err == nil {
 		line("record", RecordID(digest)+", digest of its content "+digest)
 	}
+	for _, s := range v.Record.Supersedes {
+		line("stands in place of", SupersedesText(s))
+	}
 	line("verdict in it", r.Sentence)
 	word := "agrees with the record and its sheets"
 	if !v.Agrees {

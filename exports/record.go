@@ -36,6 +36,7 @@ type recordXML struct {
 	Lots        []lotXML `xml:"lot"`
 	Around      string   `xml:"around"` // characteristics, ledger, account and what was said, as JSON
 	Result      string   `xml:"result"`
+	Supersedes  string   `xml:"supersedes,omitempty"`
 	Trail       string   `xml:"trail"`
 	Signer      string   `xml:"signer,omitempty"`
 	Layout      int      `xml:"layout"`
@@ -84,6 +85,9 @@ func writeRecord(w io.Writer, rec qa.Record) (digest string, err error) {
 	b.lot(qa.Candidate, rec.Readings.Candidate)
 	b.json("around", around)
 	b.json("result", rec.Result)
+	if len(rec.Supersedes) > 0 {
+		b.json("supersedes", rec.Supersedes)
+	}
 	b.flush()
 	acts, err := json.Marshal(withoutSigning(rec.Trail))
 	if err != nil {
@@ -259,6 +263,11 @@ func decodeRecord(b []byte, x *recordXML) (qa.Record, error) {
 		to   any
 	}{{x.Plan, &rec.Plan}, {x.PlanFile, &rec.PlanFile}, {x.Around, &rec.Readings}, {x.Result, &rec.Result}, {x.Trail, &rec.Trail}} {
 		if err := json.Unmarshal([]byte(f.from), f.to); err != nil {
+			return qa.Record{}, fmt.Errorf("record %s: %w", recordPart, err)
+		}
+	}
+	if x.Supersedes != "" {
+		if err := json.Unmarshal([]byte(x.Supersedes), &rec.Supersedes); err != nil {
 			return qa.Record{}, fmt.Errorf("record %s: %w", recordPart, err)
 		}
 	}

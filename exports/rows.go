@@ -63,6 +63,7 @@ const (
 	signLook
 	headPlainLook // names of the result format, over what they mean
 	headPlainRightLook
+	strongWrapLook
 	lastLook = iota - 1
 )
 

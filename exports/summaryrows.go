@@ -27,6 +27,9 @@ func summarySheet(rec qa.Record, digest string) sheet {
 	r := rec.Result
 	s.addTall(26, wide(orDash(r.Title), titleLook, summaryColumns))
 	s.addTall(15, wide(supportsLine(rec), mutedLook, summaryColumns))
+	if n := len(rec.Supersedes); n > 0 {
+		paragraph(&s, SupersedesText(rec.Supersedes[n-1]), strongWrapLook, 115, 14)
+	}
 	s.gap()
 	facingLots(&s, rec)
 	s.gap()

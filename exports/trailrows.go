@@ -1,6 +1,10 @@
 package exports
 
-import "lotpair/qa"
+import (
+	"fmt"
+
+	"lotpair/qa"
+)
 
 // trailSheet lists who did what when, in order, each entry with the digest of the one before it (21 CFR 11.10(e)), and how
 // often the plan is known to have been run.
@@ -24,5 +28,9 @@ func trailSheet(rec qa.Record) sheet {
 	t := qa.Count(n.Known, "attempt", "attempts") + " on this plan known; kept by: " + n.KeptBy + "."
 	s.add(wide("Attempts", groupLook, 6))
 	s.addTall(lines(t, 140)*13.5, wide(t, wrapLook, 6))
+	for i, e := range rec.Supersedes {
+		t := fmt.Sprintf("Earlier record %d%s: %s", i+1, prefixed(", compared ", localTime(e.Compared)), earlierText(e))
+		s.addTall(lines(t, 140)*13.5, wide(t, wrapLook, 6))
+	}
 	return s
 }

@@ -19,6 +19,8 @@ type Record struct {
 	Result   Result   `json:"result"`
 	Trail    Trail    `json:"trail"`
 	Signer   *Signer  `json:"signer,omitempty"` // who signs first; nil until then
+
+	Supersedes []Superseded `json:"supersedes,omitempty"` // all earlier records in whose place this one stands, oldest first
 }
 
 // Signer is the first signer as printed in the workbook; later signatures are stated by the signatures themselves.
