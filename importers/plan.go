@@ -33,7 +33,7 @@ func LoadPlan(name string, data []byte) (qa.Plan, error) {
 	if err := decoder.Decode(&plan); err != nil {
 		return qa.Plan{}, syntaxError(name, data, err)
 	}
-	faults := plan.Validate()
+	faults := append(keys.zeros(plan), plan.Validate()...)
 	if len(faults) == 0 {
 		return plan, nil
 	}
@@ -101,6 +101,28 @@ func syntaxError(name string, data []byte, err error) error {
 		Place: placeOf(name, line), Line: line,
 		Text: fmt.Sprintf("found %s, want TOML (%s); correct the line", quoted(found), strings.TrimPrefix(decode.Error(), "toml: ")),
 	}}}
+}
+
+// zeros finds the keys that the plan sets to 0, which is not in their range and looks like a key left out once it is read.
+func (k *planKeys) zeros(p qa.Plan) []qa.PlanFault {
+	var out []qa.PlanFault
+	performance := qa.PerformancePlan{}
+	if p.Performance != nil {
+		performance = *p.Performance
+	}
+	for _, z := range []struct {
+		key, want string
+		is        bool
+	}{
+		{"reading.header_row", "a row number from 1", p.Reading.HeaderRow == 0},
+		{"performance.coverage", "a number above 0 and below 1", performance.Coverage == 0},
+		{"performance.confidence", "a number above 0 and below 1", performance.Confidence == 0},
+	} {
+		if z.is && k.lines[z.key] > 0 {
+			out = append(out, qa.PlanFault{Key: z.key, Found: "0", Want: z.want, Do: "correct the plan, or leave it out"})
+		}
+	}
+	return out
 }
 
 // numbered is how Validate names an element of a list: "characteristic 2 (Bore).lower".

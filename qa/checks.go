@@ -12,7 +12,8 @@ import (
 // Common practice, no source.
 const farReadingP = 0.01
 
-// fewestToJudge is the number of readings from which a far one can be told from rounding. Common practice, no source.
+// fewestToJudge is the number of readings below which neither spread nor shape can be judged, nor a far one told from rounding.
+// Common practice, no source.
 const fewestToJudge = 5
 
 // notNormalP is the p-value of Shapiro and Wilk's test below which a lot is said not to look normal (contract: result).
@@ -36,7 +37,7 @@ func (c *comparison) checkSamples() {
 		SampleChecks
 	}{{Reference, c.Checks.Reference}, {Candidate, c.Checks.Candidate}} {
 		smaller := math.Min(ref.summary.SD, cand.summary.SD)
-		if s.Resolution != nil && ref.summary.N > 1 && cand.summary.N > 1 && *s.Resolution > smaller {
+		if s.Resolution != nil && ref.summary.N > 1 && cand.summary.N > 1 && *s.Resolution > smaller*(1+1e-9) { // equal but for rounding is no coarser
 			c.warn(WarnCoarse, s.side, "checks."+string(s.side)+".resolution",
 				fmt.Sprintf("The readings step by %s, more than the smaller standard deviation: the gauge resolves too little to see the spread.", Plain(*s.Resolution)))
 		}
@@ -57,15 +58,16 @@ func (c *comparison) checkSamples() {
 func (c *comparison) checkOne(s sample) SampleChecks {
 	var out SampleChecks
 	n := s.summary.N
-	switch {
-	case n >= 2 && s.summary.Constant():
+	if n >= 2 && s.summary.Constant() {
 		c.warn(WarnNoVariation, s.side, string(s.side)+".sd", fmt.Sprintf("All %d readings of the %s lot are equal.", n, s.side))
-	case n >= 2 && n < 5:
-		// Common practice, no source: below five readings neither spread nor shape can be judged.
-		c.warn(WarnFew, s.side, string(s.side)+".n", fmt.Sprintf("Only %d readings in the %s lot: the verdict rests on the assumption of a normal distribution, which so few cannot show.", n, s.side))
 	}
-	if step := stats.Resolution(s.values, max(0, written(s))); step > 0 {
-		out.Resolution = &step
+	if n < fewestToJudge {
+		c.warn(WarnFew, s.side, string(s.side)+".n", fmt.Sprintf("Only %s in the %s lot: the verdict rests on the assumption of a normal distribution, which so few cannot show.", Count(n, "reading", "readings"), s.side))
+	}
+	if d := written(s); d >= 0 {
+		if step := stats.Resolution(s.values, d); step > 0 {
+			out.Resolution = &step
+		}
 	}
 	x := s.values
 	if c.Method == "log" {

@@ -60,6 +60,7 @@ func (m Margin) resolve(c Characteristic, a asked, ref stats.Summary) (tested, e
 			t.fromSample = true
 			sd = &ref.SD
 		}
+		t.stated.SD = copied(sd)
 		err = t.symmetric(c, *m.SDMultiple**sd, m.SDMultiple)
 	case "keep_ppk":
 		err = t.keepPpk(c, m, a, ref)
@@ -189,15 +190,16 @@ func (t *tested) shrink(c Characteristic, a asked) error {
 	if t.scale == scaleRatio {
 		return fmt.Errorf("guard of %q: found %v beside a margin that is a ratio, want it only where the margin is in the unit; remove one", c.Name, a.guard)
 	}
+	beyond := false // an end that the guard takes to 0 or to its other side
 	if t.lower != nil {
+		beyond = *t.lower < 0 && !(*t.lower+a.guard < 0)
 		*t.lower += a.guard
 	}
 	if t.upper != nil {
+		beyond = beyond || *t.upper > 0 && !(*t.upper-a.guard > 0)
 		*t.upper -= a.guard
 	}
-	symmetric := t.stated.Kind != "bounds" && t.stated.Kind != "keep_ppk"
-	if t.lower != nil && t.upper != nil && !(*t.lower < *t.upper) ||
-		symmetric && (t.upper != nil && !(*t.upper > 0) || t.lower != nil && !(*t.lower < 0)) {
+	if beyond || t.lower != nil && t.upper != nil && !(*t.lower < *t.upper) {
 		return fmt.Errorf("guard of %q: found %v, want less than the margin; lower the guard or state a wider margin", c.Name, a.guard)
 	}
 	return nil

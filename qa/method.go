@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"strings"
 
 	"lotpair/qa/stats"
 )
@@ -99,12 +100,22 @@ func (c *comparison) match(ref, cand Series) error {
 		}
 	}
 	c.ref, c.cand = newSample(Reference, ref, x), newSample(Candidate, cand, y)
+	matched := map[string]bool{}
+	for _, r := range x {
+		matched[r.Pair] = true
+	}
 	for _, s := range []struct {
 		side Side
-		left int
-	}{{Reference, len(ref.used()) - len(x)}, {Candidate, len(cand.used()) - len(y)}} {
-		if s.left > 0 {
-			c.warn(WarnUnmatched, s.side, string(s.side)+".unmatched", fmt.Sprintf("%s of the %s without a partner in the other lot, left out of the paired test.", Count(s.left, "part", "parts"), s.side))
+		used []Reading
+	}{{Reference, ref.used()}, {Candidate, cand.used()}} {
+		var left []string
+		for _, r := range s.used {
+			if !matched[r.Pair] {
+				left = append(left, fmt.Sprintf("%q in %s", r.Pair, r.Source.Place()))
+			}
+		}
+		if n := len(left); n > 0 {
+			c.warn(WarnUnmatched, s.side, string(s.side)+".unmatched", fmt.Sprintf("%s of the %s without a partner in the other lot, left out of the paired test: %s.", Count(n, "part", "parts"), s.side, strings.Join(left, ", ")))
 		}
 	}
 	return nil

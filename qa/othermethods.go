@@ -11,10 +11,19 @@ import (
 // otherMethods gives the verdict again under each other sound method on the same margin, with the exclusions put back and with
 // the outlying readings removed. None of them changes the verdict; one that differs is a warning.
 func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
-	if c.Equivalence == nil || c.margin.scale != scaleDifference || !c.Objective.AgainstMargin() || c.margin.fromSample || c.Equivalence.Lower == nil {
+	if c.Equivalence == nil || !c.Objective.AgainstMargin() || c.margin.fromSample || c.Equivalence.Lower == nil {
 		return
 	}
 	paired := c.Method == "paired"
+	if c.margin.scale != scaleDifference {
+		c.otherRatios()
+		if !paired {
+			c.putBack(ref, cand)
+			c.withoutOutlying(ref, cand)
+		}
+		c.flips()
+		return
+	}
 	if !paired && !c.asked.grouped {
 		if c.Method != "welch" {
 			e, err := stats.Welch(c.ref.summary, c.cand.summary)
@@ -124,12 +133,39 @@ func (c *comparison) withoutOutlying(ref, cand Series) {
 	}
 }
 
+// otherRatios gives the ratio of means by the other sound methods: the other test of the means, and the ratio of the geometric
+// means where all readings are above 0.
+func (c *comparison) otherRatios() {
+	if c.margin.stated.Kind != "reference_fraction" || c.Method == "paired" || c.asked.grouped {
+		return
+	}
+	for _, m := range []string{"welch", "pooled", "log"} {
+		if m != c.Method {
+			c.same(m, m, c.ref, c.cand)
+		}
+	}
+}
+
 // variant adds the plan's own method on other readings.
 func (c *comparison) variant(name string, ref, cand Series) {
-	x, y := newSample(Reference, ref, ref.used()), newSample(Candidate, cand, cand.used())
-	v := &comparison{ch: c.ch, asked: c.asked, margin: c.margin, ref: x, cand: y, Comparison: Comparison{Name: c.Name, Objective: c.Objective, Alpha: c.Alpha, Method: c.Method}}
-	e, err := v.estimate()
-	c.again(name, e, err)
+	c.same(name, c.Method, newSample(Reference, ref, ref.used()), newSample(Candidate, cand, cand.used()))
+}
+
+// same adds the answer of a method on the margin's own scale.
+func (c *comparison) same(name, method string, ref, cand sample) {
+	v := &comparison{ch: c.ch, asked: c.asked, margin: c.margin, ref: ref, cand: cand, Comparison: Comparison{
+		Name: c.Name, Objective: c.Objective, Alpha: c.Alpha, Method: method,
+		Equivalence: &EquivalenceResult{Scale: c.margin.scale, MarginLower: c.margin.lower, MarginUpper: c.margin.upper},
+	}}
+	est, err := v.estimate()
+	if c.margin.scale == scaleDifference && (err != nil || !finite(est.Value, est.SE, est.DF)) {
+		return
+	}
+	e := v.Equivalence
+	if err := v.equivalence(est); err != nil || e.Estimate == nil || e.Lower == nil || e.Upper == nil {
+		return
+	}
+	c.interval(name, *e.Estimate, stats.Interval{Level: *e.Level, Lower: *e.Lower, Upper: *e.Upper}, nil)
 }
 
 // flips warns where another method gives another verdict than the plan's on the mean.

@@ -166,7 +166,7 @@ type MarginResult struct {
 	Full        *float64 `json:"full,omitempty"`
 	Half        *float64 `json:"half,omitempty"`
 	Guard       float64  `json:"guard"`
-	Mean        *float64 `json:"mean,omitempty"` // keep_ppk: the mean and standard deviation it is kept at
+	Mean        *float64 `json:"mean,omitempty"` // keep_ppk: the mean and standard deviation it is kept at; sd_multiple: what is multiplied
 	SD          *float64 `json:"sd,omitempty"`
 	Reason      string   `json:"reason,omitempty"`
 	ApprovedBy  string   `json:"approved_by,omitempty"`

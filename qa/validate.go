@@ -52,8 +52,14 @@ func (p Plan) Validate() []PlanFault {
 	}
 	v.family(p)
 	for i, s := range p.Signatures {
-		v.oneOf(fmt.Sprintf("signatures %d.meaning", i+1), s.Meaning, "prepared", "reviewed", "approved")
+		key := fmt.Sprintf("signatures %d.meaning", i+1)
+		if s.Meaning == "" {
+			v.fault(key, "none", "prepared, reviewed or approved", "state what the signature stands for")
+		}
+		v.oneOf(key, s.Meaning, "prepared", "reviewed", "approved")
 	}
+	v.positive("record.quantity_reference", p.Record.QuantityReference)
+	v.positive("record.quantity_candidate", p.Record.QuantityCandidate)
 	if f := p.Performance; f != nil {
 		v.share("performance.coverage", f.Coverage)
 		v.share("performance.confidence", f.Confidence)
@@ -63,6 +69,9 @@ func (p Plan) Validate() []PlanFault {
 	}
 	return v.faults
 }
+
+// encodings are the text encodings that a plan may state, in the spellings that are understood.
+var encodings = []string{"", "utf-8", "utf8", "utf-16", "utf16", "utf-16le", "utf-16be", "windows-1252", "cp1252", "latin-1", "latin1", "iso-8859-1"}
 
 type validator struct{ faults []PlanFault }
 
@@ -107,6 +116,9 @@ func (v *validator) lot(key string, l LotPlan) {
 func (v *validator) reading(r ReadingPlan) {
 	v.oneOf("reading.layout", r.Layout, "row-per-part", "column-per-lot", "sheet-per-lot", "row-per-characteristic")
 	v.oneOf("reading.decimal", r.Decimal, ".", ",")
+	if !slices.Contains(encodings, strings.ToLower(r.Encoding)) {
+		v.fault("reading.encoding", fmt.Sprintf("%q", r.Encoding), "utf-8, utf-16 or windows-1252", "choose one of these")
+	}
 	if r.HeaderRow < 0 {
 		v.fault("reading.header_row", fmt.Sprint(r.HeaderRow), "a row number from 1", "correct the plan")
 	}
@@ -143,6 +155,9 @@ func (v *validator) characteristic(key string, c Characteristic) {
 	v.oneOf(key+".kind", c.Kind, "numeric", "attribute")
 	if c.Kind == "attribute" && len(c.Failed) == 0 {
 		v.fault(key+".failed", "none", "the words that mark a failed part", "list them, as in failed = [\"NOK\", \"1\"]")
+	}
+	if c.Kind != "attribute" && len(c.Failed) > 0 {
+		v.fault(key+".failed", fmt.Sprintf("%q without kind = \"attribute\"", c.Failed), "it only for an attribute", "state the kind, or remove it")
 	}
 	v.finite(key+".lower", c.Lower)
 	v.finite(key+".target", c.Target)

@@ -125,13 +125,13 @@ func Sentence(r Result) string {
 		parts = append(parts, list(undecided)+isAre(undecided)+" undecided")
 	}
 	if hold := against - len(refuted) - len(undecided); hold == against && against > 1 {
-		parts = append(parts, fmt.Sprintf("all %d characteristics hold", hold))
+		parts = append(parts, fmt.Sprintf("All %d characteristics hold", hold))
 	} else if hold == against {
 		parts = append(parts, r.Characteristics[0].Name+" holds")
 	} else if hold > 0 {
 		parts = append(parts, fmt.Sprintf("%d %s", hold, map[bool]string{true: "holds", false: "hold"}[hold == 1]))
 	}
-	b.WriteString(" " + upperFirst(strings.Join(parts, ", ")) + ".")
+	b.WriteString(" " + strings.Join(parts, ", ") + ".")
 	if len(refuted) > 0 && against > 1 {
 		b.WriteString(" The overall verdict rests on " + list(refuted) + "; its error grows with the number of characteristics refuted.")
 	}

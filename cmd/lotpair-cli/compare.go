@@ -206,6 +206,20 @@ func (p *program) notWritten(err error) int {
 	return exitFile
 }
 
+// saveNew writes a file under a name that is still free; no flag overwrites it.
+func (p *program) saveNew(name string, b []byte) int {
+	err := exports.Save(p.file(name), b, false)
+	var exists *exports.ExistsError
+	switch {
+	case err == nil:
+		return exitDone
+	case errors.As(err, &exists) && !exists.Signed:
+		fmt.Fprintf(p.err, "%s: found an existing file, want another name; it is not overwritten\n", name)
+		return exitLost
+	}
+	return p.notWritten(err)
+}
+
 // openIdentity opens a .p12 file with its passphrase.
 func (p *program) openIdentity(file, passphraseFile string) (identity.Identity, int) {
 	b, code := p.read(file)

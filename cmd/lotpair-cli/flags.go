@@ -41,7 +41,7 @@ func (f *flags) parse(args []string, want ...string) ([]string, int, error) {
 			return nil, exitDone, errHelp
 		}
 		if err != nil {
-			return nil, f.p.usageError(f, err.Error()), err
+			return nil, f.p.usageError(f, f.wrong(err)), err
 		}
 		rest := f.Args()
 		if len(rest) == 0 {
@@ -59,6 +59,18 @@ func (f *flags) parse(args []string, want ...string) ([]string, int, error) {
 		return nil, f.p.usageError(f, err.Error()), err
 	}
 	return positional, exitDone, nil
+}
+
+// wrong says an error of the flag package as the program's other errors are said.
+func (f *flags) wrong(err error) string {
+	text := err.Error()
+	if name, ok := strings.CutPrefix(text, "flag provided but not defined: -"); ok {
+		return fmt.Sprintf("found --%s, want a flag of this call; see --help", name)
+	}
+	if name, ok := strings.CutPrefix(text, "flag needs an argument: -"); ok {
+		return fmt.Sprintf("found --%s without a value, want one after it", name)
+	}
+	return "found " + strings.ReplaceAll(text, "flag -", "flag --")
 }
 
 func (p *program) usageError(f *flags, text string) int {

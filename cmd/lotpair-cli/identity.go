@@ -109,6 +109,10 @@ func (p *program) identityShow(args []string) int {
 			p.say(fmt.Errorf("%s: %w", pos[0], err))
 			return exitFile
 		}
+		if len(signers) == 0 {
+			fmt.Fprintf(p.err, "%s: found no signature, want a record that was signed; name another file\n", pos[0])
+			return exitFile
+		}
 		for _, id := range signers {
 			p.printIdentity(id, pem)
 		}

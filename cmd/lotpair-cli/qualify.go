@@ -54,8 +54,8 @@ func (p *program) qualify(args []string) int {
 			p.say(err)
 			return exitFault
 		}
-		if err := exports.Save(p.file(report), b, false); err != nil {
-			return p.notWritten(err)
+		if code := p.saveNew(report, b); code != exitDone {
+			return code
 		}
 		fmt.Fprintf(p.err, "wrote %s\n", report)
 	}

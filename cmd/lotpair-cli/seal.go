@@ -42,13 +42,19 @@ func (p *program) seal(args []string) int {
 	if err != nil {
 		return p.failed(err)
 	}
+	if faults := plan.SealFaults(); len(faults) > 0 {
+		for _, f := range faults {
+			p.say(fmt.Errorf("%s: %w", name, f))
+		}
+		return exitUsage
+	}
 	s := exports.Seal(plan, qa.FileOf(name, text), p.software(), "unopened", "console", p.now())
 	pkg, code := p.sealBytes(s, key, passphraseFile, opcsign.Statement{Meaning: meaning, Reason: reason})
 	if code != exitDone {
 		return code
 	}
-	if err := exports.Save(p.file(out), pkg, false); err != nil {
-		return p.notWritten(err)
+	if code := p.saveNew(out, pkg); code != exitDone {
+		return code
 	}
 	fmt.Fprintf(p.out, "sealed the criterion of %s at %s\ndigest %s\n", name, s.Result().Time, s.Digest)
 	fmt.Fprintf(p.err, "wrote %s\n", out)

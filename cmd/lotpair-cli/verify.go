@@ -53,11 +53,11 @@ func (p *program) verify(args []string) int {
 	}
 	if note != "" {
 		b, err := exports.Note(filepath.Base(pos[0]), pkg, v, p.software(), p.now())
-		if err == nil {
-			err = exports.Save(p.file(note), b, false)
-		}
 		if err != nil {
 			return p.notWritten(err)
+		}
+		if code := p.saveNew(note, b); code != exitDone {
+			return code
 		}
 		fmt.Fprintf(p.err, "wrote %s\n", note)
 	}
@@ -114,7 +114,8 @@ func (p *program) printVerification(name string, v exports.Verification) {
 		}
 		who := strings.Trim(strings.Join([]string{s.Signer, s.Title, s.Organization}, ", "), ", ")
 		who = strings.ReplaceAll(who, ", , ", ", ")
-		fmt.Fprintf(p.out, "  %s: %s, %s, %s%s%s\n    certificate SHA-256 %s\n", s.Meaning, who, s.Time, word, trustWord(s.Trusted), after(", reason: ", s.Reason), s.Fingerprint)
+		fmt.Fprintf(p.out, "  %s: %s, %s, %s%s%s%s\n    certificate SHA-256 %s\n", s.Meaning, who, s.Time, word, trustWord(s.Trusted),
+			after(", reason: ", s.Reason), after(", disposition: ", s.Disposition), s.Fingerprint)
 	}
 	for _, m := range v.MissingMeanings {
 		fmt.Fprintf(p.out, "  missing: a signature as %s\n", m)
