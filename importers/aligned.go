@@ -39,10 +39,26 @@ func readSpaced(text string, offset int, delimiter string) (textFile, bool, erro
 	switch {
 	case delimiter == "\t" && (!ok || err == nil && t.report.plain()):
 		return textFile{}, false, nil
-	case ok:
+	case ok && (err == nil || delimiter == ""):
 		return t, true, err
 	}
-	return aligned(lines, offset)
+	t, ok, err = aligned(lines, offset)
+	if delimiter != "" && (err != nil || !ok || t.heldBelow(delimiter)) {
+		return textFile{}, false, nil // the delimiter counts after all
+	}
+	return t, ok, err
+}
+
+// heldBelow says whether a text stands below the headings of aligned columns, in rows of two fields or more or alone.
+func (t textFile) heldBelow(text string) bool {
+	below := false
+	for _, r := range t.rows {
+		if below && slices.ContainsFunc(r.Cells, func(c cells.Cell) bool { return strings.Contains(c.Text, text) }) {
+			return true
+		}
+		below = below || len(r.Cells) > 1
+	}
+	return false
 }
 
 // aligned reads a text without a delimiter whose columns stand below each other. Its headings are the first line of two

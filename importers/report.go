@@ -84,6 +84,7 @@ func readReport(lines []string, offset int) (textFile, bool, error) {
 		return t, false, nil
 	}
 	keys, fresh := map[string]cells.Cell{}, true
+	features := map[string]bool{}
 	for i, line := range lines {
 		number := offset + i + 1
 		if strings.TrimSpace(line) == "" {
@@ -106,6 +107,9 @@ func readReport(lines []string, offset int) (textFile, bool, error) {
 			continue
 		}
 		if pairs, ok := keyLine(line); ok {
+			if features[word(pairs[0].text)] {
+				return t, true, fmt.Errorf("line %d: found %s, the name of a feature, with fewer values than columns, want a value below each heading; correct the line", number, quoted(pairs[0].text))
+			}
 			row := fieldRow(number, pairs)
 			if !fresh {
 				keys = cloneKeys(keys)
@@ -132,6 +136,7 @@ func readReport(lines []string, offset int) (textFile, bool, error) {
 			continue
 		}
 		t.rows = append(t.rows, fieldRow(number, put))
+		features[word(put[0].text)] = true
 		if fresh {
 			r.blocks = append(r.blocks, reportBlock{keys: keys})
 			keys, fresh = cloneKeys(keys), false

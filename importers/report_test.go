@@ -90,6 +90,7 @@ func TestReadReportLines(t *testing.T) {
 	}{
 		{"Bore dia         12.003     12.000      0.003      7.0\r\n", []string{"line 7", "12.000"}},
 		{"Bore dia  12.003\r\n", []string{"line 7"}},
+		{first + "Bore dia:        12.003\r\n", []string{"line 8", "name of a feature"}},
 		{"                 12.003     12.000\r\n", []string{"line 7", "feature's name"}},
 	} {
 		_, err := read(t, plan("d1.txt"), change(tt.line))
@@ -149,6 +150,10 @@ func TestReadAligned(t *testing.T) {
 	if s := mustRead(t, plan("d1.prn"), []byte(gap)).Reference.Series[0]; s.Missing != 1 || len(s.Values()) != 11 {
 		t.Errorf("got %+v, want one missing", s)
 	}
+	titled := "Report, by hand, of the bores\nwith text, more of it\n"
+	wantD1(t, mustRead(t, plan("d1.prn"), []byte(titled+b.String())))
+	delimited := "Name  Value\nTemp  20.1\nHumidity  45.0\nPressure  990.5\nGauge  14.0\nScale  1.0\n" + strings.Repeat("note\n", 40) + longCSV(";", ".")
+	wantD1(t, mustRead(t, plan("d1.csv"), []byte(delimited)))
 	_, err := read(t, plan("d1.prn"), []byte(strings.Replace(b.String(), "12.011\n", "12.011   7.5\n", 1)))
 	wantFileError(t, err, "line 7", "4 fields")
 }
