@@ -41,6 +41,7 @@ func Compare(plan Plan, readings Readings, run Run) (Result, error) {
 		r.Characteristics = append(r.Characteristics, one)
 	}
 	holm(r.Characteristics)
+	r.Warnings = append(r.Warnings, claimOfSources(plan)...)
 	if g := plan.Record; g.GaugeReference != "" && g.GaugeCandidate != "" && g.GaugeReference != g.GaugeCandidate {
 		r.Warnings = append(r.Warnings, Warning{Code: WarnGauges, Text: "The lots were measured with different gauges (" + g.GaugeReference +
 			"; " + g.GaugeCandidate + "): a difference between the gauges is part of every difference shown."})
@@ -107,6 +108,8 @@ func compareOne(plan Plan, ch Characteristic, k *known, ref, cand Series) (Compa
 	c.Reference, c.Candidate = c.sample(c.ref), c.sample(c.cand)
 	c.Decimals = Decimals(ch, ref, cand)
 	c.checkSamples()
+	c.checkPairs()
+	c.checkSkew()
 	c.groups()
 	if err := c.test(); err != nil {
 		return Comparison{}, err

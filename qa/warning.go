@@ -41,6 +41,9 @@ const (
 	WarnFewForPerformance = "few-for-performance"
 	WarnOneGroup          = "one-group"
 	WarnIndependence      = "assumes-independence"
+	WarnPairs             = "looks-paired"
+	WarnSkewUnequal       = "skewed-and-unequal"
+	WarnLotsInTime        = "lots-in-time"
 )
 
 // Has says whether a warning of the code is among w.
