@@ -121,6 +121,8 @@ func (c *comparison) nonDetects(plan Plan, ch Characteristic, ref, cand Series) 
 			c.Equivalence.Verdict = higher.Equivalence.Verdict
 		}
 		c.warn(WarnNonDetects, "", "verdict", fmt.Sprintf("%s below or above a detection limit. The verdict holds wherever they lie: %s. The figures shown are of the readings with a value alone.", cells, ends))
+	case agree:
+		c.undecided(WarnNonDetects, fmt.Sprintf("%s below or above a detection limit, and nothing is decided wherever they lie: %s.", cells, ends))
 	default:
 		c.undecided(WarnNonDetects, fmt.Sprintf("%s below or above a detection limit, and the verdict is not the same wherever they lie: %s. State beforehand what they count as (non_detect under [reading]).", cells, ends))
 	}
