@@ -21,10 +21,12 @@ var ErrMeaning = errors.New("meaning: want prepared, reviewed or approved")
 type NotSoundError struct {
 	State   State
 	Reasons []opcsign.Reason
+
+	undone string // what was not done; signed where empty
 }
 
 func (e *NotSoundError) Error() string {
-	lines := []string{fmt.Sprintf("found a record that is %s, want a sound one; nothing was signed", e.State)}
+	lines := []string{fmt.Sprintf("found a record that is %s, want a sound one; nothing was %s", e.State, orWord(e.undone, "signed"))}
 	for _, r := range e.Reasons {
 		lines = append(lines, r.Error())
 	}

@@ -20,7 +20,7 @@ func Supersede(name string, pkg []byte, reason string) ([]qa.Superseded, error) 
 	}
 	v := Verify(pkg, nil)
 	if v.State != Intact && v.State != Incomplete {
-		return nil, fmt.Errorf("%s: %w", name, &NotSoundError{State: v.State, Reasons: v.Reasons})
+		return nil, fmt.Errorf("%s: %w", name, &NotSoundError{State: v.State, Reasons: v.Reasons, undone: "superseded"})
 	}
 	if v.Record == nil {
 		return nil, fmt.Errorf("%s: %w", name, ErrNoRecord)

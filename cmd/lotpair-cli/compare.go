@@ -21,11 +21,12 @@ type compareFlags struct {
 	passphraseFile                          string
 	referenceFile, candidateFile, candidate string
 	seal                                    string
+	supersedes, because                     string
 }
 
 func (p *program) compare(args []string) int {
 	var c compareFlags
-	f := p.flags("compare PLAN.toml [--json] [--workbook OUT.xlsx] [--seal PLAN.seal.xlsx] [--reference-file F] [--candidate-file F] [--candidate-lot L] [--identity KEY.p12 --meaning prepared] [--gate] [--force]",
+	f := p.flags("compare PLAN.toml [--json] [--workbook OUT.xlsx] [--seal PLAN.seal.xlsx] [--reference-file F] [--candidate-file F] [--candidate-lot L] [--supersedes OLD.xlsx --because REASON] [--identity KEY.p12 --meaning prepared] [--gate] [--force]",
 		"Runs the plan: reads both lots, holds them against the criterion, says the verdict, and writes the workbook where one is asked for,\nsigned when an identity is given. The verdict never changes the exit code unless --gate is given.",
 		"lotpair-cli compare testdata/demo/plan.toml --workbook hub-shell.xlsx")
 	f.BoolVar(&c.json, "json", false, "print the result as JSON (lotpair.result/1)")
@@ -40,6 +41,8 @@ func (p *program) compare(args []string) int {
 	f.StringVar(&c.candidateFile, "candidate-file", "", "read the candidate from `FILE` instead of the plan's")
 	f.StringVar(&c.candidate, "candidate-lot", "", "take lot `L` as the candidate instead of the plan's")
 	f.StringVar(&c.seal, "seal", "", "hold the plan against the criterion sealed in `PLAN.seal.xlsx`; a plan that departs from it is refused")
+	f.StringVar(&c.supersedes, "supersedes", "", "put the record in the place of the signed record `OLD.xlsx`, which is named by its id and digest")
+	f.StringVar(&c.because, "because", "", "the `reason` why the earlier record is superseded")
 	pos, code, err := f.parse(args, "PLAN.toml")
 	if err != nil {
 		return code
@@ -79,6 +82,10 @@ func (p *program) compare(args []string) int {
 // wrong says which flags do not go together.
 func (c compareFlags) wrong() string {
 	switch {
+	case (c.supersedes == "") != (c.because == ""):
+		return "found one of --supersedes and --because, want both: the earlier record and the reason"
+	case c.supersedes != "" && c.workbook == "":
+		return "found --supersedes without --workbook, want the workbook of the new record"
 	case c.identityFile != "" && c.workbook == "":
 		return "found --identity without --workbook, want the workbook that is to be signed"
 	case c.identityFile != "" && c.meaning == "":
@@ -123,6 +130,10 @@ func (p *program) runPlan(path string, c compareFlags) (qa.Record, int) {
 	if code != exitDone {
 		return qa.Record{}, code
 	}
+	earlier, attempts, code := p.earlier(c.supersedes, c.because)
+	if code != exitDone {
+		return qa.Record{}, code
+	}
 	readings, err := importers.Read(plan, func(file string) ([]byte, error) {
 		at, ok := elsewhere[file]
 		if !ok {
@@ -139,7 +150,7 @@ func (p *program) runPlan(path string, c compareFlags) (qa.Record, int) {
 	result, err := qa.Compare(plan, readings, qa.Run{
 		Software: p.software(),
 		Seal:     seal.result(plan),
-		Attempts: qa.Attempts{Known: 1, KeptBy: "not counted"},
+		Attempts: attempts,
 	})
 	if err != nil {
 		p.say(fmt.Errorf("%s: %w", name, err))
@@ -147,7 +158,7 @@ func (p *program) runPlan(path string, c compareFlags) (qa.Record, int) {
 	}
 	rec := qa.NewRecord(plan, qa.FileOf(name, text), readings, result, "console", p.now())
 	rec.Trail = seal.trail(rec.Trail)
-	return rec, exitDone
+	return rec.Superseding(earlier, "console", p.now()), exitDone
 }
 
 // failed prints an error of reading and gives its exit code.

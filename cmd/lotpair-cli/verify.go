@@ -10,6 +10,7 @@ import (
 
 	"lotpair/exports"
 	"lotpair/exports/identity"
+	"lotpair/qa"
 )
 
 func (p *program) verify(args []string) int {
@@ -93,15 +94,18 @@ func (p *program) verifyJSON(v exports.Verification) error {
 		Recomputed      struct {
 			Agrees      bool     `json:"agrees"`
 			Differences []string `json:"differences"`
+			Rebuilt     bool     `json:"rebuilt"`
 		} `json:"recomputed"`
-		State exports.State `json:"state"`
+		State      exports.State   `json:"state"`
+		Supersedes []qa.Superseded `json:"supersedes,omitempty"`
 	}{
 		"lotpair.verify/1", v.Signatures, v.MissingMeanings, v.UnsignedParts, reasons,
 		struct {
 			Agrees      bool     `json:"agrees"`
 			Differences []string `json:"differences"`
-		}{v.Agrees, v.Differences},
-		v.State,
+			Rebuilt     bool     `json:"rebuilt"`
+		}{v.Agrees, v.Differences, v.Rebuilt},
+		v.State, superseded(v),
 	})
 }
 
@@ -130,6 +134,12 @@ func (p *program) printVerification(name string, v exports.Verification) {
 			word = "the result computed again, or the sheets, DISAGREE with the record"
 		}
 		fmt.Fprintf(p.out, "  %s\n", word)
+		if v.Agrees && !v.Rebuilt && v.State != exports.Changed {
+			fmt.Fprintln(p.out, "  written by another version: all cells were compared, pictures and the feet of pages were not")
+		}
+		for i := len(v.Record.Supersedes) - 1; i >= 0; i-- {
+			fmt.Fprintf(p.out, "  %s\n", exports.SupersedesText(v.Record.Supersedes[i]))
+		}
 		fmt.Fprintf(p.out, "  verdict in the record: %s\n", v.Record.Result.Sentence)
 	}
 }
