@@ -17,7 +17,7 @@ func TestLooksPaired(t *testing.T) {
 		for i := range x {
 			x[i], y[i] = r.NormFloat64(), r.NormFloat64()
 		}
-		if c := one(t, plan(qa.Equivalence, absolute(1)), lots(qa.Characteristic{Name: "X"}, series("X", 16, x...), series("X", 16, y...))); qa.Has(c.Warnings, qa.WarnPairs) {
+		if c := one(t, plan(qa.Equivalence, absolute(100)), lots(qa.Characteristic{Name: "X"}, series("X", 16, x...), series("X", 16, y...))); qa.Has(c.Warnings, qa.WarnPairs) {
 			alarms++
 		}
 	}
@@ -39,7 +39,7 @@ func TestLooksPaired(t *testing.T) {
 		{"a constant lot", "", []float64{1, 1, 1, 1, 1, 1, 1, 1}, false},
 		{"too few", "", y[:4], false},
 	} {
-		p := plan(qa.Equivalence, absolute(1))
+		p := plan(qa.Equivalence, absolute(100))
 		p.Criterion.Method = c.method
 		a, b := series("X", 1, x...), series("X", 1, c.y...)
 		for _, s := range []qa.Series{a, b} {
@@ -74,7 +74,7 @@ func TestSkewedAndUnequal(t *testing.T) {
 		{"normal, unequal", "", lot(40, r.NormFloat64), lot(8, r.NormFloat64), false},
 		{"skewed, unequal, large", "", lot(100, r.ExpFloat64), lot(40, r.ExpFloat64), false},
 	} {
-		p := plan(qa.Equivalence, absolute(1))
+		p := plan(qa.Equivalence, absolute(100))
 		p.Criterion.Method = c.method
 		if got := qa.Has(one(t, p, lots(qa.Characteristic{Name: "X"}, series("X", 16, c.x...), series("X", 16, c.y...))).Warnings, qa.WarnSkewUnequal); got != c.want {
 			t.Errorf("%s: got %v, want %v", c.name, got, c.want)
