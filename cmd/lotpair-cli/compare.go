@@ -4,7 +4,6 @@ import (
 	"bytes"
 	"errors"
 	"fmt"
-	"os"
 	"path/filepath"
 
 	"lotpair/exports"
@@ -107,16 +106,7 @@ func (p *program) runPlan(path string, c compareFlags) (qa.Record, int) {
 	if err != nil {
 		return qa.Record{}, p.failed(err)
 	}
-	dir := filepath.Dir(p.file(path))
-	elsewhere := map[string]string{} // files named on the command line are found from where the command runs
-	if c.referenceFile != "" {
-		plan.Reference.File = filepath.Base(c.referenceFile)
-		elsewhere[plan.Reference.File] = p.file(c.referenceFile)
-	}
-	if c.candidateFile != "" {
-		plan.Candidate.File = filepath.Base(c.candidateFile)
-		elsewhere[plan.Candidate.File] = p.file(c.candidateFile)
-	}
+	open := p.files(&plan, path, c.referenceFile, c.candidateFile)
 	if c.candidate != "" {
 		plan.Candidate.Lot = c.candidate
 	}
@@ -134,16 +124,7 @@ func (p *program) runPlan(path string, c compareFlags) (qa.Record, int) {
 	if code != exitDone {
 		return qa.Record{}, code
 	}
-	readings, err := importers.Read(plan, func(file string) ([]byte, error) {
-		at, ok := elsewhere[file]
-		if !ok {
-			at = file
-			if !filepath.IsAbs(file) {
-				at = filepath.Join(dir, filepath.FromSlash(file))
-			}
-		}
-		return os.ReadFile(at)
-	})
+	readings, err := importers.Read(plan, open)
 	if err != nil {
 		return qa.Record{}, p.failed(err)
 	}
