@@ -69,7 +69,7 @@ func (t *table) chooseLayout() {
 		because(RowPerCharacteristic, Clear, "the headings name a characteristic, its limits and then a column a part.")
 	case lotHeadings:
 		because(RowPerPart, Clear, "a heading says that its column names the lot, and a row is a part.")
-	case row > 0 && !t.titles():
+	case row > 0 && !t.titles() && !t.lotsBelow(row):
 		because(ColumnPerLot, Clear, "the lots are named side by side in row "+itoa(row)+", each above its readings.")
 	case len(t.hints.lots) == 1 && t.whole && t.lotAlone():
 		because(ColumnPerLot, Likely, "the lot's name stands above its readings and there is no other heading.")

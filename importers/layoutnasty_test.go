@@ -90,6 +90,11 @@ func nastyCases() []layoutCase {
 			r[1] = nil
 		}
 	}
+	var odd [][]any
+	for i, r := range long() {
+		odd = append(odd, []any{r[0], r[2], r[1], shifted("7.001", i)})
+	}
+	odd[0] = []any{"Series", "Bore dia", "Part", "Length"}
 	fields := func(s sheetOf, lot string) sheetOf {
 		s.rows = append([][]any{{"Inspection report"}, {"Lot", lot}, {"Revision", "C"}, {"Quantity", num("800")}, nil}, s.rows...)
 		return s
@@ -109,6 +114,7 @@ func nastyCases() []layoutCase {
 			name: "n01-form", shows: "the same above rows of characteristics", files: []layoutFile{{name: "own.xlsx", sheets: []sheetOf{fields(inspection("Sheet1", d1Reference, 2), "R"), fields(inspection("Sheet2", d1Candidate, 2), "C")}}}, plan: free,
 			want: d1.with(func(w *layoutWant) { w.count, w.step, w.limits = 2, 1, [3]float64{11.95, 12, 12.05} }),
 		},
+		{name: "n01-lots", shows: "both lots named in the block above, and again in a column under an odd heading", files: one(append([][]any{{"Compared", "REF-0417", "with", "CAND-0931"}, nil}, odd...)), plan: planFor("own.xlsx", "", characteristicOf(`name = "Bore dia"`)), want: d1},
 		{name: "mixed", shows: "a row a part and a characteristic: stop, also where part_column would average them", files: one(everything), plan: planFor("own.xlsx", `part_column = "Part"`, ""), want: layoutWant{fault: []string{`"Bore dia", "Length"`, "column C"}}},
 		{name: "n02-wide", shows: "unit and limit rows above lots side by side: n 12, not 15", files: one(labelled), plan: plain, want: d1.with(func(w *layoutWant) { w.limits = [3]float64{11.95, 12, 12.05} })},
 		{name: "n03-wide", shows: "labelled foot rows: not 0.009575", files: one(feet(labelled)), plan: plain, want: d1.with(func(w *layoutWant) { w.limits = [3]float64{11.95, 12, 12.05} })},

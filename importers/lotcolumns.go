@@ -244,3 +244,25 @@ func (t *table) lotAlone() bool {
 	}
 	return t.lotNamesRow() >= 0
 }
+
+// lotsBelow says whether a lot is named again below the row that names them all: then a column names the lots, and that row is
+// one of a block above the table. A number may stand anywhere and says nothing.
+func (t *table) lotsBelow(number int) bool {
+	const look = 5000
+	if slices.ContainsFunc(t.hints.lots, isNumber) {
+		return false
+	}
+	looked := 0
+	for i, r := range t.sheet.Rows {
+		if r.Number <= number {
+			continue
+		}
+		if looked++; looked > look {
+			break
+		}
+		if slices.ContainsFunc(r.Cells, func(c cells.Cell) bool { return c.Kind == cells.Text && t.isLot(filledText(c)) }) && !t.namesLots(i) {
+			return true
+		}
+	}
+	return false
+}
