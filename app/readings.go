@@ -206,7 +206,7 @@ func (w *window) pageKey(of qa.Side, s *scrolled, k fyne.KeyName) {
 	at = max(0, min(len(r.readings)-1, at))
 	w.cursor[of] = at
 	top := r.top(at)
-	if at == 0 {
+	if at == 0 && r.top(1) <= s.scroll.Size().Height {
 		top = 0 // the findings come into sight again
 	}
 	s.reveal(top, r.top(at+1)+4)

@@ -12,6 +12,7 @@ import (
 	"lotpair/app/desk"
 	"lotpair/app/register"
 	"lotpair/qa"
+	"lotpair/qa/figure"
 	"lotpair/qa/figure/draw"
 )
 
@@ -30,6 +31,7 @@ type window struct {
 
 	state desk.State
 	view  view
+	paged paged
 
 	draft       draftLines
 	drafted     desk.DraftView
@@ -43,7 +45,8 @@ type window struct {
 
 	root                                               *fyne.Container
 	paper, header, banner, left, spine, right, bench   *region
-	start, foot, sheet                                 *region
+	start, foot, sheet, tip                            *region
+	tipText                                            string // of the reading that the pointer is on
 	leftRows, spineRows, rightRows, sentences, problem *scrolled
 	listRows, draftRows, sheetRows, sheetLedger        *scrolled
 	picture                                            *chart.Drawing         // of the bench
@@ -113,8 +116,11 @@ func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
 	w.sheet = newRegion(w.palette, w.paintSheet)
 	w.search = newSearch(func() { w.find(); w.start.Refresh() }, w.listKey, w.shortcut)
 	w.picture = chart.New(nil, w.palette())
+	w.picture.OnPointed, w.picture.OnChosen = w.pointed, w.chosen
+	w.tip = newRegion(w.palette, w.paintTip)
+	w.tip.Hide()
 	// The order of the objects is the order of the Tab key.
-	w.root = container.New(windowLayout{w}, w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot, w.sheet)
+	w.root = container.New(windowLayout{w}, w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot, w.sheet, w.tip)
 	w.win.SetContent(w.root)
 	w.win.Resize(fyne.NewSize(1280, 800))
 	w.win.Canvas().SetOnTypedKey(w.typed)
@@ -229,6 +235,24 @@ func (w *window) acknowledged(before, next desk.State) desk.State {
 	return next
 }
 
+// paged says which pages were made last: they hold every reading and are made anew only when they say something else.
+type paged struct {
+	number, selected         int
+	record                   int64
+	path                     string
+	open, compared, drafting bool
+}
+
+func (w *window) pages() map[qa.Side]desk.PageView {
+	s := w.state
+	now := paged{s.Number, s.Selected, w.entry.ID, s.Path, s.Open, s.Compared, s.Drafting}
+	if w.view.pages == nil || now != w.paged {
+		w.paged, w.rows = now, map[qa.Side]*pageRows{}
+		return map[qa.Side]desk.PageView{qa.Reference: s.Page(qa.Reference), qa.Candidate: s.Page(qa.Candidate)}
+	}
+	return w.view.pages
+}
+
 // showDraft sets what is said while the criterion is written and while a file is looked at.
 func (w *window) showDraft() {
 	s := w.state
@@ -262,10 +286,7 @@ func (w *window) showDraft() {
 // show sets everything from the state.
 func (w *window) show() {
 	s := w.state
-	w.view = view{
-		header: s.Header(), spine: s.Spine(), bench: s.Bench(), foot: s.Foot(),
-		pages: map[qa.Side]desk.PageView{qa.Reference: s.Page(qa.Reference), qa.Candidate: s.Page(qa.Candidate)},
-	}
+	w.view = view{header: s.Header(), spine: s.Spine(), bench: s.Bench(), foot: s.Foot(), pages: w.pages()}
 	title := "Lotpair"
 	if s.Open {
 		title = w.view.header.Title + " – Lotpair"
@@ -273,8 +294,9 @@ func (w *window) show() {
 	if w.win.Title() != title {
 		w.win.SetTitle(title)
 	}
+	w.pointed(figure.Mark{}, fyne.Position{}, false)
 	w.showDraft()
-	w.lines, w.rows = map[int]*chart.Drawing{}, map[qa.Side]*pageRows{}
+	w.lines = map[int]*chart.Drawing{}
 	w.picture.SetPicture(w.benchPicture(), w.palette())
 	b := &w.act
 	b.order.label = w.view.spine.Order

@@ -8,6 +8,7 @@ import (
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/driver/desktop"
 	"fyne.io/fyne/v2/widget"
 
 	"lotpair/qa/figure"
@@ -22,6 +23,14 @@ type Drawing struct {
 	widget.BaseWidget
 	picture Picture
 	palette draw.Palette
+
+	// OnPointed is told which reading the pointer is on, and that it has left it; OnChosen which one was clicked.
+	OnPointed func(m figure.Mark, at fyne.Position, on bool)
+	OnChosen  func(m figure.Mark)
+
+	readings []figure.Mark // of the picture as it was painted last
+	scale    float64       // points of the drawing a point of the picture
+	on       bool
 }
 
 // New is a drawing of a picture.
@@ -59,6 +68,7 @@ func (d *Drawing) paint(w, h int) image.Image {
 		out.Pix[i], out.Pix[i+1], out.Pix[i+2], out.Pix[i+3] = d.palette.Paper.R, d.palette.Paper.G, d.palette.Paper.B, 0xFF
 	}
 	f := d.Figure()
+	d.remember(f)
 	if f.Width <= 0 || f.Height <= 0 || w <= 0 || h <= 0 {
 		return out
 	}
@@ -70,6 +80,64 @@ func (d *Drawing) paint(w, h int) image.Image {
 		copy(out.Pix[y*out.Stride:(y+1)*out.Stride], img.Pix[y*img.Stride:(y+1)*img.Stride])
 	}
 	return out
+}
+
+// remember keeps where the readings of a picture stand.
+func (d *Drawing) remember(f figure.Figure) {
+	d.readings, d.scale = nil, 1
+	if d.OnPointed == nil && d.OnChosen == nil || f.Width <= 0 || f.Height <= 0 {
+		return
+	}
+	d.scale = math.Min(float64(d.Size().Width)/f.Width, float64(d.Size().Height)/f.Height)
+	for _, m := range f.Marks {
+		if m.Reading != nil {
+			d.readings = append(d.readings, m)
+		}
+	}
+}
+
+// Nearest is the reading at a place of the drawing: the nearest within a few points.
+func (d *Drawing) Nearest(at fyne.Position) (figure.Mark, bool) {
+	const reach = 7
+	best, found := figure.Mark{}, false
+	least := math.Inf(1)
+	for _, m := range d.readings {
+		far := math.Hypot(m.X*d.scale-float64(at.X), m.Y*d.scale-float64(at.Y))
+		if far <= math.Max(reach, m.Size*d.scale) && far < least {
+			best, least, found = m, far, true
+		}
+	}
+	return best, found
+}
+
+// MouseIn implements desktop.Hoverable.
+func (d *Drawing) MouseIn(e *desktop.MouseEvent) { d.MouseMoved(e) }
+
+// MouseMoved implements desktop.Hoverable.
+func (d *Drawing) MouseMoved(e *desktop.MouseEvent) {
+	if d.OnPointed == nil {
+		return
+	}
+	m, ok := d.Nearest(e.Position)
+	if ok || d.on {
+		d.OnPointed(m, fyne.NewPos(float32(m.X*d.scale), float32(m.Y*d.scale)), ok)
+	}
+	d.on = ok
+}
+
+// MouseOut implements desktop.Hoverable.
+func (d *Drawing) MouseOut() {
+	if d.on && d.OnPointed != nil {
+		d.OnPointed(figure.Mark{}, fyne.Position{}, false)
+	}
+	d.on = false
+}
+
+// Tapped implements fyne.Tappable.
+func (d *Drawing) Tapped(e *fyne.PointEvent) {
+	if m, ok := d.Nearest(e.Position); ok && d.OnChosen != nil {
+		d.OnChosen(m)
+	}
 }
 
 type renderer struct {

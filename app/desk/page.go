@@ -79,6 +79,22 @@ func (s State) Page(side qa.Side) PageView {
 	return v
 }
 
+// ReadingText says what is known of one reading of the characteristic looked at.
+func (s State) ReadingText(r qa.Reading) string {
+	unit, decimals := "", r.Decimals
+	if c, ok := s.Characteristic(); ok {
+		unit, decimals = c.Unit, max(decimals, c.Decimals)
+	}
+	text := withUnit(qa.Fixed(r.Value, min(decimals, 12)), unit) + " in " + r.Source.Place()
+	if r.Part != "" {
+		text += ", part " + r.Part
+	}
+	if !r.Used() {
+		text += ", left out: " + r.LeftOut
+	}
+	return text
+}
+
 // name is the characteristic looked at, also while there is no result.
 func (s State) name() string {
 	if cs := s.Record.Readings.Characteristics; s.Selected >= 0 && s.Selected < len(cs) {

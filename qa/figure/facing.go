@@ -32,6 +32,8 @@ func Facing(c qa.Comparison, r qa.Readings) Figure {
 // both sides, the margin is a band about the reference's mean, each mean is a line. Sizes below the smallest are raised.
 func FacingAt(c qa.Comparison, r qa.Readings, width, height float64) Figure {
 	ref, cand := points(r.Reference.Of(c.Name)), points(r.Candidate.Of(c.Name))
+	byValue(ref)
+	byValue(cand)
 	f := newFacing(c, ref, cand, width, height, foot)
 	f.Title = fmt.Sprintf("%s: readings of both lots back to back, %d reference, %d candidate", c.Name, c.Reference.N, c.Candidate.N)
 	reach := f.stacks(ref, cand)

@@ -1,9 +1,10 @@
 package figure
 
 import (
+	"cmp"
 	"fmt"
 	"math"
-	"sort"
+	"slices"
 
 	"lotpair/qa"
 )
@@ -94,7 +95,7 @@ func (f *facing) quantiles(side qa.Side, all []qa.Reading, most float64) {
 			used = append(used, &all[i])
 		}
 	}
-	sort.SliceStable(used, func(a, b int) bool { return used[a].Value < used[b].Value })
+	slices.SortStableFunc(used, func(a, b *qa.Reading) int { return cmp.Compare(a.Value, b.Value) })
 	const radius = 2.6
 	apart := 0.0
 	if len(used) > 400 {

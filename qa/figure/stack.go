@@ -1,8 +1,10 @@
 package figure
 
 import (
+	"cmp"
 	"fmt"
 	"math"
+	"slices"
 	"sort"
 
 	"lotpair/qa"
@@ -15,19 +17,28 @@ type point struct {
 	of      *qa.Reading
 }
 
-// points are a lot's readings in order of value, those in use first among equals.
+// points are a lot's readings in the order of the file.
 func points(s qa.Series) []point {
 	out := make([]point, 0, len(s.Readings))
 	for i, r := range s.Readings {
 		out = append(out, point{r.Value, !r.Used(), &s.Readings[i]})
 	}
-	sort.SliceStable(out, func(i, j int) bool {
-		if out[i].value != out[j].value {
-			return out[i].value < out[j].value
-		}
-		return !out[i].leftOut && out[j].leftOut
-	})
 	return out
+}
+
+// byValue puts readings in order of value, those in use first among equals.
+func byValue(p []point) {
+	slices.SortStableFunc(p, func(a, b point) int {
+		switch {
+		case a.value != b.value:
+			return cmp.Compare(a.value, b.value)
+		case a.leftOut == b.leftOut:
+			return 0
+		case a.leftOut:
+			return 1
+		}
+		return -1
+	})
 }
 
 // radii are tried from the largest; where even the smallest has no room the readings are drawn as bars.
@@ -37,6 +48,12 @@ var radii = []float64{3.6, 3.0, 2.4, 1.9}
 func (f *facing) stacks(ref, cand []point) [2]float64 {
 	ref, cand = f.visible("reference", ref), f.visible("candidate", cand)
 	room := f.axis - edge - gap - f.words
+	// More readings than the smallest marks have room for on all rows are bars, without trying.
+	least := 2 * radii[len(radii)-1]
+	rows, row := (f.bottom-head)/(least*0.8)+2, room/(least+0.6)+1
+	if float64(max(len(ref), len(cand))) > rows*row {
+		return f.bars(ref, cand, room)
+	}
 	for _, r := range radii {
 		a, b := f.stacked(ref, 2*r), f.stacked(cand, 2*r)
 		most := float64(max(tallest(a), tallest(b)))

@@ -26,7 +26,7 @@ func Light() Palette {
 	return Palette{
 		Paper: rgb(0xFBFAF7), Text: rgb(0x1E2A32), Muted: rgb(0x5F6B72), Rule: rgb(0xD9D4C7),
 		Reference: rgb(0x2F5D8C), Candidate: rgb(0xB5651D), Margin: rgb(0xE9E3D2),
-		ReferenceText: rgb(0x2F5D8C), CandidateText: rgb(0x8F4D12), MutedText: rgb(0x58646B),
+		ReferenceText: rgb(0x2F5D8C), CandidateText: rgb(0x8F4D12), MutedText: rgb(0x555F66),
 	}
 }
 
