@@ -8,6 +8,8 @@ import (
 	"testing"
 
 	"lotpair/exports"
+	"lotpair/exports/opcsign"
+	"lotpair/qa"
 )
 
 var update = flag.Bool("update", false, "write the golden workbook anew")
@@ -52,5 +54,37 @@ func TestLayout(t *testing.T) {
 	v := exports.Verify(stored, nil)
 	if !v.Rebuilt {
 		t.Errorf("got the stored record not as this program makes it, want it so: %v", v.Differences)
+	}
+}
+
+// TestOtherLayout verifies a record of another layout: its cells are compared, its pages and pictures are not, and it is said.
+func TestOtherLayout(t *testing.T) {
+	ada := person(t, "Ada Quill")
+	rec := record(t)
+	rec.Signer = &qa.Signer{Name: ada.Name(), Title: ada.Title(), Organization: ada.Organization(), Meaning: "prepared", Time: when, Fingerprint: ada.Fingerprint()}
+	pkg, err := exports.Workbook(rec)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, c := range []struct {
+		name string
+		edit func(*kit)
+		want exports.State
+	}{
+		{"as it was written", func(*kit) {}, exports.Intact},
+		{"other pages", match(summary, `width="23"`, `width="24"`), exports.Intact},
+		{"other cells", swap(readings, "<v>9.9", "<v>9.8"), exports.Disagrees},
+		{"a number format", match("xl/styles.xml", `<xf numFmtId="0"`, `<xf numFmtId="1"`), exports.Disagrees},
+	} {
+		k := takeApart(t, pkg)
+		k.match(item, `<layout>\d+</layout>`, "")
+		c.edit(k)
+		b, err := opcsign.Sign(k.bytes(), ada.Key, ada.Chain, opcsign.Statement{Name: ada.Name(), Title: ada.Title(), Organization: ada.Organization(), Meaning: "prepared", Time: when})
+		if err != nil {
+			t.Fatal(err)
+		}
+		if v := exports.Verify(b, nil); v.State != c.want || v.Rebuilt {
+			t.Errorf("%s: got %s, rebuilt %v, %v; want %s", c.name, v.State, v.Rebuilt, v.Differences, c.want)
+		}
 	}
 }

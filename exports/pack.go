@@ -39,7 +39,6 @@ func (p part) to(w io.Writer) error {
 // The parts that are written anew when a package is signed, besides the core properties, which are then removed.
 const (
 	contentTypesPart = "[Content_Types].xml"
-	rootRelsPart     = "_rels/.rels"
 	corePart         = "docProps/core.xml"
 )
 

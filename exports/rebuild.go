@@ -80,15 +80,16 @@ func droppable(name string, p part) bool {
 
 // same says whether a part of a file is this one.
 func (p part) same(f *zip.File) bool {
-	if f.Name == contentTypesPart || f.Name == rootRelsPart || strings.HasSuffix(f.Name, ".png") {
+	rels := strings.HasSuffix(f.Name, ".rels")
+	if rels || f.Name == contentTypesPart || strings.HasSuffix(f.Name, ".png") {
 		b, err := readEntry(f)
 		switch {
 		case err != nil:
 			return false
 		case f.Name == contentTypesPart:
 			return sameTypes(p.bytes, b)
-		case f.Name == rootRelsPart:
-			return slices.Equal(rootTargets(p.bytes), rootTargets(b))
+		case rels:
+			return slices.Equal(relationsIn(p.bytes), relationsIn(b))
 		}
 		return samePicture(p.bytes, b)
 	}
@@ -127,10 +128,11 @@ func (c *comparer) Write(p []byte) (int, error) {
 	return len(p), nil
 }
 
-// rootTargets are what the package's own relationships lead to, but for what signing adds and takes away.
-func rootTargets(rels []byte) []string {
+// relationsIn are the relationships of a .rels part, whose order says nothing, but for what signing adds and takes away.
+func relationsIn(rels []byte) []string {
 	var x struct {
 		Relationships []struct {
+			ID     string `xml:"Id,attr"`
 			Type   string `xml:"Type,attr"`
 			Target string `xml:"Target,attr"`
 			Mode   string `xml:"TargetMode,attr"`
@@ -142,7 +144,7 @@ func rootTargets(rels []byte) []string {
 	var out []string
 	for _, r := range x.Relationships {
 		if r.Target != corePart && !strings.HasPrefix(r.Target, "_xmlsignatures/") {
-			out = append(out, r.Type+" "+r.Target+" "+strings.TrimPrefix(r.Mode, "Internal"))
+			out = append(out, r.ID+" "+r.Type+" "+r.Target+" "+strings.TrimPrefix(r.Mode, "Internal"))
 		}
 	}
 	slices.Sort(out)

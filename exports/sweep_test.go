@@ -6,6 +6,7 @@ import (
 	"compress/flate"
 	"flag"
 	"io"
+	"slices"
 	"strings"
 	"testing"
 
@@ -118,6 +119,20 @@ func unzip(t *testing.T, pkg []byte) map[string][]byte {
 		out[f.Name] = b
 	}
 	return out
+}
+
+// TestVerifyReordered changes what says nothing: the order of relationships, of content types and of the archive, and space
+// between them.
+func TestVerifyReordered(t *testing.T) {
+	k := takeApart(t, signedOnce(t))
+	slices.Reverse(k.names)
+	for _, rels := range []string{"_rels/.rels", bookRels} {
+		k.match(rels, `(<Relationship [^>]*?(?:/>|></Relationship>))(.*)</Relationships>`, "$2\n\t$1</Relationships>")
+	}
+	k.match(typesEntry, `(<Override [^>]*/>)(.*)</Types>`, "$2\n$1</Types>")
+	if v := exports.Verify(k.bytes(), nil); v.State != exports.Intact || !v.Rebuilt {
+		t.Errorf("got %s, %v, rebuilt %v; want it intact", v.State, v.Reasons, v.Rebuilt)
+	}
 }
 
 // TestVerifyRezip packs a signed record anew in harmless ways: another compression, none, another order. All stay intact, and a
