@@ -162,7 +162,7 @@ func (c *comparison) lotsRatio() float64 {
 
 // partsForMean is the larger of what the mean needs and least; nil where no number would do.
 func (c *comparison) partsForMean(d stats.Design, power float64, least StudyParts, path string) *StudyParts {
-	n, m, _, err := stats.Size(d, c.lotsRatio(), power)
+	n, m, err := stats.Parts(d, c.lotsRatio(), power)
 	if err != nil {
 		if !errors.Is(err, stats.ErrBeyondMargin) {
 			c.warn(WarnNotComputable, "", path, "The size of a new study is not given: "+err.Error()+".")
