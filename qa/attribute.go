@@ -33,7 +33,7 @@ func compareAttribute(plan Plan, ch Characteristic, ref, cand Series) (Compariso
 	var x, y stats.Counts
 	c.Reference, x = c.counts(c.ref)
 	c.Candidate, y = c.counts(c.cand)
-	c.Decimals = 3
+	c.Decimals = Decimals(ch, ref, cand)
 	if p, err := stats.CompareProportions(x, y); err != nil {
 		c.warn(WarnTooFew, "", "difference", "A comparison of fractions needs at least one part in each lot.")
 	} else {
@@ -49,7 +49,7 @@ func compareAttribute(plan Plan, ch Characteristic, ref, cand Series) (Compariso
 func (c *comparison) counts(s sample) (SampleResult, stats.Counts) {
 	out := SampleResult{
 		Rows: s.series.Rows, Parts: s.summary.N, N: s.summary.N, Excluded: s.series.Excluded(),
-		Missing: s.series.Missing, NonDetects: s.series.NonDetects, Unread: s.series.Unread,
+		Missing: s.series.Missing, NonDetects: s.series.NonDetects, Unread: s.series.Unread, Repeats: s.series.Repeats,
 	}
 	failed := 0
 	for _, v := range s.values {

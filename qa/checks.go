@@ -212,6 +212,9 @@ func Decimals(ch Characteristic, ref, cand Series) int {
 	if ch.Decimals != nil {
 		return *ch.Decimals
 	}
+	if ch.Kind == "attribute" {
+		return 3 // of fractions
+	}
 	d := 0
 	for _, s := range []Series{ref, cand} {
 		for _, r := range s.Readings {

@@ -134,3 +134,22 @@ func TestSensitivityOfRatiosAndShifts(t *testing.T) {
 		}
 	}
 }
+
+// TestAttributeCounts checks that repeat readings of attributes reconcile, that one failed repeat fails the part, and what
+// margins in fractions may be.
+func TestAttributeCounts(t *testing.T) {
+	x := series("x", 0, 0, 0.5, 1, 0)
+	x.Rows, x.Repeats = 8, 4
+	ch := qa.Characteristic{Name: "x", Kind: "attribute", Failed: []string{"NOK"}}
+	got := one(t, plan(qa.Equivalence, absolute(0.5)), lots(ch, x, series("x", 0, 0, 0, 1)))
+	if r := got.Reference; r.Rows != r.N+r.Repeats || *r.Failed != 2 || got.Decimals != 3 {
+		t.Errorf("got %+v with %d decimals, want 4 parts and 4 repeats of 8 rows, 2 failed, 3 decimals", r, got.Decimals)
+	}
+	for margin, faults := range map[float64]int{0.05: 0, 0.999: 0, 1: 1, 5: 1} {
+		p := plan(qa.Equivalence, absolute(margin))
+		p.Characteristics = []qa.Characteristic{ch}
+		if got := p.Validate(); len(got) != faults {
+			t.Errorf("margin %v: got %v, want %d faults", margin, got, faults)
+		}
+	}
+}

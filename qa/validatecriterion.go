@@ -44,6 +44,13 @@ func (v *validator) attribute(key string, a asked) {
 			v.fault(key+".margin", k[0]+" for an attribute", "absolute, or lower and upper, in fractions", "state it in the characteristic")
 		}
 	}
+	if m := a.margin; m != nil {
+		for _, b := range []*float64{m.Absolute, m.Lower, m.Upper} {
+			if b != nil && !(math.Abs(*b) < 1) {
+				v.fault(key+".margin", fmt.Sprint(*b)+" for an attribute", "fractions between -1 and 1, such as 0.05 for 5 %", "correct the plan")
+			}
+		}
+	}
 	if a.grouped {
 		v.fault(key+".kind", "attribute beside random groups", "numeric", "leave one out")
 	}
