@@ -116,11 +116,11 @@ func (d Design) size(ratio, power float64, alone bool) (nRef, nCand int, achieve
 }
 
 // nearError is at least as large as near is off for Welch's test, n readings in the
-// smaller lot: 0.06/(alpha (n-1)^2), or 0.5. Found by computing both, for alpha from 0.001 to
+// smaller lot: 0.06/(alpha (n-1)^2), or 0.7. Found by computing both, for alpha from 0.001 to
 // 0.3, ratios of sizes from 1/4 to 4 and of standard deviations
 // from 0.2 to 5: never above 0.6 of it. A test holds it to that.
 func nearError(alpha float64, n int) float64 {
-	return min(0.5, 0.06/alpha/square(float64(n-1)))
+	return min(0.7, 0.06/alpha/square(float64(n-1)))
 }
 
 // remembered computes each power once.
