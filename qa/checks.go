@@ -42,13 +42,8 @@ func (c *comparison) checkSamples() {
 				fmt.Sprintf("The readings step by %s, more than the smaller standard deviation: the gauge resolves too little to see the spread.", Plain(*s.Resolution)))
 		}
 	}
-	if len(ref.values) == len(cand.values) && len(ref.values) > 2 {
-		a, b := slices.Clone(ref.values), slices.Clone(cand.values)
-		slices.Sort(a)
-		slices.Sort(b)
-		if slices.Equal(a, b) {
-			c.warn(WarnIdentical, "", "difference", "Both lots hold the same readings: a copy is likelier than chance. Check the file.")
-		}
+	if len(ref.values) > 2 && slices.Equal(ref.sorted, cand.sorted) {
+		c.warn(WarnIdentical, "", "difference", "Both lots hold the same readings: a copy is likelier than chance. Check the file.")
 	}
 	if c.Method == "paired" {
 		c.checkDifferences()
@@ -69,26 +64,27 @@ func (c *comparison) checkOne(s sample) SampleChecks {
 			out.Resolution = &step
 		}
 	}
-	x := s.values
+	x, sorted := s.values, s.sorted
 	if c.Method == "log" {
 		var ok bool
+		sorted, _ = logarithms(sorted)
 		if x, ok = s.logarithms(); !ok {
 			c.warn(WarnNotPositive, s.side, "equivalence", fmt.Sprintf("A reading of the %s lot is not above 0: it has no logarithm, and nothing is tested.", s.side))
 			return out
 		}
 	}
-	c.shape(s, x, &out)
-	c.order(s, x, &out)
+	c.shape(s, x, sorted, &out)
+	c.order(s, x, sorted, &out)
 	c.cutOff(s)
 	return out
 }
 
 // shape asks whether the readings look normal and which lie far from the others.
-func (c *comparison) shape(s sample, x []float64, out *SampleChecks) {
+func (c *comparison) shape(s sample, x, sorted []float64, out *SampleChecks) {
 	path := "checks." + string(s.side)
 	if len(x) > mostForShapiro {
 		c.warn(WarnNotComputable, s.side, path+".shapiro_wilk", fmt.Sprintf("Shapiro and Wilk's test holds for at most %d readings and is left out.", mostForShapiro))
-	} else if w, err := stats.ShapiroWilk(x); err == nil && finite(w.W, w.P) {
+	} else if w, err := stats.ShapiroWilk(sorted); err == nil && finite(w.W, w.P) {
 		out.ShapiroWilk = &ShapiroWilkResult{W: w.W, P: w.P}
 		if w.P < notNormalP {
 			c.warn(WarnNotNormal, s.side, path+".shapiro_wilk", fmt.Sprintf("The readings of the %s lot do not look normal (Shapiro–Wilk p %s). The means are judged all the same; what lies outside the limits is estimated less surely. No method is switched because of it.", s.side, FormatP(w.P)))
@@ -115,9 +111,9 @@ func (c *comparison) shape(s sample, x []float64, out *SampleChecks) {
 const esdAlpha = 0.05
 
 // order asks whether the readings drift: in the order column where there is one, else in the order of the file.
-func (c *comparison) order(s sample, x []float64, out *SampleChecks) {
+func (c *comparison) order(s sample, x, sorted []float64, out *SampleChecks) {
 	path := "checks." + string(s.side)
-	if r, err := stats.RunsTest(x); err == nil && finite(r.P) {
+	if r, err := stats.RunsAbout(x, stats.MedianOf(sorted)); err == nil && finite(r.P) {
 		out.Runs = &RunsResult{Runs: r.Runs, P: r.P}
 		if r.P < driftP {
 			c.warn(WarnDrift, s.side, path+".runs", fmt.Sprintf("The readings of the %s lot are not in random order (runs about the median p %s): a drift or a jump makes the interval too narrow, and a claim about the process unsafe.", s.side, FormatP(r.P)))

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"lotpair/qa/stats"
@@ -15,6 +16,7 @@ type sample struct {
 	series  Series
 	used    []Reading
 	values  []float64
+	sorted  []float64 // the values in rising order: sorted once, for all that ask nothing of their order
 	summary stats.Summary
 }
 
@@ -23,14 +25,18 @@ func newSample(side Side, s Series, used []Reading) sample {
 	for i, r := range used {
 		out.values[i] = r.Value
 	}
-	out.summary = stats.Summarize(out.values)
+	out.sorted = slices.Clone(out.values)
+	slices.Sort(out.sorted)
+	out.summary = stats.Summarize(out.sorted)
 	return out
 }
 
 // logarithms are the natural logarithms of the values; false where a reading is not above 0.
-func (s sample) logarithms() ([]float64, bool) {
-	out := make([]float64, len(s.values))
-	for i, v := range s.values {
+func (s sample) logarithms() ([]float64, bool) { return logarithms(s.values) }
+
+func logarithms(values []float64) ([]float64, bool) {
+	out := make([]float64, len(values))
+	for i, v := range values {
 		if !(v > 0) {
 			return nil, false
 		}

@@ -33,7 +33,7 @@ func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
 			e, err := stats.Pooled(c.ref.summary, c.cand.summary)
 			c.again("pooled", e, err)
 		}
-		e, err := stats.Yuen(c.ref.values, c.cand.values)
+		e, err := stats.Yuen(c.ref.sorted, c.cand.sorted)
 		c.again("trimmed", e, err)
 	}
 	if r := c.Ranks; r != nil && r.Lower != nil && r.Upper != nil {

@@ -27,7 +27,7 @@ func (c *comparison) ranks() {
 		}
 		out, in = RanksResult{V: ptr(r.V), P: r.P, Exact: r.Exact, Shift: r.Shift, Level: level}, r.Interval
 	} else {
-		r, err := stats.MannWhitney(c.ref.values, c.cand.values, level, written(c.ref, c.cand), &c.known.ranks)
+		r, err := stats.MannWhitney(c.ref.sorted, c.cand.sorted, level, written(c.ref, c.cand), &c.known.ranks)
 		if err != nil || !finite(r.U, r.P, r.Shift) {
 			return
 		}

@@ -17,14 +17,18 @@ func (c *comparison) spread() {
 	if r := c.asked.spreadRatio; r != nil {
 		s.Asked, s.Verdict = copied(r), SpreadUndecided
 	}
-	x, y := c.ref.values, c.cand.values
-	if c.Method == "log" {
+	x, y, a, b := c.ref.sorted, c.cand.sorted, c.ref.summary, c.cand.summary
+	switch c.Method {
+	case "paired":
+		x, y = c.ref.values, c.cand.values // in the order of the pairs
+	case "log":
 		var ok1, ok2 bool
-		x, ok1 = c.ref.logarithms()
-		y, ok2 = c.cand.logarithms()
+		x, ok1 = logarithms(x)
+		y, ok2 = logarithms(y)
 		if !ok1 || !ok2 {
 			return
 		}
+		a, b = stats.Summarize(x), stats.Summarize(y)
 	}
 	level := 1 - 2*c.Alpha
 	var in stats.Interval
@@ -37,7 +41,7 @@ func (c *comparison) spread() {
 		s.SDRatio, in = &v.SDRatio, v.Interval
 		s.PitmanMorgan = &PitmanMorganResult{T: v.T, DF: v.DF, P: *c.pValue(v.P, "spread.pitman_morgan.p")}
 	} else {
-		v, err := stats.FRatio(stats.Summarize(x), stats.Summarize(y), level)
+		v, err := stats.FRatio(a, b, level)
 		if err != nil || !finite(v.SDRatio, v.F, v.P, v.Interval.Lower, v.Interval.Upper) {
 			c.noSpread()
 			return

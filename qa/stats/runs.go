@@ -16,12 +16,16 @@ type Runs struct {
 // 147-162, from memory). It needs 2 readings, not all equal. Where readings are
 // left on one side only, there is one run and P is 1.
 func RunsTest(x []float64) (Runs, error) {
+	sorted := slices.Clone(x)
+	slices.Sort(sorted)
+	return RunsAbout(x, MedianOf(sorted))
+}
+
+// RunsAbout is RunsTest for one who knows the median.
+func RunsAbout(x []float64, median float64) (Runs, error) {
 	if len(x) < 2 {
 		return Runs{}, ErrTooFew
 	}
-	sorted := slices.Clone(x)
-	slices.Sort(sorted)
-	median := quantile(sorted, 0.5)
 	var r Runs
 	above, below := 0, 0
 	last := 0

@@ -50,6 +50,14 @@ func Summarize(x []float64) Summary {
 // the digits that each alone has lost.
 func (s Summary) above(t Summary) float64 { return (s.Mean - t.Mean) + (s.rest - t.rest) }
 
+// MedianOf returns the median of readings in rising order, 0 of none.
+func MedianOf(sorted []float64) float64 {
+	if len(sorted) == 0 {
+		return 0
+	}
+	return quantile(sorted, 0.5)
+}
+
 // Constant says that all readings are equal.
 func (s Summary) Constant() bool { return s.Min == s.Max }
 
