@@ -148,11 +148,13 @@ func (r *reader) checkScales() error {
 	var faults []Fault
 	for k, c := range r.out.Characteristics {
 		var m, s [2]float64
+		var constant [2]bool // says nothing of how far apart readings of the other lot may lie
 		few := c.Kind == kindAttribute
 		for i := range r.sides {
 			v := r.sides[i].lot.Series[k].Values()
 			if few = few || len(v) < oddFewest; !few {
 				m[i], s[i] = middle(v)
+				constant[i] = slices.Max(v) == slices.Min(v)
 			}
 		}
 		if few {
@@ -160,7 +162,7 @@ func (r *reader) checkScales() error {
 		}
 		for _, i := range []int{1, 0} {
 			side, other := r.sides[i], 1-i
-			if side.plan.Unit != "" || side.plan.Values != "" || r.sides[other].plan.Unit != "" || r.sides[other].plan.Values != "" {
+			if constant[other] || side.plan.Unit != "" || side.plan.Values != "" || r.sides[other].plan.Unit != "" || r.sides[other].plan.Values != "" {
 				continue
 			}
 			if text := scaleText(m[i], s[i], m[other], s[other]); text != "" {
