@@ -121,7 +121,10 @@ func (b *button) act() {
 }
 
 // Tapped implements fyne.Tappable.
-func (b *button) Tapped(*fyne.PointEvent) { b.act() }
+func (b *button) Tapped(*fyne.PointEvent) {
+	focus(b)
+	b.act()
+}
 
 // MouseIn implements desktop.Hoverable.
 func (b *button) MouseIn(*desktop.MouseEvent) {

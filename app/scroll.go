@@ -75,8 +75,21 @@ func (s *sheet) CreateRenderer() fyne.WidgetRenderer {
 
 // Tapped implements fyne.Tappable.
 func (s *sheet) Tapped(e *fyne.PointEvent) {
+	focus(s)
 	if s.tapped != nil {
 		s.tapped(e.Position)
+	}
+}
+
+// focus gives the keys to what was clicked: what was typed elsewhere is an act before the click is one.
+func focus(o interface {
+	fyne.CanvasObject
+	fyne.Focusable
+},
+) {
+	c := fyne.CurrentApp().Driver().CanvasForObject(o)
+	if c != nil && c.Focused() != o {
+		c.Focus(o)
 	}
 }
 

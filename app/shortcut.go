@@ -19,7 +19,30 @@ func (w *window) shortcuts() []shortcut {
 		{fyne.KeyO, w.askOpen},
 		{fyne.KeyE, w.act.export.act},
 		{fyne.KeyL, w.leave},
+		{fyne.KeyReturn, w.next},
 		{fyne.KeyQ, w.win.Close},
+	}
+}
+
+// next does the one next thing, as the foot names it: what was typed is an act first.
+func (w *window) next() {
+	if w.dialog != nil || w.state.Job.Name != "" {
+		return
+	}
+	w.win.Canvas().Unfocus()
+	switch {
+	case w.state.Sheet != nil:
+		w.sheetButtons()[0].act()
+		return
+	case !w.state.Open:
+		w.act.begin.act()
+		return
+	}
+	for _, b := range []*button{w.act.seal, w.act.take, w.act.compare, w.act.sign} {
+		if b.label != "" {
+			b.act()
+			return
+		}
 	}
 }
 

@@ -145,6 +145,14 @@ func (s State) Faults() []string {
 		}
 		out = append(out, f.Error())
 	}
+	if len(out) == 0 { // what only the characteristic's own limits show
+		p := Settled(s.Record.Plan)
+		for _, c := range p.Characteristics {
+			if one := planned(p, c); one.Fault != "" {
+				out = append(out, one.Fault)
+			}
+		}
+	}
 	if len(s.Record.Plan.Characteristics) == 0 {
 		out = append(out, "characteristics: found none, want at least one; bring a file in and take its headings and limits, or add one")
 	}

@@ -4,6 +4,7 @@ package main
 
 import (
 	"bytes"
+	"fmt"
 	"os"
 	"os/exec"
 	"path/filepath"
@@ -148,5 +149,52 @@ func TestAKilledWindowOpensWhereItWas(t *testing.T) {
 	want := []string{again, "selected 5", "looked at Order", "left the record", again}
 	if lines := strings.Split(strings.TrimSpace(string(got)), "\n"); !slices.Equal(lines, want) {
 		t.Errorf("acts: got %q, want %q", lines, want)
+	}
+}
+
+// TestTheWholeJobByKeyboard goes from a file of readings to a verdict without a mouse: the headings are taken masked, the margin
+// is stated in the unit, the criterion sealed, the readings taken. Control and return do the one next thing.
+func TestTheWholeJobByKeyboard(t *testing.T) {
+	path, dir := program(t), t.TempDir()
+	var text strings.Builder
+	text.WriteString("Lot;Part;Wall [mm]\n")
+	for i := range 24 {
+		lot := "R-118"
+		if i >= 12 {
+			lot = "C-022"
+		}
+		fmt.Fprintf(&text, "%s;%d;4.%02d\n", lot, i+1, i*7%11)
+	}
+	file, acts := filepath.Join(dir, "wall.csv"), filepath.Join(dir, "acts.txt")
+	if err := os.WriteFile(file, []byte(text.String()), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	r := start(t, path, "--acts", acts, "--register", filepath.Join(dir, "register"), file)
+	const title = "Comparison without a title – Lotpair"
+	r.press(t, title, "ctrl+Return")
+	// Past the records, the particulars, the lot's two lines and the objective to the second way of stating the margin, then to
+	// its line.
+	r.press(t, title, "Tab", "Tab", "Tab", "Tab", "Tab", "Tab", "Tab", "space", "Tab", "Tab", "Tab", "Tab", "ctrl+a", "0", "period", "1")
+	r.press(t, title, "ctrl+Return")
+	r.press(t, title, "ctrl+Return")
+	time.Sleep(2 * time.Second)
+	r.press(t, title, "ctrl+q")
+	r.closes(t)
+	got, err := os.ReadFile(acts)
+	if err != nil {
+		t.Fatal(err)
+	}
+	lines := strings.Split(strings.TrimSpace(string(got)), "\n")
+	want := []string{
+		"began a comparison", "took headings and limits of wall.csv, every reading masked", "margin: in the unit", "margin 0.1",
+		"sealed the criterion", "took the readings of wall.csv and compared",
+	}
+	if len(lines) != len(want) {
+		t.Fatalf("acts: got %q, want %q", lines, want)
+	}
+	for i := range want {
+		if !strings.HasPrefix(lines[i], want[i]) {
+			t.Errorf("act %d: got %q, want %q", i, lines[i], want[i])
+		}
 	}
 }
