@@ -153,3 +153,20 @@ func TestAttributeCounts(t *testing.T) {
 		}
 	}
 }
+
+// TestUndecidedWhateverTheSpread checks that a margin taken from the sample gives no verdict, and one group neither, even where
+// the spread alone would refute.
+func TestUndecidedWhateverTheSpread(t *testing.T) {
+	wide := series("x", 1, 1, 9, 2, 8, 3, 7, 1, 9, 2, 8, 0, 10)
+	tight := series("x", 2, 5, 5.01, 4.99, 5.02, 4.98, 5, 5.01, 4.99, 5.02, 4.98, 5, 5.01)
+	p := plan(qa.Equivalence, &qa.Margin{SDMultiple: ptr(1.5)})
+	p.Criterion.SpreadRatio = ptr(1.5)
+	if got := one(t, p, lots(qa.Characteristic{Name: "x"}, tight, wide)); got.Verdict != qa.Undecided || got.Spread.Verdict != qa.SpreadNotAcceptable {
+		t.Errorf("margin from the sample: got %s with the spread %s, want undecided", got.Verdict, got.Spread.Verdict)
+	}
+	p = plan(qa.Equivalence, absolute(5))
+	p.Criterion.SpreadRatio, p.Criterion.Groups, p.Reading.GroupColumn = ptr(1.5), "random", "Heat"
+	if got := one(t, p, lots(qa.Characteristic{Name: "x"}, tight, wide)); got.Verdict != qa.Undecided || !qa.Has(got.Warnings, qa.WarnOneGroup) {
+		t.Errorf("one group: got %s, want undecided", got.Verdict)
+	}
+}

@@ -116,43 +116,43 @@ type SampleResult struct {
 
 // DifferenceResult is candidate minus reference by Welch's test (Welch 1947), with its 1 - alpha interval.
 type DifferenceResult struct {
-	Estimate    *float64 `json:"estimate"`
-	SE          *float64 `json:"se"`
-	DF          *float64 `json:"df"`
-	T           *float64 `json:"t"`
-	P           *float64 `json:"p"` // in the direction of Alternative
-	PTwoSided   *float64 `json:"p_two_sided"`
+	Estimate    *float64 `json:"estimate,omitempty"`
+	SE          *float64 `json:"se,omitempty"`
+	DF          *float64 `json:"df,omitempty"`
+	T           *float64 `json:"t,omitempty"`
+	P           *float64 `json:"p,omitempty"` // in the direction of Alternative
+	PTwoSided   *float64 `json:"p_two_sided,omitempty"`
 	PHolm       *float64 `json:"p_holm,omitempty"` // Holm 1979, over the characteristics asked for a difference
 	Alternative string   `json:"alternative"`      // two-sided, lower, higher
 	Method      string   `json:"method,omitempty"` // attribute: miettinen-nurminen
-	Level       *float64 `json:"level"`
-	Lower       *float64 `json:"lower"`
-	Upper       *float64 `json:"upper"`
+	Level       *float64 `json:"level,omitempty"`
+	Lower       *float64 `json:"lower,omitempty"`
+	Upper       *float64 `json:"upper,omitempty"`
 }
 
 // EquivalenceResult is the pair of one-sided tests against the margin (Schuirmann 1987), with its 1 - 2 alpha interval.
 type EquivalenceResult struct {
 	Scale          string       `json:"scale"`
-	Estimate       *float64     `json:"estimate"`
-	SE             *float64     `json:"se"`
-	DF             *float64     `json:"df"`
+	Estimate       *float64     `json:"estimate,omitempty"`
+	SE             *float64     `json:"se,omitempty"`
+	DF             *float64     `json:"df,omitempty"`
 	DFLower        *float64     `json:"df_lower,omitempty"` // ratio of means: each end has its own
 	DFUpper        *float64     `json:"df_upper,omitempty"`
 	Margin         MarginResult `json:"margin"`
-	MarginLower    *float64     `json:"margin_lower"` // as tested, after the guard; nil where not asked
-	MarginUpper    *float64     `json:"margin_upper"`
-	TLower         *float64     `json:"t_lower"` // H0: difference <= margin_lower
-	PLower         *float64     `json:"p_lower"`
+	MarginLower    *float64     `json:"margin_lower,omitempty"` // as tested, after the guard; nil where not asked
+	MarginUpper    *float64     `json:"margin_upper,omitempty"`
+	TLower         *float64     `json:"t_lower,omitempty"` // H0: difference <= margin_lower
+	PLower         *float64     `json:"p_lower,omitempty"`
 	ZLower         *float64     `json:"z_lower,omitempty"` // attribute: score statistics in the place of t
 	ZUpper         *float64     `json:"z_upper,omitempty"`
-	TUpper         *float64     `json:"t_upper"` // H0: difference >= margin_upper
-	PUpper         *float64     `json:"p_upper"`
-	P              *float64     `json:"p"`
+	TUpper         *float64     `json:"t_upper,omitempty"` // H0: difference >= margin_upper
+	PUpper         *float64     `json:"p_upper,omitempty"`
+	P              *float64     `json:"p,omitempty"`
 	Verdict        Verdict      `json:"verdict"`
-	Level          *float64     `json:"level"`
-	Lower          *float64     `json:"lower"`
-	Upper          *float64     `json:"upper"`
-	SmallestMargin *float64     `json:"smallest_margin"` // post hoc
+	Level          *float64     `json:"level,omitempty"`
+	Lower          *float64     `json:"lower,omitempty"`
+	Upper          *float64     `json:"upper,omitempty"`
+	SmallestMargin *float64     `json:"smallest_margin,omitempty"` // post hoc
 	Permits        *Permits     `json:"permits,omitempty"`
 }
 
@@ -180,10 +180,10 @@ type Permits struct {
 
 // SpreadResult is the ratio of standard deviations, candidate over reference, with its F interval of level 1 - 2 alpha.
 type SpreadResult struct {
-	SDRatio *float64 `json:"sd_ratio"`
-	Level   *float64 `json:"level"`
-	Lower   *float64 `json:"lower"`
-	Upper   *float64 `json:"upper"`
+	SDRatio *float64 `json:"sd_ratio,omitempty"`
+	Level   *float64 `json:"level,omitempty"`
+	Lower   *float64 `json:"lower,omitempty"`
+	Upper   *float64 `json:"upper,omitempty"`
 	F       *FResult `json:"f,omitempty"`
 
 	Bonett       *IntervalResult     `json:"bonett,omitempty"`        // robust to shape (Bonett 2006)

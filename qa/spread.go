@@ -98,6 +98,9 @@ func (c *comparison) withSpread(mean Verdict) Verdict {
 	if c.Spread == nil || c.Spread.Asked == nil || mean.Refuted() {
 		return mean
 	}
+	if c.margin.fromSample || c.asked.grouped && c.Difference.P == nil {
+		return Undecided // whatever the readings: for planning only, or one group
+	}
 	switch {
 	case c.Spread.Verdict == SpreadNotAcceptable && c.Objective == Equivalence:
 		return NotEquivalent
