@@ -171,8 +171,13 @@ func (k *planKeys) unknown(line int, path string, typ reflect.Type, name string)
 				best = full
 			}
 		}
-		if distance(name, best[strings.LastIndexByte(best, '.')+1:]) < distance(name, near) {
+		last := best[strings.LastIndexByte(best, '.')+1:]
+		if d := distance(name, last); d < distance(name, near) && d <= (len(name)+1)/2 {
 			near = best
+			if last == best && path != "" {
+				k.fault(line, "unknown key %q under %q; nearest known key is %q, which stands before the first [table]", name, path, near)
+				return
+			}
 		}
 	}
 	where := ""
