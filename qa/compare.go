@@ -140,7 +140,7 @@ func (c *comparison) sample(from sample) SampleResult {
 	}
 	out := SampleResult{
 		Rows: s.Rows, Parts: len(parts) + unnamed, N: sum.N, Excluded: s.Excluded(),
-		Missing: s.Missing, NonDetects: s.NonDetects, Unread: s.Unread, Repeats: s.Repeats, Unmatched: len(s.used()) - sum.N,
+		Missing: s.Missing, NonDetects: s.NonDetects, Unread: s.Unread, Repeats: s.Repeats, Unmatched: len(s.Readings) - s.leftOut() - sum.N,
 	}
 	if sum.N == 0 {
 		return out

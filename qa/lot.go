@@ -65,15 +65,30 @@ func (s Series) Excluded() int {
 	return n
 }
 
-// used are the readings that take part in the test.
+// used are the readings that take part in the test; not to be changed.
 func (s Series) used() []Reading {
-	out := make([]Reading, 0, len(s.Readings))
+	left := s.leftOut()
+	if left == 0 {
+		return s.Readings[:len(s.Readings):len(s.Readings)]
+	}
+	out := make([]Reading, 0, len(s.Readings)-left)
 	for _, r := range s.Readings {
 		if r.Used() {
 			out = append(out, r)
 		}
 	}
 	return out
+}
+
+// leftOut counts the readings that take no part in the test.
+func (s Series) leftOut() int {
+	n := 0
+	for i := range s.Readings {
+		if !s.Readings[i].Used() {
+			n++
+		}
+	}
+	return n
 }
 
 // Readings is everything that was taken from the files for one comparison: what importers hand over and Compare spends.

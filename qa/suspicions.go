@@ -21,27 +21,16 @@ func (c *comparison) checkPairs() {
 	if c.Method == "paired" || c.asked.grouped {
 		return
 	}
-	of := make(map[string]float64, len(c.ref.used))
-	for _, r := range c.ref.used {
-		of[r.Part] = r.Value
-	}
-	if len(of) < len(c.ref.used) { // ids that repeat, or are not there
-		return
-	}
-	var x, y []float64
-	for _, r := range c.cand.used {
-		if v, ok := of[r.Part]; ok && r.Part != "" {
-			x, y = append(x, v), append(y, r.Value)
-			delete(of, r.Part)
-		}
-	}
+	x, y := c.sameParts()
 	n := len(x)
 	if n < fewestToPair || 10*n < 8*max(len(c.ref.used), len(c.cand.used)) {
 		return
 	}
-	a, b, d := stats.Summarize(x), stats.Summarize(y), stats.Summarize(stats.Differences(x, y, -1))
-	// Var(y - x) = Var(x) + Var(y) - 2 r SD(x) SD(y)
-	r := (a.SD/b.SD + b.SD/a.SD - (d.SD/a.SD)*(d.SD/b.SD)) / 2
+	a, b := stats.Summarize(x), stats.Summarize(y)
+	r := 0.0
+	for i := range x {
+		r += (x[i] - a.Mean) / a.SD * ((y[i] - b.Mean) / b.SD) / float64(n-1)
+	}
 	if !(r > 0) || math.IsInf(r, 1) {
 		return
 	}
@@ -49,6 +38,48 @@ func (c *comparison) checkPairs() {
 	if p := dist.StudentUpper(r*math.Sqrt(float64(n-2)/max(1-r*r, 0x1p-52)), float64(n-2)); p < pairsP {
 		c.warn(WarnPairs, "", "difference", fmt.Sprintf("Both lots hold the same part ids and their readings go together (%d parts, correlation %s): if these are the same parts measured twice, the lots are not independent. Then state method = \"paired\" and pair_column in the plan.", n, Fixed(r, 2)))
 	}
+}
+
+// sameParts are the readings of the ids that stand once in both lots; none where ids of a lot repeat or are not there.
+func (c *comparison) sameParts() (x, y []float64) {
+	ref, cand := c.ref.used, c.cand.used
+	if countedUp(ref, cand) { // the usual case, no look-up needed
+		return c.ref.values, c.cand.values
+	}
+	of := make(map[string]float64, len(ref))
+	for _, r := range ref {
+		of[r.Part] = r.Value
+	}
+	if len(of) < len(ref) {
+		return nil, nil
+	}
+	for _, r := range cand {
+		if v, ok := of[r.Part]; ok && r.Part != "" {
+			x, y = append(x, v), append(y, r.Value)
+			delete(of, r.Part)
+		}
+	}
+	return x, y
+}
+
+// countedUp says whether both lots hold the same ids in the same order, each longer than the one before or after it in the
+// alphabet, so that none is there twice.
+func countedUp(ref, cand []Reading) bool {
+	if len(ref) != len(cand) {
+		return false
+	}
+	for i := range ref {
+		id := ref[i].Part
+		if id == "" || id != cand[i].Part {
+			return false
+		}
+		if i > 0 {
+			if last := ref[i-1].Part; len(id) < len(last) || len(id) == len(last) && id <= last {
+				return false
+			}
+		}
+	}
+	return true
 }
 
 // The ratio of sizes from which lots are called unequal, and the size from which a lot is large enough for that not to matter

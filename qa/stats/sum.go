@@ -52,27 +52,54 @@ type moments struct {
 }
 
 func momentsOf(x []float64) moments {
+	if len(x) == 0 {
+		return moments{}
+	}
 	largest := 0.0
 	for _, v := range x {
 		largest = max(largest, math.Abs(v))
 	}
 	_, exp := math.Frexp(largest)
 	m := moments{exp: exp}
-	if len(x) == 0 {
-		return m
+	// One factor does where it is itself a number, and readings it takes below the
+	// smallest number are nothing beside the largest.
+	scale := math.Ldexp(1, -exp)
+	if math.Abs(float64(exp)) > 1000 {
+		scaled := make([]float64, len(x))
+		for i, v := range x {
+			scaled[i] = math.Ldexp(v, -exp)
+		}
+		x, scale = scaled, 1
 	}
 	// From the first reading, so that equal readings have exactly that mean.
-	first := math.Ldexp(x[0], -exp)
-	var sum double
+	first := x[0] * scale
+	var sum tally
 	for _, v := range x {
-		sum = sum.plus(twoSum(math.Ldexp(v, -exp), -first))
+		d := twoSum(v*scale, -first)
+		sum.add(d.high, d.low)
 	}
-	m.mean = sum.over(float64(len(x))).plus(double{high: first})
+	m.mean = fastSum(sum.high, sum.low).over(float64(len(x))).plus(double{high: first})
+	var squares tally
 	for _, v := range x {
-		d := m.deviation(v)
-		m.squares = m.squares.plus(d.times(d))
+		d := twoSum(v*scale, -m.mean.high)
+		d = twoSum(d.high, d.low-m.mean.low)
+		p := d.high * d.high
+		rest := math.FMA(d.high, d.high, -p)
+		squares.add(p, rest+float64(2*d.high*d.low))
 	}
+	m.squares = fastSum(squares.high, squares.low)
 	return m
+}
+
+// A tally is a sum whose roundings are kept and added apart: as good as one of twice
+// the digits, rounded (Ogita, Rump & Oishi 2005, SIAM J. Scientific Computing 26,
+// 1955-1988, algorithm 4.4, from memory).
+type tally struct{ high, low float64 }
+
+func (t *tally) add(high, low float64) {
+	s := twoSum(t.high, high)
+	t.high = s.high
+	t.low += s.low + low
 }
 
 func (m moments) deviation(v float64) double {
