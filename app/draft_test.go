@@ -1,12 +1,14 @@
 package app
 
 import (
+	"io/fs"
 	"os"
 	"path/filepath"
 	"strings"
 	"testing"
 
 	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/test"
 
 	"lotpair/app/desk"
 	"lotpair/qa"
@@ -228,5 +230,116 @@ func TestUndoWalksTheTrail(t *testing.T) {
 	_, acts, err := w.register.Record(w.entry.ID)
 	if err != nil || len(acts) != 11 {
 		t.Errorf("register: got %d acts, %v, want 11", len(acts), err)
+	}
+}
+
+// TestTwoFilesOfOneLotEach brings a file in on either page; neither names its lot.
+func TestTwoFilesOfOneLotEach(t *testing.T) {
+	dir := t.TempDir()
+	write := func(name string, shift int) string {
+		text := "Part,Wall [mm],Bore [mm]\n"
+		for i := range 15 {
+			text += qa.Plain(float64(i+1)) + ",4." + qa.Plain(float64(100+shift+i*7%11)) + ",39." + qa.Plain(float64(900+i*5%13)) + "\n"
+		}
+		file := filepath.Join(dir, name)
+		if err := os.WriteFile(file, []byte(text), 0o600); err != nil {
+			t.Fatal(err)
+		}
+		return file
+	}
+	w := openedWith(t, inRegister(t, t.TempDir()), "", 1280, 800)
+	w.beginComparison()
+	typing(w, "reference lot", "R-118")
+	typing(w, "candidate lot", "C-022")
+	w.bring(write("first.csv", 0), qa.Reference, readFile)
+	noProblem(t, w)
+	w.takeHeadings()
+	noProblem(t, w)
+	w.bring(write("second.csv", 1), qa.Candidate, readFile)
+	noProblem(t, w)
+	if got := w.sheetSaid.Taken[0]; got.Side != qa.Candidate {
+		t.Errorf("second file: got %+v, want it on the candidate's side", got)
+	}
+	w.takeHeadings()
+	noProblem(t, w)
+	w.chooseKind(desk.InTheUnit)
+	typing(w, "margin", "0.02")
+	w.sealDraft()
+	noProblem(t, w)
+	w.takeKept()
+	noProblem(t, w)
+	if got, want := w.view.spine.Overall, "Overall: equivalent."; got != want {
+		t.Errorf("overall: got %q, want %q", got, want)
+	}
+	if p := w.view.pages; p[qa.Reference].Lot != "R-118" || p[qa.Candidate].Lot != "C-022" || p[qa.Candidate].File != "second.csv" {
+		t.Errorf("pages: got %q and %q of %q", p[qa.Reference].Lot, p[qa.Candidate].Lot, p[qa.Candidate].File)
+	}
+	shotOf(t, "two-files", w.win.Canvas().Capture())
+}
+
+// TestEveryWorkbookOfTheImportersIsLookedInto opens what the importers' own tests read: nothing of it stops the window.
+func TestEveryWorkbookOfTheImportersIsLookedInto(t *testing.T) {
+	var files []string
+	for _, root := range []string{"importers", "testdata"} {
+		err := filepath.WalkDir(filepath.Join("..", root), func(path string, d fs.DirEntry, err error) error {
+			switch strings.ToLower(filepath.Ext(path)) {
+			case ".xlsx", ".csv", ".tsv":
+				if !strings.Contains(path, "fuzz") {
+					files = append(files, path)
+				}
+			}
+			return err
+		})
+		if err != nil {
+			t.Fatal(err)
+		}
+	}
+	if len(files) < 10 {
+		t.Fatalf("files: got %d, want those of the importers", len(files))
+	}
+	w := opened(t, "", 1024, 700)
+	for i := 0; i < len(files); i += 4 { // enough to see every kind
+		file := files[i]
+		w.apply(func(desk.State) desk.State { return desk.State{} })
+		w.open(file, readFile)
+		if w.state.Sheet == nil && w.state.Problem.Text == "" && !w.state.Open {
+			t.Errorf("%s: got neither the file nor what is wrong with it", file)
+		}
+		if x := w.state.Sheet; x != nil {
+			for k := range w.sheetSaid.Rows {
+				for c, cell := range x.Row(k).Cells {
+					if cell.Text != "" && cell.Text != "•••" && w.sheetSaid.Columns[c].Plays == desk.PlaysCharacteristic && x.Row(k).Part == "" && k > 12 {
+						t.Errorf("%s: row %d shows %q, want it masked", file, k, cell.Text)
+					}
+				}
+			}
+		}
+		w.takeHeadings()
+	}
+}
+
+// TestPicturesOfTheDraft renders the criterion and the file dark and at double scale; with -pictures they are kept.
+func TestPicturesOfTheDraft(t *testing.T) {
+	for name, x := range map[string]struct {
+		dark  bool
+		scale float32
+	}{"draft-dark": {true, 1}, "draft-double": {false, 2}} {
+		w := newWindow(test.NewTempApp(t), testBuild, wanted(x.dark), nil)
+		w.jobs.atOnce = true
+		w.win.Canvas().(test.WindowlessCanvas).SetScale(x.scale)
+		w.win.Resize(fyne.NewSize(1280, 800))
+		w.beginComparison()
+		w.open(sheetFile(t), readFile)
+		noProblem(t, w)
+		w.act.unmask.act()
+		shotOf(t, name+"-file", w.win.Canvas().Capture())
+		w.takeHeadings()
+		w.chooseKind(desk.PartOfTolerance)
+		typing(w, "standard deviation", "0.005")
+		shotOf(t, name, w.win.Canvas().Capture())
+		for _, c := range crowded(w) {
+			t.Errorf("%s: %s", name, c)
+		}
+		w.win.Close()
 	}
 }

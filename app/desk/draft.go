@@ -3,6 +3,7 @@ package desk
 import (
 	"errors"
 	"fmt"
+	"path"
 	"slices"
 	"strings"
 	"time"
@@ -76,15 +77,23 @@ func (s State) withLayout(x Sheet) (State, error) {
 		return s, err
 	}
 	p := s.Record.Plan
-	if ref != "" {
-		p.Reference.Lot, p.Reference.File = ref, x.File.Name
+	place := func(l *qa.LotPlan, lot string) {
+		if lot == "" {
+			return
+		}
+		l.File, l.Sheet = x.File.Name, x.sheets[lot]
+		if x.lot != "" || len(x.found.Lots) > 1 || l.Lot == "" { // else the file names no lot: it is called as was typed
+			l.Lot = strings.TrimSuffix(lot, path.Ext(x.File.Name))
+		}
 	}
-	if cand != "" {
-		p.Candidate.Lot, p.Candidate.File = cand, x.File.Name
-	}
+	place(&p.Reference, ref)
+	place(&p.Candidate, cand)
 	p.Reading = x.reading()
 	p.Reading.Exclude = s.Record.Plan.Reading.Exclude
-	if p.Reference.File != p.Candidate.File { // each file has its own sheet
+	switch {
+	case x.sheets != nil: // each lot has its own sheet
+		p.Reading.Sheet = ""
+	case p.Reference.File != p.Candidate.File: // each file has its own sheet
 		p.Reading.Sheet = ""
 		side := &p.Reference
 		if cand != "" {

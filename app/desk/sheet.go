@@ -19,9 +19,10 @@ type Sheet struct {
 
 	found    importers.Inspection
 	book     importers.Book
-	lot      string // heading of the column that names the lot
-	at       int    // the sheet among the book's
-	parts    []Part // of the columns, from A on
+	lot      string            // heading of the column that names the lot
+	sheets   map[string]string // of each lot, where each has its own
+	at       int               // the sheet among the book's
+	parts    []Part            // of the columns, from A on
 	rows     map[int]string
 	ledger   map[string]qa.UnreadResult
 	firstRow int // the first row below the heading that belongs to a lot
@@ -57,6 +58,12 @@ func LookedInto(name string, data []byte, sheet string, masked bool) (Sheet, err
 		return Sheet{}, err
 	}
 	x.lot = m.Reading.LotColumn
+	if m.Reading.Layout == importers.SheetPerLot {
+		x.sheets = map[string]string{}
+		for _, l := range m.Lots {
+			x.sheets[l.Name] = l.Sheet
+		}
+	}
 	for i, s := range x.book.Sheets {
 		if s.Name == in.Sheet {
 			x.at = i

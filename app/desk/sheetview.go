@@ -96,7 +96,12 @@ func (x Sheet) View(p qa.Plan) SheetView {
 		v.Ledger = append(v.Ledger, l)
 	}
 	for _, w := range x.found.Warnings {
-		v.Said = append(v.Said, w.Text)
+		switch {
+		case !x.Masked || strings.HasPrefix(w.Code, "hidden"):
+			v.Said = append(v.Said, w.Text)
+		default: // its words may hold a reading
+			v.Said = append(v.Said, "To look at once the readings are seen: "+strings.ReplaceAll(w.Code, "-", " ")+".")
+		}
 	}
 	return v
 }
