@@ -23,6 +23,7 @@ var publicFiles = []struct {
 	{"sleep.csv", "sleep.csv", "1", "2", "group", "extra", ""},
 	{"sleep.xlsx", "sleep.csv", "1", "2", "group", "extra", ""},
 	{"sleep-libreoffice.xlsx", "sleep.csv", "1", "2", "group", "extra", ""},
+	{"sleep-openxlsx.xlsx", "sleep.csv", "1", "2", "group", "extra", ""},
 	{"sleep.ods", "sleep.csv", "1", "2", "group", "extra", ""},
 	{"toothgrowth.csv", "toothgrowth.csv", "OJ", "VC", "supp", "len", ","},
 	{"toothgrowth.csv", "toothgrowth.csv", "OJ", "VC", "supp", "len", ""},

@@ -2,6 +2,7 @@
 # sleep: Student (1908), Biometrika 6, 20. ToothGrowth: Crampton (1947). InsectSprays: Beall (1942). chickwts: McNeil (1977).
 write.csv(sleep, "sleep.csv")
 write.csv2(ToothGrowth, "toothgrowth.csv", row.names = FALSE)
+if (requireNamespace("openxlsx", quietly = TRUE)) openxlsx::write.xlsx(sleep, "sleep-openxlsx.xlsx")
 write.table(InsectSprays, "insectsprays.txt", row.names = FALSE, quote = FALSE)
 write.table(chickwts, "chickwts.tsv", row.names = FALSE, sep = "\t")
 capture.output(print(warpbreaks, row.names = FALSE), file = "warpbreaks.txt")
