@@ -26,11 +26,19 @@ type NotSoundError struct {
 }
 
 func (e *NotSoundError) Error() string {
-	lines := []string{fmt.Sprintf("found a record that is %s, want a sound one; nothing was %s", e.State, orWord(e.undone, "signed"))}
+	lines := []string{fmt.Sprintf("found a record that %s, want a sound one; nothing was %s", stateClause(e.State), orWord(e.undone, "signed"))}
 	for _, r := range e.Reasons {
 		lines = append(lines, r.Error())
 	}
 	return strings.Join(lines, "\n")
+}
+
+// stateClause says a state as the end of "a record that".
+func stateClause(s State) string {
+	if s == Disagrees {
+		return "does not agree with itself"
+	}
+	return "is " + string(s)
 }
 
 // Unstated lists what the plan leaves out of what a record must state before it is signed: the plan keys.

@@ -69,7 +69,7 @@ func overall(cs []Comparison) Verdict {
 		}
 	}
 	if against == 0 {
-		return overallDifference(cs, differences)
+		return overallDifference(differences)
 	}
 	switch {
 	case refuted > 0 && equivalence > 0:
@@ -84,15 +84,11 @@ func overall(cs []Comparison) Verdict {
 	return Demonstrated
 }
 
-// overallDifference is the verdict of a plan without a margin: undecided where nothing at all could be tested.
-func overallDifference(cs []Comparison, shown []Verdict) Verdict {
+// overallDifference is the verdict of a plan that asks for no margin: no difference shown also where nothing could be tested,
+// which the characteristics' own verdicts say (contract: result, "Overall").
+func overallDifference(shown []Verdict) Verdict {
 	if len(shown) == 0 {
-		for _, c := range cs {
-			if c.Verdict == NoDifference {
-				return NoDifference
-			}
-		}
-		return Undecided
+		return NoDifference
 	}
 	for _, v := range shown {
 		if v != shown[0] {

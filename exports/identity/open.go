@@ -68,6 +68,9 @@ func decodeError(err error) error {
 	case strings.Contains(text, "no MAC in data"):
 		return unusable("identity file: found no integrity check (MAC), want a file protected by its passphrase; do save it again with a passphrase")
 	}
+	if strings.Contains(text, "asn1") {
+		return unusable("identity file: found something that is no PKCS#12 file, want one (.p12 or .pfx) with one key and its certificate; check the name")
+	}
 	return unusable("identity file: found %s, want a PKCS#12 file (.p12 or .pfx) with one key and its certificate; do export it again", strings.TrimPrefix(text, "pkcs12: "))
 }
 
