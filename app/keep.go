@@ -165,7 +165,7 @@ func (w *window) reopen(id int64) {
 	w.work(place, func() change {
 		e, next, view, err := w.again(id)
 		if err != nil {
-			return failed(place, err)
+			return w.mended(place, err)
 		}
 		return func(s desk.State) desk.State {
 			w.entry = e
@@ -175,6 +175,25 @@ func (w *window) reopen(id int64) {
 			return s.Reopened(next, view)
 		}
 	})
+}
+
+// mended is the change that says an error; where the database itself is broken it is recovered as far as it goes first.
+func (w *window) mended(place string, err error) change {
+	if !register.Damaged(err) {
+		return failed(place, err)
+	}
+	return func(s desk.State) desk.State {
+		dir := w.register.Dir()
+		_ = w.register.Close() // it is broken: what it says when it is closed tells nothing more
+		r, damage, err := register.Recover(dir, now())
+		w.register, w.entry = r, register.Entry{}
+		if err != nil {
+			w.register = nil
+			return s.Failed("The register is damaged and cannot be recovered; nothing will be kept", err)
+		}
+		w.find()
+		return s.Failed("The register", errors.New(damage.String()))
+	}
 }
 
 // again makes the state of a record of the register from what was kept.

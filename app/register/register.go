@@ -136,6 +136,9 @@ func (r *Register) look() error {
 	return r.db.QueryRow("SELECT count(*) FROM acts WHERE record = (SELECT max(id) FROM records)").Scan(&n)
 }
 
+// Dir is the folder of the register.
+func (r *Register) Dir() string { return r.dir }
+
 // Close closes the register.
 func (r *Register) Close() error {
 	var all []error

@@ -1,0 +1,69 @@
+package app
+
+import (
+	"bytes"
+	"fmt"
+	"os"
+	"path/filepath"
+	"strings"
+	"testing"
+	"time"
+
+	"lotpair/app/register"
+)
+
+// TestADamagedRegisterIsMendedWhereItShows spoils the pages of one record behind a register that opens well: opening the record
+// recovers the others and says what was lost.
+func TestADamagedRegisterIsMendedWhereItShows(t *testing.T) {
+	dir := t.TempDir()
+	r := inRegister(t, dir)
+	for i := range 20 {
+		state := []byte(fmt.Sprintf("mark %02d ", i) + strings.Repeat("x", 9000))
+		if _, err := r.Add(register.Entry{Title: fmt.Sprint("record ", i)}, register.Act{Time: time.Unix(0, 0).UTC(), Who: "tester", What: "opened", State: state}); err != nil {
+			t.Fatal(err)
+		}
+	}
+	if err := r.Close(); err != nil {
+		t.Fatal(err)
+	}
+	file := filepath.Join(dir, "register.db")
+	data, err := os.ReadFile(file)
+	if err != nil {
+		t.Fatal(err)
+	}
+	at := bytes.LastIndex(data, []byte("mark 03 ")) // an earlier place may be the root of the table, which all rows hang on
+	if at < 0 {
+		t.Fatal("the record's page was not found")
+	}
+	for i := at / 4096 * 4096; i < (at/4096+1)*4096; i++ {
+		data[i] = byte(i * 7)
+	}
+	if err := os.WriteFile(file, data, 0o600); err != nil {
+		t.Fatal(err)
+	}
+	w := openedWith(t, inRegister(t, dir), "", 1280, 800)
+	w.begin("", "", nil)
+	for i, row := range w.list.rows {
+		if row.Title == "record 3" {
+			w.openListed(i)
+			break
+		}
+	}
+	if !strings.Contains(w.state.Problem.Text, "was damaged") {
+		t.Fatalf("opening the spoilt record: got %q, want it said that the register was damaged", w.state.Problem.Text)
+	}
+	if n := len(w.list.rows); n < 15 {
+		t.Errorf("recovered: got %d records, want nearly all of 20: %s", n, w.state.Problem.Text)
+	}
+	t.Cleanup(func() { _ = w.register.Close() })
+	w.openSample()
+	noProblemButTheRegister(t, w)
+}
+
+// noProblemButTheRegister checks that the window goes on: a new act is kept.
+func noProblemButTheRegister(t *testing.T, w *window) {
+	t.Helper()
+	if !w.state.Open || w.entry.ID == 0 {
+		t.Errorf("after the recovery: got open %v, record %d, want an act kept", w.state.Open, w.entry.ID)
+	}
+}
