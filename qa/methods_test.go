@@ -277,3 +277,37 @@ func TestResampled(t *testing.T) {
 		t.Errorf("got %d of bootstrap and permutation", found)
 	}
 }
+
+// TestStratified is D3: cavities in other shares in the two lots. R 4 gives a difference of 0.033333 with the 90 % interval
+// −0.001628 to 0.068295 over all, and −0.00125 and 0.00125 within the cavities: nothing is left within them.
+func TestStratified(t *testing.T) {
+	one1, two1 := []float64{5.01, 5.02, 5.00, 5.01, 5.02, 5.01, 5.00, 5.02}, []float64{5.11, 5.10, 5.12, 5.11}
+	one2, two2 := []float64{5.01, 5.00, 5.02, 5.01}, []float64{5.11, 5.12, 5.10, 5.11, 5.12, 5.10, 5.11, 5.12}
+	mixed := func(one, two []float64) qa.Series {
+		s := series("x", 2, append(append([]float64{}, one...), two...)...)
+		for i := range s.Readings {
+			s.Readings[i].Group = "cavity 1"
+			if i >= len(one) {
+				s.Readings[i].Group = "cavity 2"
+			}
+		}
+		return s
+	}
+	got := one(t, plan(qa.Equivalence, absolute(0.03)), lots(qa.Characteristic{Name: "x"}, mixed(one1, two1), mixed(one2, two2)))
+	near(t, "difference over all", got.Difference.Estimate, 0.033333, 2e-5)
+	near(t, "upper end over all", got.Equivalence.Upper, 0.068295, 1e-5)
+	for _, s := range got.Sensitivity {
+		if s.Method != "stratified" {
+			continue
+		}
+		// Both cavities weigh 8·4/12: the mean of −0.00125 and 0.00125.
+		if math.Abs(*s.Estimate) > 1e-12 || s.Verdict != qa.Equivalent {
+			t.Errorf("stratified: got %v, %q; want 0, equivalent", *s.Estimate, s.Verdict)
+		}
+		if !qa.Has(got.Warnings, qa.WarnFlips) {
+			t.Errorf("warnings: got %v, want %s", got.Warnings, qa.WarnFlips)
+		}
+		return
+	}
+	t.Error("no stratified difference")
+}

@@ -35,6 +35,7 @@ func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
 		}
 		e, err := stats.Yuen(c.ref.sorted, c.cand.sorted)
 		c.again("trimmed", e, err)
+		c.stratified()
 	}
 	if r := c.Ranks; r != nil && r.Lower != nil && r.Upper != nil {
 		c.interval("ranks", r.Shift, stats.Interval{Level: r.Level, Lower: *r.Lower, Upper: *r.Upper}, nil)
@@ -47,6 +48,34 @@ func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
 		c.withoutOutlying(ref, cand)
 	}
 	c.flips()
+}
+
+// stratified compares within the groups that both lots have (cavities, machines), where the readings name them: a lot mixed of
+// the same groups in other shares differs by the mix alone.
+func (c *comparison) stratified() {
+	at := map[string]int{}
+	var x, y [][]float64
+	for _, s := range []sample{c.ref, c.cand} {
+		for _, r := range s.used {
+			if r.Group == "" {
+				return
+			}
+			i, ok := at[r.Group]
+			if !ok {
+				i = len(at)
+				at[r.Group] = i
+				x, y = append(x, nil), append(y, nil)
+			}
+			if s.side == Reference {
+				x[i] = append(x[i], r.Value)
+			} else {
+				y[i] = append(y[i], r.Value)
+			}
+		}
+	}
+	if e, err := stats.StratifiedDifference(x, y); err == nil && e.Groups > 1 {
+		c.again("stratified", e.Estimate, nil)
+	}
 }
 
 // The fewest and the most resamples that a plan may ask for: fewer give no interval, more take minutes.
@@ -92,6 +121,9 @@ func (c *comparison) again(method string, e stats.Estimate, err error) {
 // putBack compares with every reading that was left out put back.
 func (c *comparison) putBack(ref, cand Series) {
 	back := func(s Series) (Series, int) {
+		if s.leftOut() == 0 {
+			return s, 0
+		}
 		n := 0
 		out := s
 		out.Readings = slices.Clone(s.Readings)
