@@ -91,6 +91,7 @@ func (r *Register) keep(e Entry, a Act) (Entry, error) {
 		}
 	}
 	a.Number = e.Acts
+	a.Digest = a.digest()
 	if err := insert(tx, e.ID, a); err != nil {
 		return fail(err)
 	}
@@ -100,6 +101,7 @@ func (r *Register) keep(e Entry, a Act) (Entry, error) {
 	if err := tx.Commit(); err != nil {
 		return fail(err)
 	}
+	_ = r.append(e, a) // the act is kept; the log is a second copy
 	return e, nil
 }
 

@@ -63,7 +63,8 @@ func Recover(dir string, now time.Time) (*Register, Damage, error) {
 	}
 	old, err := connect(d.Kept, "OFF")
 	if err != nil {
-		return r, d, nil // nothing of it can be read
+		_ = r.Close() // the first error is the one that counts
+		return nil, d, fmt.Errorf("register: %w", err)
 	}
 	defer func() { _ = old.Close() }() // it is read no more
 	s := salvage{from: old, to: r, damage: &d}

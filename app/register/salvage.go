@@ -54,6 +54,9 @@ func (s salvage) all() error {
 		r.acts[a.Number], r.last = a, max(r.last, a.Number)
 		return nil
 	})
+	if err := fromLog(s.to.dir, of); err != nil {
+		return err
+	}
 	ids := make([]int64, 0, len(all))
 	for id := range all {
 		ids = append(ids, id)
