@@ -129,17 +129,8 @@ func compareOne(plan Plan, ch Characteristic, k *known, ref, cand Series) (Compa
 // sample describes one lot's readings.
 func (c *comparison) sample(from sample) SampleResult {
 	side, s, sum := from.side, from.series, from.summary
-	parts := map[[2]string]bool{} // a part's id counts within its group
-	unnamed := 0
-	for _, r := range from.used {
-		if r.Part == "" {
-			unnamed++
-			continue
-		}
-		parts[[2]string{r.Group, r.Part}] = true
-	}
 	out := SampleResult{
-		Rows: s.Rows, Parts: len(parts) + unnamed, N: sum.N, Excluded: s.Excluded(),
+		Rows: s.Rows, Parts: partsOf(from.used), N: sum.N, Excluded: s.Excluded(),
 		Missing: s.Missing, NonDetects: s.NonDetects, Unread: s.Unread, Repeats: s.Repeats, Unmatched: len(s.Readings) - s.leftOut() - sum.N,
 	}
 	if sum.N == 0 {
@@ -154,6 +145,30 @@ func (c *comparison) sample(from sample) SampleResult {
 	}
 	return out
 }
+
+// partsOf counts the parts that readings are of: a part's id counts within its group, a reading without one is a part of its own.
+func partsOf(readings []Reading) int {
+	rising := true // ids that count up need no look-up
+	for i := 1; i < len(readings) && rising; i++ {
+		rising = before(readings[i-1].Part, readings[i].Part)
+	}
+	if rising {
+		return len(readings)
+	}
+	parts := map[[2]string]bool{}
+	unnamed := 0
+	for _, r := range readings {
+		if r.Part == "" {
+			unnamed++
+			continue
+		}
+		parts[[2]string{r.Group, r.Part}] = true
+	}
+	return len(parts) + unnamed
+}
+
+// before says whether an id comes before another where ids count up: shorter ones first.
+func before(a, b string) bool { return len(a) < len(b) || len(a) == len(b) && a < b }
 
 // number is v, or nil with a warning where v is not a finite number: nothing else leaves the package.
 func (c *comparison) number(v float64, path string) *float64 {

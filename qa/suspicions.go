@@ -62,8 +62,7 @@ func (c *comparison) sameParts() (x, y []float64) {
 	return x, y
 }
 
-// countedUp says whether both lots hold the same ids in the same order, each longer than the one before or after it in the
-// alphabet, so that none is there twice.
+// countedUp says whether both lots hold the same ids, counting up, so that none is there twice.
 func countedUp(ref, cand []Reading) bool {
 	if len(ref) != len(cand) {
 		return false
@@ -73,10 +72,8 @@ func countedUp(ref, cand []Reading) bool {
 		if id == "" || id != cand[i].Part {
 			return false
 		}
-		if i > 0 {
-			if last := ref[i-1].Part; len(id) < len(last) || len(id) == len(last) && id <= last {
-				return false
-			}
+		if i > 0 && !before(ref[i-1].Part, id) {
+			return false
 		}
 	}
 	return true
