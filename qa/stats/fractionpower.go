@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"sort"
 
 	"lotpair/qa/stats/dist"
 )
@@ -26,7 +27,7 @@ const mostParts = 1_000_000
 
 // mostWalked is the largest number of parts up to which FractionSize looks below
 // the number that it has found: each look goes through all likely counts.
-const mostWalked = 20_000
+const mostWalked = 5_000
 
 func (d FractionDesign) check() error {
 	in := func(p float64) bool { return p >= 0 && p <= 1 }
@@ -65,18 +66,25 @@ func (d FractionDesign) power() float64 {
 	// The score rises with y, so each test rejects from or up to one y, which
 	// rises with x: the limits are carried along.
 	from := func(s, z float64) func() int {
-		y := 0
 		reject := func(y int) bool {
 			p.y = float64(y)
 			return p.score(s) > z
 		}
+		y, step := -1, 0
 		return func() int {
-			for y > 0 && reject(y-1) {
+			last := y
+			if last < 0 {
+				y = sort.Search(d.NCand+1, reject)
+				return y
+			}
+			// It rises steadily: look first where it is expected.
+			for y = min(last+step, d.NCand+1); y > 0 && reject(y-1); {
 				y--
 			}
 			for y <= d.NCand && !reject(y) {
 				y++
 			}
+			step = max(0, y-last)
 			return y
 		}
 	}
@@ -164,7 +172,7 @@ func (d FractionDesign) room() float64 {
 // from one number to the next, by about the probability of one count, which is
 // made good by about the root of the number in parts; the first that has it is
 // given. Above 600 parts none is tried that is more than a tenth, or four roots,
-// below one that does and follows one that does not; above 20,000 none at all.
+// below one that does and follows one that does not; above 5,000 none at all.
 func FractionSize(d FractionDesign, ratio, power float64) (nRef, nCand int, achieved float64, err error) {
 	switch {
 	case !(ratio > 0) || math.IsInf(ratio, 1):
