@@ -1,0 +1,90 @@
+package app
+
+import (
+	"errors"
+	"flag"
+	"fmt"
+	"image/png"
+	"os"
+	"path/filepath"
+	"runtime/debug"
+	"strings"
+)
+
+// Command runs the desktop program: it opens the window through open, or renders it to a file where --picture asks for that.
+// The error says what is wrong with the arguments or the files.
+func Command(args []string, version string, open func(Options) ([]string, error)) error {
+	f := flag.NewFlagSet("lotpair", flag.ContinueOnError)
+	picture := f.String("picture", "", "render the window to `OUT.png` instead of opening it")
+	size := f.String("size", "1280x800", "with --picture: the window's `size` in points")
+	shot := Shot{}
+	f.Float64Var(&shot.Scale, "scale", 1, "with --picture: pixels a point")
+	f.BoolVar(&shot.Dark, "dark", false, "the dark colours")
+	acts := f.String("acts", "", "when the window is closed, write what was done in it to `FILE`, an act a line")
+	f.StringVar(&shot.Register, "register", "", "keep the records in `DIR` instead of the user's own folder; with --picture: show those of DIR")
+	f.Usage = func() {
+		fmt.Fprintln(f.Output(), "lotpair [FILE]\nOpens the window, with a plan (.toml) or a record (.xlsx). Example: lotpair testdata/demo/plan.toml")
+		f.PrintDefaults()
+	}
+	if err := f.Parse(args); errors.Is(err, flag.ErrHelp) {
+		return nil
+	} else if err != nil {
+		return err
+	}
+	if f.NArg() > 1 {
+		return fmt.Errorf("found %d files, want at most one", f.NArg())
+	}
+	build := Build{Version: version, Revision: revision()}
+	if *picture == "" {
+		dir := shot.Register
+		if dir == "" {
+			own, err := os.UserConfigDir()
+			if err != nil {
+				return fmt.Errorf("register: %w; name a folder with --register", err)
+			}
+			dir = filepath.Join(own, "lotpair")
+		}
+		done, err := open(Options{File: f.Arg(0), Register: dir, Build: build, Dark: shot.Dark})
+		if err == nil && *acts != "" {
+			err = os.WriteFile(*acts, []byte(strings.Join(done, "\n")+"\n"), 0o600)
+		}
+		return err
+	}
+	if _, err := fmt.Sscanf(*size, "%dx%d", &shot.Width, &shot.Height); err != nil {
+		return fmt.Errorf("--size: found %q, want one such as 1280x800", *size)
+	}
+	shot.File = f.Arg(0)
+	return render(shot, build, *picture)
+}
+
+// render writes a picture of the window.
+func render(shot Shot, build Build, to string) (err error) {
+	img, err := Picture(shot, build)
+	if err != nil {
+		return err
+	}
+	out, err := os.Create(to)
+	if err != nil {
+		return err
+	}
+	defer func() {
+		if closing := out.Close(); err == nil {
+			err = closing
+		}
+	}()
+	return png.Encode(out, img)
+}
+
+// revision is the commit this program was built from, where the build knows it.
+func revision() string {
+	info, ok := debug.ReadBuildInfo()
+	if !ok {
+		return ""
+	}
+	for _, s := range info.Settings {
+		if s.Key == "vcs.revision" {
+			return s.Value
+		}
+	}
+	return ""
+}
