@@ -25,7 +25,6 @@ class Lot:
         self.exact_var = self.squares / (self.n - 1)
         self.mean, self.var = float(self.exact_mean), float(self.exact_var)
         self.sd = math.sqrt(self.var)
-        self.fourth = None
 
 
 def t_upper(t, df):
