@@ -73,17 +73,19 @@ func (w *window) paragraphs(width float32) []paragraph {
 		}
 		out = append(out, set(s, fontBody, 20, above, false))
 	}
+	if v.Caution != "" {
+		out = append(out, set(v.Caution, fontNote, 17, 12, true))
+	}
+	// What concerns the whole comparison stands below what concerns this characteristic.
 	for i, s := range v.Whole {
 		above := float32(4)
 		if i == 0 {
-			above = 9
+			s, above = "On the comparison as a whole: "+s, 12
 		}
 		out = append(out, set(s, fontBody, 20, above, false))
 	}
-	for _, s := range []string{v.Caution, v.Read} {
-		if s != "" {
-			out = append(out, set(s, fontNote, 17, 12, true))
-		}
+	if v.Read != "" {
+		out = append(out, set(v.Read, fontNote, 17, 12, true))
 	}
 	return out
 }
