@@ -76,7 +76,7 @@ func plots(cs []qa.Comparison, r qa.Readings) ([]byte, error) {
 	img := image.NewPaletted(full.Bounds(), paletteOf(p))
 	newQuantizer(img.Palette).take(img, full)
 	for i := range cs { // nothing over the headings and their rules; a plot has more room than that at its top
-		from, to := int(block*float64(i)*plotScale), int((block*float64(i)+plotHead/plotSize+4)*plotScale)
+		from, to := int(block*float64(i)*plotScale), int((block*float64(i)+plotHead/plotSize+1)*plotScale)
 		clear(img.Pix[from*img.Stride : to*img.Stride])
 	}
 	return encodePNG(img)

@@ -69,7 +69,10 @@ func flatten(prefix string, v reflect.Value) []figureRow {
 	case reflect.Struct:
 		var out []figureRow
 		for i := range v.NumField() {
-			tag := strings.Split(v.Type().Field(i).Tag.Get("json"), ",")[0]
+			tag, rest, _ := strings.Cut(v.Type().Field(i).Tag.Get("json"), ",")
+			if strings.Contains(rest, "omitempty") && v.Field(i).Kind() == reflect.Int && v.Field(i).IsZero() {
+				continue // a count of what this comparison does not have
+			}
 			if tag == "-" || tag == "warnings" || tag == "sensitivity" { // they have sheets of their own
 				continue
 			}
