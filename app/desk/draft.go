@@ -179,6 +179,9 @@ func (s State) Seal(who string, when time.Time) (State, error) {
 	if faults := s.Faults(); len(faults) > 0 {
 		return s, errors.New(strings.Join(faults, "\n"))
 	}
+	if faults := s.Record.Plan.SealFaults(); len(faults) > 0 {
+		return s, faults[0]
+	}
 	seal := qa.Seal{Digest: s.Record.Plan.SealDigest(), Time: when.Format(time.RFC3339), Readings: "unopened"}
 	if s.Seen {
 		seal.Readings = "opened"
