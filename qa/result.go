@@ -236,7 +236,7 @@ type Checks struct {
 type SampleChecks struct {
 	ShapiroWilk *ShapiroWilkResult `json:"shapiro_wilk,omitempty"`
 	Grubbs      *GrubbsResult      `json:"grubbs,omitempty"`
-	ESDOutliers []string           `json:"esd_outliers,omitempty"` // cells, by the generalized ESD test (Rosner 1983)
+	ESDOutliers []string           `json:"esd_outliers,omitzero"` // cells, by the generalized ESD test (Rosner 1983)
 	Runs        *RunsResult        `json:"runs,omitempty"`
 	Lag1        *float64           `json:"lag1,omitempty"` // correlation of neighbouring readings
 	Resolution  *float64           `json:"resolution,omitempty"`
