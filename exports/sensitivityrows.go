@@ -46,6 +46,7 @@ func sensitivityMeaning(name string) string {
 	return map[string]string{
 		"characteristic": "with its unit", "method": "computed otherwise", "estimate": "what is held against the margin", "level": "level of the interval",
 		"lower": "lower end", "upper": "upper end", "verdict": "what the criterion would say", "p": "p that the verdict rests on",
+		"cell": "the one reading put back", "seed": "of the random numbers", "resamples": "how often drawn again",
 	}[name]
 }
 

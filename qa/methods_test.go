@@ -311,3 +311,24 @@ func TestStratified(t *testing.T) {
 	}
 	t.Error("no stratified difference")
 }
+
+// TestEachExclusion is D1 with two readings left out: without 12.022 equivalence is falsely shown at ±0.010 (upper 90 % limit
+// 0.008662 in R 4), and the block says which exclusion does it.
+func TestEachExclusion(t *testing.T) {
+	ch, ref, cand := d1()
+	cand.Readings[10].LeftOut = "looked high" // 12.022
+	ref.Readings[0].LeftOut = "dropped"
+	got := one(t, plan(qa.Equivalence, absolute(0.010)), lots(ch, ref, cand))
+	verdicts := map[string]qa.Verdict{}
+	for _, s := range got.Sensitivity {
+		if s.Method == "exclusion-put-back" {
+			verdicts[s.Cell] = s.Verdict
+		}
+	}
+	if len(verdicts) != 2 || verdicts["Data!C12"] != qa.Undecided || got.Verdict != qa.Equivalent {
+		t.Errorf("got %q, each put back alone %v; want equivalent, and undecided with Data!C12 put back", got.Verdict, verdicts)
+	}
+	if !qa.Has(got.Warnings, qa.WarnFlips) {
+		t.Errorf("warnings: got %v, want %s", got.Warnings, qa.WarnFlips)
+	}
+}

@@ -9,6 +9,7 @@ type SensitivityResult struct {
 	Upper    *float64 `json:"upper"`
 	Verdict  Verdict  `json:"verdict"`
 
+	Cell      string `json:"cell,omitempty"` // exclusion-put-back: the one reading
 	Seed      *int64 `json:"seed,omitempty"` // bootstrap and permutation
 	Resamples int    `json:"resamples,omitempty"`
 }

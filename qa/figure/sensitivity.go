@@ -40,7 +40,7 @@ func SensitivityAt(c qa.Comparison, width, height float64) Figure {
 			f.add(m)
 		}
 		f.add(Mark{Kind: Line, Name: "row", Role: Rule, X: 0, Y: top + row, X2: f.Width, Y2: top + row, Size: 0.7},
-			Mark{Kind: Label, Name: "way", Role: Text, X: 0, Y: top + row/2 + 4, Size: 11.5, Bold: i == 0, Text: wayText(r.Method, i == 0)},
+			Mark{Kind: Label, Name: "way", Role: Text, X: 0, Y: top + row/2 + 4, Size: 11.5, Bold: i == 0, Text: wayText(strings.TrimSpace(r.Method+" "+r.Cell), i == 0)},
 			Mark{Kind: Label, Name: "verdict", Role: Text, X: f.Width, Y: top + row/2 + 4, Size: 11.5, Anchor: End, Bold: i == 0, Text: string(r.Verdict)})
 	}
 	return f
@@ -73,10 +73,11 @@ func wayText(method string, planned bool) string {
 		"welch": "Welch", "pooled": "pooled", "paired": "paired", "log": "logarithms", "trimmed": "trimmed means", "ranks": "ranks",
 		"exclusions-put-back": "exclusions put back", "outlying-removed": "outlying removed",
 		"non-detects-best": "non-detects at best", "non-detects-worst": "non-detects at worst",
-		"miettinen-nurminen": "score",
+		"miettinen-nurminen": "score", "stratified": "within groups",
 	}[method]
 	if s == "" {
-		s = strings.ReplaceAll(method, "-", " ")
+		s = strings.ReplaceAll(method, "exclusion-put-back", "put back")
+		s = strings.ReplaceAll(s, "-", " ")
 	}
 	if planned {
 		s += ", as planned"
