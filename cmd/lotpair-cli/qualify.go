@@ -24,15 +24,20 @@ var (
 )
 
 func (p *program) qualify(args []string) int {
-	var report string
+	var report, key, passphraseFile string
 	var asJSON bool
-	f := p.flags("qualify [--report OUT.xlsx] [--json]",
+	f := p.flags("qualify [--report OUT.xlsx [--identity KEY.p12 [--passphrase-file F]]] [--json]",
 		"Runs the published checks on this machine and reports each against its source, then reads, signs, verifies and tampers with one record.\nExit code 0 when all hold, else 1. Validation for your intended use stays with your organization.",
 		"lotpair-cli qualify")
 	f.StringVar(&report, "report", "", "write what was found to `OUT.xlsx`")
+	f.StringVar(&key, "identity", "", "sign the report with `KEY.p12`, as prepared")
+	f.StringVar(&passphraseFile, "passphrase-file", "", "read the passphrase from the first line of `FILE`")
 	f.BoolVar(&asJSON, "json", false, "print what was found as JSON (lotpair.qualify/1)")
 	if _, code, err := f.parse(args); err != nil {
 		return code
+	}
+	if key != "" && report == "" {
+		return p.usageError(f, "found --identity without --report, want the report that is to be signed")
 	}
 	q := exports.NewQualification(p.now(), p.software(), publishedLines(), []exports.StepLine{
 		step("a signed record is read, computed again and found intact", p.soundRecord()),
@@ -49,19 +54,39 @@ func (p *program) qualify(args []string) int {
 		p.printQualification(q)
 	}
 	if report != "" {
-		b, err := exports.QualificationReport(q)
-		if err != nil {
-			p.say(err)
-			return exitFault
-		}
-		if code := p.saveNew(report, b); code != exitDone {
+		if code := p.writeQualification(q, report, key, passphraseFile); code != exitDone {
 			return code
 		}
-		fmt.Fprintf(p.err, "wrote %s\n", report)
 	}
 	if q.Off > 0 {
 		return exitCheck
 	}
+	return exitDone
+}
+
+// writeQualification writes the report, signed where an identity is given.
+func (p *program) writeQualification(q exports.Qualification, report, key, passphraseFile string) int {
+	b, err := exports.QualificationReport(q)
+	if err != nil {
+		p.say(err)
+		return exitFault
+	}
+	if key != "" {
+		id, code := p.openIdentity(key, passphraseFile)
+		if code != exitDone {
+			return code
+		}
+		now := p.now()
+		st := opcsign.Statement{Name: id.Name(), Title: id.Title(), Organization: id.Organization(), Meaning: "prepared", Time: now, Zone: zoneOf(now)}
+		if b, err = opcsign.Sign(b, id.Key, id.Chain, st); err != nil {
+			p.say(fmt.Errorf("%s: %w", report, err))
+			return exitFile
+		}
+	}
+	if err := exports.Save(p.file(report), b, false); err != nil {
+		return p.notWritten(err)
+	}
+	fmt.Fprintf(p.err, "wrote %s\n", report)
 	return exitDone
 }
 
