@@ -174,11 +174,8 @@ func (d FractionDesign) room() float64 {
 // given. Above 600 parts none is tried that is more than a tenth, or four roots,
 // below one that does and follows one that does not; above 5,000 none at all.
 func FractionSize(d FractionDesign, ratio, power float64) (nRef, nCand int, achieved float64, err error) {
-	switch {
-	case !(ratio > 0) || math.IsInf(ratio, 1):
-		return 0, 0, 0, fmt.Errorf("ratio: found %v, want a number above 0", ratio)
-	case !(power > 0 && power < 1):
-		return 0, 0, 0, fmt.Errorf("power: found %v, want a number above 0 and below 1", power)
+	if err := targets(ratio, power); err != nil {
+		return 0, 0, 0, err
 	}
 	d.NRef, d.NCand = 2, 2
 	if err := d.check(); err != nil {

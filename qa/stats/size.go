@@ -46,13 +46,21 @@ func SpreadSize(d Design, ratio, power float64) (nRef, nCand int, achieved float
 	return d.size(ratio, power, true)
 }
 
-// size is Size, or with alone that of the spread alone.
-func (d Design) size(ratio, power float64, alone bool) (nRef, nCand int, achieved float64, err error) {
+// targets checks what a number of readings or parts is sought for.
+func targets(ratio, power float64) error {
 	switch {
 	case !(ratio > 0) || math.IsInf(ratio, 1):
-		return 0, 0, 0, fmt.Errorf("ratio: found %v, want a number above 0", ratio)
+		return fmt.Errorf("ratio: found %v, want a number above 0", ratio)
 	case !(power > 0 && power < 1):
-		return 0, 0, 0, fmt.Errorf("power: found %v, want a number above 0 and below 1", power)
+		return fmt.Errorf("power: found %v, want a number above 0 and below 1", power)
+	}
+	return nil
+}
+
+// size is Size, or with alone that of the spread alone.
+func (d Design) size(ratio, power float64, alone bool) (nRef, nCand int, achieved float64, err error) {
+	if err := targets(ratio, power); err != nil {
+		return 0, 0, 0, err
 	}
 	d.NRef, d.NCand = 2, 2
 	if err := d.check(); err != nil {
