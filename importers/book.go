@@ -1,8 +1,6 @@
 package importers
 
 import (
-	"crypto/sha256"
-	"encoding/hex"
 	"errors"
 	"fmt"
 	"strings"
@@ -27,8 +25,15 @@ type Book struct {
 // one that messages and the record show; enc is the encoding of a text file as the plan states it, empty where it does not.
 // The error is a *FileError.
 func Open(name string, data []byte, enc string) (Book, error) {
-	sum := sha256.Sum256(data)
-	b := Book{File: qa.File{Name: name, SHA256: hex.EncodeToString(sum[:]), Bytes: int64(len(data))}}
+	return Watched{}.Open(name, data, enc)
+}
+
+// Open opens as the function of the name does, under the watch.
+func (w Watched) Open(name string, data []byte, enc string) (Book, error) {
+	if err := w.told(reading, name, 0, int64(len(data))); err != nil {
+		return Book{}, err
+	}
+	b := Book{File: qa.FileOf(name, data)}
 	switch {
 	case len(data) > cells.MaxFile:
 		return Book{}, fileError(name, "found %d bytes, want at most 256 MiB; use a smaller file", len(data))
@@ -40,18 +45,21 @@ func Open(name string, data []byte, enc string) (Book, error) {
 		return Book{}, err
 	}
 	if is.kind == textContent {
-		return b.text(data, enc)
+		return b.text(data, enc, w)
 	}
-	return b.workbook(data, is.kind)
+	return b.workbook(data, is.kind, w)
 }
 
-func (b Book) workbook(data []byte, kind contentKind) (Book, error) {
-	read := cells.Read
+func (b Book) workbook(data []byte, kind contentKind, watch Watched) (Book, error) {
+	read := watch.cells(b.File.Name).Read
 	if kind == odsContent {
-		read = cells.ReadODS
+		read = watch.cells(b.File.Name).ReadODS
 	}
 	w, err := read(data)
 	if err != nil {
+		if stopped(err) {
+			return Book{}, err
+		}
 		e := fileError(b.File.Name, "%s", err)
 		var bound *cells.BoundError
 		if errors.As(err, &bound) && bound.Part == "" {
@@ -67,7 +75,7 @@ func (b Book) workbook(data []byte, kind contentKind) (Book, error) {
 	return b, nil
 }
 
-func (b Book) text(data []byte, enc string) (Book, error) {
+func (b Book) text(data []byte, enc string, w Watched) (Book, error) {
 	text, encoding, said, err := decodeText(data, enc)
 	if err != nil {
 		return Book{}, fileError(b.File.Name, "%s", err)
@@ -76,8 +84,11 @@ func (b Book) text(data []byte, enc string) (Book, error) {
 	if said != "" {
 		b.Said = append(b.Said, b.File.Name+": "+said)
 	}
-	t, err := readText(text)
+	t, err := readText(text, w.records(b.File.Name))
 	if err != nil {
+		if stopped(err) {
+			return Book{}, err
+		}
 		return Book{}, fileError(b.File.Name, "%s", err)
 	}
 	return b.taken(t), nil

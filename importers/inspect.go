@@ -61,7 +61,12 @@ type InspectedReading struct {
 
 // Inspect says how a file would be read without a plan. The sheet and the layout are found where they are empty.
 func Inspect(name string, data []byte, sheet, layout string) (Inspection, error) {
-	b, err := Open(name, data, "")
+	return Watched{}.Inspect(name, data, sheet, layout)
+}
+
+// Inspect inspects as the function of the name does, under the watch.
+func (w Watched) Inspect(name string, data []byte, sheet, layout string) (Inspection, error) {
+	b, err := w.Open(name, data, "")
 	if err != nil {
 		return Inspection{}, err
 	}
@@ -81,7 +86,7 @@ func Inspect(name string, data []byte, sheet, layout string) (Inspection, error)
 			in.Warnings = append(in.Warnings, qa.Warning{Code: "hidden-sheets", Text: b.File.Name + ": the sheet " + quoted(s.Name) + " is hidden."})
 		}
 	}
-	m, err := Propose(b, qa.ReadingPlan{Layout: layout, Sheet: sheet})
+	m, err := w.Propose(b, qa.ReadingPlan{Layout: layout, Sheet: sheet})
 	if err != nil {
 		return Inspection{}, err
 	}
@@ -100,7 +105,9 @@ func Inspect(name string, data []byte, sheet, layout string) (Inspection, error)
 	for _, l := range m.Lots {
 		in.Lots = append(in.Lots, InspectedLot{Lot: l.Name, Rows: l.Rows})
 	}
-	in.characteristics(m)
+	if err := in.characteristics(m, w); err != nil {
+		return Inspection{}, err
+	}
 	for _, t := range m.tables {
 		in.Reasons = append(in.Reasons, t.said...)
 		in.Warnings = append(in.Warnings, t.warnings...)

@@ -5,11 +5,14 @@ import (
 )
 
 // characteristics reads every characteristic in every lot.
-func (in *Inspection) characteristics(m Mapping) {
+func (in *Inspection) characteristics(m Mapping, w Watched) error {
 	marks := map[byte]bool{}
 	first := m.tables[0]
-	for _, col := range first.measured {
+	for i, col := range first.measured {
 		c := first.column(col)
+		if err := w.told(taking, c.heading, int64(i), int64(len(first.measured))); err != nil {
+			return err
+		}
 		ch := qa.Characteristic{Name: c.heading, Unit: c.unit}
 		if len(first.named(c.name)) == 1 {
 			ch.Name = c.name
@@ -45,6 +48,7 @@ func (in *Inspection) characteristics(m Mapping) {
 	default:
 		in.Decimal = "."
 	}
+	return nil
 }
 
 // readColumn reads one characteristic of one table: the values of each lot, and what is not a plain number.

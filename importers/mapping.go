@@ -28,11 +28,14 @@ type MappedLot struct {
 }
 
 // Propose finds how a file would be read; stated is what is known, as in a plan's [reading]. The error is a *PlanError.
-func Propose(b Book, stated qa.ReadingPlan) (Mapping, error) {
+func Propose(b Book, stated qa.ReadingPlan) (Mapping, error) { return Watched{}.Propose(b, stated) }
+
+// Propose proposes as the function of the name does, under the watch.
+func (w Watched) Propose(b Book, stated qa.ReadingPlan) (Mapping, error) {
 	if !slices.Contains(Layouts, stated.Layout) && stated.Layout != "" {
 		return Mapping{}, planError(b.File.Name, "found the layout %s, want %s; state one of these", quoted(stated.Layout), list(Layouts))
 	}
-	t, err := proposeTable(b, stated)
+	t, err := proposeTable(b, stated, w)
 	if err != nil {
 		return Mapping{}, err
 	}
@@ -53,14 +56,16 @@ func Propose(b Book, stated qa.ReadingPlan) (Mapping, error) {
 	}
 	m.Lots = []MappedLot{{Name: name, Sheet: t.sheet.Name, Rows: len(t.rows), table: t}}
 	if stated.Sheet == "" {
-		m.alike(b, stated)
+		if err := m.alike(b, stated, w); err != nil {
+			return Mapping{}, err
+		}
 	}
 	return m, nil
 }
 
 // proposeTable reads the sheet that is stated, else the first visible one that can be read.
-func proposeTable(b Book, stated qa.ReadingPlan) (*table, error) {
-	h := hints{reading: stated, whole: true, show: true}
+func proposeTable(b Book, stated qa.ReadingPlan, w Watched) (*table, error) {
+	h := hints{reading: stated, whole: true, show: true, watch: w}
 	if name := stated.Sheet; name != "" {
 		s, ok := b.sheet(name)
 		if !ok {
@@ -76,8 +81,8 @@ func proposeTable(b Book, stated qa.ReadingPlan) (*table, error) {
 				continue
 			}
 			t, err := newTable(b, s, h)
-			if err == nil {
-				return t, nil
+			if err == nil || stopped(err) {
+				return t, err
 			}
 			if first == nil {
 				first = faultsError(err)
@@ -91,13 +96,16 @@ func proposeTable(b Book, stated qa.ReadingPlan) (*table, error) {
 }
 
 // alike finds further visible sheets with the same headings and no column of lots: then each sheet is a lot.
-func (m *Mapping) alike(b Book, stated qa.ReadingPlan) {
+func (m *Mapping) alike(b Book, stated qa.ReadingPlan, w Watched) error {
 	first := m.tables[0]
 	for _, s := range b.Sheets {
 		if s.Hidden || s.Name == first.sheet.Name || !slices.ContainsFunc(s.Rows, func(r cells.Row) bool { return slices.ContainsFunc(r.Cells, stored) }) {
 			continue
 		}
-		t, err := newTable(b, s, hints{reading: stated, whole: true, show: true})
+		t, err := newTable(b, s, hints{reading: stated, whole: true, show: true, watch: w})
+		if stopped(err) {
+			return err
+		}
 		if err != nil || t.lot > 0 || t.layout != first.layout || !sameHeadings(t, first) {
 			continue
 		}
@@ -105,7 +113,7 @@ func (m *Mapping) alike(b Book, stated qa.ReadingPlan) {
 		m.Lots = append(m.Lots, MappedLot{Name: s.Name, Sheet: s.Name, Rows: len(t.rows), table: t})
 	}
 	if len(m.tables) < 2 {
-		return
+		return nil
 	}
 	m.Reading.Sheet = ""
 	if first.layout == RowPerPart {
@@ -115,6 +123,7 @@ func (m *Mapping) alike(b Book, stated qa.ReadingPlan) {
 		m.Confidence = Clear
 	}
 	m.Reasons = append([]string{qa.Count(len(m.tables), "sheet has", "sheets have") + " the same headings and no column of lots: each is a lot."}, m.Reasons...)
+	return nil
 }
 
 // sameHeadings says whether two tables have the same measurements by name.

@@ -12,7 +12,12 @@ import (
 // for it; a file that both lots share is opened once. The error is a *PlanError where the plan must say more or something
 // else, and a *FileError where a file cannot be opened or understood.
 func Read(plan qa.Plan, open func(file string) ([]byte, error)) (qa.Readings, error) {
-	r := &reader{plan: plan, books: map[string]Book{}}
+	return Watched{}.Read(plan, open)
+}
+
+// Read reads as the function of the name does, under the watch.
+func (w Watched) Read(plan qa.Plan, open func(file string) ([]byte, error)) (qa.Readings, error) {
+	r := &reader{plan: plan, books: map[string]Book{}, watch: w}
 	for _, step := range []func() error{
 		func() error { return r.openBooks(open) }, r.chooseTables, r.chooseLots, r.chooseCharacteristics, r.settleMarks, r.settleNominals, r.resolveExclusions,
 		r.takeReadings, r.checkExclusions, r.checkDoubled, r.checkNames, r.averageRepeats, r.checkRepeats,
@@ -29,6 +34,7 @@ func Read(plan qa.Plan, open func(file string) ([]byte, error)) (qa.Readings, er
 // reader is the way from a plan to its readings, kept while it is gone.
 type reader struct {
 	plan       qa.Plan
+	watch      Watched
 	books      map[string]Book // by the file's name in the plan
 	tables     []*table        // one or two
 	sides      [2]lotSide
@@ -61,7 +67,7 @@ func (r *reader) openBooks(open func(string) ([]byte, error)) error {
 			e.Err = err
 			return e
 		}
-		b, err := Open(s.plan.File, data, r.plan.Reading.Encoding)
+		b, err := r.watch.Open(s.plan.File, data, r.plan.Reading.Encoding)
 		if err != nil {
 			return err
 		}
@@ -91,7 +97,7 @@ func (r *reader) chooseTables() error {
 			s.table = r.sides[0].table
 			continue
 		}
-		h := hints{reading: r.plan.Reading, characteristics: r.plan.Characteristics, whole: !shared && r.plan.Reading.LotColumn == ""}
+		h := hints{reading: r.plan.Reading, characteristics: r.plan.Characteristics, whole: !shared && r.plan.Reading.LotColumn == "", watch: r.watch}
 		for _, other := range r.sides {
 			if (shared || other.side == s.side) && other.plan.Lot != "" {
 				h.lots = append(h.lots, other.plan.Lot)

@@ -15,6 +15,7 @@ type hints struct {
 	lots            []string
 	characteristics []qa.Characteristic
 	whole           bool // the sheet may hold one lot without naming it
+	watch           Watched
 	show            bool // nothing is asked for yet: what a plan must settle is shown, not refused
 }
 
@@ -126,7 +127,11 @@ func newTable(book Book, sheet cells.Sheet, h hints) (*table, error) {
 	for i, r := range sheet.Rows {
 		t.roles[i] = make([]role, len(r.Cells))
 	}
-	for _, step := range t.steps() {
+	steps := t.steps()
+	for i, step := range steps {
+		if err := t.watch.told(layingOut, t.place(), int64(i), int64(len(steps))); err != nil {
+			return nil, err
+		}
 		if err := step(); err != nil {
 			if t.torn {
 				return nil, &tornError{err}

@@ -17,9 +17,15 @@ func (r *reader) takeReadings() error {
 			if err := s.table.unmerged(s.rows, s.cols[k]); err != nil {
 				return err
 			}
+			if err := r.watch.told(taking, c.Name, int64(i*len(r.out.Characteristics)+k), int64(2*len(r.out.Characteristics))); err != nil {
+				return err
+			}
 			series := qa.Series{Characteristic: c.Name, Rows: len(s.rows)}
 			var thousands []string
-			for _, row := range s.rows {
+			for n, row := range s.rows {
+				if err := r.watch.stop(taking, c.Name, n); err != nil {
+					return err
+				}
 				if got := r.take(s, &series, c, row, k); got.thousands {
 					thousands = append(thousands, s.table.cell(row, s.cols[k]).Name())
 				}

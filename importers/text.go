@@ -17,7 +17,7 @@ type textFile struct {
 
 // readText splits the text into records and fields. A field in double quotes may hold delimiters, line breaks and doubled
 // quotes (RFC 4180). Lines that begin with # before the first other record are comments.
-func readText(text string) (textFile, error) {
+func readText(text string, told func(done, total int) error) (textFile, error) {
 	var t textFile
 	s := &splitter{rest: text, line: 1}
 	var room cellRoom
@@ -60,7 +60,11 @@ func readText(text string) (textFile, error) {
 		if err != nil {
 			return textFile{}, err
 		}
-		record++
+		if record++; record%watchRows == 0 {
+			if err := told(len(text)-len(s.rest), len(text)); err != nil {
+				return textFile{}, err
+			}
+		}
 		if record > cells.MaxRow {
 			return textFile{}, fmt.Errorf("found more than %d records, want at most so many; split the file", cells.MaxRow)
 		}

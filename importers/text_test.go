@@ -181,7 +181,7 @@ func FuzzText(f *testing.F) {
 				}
 				text.WriteByte('\n')
 			}
-			got, err := readText(text.String())
+			got, err := readText(text.String(), Watched{}.records(""))
 			if err != nil {
 				t.Fatalf("%q: got %v", text.String(), err)
 			}

@@ -67,9 +67,12 @@ func damaged(part, format string, args ...any) error {
 type pack struct {
 	parts map[string]*zip.File
 	read  int64 // bytes unpacked so far
+	whole int64 // bytes that the parts with cells and texts say they unpack to
+	told  int64 // read when the watch was told last
+	watch Watch
 }
 
-func openPack(data []byte) (*pack, error) {
+func openPack(data []byte, watch Watch) (*pack, error) {
 	if len(data) > MaxFile {
 		return nil, &BoundError{Found: fmt.Sprintf("%d bytes", len(data)), Bound: "at most 256 MiB"}
 	}
@@ -87,7 +90,7 @@ func openPack(data []byte) (*pack, error) {
 		}
 	}
 	z.RegisterDecompressor(zip.Deflate, newInflater)
-	p := &pack{parts: map[string]*zip.File{}}
+	p := &pack{parts: map[string]*zip.File{}, watch: watch}
 	for _, f := range z.File {
 		if strings.HasSuffix(f.Name, "/") {
 			continue
@@ -100,6 +103,9 @@ func openPack(data []byte) (*pack, error) {
 			return nil, damaged(f.Name, "the same part twice")
 		}
 		p.parts[key] = f
+		if strings.HasSuffix(key, ".xml") {
+			p.whole = min(p.whole+int64(f.UncompressedSize64), MaxPart)
+		}
 	}
 	return p, nil
 }
@@ -186,6 +192,9 @@ func (p *part) Read(b []byte) (int, error) {
 	}
 	if p.pack.read > MaxPart {
 		return n, &BoundError{Part: p.file.Name, Found: "more than 2 GiB in all parts read so far", Bound: "at most 2 GiB"}
+	}
+	if stop := p.pack.tell(p.file.Name); stop != nil {
+		return n, stop
 	}
 	if err != nil && err != io.EOF {
 		return n, damaged(p.file.Name, "a part that cannot be unpacked (%s)", strings.TrimPrefix(err.Error(), "zip: "))

@@ -18,7 +18,7 @@ var generated = flag.Int("generated", 300, "how many generated workbooks are hel
 
 // slowly reads with every cell by its tokens.
 func slowly(data []byte) (Workbook, error) {
-	o, err := openOutline(data)
+	o, err := openOutline(data, nil)
 	if err != nil {
 		return Workbook{}, err
 	}
@@ -28,7 +28,7 @@ func slowly(data []byte) (Workbook, error) {
 
 // byReference reads with the reader over encoding/xml.
 func byReference(data []byte) (Workbook, error) {
-	o, err := openOutline(data)
+	o, err := openOutline(data, nil)
 	if err != nil {
 		return Workbook{}, err
 	}

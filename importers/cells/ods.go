@@ -41,8 +41,11 @@ type span struct {
 const odsType = "application/vnd.oasis.opendocument.spreadsheet"
 
 // ReadODS reads every sheet of an .ods file. The error is a *BoundError or a *FormatError.
-func ReadODS(data []byte) (Workbook, error) {
-	w, err := readODS(data)
+func ReadODS(data []byte) (Workbook, error) { return Watch(nil).ReadODS(data) }
+
+// ReadODS reads as the function of the name does, under the watch.
+func (watch Watch) ReadODS(data []byte) (Workbook, error) {
+	w, err := readODS(data, watch)
 	var format *FormatError
 	if errors.As(err, &format) { // the package and its XML are read as those of the other format are
 		format.Want = strings.ReplaceAll(format.Want, ".xlsx", ".ods")
@@ -55,8 +58,8 @@ func ReadODS(data []byte) (Workbook, error) {
 	return w, err
 }
 
-func readODS(data []byte) (Workbook, error) {
-	p, err := openPack(data)
+func readODS(data []byte, watch Watch) (Workbook, error) {
+	p, err := openPack(data, watch)
 	if err != nil {
 		return Workbook{}, err
 	}

@@ -174,7 +174,7 @@ func TestReadBoundsInWords(t *testing.T) {
 	long := strings.Repeat("x", MaxText/2)
 	many := bytes.Repeat([]byte("PK\x01\x02"), MaxParts+1)
 	counted := func(rows string, before int) error {
-		o, err := openOutline(packOf(t, rows, nil))
+		o, err := openOutline(packOf(t, rows, nil), nil)
 		if err != nil {
 			t.Fatal(err)
 		}

@@ -26,8 +26,11 @@ type outline struct {
 }
 
 // Read reads every worksheet of an .xlsx file. The error is a *BoundError or a *FormatError.
-func Read(data []byte) (Workbook, error) {
-	o, err := openOutline(data)
+func Read(data []byte) (Workbook, error) { return Watch(nil).Read(data) }
+
+// Read reads as the function of the name does, under the watch.
+func (watch Watch) Read(data []byte) (Workbook, error) {
+	o, err := openOutline(data, watch)
 	if err != nil {
 		return Workbook{}, err
 	}
@@ -51,7 +54,7 @@ func (o *outline) read() (Workbook, error) {
 
 // ReadSheet reads one worksheet by its name, the others unread. The error is a *BoundError or a *FormatError.
 func ReadSheet(data []byte, name string) (Sheet, error) {
-	o, err := openOutline(data)
+	o, err := openOutline(data, nil)
 	if err != nil {
 		return Sheet{}, err
 	}
@@ -69,8 +72,8 @@ func ReadSheet(data []byte, name string) (Sheet, error) {
 	return Sheet{}, &FormatError{Found: "the sheets " + strings.Join(names, ", "), Want: fmt.Sprintf("a sheet %q", name), Do: "name a sheet that the file has"}
 }
 
-func openOutline(data []byte) (*outline, error) {
-	p, err := openPack(data)
+func openOutline(data []byte, watch Watch) (*outline, error) {
+	p, err := openPack(data, watch)
 	if err != nil {
 		return nil, err
 	}
