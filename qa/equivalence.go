@@ -91,7 +91,7 @@ func (c *comparison) logRatio() (answer, error) {
 	if !ok1 || !ok2 {
 		return answer{}, errNotPositive
 	}
-	est, err := stats.Welch(stats.Summarize(x), stats.Summarize(y))
+	est, err := stats.Welch(stats.MeanAndSD(x), stats.MeanAndSD(y))
 	if err != nil {
 		return answer{}, err
 	}

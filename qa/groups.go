@@ -24,7 +24,7 @@ func (c *comparison) groupMeans() (ref, cand stats.Summary, ok bool) {
 	if len(x) < 2 || len(y) < 2 {
 		return ref, cand, false
 	}
-	return stats.Summarize(stats.GroupMeans(x)), stats.Summarize(stats.GroupMeans(y)), true
+	return stats.MeanAndSD(stats.GroupMeans(x)), stats.MeanAndSD(stats.GroupMeans(y)), true
 }
 
 // groupsOf are the values of each group, in the order in which the groups first appear.

@@ -27,7 +27,7 @@ func newSample(side Side, s Series, used []Reading) sample {
 	}
 	out.sorted = slices.Clone(out.values)
 	slices.Sort(out.sorted)
-	out.summary = stats.Summarize(out.sorted)
+	out.summary = stats.SummarizeSorted(out.sorted)
 	return out
 }
 
@@ -59,7 +59,7 @@ func (c *comparison) estimate() (stats.Estimate, error) {
 	case "pooled":
 		return stats.Pooled(ref, cand)
 	case "paired":
-		return stats.Paired(stats.Summarize(c.pairDifferences()))
+		return stats.Paired(stats.MeanAndSD(c.pairDifferences()))
 	}
 	return stats.Welch(ref, cand)
 }

@@ -82,7 +82,7 @@ func (c *comparison) studyOfMean() (d stats.Design, estimate float64, ok bool) {
 		if !ok1 || !ok2 {
 			return d, 0, false
 		}
-		d.SDRef, d.SDCand = stats.Summarize(x).SD, stats.Summarize(y).SD
+		d.SDRef, d.SDCand = stats.MeanAndSD(x).SD, stats.MeanAndSD(y).SD
 		onScale = math.Log
 	case e.Scale == scaleRatio:
 		// Of the two contrasts candidate - (1 -+ f) reference the upper one varies more: with its standard error for both the
@@ -102,7 +102,7 @@ func (c *comparison) studyOfMean() (d stats.Design, estimate float64, ok bool) {
 	case e.Scale == scaleShift:
 		d.SDRef = c.cand.summary.SD
 	case d.Paired:
-		d.SDRef = stats.Summarize(c.pairDifferences()).SD
+		d.SDRef = stats.MeanAndSD(c.pairDifferences()).SD
 	}
 	if c.Method == "pooled" {
 		n, m := float64(c.ref.summary.N-1), float64(c.cand.summary.N-1)
@@ -130,7 +130,7 @@ func (c *comparison) widestContrast() float64 {
 		for i, r := range c.ref.values {
 			d[i] = c.cand.values[i] - *end*r
 		}
-		widest = max(widest, stats.Summarize(d).SD)
+		widest = max(widest, stats.MeanAndSD(d).SD)
 	}
 	return widest
 }
@@ -148,7 +148,7 @@ func (c *comparison) partsForSpread(power float64) (StudyParts, bool) {
 	if c.Method == "log" {
 		sd = func(s sample) float64 {
 			x, _ := s.logarithms()
-			return stats.Summarize(x).SD
+			return stats.MeanAndSD(x).SD
 		}
 	}
 	n, m, _, err := stats.SpreadSize(stats.Design{SDRef: sd(c.ref), SDCand: sd(c.cand), Alpha: c.Alpha, SpreadRatio: *c.asked.spreadRatio}, c.lotsRatio(), power)

@@ -28,7 +28,7 @@ func (c *comparison) spread() {
 		if !ok1 || !ok2 {
 			return
 		}
-		a, b = stats.Summarize(x), stats.Summarize(y)
+		a, b = stats.SummarizeSorted(x), stats.SummarizeSorted(y)
 	}
 	level := 1 - 2*c.Alpha
 	var in stats.Interval

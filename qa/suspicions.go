@@ -26,7 +26,7 @@ func (c *comparison) checkPairs() {
 	if n < fewestToPair || 10*n < 8*max(len(c.ref.used), len(c.cand.used)) {
 		return
 	}
-	a, b := stats.Summarize(x), stats.Summarize(y)
+	a, b := stats.MeanAndSD(x), stats.MeanAndSD(y)
 	r := 0.0
 	for i := range x {
 		r += (x[i] - a.Mean) / a.SD * ((y[i] - b.Mean) / b.SD) / float64(n-1)

@@ -64,7 +64,7 @@ func PairedContrast(ref, cand []float64) (Contrast, error) {
 	if len(ref) < 2 {
 		return Contrast{}, ErrTooFew
 	}
-	x, y := momentsOf(ref), momentsOf(cand)
+	x, y := carefulMoments(ref), carefulMoments(cand)
 	n := float64(len(ref))
 	c := Contrast{
 		ref: math.Ldexp(x.mean.value(), x.exp), cand: math.Ldexp(y.mean.value(), y.exp),

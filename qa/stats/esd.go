@@ -51,7 +51,7 @@ func GeneralizedESD(x []float64, sought int, alpha float64) (steps []ESD, found 
 		low, high = without(low, at), without(high, at)
 		m.mean = m.mean.minus(d.over(rest))
 		m.squares = m.squares.minus(d.times(d).times(double{high: rest + 1}).over(rest))
-		if m.squares.value() < 0x1p-40*summed { // most digits went with the readings
+		if m.squares.value() < 0x1p-8*summed { // digits went with the readings
 			m = momentsOf(remaining(x, steps))
 			summed = m.squares.value()
 		}

@@ -31,6 +31,26 @@ func BenchmarkMeanVariance(b *testing.B) {
 			}
 		}
 	})
+	b.Run("unrolled", func(b *testing.B) { // the peer in four sums at a time
+		for b.Loop() {
+			var s [4]float64
+			for i := 0; i+4 <= len(x); i += 4 {
+				s[0] += x[i]
+				s[1] += x[i+1]
+				s[2] += x[i+2]
+				s[3] += x[i+3]
+			}
+			mean := (s[0] + s[1] + s[2] + s[3]) / float64(len(x))
+			var q [4]float64
+			for i := 0; i+4 <= len(x); i += 4 {
+				q[0] += (x[i] - mean) * (x[i] - mean)
+				q[1] += (x[i+1] - mean) * (x[i+1] - mean)
+				q[2] += (x[i+2] - mean) * (x[i+2] - mean)
+				q[3] += (x[i+3] - mean) * (x[i+3] - mean)
+			}
+			got = q[0] + q[1] + q[2] + q[3]
+		}
+	})
 	if !(got > 0) {
 		b.Errorf("sum of squares: got %v, want above 0", got)
 	}

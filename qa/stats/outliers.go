@@ -42,7 +42,15 @@ func GrubbsTest(x []float64) (Grubbs, error) {
 	// (n-1)^2 - nG^2 is rest*(n-1)/squares, where rest is the sum of squares of
 	// the others about their own mean. It is a difference of near equals when
 	// one reading is far away, so it is taken with all digits of the sums.
-	rest := m.squares.minus(farthest.times(farthest).times(double{high: n}).over(n - 1)).value()
+	others := func(m moments) float64 {
+		far := m.deviation(x[index])
+		return m.squares.minus(far.times(far).times(double{high: n}).over(n - 1)).value()
+	}
+	rest := others(m)
+	if rest < 0x1p-8*squares {
+		c := carefulMoments(x)
+		rest = math.Ldexp(others(c), 2*(c.exp-m.exp))
+	}
 	t := math.Inf(1)
 	if rest > 0x1p-90*squares {
 		t = d * math.Sqrt(n*(n-2)/((n-1)*rest))

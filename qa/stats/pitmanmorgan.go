@@ -38,7 +38,7 @@ func PitmanMorgan(ref, cand []float64, level float64) (PairedSpread, error) {
 	if len(ref) < 3 {
 		return PairedSpread{}, ErrTooFew
 	}
-	x, y := momentsOf(ref), momentsOf(cand)
+	x, y := carefulMoments(ref), carefulMoments(cand)
 	sx, sy := x.squares.value(), y.squares.value()
 	if sx == 0 || sy == 0 {
 		return PairedSpread{}, ErrConstant

@@ -45,7 +45,7 @@ func (d double) over(n float64) double {
 }
 
 // moments holds the mean of x*2^-exp and the sum of the squared deviations from
-// it. The exponent brings the largest reading near 1, so no square overflows.
+// it. The exponent brings the largest reading near 1 where a square could overflow.
 type moments struct {
 	exp           int
 	mean, squares double
@@ -55,6 +55,24 @@ func momentsOf(x []float64) moments {
 	if len(x) == 0 {
 		return moments{}
 	}
+	low, high := x[0], x[0]
+	for _, v := range x {
+		if v < low {
+			low = v
+		}
+		if v > high {
+			high = v
+		}
+	}
+	if m, ok := quickMoments(x, low, high); ok {
+		return m
+	}
+	return carefulMoments(x)
+}
+
+// carefulMoments keeps twice the digits of a float64, for readings of any size and
+// spread and for those who take differences of what it returns.
+func carefulMoments(x []float64) moments {
 	largest := 0.0
 	for _, v := range x {
 		largest = max(largest, math.Abs(v))
@@ -103,5 +121,8 @@ func (t *tally) add(high, low float64) {
 }
 
 func (m moments) deviation(v float64) double {
-	return double{high: math.Ldexp(v, -m.exp)}.minus(m.mean)
+	if m.exp != 0 {
+		v = math.Ldexp(v, -m.exp)
+	}
+	return double{high: v}.minus(m.mean)
 }

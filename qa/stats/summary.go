@@ -19,29 +19,47 @@ type Summary struct {
 // Fan (1996, "Sample Quantiles in Statistical Packages"). The summary of
 // nothing is zero.
 //
-// Sums are kept to twice the digits of a float64, and the deviations are taken
-// from the mean of those digits, so Mean and SD are those of the numbers given,
-// rounded about once. Numbers near the largest or smallest float64 do not
-// overflow or vanish on the way.
+// Sums are kept to far more digits than those of a float64, so Mean and SD are
+// those of the numbers given, rounded about once. Numbers near the largest or
+// smallest float64 do not overflow or vanish on the way.
 func Summarize(x []float64) Summary {
+	sorted := slices.Clone(x)
+	slices.Sort(sorted)
+	return SummarizeSorted(sorted)
+}
+
+// SummarizeSorted is Summarize for readings in rising order.
+func SummarizeSorted(sorted []float64) Summary {
+	if len(sorted) == 0 {
+		return Summary{}
+	}
+	s := momentsOf(sorted).summary(len(sorted))
+	s.Min, s.Max = sorted[0], sorted[len(sorted)-1]
+	s.Q1, s.Median, s.Q3 = quantile(sorted, 0.25), quantile(sorted, 0.5), quantile(sorted, 0.75)
+	return s
+}
+
+// MeanAndSD is Summarize for one who needs no more: it does not sort, and the
+// extremes and quartiles of what it returns are NaN.
+func MeanAndSD(x []float64) Summary {
 	if len(x) == 0 {
 		return Summary{}
 	}
-	sorted := slices.Clone(x)
-	slices.Sort(sorted)
+	s := momentsOf(x).summary(len(x))
+	none := math.NaN()
+	s.Min, s.Q1, s.Median, s.Q3, s.Max = none, none, none, none, none
+	return s
+}
+
+// summary is what the moments of n readings say.
+func (m moments) summary(n int) Summary {
 	s := Summary{
-		N:      len(x),
-		Min:    sorted[0],
-		Q1:     quantile(sorted, 0.25),
-		Median: quantile(sorted, 0.5),
-		Q3:     quantile(sorted, 0.75),
-		Max:    sorted[len(x)-1],
+		N:    n,
+		Mean: math.Ldexp(m.mean.value(), m.exp),
+		rest: math.Ldexp(m.mean.high-m.mean.value()+m.mean.low, m.exp),
 	}
-	m := momentsOf(x)
-	s.Mean = math.Ldexp(m.mean.value(), m.exp)
-	s.rest = math.Ldexp(m.mean.high-m.mean.value()+m.mean.low, m.exp)
-	if s.N > 1 {
-		s.SD = math.Ldexp(math.Sqrt(m.squares.value()/float64(s.N-1)), m.exp)
+	if n > 1 {
+		s.SD = math.Ldexp(math.Sqrt(m.squares.value()/float64(n-1)), m.exp)
 	}
 	return s
 }

@@ -43,10 +43,14 @@ def lower(t, df, delta):
     one, one_step = start(mpf(1) / 2, b, x, y)
     two, two_step = start(mpf(1), b, x, y)
     half = delta * delta / 2
-    p = exp(-half)
-    q = delta * exp(-half) / (sqrt(mpf(2)) * gamma(mpf(3) / 2))
+    # For a large delta the sum begins where the weights are above exp(-(80 sigma)^2/2).
+    j = int(max(0, half - 80 * sqrt(half)))
+    if j > 0:
+        one, one_step = start(mpf(1) / 2 + j, b, x, y)
+        two, two_step = start(mpf(1) + j, b, x, y)
+    p = exp(j * log(half) - half - loggamma(j + 1)) if j > 0 else exp(-half)
+    q = delta * exp(j * log(half) - half - loggamma(j + mpf(3) / 2)) / sqrt(mpf(2)) if j > 0 else delta * exp(-half) / (sqrt(mpf(2)) * gamma(mpf(3) / 2))
     total = mpf(0)
-    j = 0
     tiny = mpf(10) ** (-mp.dps + 10)
     while j < half or p * one + abs(q) * two > tiny * (abs(total) + zero):
         total += p * one + q * two
@@ -134,6 +138,20 @@ for t, df, delta in [(30, 20, 28), (2, 100000, 3), (1000, 5, 900), (263, 1, 3.3)
     show("NoncentralTLower", allow(lo), lo, t, df, delta)
     show("NoncentralTUpper", allow(up), up, t, df, delta)
 
+# Far regions: many degrees of freedom, and a noncentrality up to the 1000 of the claim. The
+# place is so many standard deviations of t from delta.
+for df, delta, places in [
+    (0.5, 1000, [-1.2, -0.4, 3, 1e4]), (2, 300, [-1.3, -0.9, 0.5, 30]), (10, 1000, [-2.5, -1, 1, 8, 1e3]), (200, 300, [-9, -3, 0, 4, 12]),
+    (4001, 100, [-20, -5, -0.5, 2, 25]), (1e5, 0.01, [-30, -2, 1, 30]), (1e5, 38, [-30, -7, 0.1, 7, 30]), (1e6, -3, [-25, -4, 1, 33]),
+    (1e6, 12, [-34, -8, 2, 30]), (1e6, 300, [-30, -6, 0, 3, 30]), (1e6, 1000, [-30, -7, 1, 9, 30]), (3.3e7, 5, [-30, -3, 1, 20]), (1e9, 20, [-30, -3, 1, 20]),
+]:
+    df, delta = mpf(df), mpf(delta)
+    for place in places:
+        t = mpf(float(delta + place * sqrt(1 + delta * delta / (2 * df))))
+        lo, up = tails(t, df, delta)
+        show("NoncentralTLower", allow(lo), lo, t, df, delta)
+        show("NoncentralTUpper", allow(up), up, t, df, delta)
+
 # Fewer digits are enough where no tail is below 1e-14.
 mp.dps = 120
 for df in [1, 2, 4, 11, 29, 137, 999]:
@@ -142,3 +160,10 @@ for df in [1, 2, 4, 11, 29, 137, 999]:
             if df == 999 and delta < 0 or df == 1 and (p < 1e-6 or p > 0.99999):
                 continue
             show("NoncentralTQuantile", "2e-13", quantile(p, mpf(df), mpf(delta)), p, df, delta)
+for df, delta in [(1e5, 2), (1e6, 10), (1e6, 100), (30, 300), (5, 1000)]:
+    for p in [1e-10, 0.05, 0.9, 1 - 2.0**-40]:
+        show("NoncentralTQuantile", "2e-13", quantile(p, mpf(df), mpf(delta)), p, df, delta)
+mp.dps = 420
+for df, delta in [(7, 3), (60, -2), (1000, 20)]:
+    for p in [1e-250, 1e-100, 1e-30]:
+        show("NoncentralTQuantile", "2e-13", quantile(p, mpf(df), mpf(delta)), p, df, delta)

@@ -12,20 +12,23 @@ mp.dps = 50
 
 def chi_tails(x, df):
     a, y = df / 2, x / 2
-    if a == int(a) and a < 2000:
-        term = total = mpf(1)
-        for k in range(1, int(a)):
-            term *= y / k
-            total += term
-        up = exp(-y) * total
-        low = mpf(0)
+    if a == int(a):
+        # The smaller tail from its largest term on; the other one needs no digits more.
         term = exp(a * log(y) - y - loggamma(a + 1))
+        total = mpf(0)
         k = 0
-        while term > low * mpf(10) ** -48:
-            low += term
+        if y < a:
+            while term > total * mpf(10) ** -48:
+                total += term
+                k += 1
+                term *= y / (a + k)
+            return total, 1 - total
+        term *= a / y
+        while term > total * mpf(10) ** -48:
+            total += term
             k += 1
-            term *= y / (a + k)
-        return low, up
+            term *= (a - k) / y
+        return 1 - total, total
     return gammainc(a, 0, y, regularized=True), gammainc(a, y, inf, regularized=True)
 
 
@@ -106,17 +109,36 @@ for df in DF:
     for p in [1e-10, 0.001, 0.025, 0.05, 0.3, 0.5, 0.9, 0.975, 0.9999, 1 - 2.0**-40]:
         show("ChiSquareQuantile", "5e-14", chi_quantile(p, mpf(df)), p, df)
 
+# Far regions: many degrees of freedom, and tails down to 1e-300.
+for df, places in [
+    (2, [1300]), (4, [1e-9, 1e-100, 1400]), (10, [1e-50, 1500]), (100, [1e-5, 1700]), (2000, [200, 6000]),
+    (1e5, [-38, -12, -3, -0.1, 0.1, 3, 12, 38]), (1e6, [-37, -8, -1, 1, 8, 37]), (3.3e7, [-20, -2, 2, 20]), (1e9, [-20, -2, 2, 20]),
+]:
+    for place in places:
+        x = mpf(float(df + place * sqrt(2 * mpf(df)) if df > 9999 else place))
+        low, up = chi_tails(x, mpf(df))
+        show("ChiSquareLower", "5e-14" if low > 1e-25 else "1e-12", low, x, df)
+        show("ChiSquareUpper", "5e-14" if up > 1e-25 else "1e-12", up, x, df)
+for df in [2, 10, 1000, 1e5, 1e6]:
+    for p in [1e-300, 1e-100, 1e-30] if df < 1e6 else [1e-100, 0.05, 0.999]:
+        show("ChiSquareQuantile", "5e-14", chi_quantile(p, mpf(df)), p, df)
+
 mp.dps = 30
+for df, t in [(1e5, 1.7), (1e6, 1.7), (1e6, 3.1), (5, 2.1), (200, 1.7)]:
+    for below, above in [(2, 2), (0.3, 0.4), (5, 1), (30, 30), (200, 150), (1000, 990), (-2, 9), (4.5, 1e5)]:
+        v = between(mpf(t), mpf(df), mpf(below), mpf(above))
+        if v > mpf(10) ** -60:
+            show("StudentBetween", "2e-13", v, t, df, below, above)
 for df in [1, 2, 3, 5.5, 18, 58, 398, 10000]:
     for t in [0.7, 1.7, 6.3]:
         for below, above in [(1, 1), (0.1, 0.1), (3, 3), (2.5, 7), (9, 4), (30, 2), (6, -0.5), (-1, 5), (40, 40)]:
             v = between(mpf(t), mpf(df), mpf(below), mpf(above))
             if v > mpf(10) ** -60:
                 show("StudentBetween", "2e-13", v, t, df, below, above)
-for df in [1, 2, 7, 30, 200]:
+for df in [1, 2, 7, 30, 200, 5000, 1e6]:
     for t in [-1, 0.5, 3]:
-        for delta in [-1, 0, 2]:
-            for r in [0.5, 2, 6, 14]:
+        for delta in [-1, 0, 2] if df < 1000 else [-1, 2, 40]:
+            for r in [0.5, 2, 6, 14] if df < 1000 else [float(sqrt(df)) * k for k in (0.9, 0.99, 0.9999, 1.01)]:
                 q1 = owen(mpf(df), mpf(t), mpf(delta), mpf(0), mpf(r))
                 q2 = owen(mpf(df), mpf(t), mpf(delta), mpf(r), mpf(inf))
                 if q1 > mpf(10) ** -14:
