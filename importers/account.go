@@ -130,6 +130,11 @@ func (t *table) warnNoHeading(used map[int]bool) {
 			}
 		}
 	}
+	t.warnNumbers(columns)
+}
+
+// warnNumbers does so, given how many numbers stand in each column.
+func (t *table) warnNumbers(columns map[int]int) {
 	var texts []string
 	for _, col := range t.contentColumns() {
 		if n := columns[col]; n > 0 {
@@ -173,7 +178,7 @@ func (r *reader) blanks(t *table) int {
 		}
 		for _, row := range s.rows {
 			for _, col := range s.cols {
-				if !stored(t.cell(row, col)) {
+				if c := t.cell(row, col); !stored(c) && !(t.tidy != nil && absent(c)) {
 					n++
 				}
 			}

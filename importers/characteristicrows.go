@@ -11,10 +11,11 @@ import (
 // characteristicSheet is a sheet with a row a characteristic while it is read.
 type characteristicSheet struct {
 	*table
-	at, partsAt         int // the headings and those of the parts, indices: one row or two
+	at, partsAt, below  int // the headings, those of the parts and those below a merged one, indices: one row or two
 	name, number, unit  int // columns; 0 where there is none
 	requirement, result int
 	limits              map[string][]int // columns of nominal values, limits and tolerances
+	split               map[int]bool     // columns whose heading stands in two rows
 	other               []string         // columns that are none of these
 	parts               []cells.Cell     // the headings of the parts
 	lotOf               map[int]cells.Cell
@@ -82,7 +83,7 @@ func (s *characteristicSheet) differ() bool {
 		}
 	}
 	seen, n := map[string]bool{}, 0
-	for j := s.at + 1; j < len(s.sheet.Rows) && j <= s.at+lookBelow; j++ {
+	for j := s.at + 1; j < len(s.sheet.Rows); j++ {
 		if text := filledText(s.sheet.Rows[j].At(col)); text != "" {
 			seen[text] = true
 			n++
@@ -111,14 +112,14 @@ func (t *table) numbersUnder(s *characteristicSheet) bool {
 
 // characteristicColumns says which part each column plays with the headings in a row.
 func (t *table) characteristicColumns(at int) *characteristicSheet {
-	s := &characteristicSheet{table: t, at: at, partsAt: at, limits: map[string][]int{}}
+	s := &characteristicSheet{table: t, at: at, partsAt: at, below: at, limits: map[string][]int{}, split: map[int]bool{}}
 	first := func(into *int, col int) {
 		if *into == 0 {
 			*into = col
 		}
 	}
 	var unknown, summaries []cells.Cell
-	for _, c := range t.sheet.Rows[at].Cells {
+	for _, c := range s.splitHeadings() {
 		text := filledText(c)
 		if text == "" {
 			continue
@@ -188,7 +189,7 @@ func (s *characteristicSheet) partsBelow() bool {
 	var parts []cells.Cell
 	for _, c := range s.sheet.Rows[s.at+1].Cells {
 		text := filledText(c)
-		if text == "" {
+		if text == "" || s.split[c.Col] {
 			continue
 		}
 		if c.Col <= max(s.name, s.number) || !partNumbered.MatchString(text) {
@@ -211,6 +212,9 @@ func (t *table) readCharacteristicRows() error {
 		at = slices.IndexFunc(t.sheet.Rows, func(r cells.Row) bool { return number > 0 && r.Number == number })
 	}
 	if at < 0 {
+		if t.tidyHeading() {
+			return t.refuse("reading.layout: found headings of a row a reading, want a row a characteristic with a column a part; state the layout row-per-part: it reads a row a reading too")
+		}
 		return t.refuse("reading.layout: found no row of headings for a characteristic, its limits and a column a part, want one such as No, Characteristic, Nominal, Upper tol, Lower tol, 1, 2, 3; correct header_row or layout under [reading]")
 	}
 	s := t.characteristicColumns(at)
@@ -222,6 +226,9 @@ func (t *table) readCharacteristicRows() error {
 		return t.refuse("row %d: found no heading for the characteristic's name, want one such as Characteristic; correct the heading or header_row", t.sheet.Rows[at].Number)
 	case len(s.parts) == 0 && s.result == 0:
 		return t.refuse("row %d: found no column for a part, want headings such as 1, 2, 3 above the readings; correct the headings or header_row", t.sheet.Rows[at].Number)
+	}
+	if s.severalRows() {
+		return t.refuse("reading.layout: found the same characteristics below each other again and again in column %s, want each in one row; state the layout row-per-part: it reads a row a reading too", cells.Letters(s.name))
 	}
 	t.heading, t.headingTop = t.sheet.Rows[at].Number, t.sheet.Rows[at].Number
 	for _, step := range []func() error{s.findLots, s.findLines, s.splitResults, s.toleranceSigns} {
@@ -242,7 +249,7 @@ func (s *characteristicSheet) findLines() error {
 		case s.comment(r):
 			s.mark(i, roleComment)
 			continue
-		case i == s.at || i == s.partsAt:
+		case i == s.at || i == s.partsAt || i == s.below:
 			s.mark(i, roleHeading)
 			continue
 		case i < s.at:

@@ -73,10 +73,20 @@ func (s *characteristicSheet) splitResults() error {
 // toleranceSigns refuses a column of lower tolerances with and without the minus sign: which of the numbers without one are
 // meant to lie above the nominal value is not known. A written plus sign says so.
 func (s *characteristicSheet) toleranceSigns() error {
-	for _, col := range s.limits[lowerTol] {
-		var minus, plain cells.Cell
+	return s.oneSign(s.limits[lowerTol], func(col int) []cells.Cell {
+		var out []cells.Cell
 		for _, l := range s.lines {
-			c := s.sheet.Rows[l.at].At(col)
+			out = append(out, s.sheet.Rows[l.at].At(col))
+		}
+		return out
+	})
+}
+
+// oneSign does so for the cells of some columns.
+func (s *characteristicSheet) oneSign(cols []int, of func(col int) []cells.Cell) error {
+	for _, col := range cols {
+		var minus, plain cells.Cell
+		for _, c := range of(col) {
 			v, _, err := ParseNumber(c.Text, s.decimalMark())
 			switch {
 			case err != nil || v == 0 || strings.HasPrefix(trimmed(c.Text), "+"):

@@ -1,9 +1,7 @@
 package importers
 
 import (
-	"maps"
 	"regexp"
-	"slices"
 	"strings"
 
 	"lotpair/importers/cells"
@@ -47,31 +45,45 @@ func rowColumnMeans(heading string) string {
 		return m
 	}
 	name, _ := splitUnit(w)
-	return characteristicWords[strings.TrimSpace(name)]
+	if m := characteristicWords[strings.TrimSpace(name)]; m != "" || name == w {
+		return m
+	}
+	return labelWords[word(name)]
 }
 
-// characteristicColumn are the headings of a column that names what each row measured.
-var characteristicColumn = words(means(nameHeading, "characteristic|characteristics|characteristic name|feature|feature name|dimension|parameter|merkmal|prüfmerkmal|"+
-	"merkmalsbezeichnung|charakteristik"))
-
-// oneCharacteristic refuses a sheet with a row a part and a characteristic: one column would hold readings of several.
-func (t *table) oneCharacteristic() error {
-	for _, c := range t.columns {
-		if c.col == t.lot || c.col == t.group || characteristicColumn[word(c.name)] == "" || t.planned(c) {
+// splitHeadings are the headings, and in the place of a tolerance that is merged over columns with their own texts below, such as
+// + and -, both texts together.
+func (s *characteristicSheet) splitHeadings() []cells.Cell {
+	head := s.sheet.Rows[s.at]
+	if s.at+1 == len(s.sheet.Rows) || s.sheet.Rows[s.at+1].Number != head.Number+1 {
+		return head.Cells
+	}
+	var out []cells.Cell
+	for _, c := range head.Cells {
+		area, ok := s.mergedAt(c)
+		if !ok || area.LastRow > area.FirstRow || rowColumnMeans(filledText(c)) != requirementHeading {
+			out = append(out, c)
 			continue
 		}
-		seen := map[string]int{}
-		rows := 0
-		for _, r := range t.wanted() {
-			if cell := t.cell(r, c.col); cell.Kind == cells.Text && filledText(cell) != "" && !numeric(cell) {
-				seen[filledText(cell)]++
-				rows++
+		n := len(out)
+		for col := area.FirstCol; col <= area.LastCol; col++ {
+			sub := s.sheet.Rows[s.at+1].At(col)
+			if sub.Text = filledText(c) + " " + filledText(sub); isLimit(rowColumnMeans(sub.Text)) {
+				out, s.split[col], s.below = append(out, sub), true, s.at+1
 			}
 		}
-		if len(seen) > 1 && rows >= 2*len(seen) {
-			names := slices.Sorted(maps.Keys(seen))
-			return t.refuse("%s: found the characteristics %s below each other, want a column (or a row) for each; bring the sheet into such a form, or keep the rows of one characteristic alone", t.columnText(c.col), list(names))
+		if len(out) == n {
+			out = append(out, c)
 		}
 	}
-	return nil
+	return out
+}
+
+// isLimit says whether a row or column holds nominal values, limits or tolerances.
+func isLimit(means string) bool {
+	switch means {
+	case nominalLabel, upperLabel, lowerLabel, upperTol, lowerTol, bothTol:
+		return true
+	}
+	return false
 }

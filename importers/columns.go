@@ -145,6 +145,9 @@ func (t *table) counts(col int) bool {
 // findMeasured takes the columns of measurements: those of the plan, else every column that holds numbers and plays no other
 // part. What is not taken is said.
 func (t *table) findMeasured() error {
+	if t.tidy != nil && len(t.characteristics) == 0 {
+		return t.measureTurned()
+	}
 	if len(t.characteristics) > 0 {
 		var faults []Fault
 		for _, ch := range t.characteristics {
@@ -216,11 +219,7 @@ func (t *table) findMeasured() error {
 
 // limitHeading says whether a heading names a nominal value, a limit or a tolerance.
 func limitHeading(heading string) bool {
-	switch labelWords[word(heading)] {
-	case nominalLabel, upperLabel, lowerLabel, upperTol, lowerTol:
-		return true
-	}
-	return false
+	return isLimit(labelWords[word(heading)])
 }
 
 // faultsOf are the faults of an error of this package.

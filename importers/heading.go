@@ -81,6 +81,9 @@ func (t *table) headingScore(i int) int {
 		}
 		for _, ch := range t.characteristics {
 			if want := qa.JoinSpace(ch.Heading()); want == text || want == name {
+				if t.namedAbove(i, c.Col) {
+					return 0
+				}
 				score += 100
 				below = below || ch.Kind == kindAttribute && i+1 < len(t.sheet.Rows) && stored(t.sheet.Rows[i+1].At(c.Col))
 			}
@@ -99,6 +102,14 @@ func (t *table) headingScore(i int) int {
 		score++
 	}
 	return score
+}
+
+// namedAbove says whether a heading above says that a column names what each row measured: its texts are no headings.
+func (t *table) namedAbove(i, col int) bool {
+	return slices.ContainsFunc(t.sheet.Rows[max(0, i-lookHeadings):i], func(r cells.Row) bool {
+		name, _ := splitUnit(filledText(r.At(col)))
+		return characteristicColumn[word(name)] != ""
+	})
 }
 
 // numbersFollow says whether under one of a row's texts but the first the next rows hold numbers: so it is under headings,

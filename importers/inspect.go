@@ -98,7 +98,7 @@ func (w Watched) Inspect(name string, data []byte, sheet, layout string) (Inspec
 			return Inspection{}, err
 		}
 		t.nearSpellings(func(string) bool { return true })
-		if !t.turned && t.part > 0 && t.repeats(t.part) {
+		if (!t.turned || t.tidy != nil) && t.part > 0 && t.repeats(t.part) {
 			t.warn("repeated-parts", "ids in %s stand more than once in a lot; name it as part_column where they are repeat readings of a part, else correct them.", t.columnText(t.part))
 		}
 	}

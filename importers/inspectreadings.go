@@ -66,6 +66,9 @@ func (in *Inspection) readColumn(t *table, ch *qa.Characteristic, col int, marks
 	marks[m.decimal] = true
 	values := map[string][]float64{}
 	for _, row := range t.rows {
+		if t.tidy != nil && absent(t.cell(row, col)) {
+			continue
+		}
 		got := takeCell(t.cell(row, col), t.book.IsText, ch.Unit, m.decimal)
 		if got.isValue {
 			values[row.lot] = append(values[row.lot], got.value)

@@ -42,7 +42,7 @@ func (t *table) steps() []func() error {
 		return []func() error{t.uselessKeys, t.findLotColumns, t.readHeadings, t.sortRows, t.turnLots, t.measureTurned}
 	}
 	return []func() error{
-		t.findHeading, t.choosePanel, t.readHeadings, t.findLotColumn, t.findPartColumn, t.sortRows, t.oneCharacteristic, t.turnSections, t.turnReplicates, t.findMeasured,
+		t.findHeading, t.choosePanel, t.readHeadings, t.findLotColumn, t.findPartColumn, t.findTidy, t.sortRows, t.turnTidy, t.turnSections, t.turnReplicates, t.findMeasured,
 	}
 }
 

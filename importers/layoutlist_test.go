@@ -71,7 +71,7 @@ func layoutCases() []layoutCase {
 			want: layoutWant{n: [2]int{6, 6}, mean: [2]float64{72.028 / 6, 72.052 / 6}, limits: [3]float64{11.95, 0, 12.05}},
 		},
 	}
-	return append(append(cases, nastyCases()...), headingCases()...)
+	return append(append(append(append(cases, nastyCases()...), headingCases()...), tidyCases()...), toleranceCases()...)
 }
 
 func valuesCSV(values []string) string {

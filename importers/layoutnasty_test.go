@@ -99,12 +99,6 @@ func nastyCases() []layoutCase {
 		s.rows = append([][]any{{"Inspection report"}, {"Lot", lot}, {"Revision", "C"}, {"Quantity", num("800")}, nil}, s.rows...)
 		return s
 	}
-	everything := [][]any{{"Lot", "Part", "Characteristic", "Value"}}
-	for i := range d1Reference {
-		for k, name := range []string{"Bore dia", "Length"} {
-			everything = append(everything, []any{"REF-0417", num(fmt.Sprint(i + 1)), name, shifted(d1Reference[i], k)}, []any{"CAND-0931", num(fmt.Sprint(i + 1)), name, shifted(d1Candidate[i], k)})
-		}
-	}
 	free := planOf("lot = \"the old foundry\"\nfile = \"own.xlsx\"\nsheet = \"Sheet1\"", "lot = \"the new one\"\nfile = \"own.xlsx\"\nsheet = \"Sheet2\"", "", "")
 	averaged := d1.with(func(w *layoutWant) { w.repeats = 24 })
 	return []layoutCase{
@@ -115,7 +109,6 @@ func nastyCases() []layoutCase {
 			want: d1.with(func(w *layoutWant) { w.count, w.step, w.limits = 2, 1, [3]float64{11.95, 12, 12.05} }),
 		},
 		{name: "n01-lots", shows: "both lots named in the block above, and again in a column under an odd heading", files: one(append([][]any{{"Compared", "REF-0417", "with", "CAND-0931"}, nil}, odd...)), plan: planFor("own.xlsx", "", characteristicOf(`name = "Bore dia"`)), want: d1},
-		{name: "mixed", shows: "a row a part and a characteristic: stop, also where part_column would average them", files: one(everything), plan: planFor("own.xlsx", `part_column = "Part"`, ""), want: layoutWant{fault: []string{`"Bore dia", "Length"`, "column C"}}},
 		{name: "n02-wide", shows: "unit and limit rows above lots side by side: n 12, not 15", files: one(labelled), plan: plain, want: d1.with(func(w *layoutWant) { w.limits = [3]float64{11.95, 12, 12.05} })},
 		{name: "n03-wide", shows: "labelled foot rows: not 0.009575", files: one(feet(labelled)), plan: plain, want: d1.with(func(w *layoutWant) { w.limits = [3]float64{11.95, 12, 12.05} })},
 		{name: "n04-wide", shows: "a mean without a label under the last reading", files: one(unlabelled), plan: plain, want: d1},

@@ -68,8 +68,16 @@ func (t *table) limitsOf(col int, unit string, decimal byte) (qa.Characteristic,
 			}
 			c.Lower = sum(lowerTol, v)
 		}
+		if tol := values[bothTol]; tol != nil {
+			if c.Upper == nil {
+				c.Upper = sum(bothTol, math.Abs(*tol))
+			}
+			if c.Lower == nil {
+				c.Lower = sum(bothTol, -math.Abs(*tol))
+			}
+		}
 	}
-	if c.Target == nil && (values[upperTol] != nil || values[lowerTol] != nil) {
+	if c.Target == nil && (values[upperTol] != nil || values[lowerTol] != nil || values[bothTol] != nil) {
 		t.warn("limits-incomplete", "%s has tolerances without a nominal value; no limits are taken from them.", t.columnText(col))
 	}
 	return c, nil

@@ -41,7 +41,10 @@ func (w Watched) Propose(b Book, stated qa.ReadingPlan) (Mapping, error) {
 	}
 	m := Mapping{Reading: stated, Confidence: t.confidence, Reasons: t.reasons, tables: []*table{t}}
 	m.Reading.Layout, m.Reading.Sheet, m.Reading.HeaderRow = t.layout, t.sheet.Name, t.heading
-	if !t.turned {
+	switch {
+	case t.tidy != nil:
+		m.Reading.LotColumn = t.tidy.lotColumn
+	case !t.turned:
 		m.Reading.LotColumn = t.column(t.lot).heading
 	}
 	if t.lot > 0 {

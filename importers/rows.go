@@ -48,7 +48,7 @@ func (t *table) sortRows() error {
 	if err := t.fillLots(data); err != nil {
 		return err
 	}
-	if t.layout != ColumnPerLot {
+	if t.layout != ColumnPerLot && t.tidy == nil {
 		t.detectPart()
 	}
 	return nil

@@ -55,8 +55,12 @@ func (in Inspection) Plan() string {
 	if m.Reading.LotColumn != "" {
 		line("lot_column = %s", tomlText(m.Reading.LotColumn))
 	}
-	if t := m.tables[0]; !t.turned && t.part > 0 && t.repeats(t.part) {
-		line("# part_column = %s # ids repeat in a lot: take the # off where they are repeat readings of a part, to be averaged", tomlText(t.column(t.part).heading))
+	if t := m.tables[0]; (!t.turned || t.tidy != nil) && t.part > 0 && t.repeats(t.part) {
+		heading := t.column(t.part).heading
+		if t.tidy != nil {
+			heading = t.tidy.partColumn
+		}
+		line("# part_column = %s # ids repeat in a lot: take the # off where they are repeat readings of a part, to be averaged", tomlText(heading))
 	}
 	switch {
 	case in.Decimal == "":

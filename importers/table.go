@@ -55,14 +55,16 @@ type table struct {
 	group, pair      int
 	turned           bool // rows have their own cells: the lots or the parts stand in columns
 	feet             []footCell
-	keep             cells.Area    // the columns of this one of several tables side by side; none where 0
-	cut              int           // cells of the others
-	torn             bool          // no one of them holds all the lots looked for
-	end              int           // the row where another table begins; 0 where none does
-	sections         []section     // tables below each other, each under its lot's name
-	blocks           []block       // the lots side by side
-	headed           bool          // and headings below their names
-	unclear          map[int]error // limits that only a person can read, by column
+	keep             cells.Area          // the columns of this one of several tables side by side; none where 0
+	cut              int                 // cells of the others
+	torn             bool                // no one of them holds all the lots looked for
+	end              int                 // the row where another table begins; 0 where none does
+	sections         []section           // tables below each other, each under its lot's name
+	blocks           []block             // the lots side by side
+	headed           bool                // and headings below their names
+	tidy             *tidySheet          // a row a reading; nil where a row is a part
+	texts            [turnedFixed]string // of a turned table: what its columns for lot, part, order, group and pair are called
+	unclear          map[int]error       // limits that only a person can read, by column
 	rows             []row
 	wantedRows       []row           // of the lots looked for
 	limits           map[int][]limit // by column
@@ -188,6 +190,9 @@ func (t *table) columnText(col int) string {
 		c := t.column(col)
 		if c.head.Col > 0 {
 			return fmt.Sprintf("%s in %s", quoted(c.heading), c.head.Name())
+		}
+		if c.heading == "" && col > 0 && col <= turnedFixed && t.texts[col-1] != "" {
+			return t.texts[col-1]
 		}
 		return quoted(c.heading)
 	}

@@ -54,6 +54,10 @@ func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row ro
 	t := s.table
 	cell := t.cell(row, s.cols[k])
 	got := taken{}
+	if absent(cell) && t.tidy != nil {
+		series.Rows--
+		return got
+	}
 	if c.Kind == kindAttribute {
 		got = takeAttribute(cell, c.Failed)
 	} else {

@@ -21,6 +21,7 @@ const (
 	lowerLabel   = "lower"
 	upperTol     = "upper tolerance"
 	lowerTol     = "lower tolerance"
+	bothTol      = "tolerance" // one number, plus and minus
 	summaryLabel = "summary"
 	unitTexts    = "mm µm um nm cm dm m km in inch ft mil thou \" ' ° deg rad °C °F K g mg µg kg t oz lb N mN kN lbf Nm N·m Ncm cNm mNm " +
 		"Pa kPa MPa GPa bar mbar psi ksi N/mm² N/mm2 kN/mm² MPa·m½ mm² mm2 cm² cm2 m² mm³ mm3 cm³ cm3 ml mL l L s ms µs ns min h V mV kV A mA µA W kW " +
@@ -45,11 +46,16 @@ var labelWords = words(
 	means(unitLabel, "unit|units|einheit|einheiten|uom|unit of measure"),
 	means(nominalLabel, "nominal|nominal value|nominal size|nom|target|target value|nennmaß|nennmass|nennwert|sollwert|sollmaß|sollmass|soll"),
 	means(upperLabel, "usl|upper limit|upper spec|upper spec limit|upper specification limit|upper specification|max limit|maximum limit|"+
-		"osg|otg|oberer grenzwert|obere grenze|obere spezifikationsgrenze|höchstmaß|höchstmass"),
+		"limits upper|limits max|limits +|spec limits upper|spec limits max|specification upper|specification max|specification limits upper|specification limits max|osg|otg|oberer grenzwert|obere grenze|obere spezifikationsgrenze|höchstmaß|höchstmass"),
 	means(lowerLabel, "lsl|lower limit|lower spec|lower spec limit|lower specification limit|lower specification|min limit|minimum limit|"+
-		"usg|utg|unterer grenzwert|untere grenze|untere spezifikationsgrenze|mindestmaß|mindestmass"),
-	means(upperTol, "upper tol|upper tolerance|tol+|+tol|plus tolerance|oberes abmaß|oberes abmass"),
-	means(lowerTol, "lower tol|lower tolerance|tol-|-tol|tol−|minus tolerance|unteres abmaß|unteres abmass"),
+		"limits lower|limits min|limits -|spec limits lower|spec limits min|specification lower|specification min|specification limits lower|specification limits min|usg|utg|unterer grenzwert|untere grenze|untere spezifikationsgrenze|mindestmaß|mindestmass"),
+	means(upperTol, "upper tol|upper tolerance|plus|plus tol|plus tolerance|tol plus|tolerance plus|tol+|+tol|tol +|+ tol|tol. +|tol(+)|tol (+)|tol. (+)|tolerance +|+ tolerance|"+
+		"upper dev|upper deviation|upper limit deviation|dev +|+ dev|dev+|+dev|upper allowance|oberes abmaß|oberes abmass|oberes grenzabmaß|oberes grenzabmass|obere toleranz|toleranz +|+ toleranz|"+
+		"obere abweichung|toleranz oben|plustoleranz|tolerance upper|tolerance max|upper tolerances|tolerances +"),
+	means(lowerTol, "lower tol|lower tolerance|minus|minus tol|minus tolerance|tol minus|tolerance minus|tol-|-tol|tol−|−tol|tol–|tol -|tol −|tol –|- tol|− tol|– tol|tol. -|tol. −|tol(-)|tol (-)|tol (−)|tol. (-)|tol. (−)|"+
+		"tolerance -|tolerance −|- tolerance|− tolerance|lower dev|lower deviation|lower limit deviation|dev -|dev −|- dev|− dev|dev-|-dev|lower allowance|unteres abmaß|unteres abmass|unteres grenzabmaß|"+
+		"unteres grenzabmass|untere toleranz|toleranz -|toleranz −|- toleranz|untere abweichung|toleranz unten|minustoleranz|tolerance lower|tolerance min|lower tolerances|tolerances -"),
+	means(bothTol, "±|+/-|±tol|± tol|tol ±|tol±|tol. ±|tol +/-|tol. +/-|tol (±)|tol (+/-)|tolerance ±|± tolerance|tolerance +/-|tolerance (±)|tolerance (+/-)|plus/minus|toleranz ±|± toleranz|toleranz +/-"),
 	means(summaryLabel, "mean|average|avg|mean value|arithmetic mean|grand mean|x-bar|xbar|x̄|x̅|s|sd|sigma|σ|std|stdev|std dev|std. dev|st. dev|st dev|"+
 		"standard deviation|stdabw|std.-abw|standardabweichung|streuung|var|variance|varianz|min|minimum|max|maximum|range|r|spannweite|median|mode|"+
 		"sum|total|summe|n|count|anzahl|no of values|number of values|cp|cpk|pp|ppk|cm|cmk|cv|rsd|se|sem|q1|q3|ucl|lcl|oeg|ueg|"+
