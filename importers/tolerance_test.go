@@ -51,9 +51,22 @@ func toleranceCases() []layoutCase {
 // The words for tolerances as deviations, as headings above rows of characteristics and as labels of rows above parts.
 func TestReadToleranceWords(t *testing.T) {
 	for _, w := range [][2]string{
-		{"Upper tol", "Lower tol"}, {"Plus", "Minus"}, {"PLUS", "MINUS"}, {"+Tol", "-Tol"}, {"+ Tol.", "- Tol."}, {"Tol +", "Tol -"}, {"Tol. +", "Tol. \u2212"}, {"Tol+", "Tol\u2212"},
-		{"upper dev", "lower dev"}, {"Upper deviation", "Lower deviation"}, {"Tolerance +", "Tolerance -"}, {"Tol. (+)", "Tol. (-)"}, {"Oberes Abmaß", "Unteres Abmaß"}, {"Obere Toleranz", "Untere Toleranz"},
-		{"Upper tol [mm]", "Lower tol [mm]"}, {"Plus tolerance", "Minus tolerance"},
+		{"Upper tol", "Lower tol"},
+		{"Plus", "Minus"},
+		{"PLUS", "MINUS"},
+		{"+Tol", "-Tol"},
+		{"+ Tol.", "- Tol."},
+		{"Tol +", "Tol -"},
+		{"Tol. +", "Tol. \u2212"},
+		{"Tol+", "Tol\u2212"},
+		{"upper dev", "lower dev"},
+		{"Upper deviation", "Lower deviation"},
+		{"Tolerance +", "Tolerance -"},
+		{"Tol. (+)", "Tol. (-)"},
+		{"Oberes Abmaß", "Unteres Abmaß"},
+		{"Obere Toleranz", "Untere Toleranz"},
+		{"Upper tol [mm]", "Lower tol [mm]"},
+		{"Plus tolerance", "Minus tolerance"},
 	} {
 		for _, minus := range []num{"-0.03", "0.03"} {
 			rows := withTolerances("Data", d1Reference, w[0], w[1], num("0.05"), minus).rows
