@@ -22,6 +22,7 @@ func Command(args []string, version string, open func(Options) ([]string, error)
 	f.BoolVar(&shot.Dark, "dark", false, "the dark colours")
 	acts := f.String("acts", "", "when the window is closed, write what was done in it to `FILE`, an act a line")
 	f.StringVar(&shot.Register, "register", "", "keep the records in `DIR` instead of the user's own folder; with --picture: show those of DIR")
+	measure := f.String("measure", "", "use the window as `HOW` says and close it, for the bench: still, walk, resize, spine or readings")
 	f.Usage = func() {
 		fmt.Fprintln(f.Output(), "lotpair [FILE]\nOpens the window, with a plan (.toml) or a record (.xlsx). Example: lotpair testdata/demo/plan.toml")
 		f.PrintDefaults()
@@ -44,7 +45,7 @@ func Command(args []string, version string, open func(Options) ([]string, error)
 			}
 			dir = filepath.Join(own, "lotpair")
 		}
-		done, err := open(Options{File: f.Arg(0), Register: dir, Build: build, Dark: shot.Dark})
+		done, err := open(Options{File: f.Arg(0), Register: dir, Build: build, Dark: shot.Dark, Measure: Measurement{Name: *measure, Out: os.Stdout}})
 		if err == nil && *acts != "" {
 			err = os.WriteFile(*acts, []byte(strings.Join(done, "\n")+"\n"), 0o600)
 		}

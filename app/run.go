@@ -26,6 +26,7 @@ type Options struct {
 	Register string // the folder of the register; "" where nothing is to be kept
 	Build    Build
 	Dark     bool
+	Measure  Measurement
 }
 
 // Run opens the window and returns when it is closed: what the user did, an act a line.
@@ -34,7 +35,10 @@ func Run(a fyne.App, o Options) []string {
 	w := newWindow(a, o.Build, wanted(o.Dark), r)
 	w.win.SetMaster()
 	w.win.CenterOnScreen()
-	a.Lifecycle().SetOnStarted(func() { w.begin(o.File, said, err) })
+	a.Lifecycle().SetOnStarted(func() {
+		w.begin(o.File, said, err)
+		w.measure(o.Measure)
+	})
 	w.win.ShowAndRun()
 	w.end()
 	return w.state.Acts

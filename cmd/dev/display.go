@@ -13,14 +13,14 @@ import (
 const onLinux = runtime.GOOS == "linux"
 
 // display starts an X server without a screen on a display number that it finds free itself, and gives the display's name
-// and what ends the server.
-func (d *dev) display() (string, func(), error) {
+// and what ends the server. more is what the server takes besides.
+func (d *dev) display(more ...string) (string, func(), error) {
 	read, write, err := os.Pipe()
 	if err != nil {
 		return "", nil, err
 	}
 	defer func() { _ = read.Close() }() // nothing is lost: the number was read
-	args := []string{"-displayfd", "3", "-screen", "0", "1600x1000x24", "-nolisten", "tcp"}
+	args := append([]string{"-displayfd", "3", "-screen", "0", "1600x1000x24", "-nolisten", "tcp"}, more...)
 	d.show(nil, "Xvfb", args...)
 	c := d.command(nil, "Xvfb", args...)
 	c.ExtraFiles = []*os.File{write}
