@@ -30,7 +30,17 @@ func (b book) bytes() ([]byte, error) {
 	if err != nil {
 		return nil, err
 	}
-	return writeZip(parts)
+	return writeZip(parts, b.room())
+}
+
+// room is how many bytes a package takes that holds so many lines: none is copied to grow, and what is not used costs nothing.
+func (b book) room() int {
+	const around, line = 1 << 18, 96
+	n := around
+	for _, s := range b.sheets {
+		n += line * s.filterTo
+	}
+	return n
 }
 
 // parts is what the package is made of, by name.

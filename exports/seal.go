@@ -1,7 +1,6 @@
 package exports
 
 import (
-	"bytes"
 	"encoding/json"
 	"encoding/xml"
 	"errors"
@@ -107,7 +106,7 @@ func ReadSeal(pkg []byte) (Sealed, error) {
 
 // readSeal gives the seal and the layout of its workbook.
 func readSeal(pkg []byte) (Sealed, int, error) {
-	b, err := opcsign.ReadPart(pkg, recordPart)
+	r, _, err := opcsign.OpenPart(pkg, recordPart)
 	if err != nil {
 		return Sealed{}, 0, fmt.Errorf("%w (%w)", ErrNoSeal, err)
 	}
@@ -117,10 +116,16 @@ func readSeal(pkg []byte) (Sealed, int, error) {
 		Layout  int      `xml:"layout"`
 	}
 	// A record may hold a million readings: it is not read to its end to see that it is no seal.
-	if format := formatOf(b); format != SealFormat {
+	d := xml.NewDecoder(r)
+	root := rootOf(d)
+	if format := attribute(root, "format"); format != SealFormat {
 		return Sealed{}, 0, fmt.Errorf("%w (found the format %q)", ErrNoSeal, format)
 	}
-	if err := xml.Unmarshal(b, &x); err != nil {
+	err = d.DecodeElement(&x, &root)
+	if err == nil {
+		_, err = io.Copy(io.Discard, r) // the part is whole
+	}
+	if err != nil {
 		return Sealed{}, 0, fmt.Errorf("%w (%w)", ErrNoSeal, err)
 	}
 	var s Sealed
@@ -130,16 +135,15 @@ func readSeal(pkg []byte) (Sealed, int, error) {
 	return s, x.Layout, nil
 }
 
-// formatOf is the format that the root element of a custom XML part names.
-func formatOf(part []byte) string {
-	d := xml.NewDecoder(bytes.NewReader(part))
+// rootOf is the first element of a document, or one without a name.
+func rootOf(d *xml.Decoder) xml.StartElement {
 	for {
 		t, err := d.Token()
 		if err != nil {
-			return ""
+			return xml.StartElement{}
 		}
 		if e, ok := t.(xml.StartElement); ok {
-			return attribute(e, "format")
+			return e
 		}
 	}
 }

@@ -1,6 +1,7 @@
 package opcsign
 
 import (
+	"bytes"
 	"crypto"
 	"fmt"
 	"slices"
@@ -15,8 +16,13 @@ type container struct {
 	rels       map[string][]relationship // by the name of the .rels part
 	signatures []string                  // parts that the origin names, by their number
 	apart      map[string]bool           // the origin, its relationships and the signatures: covered by no signature
-	digests    map[string][]byte         // cache, by part and kind of digest
-	source     []byte                    // the package, where it was written here
+	digests    map[digestOf][]byte       // those computed so far
+}
+
+// digestOf names one digest of one part.
+type digestOf struct {
+	part string
+	hash crypto.Hash
 }
 
 // openContainer reads a package. Irregularities are reasons; an error means that it is no package.
@@ -25,10 +31,14 @@ func openContainer(pkg []byte) (*container, error) {
 	if err != nil {
 		return nil, err
 	}
+	return newContainer(a)
+}
+
+func newContainer(a *archive) (*container, error) {
 	if err := a.bounds(); err != nil {
 		return nil, err
 	}
-	c := &container{archive: a, rels: map[string][]relationship{}, apart: map[string]bool{}, digests: map[string][]byte{}}
+	c := &container{archive: a, rels: map[string][]relationship{}, apart: map[string]bool{}, digests: map[digestOf][]byte{}}
 	if a.byName[typesEntry] == nil || a.byName[trimSlash(rootRels)] == nil {
 		return nil, notPackage("found an archive without %s and %s", typesEntry, trimSlash(rootRels))
 	}
@@ -168,7 +178,7 @@ func number(part string) int {
 
 // digest is the digest of an ordinary part's bytes, computed once.
 func (c *container) digest(part string, h crypto.Hash) ([]byte, error) {
-	key := h.String() + part
+	key := digestOf{part, h}
 	if d, ok := c.digests[key]; ok {
 		return d, nil
 	}
@@ -180,4 +190,14 @@ func (c *container) digest(part string, h crypto.Hash) ([]byte, error) {
 	d := w.Sum(nil)
 	c.digests[key] = d
 	return d, nil
+}
+
+// know takes over the digests that another package has of the same packed bytes.
+func (c *container) know(from *container) {
+	for key, d := range from.digests {
+		a, b := from.byName[trimSlash(key.part)], c.byName[trimSlash(key.part)]
+		if a != nil && b != nil && a.method == b.method && a.crc == b.crc && a.size == b.size && bytes.Equal(a.packed, b.packed) {
+			c.digests[key] = d
+		}
+	}
 }

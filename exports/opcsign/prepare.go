@@ -8,8 +8,9 @@ const (
 )
 
 // prepare makes an unsigned package ready for its first signature: without core properties, .rels parts that say
-// nothing and rules for parts that are not there, and with the signature origin.
-func prepare(pkg []byte, c *container) (*container, error) {
+// nothing and rules for parts that are not there, and with the signature origin. It gives the package as it will be and the
+// changes that make it so; nothing is copied.
+func (c *container) prepare() (*container, []change, error) {
 	drop := map[string]bool{}
 	for _, p := range c.parts() {
 		if c.types.of(p) == coreType {
@@ -52,15 +53,14 @@ func prepare(pkg []byte, c *container) (*container, error) {
 	for p := range drop {
 		changes = append(changes, change{trimSlash(p), nil})
 	}
-	out, err := rewrite(pkg, changes)
+	a, err := c.with(changes)
 	if err != nil {
-		return nil, err
+		return nil, nil, err
 	}
-	ready, err := openContainer(out)
+	ready, err := newContainer(a)
 	if err != nil {
-		return nil, err
+		return nil, nil, err
 	}
-	ready.source = out
 	ready.apart[originPart], ready.apart[originRels] = true, true
-	return ready, nil
+	return ready, changes, nil
 }

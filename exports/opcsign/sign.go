@@ -25,6 +25,7 @@ func Sign(pkg []byte, key crypto.Signer, chain []*x509.Certificate, st Statement
 	if err != nil {
 		return nil, fmt.Errorf("signing: %w", err)
 	}
+	var changes []change
 	if c.traces() {
 		if r := c.verify(nil); !r.Sound() {
 			return nil, refusal(r)
@@ -36,20 +37,24 @@ func Sign(pkg []byte, key crypto.Signer, chain []*x509.Certificate, st Statement
 		if err := c.checkTargets(); err != nil {
 			return nil, err
 		}
-		if c, err = prepare(pkg, c); err != nil {
+		if c, changes, err = c.prepare(); err != nil {
 			return nil, fmt.Errorf("signing: %w", err)
 		}
-		pkg = c.source
 	}
-	out, err := c.add(pkg, key, chain, st)
+	more, err := c.add(key, chain, st)
 	if err != nil {
 		return nil, fmt.Errorf("signing: %w", err)
 	}
-	r, err := Verify(out, nil)
+	out, err := rewrite(pkg, append(changes, more...))
 	if err != nil {
 		return nil, fmt.Errorf("signing: %w", err)
 	}
-	if !r.Sound() {
+	written, err := openContainer(out)
+	if err != nil {
+		return nil, fmt.Errorf("signing: %w", err)
+	}
+	written.know(c) // a million readings are not unpacked twice
+	if r := written.verify(nil); !r.Sound() {
 		return nil, refusal(r)
 	}
 	return out, nil
@@ -128,8 +133,8 @@ func (c *container) checkTargets() error {
 	return nil
 }
 
-// add makes the next signature of a prepared package.
-func (c *container) add(pkg []byte, key crypto.Signer, chain []*x509.Certificate, st Statement) ([]byte, error) {
+// add makes the next signature of a prepared package: what has to change in it.
+func (c *container) add(key crypto.Signer, chain []*x509.Certificate, st Statement) ([]change, error) {
 	n := 1
 	var before []previous
 	for _, part := range c.signatures {
@@ -146,11 +151,11 @@ func (c *container) add(pkg []byte, key crypto.Signer, chain []*x509.Certificate
 	part := fmt.Sprintf("%ssig%d.xml", sigFolder, n)
 	c.types.overrides[lower(part)] = override{part, sigType}
 	rels := append(slices.Clone(c.rels[originRels]), relationship{freeID(c.rels[originRels]), sigRel, fmt.Sprintf("sig%d.xml", n), internal})
-	return rewrite(pkg, []change{
+	return []change{
 		{typesEntry, c.types.bytes()},
 		{trimSlash(originRels), relsBytes(rels)},
 		{trimSlash(part), b},
-	})
+	}, nil
 }
 
 // signValue signs a digest and gives the value in the form of XML signatures.

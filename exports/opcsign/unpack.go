@@ -3,7 +3,9 @@ package opcsign
 import (
 	"bytes"
 	"compress/flate"
+	"errors"
 	"fmt"
+	"hash"
 	"hash/crc32"
 	"io"
 )
@@ -33,32 +35,61 @@ func (e *entry) bounds() error {
 	return nil
 }
 
-// writeTo unpacks the entry. The bytes have to have the size and the check sum of the directory, and the packed bytes
-// have to be used up, so nothing can hide behind them.
+// writeTo unpacks the entry.
 func (e *entry) writeTo(w io.Writer) error {
-	if err := e.bounds(); err != nil {
+	r, err := e.open()
+	if err != nil {
 		return err
 	}
-	packed := bytes.NewReader(e.packed)
-	var r io.Reader = packed
+	_, err = io.Copy(w, r)
+	return err
+}
+
+// open is the entry unpacked as it is read. The bytes have to have the size and the check sum of the directory, and the packed
+// bytes have to be used up, so nothing can hide behind them; where that does not hold, reading to the end fails.
+func (e *entry) open() (io.Reader, error) {
+	if err := e.bounds(); err != nil {
+		return nil, err
+	}
+	if e.flags&1 != 0 || e.method != 0 && e.method != 8 {
+		return nil, e.damaged("another way of packing than deflate")
+	}
+	u := &unpacking{e: e, packed: bytes.NewReader(e.packed), sum: crc32.NewIEEE()}
+	u.from = u.packed
 	if e.method == 8 {
-		r = flate.NewReader(packed)
+		u.from = flate.NewReader(u.packed)
 	}
-	sum := crc32.NewIEEE()
-	n, err := io.Copy(io.MultiWriter(w, sum), io.LimitReader(r, e.size+1))
+	return u, nil
+}
+
+// unpacking is an entry being unpacked.
+type unpacking struct {
+	e      *entry
+	packed *bytes.Reader
+	from   io.Reader
+	sum    hash.Hash32
+	n      int64
+}
+
+func (u *unpacking) Read(p []byte) (int, error) {
+	n, err := u.from.Read(p)
+	_, _ = u.sum.Write(p[:n]) // a hash does not fail
+	u.n += int64(n)
 	switch {
-	case e.flags&1 != 0 || e.method != 0 && e.method != 8:
-		return e.damaged("another way of packing than deflate")
-	case err != nil:
-		return e.damaged(err.Error())
-	case n != e.size:
-		return e.damaged(fmt.Sprintf("%d bytes or more where the directory says %d", n, e.size))
-	case sum.Sum32() != e.crc:
-		return e.damaged(fmt.Sprintf("check sum %08x where the directory says %08x", sum.Sum32(), e.crc))
-	case packed.Len() > 0:
-		return e.damaged(fmt.Sprintf("%d bytes after the packed content", packed.Len()))
+	case u.n > u.e.size:
+		return 0, u.e.damaged(fmt.Sprintf("more than %d bytes where the directory says so many", u.e.size))
+	case err == nil:
+		return n, nil
+	case !errors.Is(err, io.EOF):
+		return 0, u.e.damaged(err.Error())
+	case u.n != u.e.size:
+		return 0, u.e.damaged(fmt.Sprintf("%d bytes where the directory says %d", u.n, u.e.size))
+	case u.sum.Sum32() != u.e.crc:
+		return 0, u.e.damaged(fmt.Sprintf("check sum %08x where the directory says %08x", u.sum.Sum32(), u.e.crc))
+	case u.packed.Len() > 0:
+		return 0, u.e.damaged(fmt.Sprintf("%d bytes after the packed content", u.packed.Len()))
 	}
-	return nil
+	return n, io.EOF
 }
 
 func (e *entry) damaged(what string) error {
@@ -80,20 +111,27 @@ func (e *entry) read() ([]byte, error) {
 // ReadPart reads one part of a package, whether signed or not, within bounds: the file has at most 256 MiB, the part at
 // most 2 GiB, and above 64 MiB at most 200 times its packed size. The name begins with a slash.
 func ReadPart(pkg []byte, name string) ([]byte, error) {
-	a, err := openArchive(pkg)
+	r, _, err := OpenPart(pkg, name)
 	if err != nil {
 		return nil, err
+	}
+	return io.ReadAll(r)
+}
+
+// OpenPart is ReadPart for a part that is read along: a reader and how many bytes it gives. Only reading to its end shows that
+// the part is whole.
+func OpenPart(pkg []byte, name string) (io.Reader, int64, error) {
+	a, err := openArchive(pkg)
+	if err != nil {
+		return nil, 0, err
 	}
 	e := a.byName[trimSlash(name)]
 	switch {
 	case e == nil:
-		return nil, Reason{Code: codePartMissing, Part: name, Text: "found no such part, want it in the package; do choose a record made by this program"}
+		return nil, 0, Reason{Code: codePartMissing, Part: name, Text: "found no such part, want it in the package; do choose a record made by this program"}
 	case e.doubled:
-		return nil, Reason{Code: codeZipDuplicate, Part: name, Text: "found the part twice, want it once; do get the file from its source again"}
+		return nil, 0, Reason{Code: codeZipDuplicate, Part: name, Text: "found the part twice, want it once; do get the file from its source again"}
 	}
-	var b bytes.Buffer
-	if err := e.writeTo(&b); err != nil {
-		return nil, err
-	}
-	return b.Bytes(), nil
+	r, err := e.open()
+	return r, e.size, err
 }
