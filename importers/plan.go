@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 	"regexp"
+	"slices"
 	"strconv"
 	"strings"
 	"unicode/utf8"
@@ -20,6 +21,16 @@ const maxPlan = 4 << 20
 // LoadPlan reads a plan file and checks it to the last key. The name is the one messages begin with. The error is a
 // *PlanError that lists all that is wrong, with the line where it is known.
 func LoadPlan(name string, data []byte) (qa.Plan, error) {
+	return loadPlan(name, data, func(qa.PlanFault) bool { return false })
+}
+
+// LoadDraft reads a plan file as LoadPlan does, but one that may not say yet in which files the readings stand.
+func LoadDraft(name string, data []byte) (qa.Plan, error) { return loadPlan(name, data, StillToCome) }
+
+// StillToCome says whether a fault of a plan is only that a file of readings is not named yet.
+func StillToCome(f qa.PlanFault) bool { return f.Key == "reference.file" || f.Key == "candidate.file" }
+
+func loadPlan(name string, data []byte, allowed func(qa.PlanFault) bool) (qa.Plan, error) {
 	data = bytes.TrimPrefix(data, []byte("\xef\xbb\xbf"))
 	if err := soundText(name, data); err != nil {
 		return qa.Plan{}, err
@@ -33,7 +44,7 @@ func LoadPlan(name string, data []byte) (qa.Plan, error) {
 	if err := decoder.Decode(&plan); err != nil {
 		return qa.Plan{}, syntaxError(name, data, err)
 	}
-	faults := append(keys.zeros(plan), plan.Validate()...)
+	faults := slices.DeleteFunc(append(keys.zeros(plan), plan.Validate()...), allowed)
 	if len(faults) == 0 {
 		return plan, nil
 	}
