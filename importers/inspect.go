@@ -66,7 +66,12 @@ func Inspect(name string, data []byte, sheet, layout string) (Inspection, error)
 
 // Inspect inspects as the function of the name does, under the watch.
 func (w Watched) Inspect(name string, data []byte, sheet, layout string) (Inspection, error) {
-	b, err := w.Open(name, data, "")
+	return w.InspectAs(name, data, qa.ReadingPlan{Layout: layout, Sheet: sheet}, nil)
+}
+
+// InspectAs inspects as the function of the name does, under the watch.
+func (w Watched) InspectAs(name string, data []byte, stated qa.ReadingPlan, all []qa.Characteristic) (Inspection, error) {
+	b, err := w.Open(name, data, stated.Encoding)
 	if err != nil {
 		return Inspection{}, err
 	}
@@ -86,7 +91,7 @@ func (w Watched) Inspect(name string, data []byte, sheet, layout string) (Inspec
 			in.Warnings = append(in.Warnings, qa.Warning{Code: "hidden-sheets", Text: b.File.Name + ": the sheet " + quoted(s.Name) + " is hidden."})
 		}
 	}
-	m, err := w.Propose(b, qa.ReadingPlan{Layout: layout, Sheet: sheet})
+	m, err := w.propose(b, stated, all)
 	if err != nil {
 		return Inspection{}, err
 	}

@@ -31,11 +31,14 @@ type MappedLot struct {
 func Propose(b Book, stated qa.ReadingPlan) (Mapping, error) { return Watched{}.Propose(b, stated) }
 
 // Propose proposes as the function of the name does, under the watch.
-func (w Watched) Propose(b Book, stated qa.ReadingPlan) (Mapping, error) {
+func (w Watched) Propose(b Book, stated qa.ReadingPlan) (Mapping, error) { return w.propose(b, stated, nil) }
+
+func (w Watched) propose(b Book, stated qa.ReadingPlan, all []qa.Characteristic) (Mapping, error) {
 	if !slices.Contains(Layouts, stated.Layout) && stated.Layout != "" {
 		return Mapping{}, planError(b.File.Name, "found the layout %s, want %s; state one of these", quoted(stated.Layout), list(Layouts))
 	}
-	t, err := proposeTable(b, stated, w)
+	h := hints{reading: stated, characteristics: all, whole: true, show: true, watch: w}
+	t, err := proposeTable(b, h)
 	if err != nil {
 		return Mapping{}, err
 	}
@@ -59,7 +62,7 @@ func (w Watched) Propose(b Book, stated qa.ReadingPlan) (Mapping, error) {
 	}
 	m.Lots = []MappedLot{{Name: name, Sheet: t.sheet.Name, Rows: len(t.rows), table: t}}
 	if stated.Sheet == "" {
-		if err := m.alike(b, stated, w); err != nil {
+		if err := m.alike(b, h); err != nil {
 			return Mapping{}, err
 		}
 	}
@@ -67,9 +70,8 @@ func (w Watched) Propose(b Book, stated qa.ReadingPlan) (Mapping, error) {
 }
 
 // proposeTable reads the sheet that is stated, else the first visible one that can be read.
-func proposeTable(b Book, stated qa.ReadingPlan, w Watched) (*table, error) {
-	h := hints{reading: stated, whole: true, show: true, watch: w}
-	if name := stated.Sheet; name != "" {
+func proposeTable(b Book, h hints) (*table, error) {
+	if name := h.reading.Sheet; name != "" {
 		s, ok := b.sheet(name)
 		if !ok {
 			return nil, planError(b.File.Name, "found the sheets %s, want %s; name one of these", list(sheetNames(b.Sheets)), quoted(name))
@@ -99,13 +101,13 @@ func proposeTable(b Book, stated qa.ReadingPlan, w Watched) (*table, error) {
 }
 
 // alike finds further visible sheets with the same headings and no column of lots: then each sheet is a lot.
-func (m *Mapping) alike(b Book, stated qa.ReadingPlan, w Watched) error {
+func (m *Mapping) alike(b Book, h hints) error {
 	first := m.tables[0]
 	for _, s := range b.Sheets {
 		if s.Hidden || s.Name == first.sheet.Name || !slices.ContainsFunc(s.Rows, func(r cells.Row) bool { return slices.ContainsFunc(r.Cells, stored) }) {
 			continue
 		}
-		t, err := newTable(b, s, hints{reading: stated, whole: true, show: true, watch: w})
+		t, err := newTable(b, s, h)
 		if stopped(err) {
 			return err
 		}
