@@ -31,7 +31,9 @@ type MappedLot struct {
 func Propose(b Book, stated qa.ReadingPlan) (Mapping, error) { return Watched{}.Propose(b, stated) }
 
 // Propose proposes as the function of the name does, under the watch.
-func (w Watched) Propose(b Book, stated qa.ReadingPlan) (Mapping, error) { return w.propose(b, stated, nil) }
+func (w Watched) Propose(b Book, stated qa.ReadingPlan) (Mapping, error) {
+	return w.propose(b, stated, nil)
+}
 
 func (w Watched) propose(b Book, stated qa.ReadingPlan, all []qa.Characteristic) (Mapping, error) {
 	if !slices.Contains(Layouts, stated.Layout) && stated.Layout != "" {

@@ -33,12 +33,12 @@ const (
 
 // Parts says which part each column and row of the inspected sheet plays.
 type Parts struct {
-	Columns  map[int]string    // by the number of the column, from 1
-	Headings map[int]string    // of the columns that have one, as a plan names them
-	Rows     map[int]string    // by the number of the row; readings have none
-	Lots     map[int]string    // of each row of readings its lot; "" where the sheet names none
-	Stand    bool              // columns stand under headings: else lots or parts stand side by side, and no column has one part
-	First    int               // the first row of readings
+	Columns  map[int]string // by the number of the column, from 1
+	Headings map[int]string // of the columns that have one, as a plan names them
+	Rows     map[int]string // by the number of the row; readings have none
+	Lots     map[int]string // of each row of readings its lot; "" where the sheet names none
+	Stand    bool           // columns stand under headings: else lots or parts stand side by side, and no column has one part
+	First    int            // the first row of readings
 }
 
 // InspectAs says how a file would be read where some of it is stated: as in a plan's [reading] and, unless empty, its list of

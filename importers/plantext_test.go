@@ -172,7 +172,7 @@ func TestLoadDraftAllowsWhatIsStillToCome(t *testing.T) {
 	}
 	for text, word := range map[string]string{
 		"format = \"lotpair.plan/1\"\n[reference]\n[candidate]\n[criterion]\nalpha = 0.7\nmargin = { absolute = 1 }\n": "alpha",
-		"format = \"lotpair.plan/1\"\n[reference]\n[candidate]\n[criterion]\nalfa = 0.7\n":                              "alfa",
+		"format = \"lotpair.plan/1\"\n[reference]\n[candidate]\n[criterion]\nalfa = 0.7\n":                             "alfa",
 	} {
 		_, err := LoadDraft("plan.toml", []byte(text))
 		wantPlanError(t, err, word)
