@@ -35,9 +35,9 @@ type Series struct {
 
 // Of returns the lot's series of the named characteristic.
 func (l Lot) Of(characteristic string) Series {
-	for _, s := range l.Series {
-		if s.Characteristic == characteristic {
-			return s
+	for i := range l.Series {
+		if l.Series[i].Characteristic == characteristic {
+			return l.Series[i]
 		}
 	}
 	return Series{Characteristic: characteristic}

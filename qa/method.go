@@ -31,6 +31,27 @@ func newSample(side Side, s Series, used []Reading) sample {
 	return out
 }
 
+// without is the sample without the readings at the given places; only with groups does it keep the readings beside their values.
+func (s sample) without(places []int, groups bool) sample {
+	if len(places) == 0 {
+		return s
+	}
+	out := sample{side: s.side, series: s.series, values: make([]float64, 0, len(s.values))}
+	for i, v := range s.values {
+		if slices.Contains(places, i) {
+			continue
+		}
+		out.values = append(out.values, v)
+		if groups {
+			out.used = append(out.used, s.used[i])
+		}
+	}
+	out.sorted = slices.Clone(out.values)
+	slices.Sort(out.sorted)
+	out.summary = stats.SummarizeSorted(out.sorted)
+	return out
+}
+
 // logarithms are the natural logarithms of the values; false where a reading is not above 0.
 func (s sample) logarithms() ([]float64, bool) { return logarithms(s.values) }
 

@@ -19,7 +19,7 @@ func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
 		c.otherRatios()
 		if !paired {
 			c.putBack(ref, cand)
-			c.withoutOutlying(ref, cand)
+			c.withoutOutlying()
 		}
 		c.flips()
 		return
@@ -45,7 +45,7 @@ func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
 	}
 	if !paired {
 		c.putBack(ref, cand)
-		c.withoutOutlying(ref, cand)
+		c.withoutOutlying()
 	}
 	c.flips()
 }
@@ -178,24 +178,10 @@ func (s Series) withBack(i int) Series {
 
 // withoutOutlying compares without the readings that the generalized ESD test calls outlying. It shows how much the verdict
 // rests on them; it is no ground to leave them out.
-func (c *comparison) withoutOutlying(ref, cand Series) {
-	drop := func(s Series, from sample, places []int) Series {
-		out := s
-		out.Readings = nil
-		gone := map[Source]bool{}
-		for _, i := range places {
-			gone[from.used[i].Source] = true
-		}
-		for _, r := range s.Readings {
-			if r.Used() && !gone[r.Source] {
-				out.Readings = append(out.Readings, r)
-			}
-		}
-		return out
-	}
+func (c *comparison) withoutOutlying() {
 	a, b := c.Checks.Reference.outlying, c.Checks.Candidate.outlying
 	if len(a)+len(b) > 0 {
-		c.variant("outlying-removed", drop(ref, c.ref, a), drop(cand, c.cand, b))
+		c.same("outlying-removed", c.Method, c.ref.without(a, c.asked.grouped), c.cand.without(b, c.asked.grouped))
 	}
 }
 

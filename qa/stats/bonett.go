@@ -2,7 +2,6 @@ package stats
 
 import (
 	"math"
-	"slices"
 
 	"lotpair/qa/stats/dist"
 )
@@ -67,8 +66,7 @@ func fourth(x []float64) (ratio, sd float64, err error) {
 		return 0, 0, ErrConstant
 	}
 	n := len(x)
-	sorted := slices.Clone(x)
-	slices.Sort(sorted)
+	sorted := rising(x)
 	cut := min(int(float64(n)/(2*math.Sqrt(float64(n-4)))), (n-1)/2)
 	about := momentsOf(sorted[cut : n-cut])
 	centre := math.Ldexp(about.mean.high, about.exp)

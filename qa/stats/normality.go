@@ -3,7 +3,6 @@ package stats
 import (
 	"errors"
 	"math"
-	"slices"
 
 	"lotpair/qa/stats/dist"
 )
@@ -33,8 +32,7 @@ func ShapiroWilk(x []float64) (Normality, error) {
 	if squares == 0 {
 		return Normality{}, ErrConstant
 	}
-	sorted := slices.Clone(x)
-	slices.Sort(sorted)
+	sorted := rising(x)
 	var line, weights double
 	for i, a := range shapiroWeights(n) {
 		d := m.deviation(sorted[n-1-i]).minus(m.deviation(sorted[i]))

@@ -2,7 +2,6 @@ package stats
 
 import (
 	"math"
-	"slices"
 
 	"lotpair/qa/stats/dist"
 )
@@ -44,9 +43,7 @@ func MannWhitney(ref, cand []float64, level float64, decimals int, null *NullU) 
 	if len(ref) < 2 || len(cand) < 2 {
 		return Ranks{}, ErrTooFew
 	}
-	x, y := slices.Clone(ref), slices.Clone(cand)
-	slices.Sort(x)
-	slices.Sort(y)
+	x, y := rising(ref), rising(cand)
 	twice, ties := merge(x, y)
 	if len(ties) == 1 && ties[0] == len(x)+len(y) {
 		return Ranks{}, ErrConstant

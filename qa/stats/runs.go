@@ -1,7 +1,5 @@
 package stats
 
-import "slices"
-
 // A Runs holds a runs test about the median: the number of stretches of
 // consecutive readings on one side, and the two-sided probability of so few or
 // so many when the order is chance.
@@ -16,8 +14,7 @@ type Runs struct {
 // 147-162, from memory). It needs 2 readings, not all equal. Where readings are
 // left on one side only, there is one run and P is 1.
 func RunsTest(x []float64) (Runs, error) {
-	sorted := slices.Clone(x)
-	slices.Sort(sorted)
+	sorted := rising(x)
 	return RunsAbout(x, MedianOf(sorted))
 }
 

@@ -23,9 +23,17 @@ type Summary struct {
 // those of the numbers given, rounded about once. Numbers near the largest or
 // smallest float64 do not overflow or vanish on the way.
 func Summarize(x []float64) Summary {
+	return SummarizeSorted(rising(x))
+}
+
+// rising is x in rising order, x itself where it is: not to be changed.
+func rising(x []float64) []float64 {
+	if slices.IsSorted(x) {
+		return x
+	}
 	sorted := slices.Clone(x)
 	slices.Sort(sorted)
-	return SummarizeSorted(sorted)
+	return sorted
 }
 
 // SummarizeSorted is Summarize for readings in rising order.

@@ -21,23 +21,44 @@ const mostPixels = 64 << 20
 
 // Image paints a figure at scale pixels a point; its size is the figure's times the scale, rounded up.
 func Image(f figure.Figure, scale float64, p Palette) (*image.NRGBA, error) {
-	w, h := math.Ceil(f.Width*scale), math.Ceil(f.Height*scale)
-	if !(w >= 1 && h >= 1) || w*h > mostPixels {
-		return nil, fmt.Errorf("picture: found %v by %v pixels, want at least 1 by 1 and at most %d altogether; choose another size", w, h, mostPixels)
+	painter, err := NewPainter(p)
+	if err != nil {
+		return nil, err
 	}
+	return painter.Paint(f, scale)
+}
+
+// Painter paints one figure after another in the same room.
+type Painter struct{ canvas }
+
+// NewPainter makes a painter with the colours of a palette.
+func NewPainter(p Palette) (*Painter, error) {
 	fonts, err := newFaces()
 	if err != nil {
 		return nil, err
 	}
-	img := image.NewNRGBA(image.Rect(0, 0, int(w), int(h)))
-	ground(img, p.Paper)
-	c := canvas{img: img, scale: scale, palette: p, fonts: fonts}
+	return &Painter{canvas{palette: p, fonts: fonts}}, nil
+}
+
+// Paint is Image; the picture is good until the next one is painted.
+func (p *Painter) Paint(f figure.Figure, scale float64) (*image.NRGBA, error) {
+	w, h := math.Ceil(f.Width*scale), math.Ceil(f.Height*scale)
+	if !(w >= 1 && h >= 1) || w*h > mostPixels {
+		return nil, fmt.Errorf("picture: found %v by %v pixels, want at least 1 by 1 and at most %d altogether; choose another size", w, h, mostPixels)
+	}
+	if n := 4 * int(w) * int(h); p.img == nil || cap(p.img.Pix) < n {
+		p.img = image.NewNRGBA(image.Rect(0, 0, int(w), int(h)))
+	} else {
+		p.img = &image.NRGBA{Pix: p.img.Pix[:n], Stride: 4 * int(w), Rect: image.Rect(0, 0, int(w), int(h))}
+	}
+	p.scale = scale
+	ground(p.img, p.palette.Paper)
 	for _, m := range f.Marks {
-		if err := c.mark(m); err != nil {
+		if err := p.mark(m); err != nil {
 			return nil, err
 		}
 	}
-	return img, nil
+	return p.img, nil
 }
 
 // ground lays paper under a picture; image/draw takes a slow path to images of this kind, a colour at a time.
@@ -70,6 +91,7 @@ type canvas struct {
 	scale   float64
 	palette Palette
 	fonts   *faces
+	raster  vector.Rasterizer
 	mask    []uint8
 }
 
@@ -138,7 +160,8 @@ func (c *canvas) fill(col color.NRGBA, outlines ...polygon) {
 	if box.Empty() {
 		return
 	}
-	r := vector.NewRasterizer(box.Dx(), box.Dy())
+	r := &c.raster
+	r.Reset(box.Dx(), box.Dy())
 	ox, oy := float64(box.Min.X), float64(box.Min.Y)
 	for _, p := range outlines {
 		for i, q := range p {
@@ -177,6 +200,10 @@ func (c *canvas) maskOf(w, h int) *image.Alpha {
 func over(p []uint8, col color.NRGBA, cover uint32) {
 	const full = 255 * 255
 	a := uint32(col.A) * cover // of full
+	if a == full {
+		p[0], p[1], p[2], p[3] = col.R, col.G, col.B, 255
+		return
+	}
 	under := uint32(p[3]) * 255 * (full - a) / full
 	sum := a + under
 	if sum == 0 {
