@@ -56,8 +56,21 @@ type paragraph struct {
 	muted   bool
 }
 
+// saidAt is what the bench says at one width, until it says something else.
+type saidAt struct {
+	width float32
+	all   []paragraph
+}
+
 // paragraphs is what the bench says, wrapped.
 func (w *window) paragraphs(width float32) []paragraph {
+	if w.said.all == nil || w.said.width != width {
+		w.said = saidAt{width, w.wrapped(width)}
+	}
+	return w.said.all
+}
+
+func (w *window) wrapped(width float32) []paragraph {
 	v, room := w.view.bench, width-2*margin
 	if w.state.Drafting {
 		v.Headline, v.Paragraphs, v.Whole, v.Caution, v.Read = w.drafted.Headline, w.drafted.Paragraphs, nil, "", ""

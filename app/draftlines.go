@@ -17,6 +17,9 @@ type draftLine struct {
 	name string
 	show func(p qa.Plan, at int) string
 	set  func(p *qa.Plan, at int, text string) error
+
+	typed func(text string)
+	left  func()
 }
 
 // draftLines are the lines of the criterion by their names.
@@ -50,7 +53,7 @@ func (w *window) newDraftLines() draftLines {
 	out := draftLines{}
 	add := func(name string, show func(qa.Plan, int) string, set func(*qa.Plan, int, string) error) {
 		d := &draftLine{name: name, show: show, set: set}
-		d.line = w.newLine(func(text string) { w.typedDraft(d, text) }, func() { w.leftDraft(d) })
+		d.typed, d.left = func(text string) { w.typedDraft(d, text) }, func() { w.leftDraft(d) }
 		out[name] = d
 	}
 	words := func(name string, of func(*qa.Plan) *string) {
@@ -113,16 +116,26 @@ func (w *window) newDraftLines() draftLines {
 	})
 	shift := &draftLine{name: "true difference"}
 	shift.show = func(qa.Plan, int) string { return shownNumber(&w.shift, 1) }
-	shift.line = w.newLine(func(text string) {
+	shift.typed, shift.left = func(text string) {
 		v, err := number(text)
 		w.shift = 0
 		if err == nil && v != nil {
 			w.shift = *v
 		}
 		w.show()
-	}, func() {})
+	}, func() {}
 	out[shift.name] = shift
 	return out
+}
+
+// laid makes the lines to type in when the first criterion is written: each takes the toolkit a font of its own, and the window
+// opens sooner without them.
+func (w *window) laid(all draftLines) {
+	for _, d := range all {
+		if d.line == nil {
+			d.line = w.newLine(d.typed, d.left)
+		}
+	}
 }
 
 // typedDraft shows at once what was typed comes to. It is no act yet.

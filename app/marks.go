@@ -50,5 +50,6 @@ func (w *window) line(at int) *chart.Drawing {
 		d = chart.New(func(width, _ float64) figure.Figure { return figure.SpineAt(c, width) }, w.palette())
 		w.lines[at] = d
 	}
+	d.SetPalette(w.palette())
 	return d
 }

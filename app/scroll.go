@@ -25,6 +25,7 @@ type sheet struct {
 	tapped  func(at fyne.Position)
 	key     func(k fyne.KeyName) // nil: the keys scroll
 	focused bool
+	placing bool // its place is being changed: it is drawn when that is done
 }
 
 func newScrolled(s *sheet) *scrolled {
@@ -38,9 +39,10 @@ func newScrolled(s *sheet) *scrolled {
 
 // place puts the region where it belongs and draws it.
 func (s *scrolled) place(p *pen, x, y, w, h float32) {
-	s.content.width = w
+	s.content.width, s.content.placing = w, true
 	p.put(s.scroll, x, y, w, h)
 	s.scroll.Refresh()
+	s.content.placing = false
 	s.content.Refresh()
 }
 
@@ -66,6 +68,9 @@ func (s *sheet) CreateRenderer() fyne.WidgetRenderer {
 	return &painter{
 		of: s, palette: s.palette,
 		draw: func(p *pen, size fyne.Size) {
+			if s.placing {
+				return
+			}
 			top := s.window.Offset.Y
 			s.paint(p, size, top, top+s.window.Size().Height)
 		},

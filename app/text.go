@@ -68,14 +68,19 @@ func cut(r []rune, n int) string { return strings.TrimRight(string(r[:n]), " ,;.
 // that is wider than a line is broken where it must be: nothing is ever cut off.
 func (f font) wrap(s string, first, width float32) []string {
 	var out []string
-	room, line := first, ""
+	room, line, length := first, "", float32(0)
+	space := f.width(" ")
 	for _, word := range words(s) {
-		next := word
+		// Words are measured alone, because most come again; a line is measured whole only where it is nearly full.
+		next, longer := word, f.width(word)
 		if line != "" {
-			next = line + " " + word
+			next, longer = line+" "+word, length+space+longer
 		}
-		if f.width(next) <= room {
-			line = next
+		if longer > room-4 {
+			longer = f.width(next)
+		}
+		if longer <= room {
+			line, length = next, longer
 			continue
 		}
 		if line != "" || len(out) == 0 && first < width {
@@ -85,7 +90,7 @@ func (f font) wrap(s string, first, width float32) []string {
 			head := f.broken(word, width)
 			out, word = append(out, head), strings.TrimPrefix(word, head)
 		}
-		line = word
+		line, length = word, f.width(word)
 	}
 	return append(out, line)
 }

@@ -50,7 +50,8 @@ type window struct {
 	leftRows, spineRows, rightRows, sentences, problem *scrolled
 	listRows, draftRows, sheetRows, sheetLedger        *scrolled
 	picture                                            *chart.Drawing         // of the bench
-	lines                                              map[int]*chart.Drawing // of the spine, by characteristic
+	lines                                              map[int]*chart.Drawing // of the spine, by characteristic, until the result changes
+	said                                               saidAt                 // the sentences beside the bench as they are wrapped
 	cursor                                             map[qa.Side]int        // the reading that the keys are on
 	rows                                               map[qa.Side]*pageRows  // as they stand, until the state changes
 	act                                                buttons
@@ -247,7 +248,11 @@ func (w *window) pages() map[qa.Side]desk.PageView {
 	s := w.state
 	now := paged{s.Number, s.Selected, w.entry.ID, s.Path, s.Open, s.Compared, s.Drafting}
 	if w.view.pages == nil || now != w.paged {
+		before := w.paged
 		w.paged, w.rows = now, map[qa.Side]*pageRows{}
+		if before.selected = now.selected; before != now {
+			w.lines = map[int]*chart.Drawing{}
+		}
 		return map[qa.Side]desk.PageView{qa.Reference: s.Page(qa.Reference), qa.Candidate: s.Page(qa.Candidate)}
 	}
 	return w.view.pages
@@ -265,6 +270,7 @@ func (w *window) showDraft() {
 		return
 	}
 	w.drafted = s.Draft(w.shift)
+	w.laid(w.draft)
 	for _, d := range w.draft {
 		if d.name == "true difference" {
 			continue
@@ -296,7 +302,7 @@ func (w *window) show() {
 	}
 	w.pointed(figure.Mark{}, fyne.Position{}, false)
 	w.showDraft()
-	w.lines = map[int]*chart.Drawing{}
+	w.said = saidAt{}
 	w.picture.SetPicture(w.benchPicture(), w.palette())
 	b := &w.act
 	b.order.label = w.view.spine.Order
@@ -321,7 +327,9 @@ func (w *window) show() {
 		w.root.Layout.Layout(w.root.Objects, w.root.Size())
 	}
 	for _, r := range []*region{w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot, w.sheet} {
-		r.Refresh()
+		if r.Visible() {
+			r.Refresh()
+		}
 	}
 	w.revealSelected()
 }

@@ -4,6 +4,7 @@ package chart
 
 import (
 	"image"
+	"image/color"
 	"math"
 
 	"fyne.io/fyne/v2"
@@ -46,6 +47,14 @@ func (d *Drawing) SetPicture(p Picture, palette draw.Palette) {
 	d.Refresh()
 }
 
+// SetPalette shows the same picture in other colours.
+func (d *Drawing) SetPalette(palette draw.Palette) {
+	if palette != d.palette {
+		d.palette = palette
+		d.Refresh()
+	}
+}
+
 // Figure is what is shown now.
 func (d *Drawing) Figure() figure.Figure {
 	if d.picture == nil {
@@ -63,21 +72,29 @@ func (d *Drawing) CreateRenderer() fyne.WidgetRenderer {
 
 // paint draws the figure on w by h pixels. A figure larger than the drawing is made smaller as a whole.
 func (d *Drawing) paint(w, h int) image.Image {
-	out := image.NewNRGBA(image.Rect(0, 0, max(w, 1), max(h, 1)))
-	for i := 0; i < len(out.Pix); i += 4 {
-		out.Pix[i], out.Pix[i+1], out.Pix[i+2], out.Pix[i+3] = d.palette.Paper.R, d.palette.Paper.G, d.palette.Paper.B, 0xFF
-	}
 	f := d.Figure()
 	d.remember(f)
-	if f.Width <= 0 || f.Height <= 0 || w <= 0 || h <= 0 {
-		return out
+	if f.Width > 0 && f.Height > 0 && w > 0 && h > 0 {
+		if img, err := draw.Image(f, math.Min(float64(w)/f.Width, float64(h)/f.Height), d.palette); err == nil {
+			return onPaper(img, w, h, d.palette.Paper)
+		}
 	}
-	img, err := draw.Image(f, math.Min(float64(w)/f.Width, float64(h)/f.Height), d.palette)
-	if err != nil {
-		return out // the size has no picture: the paper stays empty
+	return onPaper(&image.NRGBA{}, max(w, 1), max(h, 1), d.palette.Paper) // the size has no picture: the paper stays empty
+}
+
+// onPaper is a picture on paper of w by h. The painter covers all of its picture: colours that let nothing through are the same
+// bytes in either of the two ways of keeping them, and the toolkit takes the one way as it is.
+func onPaper(img *image.NRGBA, w, h int, paper color.NRGBA) *image.RGBA {
+	if img.Rect.Dx() == w && img.Rect.Dy() == h {
+		return &image.RGBA{Pix: img.Pix, Stride: img.Stride, Rect: img.Rect}
 	}
-	for y := range min(h, img.Bounds().Dy()) {
-		copy(out.Pix[y*out.Stride:(y+1)*out.Stride], img.Pix[y*img.Stride:(y+1)*img.Stride])
+	out := image.NewRGBA(image.Rect(0, 0, w, h))
+	for i := 0; i < len(out.Pix); i += 4 {
+		out.Pix[i], out.Pix[i+1], out.Pix[i+2], out.Pix[i+3] = paper.R, paper.G, paper.B, 0xFF
+	}
+	wide := 4 * min(w, img.Rect.Dx())
+	for y := range min(h, img.Rect.Dy()) {
+		copy(out.Pix[y*out.Stride:][:wide], img.Pix[y*img.Stride:][:wide])
 	}
 	return out
 }
