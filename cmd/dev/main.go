@@ -26,7 +26,7 @@ var tasks = []task{
 	{"refdata", "compute the reference values again with R and show what changed", refdata},
 	{"cases", "write the worked example in testdata/demo again", cases},
 	{"screens", "render the window and the sheets of the worked example into out/screens", screens},
-	{"bench", "run the benchmarks and print the ratios to their peers of the same run", bench},
+	{"bench", "run the benchmarks and print the ratios to their peers of the same run; bench window: the real window", bench},
 	{"fuzz", "run the fuzz targets: fuzz [--minutes N] [PART OF A NAME]", fuzz},
 	{"package", "build the programs of a release into out/release: package VERSION", release},
 }

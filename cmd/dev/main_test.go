@@ -55,20 +55,6 @@ func TestMissing(t *testing.T) {
 	}
 }
 
-func TestRatios(t *testing.T) {
-	const output = `goos: linux
-BenchmarkRead/ours-2     	      10	 200 ns/op	 5 B/op
-BenchmarkRead/peer-2     	      10	 100 ns/op	 5 B/op
-BenchmarkRead/ours-2     	      10	 400 ns/op	 5 B/op
-BenchmarkRead/peer-2     	      10	 100 ns/op	 5 B/op
-BenchmarkAlone-2         	      10	 100 ns/op	 5 B/op
-`
-	want := []string{"Read: 3.00 times its peer's time (medians of 2 runs)"}
-	if got := ratios(output); !slices.Equal(got, want) {
-		t.Errorf("got %v, want %v", got, want)
-	}
-}
-
 func TestVersionForm(t *testing.T) {
 	for version, want := range map[string]bool{"1.0.0": true, "v0.2.10": true, "1.0.0-rc.1": true, "1.0": false, "": false, "1.0.0 x": false} {
 		if got := versionForm.MatchString(version); got != want {
