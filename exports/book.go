@@ -48,10 +48,11 @@ func (b book) parts() (map[string]part, error) {
 	f := excelize.NewFile()
 	defer f.Close()
 	w := &looks{file: f}
+	var hand painter
 	if err := f.SetDefaultFont(workbookFont); err != nil {
 		return nil, fmt.Errorf("workbook: %w", err)
 	}
-	data := map[string]func(io.Writer) error{} // part name to what writes its cells
+	data := map[string]sheetWriter{} // by the name of the part
 	for i := range b.sheets {
 		s := &b.sheets[i]
 		if i == 0 {
@@ -61,10 +62,10 @@ func (b book) parts() (map[string]part, error) {
 		} else if _, err := f.NewSheet(s.name); err != nil {
 			return nil, fmt.Errorf("workbook: %w", err)
 		}
-		if err := b.frame(f, *s); err != nil {
+		if err := b.frame(f, *s, &hand); err != nil {
 			return nil, fmt.Errorf("workbook, sheet %s: %w", s.name, err)
 		}
-		data[fmt.Sprintf("xl/worksheets/sheet%d.xml", i+1)] = func(to io.Writer) error { return writeSheetData(to, s, w) }
+		data[fmt.Sprintf("xl/worksheets/sheet%d.xml", i+1)] = sheetWriter{s.cols(), func(to io.Writer) error { return writeSheetData(to, s, w) }}
 	}
 	for k := range look(lastLook + 1) { // the styles stand in the file before the cells are written
 		if _, err := w.id(k); err != nil {
@@ -77,24 +78,21 @@ func (b book) parts() (map[string]part, error) {
 	if err := f.SetDocProps(&excelize.DocProperties{Creator: "Lotpair", Title: cleanText(b.title), Created: epoch, Modified: epoch}); err != nil {
 		return nil, fmt.Errorf("workbook: %w", err)
 	}
-	var out bytes.Buffer
-	if err := f.Write(&out); err != nil {
+	written := collector{}
+	if err := f.SetZipWriter(func(io.Writer) excelize.ZipWriter { return written }).Write(io.Discard); err != nil {
 		return nil, fmt.Errorf("workbook: %w", err)
 	}
-	return assemble(out.Bytes(), data, b.record)
+	return assemble(written, data, b.record)
 }
 
 // frame sets everything of a sheet but its cells.
-func (b book) frame(f *excelize.File, s sheet) error {
-	for i := 0; i < len(s.widths); {
-		last := i // of the columns of one width: the library goes over all of them at every call
-		for last+1 < len(s.widths) && s.widths[last+1] == s.widths[i] {
-			last++
+func (b book) frame(f *excelize.File, s sheet, hand *painter) error {
+	if len(s.pictures) > 0 { // they are placed by the columns, which else are written by us: the library takes long for many
+		for i, w := range s.widths {
+			if err := f.SetColWidth(s.name, cells.Letters(i+1), cells.Letters(i+1), w); err != nil {
+				return err
+			}
 		}
-		if err := f.SetColWidth(s.name, cells.Letters(i+1), cells.Letters(last+1), s.widths[i]); err != nil {
-			return err
-		}
-		i = last + 1
 	}
 	if s.frozen > 0 || s.columns > 0 {
 		pane := "bottomLeft"
@@ -126,7 +124,7 @@ func (b book) frame(f *excelize.File, s sheet) error {
 		}
 	}
 	for _, p := range s.pictures {
-		if err := p.lay(f, s.name); err != nil {
+		if err := p.lay(f, s.name, hand); err != nil {
 			return err
 		}
 	}
@@ -134,8 +132,8 @@ func (b book) frame(f *excelize.File, s sheet) error {
 }
 
 // lay paints the picture and puts it over its cells.
-func (p picture) lay(f *excelize.File, sheet string) error {
-	b, err := p.paint()
+func (p picture) lay(f *excelize.File, sheet string, hand *painter) error {
+	b, err := p.paint(hand)
 	if err != nil {
 		return err
 	}

@@ -1,14 +1,8 @@
 package exports
 
 import (
-	"bytes"
-	"fmt"
-	"image"
-	"image/png"
-
 	"lotpair/qa"
 	"lotpair/qa/figure"
-	"lotpair/qa/figure/draw"
 )
 
 // maxSpineLines is how many lines the summary's picture takes; with more the words of the table must do.
@@ -26,32 +20,29 @@ func spinePicture(r qa.Result, row int) picture {
 	return picture{
 		row: row, col: spineColumn, width: width - 2, height: spineRowHeight*float64(len(r.Characteristics)) - 1,
 		about: "The decision interval of each characteristic on the scale of its own margin",
-		paint: func() ([]byte, error) { return spines(r, width) },
+		paint: func(p *painter) ([]byte, error) { return p.spines(r, width) },
 	}
 }
 
-func spines(r qa.Result, width float64) ([]byte, error) {
+func (p *painter) spines(r qa.Result, width float64) ([]byte, error) {
 	const scale = 1.25 // some 200 pixels an inch
 	pitch := spineRowHeight / width * figure.SpineWidth
 	all := figure.Figure{Width: figure.SpineWidth, Height: pitch * float64(len(r.Characteristics))}
 	for i, c := range r.Characteristics {
 		appendBelow(&all, figure.Spine(c), pitch*float64(i)+(pitch-figure.SpineHeight)/2)
 	}
-	palette := draw.Light()
-	palette.Paper.A = 0 // the table's lines show through
-	img, err := draw.Image(all, scale, palette)
+	full, err := p.full(all, scale)
 	if err != nil {
-		return nil, fmt.Errorf("workbook, picture: %w", err)
+		return nil, err
 	}
-	return encodePNG(img)
-}
-
-func encodePNG(img image.Image) ([]byte, error) {
-	var b bytes.Buffer
-	if err := (&png.Encoder{CompressionLevel: png.BestSpeed}).Encode(&b, img); err != nil {
-		return nil, fmt.Errorf("workbook, picture: %w", err)
+	img := p.blank(full.Rect.Dx(), full.Rect.Dy())
+	p.colours.take(img.Pix, full)
+	for i, c := range img.Pix { // the table's lines show through
+		if c == whiteIndex {
+			img.Pix[i] = clearIndex
+		}
 	}
-	return b.Bytes(), nil
+	return p.encode(img)
 }
 
 // appendBelow puts the marks of a figure into another, so far down.

@@ -5,8 +5,11 @@ import (
 	"bytes"
 	"compress/flate"
 	"encoding/xml"
+	"errors"
 	"fmt"
 	"io"
+	"io/fs"
+	"slices"
 	"sort"
 	"strings"
 )
@@ -42,20 +45,27 @@ const (
 	corePart         = "docProps/core.xml"
 )
 
+// collector takes the parts that the spreadsheet library writes as they are, in the place of a zip archive.
+type collector map[string]*bytes.Buffer
+
+// Create begins a part.
+func (c collector) Create(name string) (io.Writer, error) {
+	c[name] = &bytes.Buffer{}
+	return c[name], nil
+}
+
+// AddFS is of no use here; the library's interface asks for it.
+func (c collector) AddFS(fs.FS) error { return errors.ErrUnsupported }
+
+// Close ends the package.
+func (c collector) Close() error { return nil }
+
 // assemble puts the sheets' cells and the record's parts among the parts that the spreadsheet library wrote, and the content
 // types in order, so that the same record gives the same bytes.
-func assemble(pkg []byte, data map[string]func(io.Writer) error, record func(io.Writer) error) (map[string]part, error) {
-	in, err := zip.NewReader(bytes.NewReader(pkg), int64(len(pkg)))
-	if err != nil {
-		return nil, fmt.Errorf("workbook: %w", err)
-	}
+func assemble(written collector, data map[string]sheetWriter, record func(io.Writer) error) (map[string]part, error) {
 	parts := map[string]part{}
-	for _, f := range in.File {
-		b, err := readEntry(f)
-		if err != nil {
-			return nil, fmt.Errorf("workbook, part %s: %w", f.Name, err)
-		}
-		parts[f.Name] = part{bytes: b}
+	for name, b := range written {
+		parts[name] = part{bytes: b.Bytes()}
 	}
 	if record != nil {
 		const rels = "xl/_rels/workbook.xml.rels"
@@ -73,7 +83,7 @@ func assemble(pkg []byte, data map[string]func(io.Writer) error, record func(io.
 		return nil, fmt.Errorf("workbook, part %s: %w", contentTypesPart, err)
 	}
 	parts[contentTypesPart] = part{bytes: types}
-	for name, cells := range data {
+	for name, s := range data {
 		before, after, err := aroundCells(parts[name].bytes)
 		if err != nil {
 			return nil, fmt.Errorf("workbook, part %s: %w", name, err)
@@ -82,7 +92,10 @@ func assemble(pkg []byte, data map[string]func(io.Writer) error, record func(io.
 			if _, err := w.Write(before); err != nil {
 				return err
 			}
-			if err := cells(w); err != nil {
+			if _, err := w.Write(s.columns); err != nil {
+				return err
+			}
+			if err := s.cells(w); err != nil {
 				return err
 			}
 			_, err := w.Write(after)
@@ -101,8 +114,17 @@ func readEntry(f *zip.File) ([]byte, error) {
 	return io.ReadAll(r)
 }
 
-// aroundCells is what stands before and after the <sheetData> element that the library wrote.
+// sheetWriter is what of a sheet is not the library's.
+type sheetWriter struct {
+	columns []byte // the <cols> element
+	cells   func(io.Writer) error
+}
+
+// aroundCells is what stands before and after the <cols> and <sheetData> elements that the library wrote.
 func aroundCells(part []byte) (before, after []byte, err error) {
+	if i, j := bytes.Index(part, []byte("<cols>")), bytes.Index(part, []byte("</cols>")); i >= 0 && j > i {
+		part = slices.Concat(part[:i], part[j+len("</cols>"):])
+	}
 	const open, shut, empty = "<sheetData>", "</sheetData>", "<sheetData/>"
 	if i := bytes.Index(part, []byte(empty)); i >= 0 {
 		return part[:i], part[i+len(empty):], nil

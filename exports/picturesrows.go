@@ -3,10 +3,10 @@ package exports
 import (
 	"fmt"
 	"image"
+	"math"
 
 	"lotpair/qa"
 	"lotpair/qa/figure"
-	"lotpair/qa/figure/draw"
 )
 
 // The sheet Pictures: blocks of a heading and a plot, three to a page. Many plots go into one image, because every part of the
@@ -43,7 +43,7 @@ func picturesSheet(rec qa.Record) sheet {
 			some := cs[i:min(i+plotsImage, len(cs))]
 			s.pictures = append(s.pictures, picture{
 				row: len(s.rows) + 1, col: 1, width: plotWidth * plotSize, height: blockHeight * float64(len(some)),
-				about: "Facing plots: readings of both lots back to back", paint: func() ([]byte, error) { return plots(some, rec.Readings) },
+				about: "Facing plots: readings of both lots back to back", paint: func(p *painter) ([]byte, error) { return p.plots(some, rec.Readings) },
 			})
 		}
 		s.addTall(plotHead, wide(nameWithUnit(c)+": "+string(c.Verdict), groupLook, 7))
@@ -61,23 +61,22 @@ const (
 )
 
 // plots paints plots below each other as they lie over the rows, with nothing over their headings.
-func plots(cs []qa.Comparison, r qa.Readings) ([]byte, error) {
-	const block = blockHeight / plotSize // in points of the figure
-	all := figure.Figure{Width: plotWidth, Height: block * float64(len(cs))}
+func (p *painter) plots(cs []qa.Comparison, r qa.Readings) ([]byte, error) {
+	const (
+		block, head = blockHeight / plotSize * plotScale, plotHead / plotSize * plotScale // pixels
+		width       = plotWidth * plotScale
+	)
+	var img *image.Paletted
 	for i, c := range cs {
-		appendBelow(&all, figure.FacingAt(onUnit(c), r, plotWidth, plotHeight), block*float64(i)+plotHead/plotSize)
+		plot, err := p.full(figure.FacingAt(onUnit(c), r, plotWidth, plotHeight), plotScale)
+		if err != nil {
+			return nil, err
+		}
+		if i == 0 {
+			img = p.blank(width, int(math.Ceil(block*float64(len(cs)))))
+		}
+		at := int(math.Round(block*float64(i)+head)) * img.Stride
+		p.colours.take(img.Pix[at:at+plot.Rect.Dx()*plot.Rect.Dy()], plot)
 	}
-	p := draw.Light()
-	p.Paper = white
-	full, err := draw.Image(all, plotScale, p)
-	if err != nil {
-		return nil, fmt.Errorf("workbook, picture: %w", err)
-	}
-	img := image.NewPaletted(full.Bounds(), paletteOf(p))
-	newQuantizer(img.Palette).take(img, full)
-	for i := range cs { // nothing over the headings and their rules; a plot has more room than that at its top
-		from, to := int(block*float64(i)*plotScale), int((block*float64(i)+plotHead/plotSize+1)*plotScale)
-		clear(img.Pix[from*img.Stride : to*img.Stride])
-	}
-	return encodePNG(img)
+	return p.encode(img)
 }

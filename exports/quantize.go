@@ -1,10 +1,17 @@
 package exports
 
 import (
+	"encoding/binary"
 	"image"
 	"image/color"
 
 	"lotpair/qa/figure/draw"
+)
+
+// Places of the first two colours of a palette.
+const (
+	clearIndex = iota
+	whiteIndex
 )
 
 var white = color.NRGBA{R: 0xFF, G: 0xFF, B: 0xFF, A: 0xFF}
@@ -50,16 +57,24 @@ func newQuantizer(p color.Palette) *quantizer {
 
 func keyOf(p []byte) int { return int(p[0]>>3)<<10 | int(p[1]>>3)<<5 | int(p[2]>>3) }
 
-// take gives every pixel of an opaque picture its nearest colour.
-func (q *quantizer) take(to *image.Paletted, from *image.NRGBA) {
-	for i := range to.Pix { // both are of one size, without gaps between their lines
-		p := from.Pix[4*i : 4*i+3 : 4*i+3]
-		key := keyOf(p)
-		if q.known[key] == 0 {
-			q.known[key] = q.nearest(p)
+// take gives every pixel of an opaque picture its nearest colour. Neighbours mostly have the same.
+func (q *quantizer) take(to []uint8, from *image.NRGBA) {
+	last, index := binary.LittleEndian.Uint32(from.Pix), q.of(from.Pix)
+	for i := range to { // both are of one size, without gaps between their lines
+		p := from.Pix[4*i : 4*i+4 : 4*i+4]
+		if v := binary.LittleEndian.Uint32(p); v != last {
+			last, index = v, q.of(p)
 		}
-		to.Pix[i] = q.known[key]
+		to[i] = index
 	}
+}
+
+func (q *quantizer) of(p []byte) uint8 {
+	key := keyOf(p)
+	if q.known[key] == 0 {
+		q.known[key] = q.nearest(p)
+	}
+	return q.known[key]
 }
 
 func (q *quantizer) nearest(p []byte) uint8 {

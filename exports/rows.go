@@ -96,7 +96,7 @@ type picture struct {
 	row, col      int
 	width, height float64 // points
 	about         string
-	paint         func() ([]byte, error)
+	paint         func(p *painter) ([]byte, error)
 }
 
 // lines are all rows of the sheet with their numbers. A row is good until the next one.

@@ -3,6 +3,7 @@ package exports
 import (
 	"bytes"
 	"encoding/xml"
+	"fmt"
 	"io"
 	"strconv"
 	"strings"
@@ -15,6 +16,18 @@ import (
 // The cells are written here and not by the spreadsheet library: it cuts numbers to 15 significant digits, and the record
 // needs the double that was computed. Everything around the cells (columns, merged areas, panes, printing, pictures, styles)
 // is the library's.
+
+// cols is the <cols> element of a sheet (ISO/IEC 29500-1, 18.3.1.17).
+func (s *sheet) cols() []byte {
+	if len(s.widths) == 0 {
+		return nil
+	}
+	b := []byte("<cols>")
+	for i, w := range s.widths {
+		b = fmt.Appendf(b, `<col min="%d" max="%[1]d" width="%v" customWidth="1"/>`, i+1, w)
+	}
+	return append(b, "</cols>"...)
+}
 
 // writeSheetData writes the <sheetData> element of a sheet (ISO/IEC 29500-1, 18.3.1.80): numbers in the shortest form that
 // reads back as the same double, texts inline.

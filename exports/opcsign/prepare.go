@@ -44,20 +44,20 @@ func (c *container) prepare() (*container, []change, error) {
 	delete(c.types.overrides, lower(originPart))
 	c.types.prune(append(kept, originPart, originRels))
 
-	changes := []change{
+	contents := []content{
 		{typesEntry, c.types.bytes()},
 		{trimSlash(rootRels), relsBytes(root)},
 		{trimSlash(originPart), []byte{}},
 		{trimSlash(originRels), relsBytes(nil)},
 	}
 	for p := range drop {
-		changes = append(changes, change{trimSlash(p), nil})
+		contents = append(contents, content{trimSlash(p), nil})
 	}
-	a, err := c.with(changes)
+	changes, err := packed(contents)
 	if err != nil {
 		return nil, nil, err
 	}
-	ready, err := newContainer(a)
+	ready, err := newContainer(c.with(changes))
 	if err != nil {
 		return nil, nil, err
 	}

@@ -7,10 +7,47 @@ import (
 	"hash/crc32"
 )
 
-// change is an entry to write anew, or to leave out where content is nil.
+// content is a part to write, or to leave out where its bytes are nil.
+type content struct {
+	name  string
+	bytes []byte
+}
+
+// change is a part as it is packed, or nil where it is left out.
 type change struct {
-	name    string
-	content []byte
+	name string
+	*entry
+}
+
+// packed packs contents. Equal content gives equal bytes.
+func packed(contents []content) ([]change, error) {
+	var b bytes.Buffer
+	f, err := flate.NewWriter(&b, flate.DefaultCompression) // one for all: each takes a megabyte
+	if err != nil {
+		return nil, err
+	}
+	var out []change
+	for _, c := range contents {
+		if c.bytes == nil {
+			out = append(out, change{name: c.name})
+			continue
+		}
+		e := &entry{name: c.name, crc: crc32.ChecksumIEEE(c.bytes), size: int64(len(c.bytes))}
+		if len(c.bytes) > 0 {
+			b.Reset()
+			f.Reset(&b)
+			if _, err := f.Write(c.bytes); err != nil {
+				return nil, err
+			}
+			if err := f.Close(); err != nil {
+				return nil, err
+			}
+			e.method, e.packed = zip.Deflate, bytes.Clone(b.Bytes())
+		}
+		e.packSize = len(e.packed)
+		out = append(out, change{c.name, e})
+	}
+	return out, nil
 }
 
 // byLast are the changes by name, where the last of a name holds, and the names in their order.
@@ -27,35 +64,28 @@ func byLast(changes []change) (map[string]change, []string) {
 
 // with is the archive as the changes make it, the other entries as they are packed: entries that exist are replaced in their
 // place, new ones come last in the order given.
-func (a *archive) with(changes []change) (*archive, error) {
+func (a *archive) with(changes []change) *archive {
 	last, names := byLast(changes)
 	out, done := &archive{byName: map[string]*entry{}}, map[string]bool{}
-	put := func(c change) error {
-		done[c.name] = true
-		if c.content == nil {
-			return nil
+	put := func(e *entry) {
+		if e != nil {
+			out.entries = append(out.entries, e)
 		}
-		e, err := packed(c)
-		out.entries = append(out.entries, e)
-		return err
 	}
 	for _, e := range a.entries {
-		c, changed := last[e.name]
-		if !changed {
-			out.entries = append(out.entries, e)
-		} else if err := put(c); err != nil {
-			return nil, err
+		if c, changed := last[e.name]; changed {
+			done[e.name] = true
+			e = c.entry
 		}
+		put(e)
 	}
 	for _, n := range names {
 		if !done[n] {
-			if err := put(last[n]); err != nil {
-				return nil, err
-			}
+			put(last[n].entry)
 		}
 	}
 	out.checkNames()
-	return out, nil
+	return out
 }
 
 // rewrite copies an archive entry by entry as it is packed, but for the changes.
@@ -68,7 +98,9 @@ func rewrite(pkg []byte, changes []change) ([]byte, error) {
 	var out bytes.Buffer
 	room := len(pkg) + 1<<10
 	for _, c := range last {
-		room += len(c.content) + 1<<8
+		if c.entry != nil {
+			room += c.packSize + 1<<8
+		}
 	}
 	out.Grow(room)
 	w := zip.NewWriter(&out)
@@ -79,16 +111,16 @@ func rewrite(pkg []byte, changes []change) ([]byte, error) {
 		switch {
 		case !changed:
 			err = w.Copy(f)
-		case c.content != nil:
-			err = writeEntry(w, c)
+		case c.entry != nil:
+			err = writeEntry(w, c.entry)
 		}
 		if err != nil {
 			return nil, err
 		}
 	}
 	for _, n := range names {
-		if c := last[n]; !done[n] && c.content != nil {
-			if err := writeEntry(w, c); err != nil {
+		if c := last[n]; !done[n] && c.entry != nil {
+			if err := writeEntry(w, c.entry); err != nil {
 				return nil, err
 			}
 		}
@@ -99,34 +131,9 @@ func rewrite(pkg []byte, changes []change) ([]byte, error) {
 	return out.Bytes(), nil
 }
 
-// packed makes an entry of content.
-func packed(c change) (*entry, error) {
-	e := &entry{name: c.name, crc: crc32.ChecksumIEEE(c.content), size: int64(len(c.content)), packed: c.content}
-	if len(c.content) > 0 {
-		var b bytes.Buffer
-		f, err := flate.NewWriter(&b, flate.DefaultCompression)
-		if err != nil {
-			return nil, err
-		}
-		if _, err := f.Write(c.content); err != nil {
-			return nil, err
-		}
-		if err := f.Close(); err != nil {
-			return nil, err
-		}
-		e.method, e.packed = zip.Deflate, b.Bytes()
-	}
-	e.packSize = len(e.packed)
-	return e, nil
-}
-
-// writeEntry packs an entry here, so its sizes stand in the local header and no descriptor follows: readers that do not
-// look at the directory can read it. Without a time, equal content gives equal bytes.
-func writeEntry(w *zip.Writer, c change) error {
-	e, err := packed(c)
-	if err != nil {
-		return err
-	}
+// writeEntry writes an entry packed here, so its sizes stand in the local header and no descriptor follows: readers that do not
+// look at the directory can read it.
+func writeEntry(w *zip.Writer, e *entry) error {
 	to, err := w.CreateRaw(&zip.FileHeader{Name: e.name, Method: e.method, CRC32: e.crc, UncompressedSize64: uint64(e.size), CompressedSize64: uint64(e.packSize)})
 	if err != nil {
 		return err

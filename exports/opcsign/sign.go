@@ -151,11 +151,11 @@ func (c *container) add(key crypto.Signer, chain []*x509.Certificate, st Stateme
 	part := fmt.Sprintf("%ssig%d.xml", sigFolder, n)
 	c.types.overrides[lower(part)] = override{part, sigType}
 	rels := append(slices.Clone(c.rels[originRels]), relationship{freeID(c.rels[originRels]), sigRel, fmt.Sprintf("sig%d.xml", n), internal})
-	return []change{
+	return packed([]content{
 		{typesEntry, c.types.bytes()},
 		{trimSlash(originRels), relsBytes(rels)},
 		{trimSlash(part), b},
-	}, nil
+	})
 }
 
 // signValue signs a digest and gives the value in the form of XML signatures.
