@@ -172,7 +172,7 @@ func (t *table) trimLots() {
 	}
 	t.rows = nil
 	for _, l := range lots {
-		t.rows = append(t.rows, trimmedRows(by[l])...)
+		t.rows = append(t.rows, t.trimmedRows(by[l])...)
 	}
 }
 

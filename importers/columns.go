@@ -67,6 +67,9 @@ func (t *table) wanted() []row {
 }
 
 func (t *table) cell(r row, col int) cells.Cell {
+	if r.turn != nil {
+		return r.turn.cell(t.sheet.Rows[r.at], col)
+	}
 	if t.turned {
 		return r.cells[col-1]
 	}

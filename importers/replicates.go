@@ -4,7 +4,6 @@ import (
 	"regexp"
 	"slices"
 
-	"lotpair/importers/cells"
 	"lotpair/qa"
 )
 
@@ -79,11 +78,12 @@ func (t *table) replicateRows(all [][]column, n int) {
 	head, _ := t.sheet.Row(t.heading)
 	rows, limits, physical, summary := t.rows, t.limits, t.columns, t.summary
 	lot, part, order, group, pair := t.lot, t.part, t.order, t.group, t.pair
-	at := func(r cells.Row, col int) cells.Cell {
-		if col == 0 {
-			return cells.Cell{}
+	turns := make([]*turning, n)
+	for k := range turns {
+		turns[k] = &turning{cols: []int{lot, part, order, group, pair}}
+		for _, cols := range all {
+			turns[k].cols = append(turns[k].cols, cols[k].col)
 		}
-		return r.At(col)
 	}
 	t.columns, t.rows, t.limits, t.summary, t.turned = nil, nil, map[int][]limit{}, nil, true
 	t.lot, t.part, t.order, t.group = min(lot, 1)*turnedLot, turnedPart, min(order, 1)*turnedOrder, min(group, 1)*turnedGroup
@@ -98,31 +98,20 @@ func (t *table) replicateRows(all [][]column, n int) {
 		}
 		t.say("%s is read from %s of repeat readings.", quoted(name), qa.Count(n, "column", "columns"))
 	}
-	turn := func(r cells.Row, name string, k int) row {
-		out := row{lot: name, cells: []cells.Cell{at(r, lot), at(r, part), at(r, order), at(r, group), at(r, pair)}}
-		for _, cols := range all {
-			out.cells = append(out.cells, r.At(cols[k].col))
-		}
-		return out
-	}
 	for _, r := range rows {
-		for k := range n {
-			t.rows = append(t.rows, turn(t.sheet.Rows[r.at], r.lot, k))
+		for _, turn := range turns {
+			t.rows = append(t.rows, row{at: r.at, lot: r.lot, turn: turn})
 		}
 	}
 	for _, s := range summary {
-		for k := range n {
-			for i, c := range turn(t.sheet.Rows[s], "", k).cells[turnedFixed:] {
-				if stored(c) {
-					t.feet = append(t.feet, footCell{cell: c, col: turnedFixed + i + 1})
-				}
-			}
+		for _, turn := range turns {
+			t.addFeet(row{at: s, turn: turn})
 		}
 		t.mark(s, roleSummary)
 	}
 	t.markTurned()
 	for _, r := range t.rows {
-		t.give(r.cells[turnedLot-1], roleLot)
+		t.give(t.cell(r, turnedLot), roleLot)
 	}
 	for _, r := range rows {
 		for j, c := range t.sheet.Rows[r.at].Cells {

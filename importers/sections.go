@@ -128,28 +128,25 @@ func (t *table) turnSections() error {
 		p.head, p.col = head.At(p.col), turnedFixed+len(t.columns)+1
 		t.columns = append(t.columns, p)
 	}
-	turn := func(r cells.Row) row {
-		var s section
-		for _, x := range t.sections {
-			if x.heading < r.Number {
-				s = x
-			}
-		}
-		out := row{lot: s.lot, cells: []cells.Cell{s.title, r.At(part), r.At(order), r.At(group), r.At(pair)}}
+	turns := make([]*turning, len(t.sections))
+	for i, s := range t.sections {
+		turns[i] = &turning{lot: s.title, cols: []int{0, part, order, group, pair}}
 		for _, c := range t.columns {
-			out.cells = append(out.cells, r.At(c.head.Col))
+			turns[i].cols = append(turns[i].cols, c.head.Col)
 		}
-		return out
+	}
+	turn := func(at int) row { // under the last heading above it
+		i := len(t.sections) - 1
+		for i > 0 && t.sections[i].heading >= t.sheet.Rows[at].Number {
+			i--
+		}
+		return row{at: at, lot: t.sections[i].lot, turn: turns[i]}
 	}
 	for _, r := range rows {
-		t.rows = append(t.rows, turn(t.sheet.Rows[r.at]))
+		t.rows = append(t.rows, turn(r.at))
 	}
 	for _, at := range summary {
-		for k, c := range turn(t.sheet.Rows[at]).cells[turnedFixed:] {
-			if stored(c) {
-				t.feet = append(t.feet, footCell{cell: c, col: turnedFixed + k + 1})
-			}
-		}
+		t.addFeet(turn(at))
 		t.mark(at, roleSummary)
 	}
 	t.markTurned()

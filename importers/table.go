@@ -32,9 +32,10 @@ type column struct {
 
 // row is one part of a lot: a row of the sheet, or in a turned table the cells wherever they stand.
 type row struct {
-	at    int          // index into the sheet's rows; of a turned table without meaning
+	at    int          // index into the sheet's rows; without meaning where cells holds the row
 	lot   string       // white space joined; empty where the sheet is one lot
-	cells []cells.Cell // of a turned table, by its columns from 1
+	cells []cells.Cell // of a turned table, by its columns from 1; nil where turned says where they stand
+	turn  *turning
 }
 
 // table is one sheet as it is read: which row and column plays which part. Every cell of the sheet has a role.

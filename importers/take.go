@@ -20,7 +20,7 @@ func (r *reader) takeReadings() error {
 			if err := r.watch.told(taking, c.Name, int64(i*len(r.out.Characteristics)+k), int64(2*len(r.out.Characteristics))); err != nil {
 				return err
 			}
-			series := qa.Series{Characteristic: c.Name, Rows: len(s.rows)}
+			series := qa.Series{Characteristic: c.Name, Rows: len(s.rows), Readings: make([]qa.Reading, 0, len(s.rows))}
 			var thousands []string
 			for n, row := range s.rows {
 				if err := r.watch.stop(taking, c.Name, n); err != nil {
@@ -101,11 +101,11 @@ func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row ro
 // give gives one cell its role; a cell that is not stored has none. A cell that holds several readings keeps the role that
 // says most: the last of them.
 func (t *table) give(c cells.Cell, as role) {
-	at, found := slices.BinarySearchFunc(t.sheet.Rows, c.Row, func(r cells.Row, n int) int { return r.Number - n })
+	at, found := t.sheet.IndexOf(c.Row)
 	if !found {
 		return
 	}
-	j, found := slices.BinarySearchFunc(t.sheet.Rows[at].Cells, c.Col, func(x cells.Cell, n int) int { return x.Col - n })
+	j, found := t.sheet.Rows[at].IndexOf(c.Col)
 	if !found || !stored(t.sheet.Rows[at].Cells[j]) {
 		return
 	}

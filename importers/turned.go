@@ -17,6 +17,31 @@ const (
 	turnedFixed = turnedPair
 )
 
+// turning says where in the row of the sheet the cells of a turned table's row stand. It is shared by all rows of a lot: a
+// cell of its own for each would be most of what a tall sheet takes.
+type turning struct {
+	lot  cells.Cell // names the lot where no column does
+	cols []int      // of the sheet, by the table's columns from 1; 0 where there is none
+}
+
+func (s *turning) cell(r cells.Row, col int) cells.Cell {
+	switch at := s.cols[col-1]; {
+	case at > 0:
+		return r.At(at)
+	case col == turnedLot:
+		return s.lot
+	}
+	return cells.Cell{}
+}
+
+// width is how many columns a row of a turned table has.
+func (r row) width() int {
+	if r.turn != nil {
+		return len(r.turn.cols)
+	}
+	return len(r.cells)
+}
+
 // footCell is one cell of a summary in a turned table.
 type footCell struct {
 	cell cells.Cell
@@ -92,8 +117,9 @@ func (r *reader) giveRestTurned(t *table) {
 // markTurned gives every cell of the rows the role that it has until it is read.
 func (t *table) markTurned() {
 	for _, r := range t.rows {
-		for i, c := range r.cells {
-			switch i + 1 {
+		for col := turnedLot; col <= r.width(); col++ {
+			c := t.cell(r, col)
+			switch col {
 			case turnedLot:
 			case turnedPart:
 				t.give(c, rolePart)
@@ -102,7 +128,7 @@ func (t *table) markTurned() {
 			case turnedGroup:
 				t.give(c, roleGroup)
 			case turnedPair:
-				if c != r.cells[turnedPart-1] {
+				if c != t.cell(r, turnedPart) {
 					t.give(c, rolePair)
 				}
 			default:
@@ -133,7 +159,8 @@ func (t *table) unmergedCells(rows []row, col int) error {
 func (t *table) hiddenCells() (rows, cols int) {
 	hiddenRows, hiddenCols := map[int]bool{}, map[int]bool{}
 	for _, r := range t.rows {
-		for _, c := range r.cells[turnedFixed:] {
+		for col := turnedFixed + 1; col <= r.width(); col++ {
+			c := t.cell(r, col)
 			if !hiddenCols[c.Col] && t.sheet.HiddenCol(c.Col) {
 				hiddenCols[c.Col] = true
 			}
@@ -149,13 +176,23 @@ func (t *table) hiddenCells() (rows, cols int) {
 }
 
 // trimmedRows takes the rows off the end of a lot that hold nothing in any of the measurements: lots are of unequal lengths.
-func trimmedRows(rows []row) []row {
-	for len(rows) > 0 && !slices.ContainsFunc(rows[len(rows)-1].cells[turnedFixed:], func(c cells.Cell) bool {
+func (t *table) trimmedRows(rows []row) []row {
+	for len(rows) > 0 && !t.anyMeasured(rows[len(rows)-1], func(c cells.Cell) bool {
 		return filledText(c) != "" || c.Kind == cells.FormulaNoValue
 	}) {
 		rows = rows[:len(rows)-1]
 	}
 	return rows
+}
+
+// anyMeasured says whether one of the measurements of a turned table's row is such.
+func (t *table) anyMeasured(r row, such func(cells.Cell) bool) bool {
+	for col := turnedFixed + 1; col <= r.width(); col++ {
+		if such(t.cell(r, col)) {
+			return true
+		}
+	}
+	return false
 }
 
 // setUnit keeps the unit of each lot of a turned table's column; it is the column's where all lots have one.

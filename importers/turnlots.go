@@ -234,71 +234,60 @@ func (t *table) turnBlock(i int, b block, rows []row, names []string, where map[
 			*p.into = p.turned
 		}
 	}
-	var taken []int // the column of each characteristic
+	turn := &turning{lot: b.lot, cols: []int{0, part, order, group, pair}}
 	for _, name := range names {
 		if slices.ContainsFunc(t.columns, func(c column) bool { return c.name == name }) {
-			taken = append(taken, where[name][i].col)
+			turn.cols = append(turn.cols, where[name][i].col)
 		}
 	}
-	at := func(r cells.Row, col int) cells.Cell {
-		if col == 0 {
-			return cells.Cell{}
-		}
-		return r.At(col)
-	}
-	turn := func(r cells.Row) row {
-		out := row{lot: filledText(b.lot), cells: make([]cells.Cell, 0, turnedFixed+len(taken))}
-		out.cells = append(out.cells, b.lot, at(r, part), at(r, order), at(r, group), at(r, pair))
-		for _, col := range taken {
-			out.cells = append(out.cells, at(r, col))
-		}
-		return out
-	}
-	var lot []row
+	name := filledText(b.lot)
+	lot := make([]row, 0, len(rows))
 	for _, r := range rows {
-		lot = append(lot, turn(t.sheet.Rows[r.at]))
+		lot = append(lot, row{at: r.at, lot: name, turn: turn})
 	}
-	lot = t.withoutBlockFeet(trimmedRows(lot), own.part > 0)
-	t.rows = append(t.rows, trimmedRows(lot)...)
+	lot = t.withoutBlockFeet(t.trimmedRows(lot), own.part > 0)
+	t.rows = append(t.rows, t.trimmedRows(lot)...)
 	for _, s := range t.summary {
-		for k, c := range turn(t.sheet.Rows[s]).cells[turnedFixed:] {
-			if stored(c) {
-				t.feet = append(t.feet, footCell{cell: c, col: turnedFixed + k + 1})
-			}
+		t.addFeet(row{at: s, turn: turn})
+	}
+}
+
+// addFeet keeps the cells of a row as those of a summary.
+func (t *table) addFeet(r row) (at []string) {
+	for col := turnedFixed + 1; col <= r.width(); col++ {
+		if c := t.cell(r, col); stored(c) {
+			t.feet = append(t.feet, footCell{cell: c, col: col})
+			at = append(at, c.Name())
 		}
 	}
+	return at
 }
 
 // withoutBlockFeet takes formulas below a lot of readings that are no formulas off its end: a mean without a label.
 func (t *table) withoutBlockFeet(lot []row, ownPart bool) []row {
 	computed := func(r row) bool {
 		some := false
-		for _, c := range r.cells[turnedFixed:] {
-			if filledText(c) != "" || c.Kind == cells.FormulaNoValue {
+		for col := turnedFixed + 1; col <= r.width(); col++ {
+			if c := t.cell(r, col); filledText(c) != "" || c.Kind == cells.FormulaNoValue {
 				if some = c.Formula; !some {
 					return false
 				}
 			}
 		}
-		return some && !(ownPart && filledText(r.cells[turnedPart-1]) != "")
+		return some && !(ownPart && filledText(t.cell(r, turnedPart)) != "")
 	}
 	n := len(lot)
 	for n > 0 && computed(lot[n-1]) {
 		n--
 	}
 	if n == 0 || n == len(lot) || slices.ContainsFunc(lot[:n], func(r row) bool {
-		return slices.ContainsFunc(r.cells[turnedFixed:], func(c cells.Cell) bool { return c.Formula })
+		return t.anyMeasured(r, func(c cells.Cell) bool { return c.Formula })
 	}) {
 		return lot
 	}
 	var at []string
 	for _, r := range lot[n:] {
-		for k, c := range r.cells[turnedFixed:] {
-			if stored(c) {
-				t.feet = append(t.feet, footCell{cell: c, col: turnedFixed + k + 1})
-				at = append(at, c.Name())
-			}
-		}
+		at = append(at, t.addFeet(r)...)
 	}
 	t.say("formulas without a label below the readings of %s not taken as readings: %s.", quoted(lot[0].lot), join2(at))
 	return lot[:n]

@@ -1,5 +1,7 @@
 package cells
 
+import "slices"
+
 // Kind says what a cell holds.
 type Kind uint8
 
@@ -83,23 +85,33 @@ func (s Sheet) At(col, row int) Cell {
 
 // Row finds a stored row by its number.
 func (s Sheet) Row(number int) (Row, bool) {
-	low, high := 0, len(s.Rows)
-	for low < high {
-		mid := int(uint(low+high) >> 1)
-		if s.Rows[mid].Number < number {
-			low = mid + 1
-		} else {
-			high = mid
-		}
-	}
-	if low < len(s.Rows) && s.Rows[low].Number == number {
-		return s.Rows[low], true
+	if i, ok := s.IndexOf(number); ok {
+		return s.Rows[i], true
 	}
 	return Row{}, false
 }
 
+// IndexOf finds where in Rows a row stands by its number.
+func (s *Sheet) IndexOf(number int) (int, bool) {
+	if i := number - 1; uint(i) < uint(len(s.Rows)) && s.Rows[i].Number == number { // no row before it is missing
+		return i, true
+	}
+	return slices.BinarySearchFunc(s.Rows, number, func(r Row, number int) int { return r.Number - number })
+}
+
 // At is the row's cell in the column; a blank cell where nothing is stored.
 func (r Row) At(col int) Cell {
+	if i, ok := r.IndexOf(col); ok {
+		return r.Cells[i]
+	}
+	return Cell{Row: r.Number, Col: col}
+}
+
+// IndexOf finds where in Cells the cell of a column stands.
+func (r *Row) IndexOf(col int) (int, bool) {
+	if i := col - 1; uint(i) < uint(len(r.Cells)) && r.Cells[i].Col == col { // no cell before it is missing
+		return i, true
+	}
 	low, high := 0, len(r.Cells)
 	for low < high {
 		mid := int(uint(low+high) >> 1)
@@ -109,10 +121,7 @@ func (r Row) At(col int) Cell {
 			high = mid
 		}
 	}
-	if low < len(r.Cells) && r.Cells[low].Col == col {
-		return r.Cells[low]
-	}
-	return Cell{Row: r.Number, Col: col}
+	return low, low < len(r.Cells) && r.Cells[low].Col == col
 }
 
 // HiddenCol says whether a column is hidden.
