@@ -72,7 +72,7 @@ func (b *button) CreateRenderer() fyne.WidgetRenderer {
 }
 
 func (b *button) paint(p *pen, size fyne.Size) {
-	ink, ground := p.Text, color.NRGBA{}
+	ink, ground := p.Text, color.Color(color.Transparent) // which the toolkit does not draw
 	if b.kind == main {
 		ink, ground = p.Paper, p.Text
 	}
@@ -80,7 +80,7 @@ func (b *button) paint(p *pen, size fyne.Size) {
 		ink = p.MutedText
 	}
 	if b.disabled {
-		ink, ground = p.MutedText, color.NRGBA{}
+		ink, ground = p.MutedText, color.Color(color.Transparent)
 	}
 	r := p.box(0, 0, size.Width, size.Height, ground)
 	r.CornerRadius = 3

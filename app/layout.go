@@ -36,7 +36,6 @@ func (l windowLayout) Layout(_ []fyne.CanvasObject, size fyne.Size) {
 	over := w.state.Sheet != nil // a file lies over the window
 	open := w.state.Open && !over
 	top, bottom := float32(headerHeight), size.Height-footHeight
-	place(w.paper, 0, 0, size.Width, size.Height, true)
 	place(w.header, 0, 0, size.Width, headerHeight, !over)
 	place(w.foot, 0, bottom, size.Width, footHeight, !over)
 	banner := w.bannerHeight(size.Width)

@@ -32,7 +32,9 @@ type Options struct {
 // Run opens the window and returns when it is closed: what the user did, an act a line.
 func Run(a fyne.App, o Options) []string {
 	r, said, err := openRegister(o.Register)
-	w := newWindow(a, o.Build, wanted(o.Dark), r)
+	l := wanted(o.Dark)
+	l.clears = true
+	w := newWindow(a, o.Build, l, r)
 	w.win.SetMaster()
 	w.win.CenterOnScreen()
 	a.Lifecycle().SetOnStarted(func() {

@@ -60,7 +60,6 @@ func (w *window) paintSheet(p *pen, size fyne.Size) {
 		return
 	}
 	v := w.sheetSaid
-	p.box(0, 0, size.Width, size.Height, p.Paper)
 	status := p.ending(v.Status, size.Width-margin, 34, fontPlain, p.Text)
 	p.text(fontTitle.middle(v.Title, status-2*margin), margin, 34, fontTitle, p.Text)
 	p.text(fontPlain.fit(v.Sub, size.Width-2*margin), margin, 55, fontPlain, p.MutedText)

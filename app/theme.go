@@ -14,6 +14,7 @@ import (
 // look is the theme: ink on paper, and the same roles on a dark ground. Fonts and icons are the toolkit's own (Noto Sans).
 type look struct {
 	forced *fyne.ThemeVariant // nil follows the system
+	clears bool               // the window is cleared by the toolkit's GL painter
 }
 
 func (l look) variant(v fyne.ThemeVariant) fyne.ThemeVariant {
@@ -49,7 +50,12 @@ func (l look) Color(name fyne.ThemeColorName, v fyne.ThemeVariant) color.Color {
 	v = l.variant(v)
 	p := palette(v)
 	switch name {
-	case theme.ColorNameBackground, theme.ColorNameOverlayBackground, theme.ColorNameMenuBackground, theme.ColorNameInputBackground, theme.ColorNameHeaderBackground:
+	case theme.ColorNameBackground:
+		if l.clears {
+			return cleared(p.Paper)
+		}
+		return p.Paper
+	case theme.ColorNameOverlayBackground, theme.ColorNameMenuBackground, theme.ColorNameInputBackground, theme.ColorNameHeaderBackground:
 		return p.Paper
 	case theme.ColorNameForeground, theme.ColorNamePrimary, theme.ColorNameHyperlink, theme.ColorNameError, theme.ColorNameWarning, theme.ColorNameSuccess:
 		return p.Text
@@ -67,6 +73,12 @@ func (l look) Color(name fyne.ThemeColorName, v fyne.ThemeVariant) color.Color {
 		return faint(p.Text, 0x18)
 	}
 	return theme.DefaultTheme().Color(name, v)
+}
+
+// cleared is a colour such that the window has it when it is cleared: the toolkit (2.7) divides by 255² there, not by 65535, and a
+// box of paper over the whole window would cost ten milliseconds a frame without a graphics processor.
+func cleared(c color.NRGBA) color.RGBA64 {
+	return color.RGBA64{R: uint16(c.R) * 0xFF, G: uint16(c.G) * 0xFF, B: uint16(c.B) * 0xFF, A: 0xFFFF}
 }
 
 // Font implements fyne.Theme.

@@ -44,7 +44,7 @@ type window struct {
 	dialog dialog.Dialog // the one that is open, nil where none is
 
 	root                                               *fyne.Container
-	paper, header, banner, left, spine, right, bench   *region
+	header, banner, left, spine, right, bench          *region
 	start, foot, sheet, tip                            *region
 	tipText                                            string // of the reading that the pointer is on
 	leftRows, spineRows, rightRows, sentences, problem *scrolled
@@ -87,8 +87,6 @@ func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
 	w.win = a.NewWindow("Lotpair")
 	w.win.SetPadded(false)
 	w.makeButtons()
-	// The toolkit's own ground is a shade off its theme's colour.
-	w.paper = newRegion(w.palette, func(p *pen, s fyne.Size) { p.box(0, 0, s.Width, s.Height, p.Paper) })
 	w.header = newRegion(w.palette, w.paintHeader)
 	w.banner = newRegion(w.palette, w.paintBanner)
 	// What stands in a region while the criterion is written, and what stands there once it is decided.
@@ -121,7 +119,7 @@ func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
 	w.tip = newRegion(w.palette, w.paintTip)
 	w.tip.Hide()
 	// The order of the objects is the order of the Tab key.
-	w.root = container.New(windowLayout{w}, w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot, w.sheet, w.tip)
+	w.root = container.New(windowLayout{w}, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot, w.sheet, w.tip)
 	w.win.SetContent(w.root)
 	w.win.Resize(fyne.NewSize(1280, 800))
 	w.win.Canvas().SetOnTypedKey(w.typed)
@@ -326,7 +324,7 @@ func (w *window) show() {
 	if w.root.Size().Width > 0 {
 		w.root.Layout.Layout(w.root.Objects, w.root.Size())
 	}
-	for _, r := range []*region{w.paper, w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot, w.sheet} {
+	for _, r := range []*region{w.header, w.banner, w.left, w.spine, w.right, w.bench, w.start, w.foot, w.sheet} {
 		if r.Visible() {
 			r.Refresh()
 		}
