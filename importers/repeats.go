@@ -13,40 +13,44 @@ import (
 const maxRepeats = 500
 
 // averageRepeats makes one reading of several rows of one part in a lot, where the plan names the column of the parts: their
-// mean, with the cells and texts of all of them. Readings left out have no part in it. Repeats beyond the first are counted.
+// mean, with the cells and texts of all of them. A reading left out has no part in it; those of a part that one entry of the
+// plan leaves out together are one reading left out. Repeats beyond the first are counted.
 func (r *reader) averageRepeats() error {
 	if r.plan.Reading.PartColumn == "" {
 		return nil
 	}
 	for i := range r.sides {
 		s := &r.sides[i]
-		most, least, parts := 0, 0, 0
+		most, least := 0, 0
 		for k := range s.lot.Series {
 			series := &s.lot.Series[k]
-			by := map[[2]string][]int{}
+			by := map[repeatOf][]int{}
 			for j, x := range series.Readings {
-				if x.Used() {
-					by[partOf(x)] = append(by[partOf(x)], j)
+				if of, ok := r.repeatOf(s.table, x); ok {
+					by[of] = append(by[of], j)
 				}
 			}
 			for _, n := range series.NonDetected {
-				if at := by[[2]string{n.Group, n.Part}]; len(at) > 1 || len(at) == 1 && n.Substitute == nil {
+				if at := by[repeatOf{part: [2]string{n.Group, n.Part}}]; len(at) > 1 || len(at) == 1 && n.Substitute == nil {
 					return planError(n.Source.String(), "found %s among the repeat readings of the part %s, want numbers to average; name the cell or the part's others under exclude with a reason", quoted(n.Source.Text), quoted(n.Part))
 				}
 			}
 			if len(by) == len(series.Readings) {
 				continue
 			}
-			averaged, err := s.average(series, by)
+			averaged, err := r.average(s, series, by)
 			if err != nil {
 				return err
 			}
-			for _, at := range by {
+			for of, at := range by {
+				if of.entry > 0 {
+					continue
+				}
 				if most = max(most, len(at)); least == 0 || len(at) < least {
 					least = len(at)
 				}
 			}
-			series.Readings, parts = averaged, max(parts, len(by))
+			series.Readings = averaged
 		}
 		if most < 2 {
 			continue
@@ -63,13 +67,30 @@ func (r *reader) averageRepeats() error {
 // partOf is a part's id within its group.
 func partOf(x qa.Reading) [2]string { return [2]string{x.Group, x.Part} }
 
+// repeatOf is what readings have in common that are averaged: the part, and the entry of the plan that leaves them out
+// together; 0 for readings used.
+type repeatOf struct {
+	part  [2]string
+	entry int
+}
+
+// repeatOf says with which others a reading is averaged; not where it alone is left out.
+func (r *reader) repeatOf(t *table, x qa.Reading) (repeatOf, bool) {
+	if x.Used() {
+		return repeatOf{part: partOf(x)}, true
+	}
+	n := r.entryOf(t, x.Source)
+	return repeatOf{part: partOf(x), entry: n}, n > 0
+}
+
 // average replaces the readings of each part by their mean, in the place of the first.
-func (s *lotSide) average(series *qa.Series, by map[[2]string][]int) ([]qa.Reading, error) {
+func (r *reader) average(s *lotSide, series *qa.Series, by map[repeatOf][]int) ([]qa.Reading, error) {
 	var out []qa.Reading
 	for j, x := range series.Readings {
-		at := by[partOf(x)]
+		of, ok := r.repeatOf(s.table, x)
+		at := by[of]
 		switch {
-		case !x.Used() || len(at) == 1:
+		case !ok || len(at) == 1:
 			out = append(out, x)
 			continue
 		case x.Part == "":
