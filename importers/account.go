@@ -16,6 +16,9 @@ const (
 // finish accounts for every cell, puts the ledger in the order of the file and gathers what was said.
 func (r *reader) finish() {
 	for _, t := range r.tables {
+		t.warnHidden(func(c cells.Cell) bool {
+			return slices.ContainsFunc(r.exclusions, func(x exclusion) bool { return x.table == t && x.col == c.Col && x.row == c.Row })
+		})
 		used := map[int]bool{}
 		for _, s := range r.sides {
 			if s.table == t {
@@ -44,26 +47,19 @@ func (r *reader) finish() {
 			continue
 		}
 		done[b.File.Name] = true
-		var hidden, visible []string
+		var hidden []cells.Sheet
+		var visible []string
 		for _, sheet := range b.Sheets {
 			if slices.ContainsFunc(r.tables, func(t *table) bool { return t.book.File.Name == b.File.Name && t.sheet.Name == sheet.Name }) {
 				continue
 			}
 			if sheet.Hidden {
-				hidden = append(hidden, sheet.Name)
+				hidden = append(hidden, sheet)
 			}
 			if !sheet.Hidden {
 				visible = append(visible, sheet.Name)
 			}
-			n := 0
-			for _, row := range sheet.Rows {
-				for _, c := range row.Cells {
-					if stored(c) {
-						n++
-					}
-				}
-			}
-			if n > 0 {
+			if n := cellCount(sheet); n > 0 {
 				r.out.Account = append(r.out.Account, qa.Account{File: b.File.Name, Sheet: sheet.Name, As: asNotRead, Cells: n})
 			}
 		}
@@ -72,7 +68,7 @@ func (r *reader) finish() {
 		}
 		if len(hidden) > 0 {
 			r.out.Warnings = append(r.out.Warnings, qa.Warning{Code: "hidden-sheets", Text: b.File.Name + ": " +
-				qa.Count(len(hidden), "hidden sheet", "hidden sheets") + " not read: " + list(hidden) + "."})
+				qa.Count(len(hidden), "hidden sheet", "hidden sheets") + " not read: " + sheetsHeld(hidden) + "; sheet under [reading] picks one."})
 		}
 	}
 	r.sortLedger()

@@ -109,6 +109,32 @@ func cellCases() []layoutCase {
 	hidden := []layoutFile{{name: "own.xlsx", sheets: []sheetOf{{name: "Data", rows: long(), hide: map[int]bool{5: true, 9: true}}, {name: "raw", hidden: true, rows: long()}}}}
 	add("n15", "hidden rows and a hidden sheet", hidden, plain, d1.with(func(w *layoutWant) { w.warnings = []string{"hidden-rows", "hidden-sheets"} }))
 
+	marked := long()
+	for i := range marked {
+		marked[i] = append(marked[i], nil, "")
+		marked[i][3], marked[i][4] = "ok", "ab"
+	}
+	marked[0][3], marked[0][4] = "Status", "Operator"
+	marked[4][3], marked[8][3] = "reject", "reject"
+	fifteen := long()
+	for i := range 3 {
+		fifteen = append(fifteen, []any{"REF-0417", num(fmt.Sprint(13 + i)), num("12.2")}, []any{"CAND-0931", num(fmt.Sprint(13 + i)), num("12.2")})
+	}
+	rejects := []layoutFile{{name: "own.xlsx", sheets: []sheetOf{
+		{name: "Data", rows: marked, hide: map[int]bool{5: true, 9: true}, cols: []int{4}, filter: "A1:E25"}, {name: "raw", very: true, rows: fifteen},
+	}}}
+	told := []string{"hidden-rows", "hidden-columns", "hidden-sheets", "reject-marks"}
+	add("n15-rejects", "rows hidden by a filter, a hidden column of reject marks, a very hidden sheet with 15 values a lot: n 12, all told", rejects, plain, d1.with(func(w *layoutWant) {
+		w.warnings = told
+		w.texts = []string{"(5, 9)", "(C5, C9)", `D "Status"`, `"reject" in D5, "reject" in D9`, `"raw" (93 cells)`, "exclude"}
+	}))
+	add("n15-decided", "the same with the decision of the user: the two readings left out", rejects, planFor("own.xlsx", "exclude = [{ cell = \"Data!C5\", reason = \"reject\" }, { cell = \"Data!C9\", reason = \"reject\" }]", ""), layoutWant{
+		n: [2]int{10, 12}, mean: [2]float64{(12*d1MeanReference - 12.007 - 12.009) / 10, d1MeanCandidate}, texts: []string{"no reading in them is used"},
+	})
+	add("n15-raw", "and with the very hidden sheet picked", rejects, planFor("own.xlsx", "sheet = \"raw\"", ""), layoutWant{
+		n: [2]int{15, 15}, mean: [2]float64{(12*d1MeanReference + 36.6) / 15, (12*d1MeanCandidate + 36.6) / 15}, warnings: []string{"hidden-sheets"},
+	})
+
 	microns := []layoutFile{{name: "ref.csv", text: string(lotFile("Bore dia [mm]", d1Reference))}, {name: "cand.csv", text: string(lotFile("Bore dia [µm]", d1CandidateMicron))}}
 	add("n19", "the candidate as deviations in micrometres", microns, two("\nunit = \"µm\"\nvalues = \"deviation\""), d1.with(func(w *layoutWant) { w.warnings = []string{"converted"} }))
 	add("n19-ask", "the same without a word on it", microns, two(""), layoutWant{fault: []string{"cand.csv!B1", `"µm"`, "0.001"}})

@@ -44,6 +44,9 @@ type sheetOf struct {
 	name   string
 	rows   [][]any
 	hidden bool
+	very   bool   // very hidden: no menu shows it
+	cols   []int  // hidden columns
+	filter string // of the rows, such as A1:D25
 	merged []string
 	rowsAt int          // number of the first row; 1 where 0
 	hide   map[int]bool // rows by number
@@ -71,6 +74,9 @@ func xlsx(t testing.TB, sheets ...sheetOf) []byte {
 		state := ""
 		if s.hidden {
 			state = ` state="hidden"`
+		}
+		if s.very {
+			state = ` state="veryHidden"`
 		}
 		fmt.Fprintf(&book, `<sheet name="%s" sheetId="%d"%s r:id="s%d"/>`, escape(s.name), i+1, state, i)
 		fmt.Fprintf(&rels, `<Relationship Id="s%d" Type="%s/worksheet" Target="worksheets/sheet%d.xml"/>`, i, relation, i+1)
@@ -118,7 +124,15 @@ func escape(s string) string {
 
 func sheetXML(s sheetOf) string {
 	var b strings.Builder
-	b.WriteString(`<worksheet><dimension ref="A1:XFD1048576"/><sheetData>`)
+	b.WriteString(`<worksheet><dimension ref="A1:XFD1048576"/>`)
+	if len(s.cols) > 0 {
+		b.WriteString(`<cols>`)
+		for _, c := range s.cols {
+			fmt.Fprintf(&b, `<col min="%d" max="%d" width="9" hidden="1"/>`, c, c)
+		}
+		b.WriteString(`</cols>`)
+	}
+	b.WriteString(`<sheetData>`)
 	for i, row := range s.rows {
 		n := i + max(1, s.rowsAt)
 		hidden := ""
@@ -151,6 +165,9 @@ func sheetXML(s sheetOf) string {
 		b.WriteString(`</row>`)
 	}
 	b.WriteString(`</sheetData>`)
+	if s.filter != "" {
+		fmt.Fprintf(&b, `<autoFilter ref="%s"/>`, s.filter)
+	}
 	if len(s.merged) > 0 {
 		b.WriteString(`<mergeCells>`)
 		for _, m := range s.merged {

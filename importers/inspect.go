@@ -88,7 +88,7 @@ func (w Watched) InspectAs(name string, data []byte, stated qa.ReadingPlan, all 
 		}
 		in.Sheets = append(in.Sheets, InspectedSheet{Name: s.Name, Rows: rows, Hidden: s.Hidden})
 		if s.Hidden {
-			in.Warnings = append(in.Warnings, qa.Warning{Code: "hidden-sheets", Text: b.File.Name + ": the sheet " + quoted(s.Name) + " is hidden."})
+			in.Warnings = append(in.Warnings, qa.Warning{Code: "hidden-sheets", Text: b.File.Name + ": the sheet " + quoted(s.Name) + " is hidden; it holds " + qa.Count(cellCount(s), "cell", "cells") + "."})
 		}
 	}
 	m, err := w.propose(b, stated, all)
@@ -103,6 +103,7 @@ func (w Watched) InspectAs(name string, data []byte, stated qa.ReadingPlan, all 
 			return Inspection{}, err
 		}
 		t.nearSpellings(func(string) bool { return true })
+		t.warnHidden(func(cells.Cell) bool { return false })
 		if (!t.turned || t.tidy != nil) && t.part > 0 && t.repeats(t.part) {
 			t.warn("repeated-parts", "ids in %s stand more than once in a lot; name it as part_column where they are repeat readings of a part, else correct them.", t.columnText(t.part))
 		}

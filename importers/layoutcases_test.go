@@ -35,6 +35,7 @@ type layoutWant struct {
 	finding  string  // a warning of the comparison
 	upper    float64 // the upper 90 % limit of the comparison; 0 where it is not looked at
 	said     []string
+	texts    []string // words of the warnings
 }
 
 var d1 = layoutWant{n: [2]int{12, 12}, mean: [2]float64{d1MeanReference, d1MeanCandidate}, upper: 0.01006020125}

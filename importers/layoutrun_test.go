@@ -150,4 +150,9 @@ func (w layoutWant) check(t *testing.T, r qa.Readings) {
 		wantWarning(t, r, code)
 	}
 	wantWords(t, strings.Join(r.Said, "\n"), w.said...)
+	var texts []string
+	for _, x := range r.Warnings {
+		texts = append(texts, x.Text)
+	}
+	wantWords(t, strings.Join(texts, "\n"), w.texts...)
 }

@@ -136,30 +136,3 @@ func (t *table) nearSpellings(counts func(string) bool) {
 		t.warn("lot-spellings", "lots in several spellings, not joined: %s. If they are one lot, write the name alike in the file.", join2(pairs))
 	}
 }
-
-// hidden warns of hidden rows, columns and sheets: what they hold is read all the same.
-func (t *table) hidden() {
-	rows, cols := 0, 0
-	if t.turned {
-		rows, cols = t.hiddenCells()
-	}
-	for _, r := range t.rows {
-		if !t.turned && t.sheet.Rows[r.at].Hidden {
-			rows++
-		}
-	}
-	if rows > 0 {
-		t.warn("hidden-rows", "%s hidden; what they hold is used.", qa.Count(rows, "row of the table is", "rows of the table are"))
-	}
-	for _, c := range t.columns {
-		if !t.turned && t.sheet.HiddenCol(c.col) {
-			cols++
-		}
-	}
-	if cols > 0 {
-		t.warn("hidden-columns", "%s hidden; what they hold is read like any other.", qa.Count(cols, "column of the table is", "columns of the table are"))
-	}
-	if t.sheet.Hidden {
-		t.warn("hidden-sheets", "the sheet itself is hidden; it is read.")
-	}
-}

@@ -142,7 +142,6 @@ func newTable(book Book, sheet cells.Sheet, h hints) (*table, error) {
 			return nil, err
 		}
 	}
-	t.hidden()
 	return t, nil
 }
 

@@ -155,26 +155,6 @@ func (t *table) unmergedCells(rows []row, col int) error {
 	return nil
 }
 
-// hiddenCells counts the hidden rows and columns of the sheet that hold cells of the table.
-func (t *table) hiddenCells() (rows, cols int) {
-	hiddenRows, hiddenCols := map[int]bool{}, map[int]bool{}
-	for _, r := range t.rows {
-		for col := turnedFixed + 1; col <= r.width(); col++ {
-			c := t.cell(r, col)
-			if !hiddenCols[c.Col] && t.sheet.HiddenCol(c.Col) {
-				hiddenCols[c.Col] = true
-			}
-			hiddenRows[c.Row] = true
-		}
-	}
-	for n := range hiddenRows {
-		if r, ok := t.sheet.Row(n); ok && r.Hidden {
-			rows++
-		}
-	}
-	return rows, len(hiddenCols)
-}
-
 // trimmedRows takes the rows off the end of a lot that hold nothing in any of the measurements: lots are of unequal lengths.
 func (t *table) trimmedRows(rows []row) []row {
 	for len(rows) > 0 && !t.anyMeasured(rows[len(rows)-1], func(c cells.Cell) bool {
