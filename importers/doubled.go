@@ -2,6 +2,7 @@ package importers
 
 import (
 	"fmt"
+	"math"
 	"slices"
 	"strconv"
 
@@ -11,6 +12,9 @@ import (
 // doubled says whether the second half of the lot's rows repeats the first exactly in every characteristic: four rows or more
 // with three distinct ones. Attributes do not count.
 func (s *lotSide) doubled(attribute func(k int) bool) (string, bool) {
+	if !s.mayBeDoubled(attribute) {
+		return "", false
+	}
 	keys := map[int]string{}
 	for k, series := range s.lot.Series {
 		if attribute(k) { // parts that pass are alike
@@ -51,6 +55,26 @@ func (s *lotSide) doubled(attribute func(k int) bool) (string, bool) {
 		ranges = append(ranges, fmt.Sprintf("%s%d:%s%d and %s%d:%s%d", l, numbers[0], l, numbers[half-1], l, numbers[half], l, numbers[len(numbers)-1]))
 	}
 	return join2(ranges), true
+}
+
+// mayBeDoubled says quickly of most lots that they are not: in one that is, each value stands an even number of times, so that
+// the bits of all of them cancel out.
+func (s *lotSide) mayBeDoubled(attribute func(k int) bool) bool {
+	for k, series := range s.lot.Series {
+		if attribute(k) {
+			continue
+		}
+		bits := uint64(0)
+		for _, x := range series.Readings {
+			if x.Used() {
+				bits ^= math.Float64bits(x.Value + 0) // -0 is 0
+			}
+		}
+		if bits != 0 {
+			return false
+		}
+	}
+	return true
 }
 
 // places numbers the cells of one characteristic by their rows: of the sheet, or of a turned table by the parts in their order,

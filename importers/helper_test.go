@@ -46,6 +46,7 @@ type sheetOf struct {
 	hidden bool
 	very   bool   // very hidden: no menu shows it
 	cols   []int  // hidden columns
+	dim    string // the dimension that the sheet declares; the largest there is where empty
 	filter string // of the rows, such as A1:D25
 	merged []string
 	rowsAt int          // number of the first row; 1 where 0
@@ -124,7 +125,11 @@ func escape(s string) string {
 
 func sheetXML(s sheetOf) string {
 	var b strings.Builder
-	b.WriteString(`<worksheet><dimension ref="A1:XFD1048576"/>`)
+	dim := "A1:XFD1048576" // wrong, as some programs write it
+	if s.dim != "" {
+		dim = s.dim
+	}
+	b.WriteString(`<worksheet><dimension ref="` + dim + `"/>`)
 	if len(s.cols) > 0 {
 		b.WriteString(`<cols>`)
 		for _, c := range s.cols {

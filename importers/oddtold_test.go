@@ -1,13 +1,9 @@
 package importers
 
 import (
-	"fmt"
-	"runtime"
 	"strings"
 	"testing"
-	"time"
 
-	"lotpair/importers/cells"
 	"lotpair/qa"
 )
 
@@ -45,47 +41,6 @@ func TestInspectFormats(t *testing.T) {
 		}
 		p.Criterion.Margin = &qa.Margin{Absolute: p.Criterion.Margin.Absolute}
 		wantD1(t, mustRead(t, p, data))
-	}
-}
-
-func TestReadSizes(t *testing.T) { // N29: finish with all that is there, or refuse in words
-	wideRow := func(values []string, repeat int) string {
-		var b strings.Builder
-		for range repeat {
-			for _, v := range values {
-				b.WriteString(";" + v)
-			}
-		}
-		return b.String()
-	}
-	heading := "Characteristic"
-	for i := range 16380 {
-		heading += fmt.Sprintf(";%d", i+1)
-	}
-	file := func(values []string) []byte { return []byte(heading + "\nBore" + wideRow(values, 1365) + "\n") }
-	p := plan("ref.csv", func(p *qa.Plan) { p.Candidate.File, p.Reading.Layout = "cand.csv", RowPerCharacteristic })
-	r, err := Read(p, files(map[string][]byte{"ref.csv": file(d1Reference), "cand.csv": file(d1Candidate)}))
-	switch {
-	case err != nil && !strings.Contains(err.Error(), "twice"): // the same twelve again and again are told as a doubled block
-		t.Errorf("16380 columns: got %v", err)
-	case err == nil && len(r.Reference.Series[0].Values()) != 16380:
-		t.Errorf("got %d readings, want 16380", len(r.Reference.Series[0].Values()))
-	}
-	_, err = Open("wide.csv", []byte("Lot;x\nA"+strings.Repeat(";1", cells.MaxCol+1)+"\n"), "")
-	wantFileError(t, err, "record 2", "16384", "split the file")
-
-	var before, after runtime.MemStats
-	runtime.ReadMemStats(&before)
-	begun := time.Now()
-	_, err = Open("tall.csv", []byte("Lot;x\n"+strings.Repeat("A;1\n", cells.MaxRow)), "")
-	wantFileError(t, err, "1048576 records", "split the file")
-	runtime.ReadMemStats(&after)
-	if took := time.Since(begun); took > 20*time.Second {
-		t.Errorf("got %v, want it refused in seconds", took)
-	}
-	b, err := Open("tall.csv", []byte("Lot;x\n"+strings.Repeat("A;1\n", cells.MaxRow-1)), "")
-	if err != nil || len(b.Sheets[0].Rows) != cells.MaxRow {
-		t.Errorf("got %v, want all 1048576 records", err)
 	}
 }
 
