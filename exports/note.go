@@ -129,7 +129,11 @@ func noteSignature(g SignatureView, when time.Time, line func(name, value string
 	line("disposition", g.Disposition)
 	at, err := time.Parse(time.RFC3339, g.Time)
 	if err == nil {
-		line("time", localTime(at)+" ("+at.UTC().Format("2006-01-02 15:04:05")+" UTC), by the clock of the signer's machine")
+		t := localTime(at) + " (" + at.UTC().Format("2006-01-02 15:04:05") + " UTC), by the clock of the signer's machine"
+		if at.After(when.Add(clockSlack)) {
+			t += "; that is later than now by the clock of this machine: one of the two is wrong"
+		}
+		line("time", t)
 	}
 	switch {
 	case g.Trusted == nil:

@@ -68,6 +68,9 @@ func Sign(pkg []byte, id identity.Identity, st opcsign.Statement) ([]byte, error
 	}
 	fill(&st, id)
 	v := Verify(pkg, nil)
+	if err := clockProblem(st.Time, v.last()); err != nil {
+		return nil, err
+	}
 	switch v.State {
 	case Intact, Incomplete:
 		out, err := opcsign.Sign(pkg, id.Key, id.Chain, st)
@@ -104,6 +107,9 @@ func SignFirst(rec qa.Record, id identity.Identity, st opcsign.Statement) ([]byt
 		return nil, &UnstatedError{Keys: keys}
 	}
 	fill(&st, id)
+	if err := clockProblem(st.Time, lastAct(rec.Trail)); err != nil {
+		return nil, err
+	}
 	rec.Signer = signerOf(id, st)
 	rec.Trail = rec.Trail.With(st.Time, st.Name, signedAs+st.Meaning, "", st.Reason)
 	pkg, err := Workbook(rec)

@@ -75,6 +75,7 @@ func Verify(pkg []byte, roots []*x509.Certificate) Verification {
 		v.Sealed = &s
 		v.sealed(pkg, s, layout)
 		v.printed(report, s.Signer)
+		v.clocks(report, moment{s.Time, "sealed"})
 		v.conclude(report)
 		return v
 	}
@@ -92,6 +93,7 @@ func Verify(pkg []byte, roots []*x509.Certificate) Verification {
 	v.recompute(pkg, rec, layout)
 	v.meanings(report, rec)
 	v.printed(report, rec.Signer)
+	v.clocks(report, lastAct(rec.Trail))
 	v.conclude(report)
 	return v
 }

@@ -118,7 +118,7 @@ func (p *program) printVerification(name string, v exports.Verification) {
 		}
 		who := strings.Trim(strings.Join([]string{s.Signer, s.Title, s.Organization}, ", "), ", ")
 		who = strings.ReplaceAll(who, ", , ", ", ")
-		fmt.Fprintf(p.out, "  %s: %s, %s, %s%s%s%s\n    certificate SHA-256 %s\n", s.Meaning, who, s.Time, word, trustWord(s.Trusted),
+		fmt.Fprintf(p.out, "  %s: %s, %s, %s%s%s%s\n    certificate SHA-256 %s\n", s.Meaning, who, s.Time, word, trustWord(s),
 			after(", reason: ", s.Reason), after(", disposition: ", s.Disposition), s.Fingerprint)
 	}
 	for _, m := range v.MissingMeanings {
@@ -164,12 +164,12 @@ func (p *program) printReasons(name string, v exports.Verification) {
 	}
 }
 
-func trustWord(t *bool) string {
+func trustWord(s exports.SignatureView) string {
 	switch {
-	case t == nil:
+	case s.Trusted == nil:
 		return ", not known whether trusted"
-	case *t:
+	case *s.Trusted:
 		return ", trusted"
 	}
-	return ", NOT trusted"
+	return ", NOT trusted (" + s.Doubt + ")"
 }

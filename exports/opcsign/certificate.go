@@ -3,6 +3,9 @@ package opcsign
 import (
 	"bytes"
 	"crypto/x509"
+	"errors"
+	"fmt"
+	"strings"
 	"time"
 )
 
@@ -67,9 +70,16 @@ func doubtOf(chain, roots []*x509.Certificate, at time.Time) string {
 		between.AddCert(c)
 	}
 	_, err := chain[0].Verify(x509.VerifyOptions{Roots: trusted, Intermediates: between, CurrentTime: at, KeyUsages: []x509.ExtKeyUsage{x509.ExtKeyUsageAny}})
+	var invalid x509.CertificateInvalidError
+	var unknown x509.UnknownAuthorityError
 	switch {
+	case errors.As(err, &invalid) && invalid.Reason == x509.Expired:
+		return fmt.Sprintf("the certificate of %s was valid from %s to %s, and not at the time of signing", clip(invalid.Cert.Subject.String(), 80),
+			invalid.Cert.NotBefore.UTC().Format(timeForm), invalid.Cert.NotAfter.UTC().Format(timeForm))
+	case errors.As(err, &unknown):
+		return "none of the trusted certificates has issued the certificate, or is it"
 	case err != nil:
-		return err.Error()
+		return strings.TrimPrefix(err.Error(), "x509: ")
 	case !keyUsageFits(chain[0]):
 		return "the certificate's key usage does not include signatures"
 	}
