@@ -185,24 +185,6 @@ func (c *comparison) checkMargin() {
 	}
 }
 
-// checkUncertainty warns where the stated uncertainty of the measuring systems' bias comes near the margin: margin below
-// twice the standard uncertainty of the difference (contract: result).
-func (c *comparison) checkUncertainty() {
-	u := c.ch.Uncertainty
-	if u == nil {
-		return
-	}
-	combined := math.Hypot(u.Reference, u.Candidate)
-	lower, upper := c.margin.ends(c.ref.summary.Mean)
-	for _, end := range []*float64{lower, upper} {
-		if end != nil && math.Abs(*end) < 2*combined {
-			c.warn(WarnUncertainty, "", "equivalence.margin_upper",
-				fmt.Sprintf("The margin is less than twice the standard uncertainty of the difference (%s): the gauges themselves may make or hide a difference of this size.", Plain(combined)))
-			return
-		}
-	}
-}
-
 // Decimals is how many decimals to show: what the plan says, else what the readings show, 10 at most.
 func Decimals(ch Characteristic, ref, cand Series) int {
 	if ch.Decimals != nil {

@@ -42,10 +42,7 @@ func Compare(plan Plan, readings Readings, run Run) (Result, error) {
 	}
 	holm(r.Characteristics)
 	r.Warnings = append(r.Warnings, claimOfSources(plan)...)
-	if g := plan.Record; g.GaugeReference != "" && g.GaugeCandidate != "" && g.GaugeReference != g.GaugeCandidate {
-		r.Warnings = append(r.Warnings, Warning{Code: WarnGauges, Text: "The lots were measured with different gauges (" + g.GaugeReference +
-			"; " + g.GaugeCandidate + "): a difference between the gauges is part of every difference shown."})
-	}
+	r.Warnings = append(r.Warnings, differentGauges(plan.Record, readings.Characteristics)...)
 	if plan.Criterion.SecondSample == "one" {
 		r.Warnings = append(r.Warnings, Warning{Code: WarnSecondSample, Text: "The plan allows one enlargement of the sample: each of the two looks is held against half of the alpha stated."})
 	}

@@ -2,6 +2,7 @@ package qa
 
 import (
 	"errors"
+	"fmt"
 	"math"
 
 	"lotpair/qa/stats"
@@ -18,10 +19,13 @@ type NewStudyResult struct {
 	AtEstimate *StudyParts `json:"at_estimate"` // at the difference found; nil where that lies outside the margin
 }
 
-// StudyParts is how many parts of each lot a study takes.
+// StudyParts is how many parts of each lot a study takes. Where groups are random it takes so many groups of each, with as many
+// parts a group as here.
 type StudyParts struct {
-	Reference int `json:"reference"`
-	Candidate int `json:"candidate"`
+	Reference       int `json:"reference"`
+	Candidate       int `json:"candidate"`
+	GroupsReference int `json:"groups_reference,omitempty"`
+	GroupsCandidate int `json:"groups_candidate,omitempty"`
 }
 
 // power is what the plan asks of a study.
@@ -46,10 +50,6 @@ func (c *comparison) newStudy(plan Plan) {
 	if c.Verdict != Undecided || !c.Objective.AgainstMargin() || e == nil || e.Estimate == nil || e.Lower == nil {
 		return
 	}
-	if c.asked.grouped {
-		c.warn(WarnNotComputable, "", "new_study", "How many groups a new study needs is not computed.")
-		return
-	}
 	p := plan.power()
 	mean, estimate, ok := c.studyOfMean()
 	if !ok {
@@ -72,7 +72,15 @@ func (c *comparison) studyOfMean() (d stats.Design, estimate float64, ok bool) {
 	e := c.Equivalence
 	d = stats.Design{
 		Aim: aimOf(c.Objective), Alpha: c.Alpha, Paired: c.Method == "paired" || e.Scale == scaleShift, Welch: c.Method != "pooled",
-		SDRef: c.ref.summary.SD, SDCand: c.cand.summary.SD, Lower: math.Inf(-1), Upper: math.Inf(1),
+		SDRef: c.ref.summary.SD, SDCand: c.cand.summary.SD, Lower: math.Inf(-1), Upper: math.Inf(1), Bias: c.bias(),
+	}
+	size := c.sizes()
+	if c.asked.grouped { // the groups are what is counted, their means what varies
+		ref, cand, ok := c.groupMeans()
+		if !ok {
+			return d, 0, false
+		}
+		d.SDRef, d.SDCand = ref.SD, cand.SD
 	}
 	onScale := func(v float64) float64 { return v }
 	switch {
@@ -105,7 +113,7 @@ func (c *comparison) studyOfMean() (d stats.Design, estimate float64, ok bool) {
 		d.SDRef = stats.MeanAndSD(c.pairDifferences()).SD
 	}
 	if c.Method == "pooled" {
-		n, m := float64(c.ref.summary.N-1), float64(c.cand.summary.N-1)
+		n, m := float64(size.Reference-1), float64(size.Candidate-1)
 		sd := math.Sqrt((n*d.SDRef*d.SDRef + m*d.SDCand*d.SDCand) / (n + m))
 		d.SDRef, d.SDCand = sd, sd
 	}
@@ -141,8 +149,12 @@ func (c *comparison) partsForSpread(power float64) (StudyParts, bool) {
 		return StudyParts{}, true
 	}
 	if c.Method == "paired" {
-		c.warn(WarnNotComputable, "", "new_study", "How many pairs would show the ratio of standard deviations is not computed.")
-		return StudyParts{}, false
+		s, err := stats.PitmanMorgan(c.ref.values, c.cand.values, 1-2*c.Alpha)
+		if err != nil {
+			return StudyParts{}, false // said where the spread was compared
+		}
+		n, err := stats.PairedSpreadSize(stats.PairedSpreadDesign{Ratio: s.SDRatio, Correlation: s.Correlation, Asked: *c.asked.spreadRatio, Alpha: c.Alpha}, power)
+		return StudyParts{Reference: n, Candidate: n}, err == nil
 	}
 	sd := func(s sample) float64 { return s.summary.SD }
 	if c.Method == "log" {
@@ -151,26 +163,53 @@ func (c *comparison) partsForSpread(power float64) (StudyParts, bool) {
 			return stats.MeanAndSD(x).SD
 		}
 	}
-	n, m, _, err := stats.SpreadSize(stats.Design{SDRef: sd(c.ref), SDCand: sd(c.cand), Alpha: c.Alpha, SpreadRatio: *c.asked.spreadRatio}, c.lotsRatio(), power)
+	n, m, _, err := stats.SpreadSize(stats.Design{SDRef: sd(c.ref), SDCand: sd(c.cand), Alpha: c.Alpha, SpreadRatio: *c.asked.spreadRatio}, c.partsRatio(), power)
 	return StudyParts{Reference: n, Candidate: m}, err == nil
 }
 
-// lotsRatio is how many candidate parts there are to one of the reference.
-func (c *comparison) lotsRatio() float64 {
+// sizes are how many readings each lot has, or groups where those are what is tested.
+func (c *comparison) sizes() StudyParts {
+	if c.asked.grouped {
+		return StudyParts{Reference: c.Groups.Reference, Candidate: c.Groups.Candidate}
+	}
+	return StudyParts{Reference: c.ref.summary.N, Candidate: c.cand.summary.N}
+}
+
+// partsRatio is how many candidate parts there are to one of the reference.
+func (c *comparison) partsRatio() float64 {
 	return float64(c.cand.summary.N) / float64(c.ref.summary.N)
 }
 
 // partsForMean is the larger of what the mean needs and least; nil where no number would do.
 func (c *comparison) partsForMean(d stats.Design, power float64, least StudyParts, path string) *StudyParts {
-	n, m, err := stats.Parts(d, c.lotsRatio(), power)
-	if err != nil {
-		if !errors.Is(err, stats.ErrBeyondMargin) {
-			c.warn(WarnNotComputable, "", path, "The size of a new study is not given: "+err.Error()+".")
-		}
+	size := c.sizes()
+	ratio := float64(size.Candidate) / float64(size.Reference)
+	n, m, err := stats.Parts(d, ratio, power)
+	switch {
+	case errors.Is(err, stats.ErrBeyondMargin):
+		return nil
+	case errors.Is(err, stats.ErrBias):
+		c.warn(WarnUncertainty, "", path, fmt.Sprintf("No number of parts would show it with probability %s: what is not known of the measuring systems' bias alone takes more.", Fixed(power, 2)))
+		return nil
+	case err != nil:
+		c.warn(WarnNotComputable, "", path, "The size of a new study is not given: "+err.Error()+".")
 		return nil
 	}
 	if c.Equivalence.Scale == scaleShift { // n candidate parts are tested alone
-		n, m = int(math.Ceil(float64(n)/c.lotsRatio()-1e-9)), n
+		n, m = int(math.Ceil(float64(n)/ratio-1e-9)), n
 	}
-	return &StudyParts{Reference: max(n, least.Reference), Candidate: max(m, least.Candidate)}
+	if !c.asked.grouped {
+		return &StudyParts{Reference: max(n, least.Reference), Candidate: max(m, least.Candidate)}
+	}
+	p := &StudyParts{}
+	p.Reference, p.GroupsReference = inGroups(n, c.ref.summary.N, size.Reference, least.Reference)
+	p.Candidate, p.GroupsCandidate = inGroups(m, c.cand.summary.N, size.Candidate, least.Candidate)
+	return p
+}
+
+// inGroups is how many parts so many groups hold, and at least least parts, where parts and groups are how many there are now.
+func inGroups(needed, parts, groups, least int) (int, int) {
+	each := (parts + groups - 1) / groups
+	needed = max(needed, (least+each-1)/each)
+	return needed * each, needed
 }

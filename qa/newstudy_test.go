@@ -1,6 +1,7 @@
 package qa_test
 
 import (
+	"fmt"
 	"math"
 	"strings"
 	"testing"
@@ -136,4 +137,65 @@ func TestNewStudyAttribute(t *testing.T) {
 		t.Fatal(err)
 	}
 	checkStudy(t, got, qa.NewStudyResult{Power: 0.9, AtZero: &qa.StudyParts{Reference: n, Candidate: n}, AtEstimate: &qa.StudyParts{Reference: m, Candidate: m}})
+}
+
+// Where groups are random a new study is of groups, whose means vary as found, with as many parts a group; the spread may ask for
+// more parts, and so for more groups.
+func TestNewStudyGroups(t *testing.T) {
+	p := plan(qa.Equivalence, absolute(0.020))
+	p.Reading.GroupColumn, p.Criterion.Claim = "Lot", "sources"
+	ch := qa.Characteristic{Name: "Bore dia", Unit: "mm"}
+	got := one(t, p, lots(ch, grouped(qa.Reference), grouped(qa.Candidate)))
+	means := func(side qa.Side) stats.Summary { return stats.Summarize(stats.GroupMeans(d2[side])) }
+	x, y := means(qa.Reference), means(qa.Candidate)
+	d := stats.Design{Alpha: 0.05, Lower: -0.02, Upper: 0.02, SDRef: x.SD, SDCand: y.SD, Welch: true}
+	parts := func() *qa.StudyParts {
+		n, m, _, err := stats.Size(d, 1, 0.9)
+		if err != nil {
+			t.Fatal(err)
+		}
+		return &qa.StudyParts{Reference: 5 * n, Candidate: 5 * m, GroupsReference: n, GroupsCandidate: m}
+	}
+	zero := parts()
+	d.Shift = y.Mean - x.Mean
+	estimate := parts()
+	checkStudy(t, got, qa.NewStudyResult{Power: 0.9, AtZero: zero, AtEstimate: estimate})
+	if s := strings.Join(qa.Sentences(got), " "); !strings.Contains(s, fmt.Sprintf("A new study of %d groups a lot (%d parts)", zero.GroupsReference, zero.Reference)) {
+		t.Errorf("got %q, want the groups said", s)
+	}
+	p.Criterion.SpreadRatio = ptr(1.2)
+	wide := one(t, p, lots(ch, grouped(qa.Reference), grouped(qa.Candidate)))
+	n, _, _, err := stats.SpreadSize(stats.Design{SDRef: *wide.Reference.SD, SDCand: *wide.Candidate.SD, Alpha: 0.05, SpreadRatio: 1.2}, 1, 0.9)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if s := wide.NewStudy; s == nil || s.AtZero == nil || s.AtZero.Reference < n || s.AtZero.Reference >= n+5 || s.AtZero.GroupsReference*5 != s.AtZero.Reference {
+		t.Errorf("with the spread: got %+v, want at least %d parts in whole groups of 5", s, n)
+	}
+}
+
+// The spread of pairs is planned by Pitman and Morgan's test, with the correlation found.
+func TestNewStudyPairs(t *testing.T) {
+	x := []float64{10.1, 10.9, 9.4, 10.2, 11.3, 8.8, 10.0, 9.7, 10.6, 9.2}
+	y := []float64{10.3, 11.2, 9.3, 10.5, 11.6, 9.1, 9.9, 9.9, 10.9, 9.3}
+	a, b := series("v", 1, x...), series("v", 1, y...)
+	for i := range a.Readings {
+		a.Readings[i].Pair, b.Readings[i].Pair = fmt.Sprint(i), fmt.Sprint(i)
+	}
+	p := plan(qa.Equivalence, absolute(2))
+	p.Criterion.Method, p.Criterion.SpreadRatio, p.Reading.PairColumn = "paired", ptr(1.15), "Serial"
+	got := one(t, p, lots(qa.Characteristic{Name: "v"}, a, b))
+	sx, sy := stats.Summarize(x), stats.Summarize(y)
+	r := 0.0
+	for i := range x {
+		r += (x[i] - sx.Mean) / sx.SD * (y[i] - sy.Mean) / sy.SD / float64(len(x)-1)
+	}
+	n, err := stats.PairedSpreadSize(stats.PairedSpreadDesign{Ratio: sy.SD / sx.SD, Correlation: r, Asked: 1.15, Alpha: 0.05}, 0.9)
+	if err != nil {
+		t.Fatal(err)
+	}
+	parts := &qa.StudyParts{Reference: n, Candidate: n}
+	checkStudy(t, got, qa.NewStudyResult{Power: 0.9, AtZero: parts, AtEstimate: parts})
+	p.Criterion.SpreadRatio = ptr(1.02) // below the ratio found
+	checkStudy(t, one(t, p, lots(qa.Characteristic{Name: "v"}, a, b)), qa.NewStudyResult{Power: 0.9})
 }

@@ -31,7 +31,7 @@ func (c *comparison) partsForFractions(ref, cand, power float64, path string) *S
 	if u := c.Equivalence.MarginUpper; u != nil {
 		d.Upper = min(most, *u)
 	}
-	n, m, _, err := stats.FractionSize(d, c.lotsRatio(), power)
+	n, m, _, err := stats.FractionSize(d, c.partsRatio(), power)
 	if err != nil {
 		if !errors.Is(err, stats.ErrBeyondMargin) {
 			c.warn(WarnNotComputable, "", path, "The size of a new study is not given: "+err.Error()+".")

@@ -17,6 +17,7 @@ func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
 	paired := c.Method == "paired"
 	if c.margin.scale != scaleDifference {
 		c.otherRatios()
+		c.withBias()
 		if !paired {
 			c.putBack(ref, cand)
 			c.withoutOutlying()
@@ -37,6 +38,7 @@ func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
 		c.again("trimmed", e, err)
 		c.stratified()
 	}
+	c.withBias()
 	if r := c.Ranks; r != nil && r.Lower != nil && r.Upper != nil {
 		c.interval("ranks", r.Shift, stats.Interval{Level: r.Level, Lower: *r.Lower, Upper: *r.Upper}, nil)
 	}

@@ -192,6 +192,10 @@ func newStudySentence(c Comparison) string {
 	}
 	parts := func(p *StudyParts) string {
 		switch {
+		case p.GroupsReference != 0 && (p.Reference != p.Candidate || p.GroupsReference != p.GroupsCandidate):
+			return fmt.Sprintf("%d reference groups (%d parts) and %d candidate groups (%d parts)", p.GroupsReference, p.Reference, p.GroupsCandidate, p.Candidate)
+		case p.GroupsReference != 0:
+			return fmt.Sprintf("%d groups a lot (%d parts)", p.GroupsReference, p.Reference)
 		case p.Reference != p.Candidate:
 			return fmt.Sprintf("%d reference and %d candidate parts", p.Reference, p.Candidate)
 		case c.Method == "paired":

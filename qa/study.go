@@ -34,6 +34,10 @@ type Study struct {
 	Ratio           float64 // candidate over reference readings
 	SpreadRatio     float64 // 0 where none is asked; it may be asked without a margin
 	Characteristics int     // so many independent ones must all pass
+	Guard           float64 // taken off both ends of the margin
+	Uncertainty     float64 // standard uncertainty of the measuring systems' bias in the difference; 0 where none is stated
+	SDBetween       float64 // of the true means of groups; above 0 the groups are what is counted, and SD is within one
+	PerGroup        int     // readings a group where groups are counted
 	N               int     // reference readings (pairs); 0 where that is asked for
 }
 
@@ -45,6 +49,11 @@ type StudySize struct {
 	Power          float64  `json:"power"`
 	Method         string   `json:"method"`
 	SmallestMargin *float64 `json:"smallest_margin,omitempty"` // N given: the narrowest symmetric margin shown with the power asked
+
+	Guard       float64   `json:"guard,omitempty"`
+	Uncertainty float64   `json:"uncertainty,omitempty"` // of the difference, standard
+	PerGroup    int       `json:"per_group,omitempty"`   // n_reference and n_candidate count groups of so many readings
+	Warnings    []Warning `json:"warnings,omitempty"`
 }
 
 // Size returns the smallest number of readings with which the study shows what it is to with at least the power asked, or with N
@@ -60,7 +69,10 @@ func (s Study) Size() (StudySize, error) {
 	case !(s.Ratio > 0) || math.IsInf(s.Ratio, 1) || s.N > 0 && float64(s.N)*s.Ratio > mostPlanned:
 		return StudySize{}, fmt.Errorf("ratio: found %v, want a number above 0 and at most %d candidate readings", s.Ratio, mostPlanned)
 	}
-	out := StudySize{Format: StudyFormat, Method: s.Method}
+	if err := s.checkAround(); err != nil {
+		return StudySize{}, err
+	}
+	out := StudySize{Format: StudyFormat, Method: s.Method, Guard: s.Guard, Uncertainty: s.Uncertainty, PerGroup: s.PerGroup}
 	if s.spreadOnly() {
 		out.Method = StudySpread
 	}
@@ -83,9 +95,11 @@ func (s Study) Size() (StudySize, error) {
 		d := s.design()
 		d.NRef, d.NCand = out.NReference, out.NCandidate
 		if m, err := stats.SmallestMargin(d, each); err == nil && m > 0 {
+			m += s.Guard
 			out.SmallestMargin = &m
 		}
 	}
+	out.Warnings = s.warnings(out)
 	return out, nil
 }
 
@@ -99,14 +113,18 @@ func (s Study) spreadOnly() bool {
 func (s Study) design() stats.Design {
 	d := stats.Design{
 		Aim: aimOf(s.Objective), Paired: s.Method == StudyPaired, Welch: s.Method == StudyWelch,
-		SDRef: s.SD, SDCand: s.SDCandidate, Alpha: s.Alpha, Shift: s.Shift, SpreadRatio: s.SpreadRatio,
+		SDRef: s.SD, SDCand: s.SDCandidate, Alpha: s.Alpha, Shift: s.Shift, SpreadRatio: s.SpreadRatio, Bias: s.Uncertainty,
 		Lower: math.Inf(-1), Upper: math.Inf(1),
 	}
 	if s.MarginLower != nil {
-		d.Lower = *s.MarginLower
+		d.Lower = *s.MarginLower + s.Guard
 	}
 	if s.MarginUpper != nil {
-		d.Upper = *s.MarginUpper
+		d.Upper = *s.MarginUpper - s.Guard
+	}
+	if s.SDBetween > 0 { // of the mean of a group
+		n := math.Sqrt(float64(s.PerGroup))
+		d.SDRef, d.SDCand = math.Hypot(s.SDBetween, s.SD/n), math.Hypot(s.SDBetween, s.SDCandidate/n)
 	}
 	if s.spreadOnly() {
 		d.Aim, d.Lower, d.Upper, d.Shift = stats.AimWithin, -1, 1, 0 // not looked at
@@ -117,10 +135,10 @@ func (s Study) design() stats.Design {
 func (s Study) fractionDesign() stats.FractionDesign {
 	d := stats.FractionDesign{Aim: aimOf(s.Objective), PRef: s.Fractions[0], PCand: s.Fractions[1], Alpha: s.Alpha}
 	if s.MarginLower != nil {
-		d.Lower = *s.MarginLower
+		d.Lower = *s.MarginLower + s.Guard
 	}
 	if s.MarginUpper != nil {
-		d.Upper = *s.MarginUpper
+		d.Upper = *s.MarginUpper - s.Guard
 	}
 	return d
 }
@@ -159,6 +177,8 @@ func (s Study) explain(err error, out StudySize) error {
 		return fmt.Errorf("power: found no number of readings up to %d that has it, want a true difference farther from the margin, or less power", mostPlanned)
 	case errors.Is(err, stats.ErrBeyondMargin) && s.SpreadRatio > 0 && s.SDCandidate >= s.SpreadRatio*s.SD:
 		return fmt.Errorf("spread ratio: found %v with true standard deviations in the ratio %v, want a smaller true ratio: no number of readings would show it", s.SpreadRatio, s.SDCandidate/s.SD)
+	case errors.Is(err, stats.ErrBias):
+		return fmt.Errorf("uncertainty: found %v of the difference, want less: what is not known of the gauges' bias alone leaves less than the power asked, with any number of readings", s.Uncertainty)
 	case errors.Is(err, stats.ErrBeyondMargin) && s.Objective.AgainstMargin():
 		return fmt.Errorf("shift: found %v, want a true difference inside the margin: on or beyond it no number of readings will do; state n to see the power there", s.shift())
 	case errors.Is(err, stats.ErrBeyondMargin):

@@ -109,6 +109,13 @@ func (p *Planned) size(plan qa.Plan, x qa.Comparison) {
 		return
 	}
 	p.design = stats.Design{Aim: aim, SDRef: p.SD, SDCand: p.SD, Alpha: x.Alpha, Lower: math.Inf(-1), Upper: math.Inf(1)}
+	p.design.Paired = x.Equivalence.Scale == "shift" // one lot's mean against a stated one
+	if u := p.Characteristic.Uncertainty; u != nil {
+		p.design.Bias = qa.DifferenceUncertainty(u.Reference, u.Candidate)
+		if p.design.Paired {
+			p.design.Bias = u.Candidate
+		}
+	}
 	if p.Lower != nil {
 		p.design.Lower = *p.Lower
 	}
@@ -193,6 +200,9 @@ func (p Planned) sentences(plan qa.Plan, shift float64) (headline string, out []
 		}
 	}
 	out = append(out, text)
+	if b := p.design.Bias; b > 0 {
+		out = append(out, fmt.Sprintf("This counts that the gauges' bias is not known to better than a standard uncertainty of %s in the difference; that does not shrink with more parts.", withUnit(qa.ThreeDigits(b), unit)))
+	}
 	if shift != 0 {
 		d := p.design
 		d.Shift = shift
@@ -206,7 +216,7 @@ func (p Planned) sentences(plan qa.Plan, shift float64) (headline string, out []
 		d := p.design
 		d.NRef, d.NCand = few, few
 		if m, err := stats.SmallestMargin(d, power); err == nil {
-			out = append(out, fmt.Sprintf("With %d parts a lot the smallest margin that can be shown with probability %s is ±%s.", few, qa.Plain(power), withUnit(threeDigits(m), unit)))
+			out = append(out, fmt.Sprintf("With %d parts a lot the smallest margin that can be shown with probability %s is ±%s.", few, qa.Plain(power), withUnit(qa.ThreeDigits(m), unit)))
 		}
 	}
 	if m := p.Permits; m != nil {
@@ -232,15 +242,6 @@ func (p Planned) halfway() float64 {
 		return *p.Lower / 2
 	}
 	return 0
-}
-
-// threeDigits writes a number with three digits that count.
-func threeDigits(v float64) string {
-	if v == 0 || math.IsInf(v, 0) {
-		return qa.Plain(v)
-	}
-	decimals := 2 - int(math.Floor(math.Log10(math.Abs(v))))
-	return qa.Fixed(v, max(0, min(12, decimals)))
 }
 
 // together says how likely all characteristics pass with as many parts as the one that needs most.

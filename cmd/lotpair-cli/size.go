@@ -15,15 +15,17 @@ import (
 type sizeFlags struct {
 	sd, margin, marginLower, marginUpper, shift, alpha float64
 	power, ratio, sdCandidate, spreadRatio             float64
+	guard, uncertaintyReference, uncertaintyCandidate  float64
+	sdBetween                                          float64
 	objective, design, method, fractions               string
-	characteristics, n                                 int
+	characteristics, n, perGroup                       int
 	json                                               bool
 	given                                              map[string]bool
 }
 
 func (p *program) size(args []string) int {
 	s := sizeFlags{given: map[string]bool{}}
-	f := p.flags("size --sd S (--margin M | --margin-lower A --margin-upper B) [--shift D] [--alpha 0.05] [--power 0.9] [--ratio 1] [--objective O] [--design independent|paired] [--method welch|pooled] [--sd-candidate S] [--spread-ratio R] [--fractions P1 P2] [--characteristics K] [--n N] [--json]",
+	f := p.flags("size --sd S (--margin M | --margin-lower A --margin-upper B) [--shift D] [--alpha 0.05] [--power 0.9] [--ratio 1] [--objective O] [--design independent|paired] [--method welch|pooled] [--sd-candidate S] [--spread-ratio R] [--fractions P1 P2] [--guard G] [--uncertainty-reference U] [--uncertainty-candidate U] [--sd-between S --per-group M] [--characteristics K] [--n N] [--json]",
 		"Says how many readings a lot a study needs, or with --n how likely it is to show what it is to. The power is exact for normal readings\n(for fractions: counted out); it is the smallest number with at least that power. A margin and a standard deviation are in one unit.\nWith a spread ratio the power is that of showing mean and spread both, the spread by its F interval.",
 		"lotpair-cli size --sd 0.01 --margin 0.006 --shift 0.001")
 	f.Float64Var(&s.sd, "sd", 0, "true standard deviation `S` of one reading; paired: of the differences")
@@ -40,8 +42,13 @@ func (p *program) size(args []string) int {
 	f.Float64Var(&s.sdCandidate, "sd-candidate", 0, "true standard deviation `S` of one reading of the candidate (default: that of --sd)")
 	f.Float64Var(&s.spreadRatio, "spread-ratio", 0, "the ratio of standard deviations, candidate over reference, is to be shown below `R`")
 	f.StringVar(&s.fractions, "fractions", "", "compare parts that fail: true fractions `P1 P2` of reference and candidate, margin in fractions")
+	f.Float64Var(&s.guard, "guard", 0, "`G` in the unit is taken off both ends of the margin, as the plan's guard is (default 0)")
+	f.Float64Var(&s.uncertaintyReference, "uncertainty-reference", 0, "standard uncertainty `U` of the bias of the reference's measuring system; the power counts what is not known of both")
+	f.Float64Var(&s.uncertaintyCandidate, "uncertainty-candidate", 0, "the same `U` of the candidate's")
+	f.Float64Var(&s.sdBetween, "sd-between", 0, "true standard deviation `S` of the means of groups (lots of a source, heats): groups are counted, --sd is within one")
+	f.IntVar(&s.perGroup, "per-group", 0, "`M` readings a group, with --sd-between")
 	f.IntVar(&s.characteristics, "characteristics", 1, "`K` independent characteristics must all pass")
-	f.IntVar(&s.n, "n", 0, "reference readings (pairs) `N`: say the power, and the narrowest margin shown with --power")
+	f.IntVar(&s.n, "n", 0, "reference readings (pairs, groups) `N`: say the power, and the narrowest margin shown with --power")
 	f.BoolVar(&s.json, "json", false, "print as JSON (lotpair.size/1)")
 	if _, code, err := f.parse(joinFractions(args)); err != nil {
 		return code
@@ -85,6 +92,14 @@ func (s sizeFlags) study() (qa.Study, error) {
 	st := qa.Study{
 		Objective: qa.Objective(s.objective), Method: s.method, SD: s.sd, SDCandidate: s.sd, Shift: s.shift, Alpha: s.alpha,
 		Power: s.power, Ratio: s.ratio, SpreadRatio: s.spreadRatio, Characteristics: s.characteristics, N: s.n,
+		Guard: s.guard, SDBetween: s.sdBetween, PerGroup: s.perGroup,
+		Uncertainty: qa.DifferenceUncertainty(s.uncertaintyReference, s.uncertaintyCandidate),
+	}
+	if s.uncertaintyReference < 0 || s.uncertaintyCandidate < 0 {
+		return st, errors.New("found an uncertainty below 0, want a standard uncertainty from 0")
+	}
+	if s.given["sd-between"] != s.given["per-group"] || s.given["sd-between"] && !(s.sdBetween > 0) {
+		return st, errors.New("found --sd-between and --per-group not both, want a standard deviation above 0 and the readings a group")
 	}
 	if s.given["sd-candidate"] {
 		st.SDCandidate = s.sdCandidate
@@ -113,12 +128,12 @@ func (s sizeFlags) study() (qa.Study, error) {
 		if st.Fractions, err = s.twoFractions(); err != nil {
 			return st, err
 		}
-		err = s.not("with --fractions", "sd", "sd-candidate", "shift", "spread-ratio", "method", "design")
+		err = s.not("with --fractions", "sd", "sd-candidate", "shift", "spread-ratio", "method", "design", "uncertainty-reference", "uncertainty-candidate", "sd-between")
 	case !s.given["sd"]:
 		err = errors.New("found no --sd, want the true standard deviation of one reading (or --fractions)")
 	case s.design == "paired":
 		st.Method = qa.StudyPaired
-		err = s.not("with --design paired", "sd-candidate", "spread-ratio", "method", "ratio")
+		err = s.not("with --design paired", "sd-candidate", "spread-ratio", "method", "ratio", "sd-between")
 	}
 	if err != nil {
 		return st, err
@@ -193,6 +208,8 @@ func (s sizeFlags) margins(st *qa.Study) error {
 func (p *program) printSize(s qa.Study, z qa.StudySize) {
 	readings := fmt.Sprintf("%d reference and %d candidate readings", z.NReference, z.NCandidate)
 	switch {
+	case z.PerGroup > 0:
+		readings = fmt.Sprintf("%d reference and %d candidate groups of %s", z.NReference, z.NCandidate, qa.Count(z.PerGroup, "reading", "readings"))
 	case s.Method == qa.StudyPaired:
 		readings = qa.Count(z.NReference, "pair", "pairs")
 	case s.Method == qa.StudyFractions:
@@ -210,9 +227,21 @@ func (p *program) printSize(s qa.Study, z qa.StudySize) {
 	if s.Characteristics > 1 {
 		fmt.Fprintf(p.out, "power is   that of %d independent characteristics all passing\n", s.Characteristics)
 	}
+	if s.Guard > 0 {
+		fmt.Fprintf(p.out, "guard      %s off both ends of the margin; the margins here are before it\n", qa.Plain(s.Guard))
+	}
+	if s.Uncertainty > 0 {
+		fmt.Fprintf(p.out, "bias       of the measuring systems counted: standard uncertainty %s in the difference, however many readings\n", qa.ThreeDigits(s.Uncertainty))
+	}
+	if s.SDBetween > 0 {
+		fmt.Fprintf(p.out, "groups     are a random sample: standard deviation %s between them and %s within\n", qa.Plain(s.SDBetween), qa.Plain(s.SD))
+	}
 	if z.SmallestMargin != nil {
 		sign := map[qa.Objective]string{qa.Equivalence: "±", qa.NotLower: "−"}[s.Objective]
 		fmt.Fprintf(p.out, "margin     the narrowest shown with power %s is %s%s\n", qa.Plain(s.Power), sign, strconv.FormatFloat(*z.SmallestMargin, 'g', 6, 64))
+	}
+	for _, w := range z.Warnings {
+		fmt.Fprintf(p.out, "warning    %s (%s)\n", w.Text, w.Code)
 	}
 	if s.N == 0 {
 		fmt.Fprintln(p.out, "for a new study, fixed before its readings are taken; not for adding readings until it passes")

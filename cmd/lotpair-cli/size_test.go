@@ -35,6 +35,11 @@ func TestSize(t *testing.T) {
 		{"pairs, 40 digits by mpmath", "--sd 1 --margin 1 --design paired --n 11", 11, 11, 0.8489996576730163, 1e-14, "paired"},
 		// SciPy, qa/stats/testdata/refpower.py: 0.13656864465.
 		{"Welch", "--sd 1 --sd-candidate 2 --margin 1 --n 10 --ratio 2 --method welch", 10, 20, 0.136568645, 1e-9, "welch"},
+		// The margin after the guard: as without one at 0.9; and counted by hand from the noncentral t, the estimate's error and the
+		// bias added as squares (qa/stats holds that to an integral over the bias).
+		{"a guard", "--sd 1 --margin 1 --guard 0.1", 28, 28, 0.9, 1.2e-2, "pooled"},
+		{"fractions with a guard", "--fractions 0.8 0.8 --margin 0.095 --guard 0.02 --alpha 0.1", 488, 488, 0.900184434, 1e-9, "miettinen-nurminen"},
+		{"groups of five", "--sd 0.0043 --sd-between 0.0097 --per-group 5 --margin 0.02 --method welch --n 7", 7, 7, 0.941331, 1e-6, "welch"},
 		{"pooled of unequal ones", "--sd 1 --sd-candidate 2 --margin 1 --n 10 --ratio 2", 10, 20, 0.02662562, 1e-8, "pooled"},
 	} {
 		t.Run(c.name, func(t *testing.T) {
@@ -97,6 +102,14 @@ func TestSizeRefuses(t *testing.T) {
 		"--sd one --margin 1":                                                "one",
 		"--sd 1 --margin 1 --objective not-lower --shift -1 --design paired": "inside the margin",
 		"--sd 1 --margin 1e400":                                              "1e400",
+		"--sd 1 --margin 1 --guard 1":                                        "less than the margin",
+		"--sd 1 --margin 1 --guard -0.1":                                     "guard: found",
+		"--sd 1 --objective higher --shift 1 --guard 0.1":                    "guard",
+		"--sd 1 --margin 1 --uncertainty-reference 0.7":                      "uncertainty: found 0.7",
+		"--sd 1 --margin 1 --uncertainty-candidate -0.7":                     "uncertainty below 0",
+		"--sd 1 --margin 1 --sd-between 1":                                   "--per-group",
+		"--sd 1 --margin 1 --sd-between 1 --per-group 0":                     "readings a group: found 0",
+		"--sd 1 --margin 1 --sd-between 1 --per-group 2 --spread-ratio 2":    "groups",
 		"--sd NaN --margin 1":                                                "standard deviation",
 		"--sd 1 --margin 1 --n 200000000":                                    "n: found",
 		"--sd 1 --margin 1 --design paired --characteristics 2 --ratio 2":    "--ratio",

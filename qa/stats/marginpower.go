@@ -27,6 +27,7 @@ func SmallestMargin(d Design, power float64) (float64, error) {
 	if !d.Paired {
 		unit = math.Hypot(unit, d.SDCand/math.Sqrt(float64(d.NCand)))
 	}
+	unit = math.Hypot(unit, d.Bias)
 	// The power rises from 0 to 1 with the margin. Against one limit it is alpha
 	// where the limit is the shift itself.
 	low, high := 0.0, math.Abs(d.Shift)+unit

@@ -13,10 +13,12 @@ var ErrUnequalLengths = errors.New("pairs of unequal number")
 
 // A PairedSpread compares the spreads of two lots of the same parts: SDRatio is
 // candidate over reference, T with DF degrees of freedom the statistic, P
-// two-sided, Interval that of the ratio of the true standard deviations.
+// two-sided, Interval that of the ratio of the true standard deviations,
+// Correlation that of the pairs.
 type PairedSpread struct {
 	SDRatio, T, DF, P float64
 	Interval          Interval
+	Correlation       float64
 }
 
 // PitmanMorgan tests whether two lots of the same parts have the same spread, for
@@ -43,13 +45,13 @@ func PitmanMorgan(ref, cand []float64, level float64) (PairedSpread, error) {
 	if sx == 0 || sy == 0 {
 		return PairedSpread{}, ErrConstant
 	}
-	_, rest := products(ref, cand, x, y)
+	both, rest := products(ref, cand, x, y)
 	if rest < 0x1p-80 {
 		return PairedSpread{}, ErrConstant
 	}
 	n := float64(len(ref))
 	ratio := math.Ldexp(math.Sqrt(sy/sx), y.exp-x.exp)
-	s := PairedSpread{SDRatio: ratio, DF: n - 2}
+	s := PairedSpread{SDRatio: ratio, DF: n - 2, Correlation: both / math.Sqrt(sx*sy)}
 	// (F-1)/sqrt(F) as ratio - 1/ratio, which no square overflows.
 	s.T = (ratio - 1/ratio) / 2 * math.Sqrt(s.DF/rest)
 	s.P = dist.StudentTwoSided(s.T, s.DF)

@@ -49,8 +49,14 @@ func (d Design) critical(df float64) float64 {
 }
 
 // shown is the probability that the aim is shown where the critical value is t and
-// the standard error found is se times S, df S^2 being chi-square.
+// the standard error found is se times S, df S^2 being chi-square. A bias is not in
+// what is found, but the estimate varies by it as well: with w the root of the sum of
+// both squares, t se S is t (se/w) times w S.
 func (d Design) shown(t, df, se float64) float64 {
+	if d.Bias > 0 {
+		w := math.Hypot(se, d.Bias)
+		t, se = t*(se/w), w
+	}
 	switch d.Aim {
 	case AimNotLower:
 		return dist.NoncentralTUpper(t, df, (d.Shift-d.Lower)/se)
@@ -73,11 +79,9 @@ func (d Design) near() float64 {
 	if d.Paired || !d.Welch && d.SDRef == d.SDCand {
 		return d.power()
 	}
-	nr, nc := float64(d.NRef), float64(d.NCand)
-	a, b := d.SDRef/math.Sqrt(nr), d.SDCand/math.Sqrt(nc)
-	se := math.Hypot(a, b)
-	p, q := (a/se)*(a/se), (b/se)*(b/se)
-	df := 1 / (p*p/(nr-1) + q*q/(nc-1))
+	w := d
+	w.Welch = true
+	df, se := w.expected()
 	return d.shown(d.critical(df), df, se)
 }
 

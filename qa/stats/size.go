@@ -17,7 +17,8 @@ var ErrNoSize = errors.New("more than 100,000,000 readings would be needed")
 // Size returns the smallest number of reference readings (pairs), at least 2, with
 // which the design shows its aim with at least the given power, the candidate's,
 // ratio times as many and rounded up, and the power they have. It returns
-// ErrBeyondMargin where no number would do. NRef and NCand of d are not read.
+// ErrBeyondMargin or ErrBias where no number would do. NRef and NCand of d are not
+// read.
 func Size(d Design, ratio, power float64) (nRef, nCand int, achieved float64, err error) {
 	nRef, nCand, err = Parts(d, ratio, power)
 	if err != nil {
@@ -68,6 +69,9 @@ func (d Design) size(ratio, power float64, alone bool) (nRef, nCand int, achieve
 	}
 	if d.room() <= 0 || d.SpreadRatio > 0 && d.SDCand/d.SDRef >= d.SpreadRatio {
 		return 0, 0, 0, ErrBeyondMargin
+	}
+	if !alone && power >= d.most() {
+		return 0, 0, 0, ErrBias
 	}
 	with := func(of func(Design) float64) func(n int) float64 {
 		return func(n int) float64 {
@@ -168,8 +172,8 @@ func (d Design) guess(ratio, power float64) float64 {
 	if d.Aim == AimWithin && d.Upper-d.Shift == d.Shift-d.Lower {
 		miss /= 2
 	}
-	z := max(0.1, -dist.NormalQuantile(tail)-dist.NormalQuantile(miss)) * sd / d.room()
-	return z*z + 1
+	z := max(0.1, -dist.NormalQuantile(tail)-dist.NormalQuantile(miss)) / d.room()
+	return square(z*sd) + 1
 }
 
 // smallest finds the least n from first on with at(n) at least want, where at
