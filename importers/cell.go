@@ -25,10 +25,15 @@ type taken struct {
 
 // takeCell reads one cell. The unit is that of the characteristic; decimal is the mark settled for the column's texts.
 func takeCell(c cells.Cell, isText bool, unit string, decimal byte) taken {
-	want := "a number"
-	if unit != "" {
-		want += " in " + unit
+	got := takeValue(c, isText, unit, decimal)
+	if got.isValue && c.Kind == cells.Number {
+		got.decimals = storedDecimals(c.Text, got.value)
 	}
+	return got
+}
+
+// takeValue does so and leaves the decimals of stored numbers open: to find them takes longer than all the rest.
+func takeValue(c cells.Cell, isText bool, unit string, decimal byte) taken {
 	switch c.Kind {
 	case cells.Blank:
 		return taken{isMissing: true}
@@ -38,9 +43,23 @@ func takeCell(c cells.Cell, isText bool, unit string, decimal byte) taken {
 			return taken{problem: err}
 		}
 		if u := formatUnit(c.Format); u != "" && unit != "" && unitKey(u) != unitKey(unit) {
-			return taken{problem: problem(OtherUnit, c.Text, want+"; its number format shows "+u)}
+			return taken{problem: problem(OtherUnit, c.Text, "a number in "+unit+"; its number format shows "+u)}
 		}
-		return taken{isValue: true, value: v, decimals: storedDecimals(v)}
+		return taken{isValue: true, value: v}
+	case cells.Text:
+		if v, decimals, ok := quickNumber(c.Text, decimal); ok {
+			got := taken{isValue: true, value: v, decimals: decimals}
+			if !isText {
+				got.converted = storedAsText
+			}
+			return got
+		}
+	}
+	want := "a number"
+	if unit != "" {
+		want += " in " + unit
+	}
+	switch c.Kind {
 	case cells.FormulaNoValue:
 		return taken{problem: problem(FormulaWithoutValue, c.Text, want+", not a formula without a stored value")}
 	case cells.Error:
@@ -58,6 +77,8 @@ func takeCell(c cells.Cell, isText bool, unit string, decimal byte) taken {
 	}
 	return takeText(c.Text, isText, unit, decimal, want)
 }
+
+const storedAsText = "a number stored as text"
 
 func takeText(text string, isText bool, unit string, decimal byte, want string) taken {
 	v, decimals, err := ParseNumber(text, decimal)
@@ -89,7 +110,7 @@ func takeText(text string, isText bool, unit string, decimal byte, want string) 
 	var reasons []string
 	thousands := false
 	if !isText {
-		reasons = append(reasons, "a number stored as text")
+		reasons = append(reasons, storedAsText)
 	}
 	if w, err := splitNumber(number, decimal); err == nil && w.grouped {
 		reasons = append(reasons, "thousands marks taken out")
@@ -107,7 +128,7 @@ func numeric(c cells.Cell) bool {
 	case cells.Number:
 		return true
 	case cells.Text:
-		if nonDetect(c.Text) {
+		if plainNumber(c.Text) || nonDetect(c.Text) {
 			return true
 		}
 		number, _, _ := cutUnit(c.Text)

@@ -80,7 +80,7 @@ func (r *reader) settleNominals() error {
 			}
 			v.nominal = exact(*c.Target)
 			v.target, _ = decimalText(v.nominal)
-			v.places = storedDecimals(*c.Target)
+			v.places = storedDecimals("", *c.Target)
 		}
 	}
 	if len(faults) > 0 {
@@ -207,7 +207,7 @@ func writtenDecimals(text string) int {
 	number, _, _ := cutUnit(text)
 	for _, mark := range []byte{'.', ','} {
 		if v, d, err := ParseNumber(number, mark); err == nil {
-			return min(d, storedDecimals(v))
+			return min(d, storedDecimals("", v))
 		}
 	}
 	return 0

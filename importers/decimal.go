@@ -12,7 +12,7 @@ type mark struct {
 	said    string       // how a comma was settled; empty for the point
 	unclear []cells.Cell // the cells that leave it open; empty where it is settled
 
-	grouping []cells.Cell // all the numbers with a point, where each of them could have it as a thousands mark
+	grouping *cells.Cell // the first number with a point, where each of them could have it as a thousands mark
 }
 
 // settleDecimal settles the decimal mark of one column's texts: by the plan; by the texts themselves where every one with a
@@ -22,8 +22,24 @@ func settleDecimal(texts []cells.Cell, plan string, lower, upper *float64) mark 
 	if plan != "" {
 		return mark{decimal: plan[0]}
 	}
-	var points, commas, open, grouping []cells.Cell
+	var commas, open []cells.Cell
+	points, could := 0, 0
+	var grouping cells.Cell
+	found := func(thousands bool, c cells.Cell) {
+		points++
+		if thousands {
+			if could++; could == 1 {
+				grouping = c
+			}
+		}
+	}
 	for _, c := range texts {
+		if point, thousands, ok := pointOf(c.Text); ok {
+			if point {
+				found(thousands, c)
+			}
+			continue
+		}
 		number, _, _ := cutUnit(unsigned(c.Text))
 		w, err := splitNumber(number, 0)
 		switch {
@@ -34,19 +50,17 @@ func settleDecimal(texts []cells.Cell, plan string, lower, upper *float64) mark 
 		case w.comma:
 			commas = append(commas, c)
 		case w.fraction != "" || w.grouped:
-			points = append(points, c)
-			if _, could := ungroup(strings.TrimLeft(trimmed(number), "+-\u2212"), "."); could {
-				grouping = append(grouping, c)
-			}
+			_, could := ungroup(strings.TrimLeft(trimmed(number), "+-\u2212"), ".")
+			found(could, c)
 		}
 	}
 	switch {
 	case len(open) == 0 && len(commas) == 0:
-		if len(grouping) < len(points) {
-			grouping = nil
+		if points == 0 || could < points {
+			return mark{decimal: '.'}
 		}
-		return mark{decimal: '.', grouping: grouping}
-	case len(points) > 0:
+		return mark{decimal: '.', grouping: &grouping}
+	case points > 0:
 		return mark{unclear: append(append([]cells.Cell{}, open...), commas...)}
 	case len(open) == 0:
 		return mark{decimal: ',', said: "every number with a comma there can only have a decimal comma"}
@@ -61,6 +75,18 @@ func settleDecimal(texts []cells.Cell, plan string, lower, upper *float64) mark 
 		}
 	}
 	return mark{unclear: open}
+}
+
+// pointOf says quickly of a plain number without a comma whether it has a point, and whether that could be a thousands mark.
+func pointOf(text string) (point, thousands, ok bool) {
+	if !plainNumber(text) || strings.IndexByte(text, ',') >= 0 {
+		return false, false, false
+	}
+	if text[0] == '-' {
+		text = text[1:]
+	}
+	mark := strings.IndexByte(text, '.')
+	return mark > 0, mark > 0 && mark <= 3 && text[0] != '0' && len(text)-mark == 4, true
 }
 
 // near counts the cells whose value lies within the limits or one tolerance beyond them.

@@ -122,8 +122,7 @@ func (w Watched) InspectAs(name string, data []byte, stated qa.ReadingPlan, all 
 }
 
 // unread lists a cell that is not a plain number.
-func (in *Inspection) unread(t *table, row row, col int, got taken) {
-	cell := t.cell(row, col)
+func (in *Inspection) unread(t *table, cell cells.Cell, got taken) {
 	switch {
 	case got.isMissing:
 		in.list(t, cell, qa.TakenMissing, nil)

@@ -1,6 +1,7 @@
 package importers
 
 import (
+	"lotpair/importers/cells"
 	"lotpair/qa"
 )
 
@@ -65,18 +66,37 @@ func (in *Inspection) readColumn(t *table, ch *qa.Characteristic, col int, marks
 	}
 	marks[m.decimal] = true
 	values := map[string][]float64{}
+	var seen looks
+	var bounds []string
+	lot, list := "", []float64(nil) // of the rows before
+	if len(t.rows) > 0 {
+		lot = t.rows[0].lot
+	}
 	for _, row := range t.rows {
-		if t.tidy != nil && absent(t.cell(row, col)) {
+		cell := t.cell(row, col)
+		seen.see(cell)
+		if t.tidy != nil && absent(cell) {
 			continue
 		}
-		got := takeCell(t.cell(row, col), t.book.IsText, ch.Unit, m.decimal)
-		if got.isValue {
-			values[row.lot] = append(values[row.lot], got.value)
+		got := takeValue(cell, t.book.IsText, ch.Unit, m.decimal)
+		if row.lot != lot {
+			values[lot] = list
+			lot, list = row.lot, values[row.lot]
 		}
-		in.unread(t, row, col, got)
+		if got.isValue {
+			list = append(list, got.value)
+		} else if cell.Kind == cells.Text && nonDetect(cell.Text) {
+			bounds = append(bounds, cell.Name())
+		}
+		in.unread(t, cell, got)
 	}
-	t.sayFormats(t.rows, col, ch.Name)
+	values[lot] = list
+	seen.say(t, ch.Name)
 	t.inspectOdd(ch.Name, ch.Unit, col, m.decimal, values)
+	if len(bounds) > 0 {
+		t.warn(qa.WarnNonDetects, "%s: %s only that the value is below or above a limit (%s). A verdict is given only where it does not matter what they are; else state non_detect under [reading] before the readings are compared.",
+			ch.Name, qa.Count(len(bounds), "cell states", "cells state"), join2(bounds))
+	}
 	for _, at := range t.summary {
 		if cell := t.sheet.Rows[at].At(col); stored(cell) {
 			in.list(t, cell, qa.TakenSummary, nil)

@@ -8,62 +8,98 @@ import (
 	"lotpair/qa"
 )
 
-// sayCells tells what the cells of one characteristic carry beside their values: formats that show something else, dates,
-// marks that people read meaning into. It changes nothing.
-func (t *table) sayCells(rows []row, col int, name string) {
-	found := map[string][]string{}
-	shown := map[string]cells.Shown{}
-	filled := 0
-	var first string
-	for _, r := range rows {
-		c := t.cell(r, col)
-		if c.Marks != 0 {
-			for mark, of := range map[string]cells.Marks{"struck": cells.Struck, "filled": cells.Filled, "commented": cells.Commented} {
-				if c.Marks.Has(of) {
-					found[mark] = append(found[mark], c.Name())
-				}
+// looks gathers what the cells of one characteristic carry beside their values: formats that show something else, formulas,
+// dates, marks that people read meaning into. It changes nothing.
+type looks struct {
+	found    map[string][]string
+	cells    int
+	filled   int
+	unit     string
+	percents []string
+	formulas []string
+	format   string // the one looked at last: most cells have that of the one before
+	shown    cells.Shown
+	percent  bool
+}
+
+// see looks at one cell.
+func (l *looks) see(c cells.Cell) {
+	l.cells++
+	if c.Marks != 0 {
+		for mark, of := range map[string]cells.Marks{"struck": cells.Struck, "filled": cells.Filled, "commented": cells.Commented} {
+			if c.Marks.Has(of) {
+				l.add(mark, c)
 			}
-			if c.Marks.Has(cells.Filled) {
-				filled++
-			}
 		}
-		if c.Kind == cells.Date || c.Kind == cells.Text && dateText(c.Text) {
-			found["date"] = append(found["date"], c.Name())
-		}
-		if c.Kind != cells.Number || c.Format == "" {
-			continue
-		}
-		f, ok := shown[c.Format]
-		if !ok {
-			f = cells.ShownBy(c.Format)
-			shown[c.Format] = f
-		}
-		if f.Currency != "" {
-			found["currency"] = append(found["currency"], c.Name())
-		}
-		if f.Thousand > 0 {
-			found["thousand"] = append(found["thousand"], c.Name())
-		}
-		if f.Text != "" && isUnit(f.Text) {
-			found["unit"] = append(found["unit"], c.Name())
-			first = f.Text
-		}
-		places := f.Places
-		if f.Percent {
-			places += 2
-		}
-		if f.Places < 0 || f.Thousand > 0 || fewDecimals(c.Text, places) {
-			continue
-		}
-		if v, _, err := ParseNumber(c.Text, '.'); err == nil && storedDecimals(v) > places {
-			found["hidden"] = append(found["hidden"], c.Name())
+		if c.Marks.Has(cells.Filled) {
+			l.filled++
 		}
 	}
-	if 2*filled > len(rows) { // the table's own dress
-		delete(found, "filled")
+	if c.Kind == cells.Date || c.Kind == cells.Text && !plainNumber(c.Text) && dateText(c.Text) {
+		l.add("date", c)
+	}
+	if c.Kind != cells.Number {
+		return
+	}
+	if c.Formula {
+		l.formulas = append(l.formulas, c.Name())
+	}
+	if c.Format != "" {
+		l.seeFormat(c)
+	}
+}
+
+func (l *looks) add(key string, c cells.Cell) {
+	if l.found == nil {
+		l.found = map[string][]string{}
+	}
+	l.found[key] = append(l.found[key], c.Name())
+}
+
+// seeFormat looks at what the number format of a cell shows.
+func (l *looks) seeFormat(c cells.Cell) {
+	if c.Format != l.format {
+		l.format, l.shown, l.percent = c.Format, cells.ShownBy(c.Format), cells.Percent(c.Format)
+	}
+	f := &l.shown
+	if l.percent {
+		l.percents = append(l.percents, c.Name())
+	}
+	if f.Currency != "" {
+		l.add("currency", c)
+	}
+	if f.Thousand > 0 {
+		l.add("thousand", c)
+	}
+	if f.Text != "" && isUnit(f.Text) {
+		l.add("unit", c)
+		l.unit = f.Text
+	}
+	places := f.Places
+	if f.Percent {
+		places += 2
+	}
+	if f.Places < 0 || f.Thousand > 0 || fewDecimals(c.Text, places) {
+		return
+	}
+	if v, _, err := ParseNumber(c.Text, '.'); err == nil && storedDecimals(c.Text, v) > places {
+		l.add("hidden", c)
+	}
+}
+
+// say tells what was seen of a characteristic. Percent formats and readings that formulas computed are taken as stored.
+func (l *looks) say(t *table, name string) {
+	if n := len(l.percents); n > 0 {
+		t.warn("percent-format", "%s: %s shown in percent and taken as stored, a hundredth of what is shown (%s).", name, qa.Count(n, "cell is", "cells are"), join2(l.percents))
+	}
+	if n := len(l.formulas); n > 0 {
+		t.warn("formula-cells", "%s: %s computed by a formula; the value stored when the file was last calculated is taken, which may be stale (%s).", name, qa.Count(n, "reading is", "readings are"), join2(l.formulas))
+	}
+	if 2*l.filled > l.cells { // the table's own dress
+		delete(l.found, "filled")
 	}
 	tell := func(key, code, text string) {
-		if at := found[key]; len(at) > 0 {
+		if at := l.found[key]; len(at) > 0 {
 			t.warn(code, "%s: %s %s (%s).", name, qa.Count(len(at), "cell", "cells"), text, join2(at))
 		}
 	}
@@ -73,11 +109,11 @@ func (t *table) sayCells(rows []row, col int, name string) {
 	tell("date", "dates", "where a number is wanted hold a date: a spreadsheet makes dates of numbers such as 12.01 or 5.1987, and no format brings them back. Write them again from the original")
 	tell("currency", "currency-format", "shown as money and taken as stored")
 	tell("thousand", "scaled-format", "shown in thousands and taken as stored")
-	if at := found["hidden"]; len(at) > 0 {
+	if at := l.found["hidden"]; len(at) > 0 {
 		t.say("%s: %s more decimals than the number format shows; the stored numbers are used (%s).", name, qa.Count(len(at), "cell holds", "cells hold"), join2(at))
 	}
-	if at := found["unit"]; len(at) > 0 {
-		t.say("%s: the number format of %s shows the unit %s (%s).", name, qa.Count(len(at), "cell", "cells"), first, join2(at))
+	if at := l.found["unit"]; len(at) > 0 {
+		t.say("%s: the number format of %s shows the unit %s (%s).", name, qa.Count(len(at), "cell", "cells"), l.unit, join2(at))
 	}
 }
 

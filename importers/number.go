@@ -185,8 +185,11 @@ func wholeNumber(s string) (int, bool) {
 }
 
 // storedDecimals are the decimals of a number that a spreadsheet stored in binary: of its 15 significant digits, which is
-// what was typed (12.003 is stored as 12.003000000000001 by some programs).
-func storedDecimals(value float64) int {
+// what was typed (12.003 is stored as 12.003000000000001 by some programs). The text is the number's as stored.
+func storedDecimals(text string, value float64) int {
+	if n, ok := shortDecimals(text); ok {
+		return n
+	}
 	s := strconv.FormatFloat(value, 'e', 14, 64)
 	mantissa, exponent, _ := strings.Cut(s, "e")
 	e, err := strconv.Atoi(exponent)

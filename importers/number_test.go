@@ -130,7 +130,7 @@ func TestStoredDecimals(t *testing.T) {
 		value float64
 		want  int
 	}{{12.003, 3}, {12.003000000000001, 3}, {12, 0}, {0, 0}, {1e-7, 7}, {1.5e20, 0}, {569.67, 2}, {-0.25, 2}} {
-		if got := storedDecimals(tt.value); got != tt.want {
+		if got := storedDecimals("", tt.value); got != tt.want {
 			t.Errorf("storedDecimals(%v): got %d, want %d", tt.value, got, tt.want)
 		}
 	}

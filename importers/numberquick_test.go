@@ -2,6 +2,7 @@ package importers
 
 import (
 	"math"
+	"strings"
 	"testing"
 
 	"pgregory.net/rapid"
@@ -26,4 +27,31 @@ func TestQuickNumber(t *testing.T) {
 			t.Errorf("%q: got it left to the long way, want it read", text)
 		}
 	}
+}
+
+// What the quick looks at plain numbers say is what the careful ones say.
+func TestQuickLooks(t *testing.T) {
+	rapid.Check(t, func(rt *rapid.T) {
+		s := rapid.StringMatching(`-?[0-9]{0,5}[.,]?[0-9]{0,19}`).Draw(rt, "text")
+		_, _, point := parseNumber(s, '.')
+		_, _, comma := parseNumber(s, ',')
+		if plainNumber(s) && point != nil && comma != nil {
+			rt.Errorf("plainNumber(%q): got true, want false: %v, %v", s, point, comma)
+		}
+		if got, ok := shortDecimals(s); ok && point == nil {
+			value, _, _ := parseNumber(s, '.')
+			if want := storedDecimals("", value); got != want {
+				rt.Errorf("shortDecimals(%q): got %d, want %d", s, got, want)
+			}
+		}
+		is, thousands, ok := pointOf(s)
+		if !ok {
+			return
+		}
+		w, err := splitNumber(s, 0)
+		_, could := ungroup(strings.TrimLeft(s, "-"), ".")
+		if err != nil || w.comma || is != (w.fraction != "") || thousands != could {
+			rt.Errorf("pointOf(%q): got %v, %v, want %+v, %v", s, is, thousands, w, could)
+		}
+	})
 }

@@ -3,7 +3,6 @@ package importers
 import (
 	"fmt"
 
-	"lotpair/importers/cells"
 	"lotpair/qa"
 )
 
@@ -26,19 +25,18 @@ func (t *table) warnOdd(name string, values []float64, at []qa.Source) {
 	}
 }
 
-// inspectOdd tells of them where no plan is there yet, lot by lot, and of cells that state only a bound. The values are those of
+// inspectOdd tells of them where no plan is there yet, lot by lot. The values are those of
 // the column, by lot.
 func (t *table) inspectOdd(name, unit string, col int, decimal byte, values map[string][]float64) {
 	odd := map[string][]oddReading{}
 	var lots []string
-	var bounds []string
-	for _, row := range t.rows {
+	for i, row := range t.rows {
+		if i > 0 && row.lot == t.rows[i-1].lot {
+			continue
+		}
 		if _, ok := odd[row.lot]; !ok {
 			odd[row.lot] = oddReadings(values[row.lot])
 			lots = append(lots, row.lot)
-		}
-		if cell := t.cell(row, col); cell.Kind == cells.Text && nonDetect(cell.Text) {
-			bounds = append(bounds, cell.Name())
 		}
 	}
 	for _, l := range lots {
@@ -47,14 +45,10 @@ func (t *table) inspectOdd(name, unit string, col int, decimal byte, values map[
 		}
 		var at []qa.Source
 		for _, row := range t.rows {
-			if cell := t.cell(row, col); row.lot == l && takeCell(cell, t.book.IsText, unit, decimal).isValue {
+			if cell := t.cell(row, col); row.lot == l && takeValue(cell, t.book.IsText, unit, decimal).isValue {
 				at = append(at, t.book.source(t.sheet.Name, cell))
 			}
 		}
 		t.warnOdd(name, values[l], at)
-	}
-	if len(bounds) > 0 {
-		t.warn(qa.WarnNonDetects, "%s: %s only that the value is below or above a limit (%s). A verdict is given only where it does not matter what they are; else state non_detect under [reading] before the readings are compared.",
-			name, qa.Count(len(bounds), "cell states", "cells state"), join2(bounds))
 	}
 }

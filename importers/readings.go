@@ -333,16 +333,16 @@ func (r *reader) mixedMarks() []Fault {
 			continue
 		}
 		for _, m := range s.marks {
-			if len(m.grouping) == 0 {
+			if m.grouping == nil {
 				continue
 			}
-			place := s.table.cellPlace(m.grouping[0])
+			place := s.table.cellPlace(*m.grouping)
 			if seen[place] {
 				continue
 			}
 			seen[place] = true
 			faults = append(faults, Fault{Place: place, Text: fmt.Sprintf("found %s beside a column with the decimal comma, want a number whose decimal mark is known; "+
-				"state decimal under [reading]", quoted(m.grouping[0].Text))})
+				"state decimal under [reading]", quoted(m.grouping.Text))})
 		}
 	}
 	return faults

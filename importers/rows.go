@@ -113,7 +113,7 @@ func (t *table) sameHeading(r cells.Row) bool {
 
 // label is what a row's label makes of it, and whether the label is short: such a one may be a part's id just as well.
 // Labels stand in the lot column, in the part column, or in the first cell of a row without a lot.
-func (t *table) label(r cells.Row) (means string, short bool) {
+func (t *table) label(r cells.Row, parts []int) (means string, short bool) {
 	at := make([]cells.Cell, 0, 3)
 	lot := ""
 	if t.lot > 0 {
@@ -124,10 +124,8 @@ func (t *table) label(r cells.Row) (means string, short bool) {
 			at = append(at, r.At(t.lot))
 		}
 	}
-	for _, c := range t.columns {
-		if c.col == t.part || t.part == 0 && c.col != t.lot && headingMeans(c.heading) == partHeading {
-			at = append(at, r.At(c.col))
-		}
+	for _, col := range parts {
+		at = append(at, r.At(col))
 	}
 	if lot == "" {
 		for _, c := range r.Cells {
@@ -158,9 +156,15 @@ func (t *table) takeLabelled(data []row) []row {
 		means string
 		short bool
 	}
+	var parts []int // columns
+	for _, c := range t.columns {
+		if c.col == t.part || t.part == 0 && c.col != t.lot && headingMeans(c.heading) == partHeading {
+			parts = append(parts, c.col)
+		}
+	}
 	labels := make([]labelled, len(data))
 	for i, d := range data {
-		labels[i].means, labels[i].short = t.label(t.sheet.Rows[d.at])
+		labels[i].means, labels[i].short = t.label(t.sheet.Rows[d.at], parts)
 	}
 	for i := 0; i < len(data); {
 		j, long := i, false

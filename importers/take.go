@@ -22,20 +22,23 @@ func (r *reader) takeReadings() error {
 			}
 			series := qa.Series{Characteristic: c.Name, Rows: len(s.rows), Readings: make([]qa.Reading, 0, len(s.rows))}
 			var thousands []string
+			var seen looks
 			for n, row := range s.rows {
 				if err := r.watch.stop(taking, c.Name, n); err != nil {
 					return err
 				}
-				if got := r.take(s, &series, c, row, k); got.thousands {
-					thousands = append(thousands, s.table.cell(row, s.cols[k]).Name())
+				cell := s.table.cell(row, s.cols[k])
+				if got := r.take(s, &series, c, row, cell, k); got.thousands {
+					thousands = append(thousands, cell.Name())
 				}
+				seen.see(cell)
 			}
 			if len(thousands) > 0 {
 				s.table.warn("thousands-mark", "%s: a mark between groups of three digits is taken for a thousands mark in %s (%s).", c.Name, qa.Count(len(thousands), "cell", "cells"), join2(thousands))
 			}
 			s.lot.Series = append(s.lot.Series, series)
 			if c.Kind != kindAttribute {
-				s.table.sayFormats(s.rows, s.cols[k], c.Name)
+				seen.say(s.table, c.Name)
 			}
 		}
 	}
@@ -50,9 +53,8 @@ func (r *reader) takeReadings() error {
 }
 
 // take puts one cell where it belongs: a reading, or an entry of the ledger, or both.
-func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row row, k int) taken {
+func (r *reader) take(s *lotSide, series *qa.Series, c qa.Characteristic, row row, cell cells.Cell, k int) taken {
 	t := s.table
-	cell := t.cell(row, s.cols[k])
 	got := taken{}
 	if absent(cell) && t.tidy != nil {
 		series.Rows--
@@ -162,27 +164,6 @@ func (t *table) unmerged(rows []row, col int) error {
 		}
 	}
 	return nil
-}
-
-// sayFormats warns of percent formats and of readings that formulas computed: both are taken as stored.
-func (t *table) sayFormats(rows []row, col int, name string) {
-	percent, formulas := []string{}, []string{}
-	for _, r := range rows {
-		c := t.cell(r, col)
-		if c.Kind == cells.Number && cells.Percent(c.Format) {
-			percent = append(percent, c.Name())
-		}
-		if c.Kind == cells.Number && c.Formula {
-			formulas = append(formulas, c.Name())
-		}
-	}
-	if len(percent) > 0 {
-		t.warn("percent-format", "%s: %s shown in percent and taken as stored, a hundredth of what is shown (%s).", name, qa.Count(len(percent), "cell is", "cells are"), join2(percent))
-	}
-	if len(formulas) > 0 {
-		t.warn("formula-cells", "%s: %s computed by a formula; the value stored when the file was last calculated is taken, which may be stale (%s).", name, qa.Count(len(formulas), "reading is", "readings are"), join2(formulas))
-	}
-	t.sayCells(rows, col, name)
 }
 
 // checkRepeats refuses an id that stands twice in a lot: the part would count twice.

@@ -204,7 +204,13 @@ func cutUnit(text string) (number, unit string, ok bool) {
 
 // isNumber says whether a text is a number with either decimal mark.
 func isNumber(text string) bool {
+	if plainNumber(text) {
+		return true
+	}
 	_, _, point := ParseNumber(text, '.')
+	if point == nil {
+		return true
+	}
 	_, _, comma := ParseNumber(text, ',')
-	return point == nil || comma == nil
+	return comma == nil
 }
