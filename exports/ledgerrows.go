@@ -23,7 +23,7 @@ func ledgerSheet(rec qa.Record) sheet {
 		s.add(wide("Every cell of the lots was a plain number.", plainLook, 8))
 	}
 	s.gap()
-	s.add(text("What each cell was", groupLook))
+	s.add(wide("What each cell was", groupLook, 4))
 	s.add(heads("File", "Sheet", "Taken as", "Cells")...)
 	total := 0
 	for _, a := range rec.Readings.Account {
@@ -32,7 +32,7 @@ func ledgerSheet(rec qa.Record) sheet {
 	}
 	s.add(text("All cells", strongLook), text("", strongLook), text("", strongLook), whole(total, numberLook))
 	s.gap()
-	s.add(text("Detected, or done by default", groupLook))
+	s.add(wide("Detected, or done by default", groupLook, 8))
 	for _, t := range rec.Readings.Said {
 		s.addTall(lines(t, 150)*13.5, wide(t, wrapLook, 8))
 	}

@@ -1,6 +1,8 @@
 package exports
 
 import (
+	"crypto/ecdsa"
+	"crypto/rsa"
 	"crypto/x509"
 	"crypto/x509/pkix"
 	"fmt"
@@ -149,8 +151,26 @@ func noteSignature(g SignatureView, when time.Time, line func(name, value string
 		line("issued by", issuer(c))
 		line("serial number", c.SerialNumber.Text(16))
 		line("valid", validity(c, when))
-		line("algorithm", c.PublicKeyAlgorithm.String()+", SHA-256")
+		line("algorithm", algorithm(c))
 	}
+}
+
+// algorithm is the kind of key that a certificate is for, and the digest that is signed.
+func algorithm(c *x509.Certificate) string {
+	kind := c.PublicKeyAlgorithm.String()
+	switch k := c.PublicKey.(type) {
+	case *rsa.PublicKey:
+		kind += fmt.Sprintf(" of %d bits", k.N.BitLen())
+	case *ecdsa.PublicKey:
+		kind += " on " + k.Params().Name
+	}
+	return kind + ", SHA-256"
+}
+
+// certificateText is what a certificate says of itself, as the sheets have it of the first signer.
+func certificateText(c *x509.Certificate) string {
+	const day = "2006-01-02"
+	return fmt.Sprintf("issued by %s, serial number %s, valid %s to %s, %s", issuer(c), c.SerialNumber.Text(16), c.NotBefore.UTC().Format(day), c.NotAfter.UTC().Format(day), algorithm(c))
 }
 
 func issuer(c *x509.Certificate) string {

@@ -20,7 +20,7 @@ func sensitivitySheet(rec qa.Record) (sheet, bool) {
 
 // sensitivityOf reads the blocks under the result format's name, so that a figure that comes to them comes to the sheet.
 func sensitivityOf(names []string, all []reflect.Value) (sheet, bool) {
-	var t table
+	t := table{least: 20}
 	t.head("characteristic", "characteristic")
 	for i, c := range all {
 		list := fieldOf(c, "sensitivity")
@@ -36,10 +36,27 @@ func sensitivityOf(names []string, all []reflect.Value) (sheet, bool) {
 	s.add(text("Sensitivity", titleLook))
 	s.addTall(30, wide("The verdict again under each other method. None of them changes the verdict of the criterion; where they part, look why.", wrapLook, max(2, len(t.names))))
 	t.to(&s, sensitivityMeaning)
-	for i, w := range s.widths {
-		s.widths[i] = max(w, 20)
+	s.gap()
+	seen := map[string]bool{}
+	for _, r := range t.rows {
+		if m := r["method"].text; !seen[m] && waysWords[m] != "" {
+			seen[m] = true
+			s.add(text(m, mutedLook), text(waysWords[m], plainLook))
+		}
 	}
 	return s, len(t.rows) > 0
+}
+
+// waysWords say in words what each other way of computing the verdict is.
+var waysWords = map[string]string{
+	"welch": "means with their own variances (Welch)", "pooled": "means with one variance for both lots (Student)",
+	"log": "ratio of geometric means, on natural logarithms", "trimmed": "means without the lowest and highest fifth of the readings (Yuen)",
+	"ranks":     "shift by ranks: the median of all differences between the lots (Hodges, Lehmann)",
+	"bootstrap": "readings drawn again from each lot with replacement", "permutation": "readings dealt again to the two lots",
+	"exclusions-put-back": "with every reading that was left out", "exclusion-put-back": "with the one reading of the named cell that was left out",
+	"outlying-removed": "without the readings that the generalized ESD test calls outlying; no ground to leave them out",
+	"non-detects-best": "non-detects at the end of their range that favours what is to be shown", "non-detects-worst": "non-detects at the end that speaks against it",
+	"gauge-bias": "with the stated uncertainty of the bias of the gauges",
 }
 
 func sensitivityMeaning(name string) string {

@@ -94,7 +94,7 @@ func Sign(pkg []byte, id identity.Identity, st opcsign.Statement) ([]byte, error
 func signerOf(id identity.Identity, st opcsign.Statement) *qa.Signer {
 	return &qa.Signer{
 		Name: st.Name, Title: st.Title, Organization: st.Organization, Meaning: st.Meaning,
-		Reason: st.Reason, Disposition: st.Disposition, Time: st.Time, Fingerprint: id.Fingerprint(),
+		Reason: st.Reason, Disposition: st.Disposition, Time: st.Time, Fingerprint: id.Fingerprint(), Certificate: certificateText(id.Chain[0]),
 	}
 }
 

@@ -41,7 +41,7 @@ func summarySheet(rec qa.Record, digest string) sheet {
 	sourceBlock(&s, rec)
 	heldBlock(&s, rec)
 	s.gap()
-	s.add(wide("Cautions", groupLook, summaryColumns))
+	section(&s, "Cautions")
 	for _, c := range qa.Cautions() {
 		paragraph(&s, c, smallLook, smallRoom, 12.5)
 	}
@@ -68,8 +68,13 @@ func supportsLine(rec qa.Record) string {
 	add("part", rec.Plan.Record.Part)
 	add("revision", rec.Plan.Record.Revision)
 	add("claim:", map[string]string{"lots": "these two lots only"}[rec.Result.Claim])
-	add("keep:", rec.Plan.Retention)
 	return strings.Join(parts, "  ·  ")
+}
+
+// section is a heading with its rule and a little room below.
+func section(s *sheet, head string) {
+	s.add(wide(head, groupLook, summaryColumns))
+	s.addTall(3)
 }
 
 // lines is how many lines a text takes at so many characters a line.
@@ -192,7 +197,7 @@ func intervalText(c qa.Comparison) string {
 
 func criterionBlock(s *sheet, rec qa.Record) {
 	r := rec.Result
-	s.add(wide("Criterion", groupLook, summaryColumns))
+	section(s, "Criterion")
 	paragraph(s, sealText(r.Seal), plainLook, summaryLineRoom, 14)
 	paragraph(s, "Digest of the criterion (SHA-256): "+r.Seal.Digest, smallLook, smallRoom, 12.5)
 	paragraph(s, "The margin is the equivalence limit of ASTM E2935. All characteristics asked for equivalence, not lower or not higher must hold.", smallLook, smallRoom, 12.5)
@@ -235,7 +240,7 @@ func sealText(seal qa.Seal) string {
 }
 
 func sourceBlock(s *sheet, rec qa.Record) {
-	s.add(wide("Source files", groupLook, summaryColumns))
+	section(s, "Source files")
 	seen := map[string]bool{}
 	files := append(append([]qa.File{}, rec.Result.Reference.Files...), rec.Result.Candidate.Files...)
 	if rec.PlanFile.Name != "" {
@@ -253,7 +258,7 @@ func sourceBlock(s *sheet, rec qa.Record) {
 
 // heldBlock says what stands in the ledger and what the checks came upon.
 func heldBlock(s *sheet, rec qa.Record) {
-	s.add(wide("Findings", groupLook, summaryColumns))
+	section(s, "Findings")
 	paragraph(s, ledgerText(rec.Readings.Ledger), plainLook, summaryLineRoom, 14)
 	for _, e := range rec.Readings.Ledger {
 		if e.TakenAs == qa.TakenExcluded {
@@ -306,12 +311,18 @@ func signatureBlock(s *sheet, rec qa.Record, digest string) {
 	if g := rec.Signer; g != nil && !printed {
 		signerRow(s, *g)
 	}
+	s.addTall(4)
+	if g := rec.Signer; g != nil && g.Certificate != "" {
+		paragraph(s, "The first signer's certificate: "+g.Certificate+". Time by the clock of the signer's machine. Each signature covers every part of this file.", smallLook, smallRoom, 12.5)
+	}
 	if g := rec.Signer; g != nil && g.Reason != "" {
 		paragraph(s, "Reason of the first signature: "+g.Reason, smallLook, smallRoom, 12.5)
 	}
 	if g := rec.Signer; g != nil && g.Disposition != "" {
-		paragraph(s, "Disposition stated with it by the signer: "+g.Disposition, smallLook, smallRoom, 12.5)
+		paragraph(s, "Disposition stated with it by the signer: "+g.Disposition, strongWrapLook, 115, 14)
 	}
+	paragraph(s, "Later signatures, with reason and disposition, stand in the signatures of this file: lotpair-cli verify shows them, and --note writes them as a page to print.", smallLook, smallRoom, 12.5)
+	paragraph(s, "Retention: "+orWord(rec.Plan.Retention, "not stated in the plan; the site's rule holds")+".", smallLook, smallRoom, 12.5)
 	v := rec.Result.Software
 	paragraph(s, fmt.Sprintf("Record %s: the first digits of the digest of its content, signatures apart (SHA-256): %s", RecordID(digest), digest), smallLook, smallRoom, 12.5)
 	paragraph(s, fmt.Sprintf("Made by Lotpair %s (%s), calculation %d, %s/%s.", v.Version, orWord(v.Revision, "no revision"), v.Calculation, v.OS, v.Arch), smallLook, smallRoom, 12.5)

@@ -12,7 +12,8 @@ type table struct {
 	names []string
 	at    map[string]int
 	rows  []map[string]figureRow
-	fixed int // the first columns stay where they are
+	fixed int     // the first columns stay where they are
+	least float64 // the narrowest column, where more than headings and values need
 }
 
 // head fixes the first columns, whether or not a row has them.
@@ -58,7 +59,7 @@ func (t *table) to(s *sheet, meaning func(name string) string) {
 	for i, n := range t.names {
 		look, wordLook := headPlainLook, headLook
 		w := meaning(n)
-		width := headWidth(n, w)
+		width := math.Max(t.least, headWidth(n, w))
 		if i > 0 && t.numeric(n) {
 			look, wordLook = headPlainRightLook, headRightLook
 		}

@@ -5,6 +5,7 @@ import (
 	"crypto/x509"
 	"encoding/hex"
 	"fmt"
+	"strings"
 	"time"
 
 	"lotpair/exports/identity"
@@ -116,6 +117,8 @@ func (v *Verification) printed(report opcsign.Report, p *qa.Signer) {
 	first, fingerprint := report.Signatures[0], v.Signatures[0].Fingerprint
 	st := first.Statement
 	switch {
+	case p != nil && p.Certificate != "" && (first.Certificate == nil || p.Certificate != certificateText(first.Certificate)):
+		v.disagree("signer-differs", first.Part, fmt.Sprintf("the sheets say that the first signer's certificate is %q, and it is another", p.Certificate))
 	case p == nil:
 		v.disagree("signer-differs", first.Part, fmt.Sprintf("the sheets call this an unsigned draft, and it is signed by %s", st.Name))
 	case p.Name != st.Name || p.Meaning != st.Meaning || p.Title != st.Title || p.Organization != st.Organization || p.Reason != st.Reason ||
@@ -224,11 +227,18 @@ func (v *Verification) disagree(code, part, text string) {
 // meanings finds the required meanings that no valid signature has, and meanings that share a key.
 func (v *Verification) meanings(report opcsign.Report, rec qa.Record) {
 	signed, keys := map[string]bool{}, map[string]string{}
+	expected := map[string]string{}
+	for _, q := range rec.Plan.RequiredMeanings() {
+		expected[q.Meaning] = q.Name
+	}
 	for _, s := range report.Signatures {
 		if !s.Valid || s.Certificate == nil {
 			continue
 		}
 		signed[s.Statement.Meaning] = true
+		if name := expected[s.Statement.Meaning]; name != "" && !strings.EqualFold(name, s.Statement.Name) {
+			v.reason("signer-expected", s.Part, fmt.Sprintf("found it signed as %s by %s, and the record expects %s; ask whether the one may sign for the other", s.Statement.Meaning, s.Statement.Name, name))
+		}
 		key := string(s.Certificate.RawSubjectPublicKeyInfo)
 		if before, ok := keys[key]; ok && before != s.Statement.Meaning {
 			v.reason("same-signer", s.Part, fmt.Sprintf("%s and %s were signed with the same key; a complete record needs different persons", before, s.Statement.Meaning))

@@ -23,7 +23,7 @@ const (
 // show the sheet. Functions are those that the programs share under one name; their t distribution cuts degrees of freedom to
 // whole numbers, so the beta distribution stands in its place.
 func workingsSheet(rec qa.Record) sheet {
-	s := sheet{name: SheetWorkings, widths: []float64{37, 24, 24, 15, 62}}
+	s := sheet{name: SheetWorkings, widths: []float64{34, 21, 21, 11, 50}}
 	s.add(text("Workings", titleLook))
 	s.addTall(44, wide("The figures derived from the sheet Readings by live formulas, beside what the record states. Compute them again with "+
 		"Ctrl+Alt+F9 (Excel) or Ctrl+Shift+F9 (LibreOffice), and look at the column Difference: rounding only. Do not save: a saved copy loses its signatures.", wrapLook, 5))
@@ -68,7 +68,7 @@ func (w *workings) line(name string, value *float64, formula, how string, stated
 		beside.number = value
 		difference = cell{number: &zero, formula: here + "-" + cells.Name(workingsStated, row), look: ruledNumberLook}
 	}
-	w.sheet.addTall(lines(how, 76)*13+2, text(name, ruledLook), computed, beside, difference, text(how, ruledWrapLook))
+	w.sheet.addTall(lines(how, 58)*13+2, text(name, ruledLook), computed, beside, difference, text(how, ruledWrapLook))
 }
 
 // fill puts cells in the place of the names in braces; false where a figure has none.
@@ -100,7 +100,7 @@ func (w *workings) given(name string, x *float64, what string) {
 	w.sheet.add(text(name, ruledLook), number(x, ruledNumberLook), cell{look: ruledLook}, cell{look: ruledLook}, text(what, ruledWrapLook))
 }
 
-func (w *workings) say(t string) { w.sheet.addTall(lines(t, 150)*13+2, wide(t, wrapLook, 5)) }
+func (w *workings) say(t string) { w.sheet.addTall(lines(t, 138)*13+2, wide(t, wrapLook, 5)) }
 
 func (w *workings) characteristic(rec qa.Record, c qa.Comparison, ranges map[string]string) {
 	ref, cand := rec.Readings.Reference.Of(c.Name).Values(), rec.Readings.Candidate.Of(c.Name).Values()

@@ -32,7 +32,8 @@ type Signer struct {
 	Reason       string    `json:"reason,omitempty"`
 	Disposition  string    `json:"disposition,omitempty"`
 	Time         time.Time `json:"time"`
-	Fingerprint  string    `json:"fingerprint"` // SHA-256 of the certificate
+	Fingerprint  string    `json:"fingerprint"`           // SHA-256 of the certificate
+	Certificate  string    `json:"certificate,omitempty"` // its issuer, serial number, validity and algorithm in words
 }
 
 // NewRecord ties plan, readings and result together and opens the trail with the acts that led to them.
