@@ -137,6 +137,12 @@ func TestReadFullText(t *testing.T) {
 	}
 }
 
+// More fields than cells are read are refused before room is made for them.
+func TestReadManyFields(t *testing.T) {
+	_, err := Open("many.csv", []byte("Lot;x\n"+strings.Repeat(strings.Repeat("1;", 16000)+"\n", 1+cells.MaxCells/16000)), "")
+	wantFileError(t, err, "16784001 fields", "at most 16777216", "split the file")
+}
+
 // 64 characteristics of 300 parts in two lots, in each layout (N29).
 func TestReadManyCharacteristics(t *testing.T) {
 	const count, parts = 64, 300

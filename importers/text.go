@@ -54,6 +54,9 @@ func readText(text string, told func(done, total int) error) (textFile, error) {
 	}
 	if t.delimiter != "" {
 		s.delimiter = t.delimiter[0]
+		if n := strings.Count(s.rest, t.delimiter); n > cells.MaxCells { // before room is made for them
+			return textFile{}, fmt.Errorf("found %d fields, want at most %d; split the file, or take out what is not readings", n, cells.MaxCells)
+		}
 	}
 	for s.rest != "" {
 		fields, err := s.record()
