@@ -74,3 +74,27 @@ func (r *reader) sayAttributes() {
 		r.out.Said = append(r.out.Said, c.Name+": taken for failed parts: "+join2(words[1])+"; for good parts: "+join2(words[0])+".")
 	}
 }
+
+// Headings of columns that count parts: how many were looked at, and how many of them failed.
+var (
+	lookedAt   = words(means("", "inspected|n inspected|no inspected|number inspected|parts inspected|checked|tested|sample size|geprüft|anzahl geprüft|prüfumfang"))
+	failedOnes = words(means("", "nonconforming|non-conforming|nonconformities|defective|defectives|defects|rejects|rejected|failed|failures|nok|bad|fehlerhaft|ausschuss|schlecht|n.i.o"))
+)
+
+// countsOfParts refuses a sheet of counts: how many parts were inspected and how many failed are no readings.
+func (t *table) countsOfParts() error {
+	var inspected, failed int
+	for _, c := range t.columns {
+		w := word(c.name)
+		if _, ok := lookedAt[w]; ok {
+			inspected = c.col
+		}
+		if _, ok := failedOnes[w]; ok {
+			failed = c.col
+		}
+	}
+	if inspected == 0 || failed == 0 {
+		return nil
+	}
+	return t.refuse("found counts of parts in %s and %s, want a row a part with a word such as OK or NOK in it; write the parts out, and state kind = \"attribute\" and failed of the characteristic in the plan", t.columnText(inspected), t.columnText(failed))
+}

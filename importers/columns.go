@@ -170,6 +170,9 @@ func (t *table) findMeasured() error {
 		}
 		return nil
 	}
+	if err := t.countsOfParts(); err != nil {
+		return err
+	}
 	rows := t.wanted()
 	for _, c := range t.columns {
 		if c.col == t.lot || c.col == t.part || c.col == t.order || c.col == t.group || c.col == t.pair {
@@ -215,7 +218,7 @@ func (t *table) findMeasured() error {
 	}
 	t.warnReplicates()
 	if len(t.measured) == 0 {
-		return t.refuse("found no column of measurements, want at least one; name it under [[characteristic]] in the plan")
+		return t.refuse("found no column of measurements, want at least one; name it under [[characteristic]] in the plan, with kind = \"attribute\" and failed where it holds words such as OK and NOK")
 	}
 	return nil
 }

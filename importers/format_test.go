@@ -108,23 +108,7 @@ func TestOpenByContent(t *testing.T) {
 }
 
 func TestOpenMacros(t *testing.T) { // they are neither run nor read
-	whole := xlsx(t, sheetOf{name: "Data", rows: long()})
-	var b bytes.Buffer
-	z := zip.NewWriter(&b)
-	old, err := zip.NewReader(bytes.NewReader(whole), int64(len(whole)))
-	if err != nil {
-		t.Fatal(err)
-	}
-	for _, f := range old.File {
-		if err := z.Copy(f); err != nil {
-			t.Fatal(err)
-		}
-	}
-	write(t, z, "xl/vbaProject.bin", "Sub Auto_Open()")
-	if err := z.Close(); err != nil {
-		t.Fatal(err)
-	}
-	r := mustRead(t, plan("d1.xlsm"), b.Bytes())
+	r := mustRead(t, plan("d1.xlsm"), withPart(t, xlsx(t, sheetOf{name: "Data", rows: long()}), "xl/vbaProject.bin", "Sub Auto_Open()"))
 	wantD1(t, r)
 	wantWords(t, strings.Join(r.Said, "\n"), "macros; they are neither run nor read")
 }
@@ -231,6 +215,27 @@ func repacked(t testing.TB, data []byte, part string, change func(string) string
 		}
 		write(t, z, f.Name, s)
 	}
+	if err := z.Close(); err != nil {
+		t.Fatal(err)
+	}
+	return b.Bytes()
+}
+
+// withPart is a package with one part more.
+func withPart(t testing.TB, data []byte, part, text string) []byte {
+	t.Helper()
+	var b bytes.Buffer
+	z := zip.NewWriter(&b)
+	old, err := zip.NewReader(bytes.NewReader(data), int64(len(data)))
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, f := range old.File {
+		if err := z.Copy(f); err != nil {
+			t.Fatal(err)
+		}
+	}
+	write(t, z, part, text)
 	if err := z.Close(); err != nil {
 		t.Fatal(err)
 	}

@@ -41,16 +41,17 @@ type (
 
 // sheetOf is one sheet of a test workbook.
 type sheetOf struct {
-	name   string
-	rows   [][]any
-	hidden bool
-	very   bool   // very hidden: no menu shows it
-	cols   []int  // hidden columns
-	dim    string // the dimension that the sheet declares; the largest there is where empty
-	filter string // of the rows, such as A1:D25
-	merged []string
-	rowsAt int          // number of the first row; 1 where 0
-	hide   map[int]bool // rows by number
+	name     string
+	rows     [][]any
+	hidden   bool
+	very     bool   // very hidden: no menu shows it
+	cols     []int  // hidden columns
+	dim      string // the dimension that the sheet declares; the largest there is where empty
+	filter   string // of the rows, such as A1:D25
+	merged   []string
+	date1904 bool         // of the workbook, on its first sheet
+	rowsAt   int          // number of the first row; 1 where 0
+	hide     map[int]bool // rows by number
 }
 
 // xlsx writes a workbook with nothing but what the test needs.
@@ -71,7 +72,11 @@ func xlsx(t testing.TB, sheets ...sheetOf) []byte {
 			`<borders count="1"><border/></borders><cellStyleXfs count="1"><xf numFmtId="0"/></cellStyleXfs>` +
 			`<cellXfs count="4"><xf numFmtId="0"/><xf numFmtId="16"/><xf numFmtId="10"/><xf numFmtId="170"/></cellXfs></styleSheet>`,
 	}
+	from1904 := ""
 	for i, s := range sheets {
+		if s.date1904 {
+			from1904 = `<workbookPr date1904="1"/>`
+		}
 		state := ""
 		if s.hidden {
 			state = ` state="hidden"`
@@ -87,7 +92,7 @@ func xlsx(t testing.TB, sheets ...sheetOf) []byte {
 	fmt.Fprintf(&rels, `<Relationship Id="st" Type="%s/styles" Target="styles.xml"/>`, relation)
 	parts["[Content_Types].xml"] = head + `<Types xmlns="` + packages + `/content-types"><Default Extension="rels" ContentType="application/vnd.openxmlformats-package.relationships+xml"/>` +
 		`<Override PartName="/xl/workbook.xml" ContentType="` + types + `sheet.main+xml"/><Override PartName="/xl/styles.xml" ContentType="` + types + `styles+xml"/>` + content.String() + `</Types>`
-	parts["xl/workbook.xml"] = head + `<workbook ` + main + ` xmlns:r="` + relation + `"><sheets>` + book.String() + `</sheets></workbook>`
+	parts["xl/workbook.xml"] = head + `<workbook ` + main + ` xmlns:r="` + relation + `">` + from1904 + `<sheets>` + book.String() + `</sheets></workbook>`
 	parts["xl/_rels/workbook.xml.rels"] = head + `<Relationships xmlns="` + packages + `/relationships">` + rels.String() + `</Relationships>`
 	var b bytes.Buffer
 	z := zip.NewWriter(&b)

@@ -3,6 +3,7 @@ package importers
 import (
 	"fmt"
 	"strings"
+	"testing"
 )
 
 // layoutCase is one layout of the catalogue: its files, the plan and what must come of it. The first file is the one that the
@@ -17,8 +18,9 @@ type layoutCase struct {
 
 type layoutFile struct {
 	name   string
-	sheets []sheetOf // a workbook
-	text   string    // else a text file
+	sheets []sheetOf                       // a workbook
+	text   string                          // else a text file
+	change func(testing.TB, []byte) []byte // of the workbook's bytes
 }
 
 // layoutWant is either an error or the readings' counts and means, and what else must hold.
@@ -35,7 +37,10 @@ type layoutWant struct {
 	finding  string  // a warning of the comparison
 	upper    float64 // the upper 90 % limit of the comparison; 0 where it is not looked at
 	said     []string
-	texts    []string // words of the warnings
+	texts    []string  // words of the warnings
+	refused  bool      // the fault is of the file, not of the plan
+	spread   float64   // ratio of the standard deviations, to three digits; 0 where it is not looked at
+	first    [2]string // text of each lot's first reading; not looked at where empty
 }
 
 var d1 = layoutWant{n: [2]int{12, 12}, mean: [2]float64{d1MeanReference, d1MeanCandidate}, upper: 0.01006020125}

@@ -20,7 +20,11 @@ func (f layoutFile) bytes(t testing.TB) []byte {
 	if f.sheets == nil {
 		return []byte(f.text)
 	}
-	return xlsx(t, f.sheets...)
+	data := xlsx(t, f.sheets...)
+	if f.change != nil {
+		return f.change(t, data)
+	}
+	return data
 }
 
 // TestLayouts reads every case as it is committed, and every file that another program made of it.
@@ -60,6 +64,10 @@ func TestLayouts(t *testing.T) {
 // check reads the case with one file in the place of our own.
 func (c layoutCase) check(t *testing.T, file string) {
 	p, err := LoadPlan("plan.toml", []byte(c.plan))
+	if err != nil && c.want.fault != nil {
+		wantPlanError(t, err, c.want.fault...)
+		return
+	}
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -73,6 +81,10 @@ func (c layoutCase) check(t *testing.T, file string) {
 		data[name] = b
 		return b, err
 	})
+	if c.want.refused {
+		wantFileError(t, err, c.want.fault...)
+		return
+	}
 	if c.want.fault != nil {
 		if _, ok := errors.AsType[*PlanError](err); !ok {
 			t.Fatalf("got the error %v (%T), want a *PlanError", err, err)
@@ -110,6 +122,11 @@ func (w layoutWant) compare(t *testing.T, p qa.Plan, r qa.Readings) {
 			t.Errorf("got the upper 90 %% limit %.7g of a misread sheet", *e.Upper)
 		}
 	}
+	if w.spread != 0 {
+		if s := first.Spread; first.Method != "welch" || s == nil || s.SDRatio == nil || math.Abs(*s.SDRatio-w.spread) > 5e-4*w.spread {
+			t.Errorf("got the method %s and the spread %+v, want welch and the ratio %v", first.Method, s, w.spread)
+		}
+	}
 	if w.finding != "" && !slices.ContainsFunc(first.Warnings, func(x qa.Warning) bool { return x.Code == w.finding }) {
 		t.Errorf("got the warnings %v, want %s", first.Warnings, w.finding)
 	}
@@ -129,6 +146,11 @@ func (w layoutWant) check(t *testing.T, r qa.Readings) {
 			if m, want := meanOf(v), w.mean[side]+float64(k)*w.step; math.Abs(m-want) > 1e-10 {
 				t.Errorf("%s, %s: got the mean %.12g, want %.12g", lot.Name, s.Characteristic, m, want)
 			}
+		}
+	}
+	for side, lot := range []qa.Lot{r.Reference, r.Candidate} {
+		if x := lot.Series[0].Readings; w.first[side] != "" && x[0].Source.Text != w.first[side] {
+			t.Errorf("%s: got %s first, want %s", lot.Name, x[0].Source.Text, w.first[side])
 		}
 	}
 	c := r.Characteristics[0]
