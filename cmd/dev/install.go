@@ -66,6 +66,7 @@ var outsideNeeds = []need{
 	{"poppler-utils", program("pdftoppm")},
 	{"fonts-noto-core", debian("fonts-noto-core")},
 	{"xmlsec1", program("xmlsec1")},
+	{"libxml2-utils", program("xmllint")},
 	{"default-jdk-headless", program("javac")},
 	{"libapache-poi-java", file("/usr/share/java/poi.jar")},
 	{"libxml-security-java", file("/usr/share/java/xmlsec.jar")},
