@@ -62,13 +62,13 @@ func (d FractionDesign) Power() (float64, error) {
 func (d FractionDesign) power() float64 {
 	ref, cand := chancesOf(d.NRef, d.PRef), chancesOf(d.NCand, d.PCand)
 	z := -dist.NormalQuantile(d.Alpha)
-	p := fractionPair{n: float64(d.NRef), m: float64(d.NCand)}
+	p := Proportions{ref: Counts{N: d.NRef}, cand: Counts{N: d.NCand}}
 	// The score rises with y, so each test rejects from or up to one y, which
 	// rises with x: the limits are carried along.
 	from := func(s, z float64) func() int {
 		reject := func(y int) bool {
-			p.y = float64(y)
-			return p.score(s) > z
+			p.cand.Failed = y
+			return p.Score(s) > z
 		}
 		y, step := -1, 0
 		return func() int {
@@ -107,7 +107,7 @@ func (d FractionDesign) power() float64 {
 	}
 	total := 0.0
 	for i, chance := range ref.mass {
-		p.x = float64(ref.first + i)
+		p.ref.Failed = ref.first + i
 		a, b := lower(), upper()
 		if d.Aim == AimDifference { // shown outside
 			total += chance * (cand.below(a) + 1 - cand.below(b))

@@ -126,6 +126,61 @@ func TestFractionEnds(t *testing.T) {
 	}
 }
 
+// halved is the most likely fraction of the reference where the candidate's is delta larger, by halving alone: slow and with all
+// digits.
+func halved(ref, cand stats.Counts, delta float64) float64 {
+	if delta < 0 {
+		return halved(cand, ref, -delta) - delta
+	}
+	part := func(count int, share float64) float64 {
+		if count == 0 {
+			return 0
+		}
+		return float64(count) / share
+	}
+	from, to := 0.0, 1-delta
+	for range 2000 {
+		e := from + (to-from)/2
+		if e <= from || e >= to {
+			break
+		}
+		if part(ref.Failed, e)-part(ref.N-ref.Failed, 1-e)+part(cand.Failed, e+delta)-part(cand.N-cand.Failed, 1-delta-e) > 0 {
+			from = e
+		} else {
+			to = e
+		}
+	}
+	return from + (to-from)/2
+}
+
+// The score is that of the most likely fractions, found by halving, for counts and differences of every size.
+func TestScoreByHalving(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		count := rapid.Custom(func(t *rapid.T) stats.Counts {
+			n := rapid.OneOf(rapid.IntRange(1, 30), rapid.IntRange(1, 3000), rapid.IntRange(1, 10_000_000)).Draw(t, "n")
+			return stats.Counts{N: n, Failed: rapid.OneOf(rapid.IntRange(0, n), rapid.IntRange(0, min(n, 3))).Draw(t, "failed")}
+		})
+		ref, cand := count.Draw(t, "ref"), count.Draw(t, "cand")
+		delta := rapid.OneOf(rapid.Float64Range(-1, 1), rapid.Float64Range(-1e-6, 1e-6), rapid.SampledFrom([]float64{-1, 0, 1, 0.5, 0.05})).Draw(t, "delta")
+		p, err := stats.CompareProportions(ref, cand)
+		if err != nil {
+			t.Fatal(err)
+		}
+		r := halved(ref, cand, delta)
+		c := min(1, max(0, r+delta))
+		n1, n2 := float64(ref.N), float64(cand.N)
+		want := (p.Difference() - delta) / math.Sqrt((r*(1-r)/n1+c*(1-c)/n2)*(n1+n2)/(n1+n2-1))
+		got := p.Score(delta)
+		// Halving has fewer digits of 1 - r where nearly all failed, and both lose them where difference and delta are near.
+		if short := min(r, 1-r, c+1e-300, 1-c+1e-300); short < 1e-9 || math.Abs(p.Difference()-delta) < 1e-4 {
+			return
+		}
+		if math.Abs(got-want) > 1e-9*math.Abs(want) {
+			t.Fatalf("%v %v at %v: got %v, want %v", ref, cand, delta, got, want)
+		}
+	})
+}
+
 func BenchmarkFractionSize(b *testing.B) {
 	d := stats.FractionDesign{PRef: 0.001, PCand: 0.001, Alpha: 0.05, Aim: stats.AimNotHigher, Upper: 0.001}
 	for b.Loop() {
