@@ -173,25 +173,12 @@ func (t *table) findMeasured() error {
 	if err := t.countsOfParts(); err != nil {
 		return err
 	}
-	rows := t.wanted()
-	for _, c := range t.columns {
-		if c.col == t.lot || c.col == t.part || c.col == t.order || c.col == t.group || c.col == t.pair {
+	counts := t.contents()
+	for i, c := range t.columns {
+		if t.playsPart(c.col) {
 			continue
 		}
-		numbers, dates, filled := 0, 0, 0
-		for _, r := range rows {
-			switch cell := t.cell(r, c.col); {
-			case cell.Kind == cells.Blank || cell.Kind == cells.Text && missing(cell.Text):
-			case cell.Kind == cells.Date:
-				dates++
-				filled++
-			case numeric(cell):
-				numbers++
-				filled++
-			default:
-				filled++
-			}
-		}
+		numbers, dates, filled := counts[i].numbers, counts[i].dates, counts[i].filled
 		why := ""
 		switch {
 		case filled == 0:
@@ -221,6 +208,56 @@ func (t *table) findMeasured() error {
 		return t.refuse("found no column of measurements, want at least one; name it under [[characteristic]] in the plan, with kind = \"attribute\" and failed where it holds words such as OK and NOK")
 	}
 	return nil
+}
+
+// playsPart says whether a column names the lots, parts, order, groups or pairs.
+func (t *table) playsPart(col int) bool {
+	return col == t.lot || col == t.part || col == t.order || col == t.group || col == t.pair
+}
+
+// holding counts what a column holds in the rows that are wanted.
+type holding struct{ numbers, dates, filled int }
+
+// contents are those of the columns, gone through row by row as they lie in memory.
+func (t *table) contents() []holding {
+	counts := make([]holding, len(t.columns))
+	for _, r := range t.wanted() {
+		for i, c := range t.columns {
+			if t.playsPart(c.col) {
+				continue
+			}
+			switch cell := t.cell(r, c.col); {
+			case cell.Kind == cells.Blank || cell.Kind == cells.Text && missing(cell.Text):
+			case cell.Kind == cells.Date:
+				counts[i].dates++
+				counts[i].filled++
+			case numeric(cell):
+				counts[i].numbers++
+				counts[i].filled++
+			default:
+				counts[i].filled++
+			}
+		}
+	}
+	return counts
+}
+
+// holdsText says whether a column holds a text in the rows that are wanted.
+func (t *table) holdsText(col int) bool {
+	if t.turned {
+		return true // its rows are few cells wide
+	}
+	if t.textual == nil {
+		t.textual = map[int]bool{}
+		for _, r := range t.wanted() {
+			for _, c := range t.sheet.Rows[r.at].Cells {
+				if c.Kind == cells.Text && !t.textual[c.Col] {
+					t.textual[c.Col] = true
+				}
+			}
+		}
+	}
+	return t.textual[col]
 }
 
 // limitHeading says whether a heading names a nominal value, a limit or a tolerance.

@@ -68,6 +68,7 @@ type table struct {
 	unclear          map[int]error       // limits that only a person can read, by column
 	rows             []row
 	wantedRows       []row           // of the lots looked for
+	textual          map[int]bool    // columns that hold texts in them; nil where it is not known yet
 	limits           map[int][]limit // by column
 	summary          []int           // rows, by index
 	measured         []int           // columns taken as characteristics
