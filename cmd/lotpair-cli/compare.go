@@ -124,7 +124,7 @@ func (p *program) runPlan(path string, c compareFlags) (qa.Record, int) {
 	if code != exitDone {
 		return qa.Record{}, code
 	}
-	readings, err := importers.Read(plan, open)
+	readings, err := importers.Under(p.watch).Read(plan, open)
 	if err != nil {
 		return qa.Record{}, p.failed(err)
 	}
@@ -146,6 +146,10 @@ func (p *program) runPlan(path string, c compareFlags) (qa.Record, int) {
 func (p *program) failed(err error) int {
 	p.say(err)
 	var plan *importers.PlanError
+	var stopped *qa.StoppedError
+	if errors.As(err, &stopped) {
+		return exitStopped
+	}
 	if errors.As(err, &plan) {
 		return exitUsage
 	}
@@ -167,7 +171,7 @@ func (p *program) writeWorkbook(rec qa.Record, c compareFlags) int {
 	if err != nil {
 		return p.notWritten(err)
 	}
-	if err := exports.Save(p.file(c.workbook), pkg, c.force); err != nil {
+	if err := p.save(c.workbook, pkg, c.force); err != nil {
 		return p.notWritten(err)
 	}
 	if v := exports.Verify(pkg, nil); v.State != exports.Intact && v.State != exports.Incomplete && v.State != exports.Unsigned || !v.Agrees {
@@ -185,7 +189,10 @@ func (p *program) notWritten(err error) int {
 	var many exports.TooManyReadings
 	var sound *exports.NotSoundError
 	var unstated *exports.UnstatedError
+	var stopped *qa.StoppedError
 	switch {
+	case errors.As(err, &stopped):
+		return exitStopped
 	case errors.As(err, &exists):
 		return exitLost
 	case errors.As(err, &many):
@@ -200,7 +207,7 @@ func (p *program) notWritten(err error) int {
 
 // saveNew writes a file under a name that is still free; no flag overwrites it.
 func (p *program) saveNew(name string, b []byte) int {
-	err := exports.Save(p.file(name), b, false)
+	err := p.save(name, b, false)
 	var exists *exports.ExistsError
 	switch {
 	case err == nil:

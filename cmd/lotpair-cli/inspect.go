@@ -28,7 +28,7 @@ func (p *program) inspect(args []string) int {
 	if code != exitDone {
 		return code
 	}
-	seen, err := importers.Inspect(filepath.Base(pos[0]), b, sheet, layout)
+	seen, err := importers.Under(p.watch).Inspect(filepath.Base(pos[0]), b, sheet, layout)
 	if err != nil {
 		return p.failed(err)
 	}

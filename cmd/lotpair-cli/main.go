@@ -9,7 +9,10 @@ import (
 	"runtime"
 	"runtime/debug"
 	"strings"
+	"sync"
 	"time"
+
+	"lotpair/qa"
 )
 
 // version and revision are stamped at release by the linker; a build without them says so.
@@ -26,6 +29,8 @@ const (
 	exitFile  = 3  // a file that cannot be opened or understood, a wrong passphrase, an unusable identity
 	exitLost  = 4  // nothing written because something would be lost
 	exitFault = 70 // a fault of ours
+
+	exitStopped = 130 // stopped by Ctrl-C, as shells have it (128 and the signal's number); nothing was written
 )
 
 func main() {
@@ -33,6 +38,7 @@ func main() {
 		in: os.Stdin, out: os.Stdout, err: os.Stderr,
 		now: time.Now, workDir: ".", terminal: readPassphrase,
 	}
+	p.watch = p.interrupted()
 	os.Exit(p.run(os.Args[1:]))
 }
 
@@ -43,6 +49,8 @@ type program struct {
 	now      func() time.Time
 	workDir  string
 	terminal func(prompt string) (string, error)
+	watch    qa.Watch   // stopped by Ctrl-C
+	writing  sync.Mutex // held while a file is put in its place
 }
 
 // call is one thing the program can do.

@@ -83,7 +83,7 @@ func (p *program) writeQualification(q exports.Qualification, report, key, passp
 			return exitFile
 		}
 	}
-	if err := exports.Save(p.file(report), b, false); err != nil {
+	if err := p.save(report, b, false); err != nil {
 		return p.notWritten(err)
 	}
 	fmt.Fprintf(p.err, "wrote %s\n", report)
