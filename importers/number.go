@@ -66,15 +66,13 @@ func splitNumber(text string, decimal byte) (written, *Problem) {
 	case "nan", "inf", "infinity":
 		return written{}, problem(NotFinite, text, "a finite number")
 	}
-	switch {
-	case strings.HasPrefix(s, "-"), strings.HasPrefix(s, "\u2212"):
-		w.sign = "-"
-		s = strings.TrimPrefix(strings.TrimPrefix(s, "-"), "\u2212")
-		if s != "" && (s[0] == '-' || strings.HasPrefix(s, "\u2212")) {
-			return bad()
+	for _, sign := range []string{"-", "\u2212", "+"} { // one at most: a second is left, and is no digit
+		if rest, signed := strings.CutPrefix(s, sign); signed {
+			if s = rest; sign != "+" {
+				w.sign = "-"
+			}
+			break
 		}
-	case strings.HasPrefix(s, "+"):
-		s = s[1:]
 	}
 	if i := strings.IndexAny(s, "eE"); i >= 0 {
 		exponent, ok := wholeNumber(strings.Replace(s[i+1:], "\u2212", "-", 1))
