@@ -110,17 +110,36 @@ func TestOutsideMarginFromSample(t *testing.T) {
 			t.Errorf("1.5 standard deviations of %d readings: got %v, want %v within %.4f", c.n, got, c.want, allowed)
 		}
 	}
+	// The same 20,000 studies of each size by the test of keep_ppk, the candidate's mean against a stated one, and by Welch's of the
+	// difference. Simulated in another program, 200,000 studies each (NumPy 1.24): 33.2, 31.6 and 31.1 % by the first, 27.6, 25.1
+	// and 24.4 % by the second: the quarter that is quoted for 30 readings is of the difference.
 	const ppk, limit = 1.33, 6.0
-	for i, n := range []int{10, 30, 50} {
-		got := falseRate(uint64(200+i), func(r *rand.Rand) bool {
-			ref, cand := stats.Summarize(lotOf(r, n, 0, 1)), stats.Summarize(lotOf(r, n, limit-3*ppk, 1))
-			e := stats.Estimate{Value: cand.Mean - ref.Mean, SE: cand.SD / math.Sqrt(float64(n)), DF: float64(n - 1)}
-			p := stats.TwoOneSided(e, -limit+3*ppk*ref.SD-ref.Mean, limit-3*ppk*ref.SD-ref.Mean, alpha)
-			return p.PLower < alpha && p.PUpper < alpha
-		})
-		t.Logf("Ppk %v kept at mean and sd of %d readings: %.4f", ppk, n, got)
-		if got < 0.20 || got > 0.35 {
-			t.Errorf("Ppk %v kept at mean and standard deviation of %d readings: got %v, want a quarter to a third", ppk, n, got)
+	for i, c := range []struct {
+		n                int
+		stated, measured float64
+	}{{10, 0.332, 0.276}, {30, 0.316, 0.251}, {50, 0.311, 0.244}} {
+		var stated, measured int
+		r := rand.New(rand.NewPCG(uint64(200+i), 5))
+		for range rateRuns {
+			ref, cand := stats.Summarize(lotOf(r, c.n, 0, 1)), stats.Summarize(lotOf(r, c.n, limit-3*ppk, 1))
+			shift := stats.Estimate{Value: cand.Mean - ref.Mean, SE: cand.SD / math.Sqrt(float64(c.n)), DF: float64(c.n - 1)}
+			difference, err := stats.Welch(ref, cand)
+			if err != nil {
+				t.Fatal(err)
+			}
+			lower, upper := -limit+3*ppk*ref.SD-ref.Mean, limit-3*ppk*ref.SD-ref.Mean
+			if p := stats.TwoOneSided(shift, lower, upper, alpha); p.PLower < alpha && p.PUpper < alpha {
+				stated++
+			}
+			if p := stats.TwoOneSided(difference, lower, upper, alpha); p.PLower < alpha && p.PUpper < alpha {
+				measured++
+			}
+		}
+		for name, of := range map[string][2]float64{"stated mean": {float64(stated) / rateRuns, c.stated}, "measured mean": {float64(measured) / rateRuns, c.measured}} {
+			t.Logf("Ppk %v kept at mean and sd of %d readings, %s: %.4f", ppk, c.n, name, of[0])
+			if allowed := 3*simulationError(of[1])*math.Sqrt(1.1) + 0.0005; math.Abs(of[0]-of[1]) > allowed {
+				t.Errorf("Ppk %v kept at mean and standard deviation of %d readings, %s: got %v, want %v within %.4f", ppk, c.n, name, of[0], of[1], allowed)
+			}
 		}
 	}
 }
