@@ -28,7 +28,9 @@ func TestOutsideSchema(t *testing.T) {
 	}
 	parts := 0
 	for _, ids := range [][]identity.Identity{
-		{key(t, "prepared")}, {rsaIdentity(t)}, {key(t, "reviewed")},
+		{key(t, "prepared")},
+		{rsaIdentity(t)},
+		{key(t, "reviewed")},
 		{key(t, "prepared"), key(t, "reviewed"), key(t, "approved")},
 	} {
 		b := workbook(t)
