@@ -15,6 +15,7 @@ type Run struct {
 	Software Software
 	Seal     Seal
 	Attempts Attempts
+	Watch    Watch // follows the comparison and can stop it
 }
 
 // Compare holds the readings of two lots against the plan's criterion, characteristic by characteristic, and gives the
@@ -32,17 +33,24 @@ func Compare(plan Plan, readings Readings, run Run) (Result, error) {
 	if len(readings.Characteristics) == 0 {
 		return Result{}, errors.New("characteristics: found none, want at least one column of measurements; name them in the plan under [[characteristic]]")
 	}
-	var shared known
-	for _, c := range readings.Characteristics {
+	shared := known{watch: run.Watch}
+	for i, c := range readings.Characteristics {
+		if err := run.Watch.Told(Progress{Doing: comparing, Of: c.Name, Done: int64(i), Total: int64(len(readings.Characteristics))}); err != nil {
+			return Result{}, err
+		}
 		one, err := compareOne(plan, c, &shared, readings.Reference.Of(c.Name), readings.Candidate.Of(c.Name))
 		if err != nil {
 			return Result{}, err
 		}
 		r.Characteristics = append(r.Characteristics, one)
 	}
+	if err := run.Watch.Stop(Progress{Doing: comparing}); err != nil { // what was not done any more is in no result
+		return Result{}, err
+	}
 	holm(r.Characteristics)
 	r.Warnings = append(r.Warnings, claimOfSources(plan)...)
 	r.Warnings = append(r.Warnings, differentGauges(plan.Record, readings.Characteristics)...)
+	r.Warnings = append(r.Warnings, severalAttempts(plan, run.Attempts)...)
 	if plan.Criterion.SecondSample == "one" {
 		r.Warnings = append(r.Warnings, Warning{Code: WarnSecondSample, Text: "The plan allows one enlargement of the sample: each of the two looks is held against half of the alpha stated."})
 	}
@@ -111,15 +119,22 @@ func compareOne(plan Plan, ch Characteristic, k *known, ref, cand Series) (Compa
 	if err := c.test(); err != nil {
 		return Comparison{}, err
 	}
-	c.spread()
-	c.performance(plan)
-	c.ranks()
-	c.otherMethods(plan, ref, cand)
-	c.decide(ref, cand)
-	c.nonDetects(plan, ch, ref, cand)
-	c.absence()
-	c.newStudy(plan)
-	c.checkUncertainty()
+	for _, step := range []func(){
+		c.spread,
+		func() { c.performance(plan) },
+		c.ranks,
+		func() { c.otherMethods(plan, ref, cand) },
+		func() { c.decide(ref, cand) },
+		func() { c.nonDetects(plan, ch, ref, cand) },
+		c.absence,
+		func() { c.newStudy(plan) },
+		c.checkUncertainty,
+	} {
+		if err := k.watch.Stop(Progress{Doing: comparing, Of: ch.Name}); err != nil {
+			return Comparison{}, err
+		}
+		step()
+	}
 	return c.Comparison, nil
 }
 

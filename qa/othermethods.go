@@ -43,7 +43,7 @@ func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
 		c.interval("ranks", r.Shift, stats.Interval{Level: r.Level, Lower: *r.Lower, Upper: *r.Upper}, nil)
 	}
 	if r := plan.Sensitivity; r != nil && r.Resamples > 0 && !paired && !c.asked.grouped {
-		c.resampled(stats.Resampling{Seed: uint64(r.Seed), Resamples: r.Resamples})
+		c.resampled(stats.Resampling{Seed: uint64(r.Seed), Resamples: r.Resamples, Run: c.known.watch.blocks(c.Name)})
 	}
 	if !paired {
 		c.putBack(ref, cand)

@@ -2,6 +2,7 @@ package qa
 
 import (
 	"fmt"
+	"strings"
 
 	"lotpair/qa/stats"
 )
@@ -62,10 +63,32 @@ func (c *comparison) performance(plan Plan) {
 		Reference: c.lotPerformance(c.ref, coverage, confidence), Candidate: c.lotPerformance(c.cand, coverage, confidence),
 	}
 	for _, s := range []sample{c.ref, c.cand} {
+		c.outside(s)
 		if n := s.summary.N; n > 0 && n < fewestForPerformance {
 			c.warn(WarnFewForPerformance, s.side, "performance."+string(s.side), fmt.Sprintf("Only %d readings in the %s lot: Pp and Ppk from fewer than %d say little.", n, s.side, fewestForPerformance))
 		}
 	}
+}
+
+// outside names the readings beyond a limit. Whether their parts conform is no question of this comparison, whatever its verdict.
+func (c *comparison) outside(s sample) {
+	const most = 5 // cells named
+	n := 0
+	var cells []string
+	for i, v := range s.values {
+		if c.ch.Lower != nil && v < *c.ch.Lower || c.ch.Upper != nil && v > *c.ch.Upper {
+			if n++; n <= most {
+				cells = append(cells, s.used[i].Source.Place())
+			}
+		}
+	}
+	if n == 0 {
+		return
+	}
+	if n > most {
+		cells = append(cells, fmt.Sprintf("and %d more", n-most))
+	}
+	c.warn(WarnOutside, s.side, "performance."+string(s.side)+".outside_counted", fmt.Sprintf("%s of the %s lot beyond the specification limits (%s): whether these parts can be used is a question of its own, which no verdict on the lots answers.", Count(n, "reading", "readings"), s.side, strings.Join(cells, ", ")))
 }
 
 func (c *comparison) lotPerformance(s sample, coverage, confidence float64) LotPerformance {
@@ -116,6 +139,7 @@ type factorOf struct {
 type known struct {
 	factors map[factorOf]float64
 	ranks   stats.NullU
+	watch   Watch
 }
 
 func (k *known) factor(f factorOf) (float64, error) {

@@ -63,3 +63,19 @@ func (w Watch) Told(p Progress) error {
 func (w Watch) Stop(p Progress) error {
 	return Watch{Context: w.Context}.Told(p)
 }
+
+// comparing is what Compare tells its watch.
+const comparing = "comparing"
+
+// blocks does the blocks of a resampling one after another and stops between two of them; what it comes to then is thrown away
+// with the whole comparison.
+func (w Watch) blocks(of string) func(blocks int, do func(block int)) {
+	return func(blocks int, do func(block int)) {
+		for b := range blocks {
+			if w.Stop(Progress{Doing: comparing, Of: of}) != nil {
+				return
+			}
+			do(b)
+		}
+	}
+}

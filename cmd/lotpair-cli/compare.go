@@ -132,7 +132,12 @@ func (p *program) runPlan(path string, c compareFlags) (qa.Record, int) {
 		Software: p.software(),
 		Seal:     seal.result(plan),
 		Attempts: attempts,
+		Watch:    p.watch,
 	})
+	var stopped *qa.StoppedError
+	if errors.As(err, &stopped) {
+		return qa.Record{}, p.failed(err)
+	}
 	if err != nil {
 		p.say(fmt.Errorf("%s: %w", name, err))
 		return qa.Record{}, exitUsage
