@@ -105,6 +105,19 @@ func (c *comparison) checkSkew() {
 	}
 }
 
+// severalAttempts says what more attempts than the plan allows do to the probability of a false verdict: by Bonferroni's
+// inequality that of any of them is at most their number times alpha.
+func severalAttempts(plan Plan, a Attempts) []Warning {
+	allowed := 1
+	if plan.Criterion.SecondSample == "one" {
+		allowed = 2
+	}
+	if a.Known <= allowed {
+		return nil
+	}
+	return []Warning{{Code: WarnAttempts, Text: fmt.Sprintf("This is attempt %d with this plan, by what is known (kept by: %s); the plan allows %d. The probability that one of them shows what is not so is up to %d times the alpha stated: they belong together, and the last one is worth no more than the others.", a.Known, a.KeptBy, allowed, a.Known)}}
+}
+
 // claimOfSources says what a claim about sources takes for granted.
 func claimOfSources(plan Plan) []Warning {
 	if plan.Claim() != "sources" {

@@ -2,6 +2,7 @@ package qa_test
 
 import (
 	"math/rand/v2"
+	"strings"
 	"testing"
 
 	"lotpair/qa"
@@ -79,5 +80,42 @@ func TestSkewedAndUnequal(t *testing.T) {
 		if got := qa.Has(one(t, p, lots(qa.Characteristic{Name: "X"}, series("X", 16, c.x...), series("X", 16, c.y...))).Warnings, qa.WarnSkewUnequal); got != c.want {
 			t.Errorf("%s: got %v, want %v", c.name, got, c.want)
 		}
+	}
+}
+
+// More attempts than the plan allows are said, with what they do to the error.
+func TestSeveralAttempts(t *testing.T) {
+	ch, ref, cand := d1()
+	for _, c := range []struct {
+		known  int
+		second string
+		want   bool
+	}{{0, "none", false}, {1, "none", false}, {2, "none", true}, {2, "one", false}, {3, "one", true}} {
+		p := plan(qa.Equivalence, absolute(0.02))
+		p.Criterion.SecondSample = c.second
+		r, err := qa.Compare(p, lots(ch, ref, cand), qa.Run{Attempts: qa.Attempts{Known: c.known, KeptBy: "register of this machine"}})
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got := qa.Has(r.Warnings, qa.WarnAttempts); got != c.want {
+			t.Errorf("attempt %d, second sample %s: got %v, want %v", c.known, c.second, got, c.want)
+		}
+	}
+}
+
+// Readings beyond a limit are named, five at most.
+func TestOutsideLimits(t *testing.T) {
+	ch, _, cand := d1()
+	ref := series(ch.Name, 3, 11.9, 12.06, 12.07, 12.08, 12.09, 12.1, 12.05, 11.95, 12)
+	c := one(t, plan(qa.Equivalence, absolute(0.02)), lots(ch, ref, cand))
+	var texts []string
+	for _, w := range c.Warnings {
+		if w.Code == qa.WarnOutside {
+			texts = append(texts, string(w.Side)+": "+w.Text)
+		}
+	}
+	const want = "reference: 6 readings of the reference lot beyond the specification limits (Data!C2, Data!C3, Data!C4, Data!C5, Data!C6, and 1 more)"
+	if len(texts) != 1 || !strings.HasPrefix(texts[0], want) {
+		t.Errorf("got %q, want %q", texts, want)
 	}
 }

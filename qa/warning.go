@@ -44,6 +44,8 @@ const (
 	WarnPairs             = "looks-paired"
 	WarnSkewUnequal       = "skewed-and-unequal"
 	WarnLotsInTime        = "lots-in-time"
+	WarnOutside           = "outside-limits"
+	WarnAttempts          = "several-attempts"
 )
 
 // Has says whether a warning of the code is among w.

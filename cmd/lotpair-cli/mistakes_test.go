@@ -341,8 +341,50 @@ func TestMistake17PlannedWithoutADifference(t *testing.T) {
 	}
 }
 
-// 26: a test of means taken for the acceptance of parts. Every record says that it is none.
+// 34: several analyses, one of them kept. A record that stands in the place of another names it and counts the attempts, and the
+// result says what more than one means.
+func TestMistake34OneOfSeveralKept(t *testing.T) {
+	dir := t.TempDir()
+	lots := table(3, even(12, normal(10, 1)), even(12, normal(10.1, 1)))
+	write(t, dir, map[string]string{"plan.toml": "supports = \"DEV-1\"\n" + planHead + "margin = { absolute = 1 }\n[record]\npart = \"P\"\nrevision = \"A\"\n", "lots.csv": lots, "word": "a long passphrase\n"})
+	for _, args := range [][]string{
+		{"identity", "new", "--name", "Ada Quill", "--out", "ada.p12", "--passphrase-file", "word"},
+		{"compare", "plan.toml", "--workbook", "one.xlsx", "--identity", "ada.p12", "--meaning", "prepared", "--passphrase-file", "word"},
+	} {
+		if code, _, e := run(t, dir, args...); code != 0 {
+			t.Fatalf("%s: %s", args[0], e)
+		}
+	}
+	if code, _, e := run(t, dir, "compare", "plan.toml", "--workbook", "one.xlsx", "--force"); code != 4 {
+		t.Errorf("over a signed record: got exit code %d, %s; want 4", code, e)
+	}
+	code, out, e := run(t, dir, "compare", "plan.toml", "--json", "--workbook", "two.xlsx", "--supersedes", "one.xlsx", "--because", "a lot was named wrongly")
+	var r qa.Result
+	if err := json.Unmarshal([]byte(out), &r); code != 0 || err != nil {
+		t.Fatal(code, err, e)
+	}
+	if r.Attempts.Known != 2 || !qa.Has(r.Warnings, qa.WarnAttempts) {
+		t.Errorf("got %+v, %v; want two attempts and what that means", r.Attempts, r.Warnings)
+	}
+}
+
+// 26: a test of means taken for the acceptance of parts. Every record says that it is none, and parts beyond a limit are named
+// beside whatever verdict.
 func TestMistake26AcceptanceOfParts(t *testing.T) {
+	mistake{
+		name: "26", plan: "margin = { absolute = 1 }\n[[characteristic]]\nname = \"Bore\"\nlower = 5\nupper = 12.5\n",
+		csv: table(3, even(100, normal(10, 1)), append(even(99, normal(10, 1)), 12.8)), codes: []string{"outside-limits"}, differ: func(t *testing.T, r qa.Result) {
+			c := r.Characteristics[0]
+			if c.Verdict != qa.Equivalent || *c.Performance.Candidate.OutsideEstimated <= 0 {
+				t.Errorf("got %q, %+v; want equivalent lots, and the part beyond a limit said", c.Verdict, c.Performance.Candidate)
+			}
+			for _, w := range c.Warnings {
+				if w.Code == qa.WarnOutside && w.Side == qa.Candidate && !(strings.Contains(w.Text, "C201") && strings.Contains(w.Text, "no verdict on the lots answers")) {
+					t.Errorf("got %q, want the cell and whose question it is", w.Text)
+				}
+			}
+		},
+	}.run(t)
 	for _, c := range qa.Cautions() {
 		if strings.Contains(c, "neither accepts nor rejects parts") {
 			return
