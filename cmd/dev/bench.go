@@ -3,6 +3,7 @@ package main
 import (
 	"errors"
 	"fmt"
+	"math"
 	"os"
 	"runtime"
 	"strings"
@@ -49,12 +50,16 @@ func benchRows() []benchRow {
 }
 
 // bench times every row, or those whose name holds the one argument, beside floors and peers of the same run: machines
-// differ, ratios less. Then come the pairs that are benchmarks of a package's own (see benchpairs.go).
+// differ, ratios less. Then come the pairs that are benchmarks of a package's own (see benchpairs.go). The
+// real window is measured alone, by `bench window`.
 func bench(d *dev, args []string) error {
 	if len(args) > 1 {
 		return usageError(fmt.Sprintf("found %q, want at most one part of a row's name", strings.Join(args, " ")))
 	}
 	part := strings.Join(args, "")
+	if part == "window" {
+		return benchWindow(d)
+	}
 	rows := chosen(benchRows(), part)
 	pairs, err := d.pairedBenchmarks(part)
 	if err != nil {
@@ -93,6 +98,9 @@ func bench(d *dev, args []string) error {
 		}
 	}
 	d.say("\nload at the end %s", load())
+	if math.IsNaN(kept) {
+		return errors.New("found work that computes no number: its time means nothing")
+	}
 	return nil
 }
 

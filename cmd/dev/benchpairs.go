@@ -85,9 +85,7 @@ func (d *dev) benchPairs(pairs []pair) error {
 		if err != nil {
 			return fmt.Errorf("%w\n%s", err, out)
 		}
-		for _, line := range ratios(out) {
-			rows = append(rows, line)
-		}
+		rows = append(rows, ratios(out)...)
 	}
 	d.say("\nPairs that packages measure themselves; what the peer is stands at the benchmark.\n\n%s", table(rows))
 	return nil

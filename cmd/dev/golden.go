@@ -2,6 +2,7 @@ package main
 
 import (
 	"errors"
+	"fmt"
 	"io/fs"
 	"os"
 	"os/exec"
@@ -59,31 +60,69 @@ func (d *dev) withUpdate() ([]string, error) {
 	return out, err
 }
 
-// referencePrograms compute reference values by another program than ours; each prints the table that stands beside it.
-var referencePrograms = []struct{ program, table string }{
-	{"qa/stats/dist/testdata/refdata.R", "qa/stats/dist/testdata/r.txt"},
-	{"qa/stats/testdata/refdata.R", "qa/stats/testdata/r.txt"},
-	{"qa/stats/testdata/refdata_means.R", "qa/stats/testdata/means.txt"},
+// A referenceProgram computes reference values by another program than ours and prints the table that stands beside it. The
+// slow ones compute in many digits for minutes.
+type referenceProgram struct {
+	program, table string
+	slow           bool
 }
 
-// refdata computes the reference values again and shows what changed. It changes the tables; git keeps the old ones.
-func refdata(d *dev, args []string) error {
-	if err := noArguments(args); err != nil {
-		return err
+var referencePrograms = []referenceProgram{
+	{"qa/stats/dist/testdata/refdata.R", "qa/stats/dist/testdata/r.txt", false},
+	{"qa/stats/testdata/refdata.R", "qa/stats/testdata/r.txt", false},
+	{"qa/stats/testdata/refdata_means.R", "qa/stats/testdata/means.txt", false},
+	{"qa/stats/testdata/refdata_groups.R", "qa/stats/testdata/groups.txt", false},
+	{"qa/stats/testdata/refdata_normality.R", "qa/stats/testdata/normality.txt", false},
+	{"qa/stats/testdata/refdata_proportions.R", "qa/stats/testdata/proportions.txt", false},
+	{"qa/stats/testdata/refdata_ranks.R", "qa/stats/testdata/ranks_r.txt", false},
+	{"qa/stats/testdata/refdata_robust.R", "qa/stats/testdata/robust.txt", false},
+	{"qa/stats/testdata/refpower.R", "qa/stats/testdata/power_r.txt", false},
+	{"qa/stats/testdata/refdata_ranks.py", "qa/stats/testdata/ranks.txt", true},
+	{"qa/stats/testdata/refdata_tolerance.py", "qa/stats/testdata/tolerance.csv", true},
+	{"qa/stats/testdata/refpower.py", "qa/stats/testdata/power.txt", true},
+	{"qa/stats/testdata/refdata_exact.py", "qa/stats/testdata/exact.txt", true},
+	{"qa/stats/dist/testdata/refdata.py", "qa/stats/dist/testdata/exact.txt", true},
+	{"qa/stats/dist/testdata/refowen.py", "qa/stats/dist/testdata/owen.txt", true},
+	{"qa/stats/dist/testdata/refnoncentral.py", "qa/stats/dist/testdata/noncentral.txt", true},
+}
+
+// command is what runs the program, and the package that brings it.
+func (r referenceProgram) command() (name, pkg string) {
+	if filepath.Ext(r.program) == ".py" {
+		return python, "python3-mpmath and python3-scipy"
 	}
-	if !present("Rscript") {
-		return errors.New("reference values: found no Rscript; install R (Debian: apt-get install r-base-core)")
+	return "Rscript", "r-base-core"
+}
+
+// output is what the program prints.
+func (r referenceProgram) output(d *dev) ([]byte, error) {
+	program := d.path(filepath.FromSlash(r.program))
+	if !exists(program) {
+		return nil, errors.New(r.program + ": found none; correct the list in cmd/dev/golden.go")
+	}
+	name, pkg := r.command()
+	if !present(name) {
+		return nil, fmt.Errorf("reference values: found no %s; install it (Debian: apt-get install %s)", name, pkg)
+	}
+	d.say("(in %s)", filepath.Dir(program))
+	d.show(nil, name, filepath.Base(program))
+	c := exec.Command(name, filepath.Base(program))
+	c.Dir, c.Stderr = filepath.Dir(program), d.stderr
+	return c.Output()
+}
+
+// refdata computes the reference values again and shows what changed; with --slow also those of many digits. It changes the
+// tables; git keeps the old ones.
+func refdata(d *dev, args []string) error {
+	slow := len(args) == 1 && args[0] == "--slow"
+	if !slow && len(args) > 0 {
+		return usageError(fmt.Sprintf("found %q, want nothing or --slow", strings.Join(args, " ")))
 	}
 	for _, r := range referencePrograms {
-		program := d.path(filepath.FromSlash(r.program))
-		if !exists(program) {
-			return errors.New(r.program + ": found none; correct the list in cmd/dev/golden.go")
+		if r.slow && !slow {
+			continue
 		}
-		d.say("(in %s)", filepath.Dir(program))
-		d.show(nil, "Rscript", filepath.Base(program))
-		c := exec.Command("Rscript", filepath.Base(program))
-		c.Dir, c.Stderr = filepath.Dir(program), d.stderr
-		out, err := c.Output()
+		out, err := r.output(d)
 		if err != nil {
 			return err
 		}

@@ -23,10 +23,11 @@ var tasks = []task{
 	{"demo", "run the worked example to a signed workbook, verify it, and show it in the window", demo},
 	{"check", "format, vet, staticcheck, imports, all tests and the real window; --outside: the checks by other programs", check},
 	{"golden", "rewrite the golden files and show what changed; a person reads the difference", golden},
-	{"refdata", "compute the reference values again with R and show what changed", refdata},
+	{"refdata", "compute the reference values again with R, --slow also in many digits, and show what changed", refdata},
 	{"cases", "write the worked example in testdata/demo again", cases},
 	{"screens", "render the window and the sheets of the worked example into out/screens", screens},
-	{"bench", "run the benchmarks and print the ratios to their peers of the same run; bench window: the real window", bench},
+	{"bench", "time every workload beside its floor and its peers (gonum, R, SciPy): bench [PART OF A NAME]; bench window: the real window", bench},
+	{"accuracy", "print the worst error of every function and method by region, beside gonum, R and SciPy; fail where a claim fails", accuracy},
 	{"fuzz", "run the fuzz targets: fuzz [--minutes N] [PART OF A NAME]", fuzz},
 	{"package", "build the programs of a release into out/release: package VERSION", release},
 }

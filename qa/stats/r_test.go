@@ -12,27 +12,9 @@ import (
 // are hard on arithmetic. testdata/r.txt carries readings and answers; refdata.R
 // beside it makes the file.
 func TestAgainstR(t *testing.T) {
-	lots := map[string][]float64{}
-	rows := 0
-	for _, line := range lines(t, "r.txt") {
-		f := strings.Fields(line)
-		switch {
-		case strings.HasPrefix(line, "#"):
-		case f[0] == "readings":
-			var x []float64
-			for _, text := range f[3:] {
-				x = append(x, number(t, text))
-			}
-			lots[f[1]+"."+f[2]] = x
-		default:
-			got := answer(t, lots[f[0]+".ref"], lots[f[0]+".cand"], f[1])
-			near(t, f[0]+" "+f[1], got, number(t, f[2]), number(t, f[3]))
-			rows++
-		}
-	}
-	if rows < 150 {
-		t.Errorf("got %d answers, want at least 150", rows)
-	}
+	answers(t, "r.txt", 150, func(ref, cand []float64, name string) (float64, float64) {
+		return answer(t, ref, cand, name), 0
+	})
 }
 
 // answer computes what the table calls name.

@@ -10,6 +10,7 @@
 # and P(T <= -t; delta) = P(T >= t; -delta). The terms cancel where delta < 0 and in the
 # upper tail, so all of it is done with digits to spare. Inputs are float64, exact.
 import sys
+from statistics import NormalDist
 from mpmath import mp, mpf, exp, log, sqrt, gamma, loggamma, erfc, nstr, power
 
 mp.dps = 420
@@ -84,15 +85,17 @@ def quantile(p, df, delta):
         lo, up = tails(t, df, delta)
         return want - log(up) if upper else log(lo) - want
 
-    a, b = delta - 1, delta + 1
-    width = mpf(2)
+    # About normal, for many degrees of freedom.
+    width = sqrt(1 + delta * delta / (2 * df)) if df > 20 else mpf(1)
+    middle = delta + mpf(NormalDist().inv_cdf(float(p))) * width if df > 20 else delta
+    a, b = middle - width / 2, middle + width / 2
     while off(a) > 0:
         a -= width
         width *= 2
     while off(b) < 0:
         b += width
         width *= 2
-    for _ in range(12):
+    for _ in range(2 if df > 20 else 12):
         mid = (a + b) / 2
         if off(mid) < 0:
             a = mid
@@ -160,7 +163,8 @@ for df in [1, 2, 4, 11, 29, 137, 999]:
             if df == 999 and delta < 0 or df == 1 and (p < 1e-6 or p > 0.99999):
                 continue
             show("NoncentralTQuantile", "2e-13", quantile(p, mpf(df), mpf(delta)), p, df, delta)
-for df, delta in [(1e5, 2), (1e6, 10), (1e6, 100), (30, 300), (5, 1000)]:
+mp.dps = 160
+for df, delta in [(1e5, 2), (1e6, 10), (1e6, 100), (30, 300), (200, 1000)]:
     for p in [1e-10, 0.05, 0.9, 1 - 2.0**-40]:
         show("NoncentralTQuantile", "2e-13", quantile(p, mpf(df), mpf(delta)), p, df, delta)
 mp.dps = 420
