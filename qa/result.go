@@ -43,6 +43,9 @@ type Seal struct {
 	Amended  int    `json:"amended"`
 }
 
+// NotCounted is said where nobody keeps attempts.
+const NotCounted = "not counted"
+
 // Attempts says how often this plan is known to have been run.
 type Attempts struct {
 	Known  int    `json:"known"`

@@ -112,7 +112,7 @@ func severalAttempts(plan Plan, a Attempts) []Warning {
 	if plan.Criterion.SecondSample == "one" {
 		allowed = 2
 	}
-	if a.Known <= allowed {
+	if a.Known <= allowed || a.KeptBy == "" || a.KeptBy == NotCounted {
 		return nil
 	}
 	return []Warning{{Code: WarnAttempts, Text: fmt.Sprintf("This is attempt %d with this plan, by what is known (kept by: %s); the plan allows %d. The probability that one of them shows what is not so is up to %d times the alpha stated: they belong together, and the last one is worth no more than the others.", a.Known, a.KeptBy, allowed, a.Known)}}

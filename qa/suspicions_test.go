@@ -87,13 +87,16 @@ func TestSkewedAndUnequal(t *testing.T) {
 func TestSeveralAttempts(t *testing.T) {
 	ch, ref, cand := d1()
 	for _, c := range []struct {
-		known  int
-		second string
-		want   bool
-	}{{0, "none", false}, {1, "none", false}, {2, "none", true}, {2, "one", false}, {3, "one", true}} {
+		known        int
+		second, kept string
+		want         bool
+	}{
+		{0, "none", "", false}, {1, "none", "register of this machine", false}, {2, "none", "register of this machine", true},
+		{2, "none", qa.NotCounted, false}, {2, "one", "register of this machine", false}, {3, "one", "register of this machine", true},
+	} {
 		p := plan(qa.Equivalence, absolute(0.02))
 		p.Criterion.SecondSample = c.second
-		r, err := qa.Compare(p, lots(ch, ref, cand), qa.Run{Attempts: qa.Attempts{Known: c.known, KeptBy: "register of this machine"}})
+		r, err := qa.Compare(p, lots(ch, ref, cand), qa.Run{Attempts: qa.Attempts{Known: c.known, KeptBy: c.kept}})
 		if err != nil {
 			t.Fatal(err)
 		}

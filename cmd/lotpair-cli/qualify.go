@@ -136,7 +136,7 @@ func (p *program) record() ([]byte, error) {
 	if err != nil {
 		return nil, err
 	}
-	result, err := qa.Compare(plan, readings, qa.Run{Software: p.software(), Seal: qa.Seal{Digest: plan.SealDigest(), Readings: "unknown"}, Attempts: qa.Attempts{Known: 1, KeptBy: "not counted"}})
+	result, err := qa.Compare(plan, readings, qa.Run{Software: p.software(), Seal: qa.Seal{Digest: plan.SealDigest(), Readings: "unknown"}, Attempts: qa.Attempts{Known: 1, KeptBy: qa.NotCounted}})
 	if err != nil {
 		return nil, err
 	}

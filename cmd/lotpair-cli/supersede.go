@@ -10,7 +10,7 @@ import (
 // earlier reads the record that is to be superseded: what the new one states of it, and how many attempts are known with it.
 func (p *program) earlier(file, because string) ([]qa.Superseded, qa.Attempts, int) {
 	if file == "" {
-		return nil, qa.Attempts{Known: 1, KeptBy: "not counted"}, exitDone
+		return nil, qa.Attempts{Known: 1, KeptBy: qa.NotCounted}, exitDone
 	}
 	pkg, code := p.read(file)
 	if code != exitDone {
