@@ -57,13 +57,41 @@ func (t *table) wanted() []row {
 		return t.rows
 	}
 	if t.wantedRows == nil {
-		for _, r := range t.rows {
-			if slices.ContainsFunc(t.hints.lots, func(l string) bool { return sameName(l, r.lot) }) {
-				t.wantedRows = append(t.wantedRows, r)
-			}
-		}
+		t.wantedRows = someRows(t.rows, func(lot string) bool {
+			return slices.ContainsFunc(t.hints.lots, func(l string) bool { return sameName(l, lot) })
+		})
 	}
 	return t.wantedRows
+}
+
+// someRows are the rows of some lots, in place where they follow each other: a tall sheet has millions.
+func someRows(rows []row, of func(lot string) bool) []row {
+	first, last, n := 0, -1, 0
+	known, is := "", of("") // of the row before
+	for i, r := range rows {
+		if r.lot != known {
+			known, is = r.lot, of(r.lot)
+		}
+		if is {
+			if n++; n == 1 {
+				first = i
+			}
+			last = i
+		}
+	}
+	if last+1-first == n {
+		return rows[first : last+1 : last+1]
+	}
+	out := make([]row, 0, n)
+	for _, r := range rows {
+		if r.lot != known {
+			known, is = r.lot, of(r.lot)
+		}
+		if is {
+			out = append(out, r)
+		}
+	}
+	return out
 }
 
 func (t *table) cell(r row, col int) cells.Cell {

@@ -22,7 +22,11 @@ func sameName(a, b string) bool { return joined(a) == joined(b) }
 func (t *table) foundLots() []found {
 	var all []found
 	index := map[string]int{}
-	for _, r := range t.rows {
+	for k, r := range t.rows {
+		if k > 0 && r.lot == t.rows[k-1].lot {
+			all[index[r.lot]].rows++
+			continue
+		}
 		i, ok := index[r.lot]
 		if !ok {
 			i = len(all)
@@ -56,12 +60,7 @@ func (t *table) lotRows(side qa.Side, plan qa.LotPlan) (string, []row, error) {
 		want = all[0].name
 		t.say("the %s lot is the only one of the sheet, %s.", side, quoted(want))
 	}
-	var rows []row
-	for _, r := range t.rows {
-		if sameName(r.lot, want) {
-			rows = append(rows, r)
-		}
-	}
+	rows := someRows(t.rows, func(lot string) bool { return sameName(lot, want) })
 	if len(rows) == 0 {
 		near := ""
 		for _, l := range all {

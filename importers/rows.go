@@ -12,7 +12,7 @@ import (
 
 // sortRows tells the rows below the headings apart: unit row, limits, summaries, notes and rows of the lots.
 func (t *table) sortRows() error {
-	var data []row
+	data := make([]row, 0, len(t.sheet.Rows))
 	for i, r := range t.sheet.Rows {
 		if r.Number <= t.heading || !slices.ContainsFunc(r.Cells, func(c cells.Cell) bool { return filledText(c) != "" || c.Kind == cells.FormulaNoValue }) {
 			continue
@@ -178,6 +178,9 @@ func (t *table) takeLabelled(data []row) []row {
 		}
 		i = j + 1
 	}
+	if !slices.ContainsFunc(labels, func(l labelled) bool { return l.means != "" }) {
+		return data
+	}
 	var rest []row
 	var summaries []string
 	for i, d := range data {
@@ -204,21 +207,16 @@ func (t *table) fillLots(data []row) error {
 		t.rows = t.withoutNotes(t.withoutFeet(data, func(row) bool { return true }))
 		return nil
 	}
-	direct := make([]string, len(data))
-	for i, d := range data {
-		direct[i] = filledText(t.sheet.Rows[d.at].At(t.lot))
-	}
-	index := map[int]int{}
-	for i, d := range data {
-		index[d.at] = i
-	}
-	data = t.withoutFeet(data, func(d row) bool { return direct[index[d.at]] == "" })
-	down := t.filledDown(data, func(d row) string { return direct[index[d.at]] })
+	direct := func(d row) string { return filledText(t.sheet.Rows[d.at].At(t.lot)) }
+	data = t.withoutFeet(data, func(d row) bool { return direct(d) == "" })
+	down := t.filledDown(data, direct)
 	current, last := "", -1
 	var lost []string
+	t.rows = make([]row, 0, len(data))
 	for _, d := range data {
 		r := t.sheet.Rows[d.at]
-		d.lot = direct[index[d.at]]
+		named := direct(d)
+		d.lot = named
 		if i, _ := slices.BinarySearch(t.summary, last); i < len(t.summary) && t.summary[i] < d.at { // a summary ends a block
 			current = ""
 		}
@@ -230,7 +228,7 @@ func (t *table) fillLots(data []row) error {
 			}
 		}
 		switch {
-		case d.lot != "" && direct[index[d.at]] != "":
+		case named != "":
 			if current = d.lot; down && t.alone(r, t.lot) {
 				continue // the lot's name stands in a row of its own
 			}
@@ -333,7 +331,7 @@ func (t *table) withoutNotes(data []row) []row {
 
 // withoutFeet takes unlabelled foot rows out: rows without a part that hold formulas where the row above holds none.
 func (t *table) withoutFeet(data []row, may func(row) bool) []row {
-	var rest []row
+	var rest []row // nil as long as it is all of the rows so far
 	feet := []string{}
 	foot := false // the row above is one
 	for i, d := range data {
@@ -350,14 +348,21 @@ func (t *table) withoutFeet(data []row, may func(row) bool) []row {
 			}
 		}
 		if foot = may(d) && i > 0 && formulas > 0 && other == 0; foot {
+			if len(feet) == 0 {
+				rest = slices.Clone(data[:i])
+			}
 			t.summary = append(t.summary, d.at)
 			feet = append(feet, strconv.Itoa(r.Number))
 			continue
 		}
-		rest = append(rest, d)
+		if len(feet) > 0 {
+			rest = append(rest, d)
+		}
 	}
 	slices.Sort(t.summary)
-	if len(feet) > 0 {
+	if len(feet) == 0 {
+		rest = data
+	} else {
 		t.say("%s of formulas without a label not taken as readings: %s.", qa.Count(len(feet), "row", "rows"), join2(feet))
 	}
 	return rest

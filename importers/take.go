@@ -189,9 +189,11 @@ func (r *reader) checkDoubled() error {
 	for i := range r.sides {
 		s := &r.sides[i]
 		ranges, ok := s.doubled(r.isAttribute)
+		if !ok {
+			continue
+		}
 		_, repeated := r.repeatedIDs(s)
 		switch {
-		case !ok:
 		case s.table.part == 0:
 			faults = append(faults, Fault{Place: s.table.place(), Text: fmt.Sprintf(
 				"found the readings of the lot %s twice (doubled block: %s), want each part once; delete the second block, or name its cells under exclude with a reason", quoted(s.lot.Name), ranges)})
@@ -209,11 +211,28 @@ func (r *reader) checkDoubled() error {
 	return nil
 }
 
+// repeatsPart says whether an id stands twice among the readings used.
+func repeatsPart(series qa.Series) bool {
+	seen := map[[2]string]struct{}{}
+	for _, x := range series.Readings {
+		if id := partOf(x); x.Used() && x.Part != "" {
+			if _, twice := seen[id]; twice {
+				return true
+			}
+			seen[id] = struct{}{}
+		}
+	}
+	return false
+}
+
 // repeatedIDs finds ids that stand twice among the readings used of one characteristic.
 func (r *reader) repeatedIDs(s *lotSide) (Fault, bool) {
 	places := map[[2]string][]string{}
 	var repeated [][2]string
 	for _, series := range s.lot.Series {
+		if !repeatsPart(series) {
+			continue
+		}
 		at := map[[2]string][]string{}
 		for _, x := range series.Readings {
 			if x.Used() && x.Part != "" {

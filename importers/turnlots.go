@@ -246,7 +246,8 @@ func (t *table) turnBlock(i int, b block, rows []row, names []string, where map[
 		lot = append(lot, row{at: r.at, lot: name, turn: turn})
 	}
 	lot = t.withoutBlockFeet(t.trimmedRows(lot), own.part > 0)
-	t.rows = append(t.rows, t.trimmedRows(lot)...)
+	lot = t.trimmedRows(lot)
+	t.rows = append(slices.Grow(t.rows, len(lot)*(len(t.blocks)-i)), lot...)
 	for _, s := range t.summary {
 		t.addFeet(row{at: s, turn: turn})
 	}
