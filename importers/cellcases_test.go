@@ -195,7 +195,7 @@ func TestCells(t *testing.T) {
 				}
 			}
 			c.check(t, "own.xlsx")
-			for _, other := range []string{"openpyxl.xlsx", "libreoffice.xlsx", "libreoffice.ods"} {
+			for _, other := range []string{"openpyxl.xlsx", "libreoffice.xlsx", "libreoffice.ods", "openxlsx.xlsx"} {
 				if _, err := os.Stat(filepath.Join(dir, other)); err != nil {
 					continue
 				}

@@ -1,6 +1,7 @@
 package importers
 
 import (
+	"fmt"
 	"slices"
 	"strconv"
 
@@ -217,6 +218,8 @@ func (t *table) findMeasured() error {
 			why = "it holds part numbers or ids"
 		case limitHeading(c.heading):
 			why = "it holds limits or nominal values; state them in the plan"
+		case t.groupsLots(c.col) > 1:
+			why = fmt.Sprintf("it names %d groups of lots; to compare those, name it as lot_column and the column of lots as group_column, with claim = \"sources\" where the sources are meant and not these lots alone", t.groupsLots(c.col))
 		case headingMeans(c.heading) == groupHeading:
 			why = "it holds groups; name it as group_column to keep them"
 		case headingMeans(c.heading) == takerHeading:
@@ -286,6 +289,25 @@ func (t *table) holdsText(col int) bool {
 		}
 	}
 	return t.textual[col]
+}
+
+// groupsLots is how many groups of lots a column of groups names: each lot lies in one of them, and one holds several; 0 where it does not.
+func (t *table) groupsLots(col int) int {
+	if t.lot == 0 || t.turned || headingMeans(t.column(col).heading) != groupHeading {
+		return 0
+	}
+	of, groups := map[string]string{}, map[string]bool{}
+	for _, r := range t.rows {
+		g := filledText(t.merged(r, col))
+		if had, ok := of[r.lot]; g == "" || ok && had != g {
+			return 0
+		}
+		of[r.lot], groups[g] = g, true
+	}
+	if len(groups) == len(of) {
+		return 0
+	}
+	return len(groups)
 }
 
 // limitHeading says whether a heading names a nominal value, a limit or a tolerance.

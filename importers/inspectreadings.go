@@ -67,6 +67,7 @@ func (in *Inspection) readColumn(t *table, ch *qa.Characteristic, col int, marks
 	marks[m.decimal] = true
 	values := map[string][]float64{}
 	var seen looks
+	var problems unreadCells
 	var bounds []string
 	lot, list := "", []float64(nil) // of the rows before
 	if len(t.rows) > 0 {
@@ -89,8 +90,14 @@ func (in *Inspection) readColumn(t *table, ch *qa.Characteristic, col int, marks
 			bounds = append(bounds, cell.Name())
 		}
 		in.unread(t, cell, got)
+		if got.problem != nil {
+			problems.add(cell, got.problem)
+		}
 	}
 	values[lot] = list
+	if len(m.unclear) == 0 { // one word of the plan settles them all
+		problems.warn(t, ch.Name)
+	}
 	seen.say(t, ch.Name)
 	t.inspectOdd(ch.Name, ch.Unit, col, m.decimal, values)
 	if len(bounds) > 0 {

@@ -52,7 +52,7 @@ func TestLayouts(t *testing.T) {
 				}
 			}
 			c.check(t, "own.xlsx")
-			for _, other := range []string{"openpyxl.xlsx", "libreoffice.xlsx"} {
+			for _, other := range []string{"openpyxl.xlsx", "libreoffice.xlsx", "openxlsx.xlsx"} {
 				if _, err := os.Stat(filepath.Join(dir, other)); err == nil {
 					t.Run(other, func(t *testing.T) { c.check(t, other) })
 				}

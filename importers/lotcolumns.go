@@ -220,7 +220,10 @@ func (t *table) lotsAsHeadings() bool {
 			continue
 		}
 		names := t.namesIn(i)
-		if len(names) >= 2 && !slices.ContainsFunc(names, func(c cells.Cell) bool { return !lotLike.MatchString(filledText(c)) }) {
+		if len(names) >= 2 && !slices.ContainsFunc(names, func(c cells.Cell) bool {
+			name, _ := splitUnit(filledText(c))
+			return !lotLike.MatchString(name)
+		}) {
 			return true
 		}
 	}

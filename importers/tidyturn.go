@@ -146,6 +146,12 @@ func (t *table) tidyReadings() (names []string, readings []tidyReading, err erro
 	}
 	switch {
 	case t.show:
+		if len(nameless) > 0 {
+			t.warn("nameless-readings", "readings that do not say what was measured (%s); write the characteristic's name in %s there.", join2(nameless), t.columnText(s.name))
+		}
+		if len(partless) > 0 {
+			t.warn("nameless-readings", "readings without a part's id (%s); write it in %s there.", join2(partless), t.columnText(t.part))
+		}
 	case len(nameless) > 0:
 		return nil, nil, t.refuse("%s: found readings that do not say what was measured (%s), want the characteristic's name in each row; write it there, or delete what is no reading", t.columnText(s.name), join2(nameless))
 	case len(partless) > 0:

@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"fmt"
 	"path/filepath"
+	"strconv"
 	"strings"
 
 	"lotpair/importers"
@@ -52,7 +53,14 @@ func (p *program) inspect(args []string) int {
 func (p *program) printInspection(s importers.Inspection) {
 	fmt.Fprintf(p.out, "%s, %d bytes, sha-256 %s\n", s.File.Name, s.File.Bytes, s.File.SHA256)
 	fmt.Fprintf(p.out, "layout %s, heading in row %d%s\n", s.Layout, s.HeaderRow, after(" of sheet ", s.Sheet))
-	for _, r := range s.Reasons {
+	first, rest := s.Reasons, []string{}
+	for i, r := range s.Reasons {
+		if strings.HasPrefix(r, "the layout ") {
+			first, rest = s.Reasons[:i+1], s.Reasons[i+1:]
+			break
+		}
+	}
+	for _, r := range first {
 		fmt.Fprintf(p.out, "- %s\n", r)
 	}
 	fmt.Fprintln(p.out, "\nlots")
@@ -65,19 +73,44 @@ func (p *program) printInspection(s importers.Inspection) {
 		for _, l := range c.Lots {
 			mean := "no mean"
 			if l.Mean != nil {
-				mean = "mean " + qa.Plain(*l.Mean)
+				mean = "mean " + strconv.FormatFloat(*l.Mean, 'g', 9, 64) // --json has all digits
 			}
 			fmt.Fprintf(p.out, "    %s: n %d, %s\n", l.Lot, l.N, mean)
 		}
 	}
-	if len(s.Unread) > 0 {
-		fmt.Fprintln(p.out, "\nnot taken as plain numbers")
-		for _, u := range s.Unread {
-			fmt.Fprintf(p.out, "  %s!%s: found %q, taken as %s\n", u.File, u.Cell, u.Found, u.TakenAs)
+	if len(s.Warnings) > 0 {
+		fmt.Fprintln(p.out, "\nto look at or to settle")
+		for _, w := range s.Warnings {
+			fmt.Fprintf(p.out, "! %s: %s\n", w.Code, w.Text)
 		}
 	}
-	for _, w := range s.Warnings {
-		fmt.Fprintf(p.out, "! %s: %s\n", w.Code, w.Text)
+	p.printUnread(s.Unread)
+	if len(rest) > 0 {
+		fmt.Fprintln(p.out, "\nhow it was read")
+		for _, r := range rest {
+			fmt.Fprintf(p.out, "- %s\n", r)
+		}
+	}
+}
+
+// printUnread lists the cells that are no plain numbers. Of many texts that were taken as numbers the first say enough.
+func (p *program) printUnread(cells []qa.UnreadResult) {
+	const show = 5
+	if len(cells) == 0 {
+		return
+	}
+	fmt.Fprintln(p.out, "\nnot taken as plain numbers")
+	numbers := 0
+	for _, u := range cells {
+		if u.TakenAs == qa.TakenNumber {
+			if numbers++; numbers > show {
+				continue
+			}
+		}
+		fmt.Fprintf(p.out, "  %s!%s: found %q, taken as %s\n", u.File, u.Cell, u.Found, u.TakenAs)
+	}
+	if numbers > show {
+		fmt.Fprintf(p.out, "  and %s taken as numbers; --json lists them\n", qa.Count(numbers-show, "more text", "more texts"))
 	}
 }
 
