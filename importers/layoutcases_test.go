@@ -39,6 +39,7 @@ type layoutWant struct {
 	said     []string
 	texts    []string  // words of the warnings
 	refused  bool      // the fault is of the file, not of the plan
+	p        float64   // of both one-sided tests, to four digits; 0 where it is not looked at
 	spread   float64   // ratio of the standard deviations, to three digits; 0 where it is not looked at
 	first    [2]string // text of each lot's first reading; not looked at where empty
 }

@@ -101,8 +101,9 @@ func (c layoutCase) check(t *testing.T, file string) {
 }
 
 // misread are the upper 90 % limits of D1 where foot rows are taken for readings, the candidate stands twice, both stand twice,
-// 12.022 is dropped, limits are taken for readings, a blank for 0 and 12,008 for 12008 (computed in R 4).
-var misread = []float64{0.009575, 0.009091, 0.008176, 0.008662, 0.016101, 2.238, 2795}
+// 12.022 is dropped, limits are taken for readings, a blank for 0 and 12,008 for 12008, and the readings are rounded to 0.01
+// (computed in R 4).
+var misread = []float64{0.009575, 0.009091, 0.008176, 0.008662, 0.016101, 2.238, 2795, 0.010610}
 
 // compare runs the comparison: the limits as R 4 has them, to the digits printed there.
 func (w layoutWant) compare(t *testing.T, p qa.Plan, r qa.Readings) {
@@ -120,6 +121,17 @@ func (w layoutWant) compare(t *testing.T, p qa.Plan, r qa.Readings) {
 	for _, wrong := range misread {
 		if e := first.Equivalence; w.upper != 0 && e.Upper != nil && math.Abs(*e.Upper-wrong) < 5e-7 {
 			t.Errorf("got the upper 90 %% limit %.7g of a misread sheet", *e.Upper)
+		}
+	}
+	if e := first.Equivalence; w.upper == d1.upper && first.Method == "welch" && e.MarginUpper != nil && *e.MarginUpper == 0.010 && e.Verdict != qa.Undecided {
+		t.Errorf("got %s at the margin 0.010, want it undecided by a hair", e.Verdict)
+	}
+	if d := first.Difference.Estimate; d != nil && math.Abs(*d+11.531) < 0.001 {
+		t.Errorf("got the difference %v of inches that were not converted", *d)
+	}
+	if w.p != 0 {
+		if e := first.Equivalence; e.P == nil || math.Abs(*e.P-w.p) > 5e-6 || e.Verdict != qa.Equivalent {
+			t.Errorf("got %+v, want equivalent with p %v", e, w.p)
 		}
 	}
 	if w.spread != 0 {

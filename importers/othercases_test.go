@@ -42,6 +42,15 @@ func meanText(values []string) float64 {
 	return sum / float64(len(values))
 }
 
+// D4: equal means and twice the spread, 10.000 ±0.040 (computed in R 4: difference 0.001, ratio of standard deviations 1.9953, p of the
+// two one-sided tests at ±0.008 0.04676).
+var (
+	d4Reference = strings.Fields("9.9786 9.9835 9.9861 9.988 9.9896 9.9909 9.9921 9.9932 9.9942 9.9952 9.9961 9.997 9.9979 9.9987 9.9996 " +
+		"10.0004 10.0013 10.0021 10.003 10.0039 10.0048 10.0058 10.0068 10.0079 10.0091 10.0104 10.012 10.0139 10.0165 10.0214")
+	d4Candidate = strings.Fields("9.9583 9.968 9.9732 9.9771 9.9802 9.9829 9.9853 9.9875 9.9895 9.9914 9.9933 9.995 9.9968 9.9985 10.0002 " +
+		"10.0018 10.0035 10.0052 10.007 10.0087 10.0106 10.0125 10.0145 10.0167 10.0191 10.0218 10.0249 10.0288 10.034 10.0437")
+)
+
 // otherCases are the rest of the nasty ones: spellings, orders, attributes, files that are not what they are called, plans.
 func otherCases() []layoutCase {
 	one := func(rows [][]any) []layoutFile {
@@ -92,6 +101,9 @@ func otherCases() []layoutCase {
 	add("n26-ask", "the same without a word on it: no measurements", one(marks), plain, layoutWant{fault: []string{"no column of measurements", "attribute"}})
 	add("n26-counts", "counts of parts and no parts: stop", one([][]any{{"Lot", "inspected", "nonconforming"}, {"REF-0417", num("125"), num("0")}, {"CAND-0931", num("125"), num("1")}}), plain, layoutWant{fault: []string{`"inspected"`, `"nonconforming"`, "a row a part"}})
 
+	add("d4", "equal means, twice the spread: equivalent in the mean at 0.008, and the spread stands beside it", one(lotsOf("Bore dia", d4Reference, d4Candidate)), strings.Replace(plain, "0.010", "0.008", 1)+characteristicOf(`name = "Bore dia"`, "lower = 9.96", "target = 10", "upper = 10.04"), layoutWant{
+		n: [2]int{30, 30}, mean: [2]float64{meanText(d4Reference), meanText(d4Candidate)}, spread: 1.9953, p: 0.04676,
+	})
 	add("n27-utf16", "UTF-16 with a mark", []layoutFile{{name: "own.csv", text: string(utf16Of(longCSV(";", "."), binary.LittleEndian, true))}}, planFor("own.csv", "", ""), d1)
 
 	words := [][]any{{"Lot", "x"}}
