@@ -202,7 +202,7 @@ func TestSignFirstWritesTheWorkbook(t *testing.T) {
 
 func TestLeaveOutAndCompareAgain(t *testing.T) {
 	w := opened(t, demo(t), 1280, 800)
-	at := w.view.pages[qa.Candidate].Readings[3].Source
+	at := w.view.pages[qa.Candidate].Readings.At(3).Source
 	w.change("Leaving out", func(s desk.State) (desk.State, error) { return s.LeftOut(at, "burr, NCR-90", "tester", now()) })
 	noProblem(t, w)
 	if w.view.foot.Compare == "" || w.view.foot.Export != "" {
@@ -211,7 +211,7 @@ func TestLeaveOutAndCompareAgain(t *testing.T) {
 	w.win.Canvas().Capture()
 	w.compare()
 	noProblem(t, w)
-	if r := w.view.pages[qa.Candidate].Readings[0]; !r.LeftOut || r.Source != at {
+	if r := w.view.pages[qa.Candidate].Readings.At(0); !r.LeftOut || r.Source != at {
 		t.Errorf("first reading: got %+v, want the one left out", r)
 	}
 	for _, side := range []qa.Side{qa.Reference, qa.Candidate} {
@@ -243,7 +243,7 @@ func TestKeysWalkTheSpine(t *testing.T) {
 	}
 	w.leftRows.content.FocusGained()
 	w.leftRows.content.TypedKey(&fyne.KeyEvent{Name: fyne.KeyEnd})
-	if got, want := w.cursor[qa.Reference], len(w.view.pages[qa.Reference].Readings)-1; got != want {
+	if got, want := w.cursor[qa.Reference], w.view.pages[qa.Reference].Readings.Len()-1; got != want {
 		t.Errorf("end on the left page: got reading %d, want %d", got, want)
 	}
 	w.act.order.TypedKey(&fyne.KeyEvent{Name: fyne.KeySpace})
@@ -299,7 +299,7 @@ func TestErrorsStandWhereTheyHappened(t *testing.T) {
 
 func TestAFaultOfOursClosesNothing(t *testing.T) {
 	w := opened(t, demo(t), 1280, 800)
-	w.work("Testing", func() change { panic("deliberate") })
+	w.work("Testing", func(qa.Watch) change { panic("deliberate") })
 	if !strings.Contains(w.state.Problem.Text, "deliberate") || len(w.view.spine.Rows) != 6 || w.state.Job.Name != "" {
 		t.Errorf("problem: got %+v", w.state.Problem)
 	}
@@ -308,7 +308,7 @@ func TestAFaultOfOursClosesNothing(t *testing.T) {
 func TestWhatACancelledJobBringsIsNotTaken(t *testing.T) {
 	w := opened(t, demo(t), 1280, 800)
 	before := w.state.Path
-	w.work("Testing", func() change {
+	w.work("Testing", func(qa.Watch) change {
 		w.cancel()
 		return func(s desk.State) desk.State { s.Path = "taken"; return s }
 	})

@@ -17,14 +17,32 @@ const (
 func (w *window) bannerText() string {
 	s := w.state
 	switch {
-	case s.Job.Name != "" && s.Job.Share > 0:
-		return fmt.Sprintf("%s, %.0f %%", s.Job.Name, 100*s.Job.Share)
+	case s.Job.Name != "" && w.jobs.quiet:
+		return ""
 	case s.Job.Name != "":
-		return s.Job.Name + " …"
+		text := s.Job.Name
+		if p := w.jobs.doing; p.Doing != "" {
+			text += ": " + p.Doing
+			if p.Of != "" {
+				text += " (" + p.Of + ")"
+			}
+		}
+		if share := w.share(); share >= 0 {
+			return fmt.Sprintf("%s, %.0f %%", text, 100*share)
+		}
+		return text + " …"
 	case s.Problem.Text != "":
 		return s.Problem.Place + ": " + s.Problem.Text
 	}
 	return ""
+}
+
+// share is how far the job that runs has come; below 0 where that is not known.
+func (w *window) share() float64 {
+	if w.jobs.doing.Doing != "" {
+		return w.jobs.doing.Share()
+	}
+	return w.state.Job.Share
 }
 
 // bannerWrapped is the banner's text in lines; what is one fact a line stays so.
@@ -67,6 +85,9 @@ func (w *window) paintBanner(p *pen, size fyne.Size) {
 	b := w.act.read
 	if w.state.Job.Name != "" {
 		b = w.act.cancel
+		if share := w.share(); share > 0 {
+			p.across(0, size.Width*float32(share), size.Height-1.5, 3, p.Text)
+		}
 	}
 	wide := min(b.wide(), bannerRight)
 	p.put(b, size.Width-margin-wide, size.Height/2-14, wide, 28)

@@ -61,6 +61,8 @@ func (w *window) leaveDialog() {
 // typed takes the keys that no control took.
 func (w *window) typed(e *fyne.KeyEvent) {
 	switch {
+	case e.Name == fyne.KeyEscape && w.dialog == nil && w.state.Job.Name != "":
+		w.cancel()
 	case w.dialog == nil && e.Name >= fyne.Key1 && e.Name <= fyne.Key5:
 		w.lookKey(e.Name)
 	case w.dialog == nil:

@@ -81,7 +81,7 @@ func origin(plan qa.File, r qa.Readings) string {
 func entryOf(s desk.State, e register.Entry) register.Entry {
 	p := s.Record.Plan
 	e.Title, e.Supports = s.Header().Title, p.Supports
-	e.Reference, e.Candidate = s.Page(qa.Reference).Lot, s.Page(qa.Candidate).Lot
+	e.Reference, e.Candidate = s.LotName(qa.Reference), s.LotName(qa.Candidate)
 	switch {
 	case s.Compared:
 		e.Verdict = string(s.Record.Result.Verdict)
@@ -162,8 +162,8 @@ func (w *window) keeping(read func(string) ([]byte, error)) func(string) ([]byte
 // reopen opens a record of the register as it was left.
 func (w *window) reopen(id int64) {
 	const place = "Opening a record"
-	w.work(place, func() change {
-		e, next, view, err := w.again(id)
+	w.work(place, func(watch qa.Watch) change {
+		e, next, view, err := w.again(watch, id)
 		if err != nil {
 			return w.mended(place, err)
 		}
@@ -197,7 +197,7 @@ func (w *window) mended(place string, err error) change {
 }
 
 // again makes the state of a record of the register from what was kept.
-func (w *window) again(id int64) (register.Entry, desk.State, desk.View, error) {
+func (w *window) again(watch qa.Watch, id int64) (register.Entry, desk.State, desk.View, error) {
 	var view desk.View
 	e, acts, err := w.register.Record(id)
 	if err != nil {
@@ -213,12 +213,12 @@ func (w *window) again(id int64) (register.Entry, desk.State, desk.View, error) 
 	if data, err := w.register.View(id); err == nil && len(data) > 0 {
 		_ = json.Unmarshal(data, &view) // how it was looked at may be lost
 	}
-	s, err := w.rebuilt(k)
+	s, err := w.rebuilt(watch, k)
 	return e, s, view, err
 }
 
 // rebuilt reads the kept files again and compares again.
-func (w *window) rebuilt(k kept) (desk.State, error) {
+func (w *window) rebuilt(watch qa.Watch, k kept) (desk.State, error) {
 	if k.Workbook.SHA256 != "" {
 		data, err := w.register.File(k.Workbook.SHA256)
 		if err != nil {
@@ -243,11 +243,11 @@ func (w *window) rebuilt(k kept) (desk.State, error) {
 	for _, f := range k.Files {
 		digests[f.Name] = f.SHA256
 	}
-	readings, err := importers.Read(*k.Plan, func(name string) ([]byte, error) { return w.register.File(digests[name]) })
+	readings, err := importers.Under(watch).Read(*k.Plan, func(name string) ([]byte, error) { return w.register.File(digests[name]) })
 	if err != nil {
 		return desk.State{}, err
 	}
-	result, err := qa.Compare(*k.Plan, readings, qa.Run{Software: w.build.software(), Seal: k.Seal, Attempts: k.Attempts})
+	result, err := qa.Compare(*k.Plan, readings, qa.Run{Software: w.build.software(), Seal: k.Seal, Attempts: k.Attempts, Watch: watch})
 	if err != nil {
 		return desk.State{}, err
 	}

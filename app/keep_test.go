@@ -58,7 +58,7 @@ func TestAKilledProgramOpensWhereItWas(t *testing.T) {
 	w.spineKey(fyne.KeyEnd)
 	w.lookKey(fyne.Key3)
 	same("looked at")
-	at := w.view.pages[qa.Candidate].Readings[3].Source
+	at := w.view.pages[qa.Candidate].Readings.At(3).Source
 	w.change("Leaving out", func(s desk.State) (desk.State, error) { return s.LeftOut(at, "burr, NCR-90", "tester", now()) })
 	if x := again(); x.state.Compared || x.view.foot.Compare == "" {
 		t.Error("left out: got a result, want none until it is compared again")
@@ -124,7 +124,7 @@ func TestTwoWindowsOnOneRecord(t *testing.T) {
 	b := openedWith(t, inRegister(t, dir), plan, 1280, 800)
 	cells := a.view.pages[qa.Candidate].Readings
 	leave := func(w *window, i int) {
-		w.change("Leaving out", func(s desk.State) (desk.State, error) { return s.LeftOut(cells[i].Source, "burr", "tester", now()) })
+		w.change("Leaving out", func(s desk.State) (desk.State, error) { return s.LeftOut(cells.At(i).Source, "burr", "tester", now()) })
 	}
 	leave(a, 3)
 	noProblem(t, a)

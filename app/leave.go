@@ -13,10 +13,10 @@ import (
 // cell is no reading, it says all that is known of the cell.
 func (w *window) onReading(of qa.Side, i int) {
 	all := w.view.pages[of].Readings
-	if i < 0 || i >= len(all) || w.state.Job.Name != "" || w.dialog != nil {
+	if i < 0 || i >= all.Len() || w.state.Job.Name != "" || w.dialog != nil {
 		return
 	}
-	r := all[i]
+	r := all.At(i)
 	w.cursor[of] = i
 	switch {
 	case w.state.Closed() || !r.Used && !r.LeftOut:
@@ -68,7 +68,7 @@ func (w *window) change(place string, act func(desk.State) (desk.State, error)) 
 // compare runs the comparison again.
 func (w *window) compare() {
 	s := w.state
-	w.work("Comparing", func() change {
+	w.work("Comparing", func(qa.Watch) change {
 		next, err := s.Compare()
 		if err != nil {
 			return failed("Comparing", err)

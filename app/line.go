@@ -59,6 +59,15 @@ func (l *line) FocusLost() {
 	l.left()
 }
 
+// TypedKey implements fyne.Focusable.
+func (l *line) TypedKey(e *fyne.KeyEvent) {
+	if e.Name == fyne.KeyEscape {
+		passed(l, e)
+		return
+	}
+	l.Entry.TypedKey(e)
+}
+
 // TypedShortcut implements fyne.Shortcutable.
 func (l *line) TypedShortcut(s fyne.Shortcut) {
 	if !l.shortcut(s) {

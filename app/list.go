@@ -35,7 +35,9 @@ func newSearch(changed func(), key func(fyne.KeyName) bool, shortcut func(fyne.S
 
 // TypedKey implements fyne.Focusable.
 func (s *search) TypedKey(e *fyne.KeyEvent) {
-	if !s.key(e.Name) {
+	if e.Name == fyne.KeyEscape {
+		passed(s, e)
+	} else if !s.key(e.Name) {
 		s.Entry.TypedKey(e)
 	}
 }

@@ -81,8 +81,8 @@ func (w *window) open(name string, read func(string) ([]byte, error)) { w.bring(
 
 // bring opens a file on the page of one lot.
 func (w *window) bring(name string, side qa.Side, read func(string) ([]byte, error)) {
-	place := "Opening " + filepath.Base(name)
-	w.work(place, func() change {
+	place, masked := "Opening "+filepath.Base(name), !w.state.Sealed()
+	w.work(place, func(watch qa.Watch) change {
 		read := w.keeping(read)
 		data, err := read(name)
 		if err != nil {
@@ -94,15 +94,15 @@ func (w *window) bring(name string, side qa.Side, read func(string) ([]byte, err
 			if _, err := exports.ReadRecord(data); !errors.Is(err, exports.ErrNoRecord) || opcsign.HasSignature(data) {
 				return openWorkbook(place, name, data)
 			}
-			return w.lookInto(name, data, "", side)
+			return w.lookInto(watch, name, data, "", side, masked)
 		default:
-			return w.lookInto(name, data, "", side)
+			return w.lookInto(watch, name, data, "", side, masked)
 		}
-		rec, err := w.compareByPlan(name, data, read)
+		rec, err := w.compareByPlan(watch, name, data, read)
 		if err != nil {
 			return failed(place, err)
 		}
-		if c := w.sameAgain(place, origin(rec.PlanFile, rec.Readings)); c != nil {
+		if c := w.sameAgain(watch, place, origin(rec.PlanFile, rec.Readings)); c != nil {
 			return c
 		}
 		return func(s desk.State) desk.State { return s.Opened(name, rec) }
@@ -122,7 +122,7 @@ func openWorkbook(place, name string, data []byte) change {
 
 // sameAgain opens the record that was made of the same plan and the same files before, where that one is still open to
 // changes: it goes on where it was left. It is nil where there is none.
-func (w *window) sameAgain(place, of string) change {
+func (w *window) sameAgain(watch qa.Watch, place, of string) change {
 	if w.register == nil {
 		return nil
 	}
@@ -133,7 +133,7 @@ func (w *window) sameAgain(place, of string) change {
 	if !ok {
 		return nil
 	}
-	e, next, view, err := w.again(e.ID)
+	e, next, view, err := w.again(watch, e.ID)
 	if err != nil || next.Closed() {
 		return nil // it is made anew
 	}
@@ -163,7 +163,7 @@ func workbookOf(name string, v exports.Verification) desk.Workbook {
 }
 
 // compareByPlan goes the whole way from a plan file to the record.
-func (w *window) compareByPlan(name string, data []byte, read func(string) ([]byte, error)) (qa.Record, error) {
+func (w *window) compareByPlan(watch qa.Watch, name string, data []byte, read func(string) ([]byte, error)) (qa.Record, error) {
 	plan, err := importers.LoadPlan(filepath.Base(name), data)
 	if err != nil {
 		return qa.Record{}, err
@@ -175,7 +175,7 @@ func (w *window) compareByPlan(name string, data []byte, read func(string) ([]by
 		}
 		return qa.Record{}, errors.New(strings.Join(lines, "\n"))
 	}
-	readings, err := importers.Read(plan, func(file string) ([]byte, error) {
+	readings, err := importers.Under(watch).Read(plan, func(file string) ([]byte, error) {
 		if !filepath.IsAbs(file) {
 			file = beside(name, file)
 		}
@@ -192,6 +192,7 @@ func (w *window) compareByPlan(name string, data []byte, read func(string) ([]by
 		Software: w.build.software(),
 		Seal:     qa.Seal{Digest: plan.SealDigest(), Readings: "unknown"},
 		Attempts: attempts,
+		Watch:    watch,
 	})
 	if err != nil {
 		return qa.Record{}, err

@@ -11,6 +11,7 @@ import (
 
 	"lotpair/app/desk"
 	"lotpair/exports"
+	"lotpair/qa"
 	"lotpair/qa/figure"
 	"lotpair/qa/figure/draw"
 )
@@ -49,7 +50,7 @@ func fileName(words string) string {
 func (w *window) savePicture(to string) {
 	s, place := w.state, "Saving "+filepath.Base(to)
 	to = absolute(to)
-	w.work(place, func() change {
+	w.work(place, func(watch qa.Watch) change {
 		f, ok := s.Picture(figure.FacingWidth, figure.FacingHeight)
 		if !ok {
 			return desk.State.Read
@@ -63,6 +64,9 @@ func (w *window) savePicture(to string) {
 			data, err = draw.PNG(f, pictureScale, draw.Light())
 		default:
 			err = errors.New(to + ": found another ending, want .svg or .png; nothing was written")
+		}
+		if err == nil {
+			err = w.jobs.writes(watch)
 		}
 		if err == nil {
 			err = saved(exports.Save(to, data, false))

@@ -54,15 +54,13 @@ func (w *window) chosen(m figure.Mark) {
 	if side == qa.Candidate {
 		rows = w.rightRows
 	}
-	all := w.view.pages[side].Readings
-	for i := range all {
-		if all[i].Source == m.Reading.Source {
-			w.cursor[side] = i
-			r := w.pageRowsAt(side, rows.content.width)
-			w.win.Canvas().Focus(rows.content)
-			rows.reveal(r.top(i)-3*readingLine, r.top(i+1)+3*readingLine)
-			rows.content.Refresh()
-			return
-		}
+	i := w.view.pages[side].Readings.Find(m.Reading.Source)
+	if i < 0 {
+		return
 	}
+	w.cursor[side] = i
+	r := w.pageRowsAt(side, rows.content.width)
+	w.win.Canvas().Focus(rows.content)
+	rows.reveal(r.top(i)-3*readingLine, r.top(i+1)+3*readingLine)
+	rows.content.Refresh()
 }

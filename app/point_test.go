@@ -32,7 +32,7 @@ func TestPointingTellsTheReading(t *testing.T) {
 				t.Fatalf("%v: got %q at a reading of %s", l, w.tipText, m.Reading.Source.Place())
 			}
 			w.picture.Tapped(&fyne.PointEvent{Position: at})
-			if got := w.view.pages[qa.Candidate].Readings[w.cursor[qa.Candidate]].Source; got != near.Reading.Source {
+			if got := w.view.pages[qa.Candidate].Readings.At(w.cursor[qa.Candidate]).Source; got != near.Reading.Source {
 				t.Errorf("%v: click found %v, want %v", l, got, near.Reading.Source)
 			}
 			if found++; found == 1 {

@@ -2,7 +2,6 @@ package app
 
 import (
 	"sort"
-	"unicode/utf8"
 
 	"fyne.io/fyne/v2"
 
@@ -21,7 +20,7 @@ type pageRows struct {
 	notes    []note    // of the readings not used: the lines of their reasons
 	tops     []float32 // of the readings not used
 	rest     float32   // where those in use begin
-	readings []desk.ReadingView
+	readings desk.Readings
 }
 
 // note is the lines of a reason: beside the reading, or below it where it is long.
@@ -44,12 +43,13 @@ func (w *window) pageRowsAt(of qa.Side, width float32) *pageRows {
 	}
 	r.first = 6 + float32(len(r.title))*16 + float32(len(r.findings))*findingLine + 40
 	y := r.first
-	for i := 0; i < len(v.Readings) && i < mostNotes && !v.Readings[i].Used; i++ {
+	for i := range min(v.Readings.Unused(), mostNotes) {
+		reason := v.Readings.At(i).Note
 		beside := width - margin - r.columns.cell - r.columns.value - 20
-		n := note{lines: fontAxis.wrap(v.Readings[i].Note, beside, beside)}
+		n := note{lines: fontAxis.wrap(reason, beside, beside)}
 		height := float32(max(0, len(n.lines)-1)) * noteLine
 		if len(n.lines) > 2 {
-			n = note{lines: fontAxis.wrap(v.Readings[i].Note, room, room), below: true}
+			n = note{lines: fontAxis.wrap(reason, room, room), below: true}
 			height = float32(len(n.lines))*noteLine + 4
 		}
 		r.notes, r.tops = append(r.notes, n), append(r.tops, y)
@@ -79,7 +79,7 @@ func (r *pageRows) at(y float32) int {
 	return sort.Search(len(r.tops), func(i int) bool { return r.tops[i] > y }) - 1
 }
 
-func (r *pageRows) height() float32 { return r.top(len(r.readings)) + 8 }
+func (r *pageRows) height() float32 { return r.top(r.readings.Len()) + 8 }
 
 // newPageRows is what scrolls on a page: the findings, then the readings.
 func (w *window) newPageRows(of qa.Side) *scrolled {
@@ -110,7 +110,8 @@ func (w *window) paintPageRows(p *pen, size fyne.Size, of qa.Side, top, bottom f
 		y += findingLine
 	}
 	s.text(w.view.pages[of].ReadingsTitle, r.first-10, fontHeading, p.MutedText)
-	for i := max(0, r.at(top)); i < len(r.readings); i++ {
+	for i := max(0, r.at(top)); i < r.readings.Len(); i++ {
+		x := r.readings.At(i)
 		y, end := r.top(i), r.top(i+1)
 		if y+readingLine > bottom+2 {
 			break // half a line would be neither read nor missed
@@ -121,30 +122,19 @@ func (w *window) paintPageRows(p *pen, size fyne.Size, of qa.Side, top, bottom f
 		var n note
 		if i < len(r.notes) {
 			n = r.notes[i]
-		} else if r.readings[i].Note != "" {
-			n.lines = []string{fontAxis.fit(r.readings[i].Note, size.Width-margin-r.columns.cell-r.columns.value-20)}
+		} else if x.Note != "" {
+			n.lines = []string{fontAxis.fit(x.Note, size.Width-margin-r.columns.cell-r.columns.value-20)}
 		}
-		paintReading(s, r.readings[i], n, r.columns, y+15)
+		paintReading(s, x, n, r.columns, y+15)
 	}
 }
 
 // columns are how wide the cells and the values of a page are. Only the longest of each is measured.
 type columns struct{ cell, value float32 }
 
-func columnsOf(all []desk.ReadingView) columns {
-	longest := func(of func(desk.ReadingView) string) string {
-		most := ""
-		for _, r := range all {
-			if s := of(r); utf8.RuneCountInString(s) > utf8.RuneCountInString(most) {
-				most = s
-			}
-		}
-		return most
-	}
-	return columns{
-		cell:  max(36, min(90, fontNote.width(longest(func(r desk.ReadingView) string { return r.Cell }))+12)),
-		value: max(48, min(96, fontPlain.width(longest(func(r desk.ReadingView) string { return r.Value }))+8)),
-	}
+func columnsOf(all desk.Readings) columns {
+	cell, value := all.Longest()
+	return columns{cell: max(36, min(90, fontNote.width(cell)+12)), value: max(48, min(96, fontPlain.width(value)+8))}
 }
 
 // paintReading draws one reading: its cell, its value, and why it is not used.
@@ -196,14 +186,14 @@ func (w *window) pageKey(of qa.Side, s *scrolled, k fyne.KeyName) {
 	case fyne.KeyHome:
 		at = 0
 	case fyne.KeyEnd:
-		at = len(r.readings) - 1
+		at = r.readings.Len() - 1
 	case fyne.KeyReturn, fyne.KeyEnter, fyne.KeySpace:
 		w.onReading(of, at)
 		return
 	default:
 		return
 	}
-	at = max(0, min(len(r.readings)-1, at))
+	at = max(0, min(r.readings.Len()-1, at))
 	w.cursor[of] = at
 	top := r.top(at)
 	if at == 0 && r.top(1) <= s.scroll.Size().Height {

@@ -12,6 +12,7 @@ import (
 
 	"lotpair/app/desk"
 	"lotpair/exports"
+	"lotpair/qa"
 )
 
 // proposed is where a workbook would go: beside the plan, under its name; the worked example's goes to the user's home.
@@ -65,8 +66,11 @@ func filled(want string) fyne.StringValidator {
 func (w *window) export(to string) {
 	place, rec := "Exporting to "+filepath.Base(to), w.state.Record
 	to = absolute(withExtension(to))
-	w.work(place, func() change {
+	w.work(place, func(watch qa.Watch) change {
 		data, err := exports.Workbook(rec)
+		if err == nil {
+			err = w.jobs.writes(watch)
+		}
 		if err == nil {
 			err = saved(exports.Save(to, data, false))
 		}

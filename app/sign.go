@@ -78,7 +78,7 @@ func (w *window) sign(x signing) {
 	to := absolute(withExtension(x.to))
 	when := now()
 	st := opcsign.Statement{Meaning: x.meaning, Reason: x.reason, Disposition: x.disposition, Time: when, Zone: zone(when.Location().String())}
-	w.work(place, func() change {
+	w.work(place, func(watch qa.Watch) change {
 		p12, err := readFile(x.identity)
 		if err != nil {
 			return failed(place, err)
@@ -87,10 +87,11 @@ func (w *window) sign(x signing) {
 		if err != nil {
 			return failed(place, err)
 		}
+		writes := func() error { return w.jobs.writes(watch) }
 		if had {
-			err = signAgain(to, id, st)
+			err = signAgain(to, id, st, writes)
 		} else {
-			err = signFirst(to, rec, id, st)
+			err = signFirst(to, rec, id, st, writes)
 		}
 		if err != nil {
 			return failed(place, err)
@@ -112,22 +113,28 @@ func (w *window) sign(x signing) {
 }
 
 // signFirst writes the workbook with its first signature. A file of that name is left alone.
-func signFirst(to string, rec qa.Record, id identity.Identity, st opcsign.Statement) error {
+func signFirst(to string, rec qa.Record, id identity.Identity, st opcsign.Statement, writes func() error) error {
 	data, err := exports.SignFirst(rec, id, st)
 	if err != nil {
+		return err
+	}
+	if err := writes(); err != nil {
 		return err
 	}
 	return saved(exports.Save(to, data, false))
 }
 
 // signAgain adds a signature to the workbook as it is on disk.
-func signAgain(to string, id identity.Identity, st opcsign.Statement) error {
+func signAgain(to string, id identity.Identity, st opcsign.Statement, writes func() error) error {
 	before, err := readFile(to)
 	if err != nil {
 		return err
 	}
 	after, err := exports.Sign(before, id, st)
 	if err != nil {
+		return err
+	}
+	if err := writes(); err != nil {
 		return err
 	}
 	return exports.Replace(to, before, after)

@@ -15,9 +15,9 @@ import (
 
 // lookInto opens a file of readings over the window. Where no comparison is being prepared one is begun. Until the criterion is
 // sealed every reading is masked.
-func (w *window) lookInto(name string, data []byte, sheet string, side qa.Side) change {
+func (w *window) lookInto(watch qa.Watch, name string, data []byte, sheet string, side qa.Side, masked bool) change {
 	place := "Opening " + filepath.Base(name)
-	x, err := desk.LookedInto(filepath.Base(name), data, sheet, !w.state.Sealed())
+	x, err := desk.LookedInto(watch, filepath.Base(name), data, sheet, masked)
 	if err != nil {
 		return failed(place, err)
 	}
@@ -36,8 +36,8 @@ func (w *window) lookInto(name string, data []byte, sheet string, side qa.Side) 
 
 // onSheet looks into another sheet of the same file.
 func (w *window) onSheet(name string) {
-	x, data := w.state.Sheet, w.looked
-	w.work("Opening sheet "+name, func() change { return w.lookInto(x.File.Name, data, name, x.Side) })
+	x, data, masked := w.state.Sheet, w.looked, !w.state.Sealed()
+	w.work("Opening sheet "+name, func(watch qa.Watch) change { return w.lookInto(watch, x.File.Name, data, name, x.Side, masked) })
 }
 
 // offerSheets offers the other sheets of the file.
@@ -117,7 +117,7 @@ func (w *window) takeKept() { w.compareDraft("Taking the readings", w.state) }
 
 // compareDraft reads the files by the draft of the plan and compares.
 func (w *window) compareDraft(place string, s desk.State) {
-	w.work(place, func() change {
+	w.work(place, func(watch qa.Watch) change {
 		plan := desk.Settled(s.Record.Plan)
 		if faults := plan.Validate(); len(faults) > 0 {
 			var lines []string
@@ -126,7 +126,7 @@ func (w *window) compareDraft(place string, s desk.State) {
 			}
 			return failed(place, errors.New(strings.Join(lines, "\n")))
 		}
-		readings, err := importers.Read(plan, func(name string) ([]byte, error) { return w.fileOf(s.Files, name) })
+		readings, err := importers.Under(watch).Read(plan, func(name string) ([]byte, error) { return w.fileOf(s.Files, name) })
 		if err != nil {
 			return failed(place, err)
 		}
@@ -138,7 +138,7 @@ func (w *window) compareDraft(place string, s desk.State) {
 		if seal.Time == "" {
 			seal = qa.Seal{Digest: plan.SealDigest(), Readings: "unknown"}
 		}
-		result, err := qa.Compare(plan, readings, qa.Run{Software: w.build.software(), Seal: seal, Attempts: attempts})
+		result, err := qa.Compare(plan, readings, qa.Run{Software: w.build.software(), Seal: seal, Attempts: attempts, Watch: watch})
 		if err != nil {
 			return failed(place, err)
 		}

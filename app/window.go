@@ -82,7 +82,7 @@ type buttons struct {
 
 // newWindow makes the window; without a register nothing is kept.
 func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
-	w := &window{app: a, build: b, look: l, register: r, cursor: map[qa.Side]int{}, lines: map[int]*chart.Drawing{}, rows: map[qa.Side]*pageRows{}, bytes: map[string][]byte{}, partButtons: map[int]*button{}}
+	w := &window{app: a, build: b, look: l, register: r, jobs: jobs{hand: onThread}, cursor: map[qa.Side]int{}, lines: map[int]*chart.Drawing{}, rows: map[qa.Side]*pageRows{}, bytes: map[string][]byte{}, partButtons: map[int]*button{}}
 	a.Settings().SetTheme(l)
 	w.win = a.NewWindow("Lotpair")
 	w.win.SetPadded(false)

@@ -1,7 +1,6 @@
 package desk
 
 import (
-	"sort"
 	"strings"
 
 	"lotpair/qa"
@@ -17,7 +16,7 @@ type PageView struct {
 	FindingsTitle string
 	Findings      []string
 	ReadingsTitle string
-	Readings      []ReadingView
+	Readings      Readings
 }
 
 // ReadingView is one cell of a lot on a page: a reading, or what stands in the ledger where a reading was looked for.
@@ -40,10 +39,7 @@ func (s State) Page(side qa.Side) PageView {
 	if side == qa.Candidate {
 		l = s.Record.Readings.Candidate
 	}
-	v.Lot, v.Source = l.Name, l.Source
-	if v.Lot == "" {
-		v.Lot = "lot not named"
-	}
+	v.Lot, v.Source = s.LotName(side), l.Source
 	v.File, v.Digest = fileText(l)
 	v.Parts = qa.PartsText(s.Record.Readings, side)
 	name := s.name()
@@ -54,29 +50,20 @@ func (s State) Page(side qa.Side) PageView {
 	if len(v.Findings) == 0 {
 		v.Findings = []string{"nothing to look at"}
 	}
-	series, decimals := l.Of(name), 0
-	for _, r := range series.Readings {
-		decimals = max(decimals, r.Decimals)
-	}
-	for _, r := range series.Readings {
-		value := qa.Fixed(r.Value, min(decimals, 12))
-		v.Readings = append(v.Readings, ReadingView{Source: r.Source, Cell: r.Source.Cell, Value: value, Note: r.LeftOut, LeftOut: !r.Used(), Used: r.Used()})
-	}
-	var not []ReadingView
-	for _, e := range s.Record.Readings.Ledger {
-		if e.Side != side || e.Characteristic != name || e.TakenAs == qa.TakenNumber || e.TakenAs == qa.TakenSummary || e.TakenAs == qa.TakenExcluded && e.Value != nil {
-			continue
-		}
-		note := strings.ReplaceAll(string(e.TakenAs), "-", " ")
-		if e.TakenAs == qa.TakenExcluded {
-			note = e.Reason
-		}
-		not = append(not, ReadingView{Source: e.Source, Cell: e.Source.Cell, Value: e.Source.Text, Note: note})
-	}
-	v.Readings = append(not, v.Readings...)
-	// What is not used stands first: it is what a reader must see.
-	sort.SliceStable(v.Readings, func(a, b int) bool { return !v.Readings[a].Used && v.Readings[b].Used })
+	v.Readings = readingsOf(l.Of(name), unread(s.Record.Readings.Ledger, side, name))
 	return v
+}
+
+// LotName is what a lot is called; it may have no name.
+func (s State) LotName(side qa.Side) string {
+	l := s.Record.Readings.Reference
+	if side == qa.Candidate {
+		l = s.Record.Readings.Candidate
+	}
+	if s.Open && l.Name == "" {
+		return "lot not named"
+	}
+	return l.Name
 }
 
 // ReadingText says what is known of one reading of the characteristic looked at.

@@ -180,12 +180,12 @@ func text(s desk.State) string {
 		for _, f := range p.Findings {
 			say("  %s: %s", p.FindingsTitle, f)
 		}
-		for _, r := range p.Readings {
-			if !r.Used {
+		for i := range p.Readings.Len() {
+			if r := p.Readings.At(i); !r.Used {
 				say("  %s %s not used: %s", r.Cell, r.Value, r.Note)
 			}
 		}
-		say("  %s: %d", p.ReadingsTitle, len(p.Readings))
+		say("  %s: %d", p.ReadingsTitle, p.Readings.Len())
 	}
 	v := s.Spine()
 	say("spine: %s %s", v.Overall, v.Sentence)

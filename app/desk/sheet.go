@@ -44,16 +44,16 @@ const (
 )
 
 // LookedInto says how a file would be read. An empty sheet is found; masked shows no reading.
-func LookedInto(name string, data []byte, sheet string, masked bool) (Sheet, error) {
-	in, err := importers.Inspect(name, data, sheet, "")
+func LookedInto(watch qa.Watch, name string, data []byte, sheet string, masked bool) (Sheet, error) {
+	in, err := importers.Under(watch).Inspect(name, data, sheet, "")
 	if err != nil {
 		return Sheet{}, err
 	}
 	x := Sheet{File: in.File, Masked: masked, found: in, rows: map[int]string{}, ledger: map[string]qa.UnreadResult{}}
-	if x.book, err = importers.Open(name, data, ""); err != nil {
+	if x.book, err = importers.Under(watch).Open(name, data, ""); err != nil {
 		return Sheet{}, err
 	}
-	m, err := importers.Propose(x.book, qa.ReadingPlan{Sheet: in.Sheet})
+	m, err := importers.Under(watch).Propose(x.book, qa.ReadingPlan{Sheet: in.Sheet})
 	if err != nil {
 		return Sheet{}, err
 	}
