@@ -276,7 +276,7 @@ func (t *table) contents() []holding {
 // holdsText says whether a column holds a text in the rows that are wanted.
 func (t *table) holdsText(col int) bool {
 	if t.turned {
-		return true // its rows are few cells wide
+		return true // by its own columns, which are few
 	}
 	if t.textual == nil {
 		t.textual = map[int]bool{}

@@ -1,6 +1,7 @@
 package importers
 
 import (
+	"iter"
 	"strings"
 
 	"lotpair/importers/cells"
@@ -18,7 +19,7 @@ type mark struct {
 // settleDecimal settles the decimal mark of one column's texts: by the plan; by the texts themselves where every one with a
 // comma can only be a decimal comma; by the limits where all texts lie near them when read in one way and none when read in
 // the other. Numbers that a spreadsheet stored as numbers have no mark and no say. Else it stays open.
-func settleDecimal(texts []cells.Cell, plan string, lower, upper *float64) mark {
+func settleDecimal(texts iter.Seq[cells.Cell], plan string, lower, upper *float64) mark {
 	if plan != "" {
 		return mark{decimal: plan[0]}
 	}
@@ -33,7 +34,7 @@ func settleDecimal(texts []cells.Cell, plan string, lower, upper *float64) mark 
 			}
 		}
 	}
-	for _, c := range texts {
+	for c := range texts {
 		if point, thousands, ok := pointOf(c.Text); ok {
 			if point {
 				found(thousands, c)

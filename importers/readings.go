@@ -355,14 +355,14 @@ func (t *table) settleColumn(c *qa.Characteristic, plan qa.Characteristic, col i
 
 // settleConverted does so for a column whose readings are converted.
 func (t *table) settleConverted(c *qa.Characteristic, plan qa.Characteristic, col int, v *conversion) (mark, error) {
-	var texts []cells.Cell
-	rows := t.wanted()
-	if !t.holdsText(col) {
-		rows = nil
-	}
-	for _, r := range rows {
-		if cell := t.cell(r, col); cell.Kind == cells.Text {
-			texts = append(texts, cell)
+	texts := func(yield func(cells.Cell) bool) {
+		if !t.holdsText(col) {
+			return
+		}
+		for _, r := range t.wanted() {
+			if cell := t.cell(r, col); cell.Kind == cells.Text && !yield(cell) {
+				return
+			}
 		}
 	}
 	lower, upper := c.Lower, c.Upper
