@@ -81,7 +81,7 @@ func (d *dev) benchPairs(pairs []pair) error {
 	}
 	slices.Sort(packages)
 	for _, p := range packages {
-		out, err := d.output(pure, "go", "test", "-run", "^$", "-bench", "^("+strings.Join(byPackage[p], "|")+")$/./^(ours|peer)$", "-benchtime", "0.2s", "-count", "3", p)
+		out, err := d.output(pure, "go", "test", "-run", "^$", "-bench", "^("+strings.Join(byPackage[p], "|")+")$", "-benchtime", "0.2s", "-count", "3", p)
 		if err != nil {
 			return fmt.Errorf("%w\n%s", err, out)
 		}
