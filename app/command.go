@@ -23,6 +23,7 @@ func Command(args []string, version string, open func(Options) ([]string, error)
 	acts := f.String("acts", "", "when the window is closed, write what was done in it to `FILE`, an act a line")
 	f.StringVar(&shot.Register, "register", "", "keep the records in `DIR` instead of the user's own folder; with --picture: show those of DIR")
 	measure := f.String("measure", "", "use the window as `HOW` says and close it, for the bench: still, walk, resize, spine or readings")
+	controls := f.String("controls", "", "keep a `FILE` that says where every text stands, for tests that use the window")
 	f.Usage = func() {
 		fmt.Fprintln(f.Output(), "lotpair [FILE]\nOpens the window, with a plan (.toml) or a record (.xlsx). Example: lotpair testdata/demo/plan.toml")
 		f.PrintDefaults()
@@ -45,7 +46,7 @@ func Command(args []string, version string, open func(Options) ([]string, error)
 			}
 			dir = filepath.Join(own, "lotpair")
 		}
-		done, err := open(Options{File: f.Arg(0), Register: dir, Build: build, Dark: shot.Dark, Measure: Measurement{Name: *measure, Out: os.Stdout}})
+		done, err := open(Options{File: f.Arg(0), Register: dir, Build: build, Dark: shot.Dark, Measure: Measurement{Name: *measure, Out: os.Stdout}, Controls: *controls})
 		if err == nil && *acts != "" {
 			err = os.WriteFile(*acts, []byte(strings.Join(done, "\n")+"\n"), 0o600)
 		}

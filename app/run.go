@@ -27,6 +27,7 @@ type Options struct {
 	Build    Build
 	Dark     bool
 	Measure  Measurement
+	Controls string // a file that says where everything stands; "" for none
 }
 
 // Run opens the window and returns when it is closed: what the user did, an act a line.
@@ -40,6 +41,7 @@ func Run(a fyne.App, o Options) []string {
 	a.Lifecycle().SetOnStarted(func() {
 		w.begin(o.File, said, err)
 		w.measure(o.Measure)
+		w.tellControls(o.Controls)
 	})
 	w.win.ShowAndRun()
 	w.end()
