@@ -84,7 +84,7 @@ func (t *table) rejectMarks() map[int][]cells.Cell {
 			continue
 		}
 		for _, c := range r.Cells {
-			if c.Kind == cells.Text && len(c.Text) < 24 && strings.IndexByte("rnfsvideouagRNFSVIDEOUAG", c.Text[0]) >= 0 && rejectWords[word(c.Text)] != "" {
+			if c.Kind == cells.Text && c.Text != "" && len(c.Text) < 24 && strings.IndexByte("rnfsvideouagRNFSVIDEOUAG", c.Text[0]) >= 0 && rejectWords[word(c.Text)] != "" {
 				if out == nil {
 					out = map[int][]cells.Cell{}
 				}
