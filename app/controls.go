@@ -80,6 +80,8 @@ func writeControls(b *strings.Builder, o fyne.CanvasObject, at fyne.Position, bo
 		say("line", shown(&x.Entry))
 	case *line:
 		say("line", shown(&x.Entry))
+	case *pathLine:
+		say("line", shown(&x.Entry))
 	case *search:
 		say("line", shown(&x.Entry))
 	case fyne.Widget:

@@ -50,9 +50,15 @@ func (w *window) paintDraftPage(p *pen, size fyne.Size, of qa.Side) {
 		top = 170
 	}
 	p.dashes(margin, top, wide, bottom-top, p.Muted)
-	first, second := "Drop a spreadsheet here", "or Ctrl+O"
+	bring := w.act.bringLeft
+	if of == qa.Candidate {
+		bring = w.act.bringRight
+	}
+	p.put(bring, margin, top, wide, bottom-top)
+	bring.Refresh()
+	first, second := "Drop a spreadsheet here", "or click, or Ctrl+O"
 	if f := w.state.Record.Plan.LotOf(of).File; f != "" {
-		first, second = f, "drop another to change it"
+		first, second = f, "drop another to change it, or click"
 	}
 	middle := (top + bottom) / 2
 	p.centred(fontPlain.middle(first, wide-16), size.Width/2, middle-14, fontPlain, p.Text)

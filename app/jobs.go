@@ -83,6 +83,19 @@ func (w *window) work(name string, do func(watch qa.Watch) change) {
 	}()
 }
 
+// aside finds something out off the window's thread while everything else goes on, and does on the thread what that gives.
+func (w *window) aside(find func() func()) {
+	if w.jobs.atOnce {
+		find()()
+		return
+	}
+	hand := w.jobs.hand
+	go func() {
+		do := find()
+		hand(do)
+	}()
+}
+
 // tell shows how far the job has come, where it still runs.
 func (w *window) tell(job int, p qa.Progress) {
 	if job != w.jobs.number || w.state.Job.Name == "" {

@@ -10,8 +10,6 @@ import (
 	"time"
 
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/dialog"
-	"fyne.io/fyne/v2/storage"
 
 	"lotpair/app/desk"
 	"lotpair/exports"
@@ -40,26 +38,39 @@ func (w *window) askOpen() {
 	if w.state.Job.Name != "" || w.dialog != nil {
 		return
 	}
-	d := dialog.NewFileOpen(func(r fyne.URIReadCloser, err error) {
-		w.dialog = nil
-		if err != nil {
-			w.apply(failed("Opening", err))
-			return
-		}
-		if r == nil {
-			return
-		}
-		name := r.URI().Path()
-		_ = r.Close() // opened for its name only
-		w.open(name, readFile)
-	}, w.win)
-	d.SetFilter(storage.NewExtensionFileFilter([]string{".toml", ".xlsx", ".csv", ".tsv", ".txt"}))
-	if w.state.Open {
-		if at, err := storage.ListerForURI(storage.NewFileURI(absolute(filepath.Dir(w.state.Path)))); err == nil {
-			d.SetLocation(at)
+	side := w.sideOfKeys()
+	w.chooseFile("Open a file", opening, func(name string) { w.bring(name, side, readFile) })
+}
+
+// askBring asks for a file of readings for the page of one lot.
+func (w *window) askBring(side qa.Side) {
+	if w.state.Job.Name != "" || w.dialog != nil {
+		return
+	}
+	w.chooseFile("Readings of the "+string(side), opening[1:], func(name string) { w.bring(name, side, readFile) })
+}
+
+// opening are the endings of the files that can be opened.
+var opening = []string{".toml", ".xlsx", ".xlsm", ".ods", ".csv", ".tsv", ".txt"}
+
+// sideOfKeys is the page that the keys are on; empty where they are elsewhere.
+func (w *window) sideOfKeys() qa.Side {
+	switch f := w.win.Canvas().Focused(); {
+	case f == nil:
+	case f == w.leftRows.content || f == w.act.bringLeft:
+		return qa.Reference
+	case f == w.rightRows.content || f == w.act.bringRight:
+		return qa.Candidate
+	default:
+		for _, side := range []qa.Side{qa.Reference, qa.Candidate} {
+			for _, name := range []string{" lot", " source"} {
+				if l := w.draft[string(side)+name].line; l != nil && f == l {
+					return side
+				}
+			}
 		}
 	}
-	w.present(d, 820, 560)
+	return ""
 }
 
 // sideAt is the page at a place of the window; empty where there is none.
@@ -82,6 +93,7 @@ func (w *window) open(name string, read func(string) ([]byte, error)) { w.bring(
 // bring opens a file on the page of one lot.
 func (w *window) bring(name string, side qa.Side, read func(string) ([]byte, error)) {
 	place, masked := "Opening "+filepath.Base(name), !w.state.Sealed()
+	w.opens(name)
 	w.work(place, func(watch qa.Watch) change {
 		read := w.keeping(read)
 		data, err := read(name)

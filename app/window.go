@@ -78,6 +78,7 @@ type buttons struct {
 	sheet, decimal, unmask, leaveSheet    *button
 	takeHeadings, takeReadings            *button
 	openPlan, openWorkbook, openTheSample *button
+	bringLeft, bringRight                 *button // the places where a file is dropped
 }
 
 // newWindow makes the window; without a register nothing is kept.
@@ -182,6 +183,8 @@ func (w *window) makeButtons() {
 	})
 	b.takeHeadings = newButton(w.palette, "Take headings and limits only", plain, w.takeHeadings)
 	b.takeReadings = newButton(w.palette, "Take these readings", main, w.takeReadings)
+	b.bringLeft = newButton(w.palette, "", bare, func() { w.askBring(qa.Reference) })
+	b.bringRight = newButton(w.palette, "", bare, func() { w.askBring(qa.Candidate) })
 	b.openPlan = newButton(w.palette, "Open a plan", plain, w.askOpen)
 	b.openWorkbook = newButton(w.palette, "Open a workbook", plain, w.askOpen)
 	b.openTheSample = newButton(w.palette, "Open the worked example", plain, w.openSample)
