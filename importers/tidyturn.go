@@ -1,7 +1,6 @@
 package importers
 
 import (
-	"fmt"
 	"slices"
 	"strings"
 
@@ -201,7 +200,11 @@ func (t *table) tidyCharacteristics(names []string, readings []tidyReading) ([]c
 	t.limits = map[int][]limit{}
 	wanted := t.wantedLot()
 	units := map[int]map[string]cells.Cell{} // where the unit of each lot stands first
-	said := map[string]bool{}                // what rows say alike is kept once
+	type saying struct {
+		name        int
+		means, text string
+	}
+	said := map[saying]bool{} // what rows say alike is kept once
 	for _, r := range readings {
 		if !wanted(r.lot) {
 			continue
@@ -223,10 +226,10 @@ func (t *table) tidyCharacteristics(names []string, readings []tidyReading) ([]c
 				c.setUnit(r.lot, unit)
 			case unitKey(had) == unitKey(unit):
 			case t.show:
-				if !said[c.heading] {
+				if key := (saying{r.name, unitLabel, ""}); !said[key] {
 					t.warn("units-differ", "%s: the unit is %s in %s and %s in %s.", c.heading, quoted(had), first.Name(), quoted(unit), u.Name())
+					said[key] = true
 				}
-				said[c.heading] = true
 			default:
 				return nil, planError(t.cellPlace(u), "found %s as the unit of %s, want %s as in %s of the same lot; correct the sheet", quoted(unit), quoted(c.heading), quoted(had), first.Name())
 			}
@@ -234,7 +237,7 @@ func (t *table) tidyCharacteristics(names []string, readings []tidyReading) ([]c
 		for means, cols := range s.limits {
 			for _, col := range cols {
 				l := t.merged(of, col)
-				if key := fmt.Sprint(r.name, means, "\x00", l.Text, l.Kind); stored(l) && !said[key] {
+				if key := (saying{r.name, means, l.Text}); stored(l) && !said[key] {
 					said[key] = true
 					t.limits[c.col] = append(t.limits[c.col], limit{means: means, cell: l})
 				}
@@ -242,7 +245,7 @@ func (t *table) tidyCharacteristics(names []string, readings []tidyReading) ([]c
 		}
 		if s.requirement > 0 {
 			q := t.merged(of, s.requirement)
-			if key := fmt.Sprint(r.name, "requirement\x00", q.Text); filledText(q) != "" && !said[key] {
+			if key := (saying{r.name, requirementHeading, q.Text}); filledText(q) != "" && !said[key] {
 				said[key] = true
 				requirements.takeRequirement(cells.Row{Number: q.Row, Cells: []cells.Cell{q}}, c)
 			}
