@@ -23,7 +23,7 @@ type outsider struct {
 }
 
 // longestAsk is how long an outsider may take for one row.
-const longestAsk = 90 * time.Second
+const longestAsk = 3 * time.Minute
 
 func outsiders() []outsider {
 	all := []outsider{

@@ -161,6 +161,12 @@ for d1, d2 in FD:
             continue  # each takes a minute
         show("FQuantile", "1e-13", f_quantile(p, mpf(d1), mpf(d2)), p, d1, d2)
 
+for f, d1, d2 in [(350, 4, 1e5), (55, 30, 3000), (500, 7.5, 500), (900, 7.5, 500), (3e13, 2, 50), (1.18, 1e5, 1e5), (1e20, 3, 29), (8, 200, 5000)]:  # tails down to 1e-300
+    for v, a, b in [(mpf(f), mpf(d1), mpf(d2)), (mpf(float(1 / mpf(f))), mpf(d2), mpf(d1))]:
+        lo, up = f_lower(v, a, b), f_upper(v, a, b)
+        show("FLower", allow(lo), lo, v, a, b)
+        show("FUpper", allow(up), up, v, a, b)
+
 for z in [1e-12, 1e-6, 0.01, 0.3, 0.67, 1, 1.5, 2, 2.5, 3, 4, 5, 6.5, 8, 10, 15, 20, 30, 35, 37]:
     z = mpf(z)
     p = erfc(z / sqrt(2)) / 2

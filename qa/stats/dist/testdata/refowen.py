@@ -129,6 +129,8 @@ for df, t in [(1e5, 1.7), (1e6, 1.7), (1e6, 3.1), (5, 2.1), (200, 1.7)]:
         v = between(mpf(t), mpf(df), mpf(below), mpf(above))
         if v > mpf(10) ** -60:
             show("StudentBetween", "2e-13", v, t, df, below, above)
+for df, t, below, above in [(60, 1.7, 0.4, 0.5), (200, 1.7, 0.9, 1), (200, 1.7, 0.5, 0.7), (1000, 1.65, 1.1, 1.2), (30, 2.5, 0.02, 0.02), (58, 3.4, 0.1, 0.4)]:
+    show("StudentBetween", "1e-12", between(mpf(t), mpf(df), mpf(below), mpf(above)), t, df, below, above)
 for df in [1, 2, 3, 5.5, 18, 58, 398, 10000]:
     for t in [0.7, 1.7, 6.3]:
         for below, above in [(1, 1), (0.1, 0.1), (3, 3), (2.5, 7), (9, 4), (30, 2), (6, -0.5), (-1, 5), (40, 40)]:
