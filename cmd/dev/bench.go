@@ -43,7 +43,7 @@ type growth struct {
 // benchRows are all rows, in the order of the table. A new row is an element of one of these.
 func benchRows() []benchRow {
 	var rows []benchRow
-	for _, some := range [][]benchRow{meansRows, distributionRows, powerRows, resamplingRows, rankRows, readingRows, compareRows, recordRows, startRows} {
+	for _, some := range [][]benchRow{meansRows, distributionRows, powerRows, resamplingRows, rankRows, fileRows, readingRows, compareRows, recordRows, startRows} {
 		rows = append(rows, some...)
 	}
 	return rows
