@@ -142,7 +142,9 @@ func digitsFile(rows int) []byte {
 func typicalFile() []byte {
 	f := excelize.NewFile()
 	date := must(f.NewStyle(&excelize.Style{NumFmt: 14}))
-	set := func(col, row int, v any) { must(0, f.SetCellValue("Sheet1", string(rune('A'+col-1))+strconv.Itoa(row), v)) }
+	set := func(col, row int, v any) {
+		must(0, f.SetCellValue("Sheet1", string(rune('A'+col-1))+strconv.Itoa(row), v))
+	}
 	random := rand.New(rand.NewPCG(4, 2))
 	set(1, 1, "Incoming inspection")
 	for c := 1; c <= 12; c++ {
