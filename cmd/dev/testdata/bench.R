@@ -55,12 +55,12 @@ figures <- function(k, n) {
   }
 }
 
-if (row == "Welch, 1,000 characteristics x 2 x 1,000 readings") {
+if (row == "Welch, two-sided p, 1,000 characteristics x 2 x 1,000 readings") {
   x <- matrix(lot(1e6), 1000)
   y <- matrix(lot(1e6, 12.001), 1000)
   timed("colSums and pt", function() welch_all(x, y))
   timed("t.test", function() for (j in 1:1000) t.test(y[, j], x[, j]))
-} else if (row == "Welch, one pair of lots, 2 x 30") {
+} else if (row == "Welch, both tests, p and interval, one pair of lots, 2 x 30") {
   x <- lot(30); y <- lot(30, 12.001)
   timed("t.test", function() t.test(y, x, conf.level = 0.9))
 } else if (grepl("^Shapiro", row)) {

@@ -93,11 +93,11 @@ def medians(x, y, axis=-1):
     return np.median(y, axis=axis) - np.median(x, axis=axis)
 
 
-if row == "Welch, 1,000 characteristics x 2 x 1,000 readings":
+if row == "Welch, two-sided p, 1,000 characteristics x 2 x 1,000 readings":
     x, y = lot((1000, 1000)), lot((1000, 1000), 12.001)
     timed("ttest_ind(axis)", lambda: stats.ttest_ind(y, x, axis=1, equal_var=False))
     timed("ttest_ind", lambda: [stats.ttest_ind(b, a, equal_var=False) for a, b in zip(x, y)])
-elif row == "Welch, one pair of lots, 2 x 30":
+elif row == "Welch, both tests, p and interval, one pair of lots, 2 x 30":
     x, y = lot(30), lot(30, 12.001)
     timed("ttest_ind", lambda: stats.ttest_ind(y, x, equal_var=False))
 elif row == "Yuen–Welch, 2 x 1,000":
