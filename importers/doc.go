@@ -8,5 +8,6 @@
 //	LoadPlan      bytes -> qa.Plan, checked to the last key
 //	Read          plan and files -> qa.Readings
 //	Inspect       one file -> how it would be read, and a plan to start from
+//	Under         the same under a watch: progress is told, and the reading can be stopped
 //	ParseNumber   the text of one cell -> a number, or a Problem
 package importers
