@@ -5,7 +5,7 @@ import (
 	"math"
 	"testing"
 
-	"lotpair/app/desk"
+	"lotpair/importers"
 	"lotpair/qa/figure/draw"
 )
 
@@ -37,7 +37,7 @@ func TestContrast(t *testing.T) {
 			"paper": p.Paper, "margin": p.Margin, "selected line": over(faint(p.Text, 0x0D), p.Paper), "selected margin": over(faint(p.Text, 0x0D), p.Margin),
 			"cursor": over(faint(p.Text, 0x14), p.Paper),
 		}
-		for _, plays := range []string{desk.PlaysLot, desk.PlaysPart, desk.PlaysCharacteristic} {
+		for _, plays := range []string{importers.PlaysLot, importers.PlaysPart, importers.PlaysCharacteristic} {
 			grounds[plays] = over(tint(pn, plays).(color.NRGBA), p.Paper)
 		}
 		inks := map[string]color.NRGBA{"text": p.Text, "muted": p.MutedText, "reference": p.ReferenceText, "candidate": p.CandidateText}

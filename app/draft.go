@@ -5,14 +5,11 @@ import (
 	"image/color"
 
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/widget"
 
 	"lotpair/app/desk"
 	"lotpair/qa"
 	"lotpair/qa/figure"
 )
-
-var showMenu = widget.ShowPopUpMenuAtPosition
 
 // same says whether two plans say the same.
 func same(a, b qa.Plan) bool {
@@ -23,7 +20,7 @@ func same(a, b qa.Plan) bool {
 
 // begin a new comparison.
 func (w *window) beginComparison() {
-	if w.state.Job.Name != "" || w.dialog != nil {
+	if w.busy() {
 		return
 	}
 	w.shift = 0
@@ -99,7 +96,7 @@ func (w *window) paintDraft(p *pen, size fyne.Size) {
 	right := size.Width - inset
 	p.text("The claim", inset, 30, fontHeading, p.MutedText)
 	room := right - inset
-	rest := "in the mean of every characteristic, these two lots only."
+	before, after := "in the "+v.Of+" of every characteristic, ", " only."
 	x := p.text(fontBody.middle(v.Candidate, room/4)+" is ", inset, 54, fontBody, p.Text)
 	if v.Sealed {
 		x = p.text(v.Objective+" ", x, 54, fontStrong, p.Text)
@@ -107,11 +104,17 @@ func (w *window) paintDraft(p *pen, size fyne.Size) {
 		x = w.word(p, w.act.objective, v.Objective, x+2, 54) + 6
 	}
 	x = p.text(fontBody.middle(v.Reference, room/4)+" ", x, 54, fontBody, p.Text)
-	if fontBody.width(rest) <= right-x {
-		p.text(rest, x, 54, fontBody, p.Text)
-	} else {
-		p.text(fontNote.fit(rest, room), inset, 72, fontNote, p.MutedText)
+	line := float32(54)
+	if x+fontBody.width(before)+fontStrong.width(v.Claim)+fontBody.width(after)+4 > right {
+		x, line = inset, 74
 	}
+	x = p.text(before, x, line, fontBody, p.Text)
+	if v.Sealed {
+		x = p.text(v.Claim, x, line, fontStrong, p.Text)
+	} else {
+		x = w.word(p, w.act.claim, v.Claim, x+2, line)
+	}
+	p.text(after, x, line, fontBody, p.Text)
 	p.text("The margin", inset, 92, fontHeading, p.MutedText)
 	x = inset - 6
 	words, apart := desk.MarginKinds, float32(10)
@@ -147,11 +150,23 @@ func (w *window) paintDraftLines(p *pen, width, inset, y float32) {
 		w.putWord(p, w.act.of, "of the", x, y, unit*1.7-16)
 		x += unit * 1.7
 	case desk.InTheUnit:
-		put("margin", "margin", "", 1.4)
-		x += unit * 1.4
+		if _, ends := desk.Ways(w.state.Record.Plan); ends {
+			put("from", "from", "", 0.75)
+			put("to", "to", "", 0.75)
+		} else {
+			put("margin", "margin ±", "", 1.1)
+		}
+		w.putWord(p, w.act.of, "stated", x, y, inset+unit*2.8-x-16)
+		x = inset + unit*2.8
 	case desk.RatioOfMeans:
-		put("ratio within", "ratio within ±", "%", 1.4)
-		x += unit * 1.4
+		if _, ends := desk.Ways(w.state.Record.Plan); ends {
+			put("ratio from", "from", "", 0.75)
+			put("ratio to", "to", "", 0.75)
+		} else {
+			put("ratio within", "ratio within ±", "%", 1.1)
+		}
+		w.putWord(p, w.act.of, "stated", x, y, inset+unit*2.8-x-16)
+		x = inset + unit*2.8
 	case desk.KeepsPpk:
 		put("Ppk", "Ppk", "", 1.1)
 		x += unit * 1.7
@@ -211,10 +226,15 @@ func (w *window) paintDraftRows(p *pen, size fyne.Size, inset, y float32) {
 	}
 	room := size.Width - 2*inset
 	if !v.Sealed {
-		wide := b.wide()
-		p.put(b, size.Width-inset-wide+6, foot+2, wide, 26)
-		b.Refresh()
-		room -= wide + 12
+		at := size.Width - inset + 6
+		for _, b := range []*button{b, w.act.terms} {
+			wide := b.wide()
+			at -= wide
+			p.put(b, at, foot+2, wide, 26)
+			b.Refresh()
+			at -= 6
+		}
+		room = at - inset - 6
 	}
 	p.text(fontNote.fit(note, room), inset, foot+20, fontNote, p.MutedText)
 }

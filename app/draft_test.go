@@ -11,6 +11,7 @@ import (
 	"fyne.io/fyne/v2/test"
 
 	"lotpair/app/desk"
+	"lotpair/importers"
 	"lotpair/qa"
 )
 
@@ -156,10 +157,8 @@ func TestTheReadingViewShowsTheFile(t *testing.T) {
 	if n := len(w.sheetSaid.Ledger); n != 16 {
 		t.Errorf("ledger before the decimal mark is stated: got %d cells, want 16", n)
 	}
-	w.apply(func(s desk.State) desk.State {
-		x := s.Sheet.WithDecimal(",")
-		return s.WithSheet(&x)
-	})
+	w.restate(w.state.Sheet.Stated.WithDecimal(","))
+	noProblem(t, w)
 	if got, want := w.sheetSaid.Taken[0].Text, "6 parts, 12 readings"; got != want {
 		t.Errorf("taken: got %q, want %q", got, want)
 	}
@@ -174,11 +173,11 @@ func TestTheReadingViewShowsTheFile(t *testing.T) {
 	if n := len(w.sheetSaid.Ledger); n != 3 {
 		t.Errorf("ledger: got %d cells, want 3: %+v", n, w.sheetSaid.Ledger)
 	}
-	w.partButton(4).act()
+	w.states(w.state.Playing(4, importers.PlaysNothing))
 	if got := w.sheetSaid.Columns[3].Plays; got != "not used" {
 		t.Errorf("column D: got %q, want it left out", got)
 	}
-	w.partButton(4).act()
+	w.states(w.state.Playing(4, importers.PlaysCharacteristic))
 	if got := w.sheetSaid.Columns[3].Plays; got != "characteristic" {
 		t.Errorf("column D: got %q, want it taken in", got)
 	}
@@ -308,7 +307,7 @@ func TestEveryWorkbookOfTheImportersIsLookedInto(t *testing.T) {
 		if x := w.state.Sheet; x != nil {
 			for k := range w.sheetSaid.Rows {
 				for c, cell := range x.Row(k).Cells {
-					if cell.Text != "" && cell.Text != "•••" && w.sheetSaid.Columns[c].Plays == desk.PlaysCharacteristic && x.Row(k).Part == "" && k > 12 {
+					if cell.Text != "" && cell.Text != "•••" && w.sheetSaid.Columns[c].Plays == importers.PlaysCharacteristic && x.Row(k).Part == "" && k > 12 {
 						t.Errorf("%s: row %d shows %q, want it masked", file, k, cell.Text)
 					}
 				}

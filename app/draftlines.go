@@ -1,8 +1,6 @@
 package app
 
 import (
-	"fmt"
-	"strconv"
 	"strings"
 
 	"fyne.io/fyne/v2"
@@ -25,30 +23,6 @@ type draftLine struct {
 // draftLines are the lines of the criterion by their names.
 type draftLines map[string]*draftLine
 
-// number is a number as a person types it, with a decimal point or comma; empty is none.
-func number(text string) (*float64, error) {
-	text = strings.Replace(strings.TrimSpace(strings.ReplaceAll(text, "−", "-")), ",", ".", 1)
-	if text == "" {
-		return nil, nil
-	}
-	v, err := strconv.ParseFloat(text, 64)
-	if err != nil || v-v != 0 {
-		return nil, fmt.Errorf("found %q, want a number such as 0.05", text)
-	}
-	return &v, nil
-}
-
-func shownNumber(v *float64, times float64) string {
-	if v == nil {
-		return ""
-	}
-	x, err := strconv.ParseFloat(strconv.FormatFloat(*v*times, 'g', 12, 64), 64)
-	if err != nil {
-		x = *v * times
-	}
-	return strings.ReplaceAll(qa.Plain(x), "−", "-")
-}
-
 func (w *window) newDraftLines() draftLines {
 	out := draftLines{}
 	add := func(name string, show func(qa.Plan, int) string, set func(*qa.Plan, int, string) error) {
@@ -67,8 +41,8 @@ func (w *window) newDraftLines() draftLines {
 	words("candidate lot", func(p *qa.Plan) *string { return &p.Candidate.Lot })
 	words("candidate source", func(p *qa.Plan) *string { return &p.Candidate.Source })
 	value := func(name string, times float64, get func(qa.Plan, int) *float64, put func(*qa.Plan, int, *float64)) {
-		add(name, func(p qa.Plan, at int) string { return shownNumber(get(p, at), times) }, func(p *qa.Plan, at int, text string) error {
-			v, err := number(text)
+		add(name, func(p qa.Plan, at int) string { return desk.NumberText(get(p, at), times) }, func(p *qa.Plan, at int, text string) error {
+			v, err := desk.Number(text)
 			if err != nil {
 				return err
 			}
@@ -86,6 +60,7 @@ func (w *window) newDraftLines() draftLines {
 			}
 			return *of(p.Criterion.Margin)
 		}, func(p *qa.Plan, _ int, v *float64) {
+			*p = desk.Unsettled(*p)
 			m := qa.Margin{}
 			if old := p.Criterion.Margin; old != nil {
 				m = *old
@@ -96,6 +71,10 @@ func (w *window) newDraftLines() draftLines {
 	}
 	margin("part", 100, func(m *qa.Margin) **float64 { return &m.ToleranceFraction })
 	margin("margin", 1, func(m *qa.Margin) **float64 { return &m.Absolute })
+	margin("from", 1, func(m *qa.Margin) **float64 { return &m.Lower })
+	margin("to", 1, func(m *qa.Margin) **float64 { return &m.Upper })
+	margin("ratio from", 1, func(m *qa.Margin) **float64 { return &m.RatioLower })
+	margin("ratio to", 1, func(m *qa.Margin) **float64 { return &m.RatioUpper })
 	margin("ratio within", 100, func(m *qa.Margin) **float64 { return &m.ReferenceFraction })
 	margin("Ppk", 1, func(m *qa.Margin) **float64 { return &m.KeepPpk })
 	margin("times the SD", 1, func(m *qa.Margin) **float64 { return &m.SDMultiple })
@@ -111,13 +90,13 @@ func (w *window) newDraftLines() draftLines {
 		if at < 0 || at >= len(p.Characteristics) {
 			return
 		}
-		p.Characteristics = append([]qa.Characteristic{}, p.Characteristics...)
+		*p = desk.Unsettled(*p)
 		p.Characteristics[at].SD = v
 	})
 	shift := &draftLine{name: "true difference"}
-	shift.show = func(qa.Plan, int) string { return shownNumber(&w.shift, 1) }
+	shift.show = func(qa.Plan, int) string { return desk.NumberText(&w.shift, 1) }
 	shift.typed, shift.left = func(text string) {
-		v, err := number(text)
+		v, err := desk.Number(text)
 		w.shift = 0
 		if err == nil && v != nil {
 			w.shift = *v

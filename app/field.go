@@ -63,6 +63,8 @@ func (w *window) typed(e *fyne.KeyEvent) {
 	switch {
 	case e.Name == fyne.KeyEscape && w.dialog == nil && w.state.Job.Name != "":
 		w.cancel()
+	case w.dialog == nil && e.Name == fyne.KeyF1:
+		w.showWords()
 	case w.dialog == nil && e.Name >= fyne.Key1 && e.Name <= fyne.Key5:
 		w.lookKey(e.Name)
 	case w.dialog == nil:
@@ -79,7 +81,7 @@ func (w *window) lookKey(k fyne.KeyName) {
 
 // passed hands the keys that mean the same everywhere from the control that has the keys to the window.
 func passed(from fyne.CanvasObject, e *fyne.KeyEvent) {
-	if e.Name != fyne.KeyEscape && (e.Name < fyne.Key1 || e.Name > fyne.Key5) {
+	if e.Name != fyne.KeyEscape && e.Name != fyne.KeyF1 && (e.Name < fyne.Key1 || e.Name > fyne.Key5) {
 		return
 	}
 	if c := fyne.CurrentApp().Driver().CanvasForObject(from); c != nil && c.OnTypedKey() != nil {

@@ -17,24 +17,22 @@ func (w *window) paintHeader(p *pen, size fyne.Size) {
 	left := min(p.ending(text, right, 34, f, p.Text), p.ending(fontPlain.fit(v.Note, most), right, 54, fontPlain, p.MutedText))
 	p.text(fontTitle.fit(v.Title, left-2*margin), margin, 34, fontTitle, p.Text)
 	supports := left - 2*margin
-	if b := w.act.leave; w.state.Open && w.register != nil {
-		supports -= b.wide() + 12
-		if w.state.Drafting {
-			supports -= w.act.particulars.wide() + 8
-		}
-		end := p.text(fontPlain.fit(v.Supports, supports), margin, 55, fontPlain, p.MutedText)
-		p.put(b, end+12, 37, b.wide(), 26)
+	var all []*button
+	if w.state.Open && w.register != nil {
+		all = append(all, w.act.leave)
+	}
+	if w.state.Drafting || w.state.Compared && !w.state.Closed() {
+		all = append(all, w.act.particulars)
+	}
+	all = append(all, w.act.more)
+	for _, b := range all {
+		supports -= b.wide() + 8
+	}
+	end := p.text(fontPlain.fit(v.Supports, supports-4), margin, 55, fontPlain, p.MutedText) + 12
+	for _, b := range all {
+		p.put(b, end, 37, b.wide(), 26)
 		b.Refresh()
-		if x := w.act.particulars; w.state.Drafting {
-			p.put(x, end+12+b.wide()+8, 37, x.wide(), 26)
-			x.Refresh()
-		}
-	} else if x := w.act.particulars; w.state.Drafting {
-		end := p.text(fontPlain.fit(v.Supports, supports-x.wide()-12), margin, 55, fontPlain, p.MutedText)
-		p.put(x, end+12, 37, x.wide(), 26)
-		x.Refresh()
-	} else {
-		p.text(fontPlain.fit(v.Supports, supports), margin, 55, fontPlain, p.MutedText)
+		end += b.wide() + 8
 	}
 	p.across(0, size.Width, size.Height-0.6, 1.2, p.Text)
 }

@@ -20,6 +20,7 @@ type jobs struct {
 	doing  qa.Progress // of the job that runs
 	quiet  bool        // it runs so short a time that nothing need be said of it
 	stop   func()
+	then   func()       // shows what the job came to, once it is done; nil where the window shows it
 	atOnce bool         // for pictures and tests: the job is done when work returns
 	hand   func(func()) // hands something to the window's thread
 
@@ -60,6 +61,10 @@ func (w *window) work(name string, do func(watch qa.Watch) change) {
 		stop()
 		if mine == w.jobs.number {
 			w.apply(func(s desk.State) desk.State { return c(s).Rested() })
+			if then := w.jobs.then; then != nil {
+				w.jobs.then = nil
+				then()
+			}
 		}
 	}
 	if w.jobs.atOnce {

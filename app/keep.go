@@ -28,6 +28,8 @@ type kept struct {
 	Seal     qa.Seal      `json:"seal"`
 	Attempts qa.Attempts  `json:"attempts"`
 	Workbook keptWorkbook `json:"workbook"`
+
+	Supersedes []qa.Superseded `json:"supersedes,omitempty"`
 }
 
 // keptWorkbook is the file that holds the record; without a digest it was written and not signed.
@@ -43,7 +45,8 @@ func keptOf(s desk.State) kept {
 	r := s.Record
 	k := kept{
 		Format: keptFormat, Path: s.Path, Plan: &r.Plan, PlanFile: r.PlanFile, Trail: r.Trail, Compared: s.Compared, Seal: r.Result.Seal, Attempts: r.Result.Attempts,
-		Workbook: keptWorkbook{Path: s.Workbook.Path, SHA256: s.Workbook.SHA256, Opened: s.Workbook.Opened},
+		Workbook:   keptWorkbook{Path: s.Workbook.Path, SHA256: s.Workbook.SHA256, Opened: s.Workbook.Opened},
+		Supersedes: r.Supersedes,
 	}
 	k.Drafting, k.Seen = s.Drafting, s.Seen
 	if s.Drafting {
@@ -224,8 +227,8 @@ func (w *window) rebuilt(watch qa.Watch, k kept) (desk.State, error) {
 		if err != nil {
 			return desk.State{}, err
 		}
-		v := exports.Verify(data, nil)
-		book := workbookOf(k.Workbook.Path, v)
+		v := exports.Verify(data, w.trusted)
+		book := w.workbookOf(k.Workbook.Path, v)
 		book.SHA256, book.Opened = k.Workbook.SHA256, k.Workbook.Opened
 		if v.Record == nil {
 			return desk.State{}, errors.New(strings.Join(book.Reasons, "\n"))
@@ -236,7 +239,7 @@ func (w *window) rebuilt(watch qa.Watch, k kept) (desk.State, error) {
 		return desk.State{}, errors.New("record: found no plan, want one; the register does not hold what it should")
 	}
 	if k.Drafting {
-		rec := qa.Record{Format: qa.RecordFormat, Plan: *k.Plan, Trail: k.Trail, Result: qa.Result{Seal: k.Seal}}
+		rec := qa.Record{Format: qa.RecordFormat, Plan: *k.Plan, PlanFile: k.PlanFile, Trail: k.Trail, Result: qa.Result{Seal: k.Seal}, Supersedes: k.Supersedes}
 		return desk.State{Path: k.Path, Record: rec, Drafting: true, Seen: k.Seen, Files: k.Files}, nil
 	}
 	digests := map[string]string{}
@@ -251,6 +254,6 @@ func (w *window) rebuilt(watch qa.Watch, k kept) (desk.State, error) {
 	if err != nil {
 		return desk.State{}, err
 	}
-	rec := qa.Record{Format: qa.RecordFormat, Plan: *k.Plan, PlanFile: k.PlanFile, Readings: readings, Result: result, Trail: k.Trail}
+	rec := qa.Record{Format: qa.RecordFormat, Plan: *k.Plan, PlanFile: k.PlanFile, Readings: readings, Result: result, Trail: k.Trail, Supersedes: k.Supersedes}
 	return desk.State{Path: k.Path, Record: rec, Compared: k.Compared, Workbook: desk.Workbook{Path: k.Workbook.Path}}, nil
 }

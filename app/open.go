@@ -92,7 +92,7 @@ func (w *window) open(name string, read func(string) ([]byte, error)) { w.bring(
 
 // bring opens a file on the page of one lot.
 func (w *window) bring(name string, side qa.Side, read func(string) ([]byte, error)) {
-	place, masked := "Opening "+filepath.Base(name), !w.state.Sealed()
+	place, masked, by := "Opening "+filepath.Base(name), !w.state.Sealed(), w.readBy()
 	w.opens(name)
 	w.work(place, func(watch qa.Watch) change {
 		read := w.keeping(read)
@@ -104,11 +104,14 @@ func (w *window) bring(name string, side qa.Side, read func(string) ([]byte, err
 		case ".toml":
 		case ".xlsx":
 			if _, err := exports.ReadRecord(data); !errors.Is(err, exports.ErrNoRecord) || opcsign.HasSignature(data) {
-				return openWorkbook(place, name, data)
+				return w.openWorkbook(place, name, data)
 			}
-			return w.lookInto(watch, name, data, "", side, masked)
+			return w.lookInto(watch, name, data, side, masked, by)
 		default:
-			return w.lookInto(watch, name, data, "", side, masked)
+			return w.lookInto(watch, name, data, side, masked, by)
+		}
+		if c := beginByPlan(name, data); c != nil {
+			return c
 		}
 		rec, err := w.compareByPlan(watch, name, data, read)
 		if err != nil {
@@ -121,13 +124,26 @@ func (w *window) bring(name string, side qa.Side, read func(string) ([]byte, err
 	})
 }
 
+// beginByPlan begins a comparison by a plan that names no files yet; nil where it names them, or is faulty besides.
+func beginByPlan(name string, data []byte) change {
+	plan, err := importers.LoadDraft(filepath.Base(name), data)
+	if err != nil || plan.Reference.File != "" && plan.Candidate.File != "" {
+		return nil
+	}
+	file := qa.FileOf(filepath.Base(name), data)
+	return func(s desk.State) desk.State { return s.BegunBy(name, plan, file, person(), now()) }
+}
+
 // openWorkbook verifies a workbook and takes the record that is in it.
-func openWorkbook(place, name string, data []byte) change {
-	v := exports.Verify(data, nil)
-	if v.Record == nil {
+func (w *window) openWorkbook(place, name string, data []byte) change {
+	v := exports.Verify(data, w.trusted)
+	switch {
+	case v.Sealed != nil:
+		return openSeal(place, name, data, v)
+	case v.Record == nil:
 		return failed(place, errors.New(strings.Join(workbookOf(name, v).Reasons, "\n")))
 	}
-	rec, book := *v.Record, workbookOf(name, v)
+	rec, book := *v.Record, w.workbookOf(name, v)
 	book.SHA256 = qa.FileOf(name, data).SHA256
 	return func(s desk.State) desk.State { return s.OpenedWorkbook(rec, book) }
 }
@@ -158,14 +174,25 @@ func (w *window) sameAgain(watch qa.Watch, place, of string) change {
 	}
 }
 
-// workbookOf is what verification found, as the desk keeps it. No certificates are trusted here: who signed is established
-// with the console's --trust.
+// workbookOf is what verification found with the certificates that are trusted here.
+func (w *window) workbookOf(name string, v exports.Verification) desk.Workbook {
+	out := workbookOf(name, v)
+	out.Judged = len(w.trusted) > 0
+	return out
+}
+
+// workbookOf is what verification found, as the desk keeps it.
 func workbookOf(name string, v exports.Verification) desk.Workbook {
-	out := desk.Workbook{Path: name, State: string(v.State), Missing: v.MissingMeanings}
+	out := desk.Workbook{Path: name, State: string(v.State), Missing: v.MissingMeanings, Trusted: v.AllTrusted(), Differences: v.Differences}
+	if v.Record != nil {
+		for i := len(v.Record.Supersedes) - 1; i >= 0; i-- {
+			out.Supersedes = append(out.Supersedes, exports.SupersedesText(v.Record.Supersedes[i]))
+		}
+	}
 	for _, s := range v.Signatures {
 		out.Signatures = append(out.Signatures, desk.Signature{
 			Signer: s.Signer, Title: s.Title, Organization: s.Organization, Meaning: s.Meaning, Reason: s.Reason,
-			Time: s.Time, Valid: s.Valid, CoversAll: s.CoversAll, Fingerprint: s.Fingerprint,
+			Disposition: s.Disposition, Time: s.Time, Valid: s.Valid, CoversAll: s.CoversAll, Fingerprint: s.Fingerprint, Trusted: s.Trusted, Doubt: s.Doubt,
 		})
 	}
 	for _, r := range v.Reasons {
@@ -196,7 +223,7 @@ func (w *window) compareByPlan(watch qa.Watch, name string, data []byte, read fu
 	if err != nil {
 		return qa.Record{}, err
 	}
-	attempts, err := w.attempts(plan)
+	attempts, err := w.attempts(plan, nil)
 	if err != nil {
 		return qa.Record{}, err
 	}
@@ -212,13 +239,21 @@ func (w *window) compareByPlan(watch qa.Watch, name string, data []byte, read fu
 	return qa.NewRecord(plan, qa.FileOf(filepath.Base(name), data), readings, result, person(), now()), nil
 }
 
-// attempts counts the run that is about to be made with those that the register knows of.
-func (w *window) attempts(p qa.Plan) (qa.Attempts, error) {
-	if w.register == nil {
-		return qa.Attempts{Known: 1, KeptBy: "not counted"}, nil
+// attempts counts the run that is about to be made with those that the register knows of,
+// and those of the records that this one supersedes.
+func (w *window) attempts(p qa.Plan, earlier []qa.Superseded) (qa.Attempts, error) {
+	out := qa.Attempts{Known: 1, KeptBy: "not counted"}
+	if w.register != nil {
+		n, err := w.register.Attempts(attempt(p))
+		if err != nil {
+			return out, err
+		}
+		out = qa.Attempts{Known: n + 1, KeptBy: "register of this machine"}
 	}
-	n, err := w.register.Attempts(attempt(p))
-	return qa.Attempts{Known: n + 1, KeptBy: "register of this machine"}, err
+	if n := len(earlier) + 1; n > out.Known {
+		out = qa.Attempts{Known: n, KeptBy: "the records that this one supersedes"}
+	}
+	return out, nil
 }
 
 // beside is a file in the folder of another.

@@ -2,10 +2,12 @@ package app
 
 import (
 	"image/color"
+	"strings"
 
 	"fyne.io/fyne/v2"
 
 	"lotpair/app/desk"
+	"lotpair/importers"
 	"lotpair/qa"
 )
 
@@ -15,42 +17,56 @@ const (
 	rowWords   = 92 // room for the part of a row
 )
 
-// sheetColumn is where a column stands.
-type sheetColumn struct{ x, width float32 }
+// sheetColumn is where a column stands; at counts from 0.
+type sheetColumn struct {
+	at       int
+	x, width float32
+}
 
-// sheetColumns places the columns by what the first rows hold; the columns that have no room are not shown, and said so.
-func (w *window) sheetColumns(room float32) ([]sheetColumn, int) {
+// sheetColumns places the columns from the first one that is shown, by what the first rows hold; more is how many have no room
+// at the right.
+func (w *window) sheetColumns(room float32) (out []sheetColumn, more int) {
 	v := w.sheetSaid
-	var out []sheetColumn
+	w.sheetFrom = max(0, min(w.sheetFrom, len(v.Columns)-1))
+	const seen, most = 24, 40 // rows looked at, columns that could have room
+	var rows []desk.RowView
+	for k := range min(v.Rows, seen) {
+		rows = append(rows, w.state.Sheet.RowPart(k, w.sheetFrom, most))
+	}
 	x := float32(sheetFirst)
-	for i, c := range v.Columns {
-		wide := max(52, fontLot11.width(c.Plays)+14)
-		for k := range min(v.Rows, 24) {
-			row := w.state.Sheet.Row(k)
-			if i < len(row.Cells) {
-				wide = max(wide, min(128, fontPlain.width(row.Cells[i].Text)+18))
+	for i := w.sheetFrom; i < len(v.Columns) && i-w.sheetFrom < most; i++ {
+		wide := max(52, fontLot11.width(v.Columns[i].Plays)+14)
+		for _, r := range rows {
+			if k := i - w.sheetFrom; k < len(r.Cells) {
+				wide = max(wide, min(128, fontPlain.width(r.Cells[k].Text)+18))
 			}
 		}
-		if x+wide > room-rowWords {
-			return out, len(v.Columns) - i
+		if x+wide > room-rowWords && len(out) > 0 {
+			break
 		}
-		out = append(out, sheetColumn{x, wide})
+		out = append(out, sheetColumn{i, x, wide})
 		x += wide + 4
 	}
-	return out, 0
+	return out, len(v.Columns) - w.sheetFrom - len(out)
+}
+
+// moveColumns shows columns further to the right, or to the left.
+func (w *window) moveColumns(by int) {
+	w.sheetFrom = max(0, min(len(w.sheetSaid.Columns)-1, w.sheetFrom+by))
+	w.sheet.Refresh()
 }
 
 // tint is the ground of a column's part: a little of the colour of its role.
 func tint(p *pen, plays string) color.Color {
 	switch plays {
-	case desk.PlaysLot:
+	case importers.PlaysLot:
 		return faint(p.Reference, 0x28)
-	case desk.PlaysCharacteristic:
+	case importers.PlaysCharacteristic, importers.PlaysRepeat, "reading":
 		return faint(p.Candidate, 0x28)
-	case desk.PlaysPart:
-		return faint(p.Text, 0x18)
+	case importers.PlaysNothing:
+		return color.Transparent
 	}
-	return color.Transparent
+	return faint(p.Text, 0x18)
 }
 
 // paintSheet draws a file before anything is taken from it: its cells as they are with the parts they play, and what would be
@@ -66,37 +82,28 @@ func (w *window) paintSheet(p *pen, size fyne.Size) {
 	p.across(0, size.Width, 70, 1.2, p.Text)
 	read := fontPlain.atMost(fontPlain.wrap(v.ReadAs, size.Width-2*margin, size.Width-2*margin), 2, size.Width-2*margin)
 	y := p.lines(read, margin, 98, 18, fontPlain, p.Text) + 4
-	x := float32(margin)
-	if v.Sheet != "" {
-		x = p.text("sheet ", margin, y, fontTiny, p.MutedText)
-	}
-	if len(w.state.Sheet.Sheets()) > 1 {
-		x = w.word(p, w.act.sheet, v.Sheet, x+4, y+2)
-	} else if v.Sheet != "" {
-		x = p.text(v.Sheet, x, y, fontPlain, p.Text)
-	}
-	if v.Decimal != "" {
-		x = p.text("decimal mark ", x, y, fontTiny, p.MutedText)
-		w.word(p, w.act.decimal, v.Decimal, x+4, y+2)
-	}
+	w.paintSheetChoices(p, y)
 	divider := size.Width * 0.625
 	bottom := size.Height - footHeight
 	top := y + 20
 	columns, more := w.sheetColumns(divider)
-	for i, c := range columns {
-		col := v.Columns[i]
+	for _, c := range columns {
+		col := v.Columns[c.at]
 		p.box(c.x, top, c.width, 40, tint(p, col.Plays))
 		p.text(fontLot11.fit(col.Plays, c.width-8), c.x+6, top+16, fontLot11, p.Text)
 		p.text(col.Letters, c.x+6, top+33, fontTiny, p.MutedText)
-		if col.Changes {
-			b := w.partButton(i + 1)
-			p.put(b, c.x, top, c.width, 40)
-			b.Refresh()
-		}
+		b := w.partButton(c.at + 1)
+		p.put(b, c.x, top, c.width, 40)
+		b.Refresh()
 	}
-	if more > 0 && len(columns) > 0 {
-		last := columns[len(columns)-1]
-		p.text(fontTiny.fit("and "+qa.Count(more, "column", "columns"), divider-last.x-last.width-20), last.x+last.width+10, top+24, fontTiny, p.MutedText)
+	if w.sheetFrom > 0 {
+		p.put(w.act.columnsLeft, 20, top+6, 36, 28)
+		w.act.columnsLeft.Refresh()
+	}
+	if b := w.act.columnsRight; more > 0 {
+		b.label = qa.Count(more, "more", "more") + " ›"
+		p.put(b, divider-rowWords+2, top+6, rowWords-14, 28)
+		b.Refresh()
 	}
 	w.sheetRows.place(p, 0, top+42, divider-12, bottom-top-50)
 	p.down(divider, 134, bottom-12, 1, p.Rule)
@@ -114,7 +121,7 @@ func (w *window) paintSheetFoot(p *pen, size fyne.Size) {
 		b.Refresh()
 		right -= wide + 14
 	}
-	text := "Click the part above a characteristic to leave it out."
+	text := "Click the part above a column, or a row, to change it."
 	if w.state.Sheet.Masked {
 		text = "Every reading is masked until it is asked for."
 	}
@@ -148,10 +155,7 @@ func (w *window) partButton(column int) *button {
 	b, ok := w.partButtons[column]
 	if !ok {
 		b = newButton(w.palette, "", bare, func() {
-			w.apply(func(s desk.State) desk.State {
-				x := s.Sheet.Toggled(column)
-				return s.WithSheet(&x)
-			})
+			w.offerColumnParts(column)
 		})
 		w.partButtons[column] = b
 	}
@@ -159,7 +163,8 @@ func (w *window) partButton(column int) *button {
 }
 
 func (w *window) newSheetRows() *scrolled {
-	return newScrolled(&sheet{
+	var out *scrolled
+	out = newScrolled(&sheet{
 		palette: w.palette,
 		height:  func(float32) float32 { return float32(w.sheetSaid.Rows) * sheetRow },
 		paint: func(p *pen, size fyne.Size, top, bottom float32) {
@@ -168,10 +173,35 @@ func (w *window) newSheetRows() *scrolled {
 			}
 			columns, _ := w.sheetColumns(size.Width + 12)
 			for i := max(0, int(top/sheetRow)); i < w.sheetSaid.Rows && float32(i+1)*sheetRow <= bottom+2; i++ {
-				paintSheetRow(p, size.Width, float32(i)*sheetRow, w.state.Sheet.Row(i), columns)
+				paintSheetRow(p, size.Width, float32(i)*sheetRow, w.state.Sheet.RowPart(i, w.sheetFrom, len(columns)), columns)
+				if out.content.focused && i == w.sheetCursor {
+					p.frame(30, float32(i)*sheetRow+1, size.Width-38, sheetRow-2, 1, p.Text)
+				}
+			}
+		},
+		tapped: func(at fyne.Position) {
+			w.sheetCursor = min(int(at.Y/sheetRow), w.sheetSaid.Rows-1)
+			out.content.Refresh()
+			w.offerRowParts(fyne.NewPos(at.X, at.Y-out.scroll.Offset.Y))
+		},
+		key: func(k fyne.KeyName) {
+			by := map[fyne.KeyName]int{fyne.KeyDown: 1, fyne.KeyUp: -1, fyne.KeyPageDown: 12, fyne.KeyPageUp: -12, fyne.KeyHome: -1 << 30, fyne.KeyEnd: 1 << 30}[k]
+			switch k {
+			case fyne.KeyLeft:
+				w.moveColumns(-1)
+			case fyne.KeyRight:
+				w.moveColumns(1)
+			case fyne.KeyReturn, fyne.KeyEnter, fyne.KeySpace:
+				w.offerRowParts(fyne.NewPos(sheetFirst, float32(w.sheetCursor+1)*sheetRow-out.scroll.Offset.Y))
+			}
+			if by != 0 {
+				w.sheetCursor = max(0, min(w.sheetSaid.Rows-1, w.sheetCursor+by))
+				out.reveal(float32(w.sheetCursor)*sheetRow, float32(w.sheetCursor+1)*sheetRow)
+				out.content.Refresh()
 			}
 		},
 	})
+	return out
 }
 
 func paintSheetRow(p *pen, width, y float32, r desk.RowView, columns []sheetColumn) {
@@ -223,8 +253,18 @@ const mostLedger = 300
 
 func (w *window) paintLedger(p *pen, width float32) float32 {
 	v, room := w.sheetSaid, width-2*margin
-	p.text("What will be taken", margin, 22, fontHeading, p.MutedText)
-	y := float32(48)
+	y := float32(22)
+	if v.Unfit != "" {
+		p.text("What of the plan no longer fits", margin, y, fontHeading, p.Text)
+		y += 20
+		for _, s := range strings.Split(v.Unfit, "\n") {
+			y = p.lines(fontNote.wrap(s, room, room), margin, y, 16, fontNote, p.Text) + 4
+		}
+		p.across(margin, width-margin, y-6, 1, p.Rule)
+		y += 18
+	}
+	p.text("What will be taken", margin, y, fontHeading, p.MutedText)
+	y += 26
 	for _, t := range v.Taken {
 		x := float32(margin)
 		if t.Side != "" {
@@ -264,6 +304,13 @@ func (w *window) paintLedger(p *pen, width float32) float32 {
 	}
 	for _, s := range v.Said {
 		y = p.lines(fontNote.wrap(s, room, room), margin, y+4, 16, fontNote, p.Text)
+	}
+	if len(v.Reasons) > 0 {
+		p.text("Why it is read so", margin, y+20, fontHeading, p.MutedText)
+		y += 38
+		for _, s := range v.Reasons {
+			y = p.lines(fontNote.wrap(s, room, room), margin, y+4, 16, fontNote, p.MutedText)
+		}
 	}
 	return y
 }

@@ -19,6 +19,7 @@ func (w *window) shortcuts() []shortcut {
 		{fyne.KeyO, w.askOpen},
 		{fyne.KeyE, w.act.export.act},
 		{fyne.KeyL, w.leave},
+		{fyne.KeyM, w.offerMore},
 		{fyne.KeyReturn, w.next},
 		{fyne.KeyQ, w.win.Close},
 	}
@@ -44,6 +45,30 @@ func (w *window) next() {
 			return
 		}
 	}
+}
+
+// copyBench copies what the bench says of the characteristic looked at.
+func (w *window) copyBench() {
+	if w.state.Open && w.dialog == nil {
+		w.app.Clipboard().SetContent(w.state.CopiedBench())
+		w.say("Copied what is said of the characteristic.")
+	}
+}
+
+// copyTable copies all characteristics as a table.
+func (w *window) copyTable() {
+	if w.state.Open && w.dialog == nil {
+		w.app.Clipboard().SetContent(tabbed(w.state.CopiedTable()))
+		w.say("Copied all characteristics as a table.")
+	}
+}
+
+// say says something in the foot.
+func (w *window) say(text string) {
+	w.apply(func(s desk.State) desk.State {
+		s.Said = text
+		return s
+	})
 }
 
 // undo takes the last act back.

@@ -1,14 +1,7 @@
 package app
 
 import (
-	"path/filepath"
 	"strings"
-
-	"fyne.io/fyne/v2/container"
-	"fyne.io/fyne/v2/dialog"
-	"fyne.io/fyne/v2/widget"
-
-	"fyne.io/fyne/v2"
 
 	"lotpair/app/desk"
 	"lotpair/exports"
@@ -29,46 +22,34 @@ func (w *window) askSign() {
 	if w.act.sign.label == "" || w.state.Job.Name != "" || w.dialog != nil {
 		return
 	}
-	key := w.newField("")
-	key.SetPlaceHolder("your identity file (.p12)")
-	key.Validator = filled("an identity file")
-	browse := newButton(w.palette, "Browse", quiet, func() {
-		dialog.ShowFileOpen(func(r fyne.URIReadCloser, err error) {
-			if err == nil && r != nil {
-				key.SetText(r.URI().Path())
-				_ = r.Close() // opened for its name only
-			}
-		}, w.win)
-	})
-	meaning := widget.NewSelect([]string{"prepared", "reviewed", "approved"}, nil)
-	meaning.SetSelected(w.view.foot.Meaning)
-	reason, disposition, passphrase := w.newField(""), w.newField(""), w.newField("")
-	disposition.SetPlaceHolder("what was decided about the lot, where that is yours to say")
-	passphrase.Password = true
-	passphrase.Validator = filled("the passphrase of the identity")
-	to := w.newField(w.proposed())
-	to.Validator = filled("a file name")
+	f := w.newForm()
+	f.add("", wrapped(desk.SignText), "")
+	key := w.identityLine(f, "yours alone")
+	f.first = key
+	meaning := f.choice("Meaning", w.view.foot.Meaning, meanings, "what the signature stands for (21 CFR 11.50)")
+	reason := f.text("Reason", "", "")
+	disposition := f.text("Disposition", "", "what was decided about the lot, where that is yours to say")
+	to := f.text("Workbook", w.proposed(), "")
 	if w.state.Workbook.Path != "" {
 		to.Disable()
 	}
-	items := []*widget.FormItem{
-		widget.NewFormItem("Identity", container.NewBorder(nil, nil, nil, browse, key)),
-		widget.NewFormItem("Meaning", meaning),
-		widget.NewFormItem("Reason", reason),
-		widget.NewFormItem("Disposition", disposition),
-		widget.NewFormItem("Workbook", to),
-		widget.NewFormItem("Passphrase", passphrase),
-	}
-	d := dialog.NewForm("Sign this record", "Sign", "Cancel", items, func(ok bool) {
-		if ok {
-			w.sign(signing{
-				identity: key.Text, passphrase: passphrase.Text, meaning: meaning.Selected,
-				reason: strings.TrimSpace(reason.Text), disposition: strings.TrimSpace(disposition.Text), to: to.Text,
-			})
+	passphrase := f.secret("Passphrase", "")
+	f.ask("Sign this record", "Sign", func() error {
+		for _, x := range []struct {
+			of   *field
+			want string
+		}{{key, "an identity file; choose it"}, {to, "a file name for the workbook"}, {passphrase, "the passphrase of the identity"}} {
+			if err := filled(x.want)(x.of.Text); err != nil {
+				return err
+			}
 		}
+		w.sign(signing{
+			identity: key.Text, passphrase: passphrase.Text, meaning: meaning.Selected,
+			reason: strings.TrimSpace(reason.Text), disposition: strings.TrimSpace(disposition.Text), to: to.Text,
+		})
 		passphrase.SetText("")
-	}, w.win)
-	w.presentForm(d, key, reason, disposition, to, passphrase)
+		return nil
+	})
 }
 
 // sign signs the record's workbook, which is written first where there is none, and reads back what was written.
@@ -100,11 +81,11 @@ func (w *window) sign(x signing) {
 		if err != nil {
 			return failed(place, err)
 		}
-		v := exports.Verify(data, nil)
+		v := exports.Verify(data, w.trusted)
 		if v.Record != nil {
 			rec = *v.Record
 		}
-		book := workbookOf(to, v)
+		book := w.workbookOf(to, v)
 		if book.SHA256, err = w.keepFile(data); err != nil {
 			return failed(place, err)
 		}
@@ -146,17 +127,4 @@ func zone(name string) string {
 		return ""
 	}
 	return name
-}
-
-// showSignatures lists the signatures and what is wrong.
-func (w *window) showSignatures() {
-	box := container.NewVBox()
-	for _, s := range w.state.Signatures() {
-		l := widget.NewLabel(s)
-		l.Wrapping = fyne.TextWrapWord
-		l.Selectable = true
-		box.Add(l)
-	}
-	d := dialog.NewCustom("Signatures of "+filepath.Base(w.state.Workbook.Path), "Close", container.NewVScroll(box), w.win)
-	w.present(d, 720, 420)
 }

@@ -6,18 +6,31 @@ import (
 	"path/filepath"
 	"strings"
 
-	"fyne.io/fyne/v2"
-
 	"lotpair/app/desk"
 	"lotpair/importers"
 	"lotpair/qa"
 )
 
+// readBy is the plan by whose mapping the files before were read; nil where there is none.
+func (w *window) readBy() *qa.Plan {
+	p := w.state.Record.Plan
+	if !w.state.Drafting || p.Reading.Layout == "" {
+		return nil
+	}
+	return &p
+}
+
 // lookInto opens a file of readings over the window. Where no comparison is being prepared one is begun. Until the criterion is
 // sealed every reading is masked.
-func (w *window) lookInto(watch qa.Watch, name string, data []byte, sheet string, side qa.Side, masked bool) change {
+func (w *window) lookInto(watch qa.Watch, name string, data []byte, side qa.Side, masked bool, by *qa.Plan) change {
 	place := "Opening " + filepath.Base(name)
-	x, err := desk.LookedInto(watch, filepath.Base(name), data, sheet, masked)
+	var x desk.Sheet
+	var err error
+	if by != nil {
+		x, err = desk.LookedIntoBy(watch, *by, filepath.Base(name), data, masked)
+	} else {
+		x, err = desk.LookedInto(watch, filepath.Base(name), data, desk.Stated{}, masked)
+	}
 	if err != nil {
 		return failed(place, err)
 	}
@@ -29,37 +42,9 @@ func (w *window) lookInto(watch qa.Watch, name string, data []byte, sheet string
 		if !s.Drafting {
 			s = s.Begun(person(), now())
 		}
-		w.looked = data
+		w.looked, w.sheetFrom, w.sheetCursor = data, 0, 0
 		return s.WithSheet(&x)
 	}
-}
-
-// onSheet looks into another sheet of the same file.
-func (w *window) onSheet(name string) {
-	x, data, masked := w.state.Sheet, w.looked, !w.state.Sealed()
-	w.work("Opening sheet "+name, func(watch qa.Watch) change { return w.lookInto(watch, x.File.Name, data, name, x.Side, masked) })
-}
-
-// offerSheets offers the other sheets of the file.
-func (w *window) offerSheets() {
-	var items []*fyne.MenuItem
-	for _, name := range w.state.Sheet.Sheets() {
-		items = append(items, fyne.NewMenuItem(name, func() { w.onSheet(name) }))
-	}
-	w.offer(w.act.sheet, items...)
-}
-
-// offerDecimal offers the decimal marks of a text file.
-func (w *window) offerDecimal() {
-	item := func(name, mark string) *fyne.MenuItem {
-		return fyne.NewMenuItem(name, func() {
-			w.apply(func(s desk.State) desk.State {
-				x := s.Sheet.WithDecimal(mark)
-				return s.WithSheet(&x)
-			})
-		})
-	}
-	w.offer(w.act.decimal, item("point", "."), item("comma", ","))
 }
 
 // remember keeps the bytes of the file that is taken, for as long as the window is open.
@@ -100,7 +85,7 @@ func (w *window) takeReadings() {
 	}
 	const place = "Taking the readings"
 	w.remember()
-	next, err := w.state.Taking()
+	next, err := w.state.Taking(person(), now())
 	if err != nil {
 		w.apply(failed(place, err))
 		return
@@ -130,7 +115,7 @@ func (w *window) compareDraft(place string, s desk.State) {
 		if err != nil {
 			return failed(place, err)
 		}
-		attempts, err := w.attempts(plan)
+		attempts, err := w.attempts(plan, s.Record.Supersedes)
 		if err != nil {
 			return failed(place, err)
 		}

@@ -1,6 +1,7 @@
 package app
 
 import (
+	"crypto/x509"
 	"encoding/json"
 
 	"fyne.io/fyne/v2"
@@ -11,6 +12,7 @@ import (
 	"lotpair/app/chart"
 	"lotpair/app/desk"
 	"lotpair/app/register"
+	"lotpair/exports"
 	"lotpair/qa"
 	"lotpair/qa/figure"
 	"lotpair/qa/figure/draw"
@@ -38,10 +40,14 @@ type window struct {
 	shift       float64 // the true difference that is thought of while planning
 	sheetSaid   desk.SheetView
 	looked      []byte            // of the file that is looked at
+	sheetFrom   int               // the first of its columns that is shown
+	sheetCursor int               // the row that the keys are on
 	bytes       map[string][]byte // of the files that were brought in, by their digest
 	partButtons map[int]*button
 
-	dialog dialog.Dialog // the one that is open, nil where none is
+	dialog  dialog.Dialog          // the one that is open, nil where none is
+	trusted []*x509.Certificate    // of signers, or of those who issued theirs
+	checked *exports.Qualification // the installation check of this window; nil where none was made
 
 	root                                               *fyne.Container
 	header, banner, left, spine, right, bench          *region
@@ -73,9 +79,12 @@ type buttons struct {
 	compare, signatures, export, sign     *button
 	begin, particulars, seal, take, amend *button
 	undo, redo                            *button
-	objective, method, of, characteristic *button
+	objective, claim, method, of          *button
+	characteristic, terms, more           *button
 	kinds                                 [desk.MultipleOfSD + 1]*button
 	sheet, decimal, unmask, leaveSheet    *button
+	layout, nonDetect                     *button
+	columnsLeft, columnsRight             *button
 	takeHeadings, takeReadings            *button
 	openPlan, openWorkbook, openTheSample *button
 	bringLeft, bringRight                 *button // the places where a file is dropped
@@ -127,6 +136,8 @@ func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
 	for _, k := range w.shortcuts() {
 		w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: k.key, Modifier: fyne.KeyModifierShortcutDefault}, func(fyne.Shortcut) { k.act() })
 	}
+	w.win.Canvas().AddShortcut(&fyne.ShortcutCopy{}, func(fyne.Shortcut) { w.copyBench() })
+	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyC, Modifier: fyne.KeyModifierShortcutDefault | fyne.KeyModifierShift}, func(fyne.Shortcut) { w.copyTable() })
 	w.win.Canvas().AddShortcut(&fyne.ShortcutUndo{}, func(fyne.Shortcut) { w.undo() })
 	w.win.Canvas().AddShortcut(&fyne.ShortcutRedo{}, func(fyne.Shortcut) { w.redo() })
 	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyZ, Modifier: fyne.KeyModifierShortcutDefault | fyne.KeyModifierShift}, func(fyne.Shortcut) { w.redo() })
@@ -138,6 +149,9 @@ func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
 	a.Settings().AddListener(func(fyne.Settings) { w.show() })
 	w.find()
 	w.show()
+	if err := w.loadTrusted(); err != nil {
+		w.apply(failed("The trusted certificates", err))
+	}
 	return w
 }
 
@@ -168,7 +182,14 @@ func (w *window) makeButtons() {
 	b.take = newButton(w.palette, "", main, w.takeKept)
 	b.objective = newButton(w.palette, "", strong, w.offerObjective)
 	b.method = newButton(w.palette, "", word, w.offerMethod)
-	b.of = newButton(w.palette, "", word, w.offerOf)
+	b.of = newButton(w.palette, "", word, w.offerWay)
+	b.claim = newButton(w.palette, "", strong, w.offerClaim)
+	b.terms = newButton(w.palette, "All terms", quiet, w.askTerms)
+	b.more = newButton(w.palette, "More", quiet, w.offerMore)
+	b.layout = newButton(w.palette, "", strong, w.offerLayouts)
+	b.nonDetect = newButton(w.palette, "", strong, w.offerNonDetects)
+	b.columnsLeft = newButton(w.palette, "‹", plain, func() { w.moveColumns(-4) })
+	b.columnsRight = newButton(w.palette, "›", plain, func() { w.moveColumns(4) })
 	b.characteristic = newButton(w.palette, "Add a characteristic", quiet, func() { w.askCharacteristic(len(w.state.Record.Plan.Characteristics)) })
 	for k := range b.kinds {
 		b.kinds[k] = newButton(w.palette, desk.MarginKinds[k], choice, func() { w.chooseKind(desk.MarginKind(k)) })
@@ -283,10 +304,13 @@ func (w *window) showDraft() {
 			d.Enable()
 		}
 	}
-	w.act.method.label = methodText(s.Record.Plan.Criterion.Method)
-	w.act.of.label = "full width"
-	if m := s.Record.Plan.Criterion.Margin; m != nil && m.Of == "half" {
-		w.act.of.label = "half width"
+	w.act.method.label = desk.MethodText(s.Record.Plan.Criterion.Method)
+	w.act.of.label = ""
+	if words, second := desk.Ways(s.Record.Plan); words != nil {
+		w.act.of.label = words[0]
+		if second {
+			w.act.of.label = words[1]
+		}
 	}
 }
 
@@ -321,7 +345,7 @@ func (w *window) show() {
 		b.redo.label = "Redo"
 	}
 	busy := s.Job.Name != ""
-	for _, x := range []*button{b.picture, b.leave, b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample, b.begin, b.particulars, b.seal, b.take, b.amend, b.undo, b.redo, b.takeHeadings, b.takeReadings, b.unmask} {
+	for _, x := range []*button{b.picture, b.leave, b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample, b.begin, b.particulars, b.seal, b.take, b.amend, b.undo, b.redo, b.takeHeadings, b.takeReadings, b.unmask, b.more, b.terms} {
 		x.disabled = busy
 	}
 	if w.root.Size().Width > 0 {

@@ -47,6 +47,12 @@ func InspectAs(name string, data []byte, stated qa.ReadingPlan, all []qa.Charact
 	return Watched{}.InspectAs(name, data, stated, all)
 }
 
+// Mapping is how the file would be read.
+func (in Inspection) Mapping() Mapping { return in.mapping }
+
+// Book is the file's cells.
+func (in Inspection) Book() Book { return in.mapping.tables[0].book }
+
 // Parts says which part each column and row plays.
 func (in Inspection) Parts() Parts {
 	t := in.mapping.tables[0]
@@ -69,7 +75,7 @@ func (in Inspection) Parts() Parts {
 	for _, r := range t.rows {
 		n := t.sheet.Rows[r.at].Number
 		p.Lots[n] = r.lot
-		if p.First == 0 {
+		if p.First == 0 || n < p.First {
 			p.First = n
 		}
 	}

@@ -8,6 +8,7 @@ import (
 	"strings"
 	"time"
 
+	"lotpair/importers"
 	"lotpair/qa"
 )
 
@@ -46,19 +47,7 @@ func (s State) TookHeadings(who string, when time.Time) (State, error) {
 		return s, err
 	}
 	p := &next.Record.Plan
-	old := p.Characteristics
-	p.Characteristics = x.characteristics()
-	for i, c := range p.Characteristics { // what was stated by hand stays
-		for _, o := range old {
-			if o.Name == c.Name {
-				if o.Lower != nil || o.Upper != nil {
-					c.Lower, c.Target, c.Upper = o.Lower, o.Target, o.Upper
-				}
-				c.SD, c.Objective, c.Margin = o.SD, o.Objective, o.Margin
-				p.Characteristics[i] = c
-			}
-		}
-	}
+	p.Characteristics = merged(p.Characteristics, x.characteristics())
 	what := "took headings and limits of " + x.File.Name + ", every reading masked"
 	if !x.Masked {
 		what = "took headings and limits of " + x.File.Name + ", its readings in sight"
@@ -66,8 +55,40 @@ func (s State) TookHeadings(who string, when time.Time) (State, error) {
 	}
 	next.Sheet = nil
 	next.Selected = max(0, min(next.Selected, len(p.Characteristics)-1))
-	next.Record.Trail = s.Record.Trail.With(when, who, what, x.File.Name, "sha-256 "+x.File.SHA256)
+	next.Record.Trail = saidOf(*x, s.Record.Trail, who, when).With(when, who, what, x.File.Name, "sha-256 "+x.File.SHA256)
 	return next.undoable(s, what), nil
+}
+
+// merged are the characteristics of a file with what was stated of them before: by hand, or by a plan that this file goes on
+// with.
+func merged(old, found []qa.Characteristic) []qa.Characteristic {
+	out := slices.Clone(found)
+	for i, c := range out {
+		for _, o := range old {
+			if o.Name != c.Name && !sameHeading(c.Name, o.Heading()) {
+				continue
+			}
+			if o.Lower == nil && o.Target == nil && o.Upper == nil {
+				o.Lower, o.Target, o.Upper = c.Lower, c.Target, c.Upper
+			}
+			if o.Unit == "" {
+				o.Unit = c.Unit
+			}
+			out[i] = o
+		}
+	}
+	return out
+}
+
+// saidOf is the trail with what a person said of the file, which stands in the plan from now on.
+func saidOf(x Sheet, t qa.Trail, who string, when time.Time) qa.Trail {
+	for _, said := range x.Stated.Said {
+		t = t.With(when, who, "said how the file is read", x.File.Name, said)
+	}
+	if x.Unfit != "" {
+		t = t.With(when, who, "read the file otherwise than the plan", x.File.Name, strings.ReplaceAll(x.Unfit, "\n", "; "))
+	}
+	return t
 }
 
 // withLayout is the state whose plan says where the readings of the file stand.
@@ -88,8 +109,17 @@ func (s State) withLayout(x Sheet) (State, error) {
 	}
 	place(&p.Reference, ref)
 	place(&p.Candidate, cand)
+	before := p.Reading
 	p.Reading = x.reading()
-	p.Reading.Exclude = s.Record.Plan.Reading.Exclude
+	p.Reading.Exclude = slices.Clone(before.Exclude)
+	for _, e := range x.leftRows(ref, cand) {
+		if !slices.ContainsFunc(p.Reading.Exclude, func(o qa.Exclusion) bool { return o.Cell == e.Cell && (o.File == "" || o.File == e.File) }) {
+			p.Reading.Exclude = append(p.Reading.Exclude, e)
+		}
+	}
+	if p.Reading.NonDetect == "" {
+		p.Reading.NonDetect = before.NonDetect
+	}
 	switch {
 	case x.sheets != nil: // each lot has its own sheet
 		p.Reading.Sheet = ""
@@ -104,6 +134,19 @@ func (s State) withLayout(x Sheet) (State, error) {
 	s.Record.Plan = p
 	s.Files = append(slices.DeleteFunc(slices.Clone(s.Files), func(f qa.File) bool { return f.Name == x.File.Name }), x.File)
 	return s, nil
+}
+
+// Playing is what is stated where a column of the file that is looked at plays another part. A sealed criterion names its
+// characteristics: they stay.
+func (s State) Playing(column int, part string) (Stated, error) {
+	if s.Sheet == nil {
+		return Stated{}, errors.New("part: found no file, want one that is looked at; open it first")
+	}
+	of := func(p string) bool { return p == importers.PlaysCharacteristic || p == importers.PlaysRepeat }
+	if s.Sealed() && of(part) != of(s.Sheet.plays(column)) {
+		return Stated{}, fmt.Errorf("column %s: %w", letters(column), ErrSealed)
+	}
+	return s.Sheet.Playing(column, part)
 }
 
 // WithSight shows the masked readings of the file that is looked at: a seal set later says that they were seen.
@@ -225,7 +268,7 @@ func (s State) Amended(p qa.Plan, reason, who string, when time.Time) (State, er
 }
 
 // Taking says what is needed to take the readings of the file that is looked at: the plan with its layout.
-func (s State) Taking() (State, error) {
+func (s State) Taking(who string, when time.Time) (State, error) {
 	x := s.Sheet
 	if x == nil || !s.Drafting {
 		return s, errors.New("readings: found no file, want one that is looked at; open it first")
@@ -234,10 +277,11 @@ func (s State) Taking() (State, error) {
 	if err != nil {
 		return s, err
 	}
-	if len(next.Record.Plan.Characteristics) == 0 {
-		next.Record.Plan.Characteristics = x.characteristics()
+	if chosen := len(x.Stated.Said) > 0; !s.Sealed() && (chosen || len(next.Record.Plan.Characteristics) == 0) {
+		next.Record.Plan.Characteristics = merged(next.Record.Plan.Characteristics, x.characteristics())
 	}
 	next.Sheet = nil
+	next.Record.Trail = saidOf(*x, s.Record.Trail, who, when)
 	return next, nil
 }
 

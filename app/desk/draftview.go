@@ -9,7 +9,7 @@ import (
 // DraftView is what is said while the criterion is written.
 type DraftView struct {
 	Reference, Candidate string // the lots, as they are called
-	Objective            string
+	Objective, Claim, Of string // Of: what is compared, the mean
 	Kind                 MarginKind
 	Rows                 []DraftRow
 	Together             string // how likely all pass
@@ -47,35 +47,41 @@ var MarginKindsShort = []string{"of the tolerance", "in the unit", "ratio", "kee
 
 // KindOf is the way in which the plan states its margin.
 func KindOf(p qa.Plan) MarginKind {
-	m := p.Criterion.Margin
-	switch {
-	case m == nil || m.ToleranceFraction != nil:
-		return PartOfTolerance
-	case m.ReferenceFraction != nil:
+	switch marginKind(p.Criterion.Margin) {
+	case asRatio, asRatioBounds:
 		return RatioOfMeans
-	case m.KeepPpk != nil:
+	case asPpk:
 		return KeepsPpk
-	case m.SDMultiple != nil:
+	case asMultiple:
 		return MultipleOfSD
+	case asAbsolute, asBounds:
+		return InTheUnit
 	}
-	return InTheUnit
+	return PartOfTolerance
 }
 
-// ObjectiveText is the objective as the claim says it.
-func ObjectiveText(o qa.Objective) string {
-	switch o {
-	case qa.NotLower:
-		return "not lower than"
-	case qa.NotHigher:
-		return "not higher than"
+// Ways are the two ways of stating a margin of a kind, and which one the plan takes; nil where a kind has one way.
+func Ways(p qa.Plan) (words []string, second bool) {
+	switch marginKind(p.Criterion.Margin) {
+	case asPart, asNone:
+		m := p.Criterion.Margin
+		return Widths, m != nil && m.Of == "half"
+	case asAbsolute, asBounds:
+		return []string{"either way", "from … to …"}, marginKind(p.Criterion.Margin) == asBounds
+	case asRatio, asRatioBounds:
+		return []string{"of means, ±", "geometric, from … to …"}, marginKind(p.Criterion.Margin) == asRatioBounds
 	}
-	return "equivalent to"
+	return nil, false
 }
 
 // Draft says what the criterion comes to; shift is the true difference that is thought of.
 func (s State) Draft(shift float64) DraftView {
 	p := Settled(s.Record.Plan)
-	v := DraftView{Reference: p.Reference.Lot, Candidate: p.Candidate.Lot, Objective: ObjectiveText(p.Criterion.Objective), Kind: KindOf(p), Sealed: s.Sealed()}
+	v := DraftView{Reference: p.Reference.Lot, Candidate: p.Candidate.Lot, Objective: ObjectiveText(p.Criterion.Objective), Claim: claimText(p.Criterion), Kind: KindOf(p), Sealed: s.Sealed()}
+	v.Of = map[string]string{"log": "geometric mean", "paired": "mean of the pairs"}[p.Criterion.Method]
+	if v.Of == "" {
+		v.Of = "mean"
+	}
 	if v.Reference == "" {
 		v.Reference = "the reference"
 	}
@@ -123,31 +129,4 @@ func rowOfDraft(p Planned, selected bool) DraftRow {
 		r.Parts = qa.Plain(float64(p.N))
 	}
 	return r
-}
-
-// Settled is the plan with the margins that each characteristic has to state for itself: what keeps a Ppk and what is a
-// multiple of a standard deviation rests on the characteristic's own target and planned standard deviation.
-func Settled(p qa.Plan) qa.Plan {
-	m := p.Criterion.Margin
-	if m == nil || m.KeepPpk == nil && m.SDMultiple == nil {
-		return p
-	}
-	out := make([]qa.Characteristic, 0, len(p.Characteristics))
-	for _, c := range p.Characteristics {
-		if own := c.Margin; own == nil || own.KeepPpk != nil || own.SDMultiple != nil {
-			c.Margin = nil
-			if c.SD != nil {
-				settled := *m
-				settled.SD = c.SD
-				if m.KeepPpk != nil {
-					centre := centreOf(c)
-					settled.Mean = &centre
-				}
-				c.Margin = &settled
-			}
-		}
-		out = append(out, c)
-	}
-	p.Characteristics = out
-	return p
 }

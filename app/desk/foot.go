@@ -173,6 +173,9 @@ func (s State) Signatures() []string {
 		if g.Reason != "" {
 			t += " Reason: " + g.Reason + "."
 		}
+		if g.Disposition != "" {
+			t += " Disposition: " + g.Disposition + "."
+		}
 		switch {
 		case !g.Valid:
 			t += " Not valid."
@@ -181,10 +184,30 @@ func (s State) Signatures() []string {
 		default:
 			t += " Valid; covers everything."
 		}
+		switch {
+		case !g.Valid:
+		case g.Trusted == nil:
+			t += " Whether the signer is who they say is not known."
+		case *g.Trusted:
+			t += " Trusted here."
+		default:
+			t += " NOT trusted here" + after(": ", g.Doubt) + "."
+		}
 		out = append(out, t+" Certificate sha-256 "+g.Fingerprint+".")
 	}
 	for _, m := range w.Missing {
 		out = append(out, "Missing: signed as "+m+".")
 	}
-	return append(out, w.Reasons...)
+	out = append(append(append(out, w.Reasons...), w.Differences...), w.Supersedes...)
+	if w.State != "" && len(w.Differences) == 0 && (w.State == "intact" || w.State == "incomplete") {
+		out = append(out, "The result computed again agrees with the record and its sheets.")
+	}
+	return out
+}
+
+func after(mark, text string) string {
+	if text == "" {
+		return ""
+	}
+	return mark + text
 }

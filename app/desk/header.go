@@ -35,7 +35,7 @@ func (s State) Header() HeaderView {
 	seal, note := sealText(s.Record.Result.Seal)
 	v.Right, v.Note = seal, note
 	if w := s.Workbook; w.State != "" {
-		v.Right, v.Alarm = StateText(w), w.State != "intact"
+		v.Right, v.Alarm = StateText(w), w.State != "intact" || w.Judged && !w.Trusted
 		v.Note = seal
 	}
 	return v
@@ -89,7 +89,12 @@ func StateText(w Workbook) string {
 	default:
 		return s
 	}
-	if !w.Trusted {
+	switch {
+	case w.Trusted:
+		s += "; every signer is trusted here"
+	case w.Judged:
+		s += "; a signer is NOT trusted here"
+	default:
 		s += "; who signed is not established"
 	}
 	return s

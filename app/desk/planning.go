@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"strings"
 
 	"lotpair/qa"
 	"lotpair/qa/figure"
@@ -22,7 +23,8 @@ type Planned struct {
 	Power          float64 // reached with N
 
 	design stats.Design
-	ready  bool // whether design can be asked
+	ready  bool   // whether design can be asked
+	asked  string // what is asked in a way that is not planned for here; empty for what is
 }
 
 // planned says what the plan comes to for one characteristic. The margin in the unit and what it permits are taken from the
@@ -32,6 +34,24 @@ func planned(p qa.Plan, c qa.Characteristic) Planned {
 	centre, step := centreOf(c), 1.0
 	if c.SD != nil && *c.SD > 0 {
 		out.SD, step = *c.SD, *c.SD
+	}
+	alone := p
+	alone.Characteristics = []qa.Characteristic{c}
+	for _, f := range alone.Validate() {
+		if strings.HasPrefix(f.Key, "criterion.margin") || strings.Contains(f.Key, "("+c.Name+")") {
+			out.Fault = f.Error()
+			return out
+		}
+	}
+	p, c, out.asked = plainly(p, c)
+	if out.asked == "log" { // its readings are above 0
+		if centre <= 0 {
+			centre = 1
+		}
+		step = math.Min(step, centre/10)
+	}
+	if c.Kind == "attribute" {
+		return out.fractions(p, c)
 	}
 	at := func(mean float64) qa.Lot {
 		s := qa.Series{Characteristic: c.Name, Rows: 2}
@@ -74,6 +94,67 @@ func planned(p qa.Plan, c qa.Characteristic) Planned {
 	return out
 }
 
+// plainly is the plan with the question asked of two plain lots, and what is asked otherwise: the margin in the unit is the
+// same, the number of parts is not.
+func plainly(p qa.Plan, c qa.Characteristic) (qa.Plan, qa.Characteristic, string) {
+	asked := ""
+	if p.Criterion.Groups == "random" || p.Criterion.Claim == "sources" {
+		asked, p.Criterion.Groups, p.Criterion.Claim = "groups", "", ""
+	}
+	method, objective := p.Criterion.Method, p.Criterion.Objective
+	if c.Method != "" {
+		method = c.Method
+	}
+	if c.Objective != "" {
+		objective = c.Objective
+	}
+	switch {
+	case method == "paired":
+		asked, c.Method = method, "welch"
+	case method == "log":
+		asked = method
+	case objective != "" && !objective.AgainstMargin():
+		asked = "difference"
+	}
+	return p, c, asked
+}
+
+// fractions says the margin of parts that pass or fail.
+func (p Planned) fractions(plan qa.Plan, c qa.Characteristic) Planned {
+	m := c.Margin
+	if m == nil {
+		m = plan.Criterion.Margin
+	}
+	p.asked, p.Margin = "attribute", "no margin"
+	if m == nil {
+		return p
+	}
+	p.Lower, p.Upper = m.Lower, m.Upper
+	if m.Absolute != nil {
+		down := -*m.Absolute
+		p.Lower, p.Upper = &down, m.Absolute
+		p.Margin = "±" + qa.Fixed(100**m.Absolute, 2) + " % of the parts"
+		return p
+	}
+	var ends []string
+	for _, e := range []*float64{m.Lower, m.Upper} {
+		if e != nil {
+			ends = append(ends, qa.Fixed(100**e, 2))
+		}
+	}
+	p.Margin = strings.Join(ends, " to ") + " % of the parts"
+	return p
+}
+
+// unplanned says why it is not said how many parts are needed.
+var unplanned = map[string]string{
+	"groups":     "With groups as a sample it is the number of groups that counts, not that of parts: how many are needed is not planned for here.",
+	"paired":     "For pairs it is the standard deviation of the differences that counts: “How many parts?” under More plans for pairs.",
+	"log":        "For a ratio of geometric means it is the spread of the logarithms that counts: how many parts are needed is not planned for here.",
+	"difference": "To show a difference, the true difference that is to be found must be stated: “How many parts?” under More plans for it.",
+	"attribute":  "For parts that pass or fail the two fractions must be stated: “How many parts?” under More plans for them.",
+}
+
 // inUnit is a ratio's end as a difference from the mean it is a ratio of.
 func inUnit(ratio *float64, mean float64) *float64 {
 	if ratio == nil {
@@ -105,7 +186,7 @@ const mostParts = 100_000
 func (p *Planned) size(plan qa.Plan, x qa.Comparison) {
 	aims := map[qa.Objective]stats.Aim{qa.Equivalence: stats.AimWithin, qa.NotLower: stats.AimNotLower, qa.NotHigher: stats.AimNotHigher}
 	aim, ok := aims[x.Objective]
-	if !ok {
+	if !ok || p.asked != "" {
 		return
 	}
 	p.design = stats.Design{Aim: aim, SDRef: p.SD, SDCand: p.SD, Alpha: x.Alpha, Lower: math.Inf(-1), Upper: math.Inf(1)}
@@ -185,6 +266,12 @@ func (p Planned) sentences(plan qa.Plan, shift float64) (headline string, out []
 	switch {
 	case p.Fault != "":
 		return "The margin is not settled.", []string{p.Fault}
+	case p.asked != "":
+		out = []string{"The margin is " + p.Margin + "."}
+		if m := p.Permits; m != nil {
+			out = append(out, p.permitsText(m))
+		}
+		return "How many parts are needed?", append(out, unplanned[p.asked])
 	case p.SD == 0:
 		return "How many parts are needed?", []string{"The margin is " + p.Margin + ". With a standard deviation expected beforehand it is said how many parts a lot show it; type it below."}
 	case !p.ready:
@@ -220,8 +307,7 @@ func (p Planned) sentences(plan qa.Plan, shift float64) (headline string, out []
 		}
 	}
 	if m := p.Permits; m != nil {
-		out = append(out, fmt.Sprintf("A mean at the margin would leave Ppk %s and %s outside the limits, for a reference that sits on %s.",
-			qa.Fixed(m.Ppk, 2), qa.ShareText(m.Outside), withUnit(qa.Plain(centreOf(p.Characteristic)), unit)))
+		out = append(out, p.permitsText(m))
 	}
 	if r := plan.Criterion.SpreadRatio; r != nil && *r > 1 {
 		d := p.design
@@ -231,6 +317,11 @@ func (p Planned) sentences(plan qa.Plan, shift float64) (headline string, out []
 		}
 	}
 	return headline, out
+}
+
+func (p Planned) permitsText(m *qa.Permits) string {
+	return fmt.Sprintf("A mean at the margin would leave Ppk %s and %s outside the limits, for a reference that sits on %s.",
+		qa.Fixed(m.Ppk, 2), qa.ShareText(m.Outside), withUnit(qa.Plain(centreOf(p.Characteristic)), p.Characteristic.Unit))
 }
 
 // halfway is half the margin, towards its nearer end.

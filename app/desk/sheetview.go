@@ -2,9 +2,11 @@ package desk
 
 import (
 	"fmt"
+	"maps"
 	"slices"
 	"strings"
 
+	"lotpair/importers"
 	"lotpair/qa"
 )
 
@@ -13,19 +15,21 @@ type SheetView struct {
 	Title, Sub, Status string
 	ReadAs             string // in one sentence
 	Sheet, Decimal     string
+	Layout, NonDetect  string
+	Unfit              string // what of the plan's own mapping no longer fits
 	Columns            []ColumnView
 	Rows               int
 	Taken              []TakenView
 	Counted            string
 	Ledger             []LedgerView
 	Limits             []string
-	Said               []string // what else was detected or done
+	Said               []string // what else was stated or detected
+	Reasons            []string // why it is read so; nothing while the readings are masked, for they may be named
 }
 
 // ColumnView is a column and the part it plays.
 type ColumnView struct {
-	Letters, Plays string
-	Changes        bool // a click changes the part
+	Letters, Heading, Plays string
 }
 
 // TakenView is what would be taken of one lot.
@@ -74,9 +78,12 @@ func (x Sheet) View(p qa.Plan) SheetView {
 	if x.book.IsText {
 		v.Decimal = map[string]string{".": "point", ",": "comma", "": "not settled: choose"}[x.found.Decimal]
 	}
-	for _, c := range x.parts {
-		v.Columns = append(v.Columns, ColumnView{Letters: letters(c.Column), Plays: c.Plays, Changes: c.Plays == PlaysCharacteristic || slices.Contains(x.LeftOut, c.Heading)})
+	for col := 1; col <= x.wide; col++ {
+		v.Columns = append(v.Columns, ColumnView{Letters: letters(col), Heading: x.parts.Headings[col], Plays: x.plays(col)})
 	}
+	v.Layout = layoutWords[x.found.Layout]
+	v.NonDetect = x.Stated.Reading.NonDetect
+	v.Unfit = x.Unfit
 	v.ReadAs = x.readAs()
 	x.sayTaken(&v, p)
 	seen := map[int]bool{}
@@ -95,6 +102,14 @@ func (x Sheet) View(p qa.Plan) SheetView {
 		}
 		v.Ledger = append(v.Ledger, l)
 	}
+	for row, plays := range x.Stated.Rows {
+		if _, reading := x.parts.Lots[row]; reading {
+			v.Ledger = append(v.Ledger, LedgerView{Place: strings.TrimPrefix(x.found.Sheet+"!", "!") + fmt.Sprint(row), Found: "said to be no part of a lot", Taken: plays + ", left out"})
+		}
+	}
+	for _, said := range x.Stated.Said {
+		v.Said = append(v.Said, "You said: "+said+".")
+	}
 	for _, w := range x.found.Warnings {
 		switch {
 		case !x.Masked || strings.HasPrefix(w.Code, "hidden"):
@@ -102,6 +117,9 @@ func (x Sheet) View(p qa.Plan) SheetView {
 		default: // its words may hold a reading
 			v.Said = append(v.Said, "To look at once the readings are seen: "+strings.ReplaceAll(w.Code, "-", " ")+".")
 		}
+	}
+	if !x.Masked {
+		v.Reasons = x.found.Reasons
 	}
 	return v
 }
@@ -115,18 +133,24 @@ func grouped(n int64) string {
 	return s
 }
 
+// layoutWords are the words for the layouts.
+var layoutWords = map[string]string{
+	importers.RowPerPart: "a row a part", importers.ColumnPerLot: "a column a lot", importers.SheetPerLot: "a sheet a lot", importers.RowPerCharacteristic: "a row a characteristic",
+}
+
+// LayoutText is a layout in words.
+func LayoutText(layout string) string { return layoutWords[layout] }
+
 // readAs says in one sentence how the file would be read.
 func (x Sheet) readAs() string {
-	parts := []string{map[string]string{
-		"row-per-part": "a row a part", "column-per-lot": "a column a lot", "sheet-per-lot": "a sheet a lot", "row-per-characteristic": "a row a characteristic",
-	}[x.found.Layout]}
+	parts := []string{layoutWords[x.found.Layout]}
 	var columns []string
-	for _, p := range x.parts {
-		switch p.Plays {
-		case PlaysLot:
-			parts = append(parts, "the lot named in column "+letters(p.Column))
-		case PlaysCharacteristic:
-			columns = append(columns, letters(p.Column))
+	for col := 1; col <= x.wide; col++ {
+		switch x.plays(col) {
+		case importers.PlaysLot:
+			parts = append(parts, "the lot named in column "+letters(col))
+		case importers.PlaysCharacteristic:
+			columns = append(columns, letters(col))
 		}
 	}
 	n := len(x.characteristics())
@@ -139,7 +163,9 @@ func (x Sheet) readAs() string {
 	parts = append(parts, text)
 	var limits []int
 	foot := 0
-	for row, part := range x.rows {
+	rows := maps.Clone(x.parts.Rows)
+	maps.Copy(rows, x.Stated.Rows)
+	for row, part := range rows {
 		switch part {
 		case "lower limit", "target", "upper limit":
 			limits = append(limits, row)
@@ -149,11 +175,11 @@ func (x Sheet) readAs() string {
 	}
 	if len(limits) > 0 {
 		slices.Sort(limits)
-		var rows []string
+		var at []string
 		for _, r := range limits {
-			rows = append(rows, fmt.Sprint(r))
+			at = append(at, fmt.Sprint(r))
 		}
-		parts = append(parts, "limits in "+map[bool]string{true: "row ", false: "rows "}[len(rows) == 1]+joinedAnd(rows))
+		parts = append(parts, "limits in "+map[bool]string{true: "row ", false: "rows "}[len(at) == 1]+joinedAnd(at))
 	}
 	if foot > 0 {
 		parts = append(parts, "a foot of "+qa.Count(foot, "summary row", "summary rows")+" left out")
@@ -174,19 +200,36 @@ func (x Sheet) sayTaken(v *SheetView, p qa.Plan) {
 	readings := map[string]int{}
 	total := 0
 	for _, c := range x.found.Characteristics {
-		if slices.ContainsFunc(x.LeftOut, func(h string) bool { return sameHeading(h, c.Name) }) {
-			continue
-		}
 		for _, l := range c.Lots {
 			readings[l.Lot] += l.N
 			total += l.N
 		}
-		if t := limitsText(c.Name, c.Limits, c.Unit); t != "" {
+	}
+	for _, c := range x.characteristics() {
+		if t := limitsText(c.Name, qa.Limits{Lower: c.Lower, Target: c.Target, Upper: c.Upper}, c.Unit); t != "" {
 			v.Limits = append(v.Limits, t)
 		}
 	}
+	left, gone := x.leftRows(x.Lots()...), 0
+	rows := map[string]int{}
+	for row := range x.Stated.Rows {
+		if lot, ok := x.parts.Lots[row]; ok {
+			rows[lot]++
+		}
+	}
+	for _, e := range left {
+		if row, _ := rowOf(e.Cell); x.ledger[e.Cell].TakenAs != qa.TakenNotANumber && x.ledger[e.Cell].TakenAs != qa.TakenNonDetect {
+			readings[x.lotOfRow(row)]--
+			gone++
+		}
+	}
+	total -= gone
 	for _, l := range x.found.Lots {
-		t := TakenView{Lot: l.Lot, Text: qa.Count(l.Rows, "part", "parts") + ", " + qa.Count(readings[l.Lot], "reading", "readings")}
+		n := l.Rows - rows[l.Lot]
+		if x.lot == "" {
+			n = l.Rows - rows[""]
+		}
+		t := TakenView{Lot: l.Lot, Text: qa.Count(n, "part", "parts") + ", " + qa.Count(readings[l.Lot], "reading", "readings")}
 		switch l.Lot {
 		case ref:
 			t.Side = qa.Reference
@@ -197,7 +240,15 @@ func (x Sheet) sayTaken(v *SheetView, p qa.Plan) {
 		}
 		v.Taken = append(v.Taken, t)
 	}
-	v.Counted = qa.Count(total, "cell", "cells") + " taken as numbers, " + fmt.Sprint(len(x.found.Unread)) + " in the ledger."
+	v.Counted = qa.Count(total, "cell", "cells") + " taken as numbers, " + fmt.Sprint(len(x.found.Unread)+len(left)) + " in the ledger."
+}
+
+// lotOfRow is the lot of a row of readings; with one lot that is not named, that one.
+func (x Sheet) lotOfRow(row int) string {
+	if lot := x.parts.Lots[row]; lot != "" || len(x.found.Lots) != 1 {
+		return lot
+	}
+	return x.found.Lots[0].Lot
 }
 
 func limitsText(name string, l qa.Limits, unit string) string {
@@ -233,31 +284,33 @@ func takenText(u qa.UnreadResult) string {
 }
 
 // Row is one row as it stands in the file; readings are masked where they are not to be seen.
-func (x Sheet) Row(i int) RowView {
+func (x Sheet) Row(i int) RowView { return x.RowPart(i, 0, x.wide) }
+
+// RowPart is the same of so many columns from a first one, counted from 0.
+func (x Sheet) RowPart(i, from, count int) RowView {
 	rows := x.book.Sheets[x.at].Rows
 	if i < 0 || i >= len(rows) {
 		return RowView{}
 	}
 	r := rows[i]
-	v := RowView{Number: r.Number, Part: x.rows[r.Number], Cells: make([]CellView, len(x.parts))}
+	v := RowView{Number: r.Number, Part: x.rowPlays(r.Number), Cells: make([]CellView, max(0, min(count, x.wide-from)))}
 	for _, c := range r.Cells {
-		if c.Col > len(v.Cells) {
+		at := c.Col - 1 - from
+		if at < 0 || at >= len(v.Cells) {
 			continue
 		}
-		out := &v.Cells[c.Col-1]
+		out := &v.Cells[at]
 		out.Text, out.Number = qa.JoinSpace(c.Text), c.Kind.String() == "number"
-		place := letters(c.Col) + fmt.Sprint(r.Number)
-		if x.found.Sheet != "" {
-			place = x.found.Sheet + "!" + place
-		}
-		u, inLedger := x.ledger[place]
-		out.Struck, out.Heading = v.Part == "foot", v.Part == "heading"
+		u, inLedger := x.ledger[x.placeOf(c.Col, r.Number)]
+		_, left := x.Stated.Rows[r.Number]
+		out.Struck, out.Heading = v.Part == importers.RowFoot || left, v.Part == importers.RowHeading
 		out.Boxed = inLedger && u.TakenAs != qa.TakenSummary && u.TakenAs != qa.TakenMissing
-		plays := x.parts[c.Col-1].Plays
-		if plays == PlaysCharacteristic && out.Text != "" {
+		plays := x.plays(c.Col)
+		if plays == importers.PlaysCharacteristic && out.Text != "" {
 			out.Number = true // text numbers stand among numbers
 		}
-		if x.Masked && out.Text != "" && r.Number >= x.firstRow && v.Part != "heading" && plays != PlaysLot && plays != PlaysPart {
+		if x.Masked && out.Text != "" && r.Number >= max(x.parts.First, x.found.HeaderRow+1) && v.Part != importers.RowHeading &&
+			plays != importers.PlaysLot && plays != importers.PlaysPart && plays != importers.PlaysRepeated {
 			out.Text = "•••"
 		}
 	}

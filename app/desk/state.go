@@ -50,18 +50,25 @@ type Workbook struct {
 	SHA256     string // of its bytes, where they are kept
 	Opened     bool   // the record came from this file: nothing in it is changed here
 	State      string // "intact", "changed", …; "" for a workbook just exported
-	Trusted    bool   // whether who signed was established with trusted certificates
+	Trusted    bool   // whether every signer was established with trusted certificates
+	Judged     bool   // whether there are trusted certificates at all
 	Signatures []Signature
 	Missing    []string // required meanings that nobody has signed
 	Reasons    []string // what is wrong, a sentence each
+
+	Differences []string // where the recomputation or the sheets differ from the record
+	Supersedes  []string // the earlier records in whose place this one stands, the last first
 }
 
 // Signature is one signature of a workbook as verification reports it.
 type Signature struct {
 	Signer, Title, Organization string
 	Meaning, Reason             string
+	Disposition                 string
 	Time                        string
 	Valid, CoversAll            bool
+	Trusted                     *bool // nil where no certificates are trusted
+	Doubt                       string
 	Fingerprint                 string
 }
 

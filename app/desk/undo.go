@@ -16,11 +16,12 @@ type moment struct {
 	compared bool
 	selected int
 	files    []qa.File
+	instead  []qa.Superseded
 }
 
 func (s State) moment(act string) moment {
 	r := s.Record
-	return moment{act: act, plan: r.Plan, readings: r.Readings, result: r.Result, compared: s.Compared, selected: s.Selected, files: s.Files}
+	return moment{act: act, plan: r.Plan, readings: r.Readings, result: r.Result, compared: s.Compared, selected: s.Selected, files: s.Files, instead: r.Supersedes}
 }
 
 // undoable is the state after an act that can be undone; before is the state that it changed.
@@ -77,7 +78,7 @@ func (s State) Redone(who string, when time.Time) State {
 // at is the state with what lay on the desk at a moment. A comparison that was run stays counted.
 func (s State) at(m moment) State {
 	attempts := max(s.Record.Result.Attempts.Known, m.result.Attempts.Known)
-	s.Record.Plan, s.Record.Readings, s.Record.Result = m.plan, m.readings, m.result
+	s.Record.Plan, s.Record.Readings, s.Record.Result, s.Record.Supersedes = m.plan, m.readings, m.result, m.instead
 	s.Record.Result.Attempts.Known = attempts
 	s.Compared, s.Selected, s.Files, s.Problem, s.Typing = m.compared, m.selected, m.files, Problem{}, nil
 	return s

@@ -25,6 +25,7 @@ var tasks = []task{
 	{"golden", "rewrite the golden files and show what changed; a person reads the difference", golden},
 	{"refdata", "compute the reference values again with R, --slow also in many digits, and show what changed", refdata},
 	{"cases", "write the worked example in testdata/demo again", cases},
+	{"licences", "write the licences of what is built in, for the window", licences},
 	{"screens", "render the window and the sheets of the worked example into out/screens", screens},
 	{"bench", "time every workload beside its floor and its peers (gonum, R, SciPy): bench [PART OF A NAME]; bench window: the real window", bench},
 	{"accuracy", "print the worst error of every function and method by region, beside gonum, R and SciPy; fail where a claim fails", accuracy},

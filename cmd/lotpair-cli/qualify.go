@@ -1,14 +1,11 @@
 package main
 
 import (
-	"bytes"
-	"crypto/rand"
 	_ "embed"
 	"encoding/json"
 	"fmt"
 
 	"lotpair/exports"
-	"lotpair/exports/identity"
 	"lotpair/exports/opcsign"
 	"lotpair/importers"
 	"lotpair/qa"
@@ -39,10 +36,7 @@ func (p *program) qualify(args []string) int {
 	if key != "" && report == "" {
 		return p.usageError(f, "found --identity without --report, want the report that is to be signed")
 	}
-	q := exports.NewQualification(p.now(), p.software(), publishedLines(), []exports.StepLine{
-		step("a signed record is read, computed again and found intact", p.soundRecord()),
-		step("a record changed in one bit is refused", p.tamperedRecord()),
-	})
+	q := exports.NewQualification(p.now(), p.software(), publishedLines(), p.recordSteps())
 	if asJSON {
 		b, err := json.MarshalIndent(q, "", "  ")
 		if err != nil {
@@ -103,13 +97,6 @@ func publishedLines() []exports.CheckLine {
 	return out
 }
 
-func step(name string, err error) exports.StepLine {
-	if err != nil {
-		return exports.StepLine{Step: name, Fault: err.Error()}
-	}
-	return exports.StepLine{Step: name, Holds: true}
-}
-
 func (p *program) printQualification(q exports.Qualification) {
 	word := map[bool]string{true: "holds", false: "IS OFF"}
 	for _, c := range q.Checks {
@@ -126,49 +113,28 @@ func (p *program) printQualification(q exports.Qualification) {
 	fmt.Fprintln(p.out, "This shows that the program computes as published on this machine; validation for your intended use stays with your organization.")
 }
 
-// record makes the small record and signs it with an identity made for the occasion.
-func (p *program) record() ([]byte, error) {
+// recordSteps read, sign, verify and change the small record.
+func (p *program) recordSteps() []exports.StepLine {
+	rec, err := p.record()
+	if err != nil {
+		return []exports.StepLine{{Step: "a record is made", Fault: err.Error()}}
+	}
+	return exports.CheckRecord(rec, p.now(), zoneOf(p.now()))
+}
+
+// record makes the small record.
+func (p *program) record() (qa.Record, error) {
 	plan, err := importers.LoadPlan("plan.toml", qualifyPlan)
 	if err != nil {
-		return nil, err
+		return qa.Record{}, err
 	}
 	readings, err := importers.Read(plan, func(string) ([]byte, error) { return qualifyReadings, nil })
 	if err != nil {
-		return nil, err
+		return qa.Record{}, err
 	}
 	result, err := qa.Compare(plan, readings, qa.Run{Software: p.software(), Seal: qa.Seal{Digest: plan.SealDigest(), Readings: "unknown"}, Attempts: qa.Attempts{Known: 1, KeptBy: qa.NotCounted}})
 	if err != nil {
-		return nil, err
+		return qa.Record{}, err
 	}
-	id, err := identity.New("Installation check", "", "", p.now(), rand.Reader)
-	if err != nil {
-		return nil, err
-	}
-	rec := qa.NewRecord(plan, qa.FileOf("plan.toml", qualifyPlan), readings, result, "installation check", p.now())
-	return exports.SignFirst(rec, id, opcsign.Statement{Meaning: "prepared", Time: p.now(), Zone: zoneOf(p.now())})
-}
-
-func (p *program) soundRecord() error {
-	b, err := p.record()
-	if err != nil {
-		return err
-	}
-	if v := exports.Verify(b, nil); v.State != exports.Intact || !v.Agrees {
-		return fmt.Errorf("found the record %s, want it intact: %v", v.State, v.Reasons)
-	}
-	return nil
-}
-
-// tamperedRecord changes one byte of the signed file, wherever it lies, and wants it noticed.
-func (p *program) tamperedRecord() error {
-	b, err := p.record()
-	if err != nil {
-		return err
-	}
-	changed := bytes.Clone(b)
-	changed[len(changed)/2] ^= 1
-	if v := exports.Verify(changed, nil); v.State == exports.Intact || v.State == exports.Incomplete {
-		return fmt.Errorf("found the changed record %s, want it refused", v.State)
-	}
-	return nil
+	return qa.NewRecord(plan, qa.FileOf("plan.toml", qualifyPlan), readings, result, "installation check", p.now()), nil
 }

@@ -1,0 +1,117 @@
+package app
+
+import (
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/dialog"
+	"fyne.io/fyne/v2/layout"
+	"fyne.io/fyne/v2/widget"
+)
+
+// form is a dialog of many lines: it scrolls, says at once what the lines come to, and stays open with what is wrong until it
+// is right.
+type form struct {
+	w      *window
+	items  []*widget.FormItem
+	first  fyne.Focusable
+	fields []*field
+	said   *widget.Label // what the lines come to, or what is wrong
+	live   func() []string
+}
+
+func (w *window) newForm() *form { return &form{w: w, said: wrapped("")} }
+
+func wrapped(text string) *widget.Label {
+	l := widget.NewLabel(text)
+	l.Wrapping, l.Selectable = fyne.TextWrapWord, true
+	return l
+}
+
+// text is a line to type in; hint is shown below it.
+func (f *form) text(label, value, hint string) *field {
+	x := f.w.newField(value)
+	x.OnChanged = func(string) { f.say() }
+	f.fields = append(f.fields, x)
+	f.add(label, x, hint)
+	return x
+}
+
+// secret is a line whose text is not shown.
+func (f *form) secret(label, hint string) *field {
+	x := f.text(label, "", hint)
+	x.Password = true
+	return x
+}
+
+// choice is one of several words.
+func (f *form) choice(label, value string, words []string, hint string) *widget.Select {
+	x := widget.NewSelect(words, nil)
+	x.SetSelected(value)
+	x.OnChanged = func(string) { f.say() }
+	f.add(label, x, hint)
+	return x
+}
+
+// add is a line with any control.
+func (f *form) add(label string, o fyne.CanvasObject, hint string) {
+	item := widget.NewFormItem(label, o)
+	item.HintText = hint
+	f.items = append(f.items, item)
+	if c, ok := o.(fyne.Focusable); ok && f.first == nil {
+		f.first = c
+	}
+}
+
+// say says what the lines come to.
+func (f *form) say() {
+	if f.live == nil {
+		f.said.SetText("")
+		return
+	}
+	f.said.SetText(joinLines(f.live()))
+}
+
+// ask shows the form. do is called on confirm; what it returns is said in the form, which then stays.
+func (f *form) ask(title, confirm string, do func() error) {
+	w := f.w
+	body := container.NewVScroll(widget.NewForm(f.items...))
+	below := container.NewVScroll(f.said)
+	below.SetMinSize(fyne.NewSize(10, 84))
+	d := dialog.NewCustomWithoutButtons(title, container.NewBorder(nil, below, nil, nil, body), w.win)
+	try := func() {
+		if err := do(); err != nil {
+			f.said.SetText(err.Error())
+			return
+		}
+		d.Hide()
+	}
+	cancel := newButton(w.palette, "Cancel", plain, d.Hide)
+	ok := newButton(w.palette, confirm, main, try)
+	d.SetButtons([]fyne.CanvasObject{container.New(layout.NewHBoxLayout(), cancel, ok)})
+	for _, x := range f.fields {
+		x.OnSubmitted = func(string) { try() }
+	}
+	f.say()
+	size := w.win.Canvas().Size()
+	tall := float32(len(f.items))*46 + 230
+	for _, i := range f.items {
+		if i.HintText != "" {
+			tall += 22
+		}
+	}
+	w.present(d, min(760, size.Width-80), min(tall, size.Height-60))
+	if f.first != nil {
+		w.win.Canvas().Focus(f.first)
+	}
+}
+
+func joinLines(all []string) string {
+	out := ""
+	for i, s := range all {
+		if i > 0 {
+			out += "\n"
+		}
+		out += s
+	}
+	return out
+}
