@@ -5,6 +5,8 @@ import (
 	"fmt"
 	"strings"
 
+	"fyne.io/fyne/v2"
+
 	"lotpair/app/desk"
 )
 
@@ -50,6 +52,27 @@ func (w *window) folder() string {
 
 // showLicences lists the modules built in, and their licences below.
 func (w *window) showLicences() {
-	list, texts, _ := strings.Cut(licences, "\n\n")
-	w.showText("Licences of what is built in", append([]string{list}, strings.Split(strings.TrimSpace(texts), "\n\f\n")...))
+	const wide = 112 // characters
+	var lines []string
+	for _, l := range strings.Split(strings.ReplaceAll(licences, "\f", strings.Repeat("—", 40)), "\n") {
+		for len(l) > wide {
+			at := strings.LastIndexByte(l[:wide], ' ')
+			if at <= 0 {
+				at = wide
+			}
+			lines, l = append(lines, l[:at]), strings.TrimPrefix(l[at:], " ")
+		}
+		lines = append(lines, l)
+	}
+	const tall = 16
+	rows := newScrolled(&sheet{
+		palette: w.palette,
+		height:  func(float32) float32 { return float32(len(lines))*tall + 8 },
+		paint: func(p *pen, size fyne.Size, top, bottom float32) {
+			for i := max(0, int(top/tall)); i < len(lines) && float32(i)*tall <= bottom; i++ {
+				p.text(fontNote.fit(lines[i], size.Width-12), 6, float32(i+1)*tall, fontNote, p.Text)
+			}
+		},
+	})
+	w.showScrolled("Licences of what is built in", rows, func() string { return licences })
 }

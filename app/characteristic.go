@@ -25,7 +25,7 @@ func (w *window) askCharacteristic(at int) {
 	lower := f.text("Lower limit", o.Lower, "")
 	target := f.text("Target", o.Target, "")
 	upper := f.text("Upper limit", o.Upper, "")
-	sd := f.text("Planned sd", o.PlannedSD, "standard deviation known beforehand: says how many parts are needed and what the margin permits")
+	sd := f.text("Planned sd", o.PlannedSD, "known beforehand: it says how many parts are needed")
 	decimals := f.text("Decimals shown", o.Decimals, "")
 	ur := f.text("Uncertainty, reference", o.UncertaintyReference, "standard uncertainty of the measuring system's bias (JCGM 100), in the unit")
 	uc := f.text("Uncertainty, candidate", o.UncertaintyCandidate, "")

@@ -50,12 +50,21 @@ func tabbed(rows [][]string) string {
 	return strings.Join(lines, "\n")
 }
 
+// showScrolled shows what scrolls by itself.
+func (w *window) showScrolled(title string, rows *scrolled, text func() string) {
+	w.showOver(title, rows.scroll, text)
+}
+
 // showBox shows what can be looked through, copied and left.
 func (w *window) showBox(title string, box fyne.CanvasObject, text func() string, more ...fyne.CanvasObject) {
+	w.showOver(title, container.NewVScroll(box), text, more...)
+}
+
+func (w *window) showOver(title string, over fyne.CanvasObject, text func() string, more ...fyne.CanvasObject) {
 	if w.dialog != nil {
 		return
 	}
-	d := dialog.NewCustomWithoutButtons(title, container.NewVScroll(box), w.win)
+	d := dialog.NewCustomWithoutButtons(title, over, w.win)
 	close := newButton(w.palette, "Close", main, d.Hide)
 	copied := newButton(w.palette, "Copy", plain, func() { w.app.Clipboard().SetContent(text()) })
 	all := append([]fyne.CanvasObject{copied}, more...)

@@ -3,6 +3,7 @@ package desk
 import (
 	"fmt"
 
+	"lotpair/importers"
 	"lotpair/qa"
 )
 
@@ -11,7 +12,11 @@ import (
 func Consequences(p qa.Plan, most int) []string {
 	var out []string
 	for _, f := range p.Validate() {
-		if f.Key != "reference.file" && f.Key != "candidate.file" {
+		switch {
+		case importers.StillToCome(f):
+		case lacksMargin(f):
+			return []string{noMargin}
+		default:
 			out = append(out, f.Error())
 		}
 	}

@@ -188,14 +188,27 @@ func (s State) Stated(p qa.Plan, what, who string, when time.Time) (State, error
 	return next.undoable(s, what), nil
 }
 
+// noMargin says what a plan without a margin lacks.
+const noMargin = "state the margin: the largest difference that does not matter in use"
+
+// lacksMargin says whether a fault of a plan is only that no margin is stated yet.
+func lacksMargin(f qa.PlanFault) bool {
+	return f.Found == "none" && strings.HasSuffix(f.Key, ".margin")
+}
+
 // Faults lists what the draft lacks before it can be sealed; where its readings stand is asked for later.
 func (s State) Faults() []string {
 	var out []string
 	for _, f := range s.Record.Plan.Validate() {
-		if f.Key == "reference.file" || f.Key == "candidate.file" {
-			continue
+		switch {
+		case importers.StillToCome(f):
+		case lacksMargin(f):
+			if len(out) == 0 || out[0] != noMargin {
+				out = append([]string{noMargin}, out...)
+			}
+		default:
+			out = append(out, f.Error())
 		}
-		out = append(out, f.Error())
 	}
 	if len(out) == 0 { // what only the characteristic's own limits show
 		p := Settled(s.Record.Plan)

@@ -38,6 +38,10 @@ func planned(p qa.Plan, c qa.Characteristic) Planned {
 	alone := p
 	alone.Characteristics = []qa.Characteristic{c}
 	for _, f := range alone.Validate() {
+		if lacksMargin(f) {
+			out.Fault = noMargin
+			return out
+		}
 		if strings.HasPrefix(f.Key, "criterion.margin") || strings.Contains(f.Key, "("+c.Name+")") {
 			out.Fault = f.Error()
 			return out

@@ -67,22 +67,20 @@ func LookedInto(w qa.Watch, name string, data []byte, stated Stated, masked bool
 // LookedIntoBy says how a file would be read by the mapping of a plan, as the file before it was. What no longer fits is
 // named, and found anew.
 func LookedIntoBy(w qa.Watch, p qa.Plan, name string, data []byte, masked bool) (Sheet, error) {
-	var unfit []string
-	for _, stated := range []Stated{statedBy(p, true), statedBy(p, false)} {
+	unfit := ""
+	for _, stated := range []Stated{statedBy(p, true), statedBy(p, false)} { // the next file may have its sheet and headings elsewhere
 		x, err := LookedInto(w, name, data, stated, masked)
 		if err == nil {
-			x.Unfit = strings.Join(unfit, "\n")
+			x.Unfit = unfit
 			return x, nil
 		}
 		if stopped := (*qa.StoppedError)(nil); errors.As(err, &stopped) {
 			return Sheet{}, err
 		}
-		if s := err.Error(); len(unfit) == 0 || unfit[0] != s {
-			unfit = append(unfit, s)
-		}
+		unfit = err.Error()
 	}
 	x, err := LookedInto(w, name, data, Stated{}, masked)
-	x.Unfit = strings.Join(unfit, "\n")
+	x.Unfit = unfit
 	return x, err
 }
 
