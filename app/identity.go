@@ -10,6 +10,7 @@ import (
 	"lotpair/app/desk"
 	"lotpair/exports"
 	"lotpair/exports/identity"
+	"lotpair/qa"
 )
 
 // askNewIdentity asks for what a new identity states and makes it.

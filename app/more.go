@@ -9,6 +9,7 @@ import (
 	"lotpair/app/desk"
 	"lotpair/exports"
 	"lotpair/importers"
+	"lotpair/qa"
 )
 
 // busy says that no other act can begin: work runs, or a dialog is open.
@@ -93,7 +94,11 @@ func (w *window) savePlan(to string) {
 	to = absolute(to)
 	place, plan := "Saving "+filepath.Base(to), desk.Settled(w.state.Record.Plan)
 	w.work(place, func(watch qa.Watch) change {
-		if err := saved(exports.Save(to, []byte(importers.PlanText(plan)), false)); err != nil {
+		err := w.jobs.writes(watch)
+		if err == nil {
+			err = saved(exports.Save(to, []byte(importers.PlanText(plan)), false))
+		}
+		if err != nil {
 			return failed(place, err)
 		}
 		return func(s desk.State) desk.State { return s.SavedPlan(to) }
@@ -106,6 +111,9 @@ func (w *window) saveBytes(what, to string, make func() ([]byte, error)) {
 	place := "Saving " + filepath.Base(to)
 	w.work(place, func(watch qa.Watch) change {
 		data, err := make()
+		if err == nil {
+			err = w.jobs.writes(watch)
+		}
 		if err == nil {
 			err = saved(exports.Save(to, data, false))
 		}

@@ -31,7 +31,7 @@ func (w *window) askQualify() {
 func (w *window) qualify() {
 	const place = "Checking this installation"
 	w.work(place, func(watch qa.Watch) change {
-		q := exports.NewQualification(now(), w.software(), publishedLines(), w.recordSteps())
+		q := exports.NewQualification(now(), w.software(), publishedLines(), w.recordSteps(watch))
 		if err := w.keepCheck(q); err != nil {
 			return failed(place, err)
 		}
@@ -62,12 +62,12 @@ func publishedLines() []exports.CheckLine {
 }
 
 // recordSteps read, compare, sign, verify and change the worked example.
-func (w *window) recordSteps() []exports.StepLine {
+func (w *window) recordSteps(watch qa.Watch) []exports.StepLine {
 	const name = "example/plan.toml"
 	data, err := sample.ReadFile(name)
 	if err == nil {
 		var rec qa.Record
-		if rec, err = w.compareByPlan(name, data, sample.ReadFile); err == nil {
+		if rec, err = w.compareByPlan(watch, name, data, sample.ReadFile); err == nil {
 			return exports.CheckRecord(rec, now(), zone(now().Location().String()))
 		}
 	}

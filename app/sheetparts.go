@@ -34,7 +34,7 @@ func (w *window) restate(t desk.Stated) {
 	x, data := w.state.Sheet, w.looked
 	const place = "Reading the file again"
 	w.work(place, func(watch qa.Watch) change {
-		next, err := desk.LookedInto(qa.Watch{}, x.File.Name, data, t, x.Masked)
+		next, err := desk.LookedInto(watch, x.File.Name, data, t, x.Masked)
 		if err != nil {
 			return failed(place, err)
 		}

@@ -7,6 +7,7 @@ import (
 
 	"lotpair/app/desk"
 	"lotpair/exports"
+	"lotpair/qa"
 )
 
 // askSupersede asks for the signed workbook in whose place this record stands, and why.

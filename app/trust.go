@@ -14,6 +14,7 @@ import (
 	"lotpair/app/desk"
 	"lotpair/exports"
 	"lotpair/exports/identity"
+	"lotpair/qa"
 )
 
 // trustFile holds the trusted certificates in the folder of the register: a text that can be read and kept with it.
