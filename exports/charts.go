@@ -18,18 +18,24 @@ const pixelPoints = 72.0 / 96 // points a pixel of the screen
 func spinePicture(r qa.Result, row int) picture {
 	width := (pixelsOf(summaryWidths[spineColumn-1]) + pixelsOf(summaryWidths[spineColumn])) * pixelPoints
 	return picture{
-		row: row, col: spineColumn, width: width - 2, height: spineRowHeight*float64(len(r.Characteristics)) - 1,
+		row: row, col: spineColumn, width: width - 2, height: spineRowHeight*float64(spineRows(r)) - 1,
 		about: "The decision interval of each characteristic on the scale of its own margin",
 		paint: func(p *painter) ([]byte, error) { return p.spines(r, width) },
 	}
 }
 
+// spineRows are the rows that the picture covers: the lines and the headings between them.
+func spineRows(r qa.Result) int {
+	n := len(r.Characteristics)
+	return n + headsAgain(n-1, n)
+}
+
 func (p *painter) spines(r qa.Result, width float64) ([]byte, error) {
 	const scale = 1.25 // some 200 pixels an inch
 	pitch := spineRowHeight / width * figure.SpineWidth
-	all := figure.Figure{Width: figure.SpineWidth, Height: pitch * float64(len(r.Characteristics))}
+	all := figure.Figure{Width: figure.SpineWidth, Height: pitch * float64(spineRows(r))}
 	for i, c := range r.Characteristics {
-		appendBelow(&all, figure.Spine(c), pitch*float64(i)+(pitch-figure.SpineHeight)/2)
+		appendBelow(&all, figure.Spine(c), pitch*float64(i+headsAgain(i, len(r.Characteristics)))+(pitch-figure.SpineHeight)/2)
 	}
 	full, err := p.full(all, scale)
 	if err != nil {

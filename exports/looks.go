@@ -47,12 +47,15 @@ func style(k look) excelize.Style {
 	switch k {
 	case titleLook:
 		s.Font = font(16, inkColour, true)
+	case titleWrapLook:
+		s.Font = font(16, inkColour, true)
+		a.WrapText = true
 	case mutedLook:
 		s.Font = font(9, mutedColour, false)
 		a.WrapText = true
 	case rightMutedLook:
 		s.Font = font(9, mutedColour, false)
-		a.Horizontal = "right"
+		a.Horizontal, a.WrapText = "right", true
 	case referenceLook:
 		s.Font = font(9, referenceColour, true)
 		s.Border = []excelize.Border{{Type: "top", Color: inkColour, Style: 1}}
@@ -62,11 +65,14 @@ func style(k look) excelize.Style {
 		s.Border = []excelize.Border{{Type: "top", Color: inkColour, Style: 1}}
 	case lotLook:
 		s.Font = font(15, inkColour, true)
+		a.WrapText = true
+	case leftPlainLook:
+		a.WrapText = true
 	case rightPlainLook:
-		a.Horizontal = "right"
+		a.Horizontal, a.WrapText = "right", true
 	case rightLotLook:
 		s.Font = font(15, inkColour, true)
-		a.Horizontal = "right"
+		a.Horizontal, a.WrapText = "right", true
 	case headLook:
 		s.Font = font(9, mutedColour, true)
 		s.Border = below(inkColour, 1)

@@ -64,6 +64,8 @@ const (
 	headPlainLook // names of the result format, over what they mean
 	headPlainRightLook
 	strongWrapLook
+	titleWrapLook
+	leftPlainLook // wraps, the counterpart of rightPlainLook
 	lastLook = iota - 1
 )
 

@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"math"
 	"strings"
-	"time"
 
 	"lotpair/qa"
 )
@@ -25,8 +24,8 @@ var summaryWidths = []float64{23, 18, 9, 12, 18, 15.5, 15.5, 16}
 func summarySheet(rec qa.Record, digest string) sheet {
 	s := sheet{name: SheetSummary, widths: summaryWidths}
 	r := rec.Result
-	s.addTall(26, wide(orDash(r.Title), titleLook, summaryColumns))
-	s.addTall(15, wide(supportsLine(rec), mutedLook, summaryColumns))
+	s.addTall(wordLines(orDash(r.Title), 72)*20+6, wide(orDash(r.Title), titleWrapLook, summaryColumns))
+	paragraph(&s, supportsLine(rec), mutedLook, summaryLineRoom, 13)
 	if n := len(rec.Supersedes); n > 0 {
 		paragraph(&s, SupersedesText(rec.Supersedes[n-1]), strongWrapLook, 115, 14)
 	}
@@ -91,20 +90,21 @@ func paragraph(s *sheet, t string, l look, room int, lineHeight float64) {
 }
 
 func facingLots(s *sheet, rec qa.Record) {
-	both := func(height float64, left, right string, a, b look) {
-		s.addTall(height, wide(left, a, summaryHalf), wide(right, b, summaryHalf))
+	both := func(room int, line float64, left, right string, a, b look) {
+		s.addTall(max(wordLines(left, room), wordLines(right, room))*line+2, wide(left, a, summaryHalf), wide(right, b, summaryHalf))
 	}
 	r, p := rec.Result, rec.Plan.Record
-	both(16, "●  REFERENCE", "CANDIDATE  ◇", referenceLook, candidateLook)
-	both(23, orDash(r.Reference.Lot), orDash(r.Candidate.Lot), lotLook, rightLotLook)
-	both(15, orDash(r.Reference.Source), orDash(r.Candidate.Source), plainLook, rightPlainLook)
-	both(15, fileLine(r.Reference), fileLine(r.Candidate), mutedLook, rightMutedLook)
-	both(15, qa.PartsText(rec.Readings, qa.Reference), qa.PartsText(rec.Readings, qa.Candidate), plainLook, rightPlainLook)
+	const plain, large = 60, 34 // characters of a line of each size
+	both(plain, 14, "●  REFERENCE", "CANDIDATE  ◇", referenceLook, candidateLook)
+	both(large, 19, orDash(r.Reference.Lot), orDash(r.Candidate.Lot), lotLook, rightLotLook)
+	both(plain, 13, orDash(r.Reference.Source), orDash(r.Candidate.Source), leftPlainLook, rightPlainLook)
+	both(plain, 13, fileLine(r.Reference), fileLine(r.Candidate), mutedLook, rightMutedLook)
+	both(plain, 13, qa.PartsText(rec.Readings, qa.Reference), qa.PartsText(rec.Readings, qa.Candidate), leftPlainLook, rightPlainLook)
 	if p.QuantityReference != nil || p.QuantityCandidate != nil {
-		both(15, quantity(p.QuantityReference), quantity(p.QuantityCandidate), mutedLook, rightMutedLook)
+		both(plain, 13, quantity(p.QuantityReference), quantity(p.QuantityCandidate), mutedLook, rightMutedLook)
 	}
 	if p.GaugeReference != "" || p.GaugeCandidate != "" {
-		both(15, "measured with "+orDash(p.GaugeReference), "measured with "+orDash(p.GaugeCandidate), mutedLook, rightMutedLook)
+		both(plain, 13, "measured with "+orDash(p.GaugeReference), "measured with "+orDash(p.GaugeCandidate), mutedLook, rightMutedLook)
 	}
 	if p.Sampling != "" {
 		paragraph(s, "Sampling: "+p.Sampling, mutedLook, summaryLineRoom, 14)
@@ -128,17 +128,35 @@ func fileLine(l qa.LotResult) string {
 
 // verdictTable is the spine in print: a line a characteristic; the picture is laid over the two empty columns.
 func verdictTable(s *sheet, r qa.Result) {
-	s.add(text("Characteristic", headLook), text("Asked", headLook), text("Readings", headLook), text("Difference", headLook),
-		text("Interval", headLook), wide("on the scale of its margin", headLook, 2), text("Verdict", headLook))
-	if n := len(r.Characteristics); n > 0 && n <= maxSpineLines {
+	heads := []cell{
+		text("Characteristic", headLook), text("Asked", headLook), text("Readings", headLook), text("Difference", headLook),
+		text("Interval", headLook), wide("on the scale of its margin", headLook, 2), text("Verdict", headLook),
+	}
+	s.add(heads...)
+	n := len(r.Characteristics)
+	if n > 0 && n <= maxSpineLines {
 		s.pictures = append(s.pictures, spinePicture(r, len(s.rows)+1))
 	}
-	for _, c := range r.Characteristics {
+	for i, c := range r.Characteristics {
+		if i > 0 && headsAgain(i, n) > headsAgain(i-1, n) {
+			s.breaks = append(s.breaks, len(s.rows)+1)
+			s.addTall(spineRowHeight, heads...)
+		}
 		s.addTall(spineRowHeight, nameCell(c), text(askedText(c), ruledWrapLook),
 			text(fmt.Sprintf("%d | %d", c.Reference.N, c.Candidate.N), ruledLook),
 			text(optional(c.Difference.Estimate, c.Decimals+1), ruledLook), text(intervalText(c), ruledWrapLook),
 			wide("", ruledLook, 2), text(verdictText(c), ruledStrongLook))
 	}
+}
+
+// headsAgain is how often the headings of a table of so many lines stand again above a line: where it goes over several pages, at
+// the head of each, as many lines as have room on A4 and on Letter.
+func headsAgain(line, lines int) int {
+	const whole, first, next = 28, 20, 28
+	if lines <= whole || line < first {
+		return 0
+	}
+	return 1 + (line-first)/next
 }
 
 // nameCell is a name in the room of a line of the spine; the sheet Results has it in full.
@@ -201,26 +219,40 @@ func criterionBlock(s *sheet, rec qa.Record) {
 	paragraph(s, sealText(r.Seal), plainLook, summaryLineRoom, 14)
 	paragraph(s, "Digest of the criterion (SHA-256): "+r.Seal.Digest, smallLook, smallRoom, 12.5)
 	paragraph(s, "The margin is the equivalence limit of ASTM E2935. All characteristics asked for equivalence, not lower or not higher must hold.", smallLook, smallRoom, 12.5)
-	seen := map[string]bool{}
+	var reasons []string
+	of := map[string][]string{}
 	for _, c := range r.Characteristics {
 		e := c.Equivalence
-		if e == nil || e.Margin.Reason == "" || seen[e.Margin.Reason] {
+		if e == nil || e.Margin.Reason == "" {
 			continue
 		}
-		seen[e.Margin.Reason] = true
-		t := "Margin of " + c.Name + ": " + e.Margin.Reason
-		if e.Margin.ApprovedBy != "" {
-			t += "; approved by " + e.Margin.ApprovedBy
+		t := e.Margin.Reason + prefixed("; approved by ", e.Margin.ApprovedBy)
+		if of[t] == nil {
+			reasons = append(reasons, t)
 		}
-		paragraph(s, t, smallLook, smallRoom, 12.5)
+		of[t] = append(of[t], c.Name)
 	}
+	for _, t := range reasons {
+		paragraph(s, "Margin of "+someOf(of[t])+": "+t, smallLook, smallRoom, 12.5)
+	}
+	permits := shortList{sheet: s, where: "Results, under equivalence.permits"}
 	for _, c := range r.Characteristics {
 		if e := c.Equivalence; e != nil && e.Permits != nil {
-			paragraph(s, fmt.Sprintf("%s: at the worse end of its margin (%s) Ppk would be %s and %s outside the limits, from the reference's mean and spread.",
-				c.Name, qa.MarginText(c), qa.Fixed(e.Permits.Ppk, 2), qa.ShareText(e.Permits.Outside)), smallLook, smallRoom, 12.5)
+			permits.add(fmt.Sprintf("%s: at the worse end of its margin (%s) Ppk would be %s and %s outside the limits, from the reference's mean and spread.",
+				c.Name, qa.MarginText(c), qa.Fixed(e.Permits.Ppk, 2), qa.ShareText(e.Permits.Outside)))
 		}
 	}
+	permits.end()
 	s.gap()
+}
+
+// someOf lists a few names and counts the others.
+func someOf(names []string) string {
+	const most = 6
+	if n := len(names) - most; n > 0 {
+		return strings.Join(names[:most], ", ") + fmt.Sprintf(" and %d others", n)
+	}
+	return strings.Join(names, ", ")
 }
 
 // sealText says whether the criterion is known to have been fixed before the readings were seen.
@@ -260,18 +292,44 @@ func sourceBlock(s *sheet, rec qa.Record) {
 func heldBlock(s *sheet, rec qa.Record) {
 	section(s, "Findings")
 	paragraph(s, ledgerText(rec.Readings.Ledger), plainLook, summaryLineRoom, 14)
+	out := shortList{sheet: s, where: "Ledger"}
 	for _, e := range rec.Readings.Ledger {
 		if e.TakenAs == qa.TakenExcluded {
-			paragraph(s, fmt.Sprintf("Left out: %s %s, found %q: %s", e.Characteristic, e.Source.Place(), e.Source.Text, e.Reason), smallLook, smallRoom, 12.5)
+			out.add(fmt.Sprintf("Left out: %s %s, found %q: %s", e.Characteristic, e.Source.Place(), e.Source.Text, e.Reason))
 		}
 	}
+	out.end()
+	for _, w := range rec.Result.Warnings { // of the whole comparison: all of them
+		paragraph(s, w.Text, smallLook, smallRoom, 12.5)
+	}
+	found := shortList{sheet: s, where: "Findings"}
 	for _, c := range rec.Result.Characteristics {
 		for _, w := range c.Warnings {
-			paragraph(s, c.Name+": "+w.Text, smallLook, smallRoom, 12.5)
+			found.add(c.Name + ": " + w.Text)
 		}
 	}
-	for _, w := range rec.Result.Warnings {
-		paragraph(s, w.Text, smallLook, smallRoom, 12.5)
+	found.end()
+}
+
+// shortList writes the first lines of a list on the summary, and where the others stand.
+type shortList struct {
+	sheet *sheet
+	where string
+	n     int
+}
+
+// mostLines is how many lines of a list the summary has.
+const mostLines = 24
+
+func (l *shortList) add(t string) {
+	if l.n++; l.n <= mostLines {
+		paragraph(l.sheet, t, smallLook, smallRoom, 12.5)
+	}
+}
+
+func (l *shortList) end() {
+	if l.n > mostLines {
+		paragraph(l.sheet, fmt.Sprintf("… and %d more: sheet %s.", l.n-mostLines, l.where), smallLook, smallRoom, 12.5)
 	}
 }
 
@@ -294,80 +352,4 @@ func ledgerText(ledger []qa.Entry) string {
 		}
 	}
 	return "Cells in the ledger: " + strings.Join(parts, ", ") + "."
-}
-
-func signatureBlock(s *sheet, rec qa.Record, digest string) {
-	s.add(wide("Signatures required for a complete record", groupLook, summaryColumns))
-	s.add(text("Meaning", headLook), text("Name", headLook), wide("Title, organization", headLook, 2), wide("Signed at (local time)", headLook, 2), wide("Certificate, SHA-256", headLook, 2))
-	printed := false
-	for _, q := range rec.Plan.RequiredMeanings() {
-		if g := rec.Signer; g != nil && !printed && g.Meaning == q.Meaning {
-			signerRow(s, *g)
-			printed = true
-			continue
-		}
-		s.addTall(24, text(q.Meaning, signLook), text(orWord(q.Name, "to be signed"), signLook), wide(q.Title, signLook, 2), wide("see the signatures of this file", signLook, 2), wide("", signLook, 2))
-	}
-	if g := rec.Signer; g != nil && !printed {
-		signerRow(s, *g)
-	}
-	s.addTall(4)
-	if g := rec.Signer; g != nil && g.Certificate != "" {
-		paragraph(s, "The first signer's certificate: "+g.Certificate+". Time by the clock of the signer's machine. Each signature covers every part of this file.", smallLook, smallRoom, 12.5)
-	}
-	if g := rec.Signer; g != nil && g.Reason != "" {
-		paragraph(s, "Reason of the first signature: "+g.Reason, smallLook, smallRoom, 12.5)
-	}
-	if g := rec.Signer; g != nil && g.Disposition != "" {
-		paragraph(s, "Disposition stated with it by the signer: "+g.Disposition, strongWrapLook, 115, 14)
-	}
-	paragraph(s, "Later signatures, with reason and disposition, stand in the signatures of this file: lotpair-cli verify shows them, and --note writes them as a page to print.", smallLook, smallRoom, 12.5)
-	paragraph(s, "Retention: "+orWord(rec.Plan.Retention, "not stated in the plan; the site's rule holds")+".", smallLook, smallRoom, 12.5)
-	v := rec.Result.Software
-	paragraph(s, fmt.Sprintf("Record %s: the first digits of the digest of its content, signatures apart (SHA-256): %s", RecordID(digest), digest), smallLook, smallRoom, 12.5)
-	paragraph(s, fmt.Sprintf("Made by Lotpair %s (%s), calculation %d, %s/%s.", v.Version, orWord(v.Revision, "no revision"), v.Calculation, v.OS, v.Arch), smallLook, smallRoom, 12.5)
-}
-
-func signerRow(s *sheet, g qa.Signer) {
-	who := g.Title
-	if g.Organization != "" {
-		who = strings.TrimPrefix(who+", "+g.Organization, ", ")
-	}
-	s.addTall(38, text(g.Meaning, signLook), text(g.Name, signLook), wide(who, signLook, 2),
-		wide(bothTimes(g.Time), signLook, 2), wide(fingerprintLines(g.Fingerprint), signLook, 2))
-}
-
-// fingerprintLines breaks a digest into groups that can be read aloud.
-func fingerprintLines(s string) string {
-	var b strings.Builder
-	for i := 0; i < len(s); i += 8 {
-		if i > 0 {
-			b.WriteString(map[bool]string{true: "\n", false: " "}[i%24 == 0])
-		}
-		b.WriteString(s[i:min(i+8, len(s))])
-	}
-	return b.String()
-}
-
-func orWord(s, word string) string {
-	if s == "" {
-		return word
-	}
-	return s
-}
-
-// bothTimes is a time as the person saw it, and in UTC below it.
-func bothTimes(t time.Time) string {
-	if t.IsZero() {
-		return ""
-	}
-	return localTime(t) + "\n" + t.UTC().Format("2006-01-02 15:04:05") + " UTC"
-}
-
-// localTime writes a time as the person saw it, with its offset.
-func localTime(t time.Time) string {
-	if t.IsZero() {
-		return ""
-	}
-	return t.Format("2006-01-02 15:04:05 -07:00")
 }

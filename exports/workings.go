@@ -103,8 +103,8 @@ func (w *workings) given(name string, x *float64, what string) {
 func (w *workings) say(t string) { w.sheet.addTall(lines(t, 138)*13+2, wide(t, wrapLook, 5)) }
 
 func (w *workings) characteristic(rec qa.Record, c qa.Comparison, ranges map[string]string) {
-	ref, cand := rec.Readings.Reference.Of(c.Name).Values(), rec.Readings.Candidate.Of(c.Name).Values()
-	if c.Kind != "numeric" || !describes(c.Reference, ref) || !describes(c.Candidate, cand) {
+	ref, cand := rec.Readings.Reference.Of(c.Name), rec.Readings.Candidate.Of(c.Name)
+	if c.Kind != "numeric" || !describes(c.Reference, ref.Readings) || !describes(c.Candidate, cand.Readings) {
 		w.say("Not derived here: the test does not rest on the readings one by one (see the sheets Method and Results). The embedded record and Lotpair compute it again.")
 		return
 	}
@@ -139,17 +139,20 @@ func restsOnMeans(c qa.Comparison) bool {
 
 // describes says whether a lot's figures are those of its readings in use, one by one: not of repeats averaged, pairs or
 // logarithms, which these formulas do not make.
-func describes(s qa.SampleResult, x []float64) bool {
-	if s.N != len(x) {
+func describes(s qa.SampleResult, all []qa.Reading) bool {
+	n, sum, most := 0, 0.0, 0.0
+	for i := range all {
+		if r := &all[i]; r.Used() {
+			n++
+			sum += r.Value / float64(s.N)
+			most = math.Max(most, math.Abs(r.Value))
+		}
+	}
+	if s.N != n {
 		return false
 	}
-	if s.N == 0 || s.Mean == nil {
+	if n == 0 || s.Mean == nil {
 		return s.Mean == nil
-	}
-	sum, most := 0.0, 0.0
-	for _, v := range x {
-		sum += v / float64(len(x))
-		most = math.Max(most, math.Abs(v))
 	}
 	return sameNumber(sum, *s.Mean, most)
 }

@@ -70,15 +70,12 @@ func (f *facing) stacks(ref, cand []point) [2]float64 {
 
 // visible drops the readings that lie outside the picture, which only those left out can, and notes how many.
 func (f *facing) visible(side string, all []point) []point {
-	out := make([]point, 0, len(all))
-	for _, p := range all {
-		if f.inside(p.value) {
-			out = append(out, p)
-		}
+	outside := func(p point) bool { return !f.inside(p.value) }
+	if !slices.ContainsFunc(all, outside) {
+		return all // a million readings are not copied
 	}
-	if n := len(all) - len(out); n > 0 {
-		f.note = joined(f.note, fmt.Sprintf("%d left out of the %s lies outside the picture", n, side))
-	}
+	out := slices.DeleteFunc(slices.Clone(all), outside)
+	f.note = joined(f.note, fmt.Sprintf("%d left out of the %s lies outside the picture", len(all)-len(out), side))
 	return out
 }
 
