@@ -91,8 +91,12 @@ func TestSeveralAttempts(t *testing.T) {
 		second, kept string
 		want         bool
 	}{
-		{0, "none", "", false}, {1, "none", "register of this machine", false}, {2, "none", "register of this machine", true},
-		{2, "none", qa.NotCounted, false}, {2, "one", "register of this machine", false}, {3, "one", "register of this machine", true},
+		{0, "none", "", false},
+		{1, "none", "register of this machine", false},
+		{2, "none", "register of this machine", true},
+		{2, "none", qa.NotCounted, false},
+		{2, "one", "register of this machine", false},
+		{3, "one", "register of this machine", true},
 	} {
 		p := plan(qa.Equivalence, absolute(0.02))
 		p.Criterion.SecondSample = c.second

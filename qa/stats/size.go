@@ -11,6 +11,11 @@ import (
 // mostReadings is the largest sample size that is sought.
 const mostReadings = 100_000_000
 
+// mostBack is how many numbers before the one found are looked at for one that has the
+// power already: all that may have it where there is at least one candidate reading to
+// 19 of the reference. With fewer, one reference reading more or less is nothing.
+const mostBack = 40
+
 // ErrNoSize says that more readings would be needed than anyone takes.
 var ErrNoSize = errors.New("more than 100,000,000 readings would be needed")
 
@@ -117,7 +122,7 @@ func (d Design) size(ratio, power float64, alone bool) (nRef, nCand int, achieve
 	if double && ratio != math.Trunc(ratio) {
 		// One reading more in the group of the smaller standard deviation may lower
 		// the power a little, so that a number before may have had it.
-		back := 2 + 2*int(math.Ceil(1/min(ratio, 1)))
+		back := min(2+2*int(math.Ceil(1/min(ratio, 1))), mostBack)
 		for k := n - 1; k >= max(first, n-back); k-- {
 			if p := at(k); p >= power {
 				n, achieved = k, p

@@ -1,0 +1,99 @@
+package qa_test
+
+import (
+	"encoding/json"
+	"fmt"
+	"strings"
+	"testing"
+
+	"lotpair/qa"
+)
+
+// promised are the values that a result of measured, independent readings has, whatever the objective (contract: result).
+var promised = strings.Fields(`
+	reference.mean reference.sd reference.min reference.q1 reference.median reference.q3 reference.max
+	candidate.mean candidate.sd candidate.min candidate.q1 candidate.median candidate.q3 candidate.max
+	difference.estimate difference.se difference.df difference.t difference.p difference.p_two_sided difference.level difference.lower difference.upper
+	equivalence.estimate equivalence.p equivalence.level equivalence.lower equivalence.upper equivalence.smallest_margin equivalence.permits
+	spread.sd_ratio spread.level spread.lower spread.upper spread.f spread.bonett
+	ranks.u ranks.p ranks.shift ranks.level ranks.lower ranks.upper
+	checks.reference.shapiro_wilk checks.reference.grubbs checks.reference.esd_outliers checks.reference.runs checks.reference.lag1 checks.reference.resolution
+	checks.candidate.shapiro_wilk checks.candidate.grubbs checks.candidate.esd_outliers checks.candidate.runs checks.candidate.lag1 checks.candidate.resolution
+	performance.reference.pp performance.reference.ppk performance.reference.ppk_lower performance.reference.ppk_upper
+	performance.reference.outside_estimated performance.reference.tolerance_interval
+	performance.candidate.pp performance.candidate.ppk performance.candidate.ppk_lower performance.candidate.ppk_upper
+	performance.candidate.outside_estimated performance.candidate.tolerance_interval`)
+
+// Whatever the readings are, a value of the result is there or a warning names it, or the block that it is of.
+func TestNothingMissingUnsaid(t *testing.T) {
+	lot := func(n int, of func(i int) float64) []float64 {
+		x := make([]float64, n)
+		for i := range x {
+			x[i] = of(i)
+		}
+		return x
+	}
+	wave := func(i int) float64 { return 10 + float64(i*7919%13)/10 }
+	same := func(int) float64 { return 10 }
+	kinds := map[string][]float64{
+		"none": {}, "one": lot(1, wave), "two": lot(2, wave), "three": lot(3, wave), "four": lot(4, wave), "many": lot(40, wave),
+		"five equal": lot(5, same), "many equal": lot(40, same), "more than Shapiro": lot(5001, wave),
+		"near the largest": {1e308, -1e308, 1.7e308, 9e307, -1.2e308}, "near the smallest": {5e-324, 1e-323, 5e-324, 2e-323, 1e-322},
+		"binary": lot(9, func(i int) float64 { return wave(i) / 3 }),
+	}
+	margins := map[string]*qa.Margin{
+		"difference": absolute(1), "ratio": {ReferenceFraction: ptr(0.1)}, "shift": {KeepPpk: ptr(0.5), Mean: ptr(10.0), SD: ptr(1.0)},
+	}
+	for refName, ref := range kinds {
+		for candName, cand := range kinds {
+			for scale, m := range margins {
+				if len(ref)+len(cand) > 5000 && scale != "difference" { // the scale is nothing to them, and they take long
+					continue
+				}
+				p := plan(qa.Equivalence, m)
+				ch := qa.Characteristic{Name: "x", Lower: ptr(5.0), Target: ptr(10.0), Upper: ptr(15.0)}
+				decimals := 1
+				if refName == "binary" || candName == "binary" {
+					decimals = 16
+				}
+				r, err := qa.Compare(p, lots(ch, series("x", decimals, ref...), series("x", decimals, cand...)), qa.Run{})
+				if err != nil {
+					if scale == "ratio" { // a mean below 0
+						continue
+					}
+					t.Fatal(err)
+				}
+				missing(t, fmt.Sprintf("%s and %s, %s", refName, candName, scale), r.Characteristics[0])
+			}
+		}
+	}
+}
+
+func missing(t *testing.T, name string, c qa.Comparison) {
+	t.Helper()
+	b, err := json.Marshal(c)
+	if err != nil {
+		t.Fatal(err)
+	}
+	var tree map[string]any
+	if err := json.Unmarshal(b, &tree); err != nil {
+		t.Fatal(err)
+	}
+	for _, path := range promised {
+		var at any = tree
+		for _, key := range strings.Split(path, ".") {
+			m, _ := at.(map[string]any)
+			at = m[key]
+		}
+		if at != nil {
+			continue
+		}
+		said := false
+		for _, w := range c.Warnings {
+			said = said || w.Path != "" && (w.Path == path || strings.HasPrefix(path, w.Path+"."))
+		}
+		if !said {
+			t.Errorf("%s: %s is missing and no warning names it: %v", name, path, c.Warnings)
+		}
+	}
+}
