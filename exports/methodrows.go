@@ -25,6 +25,7 @@ func methodSheet(rec qa.Record) sheet {
 	section := func(head string, paragraphs ...string) {
 		s.gap()
 		s.add(wide(head, groupLook, 3))
+		s.addTall(3)
 		for _, p := range paragraphs {
 			s.addTall(lines(p, 138)*13+3, wide(p, wrapLook, 3))
 		}

@@ -46,7 +46,11 @@ func picturesSheet(rec qa.Record) sheet {
 				about: "Facing plots: readings of both lots back to back", paint: func(p *painter) ([]byte, error) { return p.plots(some, rec.Readings) },
 			})
 		}
-		s.addTall(plotHead, wide(nameWithUnit(c)+": "+string(c.Verdict), groupLook, 7))
+		head := nameWithUnit(c) + ": " + string(c.Verdict)
+		if c.Kind == "attribute" {
+			head += " (1: a part that failed, 0: one that did not)"
+		}
+		s.addTall(plotHead, wide(head, groupLook, 7))
 		for range plotRows {
 			s.addTall(plotRow)
 		}

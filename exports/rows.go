@@ -66,7 +66,7 @@ const (
 	strongWrapLook
 	titleWrapLook
 	leftPlainLook // wraps, the counterpart of rightPlainLook
-	lastLook = iota - 1
+	lastLook      = iota - 1
 )
 
 // row is one row of a sheet; a height of 0 leaves it to the program.

@@ -56,7 +56,7 @@ var waysWords = map[string]string{
 	"exclusions-put-back": "with every reading that was left out", "exclusion-put-back": "with the one reading of the named cell that was left out",
 	"outlying-removed": "without the readings that the generalized ESD test calls outlying; no ground to leave them out",
 	"non-detects-best": "non-detects at the end of their range that favours what is to be shown", "non-detects-worst": "non-detects at the end that speaks against it",
-	"gauge-bias": "with the stated uncertainty of the bias of the gauges",
+	"newcombe": "difference of the fractions by the interval of Newcombe (1998)", "gauge-bias": "with the stated uncertainty of the bias of the gauges",
 }
 
 func sensitivityMeaning(name string) string {

@@ -173,6 +173,9 @@ func nameCell(c qa.Comparison) cell {
 }
 
 func nameWithUnit(c qa.Comparison) string {
+	if c.Kind == "attribute" {
+		return c.Name + " [fraction that failed]"
+	}
 	if c.Unit == "" {
 		return c.Name
 	}
