@@ -1,11 +1,14 @@
 package qa
 
-import "strings"
+import (
+	"slices"
+	"strings"
+)
 
 // absences names every value that a reader of the result may look for and that does not exist, where nothing that was said before
 // names it or the block it is of (contract: result, "a warning whose path names it"). What a comparison of its kind does not have
 // at all, such as the other end of a one-sided margin, is not missed.
-func (c *comparison) absences() {
+func (c *comparison) absences(plan Plan) {
 	for _, s := range []struct {
 		side   Side
 		result SampleResult
@@ -37,6 +40,10 @@ func (c *comparison) absences() {
 	if s := c.Spread; s != nil {
 		c.absent(s.SDRatio == nil, "", "spread", "There is no ratio of standard deviations.")
 		c.absent(s.SDRatio != nil && s.Bonett == nil && c.Method != "paired", "", "spread.bonett", "Bonett's interval needs five readings in each lot.")
+	}
+	if s := plan.Sensitivity; s != nil && s.Resamples > 0 {
+		made := slices.ContainsFunc(c.Sensitivity, func(s SensitivityResult) bool { return s.Resamples > 0 })
+		c.absent(!made, "", "sensitivity.resamples", "The resampling that the plan asks for is not made here: it is for the difference of two independent lots that vary, against a margin in the unit.")
 	}
 	switch r := c.Ranks; {
 	case r == nil:

@@ -97,3 +97,47 @@ func missing(t *testing.T, name string, c qa.Comparison) {
 		}
 	}
 }
+
+// A resampling that is asked for is made, or it is said why not.
+func TestResamplesNotMade(t *testing.T) {
+	ch, ref, cand := d1()
+	for _, c := range []struct {
+		objective qa.Objective
+		margin    *qa.Margin
+		made      bool
+	}{
+		{qa.Equivalence, absolute(0.02), true}, {qa.Equivalence, &qa.Margin{ReferenceFraction: ptr(0.1)}, false},
+		{qa.Equivalence, &qa.Margin{KeepPpk: ptr(1.0), Mean: ptr(12.0), SD: ptr(0.01)}, false}, {qa.Difference, nil, false},
+	} {
+		p := plan(c.objective, c.margin)
+		p.Sensitivity = &qa.SensitivityPlan{Resamples: 200, Seed: 1}
+		got := one(t, p, lots(ch, ref, cand))
+		said := false
+		for _, w := range got.Warnings {
+			said = said || w.Path == "sensitivity.resamples"
+		}
+		if said == c.made {
+			t.Errorf("%s: got said %v, want %v: %v", c.objective, said, !c.made, got.Warnings)
+		}
+	}
+}
+
+// What has no meaning for an attribute is no part of its plan.
+func TestAttributeOnly(t *testing.T) {
+	for name, change := range map[string]func(c *qa.Characteristic){
+		"limit": func(c *qa.Characteristic) { c.Upper = ptr(1.0) }, "sd": func(c *qa.Characteristic) { c.SD = ptr(1.0) },
+		"uncertainty": func(c *qa.Characteristic) { c.Uncertainty = &qa.Uncertainty{} }, "spread": func(c *qa.Characteristic) { c.SpreadRatio = ptr(2.0) },
+		"method": func(c *qa.Characteristic) { c.Method = "pooled" },
+	} {
+		ch := qa.Characteristic{Name: "leak", Kind: "attribute", Failed: []string{"NOK"}}
+		p := plan(qa.Equivalence, absolute(0.1))
+		p.Characteristics = []qa.Characteristic{ch}
+		if got := p.Validate(); len(got) != 0 {
+			t.Fatalf("plain: got %v", got)
+		}
+		change(&p.Characteristics[0])
+		if got := p.Validate(); len(got) != 1 {
+			t.Errorf("%s: got %v, want one fault", name, got)
+		}
+	}
+}

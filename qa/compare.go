@@ -129,7 +129,7 @@ func compareOne(plan Plan, ch Characteristic, k *known, ref, cand Series) (Compa
 		c.absence,
 		func() { c.newStudy(plan) },
 		c.checkUncertainty,
-		c.absences,
+		func() { c.absences(plan) },
 	} {
 		if err := k.watch.Stop(Progress{Doing: comparing, Of: ch.Name}); err != nil {
 			return Comparison{}, err

@@ -145,9 +145,8 @@ func FuzzCompare(f *testing.F) {
 		p := fuzzedPlan(b)
 		ch := qa.Characteristic{Name: "X", Lower: b.some(3), Target: b.some(6), Upper: b.some(3), SD: b.some(8)}
 		if b.of(8) == 0 {
-			ch.Kind, ch.Failed = "attribute", []string{"fail"}
-		}
-		if b.of(6) == 0 {
+			ch = qa.Characteristic{Name: "X", Kind: "attribute", Failed: []string{"fail"}}
+		} else if b.of(6) == 0 {
 			ch.Uncertainty = &qa.Uncertainty{Reference: math.Abs(b.number()), Candidate: math.Abs(b.number())}
 		}
 		p.Characteristics = []qa.Characteristic{ch}

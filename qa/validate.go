@@ -156,6 +156,19 @@ func (v *validator) characteristic(key string, c Characteristic) {
 	if c.Kind == "attribute" && len(c.Failed) == 0 {
 		v.fault(key+".failed", "none", "the words that mark a failed part", "list them, as in failed = [\"NOK\", \"1\"]")
 	}
+	if c.Kind == "attribute" {
+		for _, x := range []struct {
+			key    string
+			stated bool
+		}{
+			{"lower", c.Lower != nil}, {"target", c.Target != nil}, {"upper", c.Upper != nil}, {"sd", c.SD != nil},
+			{"uncertainty", c.Uncertainty != nil}, {"spread_ratio", c.SpreadRatio != nil}, {"method", c.Method != ""},
+		} {
+			if x.stated {
+				v.fault(key+"."+x.key, "it for an attribute, which has no measured values", "it only for kind = \"numeric\"", "remove it")
+			}
+		}
+	}
 	if c.Kind != "attribute" && len(c.Failed) > 0 {
 		v.fault(key+".failed", fmt.Sprintf("%q without kind = \"attribute\"", c.Failed), "it only for an attribute", "state the kind, or remove it")
 	}
