@@ -161,8 +161,13 @@ func (v *validator) characteristic(key string, c Characteristic) {
 			key    string
 			stated bool
 		}{
-			{"lower", c.Lower != nil}, {"target", c.Target != nil}, {"upper", c.Upper != nil}, {"sd", c.SD != nil},
-			{"uncertainty", c.Uncertainty != nil}, {"spread_ratio", c.SpreadRatio != nil}, {"method", c.Method != ""},
+			{"lower", c.Lower != nil},
+			{"target", c.Target != nil},
+			{"upper", c.Upper != nil},
+			{"sd", c.SD != nil},
+			{"uncertainty", c.Uncertainty != nil},
+			{"spread_ratio", c.SpreadRatio != nil},
+			{"method", c.Method != ""},
 		} {
 			if x.stated {
 				v.fault(key+"."+x.key, "it for an attribute, which has no measured values", "it only for kind = \"numeric\"", "remove it")
