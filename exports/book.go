@@ -171,7 +171,7 @@ func (b book) pageSetup(f *excelize.File, s sheet) error {
 	if err := f.SetPageLayout(s.name, layout); err != nil {
 		return err
 	}
-	side, edge, low, foot := 0.55, 0.7, 0.9, 0.35 // two lines of the foot need their room at every scale
+	side, edge, low, foot := 0.55, 0.6, 0.8, 0.3 // two lines of the foot need their room at every scale
 	if err := f.SetPageMargins(s.name, &excelize.PageLayoutMarginsOptions{Left: &side, Right: &side, Top: &edge, Bottom: &low, Header: &foot, Footer: &foot}); err != nil {
 		return err
 	}

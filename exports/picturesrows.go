@@ -13,7 +13,7 @@ import (
 // package has to be signed and outside verifiers refuse packages of many parts.
 const (
 	plotWidth, plotHeight = 560, 232 // points of the figure
-	plotSize              = 0.86     // points on the sheet a point of the figure
+	plotSize              = 0.9      // points on the sheet a point of the figure
 	plotHead              = 30.0     // points
 	plotFoot              = 8.0
 	plotRows              = 14 // rows that a plot lies over
@@ -25,7 +25,7 @@ const (
 
 // picturesSheet shows the readings of each characteristic, both lots back to back about one axis.
 func picturesSheet(rec qa.Record) sheet {
-	s := sheet{name: SheetPictures, widths: []float64{13, 13, 13, 13, 13, 13, 13}}
+	s := sheet{name: SheetPictures, widths: []float64{16, 16, 16, 16, 16, 16, 16}}
 	s.add(text("Pictures", titleLook))
 	cs := rec.Result.Characteristics
 	note := "The readings in use of both lots back to back, the reference to the left: dots are readings, the band is the margin about the reference's mean, lines are means and limits."

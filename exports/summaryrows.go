@@ -15,7 +15,7 @@ const (
 	spineColumn     = 6   // 1-based; the picture covers this column and the next
 	spineRowHeight  = 30  // points; the picture's lines stand in the middle of these rows
 	summaryLineRoom = 135 // characters a line of running text
-	smallRoom       = 160
+	smallRoom       = 172
 )
 
 var summaryWidths = []float64{23, 18, 9, 12, 18, 15.5, 15.5, 16}
@@ -86,7 +86,11 @@ func lines(s string, room int) float64 {
 }
 
 func paragraph(s *sheet, t string, l look, room int, lineHeight float64) {
-	s.addTall(lines(t, room)*lineHeight+2, wide(t, l, summaryColumns))
+	n := 0.0
+	for _, line := range strings.Split(t, "\n") {
+		n += wordLines(line, room)
+	}
+	s.addTall(n*lineHeight+1, wide(t, l, summaryColumns))
 }
 
 func facingLots(s *sheet, rec qa.Record) {
