@@ -111,7 +111,30 @@ func entryOf(s desk.State, e register.Entry) register.Entry {
 }
 
 // keep keeps the act that led to the state. Without a register nothing is kept and nothing fails.
+// One whose database another window put aside is opened again first.
 func (w *window) keep(next desk.State) error {
+	err := w.keepHere(next)
+	if !errors.Is(err, register.ErrAside) {
+		return err
+	}
+	if err := w.followRegister(); err != nil {
+		return err
+	}
+	return w.keepHere(next)
+}
+
+// followRegister opens the register that another window recovered.
+func (w *window) followRegister() error {
+	r, _, err := register.Open(w.register.Dir(), now())
+	if err != nil {
+		return err
+	}
+	_ = w.register.Close() // it was put aside: what it says when it is closed tells nothing more
+	w.register = r
+	return nil
+}
+
+func (w *window) keepHere(next desk.State) error {
 	if w.register == nil || !next.Open {
 		return nil
 	}
@@ -186,6 +209,14 @@ func (w *window) mended(place string, err error) change {
 		return failed(place, err)
 	}
 	return func(s desk.State) desk.State {
+		if w.register.Aside() { // another window recovered it already
+			if err := w.followRegister(); err != nil {
+				return s.Failed(place, err)
+			}
+			w.entry = register.Entry{}
+			w.find()
+			return s.Failed("The register", errors.New("another window found it damaged and recovered it; open the record again"))
+		}
 		dir := w.register.Dir()
 		_ = w.register.Close() // it is broken: what it says when it is closed tells nothing more
 		r, damage, err := register.Recover(dir, now())

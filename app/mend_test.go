@@ -9,7 +9,9 @@ import (
 	"testing"
 	"time"
 
+	"lotpair/app/desk"
 	"lotpair/app/register"
+	"lotpair/qa"
 )
 
 // TestADamagedRegisterIsMendedWhereItShows spoils the pages of one record behind a register that opens well: opening the record
@@ -65,5 +67,42 @@ func noProblemButTheRegister(t *testing.T, w *window) {
 	t.Helper()
 	if !w.state.Open || w.entry.ID == 0 {
 		t.Errorf("after the recovery: got open %v, record %d, want an act kept", w.state.Open, w.entry.ID)
+	}
+}
+
+// TestTwoWindowsOnADamagedRegister recovers the register from one window: the other one, which has it open still, does its next
+// act in the recovered one, and neither loses an act.
+func TestTwoWindowsOnADamagedRegister(t *testing.T) {
+	dir, plan := t.TempDir(), demo(t)
+	a, b := openedWith(t, inRegister(t, dir), plan, 1280, 800), openedWith(t, inRegister(t, dir), plan, 1280, 800)
+	leave := func(w *window, i int) {
+		cells := w.view.pages[qa.Candidate].Readings
+		w.change("Leaving out", func(s desk.State) (desk.State, error) { return s.LeftOut(cells.At(i).Source, "burr", "tester", now()) })
+	}
+	leave(a, 3)
+	noProblem(t, a)
+	if err := a.register.Close(); err != nil {
+		t.Fatal(err)
+	}
+	r, damage, err := register.Recover(dir, now())
+	if err != nil || damage.LostActs != 0 {
+		t.Fatalf("recovered: got %+v, %v", damage, err)
+	}
+	a.register = r
+	t.Cleanup(func() { _ = r.Close() })
+	leave(b, 4) // it does not know of the first window's act
+	if !strings.Contains(b.state.Problem.Text, "another window") {
+		t.Errorf("second window: got %q, want it said that another window acted", b.state.Problem.Text)
+	}
+	b.apply(desk.State.Read)
+	b.leave()
+	b.openListed(0)
+	noProblem(t, b)
+	leave(b, 4)
+	noProblem(t, b)
+	t.Cleanup(func() { _ = b.register.Close() })
+	_, acts, err := r.Record(b.entry.ID)
+	if err != nil || len(acts) != 3 {
+		t.Errorf("acts: got %d, %v, want the opening and one of each window", len(acts), err)
 	}
 }

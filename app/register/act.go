@@ -47,6 +47,17 @@ func (r *Register) Keep(e Entry, a Act) (Entry, error) {
 }
 
 func (r *Register) keep(e Entry, a Act) (Entry, error) {
+	if r.Aside() {
+		return e, ErrAside
+	}
+	out, err := r.keepHere(e, a)
+	if err == nil && r.Aside() { // it went where nobody looks: it is done again in the recovered one
+		return e, ErrAside
+	}
+	return out, err
+}
+
+func (r *Register) keepHere(e Entry, a Act) (Entry, error) {
 	fail := func(err error) (Entry, error) { return e, fmt.Errorf("register, %s: %w", a.What, err) }
 	tx, err := r.db.Begin()
 	if err != nil {

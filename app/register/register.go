@@ -17,6 +17,8 @@ type Register struct {
 	dir  string
 	db   *sql.DB // every commit is on the disk before it returns
 	view *sql.DB // what may be lost with the power, not with the program
+
+	opened os.FileInfo // the database's file
 }
 
 // database is the file of the database in the register's folder.
@@ -44,7 +46,9 @@ func open(dir string) (*Register, error) {
 	var err error
 	if r.db, err = connect(filepath.Join(dir, database), "FULL"); err == nil {
 		if r.view, err = connect(filepath.Join(dir, database), "NORMAL"); err == nil {
-			err = r.prepare()
+			if err = r.prepare(); err == nil {
+				err = r.remember()
+			}
 		}
 	}
 	if err != nil {

@@ -240,6 +240,37 @@ func TestTwoPrograms(t *testing.T) {
 	}
 }
 
+// TestActsAfterAnotherWindowRecovered does acts from a window whose database another one put aside: nothing acknowledged is lost.
+func TestActsAfterAnotherWindowRecovered(t *testing.T) {
+	dir := t.TempDir()
+	a, b := opened(t, dir), opened(t, dir)
+	e, err := a.Add(entry(1), act("opened"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	if a.Aside() || b.Aside() {
+		t.Error("at first: got it put aside")
+	}
+	if err := a.Close(); err != nil {
+		t.Fatal(err)
+	}
+	recovered, damage, err := register.Recover(dir, noon)
+	if err != nil || damage.Acts != 1 {
+		t.Fatalf("recovered: got %+v, %v", damage, err)
+	}
+	t.Cleanup(func() { _ = recovered.Close() })
+	if _, err := b.Keep(e, act("left out D17")); !errors.Is(err, register.ErrAside) || !b.Aside() {
+		t.Fatalf("an act of the other window: got %v, want %v", err, register.ErrAside)
+	}
+	again := opened(t, dir)
+	if e, err = again.Keep(e, act("left out D17")); err != nil || e.Acts != 2 {
+		t.Fatalf("done again: got %+v, %v", e, err)
+	}
+	if _, acts, err := recovered.Record(e.ID); err != nil || len(acts) != 2 {
+		t.Errorf("seen by the first: got %d acts, %v, want both", len(acts), err)
+	}
+}
+
 // TestAnyOrder does random acts beside a plain list of what they must come to.
 func TestAnyOrder(t *testing.T) {
 	r := opened(t, t.TempDir())
