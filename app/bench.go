@@ -1,7 +1,11 @@
 package app
 
 import (
+	"strings"
+
 	"fyne.io/fyne/v2"
+
+	"lotpair/app/desk"
 )
 
 // benchHead is where the bench's picture begins: below its name and the ways of looking at it, which take a line each where
@@ -104,7 +108,8 @@ func (w *window) wrapped(width float32) []paragraph {
 }
 
 func (w *window) newSentences() *scrolled {
-	return newScrolled(&sheet{
+	var out *scrolled
+	out = newScrolled(&sheet{
 		palette: w.palette,
 		height: func(width float32) float32 {
 			h := float32(0)
@@ -123,6 +128,44 @@ func (w *window) newSentences() *scrolled {
 				p.lines(g.lines, margin, y+g.above+g.font.size-1, g.leading, g.font, c)
 				y += g.above + g.leading*float32(len(g.lines))
 			}
+			if out.content.focused {
+				p.frame(margin-10, 1, size.Width-2*margin+20, max(size.Height-2, 0), 1, p.Text)
+			}
+		},
+		tapped: func(at fyne.Position) { w.helpWith(w.paragraphAt(out.content.width, at.Y)) },
+		key: func(k fyne.KeyName) {
+			switch k {
+			case fyne.KeyReturn, fyne.KeyEnter, fyne.KeySpace:
+				w.helpWith(w.paragraphAt(out.content.width, -1))
+			default:
+				out.content.scrollKey(k)
+			}
 		},
 	})
+	return out
+}
+
+// paragraphAt is the paragraph at a height; all of them above the first.
+func (w *window) paragraphAt(width, at float32) string {
+	var all []string
+	y := float32(0)
+	for _, g := range w.paragraphs(width) {
+		y += g.above + g.leading*float32(len(g.lines))
+		text := strings.Join(g.lines, " ")
+		if at >= 0 && at < y {
+			return text
+		}
+		all = append(all, text)
+	}
+	if at >= 0 {
+		return ""
+	}
+	return strings.TrimSpace(strings.Join(all, "\n"))
+}
+
+// helpWith shows a text with what its words and numbers mean, to be read and copied.
+func (w *window) helpWith(text string) {
+	if text != "" && !w.busy() {
+		w.showText("In plain words", desk.Help(text))
+	}
 }

@@ -359,6 +359,139 @@ func TestCopies(t *testing.T) {
 	}
 }
 
+// TestEverySentenceIsExplained clicks on each sentence and presses return on all of them.
+func TestEverySentenceIsExplained(t *testing.T) {
+	w := opened(t, demo(t), 1280, 800)
+	y := float32(0)
+	for i, g := range w.paragraphs(w.sentences.content.width) {
+		w.sentences.content.Tapped(&fyne.PointEvent{Position: fyne.NewPos(60, y+g.above+2)})
+		if w.dialog == nil {
+			t.Errorf("sentence %d %q: got no help", i, g.lines)
+		}
+		if i == 1 {
+			shotOf(t, "plain-words", w.win.Canvas().Capture())
+		}
+		w.leaveDialog()
+		y += g.above + g.leading*float32(len(g.lines))
+	}
+	w.sentences.content.TypedKey(&fyne.KeyEvent{Name: fyne.KeyReturn})
+	if w.dialog == nil {
+		t.Error("return: got no help")
+	}
+	w.leaveDialog()
+	for _, c := range []struct{ text, word string }{
+		{"Ppk falls from 1.88 to 0.58; expected outside the limits: 4.0 %", "Pp, Ppk"},
+		{"The difference is detectable: two-sided p < 0.0001, Welch, 66.4 degrees of freedom.", "degrees of freedom"},
+		{"The interval crosses the margin.", "margin"},
+	} {
+		found := false
+		for _, x := range desk.WordsIn(c.text) {
+			found = found || x.Word == c.word
+		}
+		if !found {
+			t.Errorf("%q: got no %q among %v", c.text, c.word, desk.WordsIn(c.text))
+		}
+	}
+	if got := desk.WordsIn("The lots are mapped."); len(got) != 1 || got[0].Word != "lot" {
+		t.Errorf("got %v, want the lot alone", got)
+	}
+}
+
+// TestAveragedReadingIsLeftOut leaves out a reading that is the mean of repeats, finds it again after a kill, and puts it back.
+func TestAveragedReadingIsLeftOut(t *testing.T) {
+	folder, dir := t.TempDir(), t.TempDir()
+	text := "Lot,Part,Bore [mm]\n"
+	for i := range 24 {
+		text += []string{"A", "B"}[i/12] + "," + qa.Plain(float64(i%12/2+1)) + ",40.0" + qa.Plain(float64(10+i*7%13)) + "\n"
+	}
+	file := filepath.Join(dir, "repeats.csv")
+	if err := os.WriteFile(file, []byte(text), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	w := openedWith(t, inRegister(t, folder), file, 1280, 800)
+	noProblem(t, w)
+	w.states(w.state.Playing(2, importers.PlaysRepeated))
+	noProblem(t, w)
+	w.takeHeadings()
+	w.chooseKind(desk.InTheUnit)
+	typing(w, "margin", "0.05")
+	w.sealDraft()
+	w.takeKept()
+	noProblem(t, w)
+	leave := w.view.pages[qa.Candidate].Readings.At(2)
+	if !strings.Contains(leave.Source.Cell, ", ") {
+		t.Fatalf("reading: got %+v, want the mean of two cells", leave)
+	}
+	w.change("Leaving out", func(s desk.State) (desk.State, error) { return s.LeftOut(leave.Source, "burr", "tester", now()) })
+	w.compare()
+	noProblem(t, w)
+	n := w.state.Record.Result.Characteristics[0].Candidate.N
+	id := w.entry.ID
+	w = openedWith(t, inRegister(t, folder), "", 1280, 800)
+	w.reopen(id)
+	noProblem(t, w)
+	if got := w.state.Record.Result.Characteristics[0].Candidate; got.N != n || got.N != 5 {
+		t.Errorf("opened again: got n %d, want %d", got.N, n)
+	}
+	w.change("Putting back", func(s desk.State) (desk.State, error) { return s.PutBack(leave.Source, "tester", now()) })
+	w.compare()
+	noProblem(t, w)
+	if got := w.state.Record.Result.Characteristics[0].Candidate.N; got != 6 {
+		t.Errorf("put back: got n %d, want 6", got)
+	}
+}
+
+// TestColumnsFarToTheRight walks through a sheet of many columns by its buttons and by its keys.
+func TestColumnsFarToTheRight(t *testing.T) {
+	file := filepath.Join(t.TempDir(), "wide.csv")
+	text := "Lot,Part"
+	for c := range 200 {
+		text += ",Hole " + string(rune('A'+c%26)) + qa.Plain(float64(c))
+	}
+	for r := range 12 {
+		text += "\n" + []string{"A", "B"}[r/6] + "," + qa.Plain(float64(r%6+1))
+		for c := range 200 {
+			text += "," + qa.Plain(float64(10+(r*7+c)%9)+0.5)
+		}
+	}
+	if err := os.WriteFile(file, []byte(text+"\n"), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	for _, size := range []fyne.Size{{Width: 1280, Height: 800}, {Width: 1024, Height: 700}} {
+		w := opened(t, file, size.Width, size.Height)
+		noProblem(t, w)
+		w.act.unmask.act()
+		for _, more := w.sheetColumns(size.Width * 0.625); more > 0; _, more = w.sheetColumns(size.Width * 0.625) {
+			before := w.sheetFrom
+			w.act.columnsRight.act()
+			if w.sheetFrom == before {
+				t.Fatal("the button: got no further")
+			}
+		}
+		columns, _ := w.sheetColumns(size.Width * 0.625)
+		if last := columns[len(columns)-1].at; last != 201 {
+			t.Errorf("last column: got %d, want 201", last)
+		}
+		shotOf(t, "wide-"+qa.Plain(float64(size.Width)), w.win.Canvas().Capture())
+		for _, x := range crowded(w) {
+			t.Errorf("at %v: %s", size.Width, x)
+		}
+		w.states(w.state.Playing(202, importers.PlaysNothing))
+		noProblem(t, w)
+		if got := w.sheetSaid.Columns[201].Plays; got != importers.PlaysNothing {
+			t.Errorf("last column: got %s", got)
+		}
+		w.sheetRows.content.FocusGained()
+		for range 250 {
+			w.sheetRows.content.TypedKey(&fyne.KeyEvent{Name: fyne.KeyLeft})
+		}
+		w.sheetRows.content.TypedKey(&fyne.KeyEvent{Name: fyne.KeyEnd})
+		if w.sheetFrom != 0 || w.sheetCursor != 12 {
+			t.Errorf("keys: got column %d, row %d", w.sheetFrom, w.sheetCursor)
+		}
+	}
+}
+
 // TestParticularsAfterTheComparison states them without another attempt, and not what would change the verdict.
 func TestParticularsAfterTheComparison(t *testing.T) {
 	w := openedWith(t, inRegister(t, t.TempDir()), demo(t), 1280, 800)

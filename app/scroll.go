@@ -120,8 +120,13 @@ func (s *sheet) TypedKey(e *fyne.KeyEvent) {
 		s.key(e.Name)
 		return
 	}
+	s.scrollKey(e.Name)
+}
+
+// scrollKey scrolls by the keys that scroll.
+func (s *sheet) scrollKey(k fyne.KeyName) {
 	const step = 60
-	switch e.Name {
+	switch k {
 	case fyne.KeyDown:
 		s.reach(step)
 	case fyne.KeyUp:

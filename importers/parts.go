@@ -89,14 +89,14 @@ func (t *table) columnPart(c column) string {
 		return PlaysLot
 	case c.col == t.part && t.reading.PartColumn != "":
 		return PlaysRepeated
-	case c.col == t.part:
-		return PlaysPart
 	case c.col == t.order:
 		return PlaysOrder
 	case c.col == t.group:
 		return PlaysGroup
-	case c.col == t.pair:
+	case c.col == t.pair: // its ids may be the parts' too
 		return PlaysPair
+	case c.col == t.part:
+		return PlaysPart
 	case slices.Contains(t.measured, c.col):
 		return PlaysCharacteristic
 	case headingMeans(c.heading) == takerHeading && strings.ContainsAny(strings.ToLower(c.heading[:1]), "gm"):

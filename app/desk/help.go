@@ -1,7 +1,10 @@
 package desk
 
 import (
+	"strings"
 	"time"
+	"unicode"
+	"unicode/utf8"
 
 	"lotpair/qa"
 )
@@ -49,14 +52,47 @@ var Words = []Word{
 	{"supersedes", "stands in the place of an earlier signed record, which is named with its digest and the reason", "superseded"},
 }
 
-// Meaning is what a word of the window means; false where it is none.
-func Meaning(word string) (Word, bool) {
+// WordsIn are the words that stand in a text and have a meaning to be said.
+func WordsIn(text string) []Word {
+	text = strings.ToLower(text)
+	var out []Word
 	for _, w := range Words {
-		if w.Word == word {
-			return w, true
+		for _, one := range strings.Split(strings.ToLower(w.Word), ", ") {
+			if holdsWord(text, one) {
+				out = append(out, w)
+				break
+			}
 		}
 	}
-	return Word{}, false
+	return out
+}
+
+// holdsWord says whether a text holds a word by itself, also in the plural.
+func holdsWord(text, word string) bool {
+	for from := 0; ; {
+		at := strings.Index(text[from:], word)
+		if at < 0 {
+			return false
+		}
+		at += from
+		end := at + len(word)
+		before, _ := utf8.DecodeLastRuneInString(text[:at])
+		rest := strings.TrimPrefix(text[end:], "s")
+		after, _ := utf8.DecodeRuneInString(rest)
+		if !unicode.IsLetter(before) && !unicode.IsLetter(after) {
+			return true
+		}
+		from = end
+	}
+}
+
+// Help is a text with what its words mean, a paragraph each.
+func Help(text string) []string {
+	out := []string{text}
+	for _, w := range WordsIn(text) {
+		out = append(out, w.Word+": "+w.Means+". "+w.Term+".")
+	}
+	return out
 }
 
 // Keys are what the keys do.
@@ -65,6 +101,7 @@ var Keys = [][]string{
 	{"Space, Return", "press the control that has the keys"},
 	{"Up, Down, Page, Home, End", "along the spine, the list, the readings and the rows of a file"},
 	{"Left, Right", "in a file: columns further left and right"},
+	{"Return on the sentences", "what they say with what their words mean, to be copied; a click on one shows that one"},
 	{"1 to 5", "the ways of looking at a characteristic"},
 	{"Return on a reading", "leave it out with a reason, or put it back"},
 	{"Ctrl+Return", "the one next thing, as the foot names it"},

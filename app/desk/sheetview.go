@@ -230,6 +230,9 @@ func (x Sheet) sayTaken(v *SheetView, p qa.Plan) {
 			n = l.Rows - rows[""]
 		}
 		t := TakenView{Lot: l.Lot, Text: qa.Count(n, "part", "parts") + ", " + qa.Count(readings[l.Lot], "reading", "readings")}
+		if x.Stated.Reading.PartColumn != "" {
+			t.Text = qa.Count(n, "row", "rows") + ", " + qa.Count(readings[l.Lot], "reading", "readings") + ", those of a part averaged"
+		}
 		switch l.Lot {
 		case ref:
 			t.Side = qa.Reference
