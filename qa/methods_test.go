@@ -335,3 +335,31 @@ func TestEachExclusion(t *testing.T) {
 		t.Errorf("warnings: got %v, want %s", got.Warnings, qa.WarnFlips)
 	}
 }
+
+// TestPutBackIntoMean leaves one of three repeat readings of a part out: put back it makes the part's mean that of all three, and
+// no part is counted twice.
+func TestPutBackIntoMean(t *testing.T) {
+	ref, cand := series("x", 3, 10.000, 10.002, 10.004, 10.006), series("x", 3, 10.001, 10.003, 10.005, 10.004)
+	cand.Readings[1].Source.Cell = "C3, C4"
+	out := cand.Readings[1]
+	out.Value, out.LeftOut, out.Source.Cell = 10.009, "slipped", "C5"
+	cand.Readings = append(cand.Readings, out)
+	cand.Rows += 2
+	cand.Repeats = 1
+	whole := series("x", 3, 10.001, 10.005, 10.005, 10.004) // (2 x 10.003 + 10.009) / 3
+	ch := qa.Characteristic{Name: "x"}
+	p := plan(qa.Equivalence, absolute(0.010))
+	want := one(t, p, lots(ch, ref, whole))
+	got := one(t, p, lots(ch, ref, cand))
+	found := false
+	for _, s := range got.Sensitivity {
+		if s.Method == "exclusions-put-back" {
+			found = true
+			near(t, "estimate", s.Estimate, *want.Difference.Estimate, 1e-9)
+			near(t, "upper end", s.Upper, *want.Equivalence.Upper, 1e-9)
+		}
+	}
+	if !found {
+		t.Error("got no row exclusions-put-back")
+	}
+}

@@ -2,7 +2,6 @@ package qa
 
 import (
 	"fmt"
-	"slices"
 	"strings"
 
 	"lotpair/qa/stats"
@@ -118,64 +117,6 @@ func (c *comparison) again(method string, e stats.Estimate, err error) {
 		return
 	}
 	c.interval(method, e.Value, e.Interval(1-2*c.Alpha), nil)
-}
-
-// putBack compares with every reading that was left out put back, and with each of them alone: the effect of every exclusion.
-func (c *comparison) putBack(ref, cand Series) {
-	back := func(s Series) (Series, int) {
-		if s.leftOut() == 0 {
-			return s, 0
-		}
-		n := 0
-		out := s
-		out.Readings = slices.Clone(s.Readings)
-		for i := range out.Readings {
-			if !out.Readings[i].Used() {
-				out.Readings[i].LeftOut = ""
-				n++
-			}
-		}
-		return out, n
-	}
-	x, a := back(ref)
-	y, b := back(cand)
-	if a+b == 0 {
-		return
-	}
-	c.variant("exclusions-put-back", x, y)
-	if a+b == 1 || a+b > mostSingleExclusions {
-		return
-	}
-	for i, r := range ref.Readings {
-		if !r.Used() {
-			c.single(r, ref.withBack(i), cand)
-		}
-	}
-	for i, r := range cand.Readings {
-		if !r.Used() {
-			c.single(r, ref, cand.withBack(i))
-		}
-	}
-}
-
-// single compares with one reading put back and names its cell.
-func (c *comparison) single(r Reading, ref, cand Series) {
-	before := len(c.Sensitivity)
-	c.variant("exclusion-put-back", ref, cand)
-	for i := before; i < len(c.Sensitivity); i++ {
-		c.Sensitivity[i].Cell = r.Source.Place()
-	}
-}
-
-// mostSingleExclusions is how many readings left out are put back one by one; with more the block would hide what it shows.
-const mostSingleExclusions = 20
-
-// withBack is the series with one reading put back that was left out.
-func (s Series) withBack(i int) Series {
-	out := s
-	out.Readings = slices.Clone(s.Readings)
-	out.Readings[i].LeftOut = ""
-	return out
 }
 
 // withoutOutlying compares without the readings that the generalized ESD test calls outlying. It shows how much the verdict
