@@ -155,7 +155,7 @@ func cellCases() []layoutCase {
 	like := withCandidate3("=HYPERLINK(\"http://127.0.0.1\")")
 	like[16][2] = "+12.019"
 	add("n44", "texts that look like formulas", one(like), plain, unread)
-	return append(append(cases, textCases()...), otherCases()...)
+	return append(append(append(cases, textCases()...), otherCases()...), footCases()...)
 }
 
 // textCases are the variants of text files of N27, all with the same readings.

@@ -55,15 +55,37 @@ func swapped(a, b string) bool {
 	return false
 }
 
-// spelling is a lot's name without case, white space and the kinds of hyphens: names that agree in it may be one lot.
+// spelling is a lot's name without case, white space and marks but those between two digits, without the zeros that a number
+// has or lacks, and with one character for those that look alike: names that agree in it may be one lot.
 func spelling(name string) string {
-	return strings.Map(func(r rune) rune {
+	var out []rune
+	s := []rune(strings.ToLower(joined(name)))
+	for i, r := range s {
 		switch r {
-		case '\u2010', '\u2011', '\u2012', '\u2013', '\u2014', '\u2212', '\u00ad', '_':
-			return '-'
-		case ' ', '\t', '\n', '\r', '\u00a0', '\u202f', '\u2009', '\u200b', '\ufeff', '\u2060':
-			return -1
+		case ' ', '\t', '\n', '\r', '\u00a0', '\u202f', '\u2009', '\u200b', '\ufeff', '\u2060', '\u00ad':
+			continue
+		case '-', '\u2010', '\u2011', '\u2012', '\u2013', '\u2014', '\u2212', '_', '.', '/', '#':
+			if i == 0 || i == len(s)-1 || !digit(s[i-1]) || !digit(s[i+1]) {
+				continue
+			}
+			if r != '.' {
+				r = '-'
+			}
+		case 'o':
+			r = '0'
+		case 'i', 'l':
+			r = '1'
 		}
-		return r
-	}, strings.ToLower(name))
+		out = append(out, r)
+	}
+	text := string(out)
+	if whole, zeros, ok := strings.Cut(text, "."); ok && strings.Trim(whole, "0123456789") == "" && strings.Trim(zeros, "0") == "" {
+		text = whole // 118.0
+	}
+	if strings.Trim(text, "0123456789") == "" && strings.Trim(text, "0") != "" {
+		text = strings.TrimLeft(text, "0")
+	}
+	return text
 }
+
+func digit(r rune) bool { return r >= '0' && r <= '9' }

@@ -3,8 +3,6 @@ package importers
 import (
 	"slices"
 	"strconv"
-	"strings"
-	"unicode/utf8"
 
 	"lotpair/importers/cells"
 	"lotpair/qa"
@@ -50,6 +48,7 @@ func (t *table) sortRows() error {
 	}
 	if t.layout != ColumnPerLot && t.tidy == nil {
 		t.detectPart()
+		t.warnIDless()
 	}
 	return nil
 }
@@ -109,96 +108,6 @@ func (t *table) sameHeading(r cells.Row) bool {
 		}
 	}
 	return true
-}
-
-// label is what a row's label makes of it, and whether the label is short: such a one may be a part's id just as well.
-// Labels stand in the lot column, in the part column, or in the first cell of a row without a lot.
-func (t *table) label(r cells.Row, parts []int) (means string, short bool) {
-	at := make([]cells.Cell, 0, 3)
-	lot := ""
-	if t.lot > 0 {
-		lot = filledText(r.At(t.lot))
-		if slices.ContainsFunc(t.hints.lots, func(l string) bool { return qa.JoinSpace(l) == lot }) {
-			lot = "\x00"
-		} else {
-			at = append(at, r.At(t.lot))
-		}
-	}
-	for _, col := range parts {
-		at = append(at, r.At(col))
-	}
-	if lot == "" {
-		for _, c := range r.Cells {
-			if filledText(c) != "" {
-				at = append(at, c)
-				break
-			}
-		}
-	}
-	for _, c := range at {
-		if c.Kind != cells.Text {
-			continue
-		}
-		w := word(c.Text)
-		if m := labelWords[w]; m != "" && m != unitLabel {
-			return m, utf8.RuneCountInString(w) <= 2 || w == "max" // also a person's name
-		}
-		if first, _, ok := strings.Cut(w, " "); ok && labelWords[first] == summaryLabel && utf8.RuneCountInString(first) > 3 && lot == "" {
-			return summaryLabel, false // "Mean of lot"
-		}
-	}
-	return "", false
-}
-
-// takeLabelled takes the limit and summary rows out. A short label counts only beside a long one in the same block of rows.
-func (t *table) takeLabelled(data []row) []row {
-	type labelled struct {
-		means string
-		short bool
-	}
-	var parts []int // columns
-	for _, c := range t.columns {
-		if c.col == t.part || t.part == 0 && c.col != t.lot && headingMeans(c.heading) == partHeading {
-			parts = append(parts, c.col)
-		}
-	}
-	labels := make([]labelled, len(data))
-	for i, d := range data {
-		labels[i].means, labels[i].short = t.label(t.sheet.Rows[d.at], parts)
-	}
-	for i := 0; i < len(data); {
-		j, long := i, false
-		for ; j < len(data) && labels[j].means != ""; j++ {
-			long = long || !labels[j].short
-		}
-		for ; i < j; i++ {
-			if !long {
-				labels[i].means = ""
-			}
-		}
-		i = j + 1
-	}
-	if !slices.ContainsFunc(labels, func(l labelled) bool { return l.means != "" }) {
-		return data
-	}
-	var rest []row
-	var summaries []string
-	for i, d := range data {
-		r := t.sheet.Rows[d.at]
-		switch labels[i].means {
-		case "":
-			rest = append(rest, d)
-		case summaryLabel:
-			t.summary = append(t.summary, d.at)
-			summaries = append(summaries, strconv.Itoa(r.Number))
-		default:
-			t.takeLimits(d.at, labels[i].means)
-		}
-	}
-	if len(summaries) > 0 {
-		t.say("%s not taken as readings: %s.", qa.Count(len(summaries), "summary row", "summary rows"), join2(summaries))
-	}
-	return rest
 }
 
 // fillLots gives each row its lot, and tells unlabelled foot rows and notes apart.

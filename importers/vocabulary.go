@@ -46,9 +46,9 @@ var labelWords = words(
 	means(unitLabel, "unit|units|einheit|einheiten|uom|unit of measure"),
 	means(nominalLabel, "nominal|nominal value|nominal size|nom|target|target value|nennmaß|nennmass|nennwert|sollwert|sollmaß|sollmass|soll"),
 	means(upperLabel, "usl|upper limit|upper spec|upper spec limit|upper specification limit|upper specification|max limit|maximum limit|"+
-		"limits upper|limits max|limits +|spec limits upper|spec limits max|specification upper|specification max|specification limits upper|specification limits max|osg|otg|oberer grenzwert|obere grenze|obere spezifikationsgrenze|höchstmaß|höchstmass"),
+		"limits upper|limits max|limits +|spec limits upper|spec limits max|specification upper|specification max|specification limits upper|specification limits max|osg|otg|ogw|obergrenze|obergrenze ogw|oberer grenzwert|obere grenze|obere spezifikationsgrenze|höchstmaß|höchstmass"),
 	means(lowerLabel, "lsl|lower limit|lower spec|lower spec limit|lower specification limit|lower specification|min limit|minimum limit|"+
-		"limits lower|limits min|limits -|spec limits lower|spec limits min|specification lower|specification min|specification limits lower|specification limits min|usg|utg|unterer grenzwert|untere grenze|untere spezifikationsgrenze|mindestmaß|mindestmass"),
+		"limits lower|limits min|limits -|spec limits lower|spec limits min|specification lower|specification min|specification limits lower|specification limits min|usg|utg|ugw|untergrenze|untergrenze ugw|unterer grenzwert|untere grenze|untere spezifikationsgrenze|mindestmaß|mindestmass"),
 	means(upperTol, "upper tol|upper tolerance|plus|plus tol|plus tolerance|tol plus|tolerance plus|tol+|+tol|tol +|+ tol|tol. +|tol(+)|tol (+)|tol. (+)|tolerance +|+ tolerance|"+
 		"upper dev|upper deviation|upper limit deviation|dev +|+ dev|dev+|+dev|upper allowance|oberes abmaß|oberes abmass|oberes grenzabmaß|oberes grenzabmass|obere toleranz|toleranz +|+ toleranz|"+
 		"obere abweichung|toleranz oben|plustoleranz|tolerance upper|tolerance max|upper tolerances|tolerances +"),
@@ -59,7 +59,11 @@ var labelWords = words(
 	means(summaryLabel, "mean|average|avg|mean value|arithmetic mean|grand mean|x-bar|xbar|x̄|x̅|s|sd|sigma|σ|std|stdev|std dev|std. dev|st. dev|st dev|"+
 		"standard deviation|stdabw|std.-abw|standardabweichung|streuung|var|variance|varianz|min|minimum|max|maximum|range|r|spannweite|median|mode|"+
 		"sum|total|summe|n|count|anzahl|no of values|number of values|cp|cpk|pp|ppk|cm|cmk|cv|rsd|se|sem|q1|q3|ucl|lcl|oeg|ueg|"+
-		"mittelwert|mittel|mw|durchschnitt|ø|3 sigma|6 sigma|+3s|-3s"),
+		"mittelwert|mittel|mw|durchschnitt|ø|3 sigma|6 sigma|+3s|-3s|3s|6s|stabw|std abw|stand.-abw|kleinster wert|größter wert|kleinstwert|größtwert|mittelwert x̄|x quer|x-quer|"+
+		"moyenne|moy|écart-type|ecart-type|écart type|ecart type|étendue|etendue|mini|maxi|médiane|mediane|promedio|media|mediana|moda|mínimo|minimo|máximo|maximo|massimo|"+
+		"desviación estándar|desviacion estandar|desv. est|desv. estándar|desv.est|desvest|desviación típica|rango|varianza|suma|somma|deviazione standard|dev. st|dev.st|dev. std|"+
+		"gemiddelde|standaardafwijking|standaarddeviatie|medelvärde|medel|standardavvikelse|średnia|odchylenie standardowe|průměr|směrodatná odchylka|média|desvio padrão|"+
+		"平均|平均値|平均值|均值|最大|最大値|最大值|最小|最小値|最小值|標準偏差|标准偏差|标准差|範囲|范围|极差|中央値|中位数|合計|合计"),
 )
 
 // unitWords are the units that are known without brackets.
