@@ -93,8 +93,8 @@ func (f *facing) span(ref, cand []point) (low, high float64) {
 	low, high = math.Inf(1), math.Inf(-1)
 	for _, s := range [][]point{ref, cand} {
 		for _, p := range s {
-			if !p.leftOut {
-				low, high = math.Min(low, p.value), math.Max(high, p.value)
+			if !p.leftOut() {
+				low, high = math.Min(low, p.Value), math.Max(high, p.Value)
 			}
 		}
 	}

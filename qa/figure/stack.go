@@ -10,18 +10,16 @@ import (
 	"lotpair/qa"
 )
 
-// point is a reading as the plot needs it.
-type point struct {
-	value   float64
-	leftOut bool
-	of      *qa.Reading
-}
+// point is a reading as the plot needs it: no copy, because there may be a million.
+type point struct{ *qa.Reading }
+
+func (p point) leftOut() bool { return p.LeftOut != "" }
 
 // points are a lot's readings in the order of the file.
 func points(s qa.Series) []point {
 	out := make([]point, 0, len(s.Readings))
-	for i, r := range s.Readings {
-		out = append(out, point{r.Value, !r.Used(), &s.Readings[i]})
+	for i := range s.Readings {
+		out = append(out, point{&s.Readings[i]})
 	}
 	return out
 }
@@ -30,11 +28,11 @@ func points(s qa.Series) []point {
 func byValue(p []point) {
 	slices.SortStableFunc(p, func(a, b point) int {
 		switch {
-		case a.value != b.value:
-			return cmp.Compare(a.value, b.value)
-		case a.leftOut == b.leftOut:
+		case a.Value != b.Value:
+			return cmp.Compare(a.Value, b.Value)
+		case a.leftOut() == b.leftOut():
 			return 0
-		case a.leftOut:
+		case a.leftOut():
 			return 1
 		}
 		return -1
@@ -70,7 +68,7 @@ func (f *facing) stacks(ref, cand []point) [2]float64 {
 
 // visible drops the readings that lie outside the picture, which only those left out can, and notes how many.
 func (f *facing) visible(side string, all []point) []point {
-	outside := func(p point) bool { return !f.inside(p.value) }
+	outside := func(p point) bool { return !f.inside(p.Value) }
 	if !slices.ContainsFunc(all, outside) {
 		return all // a million readings are not copied
 	}
@@ -102,7 +100,7 @@ func (f *facing) stacked(ps []point, height float64) []stack {
 func (f *facing) ruled(ps []point, height float64) []stack {
 	var out []stack
 	for _, p := range ps {
-		y := f.bottom - (math.Floor((f.bottom-f.y(p.value))/height)+0.5)*height
+		y := f.bottom - (math.Floor((f.bottom-f.y(p.Value))/height)+0.5)*height
 		if n := len(out); n == 0 || out[n-1].y != y {
 			out = append(out, stack{y: y})
 		}
@@ -110,7 +108,7 @@ func (f *facing) ruled(ps []point, height float64) []stack {
 		last.all = append(last.all, p)
 	}
 	for _, s := range out {
-		sort.SliceStable(s.all, func(a, b int) bool { return !s.all[a].leftOut && s.all[b].leftOut })
+		sort.SliceStable(s.all, func(a, b int) bool { return !s.all[a].leftOut() && s.all[b].leftOut() })
 	}
 	return out
 }
@@ -118,15 +116,15 @@ func (f *facing) ruled(ps []point, height float64) []stack {
 func (f *facing) gathered(ps []point, height float64) []stack {
 	var out []stack
 	for i := 0; i < len(ps); {
-		first := f.y(ps[i].value)
+		first := f.y(ps[i].Value)
 		s := stack{}
 		sum := 0.0
-		for ; i < len(ps) && first-f.y(ps[i].value) < height*0.85; i++ {
+		for ; i < len(ps) && first-f.y(ps[i].Value) < height*0.85; i++ {
 			s.all = append(s.all, ps[i])
-			sum += f.y(ps[i].value)
+			sum += f.y(ps[i].Value)
 		}
 		s.y = sum / float64(len(s.all))
-		sort.SliceStable(s.all, func(a, b int) bool { return !s.all[a].leftOut && s.all[b].leftOut })
+		sort.SliceStable(s.all, func(a, b int) bool { return !s.all[a].leftOut() && s.all[b].leftOut() })
 		out = append(out, s)
 	}
 	return out
@@ -146,11 +144,11 @@ func (f *facing) dots(side qa.Side, ss []stack, radius, pitch float64) float64 {
 	for _, s := range ss {
 		for i, p := range s.all {
 			away := gap + float64(i)*pitch
-			m := Mark{Kind: Dot, Name: "reference reading", Role: Reference, X: f.axis - away, Y: s.y, Size: radius, Reading: p.of}
+			m := Mark{Kind: Dot, Name: "reference reading", Role: Reference, X: f.axis - away, Y: s.y, Size: radius, Reading: p.Reading}
 			if side == qa.Candidate {
-				m = Mark{Kind: Diamond, Name: "candidate reading", Role: Candidate, X: f.axis + away, Y: s.y, Size: radius + 0.8, Open: true, Reading: p.of}
+				m = Mark{Kind: Diamond, Name: "candidate reading", Role: Candidate, X: f.axis + away, Y: s.y, Size: radius + 0.8, Open: true, Reading: p.Reading}
 			}
-			if p.leftOut {
+			if p.leftOut() {
 				m.Name, m.Role, m.Open = string(side)+" left out", Muted, true
 			}
 			f.add(m)
@@ -167,8 +165,8 @@ func (f *facing) bars(ref, cand []point, room float64) [2]float64 {
 	count := func(ps []point) []int {
 		k := make([]int, n)
 		for _, p := range ps {
-			if !p.leftOut {
-				k[min(n-1, int((f.y(p.value)-head)/tall))]++
+			if !p.leftOut() {
+				k[min(n-1, int((f.y(p.Value)-head)/tall))]++
 			}
 		}
 		return k
