@@ -106,7 +106,7 @@ func (w *window) paintDraft(p *pen, size fyne.Size) {
 	x = p.text(fontBody.middle(v.Reference, room/4)+" ", x, 54, fontBody, p.Text)
 	line := float32(54)
 	if x+fontBody.width(before)+fontStrong.width(v.Claim)+fontBody.width(after)+4 > right {
-		x, line = inset, 74
+		x, line = inset, 72
 	}
 	x = p.text(before, x, line, fontBody, p.Text)
 	if v.Sealed {

@@ -7,7 +7,7 @@ func (w *window) paintFoot(p *pen, size fyne.Size) {
 	v := w.view.foot
 	p.across(0, size.Width, 0.6, 1.2, p.Text)
 	right := size.Width - margin
-	for _, b := range []*button{w.act.seal, w.act.take, w.act.compare, w.act.sign, w.act.export, w.act.amend, w.act.redo, w.act.undo, w.act.signatures} {
+	for _, b := range []*button{w.act.seal, w.act.take, w.act.compare, w.act.sign, w.act.export, w.act.savePlan, w.act.amend, w.act.redo, w.act.undo, w.act.signatures} {
 		if b.label == "" {
 			continue
 		}

@@ -70,6 +70,18 @@ func (w *window) askSavePlan() {
 	w.askFile("Save as plan", "Save", w.besides(".toml"), "a file name that ends in .toml", w.savePlan)
 }
 
+// askSaveStart asks where a plan to start from goes, as the file that is looked at gives it.
+func (w *window) askSaveStart() {
+	x := w.state.Sheet
+	if w.busy() || x == nil {
+		return
+	}
+	name := strings.TrimSuffix(x.File.Name, filepath.Ext(x.File.Name)) + ".toml"
+	w.askFile("Save a plan to start from", "Save", w.home(name), "a file name that ends in .toml", func(to string) {
+		w.saveBytes("Plan", to, func() ([]byte, error) { return []byte(x.Plan()), nil })
+	})
+}
+
 // besides is a free name beside the record, with another ending.
 func (w *window) besides(ending string) string {
 	name := w.proposed()

@@ -147,7 +147,7 @@ func (w *window) sheetButtons() []*button {
 		b.takeHeadings.kind = main
 		out = []*button{b.takeHeadings}
 	}
-	return append(out, b.leaveSheet)
+	return append(out, b.leaveSheet, b.saveStart)
 }
 
 // partButton changes the part of a column.

@@ -85,6 +85,7 @@ type buttons struct {
 	sheet, decimal, unmask, leaveSheet    *button
 	layout, nonDetect                     *button
 	columnsLeft, columnsRight             *button
+	savePlan, saveStart                   *button
 	takeHeadings, takeReadings            *button
 	openPlan, openWorkbook, openTheSample *button
 	bringLeft, bringRight                 *button // the places where a file is dropped
@@ -188,6 +189,8 @@ func (w *window) makeButtons() {
 	b.more = newButton(w.palette, "More", quiet, w.offerMore)
 	b.layout = newButton(w.palette, "", strong, w.offerLayouts)
 	b.nonDetect = newButton(w.palette, "", strong, w.offerNonDetects)
+	b.savePlan = newButton(w.palette, "", plain, w.askSavePlan)
+	b.saveStart = newButton(w.palette, "Save as plan", plain, w.askSaveStart)
 	b.columnsLeft = newButton(w.palette, "‹", plain, func() { w.moveColumns(-4) })
 	b.columnsRight = newButton(w.palette, "›", plain, func() { w.moveColumns(4) })
 	b.characteristic = newButton(w.palette, "Add a characteristic", quiet, func() { w.askCharacteristic(len(w.state.Record.Plan.Characteristics)) })
@@ -337,6 +340,7 @@ func (w *window) show() {
 		b.looks[l.Look].chosen = l.Chosen
 	}
 	b.seal.label, b.take.label, b.amend.label = w.view.foot.Seal, w.view.foot.Take, w.view.foot.Amend
+	b.savePlan.label = w.view.foot.SavePlan
 	b.undo.label, b.redo.label = "", ""
 	if s.CanUndo() != "" {
 		b.undo.label = "Undo"
@@ -345,7 +349,7 @@ func (w *window) show() {
 		b.redo.label = "Redo"
 	}
 	busy := s.Job.Name != ""
-	for _, x := range []*button{b.picture, b.leave, b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample, b.begin, b.particulars, b.seal, b.take, b.amend, b.undo, b.redo, b.takeHeadings, b.takeReadings, b.unmask, b.more, b.terms} {
+	for _, x := range []*button{b.picture, b.leave, b.compare, b.export, b.sign, b.openPlan, b.openWorkbook, b.openTheSample, b.begin, b.particulars, b.seal, b.take, b.amend, b.undo, b.redo, b.takeHeadings, b.takeReadings, b.unmask, b.more, b.terms, b.savePlan, b.saveStart} {
 		x.disabled = busy
 	}
 	if w.root.Size().Width > 0 {

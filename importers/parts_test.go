@@ -3,6 +3,7 @@ package importers
 import (
 	"maps"
 	"slices"
+	"strings"
 	"testing"
 
 	"lotpair/qa"
@@ -49,6 +50,10 @@ func TestInspectAs(t *testing.T) {
 	}
 	if len(in.Characteristics) != 1 || in.Characteristics[0].Lots[0].N != 3 {
 		t.Errorf("characteristics: got %+v", in.Characteristics)
+	}
+	got, err := LoadPlan("plan.toml", []byte(strings.Replace(in.Plan(), "absolute = 0 ", "absolute = 1 ", 1)))
+	if err != nil || got.Reading.PartColumn != "Serial" || got.Reading.GroupColumn != "Heat" || got.Reading.OrderColumn != "Gauge no" || got.Reading.Decimal != "," || len(got.Characteristics) != 1 {
+		t.Errorf("plan: got %+v, %v, want what was stated", got.Reading, err)
 	}
 	// Columns of repeat readings: one characteristic, twice as many readings before they are averaged.
 	in, err = InspectAs("a.csv", []byte(partsText), qa.ReadingPlan{Decimal: ",", PartColumn: "Serial"}, []qa.Characteristic{{Name: "Bore"}})

@@ -13,10 +13,10 @@ func (in Inspection) Plan() string {
 	w := planWriter{notes: map[string]string{
 		"title": "", "supports": "the record this is evidence for", "record.part": "", "record.revision": "",
 	}, after: map[string][]string{}}
-	p := qa.Plan{Format: qa.PlanFormat, Reading: qa.ReadingPlan{Layout: in.Layout}}
-	in.startLots(&p, w.notes)
 	m := in.mapping
-	p.Reading.Sheet, p.Reading.LotColumn = m.Reading.Sheet, m.Reading.LotColumn
+	p := qa.Plan{Format: qa.PlanFormat, Reading: m.Reading} // what was stated and what was found
+	p.Reading.Layout, p.Reading.HeaderRow, p.Reading.Decimal, p.Reading.Encoding = in.Layout, 0, "", ""
+	in.startLots(&p, w.notes)
 	if !slices.ContainsFunc(m.tables, func(t *table) bool { return t.heading != in.HeaderRow }) {
 		p.Reading.HeaderRow = in.HeaderRow
 	}
@@ -30,7 +30,7 @@ func (in Inspection) Plan() string {
 	switch {
 	case in.Decimal == "":
 		w.notes["reading.decimal"] = `fill in: "." or ","; the file does not settle it`
-	case in.Encoding != "":
+	case in.Encoding != "" || m.Reading.Decimal != "":
 		p.Reading.Decimal = in.Decimal
 	}
 	p.Reading.Encoding = in.Encoding

@@ -18,6 +18,7 @@ type FootView struct {
 	Amend      string // the label of the button that changes a sealed criterion, with a reason
 	Take       string // the label of the button that opens the kept file to take its readings
 	Compare    string // the label of the button that compares again
+	SavePlan   string // the label of the button that writes the plan to a file
 }
 
 // Foot says the one next thing to do.
@@ -62,6 +63,9 @@ func (s State) Foot() FootView {
 func (s State) draftFoot() FootView {
 	v := FootView{Said: s.Said}
 	faults := s.Faults()
+	if len(s.Record.Plan.Characteristics) > 0 {
+		v.SavePlan = "Save as plan"
+	}
 	if s.Sealed() {
 		v.Amend = "Amend"
 	}

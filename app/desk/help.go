@@ -31,7 +31,7 @@ var Words = []Word{
 	{"spread ratio", "candidate over reference standard deviation; decided by Bonett's interval from 5 readings a lot on", "ratio of standard deviations"},
 	{"Pp, Ppk", "how the readings fit between the limits: 1 where six standard deviations do; Ppk counts the nearer limit", "performance indices, ISO 22514-2"},
 	{"permits", "what a mean at the worse end of the margin would leave: Ppk and the fraction outside the limits", "own"},
-	{"outside, expected", "the fraction outside the limits for a normal distribution with this mean and spread", "fraction nonconforming, ISO 3534-2"},
+	{"expected outside", "the fraction outside the limits for a normal distribution with this mean and spread", "fraction nonconforming, ISO 3534-2"},
 	{"tolerance interval", "where at least the stated coverage of the lot lies, with the stated confidence", "statistical tolerance interval, ISO 16269-6"},
 	{"guard", "a strip taken off both ends of the margin for the bias of measuring", "guard band, JCGM 106"},
 	{"uncertainty", "how far the bias of a measuring system is known, as a standard deviation", "standard uncertainty, JCGM 100"},
@@ -90,7 +90,11 @@ func holdsWord(text, word string) bool {
 func Help(text string) []string {
 	out := []string{text}
 	for _, w := range WordsIn(text) {
-		out = append(out, w.Word+": "+w.Means+". "+w.Term+".")
+		t := w.Word + ": " + w.Means + "."
+		if w.Term != "own" {
+			t += " In standards: " + strings.TrimPrefix(w.Term, "own; ") + "."
+		}
+		out = append(out, t)
 	}
 	return out
 }

@@ -84,6 +84,9 @@ func LookedIntoBy(w qa.Watch, p qa.Plan, name string, data []byte, masked bool) 
 	return x, err
 }
 
+// Plan is a plan file to start from, with blanks where only a person can say.
+func (x Sheet) Plan() string { return x.found.Plan() }
+
 func (x *Sheet) decimal() byte {
 	if x.found.Decimal == "" {
 		return 0
