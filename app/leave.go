@@ -18,7 +18,12 @@ func (w *window) onReading(of qa.Side, i int) {
 	}
 	r := all.At(i)
 	w.cursor[of] = i
+	e, unread := w.state.Unread(r.Source)
 	switch {
+	case unread && !w.state.Closed() && e.TakenAs == qa.TakenExcluded:
+		w.askPutBackUnread(r)
+	case unread && !w.state.Closed():
+		w.askLeaveOutUnread(r, e)
 	case w.state.Closed() || !r.Used && !r.LeftOut:
 		text := r.Source.String() + ": " + r.Value
 		if r.Note != "" {

@@ -441,6 +441,63 @@ func TestAveragedReadingIsLeftOut(t *testing.T) {
 	}
 }
 
+// TestUnreadCellIsLeftOut leaves out a cell that is no number, which until then leaves its characteristic undecided, and puts it back.
+func TestUnreadCellIsLeftOut(t *testing.T) {
+	dir := t.TempDir()
+	text := "Lot,Part,Bore [mm]\n"
+	for i := range 24 {
+		text += []string{"A", "B"}[i/12] + "," + qa.Plain(float64(i+1)) + ",40.0" + qa.Plain(float64(10+i*7%13)) + "\n"
+	}
+	text = strings.Replace(text, "B,20,40.013", "B,20,4O.013", 1)
+	file := filepath.Join(dir, "typed.csv")
+	if err := os.WriteFile(file, []byte(text), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	w := openedWith(t, inRegister(t, t.TempDir()), file, 1280, 800)
+	w.takeHeadings()
+	w.chooseKind(desk.InTheUnit)
+	typing(w, "margin", "0.05")
+	w.sealDraft()
+	w.takeKept()
+	noProblem(t, w)
+	if got := w.state.Record.Result.Verdict; got != qa.Undecided {
+		t.Fatalf("verdict: got %s, want undecided while a cell is not read; %q", got, text)
+	}
+	at := w.view.pages[qa.Candidate].Readings.At(0)
+	w.onReading(qa.Candidate, 0)
+	shotOf(t, "unread", w.win.Canvas().Capture())
+	if w.dialog == nil {
+		t.Fatal("the cell: got no question")
+	}
+	w.leaveDialog()
+	if _, err := w.state.WithoutUnread(at.Source, "  "); err == nil {
+		t.Error("without a reason: got it left out")
+	}
+	p, err := w.state.WithoutUnread(at.Source, "typing error, sheet 3")
+	if err != nil {
+		t.Fatal(err)
+	}
+	w.reread("Leaving out", p, "left out", at.Source, "typing error, sheet 3")
+	noProblem(t, w)
+	w.compare()
+	noProblem(t, w)
+	if r := w.state.Record.Result; r.Verdict != qa.Equivalent || r.Characteristics[0].Candidate.Excluded != 1 {
+		t.Errorf("left out: got %s, %+v", r.Verdict, r.Characteristics[0].Candidate)
+	}
+	if p, err = w.state.WithUnread(at.Source); err != nil {
+		t.Fatal(err)
+	}
+	w.reread("Putting back", p, "put back", at.Source, "")
+	w.compare()
+	if got := w.state.Record.Result.Verdict; got != qa.Undecided {
+		t.Errorf("put back: got %s", got)
+	}
+	w.undo()
+	if len(w.state.Record.Plan.Reading.Exclude) != 1 {
+		t.Error("undo: got the cell still put back")
+	}
+}
+
 // TestColumnsFarToTheRight walks through a sheet of many columns by its buttons and by its keys.
 func TestColumnsFarToTheRight(t *testing.T) {
 	file := filepath.Join(t.TempDir(), "wide.csv")

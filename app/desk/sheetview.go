@@ -82,7 +82,9 @@ func (x Sheet) View(p qa.Plan) SheetView {
 		v.Columns = append(v.Columns, ColumnView{Letters: letters(col), Heading: x.parts.Headings[col], Plays: x.plays(col)})
 	}
 	v.Layout = layoutWords[x.found.Layout]
-	v.NonDetect = x.Stated.Reading.NonDetect
+	if v.NonDetect = x.Stated.Reading.NonDetect; v.NonDetect == "" && slices.ContainsFunc(x.found.Unread, func(u qa.UnreadResult) bool { return u.TakenAs == qa.TakenNonDetect }) {
+		v.NonDetect = "bounds the verdict"
+	}
 	v.Unfit = x.Unfit
 	v.ReadAs = x.readAs()
 	x.sayTaken(&v, p)
