@@ -21,6 +21,10 @@ func accuracyOutsiders() []outsider {
 
 // theirValues are what a program gives for every point of a table.
 func (d *dev) theirValues(o outsider, file string, points int) ([]float64, error) {
+	file, err := filepath.Abs(file) // the script runs in its own folder
+	if err != nil {
+		return nil, err
+	}
 	c := exec.Command(o.command, o.script, file)
 	c.Dir, c.Stderr = d.path("cmd", "dev", "testdata"), d.stderr
 	c.Env = append(os.Environ(), "LC_ALL=C.UTF-8")
