@@ -189,7 +189,7 @@ func Asked(r Result) string {
 	}
 	s := "Asked: " + most
 	if rest := len(r.Characteristics) - counts[most]; rest > 0 {
-		s += fmt.Sprintf(" (%d otherwise)", rest)
+		s += " (" + Count(rest, "characteristic", "characteristics") + " otherwise)"
 	}
 	c := r.Characteristics[0]
 	s += ", alpha " + Plain(c.Alpha) + ", " + methodName(c.Method)
