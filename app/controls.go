@@ -21,7 +21,7 @@ func (w *window) tellControls(file string) {
 	}
 	last, tick := "", 0
 	clock := fyne.NewAnimation(time.Second, func(float32) {
-		if tick++; tick%6 != 0 {
+		if tick++; tick%2 != 0 {
 			return
 		}
 		now := w.controls()
@@ -38,11 +38,19 @@ func (w *window) tellControls(file string) {
 }
 
 // controls are the texts and lines that can be seen, a line each: what it is, its box, and what stands in it. What lies over the
-// window hides the window.
+// window hides the window. "keys" is the control that has the keys.
 func (w *window) controls() string {
 	var b strings.Builder
 	c := w.win.Canvas()
 	fmt.Fprintf(&b, "scale\t%.3f\nbusy\t%v\n", c.Scale(), w.state.Job.Name != "")
+	if f, ok := c.Focused().(fyne.CanvasObject); ok {
+		at, size := fyne.CurrentApp().Driver().AbsolutePositionForObject(f), f.Size()
+		what := ""
+		if x, ok := f.(*button); ok {
+			what = x.label
+		}
+		fmt.Fprintf(&b, "keys\t%.1f\t%.1f\t%.1f\t%.1f\t%s\n", at.X, at.Y, at.X+size.Width, at.Y+size.Height, what)
+	}
 	box := seen{right: c.Size().Width, bottom: c.Size().Height}
 	if over := c.Overlays().Top(); over != nil {
 		writeControls(&b, over, fyne.Position{}, box)

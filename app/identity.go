@@ -61,7 +61,10 @@ func (w *window) makeIdentity(name, title, organization, to, passphrase string) 
 			return failed(place, err)
 		}
 		said := fmt.Sprintf("Identity of %s", id.Name())
-		return func(s desk.State) desk.State { return s.SavedFile(said, to) }
+		return func(s desk.State) desk.State {
+			w.app.Preferences().SetString(lastIdentity, to)
+			return s.SavedFile(said, to)
+		}
 	})
 }
 

@@ -4,8 +4,12 @@ import (
 	"fmt"
 
 	"lotpair/app/desk"
+	"lotpair/exports"
 	"lotpair/qa"
 )
+
+// unstated says what must be known before a record is signed.
+const unstated = "Before a record is signed it states what it supports, the part and the part's revision."
 
 // askParticulars asks for what a record must state before it is signed, and what else is known of the comparison.
 func (w *window) askParticulars() {
@@ -30,6 +34,9 @@ func (w *window) askParticulars() {
 		}
 		e := f.text(x.Label, x.Get(p), x.Hint)
 		all = append(all, asked{x, func() string { return e.Text }})
+	}
+	if len(exports.Unstated(p)) > 0 {
+		f.live = func() []string { return []string{unstated} }
 	}
 	f.ask("Particulars of the comparison", "Keep", func() error {
 		next := p

@@ -17,14 +17,22 @@ type signing struct {
 	to                           string // the workbook; existing where the record has one already
 }
 
+// lastIdentity is where, among the program's settings, the identity file is named that was made or used last.
+const lastIdentity = "identity"
+
 // askSign asks for the identity, the meaning, the reason and the passphrase, each time.
 func (w *window) askSign() {
 	if w.act.sign.label == "" || w.state.Job.Name != "" || w.dialog != nil {
 		return
 	}
+	if s := w.state; !s.Closed() && len(exports.Unstated(s.Record.Plan)) > 0 {
+		w.askParticulars() // which says why: whoever signs would hear of it only after the passphrase
+		return
+	}
 	f := w.newForm()
 	f.add("", wrapped(desk.SignText), "")
 	key := w.identityLine(f, "yours alone")
+	key.SetText(w.app.Preferences().String(lastIdentity))
 	f.first = key
 	meaning := f.choice("Meaning", w.view.foot.Meaning, meanings, "what the signature stands for (21 CFR 11.50)")
 	reason := f.text("Reason", "", "")
@@ -43,6 +51,7 @@ func (w *window) askSign() {
 				return err
 			}
 		}
+		w.app.Preferences().SetString(lastIdentity, key.Text)
 		w.sign(signing{
 			identity: key.Text, passphrase: passphrase.Text, meaning: meaning.Selected,
 			reason: strings.TrimSpace(reason.Text), disposition: strings.TrimSpace(disposition.Text), to: to.Text,

@@ -152,9 +152,9 @@ func TestAKilledWindowOpensWhereItWas(t *testing.T) {
 	}
 }
 
-// TestTheWholeJobByKeyboard goes from a file of readings to a verdict without a mouse: the headings are taken masked, the margin
+// TestHeadingsToVerdictByKeyboard goes from a file of readings to a verdict without a mouse: the headings are taken masked, the margin
 // is stated in the unit, the criterion sealed, the readings taken. Control and return do the one next thing.
-func TestTheWholeJobByKeyboard(t *testing.T) {
+func TestHeadingsToVerdictByKeyboard(t *testing.T) {
 	path, dir := program(t), t.TempDir()
 	var text strings.Builder
 	text.WriteString("Lot;Part;Wall [mm]\n")
