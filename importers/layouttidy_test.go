@@ -28,6 +28,31 @@ func tidyRows(head []any, more func(lot string, k int) []any) [][]any {
 	return rows
 }
 
+// across is the same with a row for each characteristic of each lot and a column a part; one row may lack its name.
+func across(nameless int) [][]any {
+	rows := [][]any{{"No", "Characteristic", "Lot", "LSL", "USL"}}
+	for i := range d1Reference {
+		rows[0] = append(rows[0], num(fmt.Sprint(i+1)))
+	}
+	rows[0] = append(rows[0], "Mean", "Min", "Max", "OK/NG")
+	for k, name := range []string{"Bore dia", "Length"} {
+		for _, l := range []struct {
+			name   string
+			values []string
+		}{{"REF-0417", d1Reference}, {"CAND-0931", d1Candidate}} {
+			row := []any{num(fmt.Sprint(k + 1)), name, l.name, num(fmt.Sprint(11+k) + ".95"), num(fmt.Sprint(12+k) + ".05")}
+			if len(rows) == nameless {
+				row[1] = nil
+			}
+			for _, v := range l.values {
+				row = append(row, shifted(v, k))
+			}
+			rows = append(rows, append(row, shifted("12.006", k), shifted("11.989", k), shifted("12.022", k), "OK"))
+		}
+	}
+	return rows
+}
+
 // tidyCases are sheets with a row a reading.
 func tidyCases() []layoutCase {
 	one := func(rows [][]any, merged ...string) []layoutFile {
@@ -136,6 +161,11 @@ func tidyCases() []layoutCase {
 		{name: "tidy-merged", shows: "lot and part merged down", files: one(merged, areas...), plan: plain, want: both.with(func(w *layoutWant) { w.warnings = []string{"lot-filled-down"} })},
 		{name: "tidy-values", shows: "two columns of readings: stop", files: one(values), plan: plain, want: layoutWant{fault: []string{`column D "Value"`, `column E "Result"`, "one column of readings"}}},
 		{name: "tidy-as-characteristics", shows: "stated as a row a characteristic: stop and say which layout reads it", files: one(tidyRows(head, asked)), plan: planFor("own.xlsx", `layout = "row-per-characteristic"`, ""), want: layoutWant{fault: []string{"reading.layout", "row-per-part"}}},
+		{name: "across", shows: "a row for each characteristic of each lot, a column a part, Min and Max of the readings behind", files: one(across(0)), plan: plain, want: both.with(func(w *layoutWant) {
+			w.said = []string{"lower limit 11.95, upper limit 12.05", "12 columns of parts: F to Q"}
+		})},
+		{name: "across-nameless", shows: "one of its rows says not what was measured: stop", files: one(across(2)), plan: plain, want: layoutWant{fault: []string{"B3", "what was measured"}}},
+		{name: "across-stated", shows: "stated as a row a characteristic: stop and say which layout reads it", files: one(across(0)), plan: planFor("own.xlsx", `layout = "row-per-characteristic"`, ""), want: layoutWant{fault: []string{"reading.layout", "row-per-part"}}},
 		{name: "tidy-requirements", shows: "the requirement of each row as text", files: one(requirement), plan: plain, want: limited},
 	}
 }

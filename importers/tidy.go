@@ -14,6 +14,7 @@ type tidySheet struct {
 	name, value, unit, requirement int              // columns; 0 where there is none
 	limits                         map[string][]int // columns of nominal values, limits and tolerances
 	lotColumn, partColumn          string           // the headings, for the plan
+	across                         []int            // columns of a part each, where a row is a characteristic of a lot; else nil
 }
 
 // readingColumn are the headings of a column of readings beside one that names what each row measured.
@@ -39,7 +40,7 @@ func (t *table) findTidy() error {
 		switch {
 		case byPlan && t.holdsPlanned(seen), byHeading && len(seen) > 1 && rows >= 2*len(seen):
 			clear = byHeading
-		case byHeading && len(seen) > 0 && !t.anyPlanned() && t.readingsByHeading(c.col) != nil:
+		case byHeading && len(seen) > 0 && !t.anyPlanned() && (t.readingsByHeading(c.col) != nil || t.partsAcross(c.col) != nil):
 		default:
 			continue
 		}
@@ -54,6 +55,9 @@ func (t *table) findTidy() error {
 	}
 	t.tidy = s
 	reason := "a row is one reading of a part: " + t.columnText(s.name) + " names what was measured, " + t.columnText(s.value) + " holds the readings."
+	if s.across != nil {
+		reason = "a row is a characteristic of a lot: " + t.columnText(s.name) + " names what was measured, " + t.columnText(s.value) + " to " + t.columnText(s.across[len(s.across)-1]) + " hold a part each."
+	}
 	if t.confidence == Stated {
 		t.reasons = append(t.reasons, reason)
 		return nil
@@ -66,19 +70,23 @@ func (t *table) findTidy() error {
 	return nil
 }
 
-// tidyHeading says whether a row may be the headings of a row a reading.
+// tidyHeading says whether a row may be the headings of a row a reading, or a row a characteristic of a lot.
 func (t *table) tidyHeading() bool {
 	return slices.ContainsFunc(t.lookRows(), func(i int) bool {
-		names, values := 0, 0
+		names, values, lots, parts := 0, 0, 0, 0
 		for _, c := range t.sheet.Rows[i].Cells {
 			switch name, _ := splitUnit(filledText(c)); {
 			case characteristicColumn[word(name)] != "":
 				names++
 			case readingColumn[word(name)] != "" && t.numbersBelow(i, c.Col):
 				values++
+			case headingMeans(name) == lotHeading:
+				lots++
+			case partNumbered.MatchString(name):
+				parts++
 			}
 		}
-		return names > 0 && values == 1
+		return names > 0 && (values == 1 || lots > 0 && parts > 1)
 	})
 }
 
@@ -186,6 +194,13 @@ func (t *table) tidyColumns(s *tidySheet, names []string) error {
 				values = append(values, c.col)
 			}
 		}
+	}
+	if across := t.partsAcross(s.name); across != nil && !slices.ContainsFunc(values, func(col int) bool { return col > across[0] && !slices.Contains(across, col) }) {
+		s.across, values = across, across[:1]                  // no other number stands behind them
+		maps.DeleteFunc(limits, func(col int, _ string) bool { // Min and Max of the readings
+			w := word(t.column(col).name)
+			return col > values[0] && (w == "min" || w == "minimum" || w == "max" || w == "maximum")
+		})
 	}
 	if len(values) != 1 {
 		found := "no column of numbers"

@@ -24,8 +24,14 @@ func (t *table) turnTidy() error {
 		return nil
 	}
 	s := t.tidy
-	t.tidyPart()
-	if t.part > 0 {
+	if s.across == nil {
+		t.tidyPart()
+	}
+	switch {
+	case s.across != nil:
+		t.part = turnedPart
+		t.say("%s: %s to %s.", qa.Count(len(s.across), "column of a part", "columns of parts"), cells.Letters(s.value), cells.Letters(s.across[len(s.across)-1]))
+	case t.part > 0:
 		s.partColumn = t.column(t.part).heading
 		t.say("the parts' ids stand in %s.", t.columnText(t.part))
 	}
@@ -40,7 +46,11 @@ func (t *table) turnTidy() error {
 	rows := t.rows
 	t.markTidy(rows, readings)
 	t.say("%s below each other: %s.", qa.Count(len(names), "characteristic stands", "characteristics stand"), list(names))
-	t.keepTexts(t.lot, t.part, t.order, t.group, t.pair)
+	part := t.part
+	if s.across != nil {
+		part = 0
+	}
+	t.keepTexts(t.lot, part, t.order, t.group, t.pair)
 	lot := t.lot
 	t.columns, t.rows, t.turned, t.wantedRows = columns, nil, true, nil
 	type key struct{ lot, group, pair, part string }
@@ -110,6 +120,9 @@ func (t *table) tidyPart() {
 // a reading and does not say of what is a fault.
 func (t *table) tidyReadings() (names []string, readings []tidyReading, err error) {
 	s := t.tidy
+	if s.across != nil {
+		return t.readingsAcross()
+	}
 	number := map[string]int{}
 	var nameless, partless []string
 	wanted := t.wantedLot()
@@ -296,7 +309,7 @@ func (t *table) markTidy(rows []row, readings []tidyReading) {
 			}
 			is, ok := as[c.Col]
 			switch {
-			case c.Col == s.value && placed[r.at]:
+			case (c.Col == s.value || slices.Contains(s.across, c.Col)) && placed[r.at]:
 				is = roleOtherLot
 			case !ok:
 				is = roleNoHeading
@@ -372,8 +385,8 @@ func (t *table) keepTexts(cols ...int) {
 
 // severalRows says whether names stand below each other for part after part: no row a characteristic.
 func (s *characteristicSheet) severalRows() bool {
-	return s.number == 0 && !s.differ() && slices.ContainsFunc(s.sheet.Rows[s.at].Cells, func(c cells.Cell) bool {
+	return !s.differ() && slices.ContainsFunc(s.sheet.Rows[s.at].Cells, func(c cells.Cell) bool {
 		m := headingMeans(filledText(c))
-		return (m == partHeading || m == lotHeading) && strings.TrimSpace(c.Text) != ""
+		return (m == partHeading && s.number == 0 || m == lotHeading) && strings.TrimSpace(c.Text) != ""
 	})
 }
