@@ -14,7 +14,7 @@
 //	chi-square           5e-14 above 1e-25 and df up to 1e6, else 1e-12
 //	quantiles            t and chi-square 5e-14, F 1e-13, normal 2e-15; p from 1e-300
 //	noncentral t         2e-13 above 1e-25, 1e-12 down to 1e-239; ncp up to 1000
-//	its quantile         2e-13, p from 1e-250
+//	its quantile         2e-13, p from 1e-250; ncp up to 100, df up to 1e6
 //	Owen's Q             1e-13 above 1e-14
 //	StudentBetween       2e-13 above 1e-40, 1e-12 above 1e-60
 //

@@ -163,9 +163,8 @@ for df in [1, 2, 4, 11, 29, 137, 999]:
             if df == 999 and delta < 0 or df == 1 and (p < 1e-6 or p > 0.99999):
                 continue
             show("NoncentralTQuantile", "2e-13", quantile(p, mpf(df), mpf(delta)), p, df, delta)
-mp.dps = 160
-for df, delta in [(1e5, 2), (1e6, 10), (1e6, 100), (30, 300), (200, 1000)]:
-    for p in [1e-10, 0.05, 0.9, 1 - 2.0**-40]:
+for df, delta, some in [(1e5, 2, 4), (1e6, 10, 4), (1e6, 100, 2)]:
+    for p in [1e-10, 0.05, 0.9, 1 - 2.0**-40][:some]:
         show("NoncentralTQuantile", "2e-13", quantile(p, mpf(df), mpf(delta)), p, df, delta)
 mp.dps = 420
 for df, delta in [(7, 3), (60, -2), (1000, 20)]:
