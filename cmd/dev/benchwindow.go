@@ -27,7 +27,7 @@ func benchWindow(d *dev) error {
 		return err
 	}
 	defer func() { _ = os.RemoveAll(dir) }() // a temporary folder
-	display, end, err := d.display("-fbdir", dir)
+	display, end, err := d.display("1600x1000", "-fbdir", dir)
 	if err != nil {
 		return err
 	}

@@ -122,14 +122,12 @@ func (d *dev) checkToolsModule() (err error) {
 func (d *dev) checkWindow() error {
 	env := append([]string{}, desktop...)
 	if onLinux {
-		display, end, err := d.display()
+		managed, end, err := d.managed("1600x1000")
 		if err != nil {
 			return err
 		}
 		defer end()
-		// Software GL: the same pictures everywhere, and no driver needed. A bare machine sets no locale, and without one the
-		// title of a window loses what is not ASCII on its way to another program.
-		env = append(env, "DISPLAY="+display, "WAYLAND_DISPLAY=", "LIBGL_ALWAYS_SOFTWARE=1", "LC_ALL=C.UTF-8")
+		env = append(env, managed...)
 	}
 	return d.run(env, "go", append([]string{"test", "-count=1", "-tags", windowTags}, windowPackages...)...)
 }

@@ -56,7 +56,9 @@ var desktopNeeds = []need{
 // windowNeeds is what the tests of the real window take besides.
 var windowNeeds = []need{
 	{"xvfb", program("Xvfb")},
+	{"openbox", program("openbox")},
 	{"xdotool", program("xdotool")},
+	{"imagemagick", program("import")}, // keeps the pictures of the walks
 }
 
 // outsideNeeds are the programs that check the work from outside.

@@ -1,12 +1,14 @@
 package main
 
 import (
+	"errors"
 	"fmt"
 	"os"
 	"path/filepath"
 )
 
-// screens renders the window at its sizes and every sheet as printed, for looking at beside the drawings.
+// screens renders the window at its sizes, keeps a picture of each step of the walks through the real window, and renders every
+// sheet as printed, for looking at beside the drawings.
 func screens(d *dev, args []string) error {
 	if err := noArguments(args); err != nil {
 		return err
@@ -35,6 +37,9 @@ func screens(d *dev, args []string) error {
 			return err
 		}
 	}
+	if err := d.walks(folder); err != nil {
+		return err
+	}
 	if !present("soffice") || !present("pdftoppm") {
 		return fmt.Errorf("sheets: found no soffice or no pdftoppm; go run ./cmd/dev check --outside installs them")
 	}
@@ -52,4 +57,36 @@ func screens(d *dev, args []string) error {
 	}
 	d.say("Look at the pictures in %s.", folder)
 	return nil
+}
+
+// walks does the whole job in the real window, by mouse and by keys, and keeps a picture of each step.
+func (d *dev) walks(folder string) error {
+	if !onLinux {
+		d.say("walks: NOT RUN: they need Xvfb and xdotool, which this system has not")
+		return nil
+	}
+	if err := d.install("window", desktopNeeds, windowNeeds); err != nil {
+		return err
+	}
+	env, end, err := d.managed("4000x2300")
+	if err != nil {
+		return err
+	}
+	defer end()
+	var faults []error
+	for _, x := range []struct {
+		size, by string
+		dark     bool
+	}{{"1024x700", "Mouse", false}, {"1280x800", "Keys", false}, {"1280x800", "Mouse", true}, {"2560x1440", "Keys", true}, {"3840x2160", "Mouse", false}} {
+		to := d.path(folder, "walk-"+x.size)
+		if x.dark {
+			to += "-dark"
+		}
+		args := []string{"test", "-count=1", "-v", "-tags", windowTags, "-run", "TestTheWholeJobBy" + x.by + "$", "./cmd/lotpair", "-walk-pictures", to, "-walk-size", x.size}
+		if x.dark {
+			args = append(args, "-walk-dark")
+		}
+		faults = append(faults, d.run(append(append([]string{}, desktop...), env...), "go", args...))
+	}
+	return errors.Join(faults...)
 }
