@@ -12,6 +12,15 @@ import (
 type field struct {
 	widget.Entry
 	leave func()
+	seen  func(fyne.CanvasObject) // brings it into sight; nil where nothing scrolls
+}
+
+// FocusGained implements fyne.Focusable.
+func (f *field) FocusGained() {
+	f.Entry.FocusGained()
+	if f.seen != nil {
+		f.seen(f)
+	}
 }
 
 func (w *window) newField(text string) *field {
@@ -28,6 +37,38 @@ func (f *field) TypedKey(e *fyne.KeyEvent) {
 		return
 	}
 	f.Entry.TypedKey(e)
+}
+
+// pick is one of several words, in a dialog: escape leaves it.
+type pick struct {
+	widget.Select
+	leave func()
+	seen  func(fyne.CanvasObject)
+}
+
+func (w *window) newPick(words []string, chosen string) *pick {
+	p := &pick{leave: w.leaveDialog}
+	p.ExtendBaseWidget(p)
+	p.Options = words
+	p.SetSelected(chosen)
+	return p
+}
+
+// FocusGained implements fyne.Focusable.
+func (p *pick) FocusGained() {
+	p.Select.FocusGained()
+	if p.seen != nil {
+		p.seen(p)
+	}
+}
+
+// TypedKey implements fyne.Focusable.
+func (p *pick) TypedKey(e *fyne.KeyEvent) {
+	if e.Name == fyne.KeyEscape {
+		p.leave()
+		return
+	}
+	p.Select.TypedKey(e)
 }
 
 // present shows a dialog; escape leaves it.

@@ -15,7 +15,7 @@ var meanings = []string{"prepared", "reviewed", "approved"}
 // fileLine is a line for the name of a file, which may be looked for.
 func (w *window) fileLine(f *form, label, hint string, endings ...string) *field {
 	x := w.newField("")
-	x.OnChanged = func(string) { f.say() }
+	x.OnChanged, x.seen = func(string) { f.say() }, f.reveal
 	f.fields = append(f.fields, x)
 	browse := newButton(w.palette, "Browse", quiet, func() {
 		d := dialog.NewFileOpen(func(r fyne.URIReadCloser, err error) {

@@ -15,6 +15,7 @@ type form struct {
 	items  []*widget.FormItem
 	first  fyne.Focusable
 	fields []*field
+	body   *container.Scroll
 	said   *widget.Label // what the lines come to, or what is wrong
 	live   func() []string
 }
@@ -30,10 +31,30 @@ func wrapped(text string) *widget.Label {
 // text is a line to type in; hint is shown below it.
 func (f *form) text(label, value, hint string) *field {
 	x := f.w.newField(value)
-	x.OnChanged = func(string) { f.say() }
+	x.OnChanged, x.seen = func(string) { f.say() }, f.reveal
 	f.fields = append(f.fields, x)
 	f.add(label, x, hint)
 	return x
+}
+
+// reveal scrolls as far as is needed to see what has the keys.
+func (f *form) reveal(o fyne.CanvasObject) {
+	if f.body == nil {
+		return
+	}
+	d := fyne.CurrentApp().Driver()
+	top := d.AbsolutePositionForObject(o).Y - d.AbsolutePositionForObject(f.body.Content).Y
+	bottom := top + o.Size().Height + 24 // with its hint
+	at, tall := f.body.Offset.Y, f.body.Size().Height
+	switch {
+	case top < at:
+		at = top
+	case bottom > at+tall:
+		at = bottom - tall
+	default:
+		return
+	}
+	f.body.ScrollToOffset(fyne.NewPos(0, max(at, 0)))
 }
 
 // secret is a line whose text is not shown.
@@ -44,10 +65,9 @@ func (f *form) secret(label, hint string) *field {
 }
 
 // choice is one of several words.
-func (f *form) choice(label, value string, words []string, hint string) *widget.Select {
-	x := widget.NewSelect(words, nil)
-	x.SetSelected(value)
-	x.OnChanged = func(string) { f.say() }
+func (f *form) choice(label, value string, words []string, hint string) *pick {
+	x := f.w.newPick(words, value)
+	x.OnChanged, x.seen = func(string) { f.say() }, f.reveal
 	f.add(label, x, hint)
 	return x
 }
@@ -74,10 +94,10 @@ func (f *form) say() {
 // ask shows the form. do is called on confirm; what it returns is said in the form, which then stays.
 func (f *form) ask(title, confirm string, do func() error) {
 	w := f.w
-	body := container.NewVScroll(widget.NewForm(f.items...))
+	f.body = container.NewVScroll(widget.NewForm(f.items...))
 	below := container.NewVScroll(f.said)
 	below.SetMinSize(fyne.NewSize(10, 84))
-	d := dialog.NewCustomWithoutButtons(title, container.NewBorder(nil, below, nil, nil, body), w.win)
+	d := dialog.NewCustomWithoutButtons(title, container.NewBorder(nil, below, nil, nil, f.body), w.win)
 	try := func() {
 		if err := do(); err != nil {
 			f.said.SetText(err.Error())

@@ -345,6 +345,30 @@ func TestEveryFormOpensAndIsLeft(t *testing.T) {
 	}
 }
 
+// TestKeysAreSeenInALongForm walks through a form that is longer than its place: what has the keys is in sight.
+func TestKeysAreSeenInALongForm(t *testing.T) {
+	w := openedWith(t, inRegister(t, t.TempDir()), "", 1024, 700)
+	w.beginComparison()
+	w.open(sheetFile(t), readFile)
+	w.takeHeadings()
+	w.askCharacteristic(0)
+	focused := 0
+	for range 40 {
+		w.win.Canvas().(interface{ FocusNext() }).FocusNext()
+		if f, ok := w.win.Canvas().Focused().(*field); ok && f.Text == "" {
+			focused++
+		}
+	}
+	if focused < 10 {
+		t.Errorf("got the keys on %d lines, want all of the form", focused)
+	}
+	shotOf(t, "form-walked", w.win.Canvas().Capture())
+	w.win.Canvas().Focused().TypedKey(&fyne.KeyEvent{Name: fyne.KeyEscape})
+	if w.dialog != nil {
+		t.Error("escape: it stays open")
+	}
+}
+
 // TestCopies copies what the bench says, and all characteristics.
 func TestCopies(t *testing.T) {
 	w := opened(t, demo(t), 1280, 800)

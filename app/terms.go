@@ -4,7 +4,6 @@ import (
 	"slices"
 
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/widget"
 
 	"lotpair/app/desk"
 	"lotpair/qa"
@@ -12,7 +11,7 @@ import (
 
 // termsForm are the lines of a criterion, or of what a characteristic states for itself.
 type termsForm struct {
-	objective, claim, method, margin, of, look *widget.Select
+	objective, claim, method, margin, of, look *pick
 	first, second, mean, sd, reason, approved  *field
 	alpha, spread, guard, power                *field
 }
