@@ -53,6 +53,18 @@ func (w *window) askBring(side qa.Side) {
 // opening are the endings of the files that can be opened.
 var opening = []string{".toml", ".xlsx", ".xlsm", ".ods", ".csv", ".tsv", ".txt"}
 
+// dropped opens a file that was dropped on the window, on the page below it.
+func (w *window) dropped(at fyne.Position, files []fyne.URI) {
+	switch {
+	case w.busy() || len(files) == 0:
+	case len(files) > 1:
+		err := fmt.Errorf("found %d files, want one at a time; drop the reference's file on the left page and the candidate's on the right one", len(files))
+		w.apply(failed("Dropping files", err))
+	default:
+		w.bring(files[0].Path(), w.sideAt(at), readFile)
+	}
+}
+
 // sideOfKeys is the page that the keys are on; empty where they are elsewhere.
 func (w *window) sideOfKeys() qa.Side {
 	switch f := w.win.Canvas().Focused(); {

@@ -125,6 +125,9 @@ func (w *window) paintPageRows(p *pen, size fyne.Size, of qa.Side, top, bottom f
 		} else if x.Note != "" {
 			n.lines = []string{fontAxis.fit(x.Note, size.Width-margin-r.columns.cell-r.columns.value-20)}
 		}
+		for len(n.lines) > 0 && y+float32(len(n.lines)-1)*noteLine+readingLine > bottom+2 {
+			n.lines = n.lines[:len(n.lines)-1] // nor half a line of the reason
+		}
 		paintReading(s, x, n, r.columns, y+15)
 	}
 }

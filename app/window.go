@@ -142,11 +142,7 @@ func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
 	w.win.Canvas().AddShortcut(&fyne.ShortcutUndo{}, func(fyne.Shortcut) { w.undo() })
 	w.win.Canvas().AddShortcut(&fyne.ShortcutRedo{}, func(fyne.Shortcut) { w.redo() })
 	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyZ, Modifier: fyne.KeyModifierShortcutDefault | fyne.KeyModifierShift}, func(fyne.Shortcut) { w.redo() })
-	w.win.SetOnDropped(func(at fyne.Position, files []fyne.URI) {
-		if len(files) > 0 && w.dialog == nil {
-			w.bring(files[0].Path(), w.sideAt(at), readFile)
-		}
-	})
+	w.win.SetOnDropped(w.dropped)
 	a.Settings().AddListener(func(fyne.Settings) { w.show() })
 	w.find()
 	w.show()

@@ -24,7 +24,7 @@ type FootView struct {
 // Foot says the one next thing to do.
 func (s State) Foot() FootView {
 	if !s.Open {
-		return FootView{Next: "Next: open a record, a plan or a workbook."}
+		return FootView{Next: "Next: begin a comparison, or open a record, a plan or a workbook."}
 	}
 	if s.Drafting {
 		return s.draftFoot()
