@@ -23,7 +23,7 @@ func (w *window) bannerText() string {
 		text := s.Job.Name
 		if p := w.jobs.doing; p.Doing != "" {
 			text += ": " + p.Doing
-			if p.Of != "" {
+			if p.Of != "" && !strings.Contains(text, p.Of) {
 				text += " (" + p.Of + ")"
 			}
 		}

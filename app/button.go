@@ -85,7 +85,7 @@ func (b *button) paint(p *pen, size fyne.Size) {
 	r := p.box(0, 0, size.Width, size.Height, ground)
 	r.CornerRadius = 3
 	switch {
-	case (b.kind == choice || b.kind == word || b.kind == bare) && b.focused:
+	case b.kind != plain && b.kind != main && b.focused:
 		r.StrokeColor, r.StrokeWidth = p.Text, 1.2
 	case b.kind == quiet || b.kind == choice || b.kind == strong || b.kind == word || b.kind == bare:
 	case b.disabled:
