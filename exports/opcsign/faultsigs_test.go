@@ -1,6 +1,9 @@
 package opcsign
 
 import (
+	"crypto"
+	"crypto/rand"
+	"crypto/x509"
 	"regexp"
 	"strings"
 	"testing"
@@ -87,6 +90,19 @@ var signerCases = []fault{
 	signer("another role shown", codeDiffers, func(p *pack) { p.swap(sig1, "<xd:ClaimedRole>Eng", "<xd:ClaimedRole>Head eng") }),
 	signer("another commitment shown", codeDiffers, func(p *pack) { p.swap(sig1, "<xd:Description>prepared", "<xd:Description>approved") }),
 	signer("before the certificate", codeCertTime, func(p *pack) { p.swapAll(sig1, "2026-12-01T", "2025-12-01T") }),
+	signer("certificate for enciphering only", codeCertificate, func(p *pack) {
+		id := key(p.t, "prepared")
+		c := &x509.Certificate{
+			SerialNumber: id.Chain[0].SerialNumber, Subject: id.Chain[0].Subject, NotBefore: id.Chain[0].NotBefore, NotAfter: id.Chain[0].NotAfter,
+			RawSubject: id.Chain[0].RawSubject, KeyUsage: x509.KeyUsageKeyEncipherment, BasicConstraintsValid: true,
+		}
+		der, err := x509.CreateCertificate(rand.Reader, c, c, id.Key.Public(), id.Key)
+		if err != nil {
+			p.t.Fatal(err)
+		}
+		p.swapAll(sig1, `<X509Certificate>[^<]*`, "<X509Certificate>"+b64(der))
+		p.swapAll(sig1, `(<xd:CertDigest><DigestMethod [^>]*/><DigestValue>)[^<]*`, "${1}"+b64(sum(crypto.SHA256, der)))
+	}),
 	signer("no statement", codeStatement, func(p *pack) { p.swapAll(sig1, "<lp:Statement.*?</lp:Statement>", "<a xmlns='b'/>") }),
 	signer("two statements", codeStatement, func(p *pack) { p.swapAll(sig1, "(<lp:Statement.*?</lp:Statement>)", "$1$1") }),
 	signer("field twice", codeStatementBad, func(p *pack) { p.swapAll(sig1, "(<lp:Meaning>.*?</lp:Meaning>)", "$1$1") }),
