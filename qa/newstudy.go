@@ -47,7 +47,7 @@ func aimOf(o Objective) stats.Aim {
 // newStudy sizes a new study where this one left the verdict undecided (contract: result, "Definitions").
 func (c *comparison) newStudy(plan Plan) {
 	e := c.Equivalence
-	if c.Verdict != Undecided || !c.Objective.AgainstMargin() || e == nil || e.Estimate == nil || e.Lower == nil {
+	if c.known.verdictOnly || c.Verdict != Undecided || !c.Objective.AgainstMargin() || e == nil || e.Estimate == nil || e.Lower == nil {
 		return
 	}
 	p := plan.power()

@@ -135,7 +135,9 @@ func atEnds(plan Plan, ch Characteristic, k *known, ref, cand Series, refHigh bo
 	if !ok1 || !ok2 {
 		return Comparison{}, false
 	}
-	c, err := compareOne(plan, ch, k, x, y)
+	of := *k
+	of.verdictOnly = true
+	c, err := compareOne(plan, ch, &of, x, y)
 	return c, err == nil
 }
 

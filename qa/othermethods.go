@@ -10,7 +10,7 @@ import (
 // otherMethods gives the verdict again under each other sound method on the same margin, with the exclusions put back and with
 // the outlying readings removed. None of them changes the verdict; one that differs is a warning.
 func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
-	if c.Equivalence == nil || !c.Objective.AgainstMargin() || c.margin.fromSample || c.Equivalence.Lower == nil {
+	if c.known.verdictOnly || c.Equivalence == nil || !c.Objective.AgainstMargin() || c.margin.fromSample || c.Equivalence.Lower == nil {
 		return
 	}
 	paired := c.Method == "paired"

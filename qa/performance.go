@@ -137,9 +137,10 @@ type factorOf struct {
 // known keeps what characteristics of the same size share and what takes long to compute: tolerance factors, and how often
 // each U comes up.
 type known struct {
-	factors map[factorOf]float64
-	ranks   stats.NullU
-	watch   Watch
+	verdictOnly bool // of a comparison that is made only for its verdict: no new study, no other ways of computing it
+	factors     map[factorOf]float64
+	ranks       stats.NullU
+	watch       Watch
 }
 
 func (k *known) factor(f factorOf) (float64, error) {
