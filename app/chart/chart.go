@@ -6,6 +6,7 @@ import (
 	"image"
 	"image/color"
 	"math"
+	"sync"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
@@ -75,19 +76,43 @@ func (d *Drawing) paint(w, h int) image.Image {
 	f := d.Figure()
 	d.remember(f)
 	if f.Width > 0 && f.Height > 0 && w > 0 && h > 0 {
-		if img, err := draw.Image(f, math.Min(float64(w)/f.Width, float64(h)/f.Height), d.palette); err == nil {
-			return onPaper(img, w, h, d.palette.Paper)
+		if img := brush.painted(f, math.Min(float64(w)/f.Width, float64(h)/f.Height), w, h, d.palette); img != nil {
+			return img
 		}
 	}
 	return onPaper(&image.NRGBA{}, max(w, 1), max(h, 1), d.palette.Paper) // the size has no picture: the paper stays empty
 }
 
-// onPaper is a picture on paper of w by h. The painter covers all of its picture: colours that let nothing through are the same
-// bytes in either of the two ways of keeping them, and the toolkit takes the one way as it is.
-func onPaper(img *image.NRGBA, w, h int, paper color.NRGBA) *image.RGBA {
-	if img.Rect.Dx() == w && img.Rect.Dy() == h {
-		return &image.RGBA{Pix: img.Pix, Stride: img.Stride, Rect: img.Rect}
+// brush is the painter of all drawings: its fonts are read once, not for every line of the spine.
+var brush sharedPainter
+
+type sharedPainter struct {
+	sync.Mutex
+	palette draw.Palette
+	painter *draw.Painter
+}
+
+// painted is a picture on paper of w by h; nil where the size has none.
+func (s *sharedPainter) painted(f figure.Figure, scale float64, w, h int, palette draw.Palette) image.Image {
+	s.Lock()
+	defer s.Unlock()
+	if s.painter == nil || s.palette != palette {
+		painter, err := draw.NewPainter(palette)
+		if err != nil {
+			return nil
+		}
+		s.painter, s.palette = painter, palette
 	}
+	img, err := s.painter.Paint(f, scale)
+	if err != nil {
+		return nil
+	}
+	return onPaper(img, w, h, palette.Paper)
+}
+
+// onPaper is a copy of a picture on paper of w by h. The painter covers all of its picture: colours that let nothing through are
+// the same bytes in either of the two ways of keeping them, and the toolkit takes the one way as it is.
+func onPaper(img *image.NRGBA, w, h int, paper color.NRGBA) *image.RGBA {
 	out := image.NewRGBA(image.Rect(0, 0, w, h))
 	for i := 0; i < len(out.Pix); i += 4 {
 		out.Pix[i], out.Pix[i+1], out.Pix[i+2], out.Pix[i+3] = paper.R, paper.G, paper.B, 0xFF
