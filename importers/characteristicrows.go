@@ -139,6 +139,8 @@ func (t *table) characteristicColumns(at int) *characteristicSheet {
 			summaries = append(summaries, c)
 		case means != "":
 			s.limits[means] = append(s.limits[means], c.Col)
+		case summaryNumbered(text):
+			s.other = append(s.other, text)
 		case partNumbered.MatchString(text) && c.Kind != cells.Date:
 			s.parts = append(s.parts, c)
 		default:
@@ -189,7 +191,7 @@ func (s *characteristicSheet) partsBelow() bool {
 	var parts []cells.Cell
 	for _, c := range s.sheet.Rows[s.at+1].Cells {
 		text := filledText(c)
-		if text == "" || s.split[c.Col] {
+		if text == "" || s.split[c.Col] || summaryNumbered(text) {
 			continue
 		}
 		if c.Col <= max(s.name, s.number) || !partNumbered.MatchString(text) {

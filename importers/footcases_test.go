@@ -1,6 +1,10 @@
 package importers
 
-import "strings"
+import (
+	"fmt"
+	"slices"
+	"strings"
+)
 
 // footCases are foot rows as people write them: in other languages, in phrases, with the lot's name beside them, with the label
 // in another column or with none; and lots whose names are one to a person's eye.
@@ -53,6 +57,57 @@ func footCases() []layoutCase {
 		left[i] = append([]any{label}, row...)
 	}
 	add("feet-left", "foot rows named left of the table", left, plain, summaries)
+
+	add("feet-numbered", "foot rows that are numbered on, named in the column of remarks", feet(func(lot string) [][]any {
+		return [][]any{{lot, num("13"), num("12.006"), "Average"}, {lot, num("14"), num("11.99"), "Min"}}
+	}), plain, summaries)
+	dated := feet(func(lot string) [][]any {
+		return [][]any{{lot, "Average", num("12.006")}, {lot, "Min", num("11.99")}}
+	})
+	typed := feet(func(lot string) [][]any {
+		return [][]any{{lot, nil, num("12.006"), "mean"}, {lot, nil, num("0.007"), "sd"}}
+	})
+	dated[0][1], typed[0] = "Date", append([]any{"Lot", "Cavity", "Bore dia [mm]"}, "Type")
+	for i := range dated[1:] {
+		if _, ok := dated[i+1][1].(num); ok {
+			dated[i+1][1] = fmt.Sprintf("2026-03-%02d", i%13+1)
+			typed[i+1][1], typed[i+1] = num(itoa(1+i%2)), append(typed[i+1], "single")
+		}
+	}
+	add("feet-dated", "foot rows named in the column of dates", dated, plain, summaries)
+	add("feet-typed", "foot rows told by a column of types", typed, planFor("own.xlsx", "", characteristicOf(`name = "Bore dia"`)), summaries)
+
+	below := [][]any{{"Lot", "Bore dia [mm]"}}
+	for _, r := range long()[1:] {
+		below = append(below, []any{r[0], r[2]})
+	}
+	below = append(below, nil, []any{"Group", "Mean"}, []any{"REF-0417", num("12.0039")}, []any{"CAND-0931", num("12.0082")})
+	second := []string{"row 27", "second table", "header_row = 1 or 27"}
+	add("feet-table-ask", "a table of means below, under other headings: stop", below, plain, layoutWant{fault: second})
+	add("feet-table", "the same with the row of the headings stated: not read", below, planFor("own.xlsx", "header_row = 1", ""), d1.with(func(w *layoutWant) { w.warnings = []string{"second-table"} }))
+
+	sides := [][]any{{"No", "REF-0417", "CAND-0931"}}
+	for i := range d1Reference {
+		sides = append(sides, []any{num(itoa(i + 1)), num(d1Reference[i]), num(d1Candidate[i])})
+	}
+	sides = append(sides, []any{nil, num("12.006"), num("12.006")})
+	add("feet-unnamed-wide", "a column a lot with a mean below that has neither label nor id: told", sides, planFor("own.xlsx", "", characteristicOf(`name = "Bore dia"`)), layoutWant{
+		n: [2]int{13, 13}, mean: [2]float64{(12*d1MeanReference + 12.006) / 13, (12*d1MeanCandidate + 12.006) / 13}, warnings: []string{"rows-without-id"}, texts: []string{": 14."},
+	})
+	var lots []sheetOf
+	for name, values := range map[string][]string{"REF-0417": d1Reference, "CAND-0931": d1Candidate} {
+		rows := [][]any{{"No", "Characteristic", "LSL", "USL"}, {num("1"), "Bore dia", num("11.95"), num("12.05")}}
+		for i, v := range values {
+			rows[0], rows[1] = append(rows[0], num(itoa(i+1))), append(rows[1], num(v))
+		}
+		rows[0], rows[1] = append(rows[0], "Mean of 12", "Max 12"), append(rows[1], num("12.006"), num("12.022"))
+		lots = append(lots, sheetOf{name: name, rows: rows})
+	}
+	slices.SortFunc(lots, func(a, b sheetOf) int { return strings.Compare(b.name, a.name) })
+	cases = append(cases, layoutCase{
+		name: cellsDir + "feet-counted", shows: "a row a characteristic, and behind the parts a column called Mean of 12: no part", files: []layoutFile{{name: "own.xlsx", sheets: lots}},
+		plan: planOf("lot = \"REF-0417\"\nfile = \"own.xlsx\"\nsheet = \"REF-0417\"", "lot = \"CAND-0931\"\nfile = \"own.xlsx\"\nsheet = \"CAND-0931\"", "", ""), want: d1.with(func(w *layoutWant) { w.said = []string{`"Mean of 12", "Max 12"`} }),
+	})
 
 	spelt := long()
 	for i := range 12 {

@@ -9,14 +9,20 @@ import (
 
 // warnIDless warns of rows of readings without a part's id where most rows have one: a mean under a block looks so.
 func (t *table) warnIDless() {
-	if t.part == 0 {
+	part := t.part
+	for _, c := range t.columns {
+		if part == 0 && t.layout == ColumnPerLot && headingMeans(c.heading) == partHeading {
+			part = c.col
+		}
+	}
+	if part == 0 || t.tidy != nil {
 		return
 	}
 	rows := t.wanted()
 	t.wantedRows = nil // the sheet may yet be turned
 	var without []string
 	for _, r := range rows {
-		if c := t.merged(r, t.part); filledText(c) == "" && c.Kind != cells.FormulaNoValue && t.holdsNumber(r) {
+		if c := t.merged(r, part); filledText(c) == "" && c.Kind != cells.FormulaNoValue && t.holdsNumber(r) {
 			without = append(without, strconv.Itoa(t.sheet.Rows[r.at].Number))
 		}
 		if 3*len(without) > len(rows) {
@@ -25,7 +31,7 @@ func (t *table) warnIDless() {
 	}
 	if len(without) > 0 {
 		t.warn("rows-without-id", "%s of numbers without a part's id in %s where the others have one: %s. They are used as readings; if they are means or other summaries, name their cells under exclude with a reason.",
-			qa.Count(len(without), "row", "rows"), t.columnText(t.part), join2(without))
+			qa.Count(len(without), "row", "rows"), t.columnText(part), join2(without))
 	}
 }
 

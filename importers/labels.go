@@ -13,14 +13,13 @@ import (
 // labelFinder finds what rows are for by the texts in them.
 type labelFinder struct {
 	*table
-	parts []int // the columns of parts' ids
-	seen  map[int]string
-	plain map[int]bool // whether the text last seen in a column is no label
+	parts []int          // the columns of parts' ids
+	seen  map[int]string // the last text of a column that is no label
+	aside map[int]bool   // what apart said of a column
 }
 
 // label is what a row's label makes of it, and whether the label is short: such a one may be a part's id just as well.
-// Labels stand in the lot column, in the part column, or in the first cell of a row without a lot; in any cell of a row without
-// a part's id, and without a column of ids beside the table under no heading.
+// Labels stand in the lot column, in the part column, or in the first cell of a row without a lot, else beside the readings.
 func (t *labelFinder) label(r cells.Row) (means string, short bool) {
 	at := make([]cells.Cell, 0, 3)
 	lot := ""
@@ -61,36 +60,66 @@ func (t *labelFinder) label(r cells.Row) (means string, short bool) {
 			return summaryLabel, false // "Mean of lot"
 		}
 	}
-	if named {
-		return "", false
-	}
-	return t.beside(r)
+	return t.beside(r, named)
 }
 
-// beside is what a summary's label in another column makes of a row without a part's id.
-func (t *labelFinder) beside(r cells.Row) (means string, short bool) {
+// beside is what a summary's label in another column makes of a row: one under no heading or in a column of remarks; in any
+// column where the row has no part's id.
+func (t *labelFinder) beside(r cells.Row, named bool) (means string, short bool) {
 	for _, c := range r.Cells {
-		if c.Kind != cells.Text || c.Col == t.lot || len(c.Text) > 40 || plainNumber(c.Text) {
+		if c.Kind != cells.Text || c.Col == t.lot || c.Text == "" || c.Text[0] >= '+' && c.Text[0] <= '9' || len(c.Text) > 60 || named && !t.apart(c.Col) { // numbers above all
 			continue
 		}
-		if t.plain[c.Col] && t.seen[c.Col] == c.Text {
-			continue
-		}
-		bare := t.column(c.Col).heading == ""
-		if len(t.parts) == 0 && !bare && !t.remark(c.Col) {
+		if seen, ok := t.seen[c.Col]; ok && seen == c.Text {
 			continue
 		}
 		w := word(c.Text)
 		if labelWords[w] == summaryLabel || summaryPhrase(w) {
 			return summaryLabel, !statistics[w] && !summaryPhrase(w)
 		}
-		t.seen[c.Col], t.plain[c.Col] = c.Text, true
+		t.seen[c.Col] = c.Text
 	}
 	return "", false
 }
 
-// remark says whether a column is called one of remarks.
-func (t *labelFinder) remark(col int) bool { return remarkHeadings[word(t.column(col).heading)] }
+// summaryNumbered says whether a heading that ends in a number names a summary and no part: "Mean of 5".
+func summaryNumbered(heading string) bool {
+	m := partNumbered.FindStringSubmatch(heading)
+	if m == nil {
+		return false
+	}
+	w := word(strings.TrimRight(m[1], " .#-"))
+	first, _, _ := strings.Cut(w, " ")
+	return utf8.RuneCountInString(first) > 2 && labelWords[first] == summaryLabel
+}
+
+// summaryHeading says whether a row below the readings begins a table of summaries: no number stands in it, and the name of a
+// summary in a column of numbers.
+func (t *table) summaryHeading(r, above cells.Row) bool {
+	found := false
+	for _, c := range r.Cells {
+		switch {
+		case c.Kind == cells.FormulaNoValue || numeric(c):
+			return false
+		case c.Kind == cells.Text && len(c.Text) <= 60 && numeric(above.At(c.Col)):
+			w := word(c.Text)
+			found = found || statistics[w] || summaryPhrase(w)
+		}
+	}
+	lot := filledText(r.At(max(1, t.lot)))
+	return found && !(t.lot > 0 && slices.ContainsFunc(t.hints.lots, func(l string) bool { return qa.JoinSpace(l) == lot }))
+}
+
+// apart says whether a column stands under no heading or is one of remarks.
+func (t *labelFinder) apart(col int) bool {
+	is, ok := t.aside[col]
+	if !ok {
+		heading := t.column(col).heading
+		is = heading == "" || remarkHeadings[word(heading)]
+		t.aside[col] = is
+	}
+	return is
+}
 
 // remarkHeadings are the headings of a column of remarks.
 var remarkHeadings = known("remark|remarks|comment|comments|note|notes|bemerkung|bemerkungen|kommentar|anmerkung|hinweis|remarque|remarques|commentaire|observaciones|observación|nota|note|備考|备注")
@@ -141,7 +170,7 @@ func (t *table) takeLabelled(data []row) []row {
 			parts = append(parts, c.col)
 		}
 	}
-	finder := labelFinder{table: t, parts: parts, seen: map[int]string{}, plain: map[int]bool{}}
+	finder := labelFinder{table: t, parts: parts, seen: map[int]string{}, aside: map[int]bool{}}
 	labels := make([]labelled, len(data))
 	for i, d := range data {
 		labels[i].means, labels[i].short = finder.label(t.sheet.Rows[d.at])

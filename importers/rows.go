@@ -25,7 +25,7 @@ func (t *table) sortRows() error {
 		case len(data) == 0 && r.Number == t.heading+1 && t.isUnitRow(r):
 			t.takeUnits(r)
 			t.mark(i, roleUnit)
-		case t.repeatsHeading(r):
+		case t.repeatsHeading(r), len(data) > 0 && t.summaryHeading(r, t.sheet.Rows[data[len(data)-1].at]):
 			if !t.sameHeading(r) {
 				if t.reading.HeaderRow == 0 && !t.show {
 					return t.refuse("row %d: found a second table with other headings than in row %d, want one; state header_row = %d or %d under [reading], or put it on its own sheet", r.Number, t.heading, t.heading, r.Number)
@@ -48,8 +48,8 @@ func (t *table) sortRows() error {
 	}
 	if t.layout != ColumnPerLot && t.tidy == nil {
 		t.detectPart()
-		t.warnIDless()
 	}
+	t.warnIDless()
 	return nil
 }
 

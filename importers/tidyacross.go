@@ -17,7 +17,7 @@ func (t *table) partsAcross(name int) []int {
 	var before string
 	for _, c := range t.columns { // a part that few lots have is mostly blank
 		p := head.At(c.col)
-		if !t.tidyFree(c, name) || p.Kind == cells.Date || !partNumbered.MatchString(filledText(p)) {
+		if !t.tidyFree(c, name) || p.Kind == cells.Date || !partNumbered.MatchString(filledText(p)) || summaryNumbered(filledText(p)) {
 			continue
 		}
 		if len(parts) > 0 && prefix(p) != before {
