@@ -1,6 +1,8 @@
 package app
 
 import (
+	"os"
+	"path/filepath"
 	"strings"
 	"testing"
 
@@ -8,6 +10,7 @@ import (
 	"fyne.io/fyne/v2/test"
 
 	"lotpair/app/desk"
+	"lotpair/exports"
 	"lotpair/qa"
 )
 
@@ -127,6 +130,40 @@ func TestEverySentenceIsExplained(t *testing.T) {
 	}
 	if got := desk.WordsIn("The lots are mapped."); len(got) != 1 || got[0].Word != "lot" {
 		t.Errorf("got %v, want the lot alone", got)
+	}
+}
+
+// TestPasteAndJSON brings in cells from the clipboard and saves a result for other programs.
+func TestPasteAndJSON(t *testing.T) {
+	w := openedWith(t, inRegister(t, t.TempDir()), "", 1280, 800)
+	w.paste()
+	if w.state.Problem.Text == "" {
+		t.Error("an empty clipboard: got no problem")
+	}
+	w.apply(desk.State.Read)
+	text := "Lot\tPart\tBore [mm]\n"
+	for i := range 12 {
+		text += []string{"A", "B"}[i/6] + "\t" + qa.Plain(float64(i+1)) + "\t40.0" + qa.Plain(float64(10+i*7%13)) + "\n"
+	}
+	w.app.Clipboard().SetContent(text)
+	w.paste()
+	noProblem(t, w)
+	if w.state.Sheet == nil || !w.state.Sheet.Masked || len(w.sheetSaid.Taken) != 2 {
+		t.Fatalf("pasted: got %+v", w.sheetSaid)
+	}
+	w.takeHeadings()
+	w.chooseKind(desk.InTheUnit)
+	typing(w, "margin", "0.05")
+	w.sealDraft()
+	w.takeKept()
+	noProblem(t, w)
+	to := filepath.Join(t.TempDir(), "result.json")
+	res := w.state.Record.Result
+	w.saveBytes("Result", to, func() ([]byte, error) { return exports.ResultJSON(res) })
+	noProblem(t, w)
+	data, err := os.ReadFile(to)
+	if err != nil || !strings.Contains(string(data), "lotpair.result/1") {
+		t.Errorf("JSON: got %.60s, %v", data, err)
 	}
 }
 

@@ -1,6 +1,7 @@
 package app
 
 import (
+	"errors"
 	"path/filepath"
 	"strings"
 
@@ -35,12 +36,14 @@ func (w *window) offerMore() {
 	open := s.Open && s.Sheet == nil
 	add("New comparison from this plan", open, w.beginFromThis)
 	add("Save as plan…", open, w.askSavePlan)
+	add("Save the result as JSON…", open && s.Compared, w.askSaveResult)
 	add("Save the seal…", open && s.Sealed() && !s.Closed(), w.askSaveSeal)
 	add("Particulars…", open && !s.Closed(), w.askParticulars)
 	add("Supersede an earlier record…", open && !s.Closed(), w.askSupersede)
 	add("What was done…", open, w.showTrail)
 	add("Signatures and checks…", open && s.Workbook.State != "", w.showSignatures)
 	apart()
+	add("Paste readings", s.Sheet == nil, w.paste)
 	add("How many parts?…", true, w.askSize)
 	add("Certificates trusted here…", true, w.showTrusted)
 	add("Make an identity…", true, w.askNewIdentity)
@@ -48,6 +51,7 @@ func (w *window) offerMore() {
 	add("Check this installation…", true, w.askQualify)
 	apart()
 	add("Words and what they mean…", true, w.showWords)
+	add("Cautions…", true, func() { w.showText("Cautions", qa.Cautions()) })
 	add("Keys…", true, w.showKeys)
 	add("About Lotpair…", true, w.showAbout)
 	w.offer(w.act.more, items...)
@@ -68,6 +72,30 @@ func (w *window) askSavePlan() {
 		return
 	}
 	w.askFile("Save as plan", "Save", w.besides(".toml"), "a file name that ends in .toml", w.savePlan)
+}
+
+// askSaveResult asks where the result goes as other programs read it (contract: result).
+func (w *window) askSaveResult() {
+	if w.busy() || !w.state.Compared {
+		return
+	}
+	res := w.state.Record.Result
+	w.askFile("Save the result as JSON", "Save", w.besides(".json"), "a file name that ends in .json", func(to string) {
+		w.saveBytes("Result", to, func() ([]byte, error) { return exports.ResultJSON(res) })
+	})
+}
+
+// paste brings in readings that were copied from a spreadsheet, on the page that the keys are on.
+func (w *window) paste() {
+	if w.busy() || w.state.Sheet != nil {
+		return
+	}
+	text := w.app.Clipboard().Content()
+	if strings.TrimSpace(text) == "" {
+		w.apply(failed("Pasting", errors.New("clipboard: found nothing in it, want cells copied from a spreadsheet, with their headings; copy them first")))
+		return
+	}
+	w.bring("clipboard-"+now().Format("150405")+".txt", w.sideOfKeys(), func(string) ([]byte, error) { return []byte(text), nil })
 }
 
 // askSaveStart asks where a plan to start from goes, as the file that is looked at gives it.

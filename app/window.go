@@ -139,6 +139,7 @@ func newWindow(a fyne.App, b Build, l look, r *register.Register) *window {
 	}
 	w.win.Canvas().AddShortcut(&fyne.ShortcutCopy{}, func(fyne.Shortcut) { w.copyBench() })
 	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyC, Modifier: fyne.KeyModifierShortcutDefault | fyne.KeyModifierShift}, func(fyne.Shortcut) { w.copyTable() })
+	w.win.Canvas().AddShortcut(&fyne.ShortcutPaste{}, func(fyne.Shortcut) { w.paste() })
 	w.win.Canvas().AddShortcut(&fyne.ShortcutUndo{}, func(fyne.Shortcut) { w.undo() })
 	w.win.Canvas().AddShortcut(&fyne.ShortcutRedo{}, func(fyne.Shortcut) { w.redo() })
 	w.win.Canvas().AddShortcut(&desktop.CustomShortcut{KeyName: fyne.KeyZ, Modifier: fyne.KeyModifierShortcutDefault | fyne.KeyModifierShift}, func(fyne.Shortcut) { w.redo() })

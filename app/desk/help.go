@@ -114,6 +114,7 @@ var Keys = [][]string{
 	{"Ctrl+L", "all records"},
 	{"Ctrl+M", "what else can be done"},
 	{"Ctrl+C", "copy what the bench says, or the marked text"},
+	{"Ctrl+V", "bring in readings copied from a spreadsheet"},
 	{"Ctrl+Shift+C", "copy all characteristics as a table"},
 	{"F1", "words and what they mean"},
 	{"Ctrl+Z, Ctrl+Shift+Z", "undo, redo; never a seal, an opening of readings, an export or a signature"},
