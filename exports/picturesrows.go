@@ -81,6 +81,7 @@ func (p *painter) plots(cs []qa.Comparison, r qa.Readings) ([]byte, error) {
 		}
 		at := int(math.Round(block*float64(i)+head)) * img.Stride
 		p.colours.take(img.Pix[at:at+plot.Rect.Dx()*plot.Rect.Dy()], plot)
+		clear(img.Pix[at : at+2*img.Stride]) // the rule under the heading shows; a plot has more room than that at its top
 	}
 	return p.encode(img)
 }
