@@ -7,7 +7,7 @@ import (
 )
 
 // footCases are foot rows as people write them: in other languages, in phrases, with the lot's name beside them, with the label
-// in another column or with none; and lots whose names are one to a person's eye.
+// in another column or with none; headings in two languages; and lots whose names are one to a person's eye.
 func footCases() []layoutCase {
 	one := func(rows [][]any) []layoutFile {
 		return []layoutFile{{name: "own.xlsx", sheets: []sheetOf{{name: "Data", rows: rows}}}}
@@ -108,6 +108,10 @@ func footCases() []layoutCase {
 		name: cellsDir + "feet-counted", shows: "a row a characteristic, and behind the parts a column called Mean of 12: no part", files: []layoutFile{{name: "own.xlsx", sheets: lots}},
 		plan: planOf("lot = \"REF-0417\"\nfile = \"own.xlsx\"\nsheet = \"REF-0417\"", "lot = \"CAND-0931\"\nfile = \"own.xlsx\"\nsheet = \"CAND-0931\"", "", ""), want: d1.with(func(w *layoutWant) { w.said = []string{`"Mean of 12", "Max 12"`} }),
 	})
+
+	spoken := long()
+	spoken[0][0], spoken[0][1] = "Lot / Charge", "Sample #"
+	add("headings-twice", "headings in two languages, and with a #", spoken, plain, d1.with(func(w *layoutWant) { w.said = []string{`column A "Lot / Charge"`, `column B "Sample #"`} }))
 
 	spelt := long()
 	for i := range 12 {

@@ -31,10 +31,10 @@ const (
 
 // headingWords say which part a column plays.
 var headingWords = words(
-	means(lotHeading, "lot|lot no|lot nr|lot number|lot id|lotno|lot name|lot code|batch|batch no|batch nr|batch number|batch id|batch code|"+
+	means(lotHeading, "lot|lot no|lot nr|lot number|lot id|lotno|lot name|lot code|lot #|batch #|batch|batch no|batch nr|batch number|batch id|batch code|"+
 		"charge|chargen-nr|chargennummer|charge nr|chargen nr|los|losnummer|los nr|los-nr|lote|lotto|partie"),
 	means(partHeading, "part|part no|part nr|part number|part id|partno|parts|serial|serial no|serial nr|serial number|s/n|sn|no|nr|#|id|number|"+
-		"sample|sample no|sample nr|sample id|sample number|specimen|specimen no|specimen id|piece|piece no|item|item no|unit no|"+
+		"sample #|part #|serial #|piece #|item #|specimen #|sample|sample no|sample nr|sample id|sample number|specimen|specimen no|specimen id|piece|piece no|item|item no|unit no|"+
 		"teil|teil nr|teil-nr|teilenr|teilenummer|teil-id|nummer|seriennummer|serien-nr|probe|proben-nr|probe nr|stück|lfd. nr|lfd nr"),
 	means(groupHeading, "cavity|cavity no|cav|kavität|nest|heat|heat no|melt|schmelze|subgroup|sublot|sub-lot|supplier|lieferant|machine|machine no|maschine|mould|mold|tool no"),
 	means(takerHeading, "operator|inspector|prüfer|gauge no|gage no|messmittel|prüfmittel"),
@@ -98,6 +98,11 @@ func word(text string) string {
 func headingMeans(heading string) string {
 	if m, ok := headingWords[word(heading)]; ok {
 		return m
+	}
+	if first, second, ok := strings.Cut(heading, "/"); ok { // in two languages
+		if m := headingWords[word(first)]; m != "" && m == headingWords[word(second)] {
+			return m
+		}
 	}
 	name, _ := splitUnit(heading)
 	return headingWords[word(name)]
