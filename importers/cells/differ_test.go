@@ -203,13 +203,17 @@ func TestReadGenerated(t *testing.T) {
 	}
 }
 
-// Every workbook of the project reads the same in every way.
+// Every workbook of the project reads the same in every way, but those that are no workbooks: cases of the importers that are refused.
 func TestReadProject(t *testing.T) {
 	n := 0
 	for _, folder := range []string{"testdata", "app", "exports", "importers"} {
 		err := filepath.WalkDir(filepath.Join("..", "..", folder), func(path string, _ fs.DirEntry, err error) error {
 			if err != nil || filepath.Ext(path) != ".xlsx" && filepath.Ext(path) != ".xlsm" {
 				return err
+			}
+			switch filepath.Base(filepath.Dir(path)) {
+			case "n38-cut", "n38-entity", "n38-old", "n38-password", "n38-text":
+				return nil
 			}
 			data, err := os.ReadFile(path)
 			if err != nil {
