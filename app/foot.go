@@ -21,7 +21,11 @@ func (w *window) paintFoot(p *pen, size fyne.Size) {
 	}
 	room := right - 2*margin
 	if v.Said == "" {
-		p.text(fontBody.fit(v.Next, room), margin, 30, fontBody, p.Text)
+		if fontBody.width(v.Next) <= room {
+			p.text(v.Next, margin, 30, fontBody, p.Text)
+			return
+		}
+		p.lines(fontPlain.atMost(fontPlain.wrap(v.Next, room, room), 2, room), margin, 21, 18, fontPlain, p.Text)
 		return
 	}
 	p.text(fontBody.fit(v.Next, room), margin, 21, fontBody, p.Text)

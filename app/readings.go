@@ -109,7 +109,9 @@ func (w *window) paintPageRows(p *pen, size fyne.Size, of qa.Side, top, bottom f
 		s.text(l, y, fontPlain, p.Text)
 		y += findingLine
 	}
-	s.text(w.view.pages[of].ReadingsTitle, r.first-10, fontHeading, p.MutedText)
+	if r.first-6 <= bottom {
+		s.text(w.view.pages[of].ReadingsTitle, r.first-10, fontHeading, p.MutedText)
+	}
 	for i := max(0, r.at(top)); i < r.readings.Len(); i++ {
 		x := r.readings.At(i)
 		y, end := r.top(i), r.top(i+1)

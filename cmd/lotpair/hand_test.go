@@ -153,12 +153,54 @@ func (h *hand) focus() {
 	}
 }
 
+// resize gives the window a size in pixels, as often as it takes.
+func (h *hand) resize(wide, high string) {
+	h.Helper()
+	want := wide + "x" + high
+	for range 20 {
+		h.tool("windowsize", h.id, wide, high)
+		time.Sleep(500 * time.Millisecond)
+		if out, err := tool("getwindowgeometry", h.id); err == nil && strings.Contains(out, want) {
+			time.Sleep(time.Second)
+			return
+		}
+	}
+	h.Errorf("size: want %s; the window does not take it", want)
+}
+
+// scrolledTo turns the wheel over a control until a text is in sight.
+func (h *hand) scrolledTo(words string, over control) control {
+	h.Helper()
+	h.moveTo(over)
+	for range 30 {
+		for _, c := range h.seen() {
+			if c.what == "text" && c.text == words {
+				return h.reads(words, 0)
+			}
+		}
+		h.tool("click", "5")
+		time.Sleep(600 * time.Millisecond)
+	}
+	return h.reads(words, 0)
+}
+
+// moveTo moves the pointer to the middle of a control.
+func (h *hand) moveTo(c control) {
+	h.Helper()
+	scale := 1.0
+	for _, x := range h.seen() {
+		if x.what == "scale" {
+			scale, _ = strconv.ParseFloat(x.text, 64) // our own file
+		}
+	}
+	h.tool("mousemove", "--window", h.id, strconv.Itoa(int((c.left+c.right)/2*scale)), strconv.Itoa(int((c.top+c.bottom)/2*scale)))
+	time.Sleep(150 * time.Millisecond)
+}
+
 // clickAt clicks into the middle of a control.
 func (h *hand) clickAt(c control) {
 	h.Helper()
-	x, y := int((c.left+c.right)/2), int((c.top+c.bottom)/2)
-	h.tool("mousemove", "--window", h.id, strconv.Itoa(x), strconv.Itoa(y))
-	time.Sleep(150 * time.Millisecond)
+	h.moveTo(c)
 	h.tool("click", "1")
 	time.Sleep(350 * time.Millisecond)
 	h.clicks++

@@ -62,9 +62,9 @@ func walk(t *testing.T, name string) (h *hand, dir string) {
 	if !ok {
 		t.Fatalf("size: found %q, want one such as 1280x800", *walkSize)
 	}
-	h.tool("windowsize", h.id, wide, high)
-	h.tool("windowmove", h.id, "0", "0")
 	h.focus()
+	h.tool("windowmove", h.id, "0", "0")
+	h.resize(wide, high)
 	return h, dir
 }
 
@@ -106,7 +106,7 @@ func TestTheWholeJobByMouse(t *testing.T) {
 	h.click("Take the readings")
 	h.sees("Overall:")
 	h.shot("decided")
-	h.clickAt(h.reads("B2", 0))
+	h.clickAt(h.scrolledTo("B2", h.reads("Findings, Wall", 0)))
 	h.sees("Leave out")
 	h.clickAt(h.lineOf("Reason", 0))
 	h.writes("burr at the gauge, NCR-12")
