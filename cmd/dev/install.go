@@ -74,6 +74,7 @@ var outsideNeeds = []need{
 	{"libxml-security-java", file("/usr/share/java/xmlsec.jar")},
 	{"libbcpkix-java", file("/usr/share/java/bcpkix.jar")},
 	{"r-base-core", program("Rscript")},
+	{"r-cran-readxl", command("Rscript", "-e", "library(readxl)")},
 	{"python3-scipy", command(python, "-c", "import scipy")},
 	{"python3-openpyxl", command(python, "-c", "import openpyxl")},
 }
