@@ -55,7 +55,7 @@ func (w *window) paintDraftPage(p *pen, size fyne.Size, of qa.Side) {
 	bring.Refresh()
 	first, second := "Drop a spreadsheet here", "or click, or Ctrl+O"
 	if f := w.state.Record.Plan.LotOf(of).File; f != "" {
-		first, second = f, "drop another to change it, or click"
+		first, second = f, "drop or click to change it"
 	}
 	middle := (top + bottom) / 2
 	p.centred(fontPlain.middle(first, wide-16), size.Width/2, middle-14, fontPlain, p.Text)
