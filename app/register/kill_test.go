@@ -91,7 +91,14 @@ func TestKilledAtAnyMoment(t *testing.T) {
 			t.Fatal(err)
 		}
 		wait := time.Duration(random.IntN(60_000)) * time.Microsecond
-		timer := time.AfterFunc(40*time.Millisecond+wait, func() { _ = c.Process.Kill() })
+		// Every other session is killed from its start on, the others once they have begun to work: on a busy machine a start takes
+		// longer than the work.
+		kill := func() { _ = c.Process.Kill() }
+		working := round%2 == 1
+		var timer *time.Timer
+		if !working {
+			timer = time.AfterFunc(40*time.Millisecond+wait, kill)
+		}
 		var last string
 		for lines := bufio.NewScanner(out); lines.Scan(); {
 			f := strings.SplitN(lines.Text(), " ", 4)
@@ -102,9 +109,14 @@ func TestKilledAtAnyMoment(t *testing.T) {
 			kept[f[1]+" "+f[2]] = f[3]
 			last = f[1]
 			total++
+			if timer == nil {
+				timer = time.AfterFunc(wait, kill)
+			}
 		}
 		_ = c.Wait() // it was killed
-		timer.Stop()
+		if timer != nil {
+			timer.Stop()
+		}
 		r := opened(t, dir)
 		if at, err := r.Place(); err != nil || last != "" && fmt.Sprint(at) < last && len(fmt.Sprint(at)) <= len(last) {
 			t.Errorf("round %d: place %d, %v, want record %s or a later one", round, at, err, last)
@@ -141,7 +153,7 @@ func TestKilledAtAnyMoment(t *testing.T) {
 		t.Errorf("acknowledged acts: got %d back, want %d", found, total)
 	}
 	t.Logf("killed %d times; %d acknowledged acts in %d records, all there", *kills, total, records)
-	if total < *kills {
+	if total < *kills/2 {
 		t.Errorf("acknowledged acts: got %d in %d sessions, want more: the session is killed before it works", total, *kills)
 	}
 }
