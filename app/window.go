@@ -37,6 +37,7 @@ type window struct {
 
 	draft       draftLines
 	drafted     desk.DraftView
+	plans       desk.Planner
 	shift       float64 // the true difference that is thought of while planning
 	sheetSaid   desk.SheetView
 	looked      []byte            // of the file that is looked at
@@ -291,7 +292,7 @@ func (w *window) showDraft() {
 		w.drafted = desk.DraftView{}
 		return
 	}
-	w.drafted = s.Draft(w.shift)
+	w.drafted = s.Draft(w.shift, &w.plans)
 	w.laid(w.draft)
 	for _, d := range w.draft {
 		if d.name == "true difference" {
@@ -317,7 +318,7 @@ func (w *window) showDraft() {
 // show sets everything from the state.
 func (w *window) show() {
 	s := w.state
-	w.view = view{header: s.Header(), spine: s.Spine(), bench: s.Bench(), foot: s.Foot(), pages: w.pages()}
+	w.view = view{header: s.Header(), spine: s.Spine(), bench: s.Bench(), foot: s.FootBy(&w.plans), pages: w.pages()}
 	title := "Lotpair"
 	if s.Open {
 		title = w.view.header.Title + " – Lotpair"

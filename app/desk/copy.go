@@ -16,7 +16,7 @@ func (s State) CopiedBench() string {
 func (s State) CopiedTable() [][]string {
 	if s.Drafting {
 		rows := [][]string{{"characteristic", "lower", "upper", "margin", "planned sd", "permits Ppk", "parts a lot"}}
-		for _, r := range s.Draft(0).Rows {
+		for _, r := range s.Draft(0, nil).Rows {
 			rows = append(rows, []string{r.Name, r.Lower, r.Upper, r.Margin, r.SD, r.Permits, r.Parts})
 		}
 		return rows

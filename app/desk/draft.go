@@ -197,7 +197,9 @@ func lacksMargin(f qa.PlanFault) bool {
 }
 
 // Faults lists what the draft lacks before it can be sealed; where its readings stand is asked for later.
-func (s State) Faults() []string {
+func (s State) Faults() []string { return s.faults(nil) }
+
+func (s State) faults(m *Planner) []string {
 	var out []string
 	for _, f := range s.Record.Plan.Validate() {
 		switch {
@@ -213,8 +215,8 @@ func (s State) Faults() []string {
 	if len(out) == 0 { // what only the characteristic's own limits show
 		p := Settled(s.Record.Plan)
 		for _, c := range p.Characteristics {
-			if one := planned(p, c); one.Fault != "" {
-				out = append(out, one.Fault)
+			if fault := m.fault(p, c); fault != "" {
+				out = append(out, fault)
 			}
 		}
 	}

@@ -75,7 +75,7 @@ func Ways(p qa.Plan) (words []string, second bool) {
 }
 
 // Draft says what the criterion comes to; shift is the true difference that is thought of.
-func (s State) Draft(shift float64) DraftView {
+func (s State) Draft(shift float64, m *Planner) DraftView {
 	p := Settled(s.Record.Plan)
 	v := DraftView{Reference: p.Reference.Lot, Candidate: p.Candidate.Lot, Objective: ObjectiveText(p.Criterion.Objective), Claim: claimText(p.Criterion), Kind: KindOf(p), Sealed: s.Sealed()}
 	v.Of = map[string]string{"log": "geometric mean", "paired": "mean of the pairs"}[p.Criterion.Method]
@@ -90,7 +90,7 @@ func (s State) Draft(shift float64) DraftView {
 	}
 	var all []Planned
 	for i, c := range p.Characteristics {
-		one := planned(p, c)
+		one := m.planned(p, c)
 		all = append(all, one)
 		v.Rows = append(v.Rows, rowOfDraft(one, i == s.Selected))
 		if i == s.Selected {
@@ -98,12 +98,12 @@ func (s State) Draft(shift float64) DraftView {
 			v.Headline, v.Paragraphs = one.sentences(p, shift)
 		}
 	}
-	v.Together = together(all)
+	v.Together = together(all, m)
 	if len(p.Characteristics) == 0 {
 		v.Headline = "What is measured?"
 		v.Paragraphs = []string{"Bring a file in on either side and take its headings and limits: no reading is seen. Or add the characteristics by hand."}
 	}
-	if faults := s.Faults(); len(faults) > 0 {
+	if faults := s.faults(m); len(faults) > 0 {
 		v.Lacks = strings.ReplaceAll(faults[0], "\n", " ")
 	}
 	return v

@@ -22,12 +22,15 @@ type FootView struct {
 }
 
 // Foot says the one next thing to do.
-func (s State) Foot() FootView {
+func (s State) Foot() FootView { return s.FootBy(nil) }
+
+// FootBy says the same with what was planned before.
+func (s State) FootBy(m *Planner) FootView {
 	if !s.Open {
 		return FootView{Next: "Next: begin a comparison, or open a record, a plan or a workbook."}
 	}
 	if s.Drafting {
-		return s.draftFoot()
+		return s.draftFoot(m)
 	}
 	if !s.Compared {
 		v := FootView{Next: "Next: compare again.", Compare: "Compare"}
@@ -60,9 +63,9 @@ func (s State) Foot() FootView {
 }
 
 // draftFoot says the one next thing to do before a comparison was made.
-func (s State) draftFoot() FootView {
+func (s State) draftFoot(m *Planner) FootView {
 	v := FootView{Said: s.Said}
-	faults := s.Faults()
+	faults := s.faults(m)
 	if len(s.Record.Plan.Characteristics) > 0 {
 		v.SavePlan = "Save as plan"
 	}

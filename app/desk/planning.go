@@ -29,7 +29,10 @@ type Planned struct {
 
 // planned says what the plan comes to for one characteristic. The margin in the unit and what it permits are taken from the
 // comparison itself, run on two readings a lot that have the target as their mean and the planned standard deviation.
-func planned(p qa.Plan, c qa.Characteristic) Planned {
+func planned(p qa.Plan, c qa.Characteristic) Planned { return plannedWith(p, c, true) }
+
+// plannedWith is the same; without sizes it is not said how many parts are needed, which takes longest.
+func plannedWith(p qa.Plan, c qa.Characteristic, sizes bool) Planned {
 	out := Planned{Characteristic: c}
 	centre, step := centreOf(c), 1.0
 	if c.SD != nil && *c.SD > 0 {
@@ -93,7 +96,9 @@ func planned(p qa.Plan, c qa.Characteristic) Planned {
 		if c.Target != nil || c.Lower != nil && c.Upper != nil { // else it is not known where the reference sits
 			out.Permits = e.Permits
 		}
-		out.size(p, x)
+		if sizes {
+			out.size(p, x)
+		}
 	}
 	return out
 }
@@ -340,7 +345,7 @@ func (p Planned) halfway() float64 {
 }
 
 // together says how likely all characteristics pass with as many parts as the one that needs most.
-func together(all []Planned) string {
+func together(all []Planned, m *Planner) string {
 	most, chance := 0, 1.0
 	for _, p := range all {
 		if !p.ready {
@@ -352,7 +357,7 @@ func together(all []Planned) string {
 		return ""
 	}
 	for _, p := range all {
-		power, err := p.at(most, 0)
+		power, err := m.power(p, most)
 		if err != nil {
 			return ""
 		}
