@@ -94,6 +94,21 @@ func footCases() []layoutCase {
 	add("feet-unnamed-wide", "a column a lot with a mean below that has neither label nor id: told", sides, planFor("own.xlsx", "", characteristicOf(`name = "Bore dia"`)), layoutWant{
 		n: [2]int{13, 13}, mean: [2]float64{(12*d1MeanReference + 12.006) / 13, (12*d1MeanCandidate + 12.006) / 13}, warnings: []string{"rows-without-id"}, texts: []string{": 14."},
 	})
+	above := append(slices.Clone(sides[:13]), nil, []any{"Average"}, []any{nil, num("12.006"), num("12.006")}, []any{nil, "Max.", "Max."}, []any{nil, num("12.015"), num("12.022")})
+	bore := planFor("own.xlsx", "", characteristicOf(`name = "Bore dia"`))
+	add("feet-label-above", "a column a lot, each summary's name in a row of its own above the numbers", above, bore, d1.with(func(w *layoutWant) {
+		w.warnings, w.texts = []string{"label-above"}, []string{`row 15 says "Average" and nothing else; 1 row of numbers is under it (16)`, "(18)"}
+	}))
+	bare := [][]any{{"REF-0417", "CAND-0931"}}
+	for i := range d1Reference {
+		bare = append(bare, []any{num(d1Reference[i]), num(d1Candidate[i])})
+	}
+	add("feet-label-bare", "the same without a column of ids", append(slices.Clone(bare), nil, []any{"Average"}, []any{num("12.006"), num("12.006")}), bore, d1.with(func(w *layoutWant) { w.warnings = []string{"label-above"} }))
+	add("feet-label-ask", "the name of a summary above two rows of numbers: stop", append(slices.Clone(bare), nil, []any{"Statistics"}, []any{num("12.006"), num("12.006")}, []any{num("12.01"), num("12.01")}), bore,
+		layoutWant{fault: []string{`row 15: found "Statistics" alone above the numbers of rows 16 to 17`}})
+	add("feet-label-lots", "the name of a summary above its number in each lot", feet(func(lot string) [][]any {
+		return [][]any{{lot, "Average"}, {lot, nil, num("12.006")}, {nil, "Max."}, {lot, nil, num("12.022")}}
+	}), plain, d1.with(func(w *layoutWant) { w.warnings = []string{"label-above"} }))
 	var lots []sheetOf
 	for name, values := range map[string][]string{"REF-0417": d1Reference, "CAND-0931": d1Candidate} {
 		rows := [][]any{{"No", "Characteristic", "LSL", "USL"}, {num("1"), "Bore dia", num("11.95"), num("12.05")}}

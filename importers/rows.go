@@ -11,12 +11,13 @@ import (
 // sortRows tells the rows below the headings apart: unit row, limits, summaries, notes and rows of the lots.
 func (t *table) sortRows() error {
 	data := make([]row, 0, len(t.sheet.Rows))
+	lot, under := "", -1 // of the rows so far; the last row that the name of a summary above it speaks of
 	for i, r := range t.sheet.Rows {
 		if r.Number <= t.heading || !slices.ContainsFunc(r.Cells, func(c cells.Cell) bool { return filledText(c) != "" || c.Kind == cells.FormulaNoValue }) {
 			continue
 		}
 		switch {
-		case t.beyondTable(r.Number):
+		case t.beyondTable(r.Number), i <= under:
 			continue
 		case t.comment(r), t.book.IsText && len(r.Cells) == 1 && len(r.Cells[0].Text) > 3 && ruler(r.Cells[0].Text):
 			t.mark(i, roleComment)
@@ -25,7 +26,7 @@ func (t *table) sortRows() error {
 		case len(data) == 0 && r.Number == t.heading+1 && t.isUnitRow(r):
 			t.takeUnits(r)
 			t.mark(i, roleUnit)
-		case t.repeatsHeading(r), len(data) > 0 && t.summaryHeading(r, t.sheet.Rows[data[len(data)-1].at]):
+		case t.repeatsHeading(r), len(data) > 0 && len(t.belowLabel(i, lot)) != 1 && t.summaryHeading(r, t.sheet.Rows[data[len(data)-1].at]):
 			if !t.sameHeading(r) {
 				if t.reading.HeaderRow == 0 && !t.show {
 					return t.refuse("row %d: found a second table with other headings than in row %d, want one; state header_row = %d or %d under [reading], or put it on its own sheet", r.Number, t.heading, t.heading, r.Number)
@@ -39,6 +40,16 @@ func (t *table) sortRows() error {
 			}
 			t.mark(i, roleHeading)
 		default:
+			if below := t.belowLabel(i, lot); len(data) > 0 && len(below) > 0 {
+				if err := t.takeBelowLabel(i, below); err != nil {
+					return err
+				}
+				under = below[len(below)-1]
+				continue
+			}
+			if t.lot > 0 && filledText(r.At(t.lot)) != "" {
+				lot = filledText(r.At(t.lot))
+			}
 			data = append(data, row{at: i})
 		}
 	}

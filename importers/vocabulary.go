@@ -56,7 +56,7 @@ var labelWords = words(
 		"tolerance -|tolerance −|- tolerance|− tolerance|lower dev|lower deviation|lower limit deviation|dev -|dev −|- dev|− dev|dev-|-dev|lower allowance|unteres abmaß|unteres abmass|unteres grenzabmaß|"+
 		"unteres grenzabmass|untere toleranz|toleranz -|toleranz −|- toleranz|untere abweichung|toleranz unten|minustoleranz|tolerance lower|tolerance min|lower tolerances|tolerances -"),
 	means(bothTol, "±|+/-|±tol|± tol|tol ±|tol±|tol. ±|tol +/-|tol. +/-|tol (±)|tol (+/-)|tolerance ±|± tolerance|tolerance +/-|tolerance (±)|tolerance (+/-)|plus/minus|toleranz ±|± toleranz|toleranz +/-"),
-	means(summaryLabel, "mean|average|avg|mean value|arithmetic mean|grand mean|x-bar|xbar|x̄|x̅|s|sd|sigma|σ|std|stdev|std dev|std. dev|st. dev|st dev|"+
+	means(summaryLabel, "mean|average|avg|averages|means|mean values|mittelwerte|statistics|summary statistics|statistik|mean value|arithmetic mean|grand mean|x-bar|xbar|x̄|x̅|s|sd|sigma|σ|std|stdev|std dev|std. dev|st. dev|st dev|"+
 		"standard deviation|stdabw|std.-abw|standardabweichung|streuung|var|variance|varianz|min|minimum|max|maximum|range|r|spannweite|median|mode|"+
 		"sum|total|summe|n|count|anzahl|no of values|number of values|cp|cpk|pp|ppk|cm|cmk|cv|rsd|se|sem|q1|q3|ucl|lcl|oeg|ueg|"+
 		"mittelwert|mittel|mw|durchschnitt|ø|3 sigma|6 sigma|+3s|-3s|3s|6s|stabw|std abw|stand.-abw|kleinster wert|größter wert|kleinstwert|größtwert|mittelwert x̄|x quer|x-quer|"+
