@@ -25,7 +25,9 @@ type chooser struct {
 	list    *scrolled
 	chosen  func(path string)
 	dialog  dialog.Dialog
-	asked   int // of the looks into folders, because the last may end first
+	asked   int  // of the looks into folders, because the last may end first
+	listed  int  // the look that the list shows
+	pending bool // return was pressed before the list showed what was typed
 }
 
 // choosable is one line of the list.
@@ -129,9 +131,13 @@ func (c *chooser) look() {
 		rows, said := choosables(text, c.endings, recent)
 		return func() {
 			if mine == c.asked {
-				c.rows, c.said, c.cursor = rows, said, 0
+				c.rows, c.said, c.cursor, c.listed = rows, said, 0, mine
 				c.list.scroll.ScrollToTop()
 				c.list.scroll.Refresh()
+				if c.pending {
+					c.pending = false
+					c.take(0)
+				}
 			}
 		}
 	})
@@ -189,6 +195,10 @@ func (c *chooser) key(k fyne.KeyName) bool {
 	case k == fyne.KeyReturn || k == fyne.KeyEnter:
 		if info, err := os.Stat(c.line.Text); err == nil && !info.IsDir() {
 			c.choose(c.line.Text)
+			return true
+		}
+		if c.listed != c.asked {
+			c.pending = true
 			return true
 		}
 		c.take(c.cursor)

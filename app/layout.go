@@ -71,7 +71,7 @@ func (w *window) spineHeight(width, room float32) float32 {
 	if w.state.Drafting {
 		wanted = 382
 	}
-	wanted = max(wanted, 360)
+	wanted = max(wanted, 360, room/2) // where there is more room, the readings on the pages have half of it
 	bench := max(250, room*0.4)
 	return max(200, min(wanted, room-bench))
 }
