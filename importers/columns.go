@@ -2,6 +2,7 @@ package importers
 
 import (
 	"fmt"
+	"regexp"
 	"slices"
 	"strconv"
 
@@ -202,6 +203,7 @@ func (t *table) findMeasured() error {
 	if err := t.countsOfParts(); err != nil {
 		return err
 	}
+	var numbered []column // whose heading is a number
 	counts := t.contents()
 	for i, c := range t.columns {
 		if t.playsPart(c.col) {
@@ -212,6 +214,9 @@ func (t *table) findMeasured() error {
 		switch {
 		case filled == 0:
 			why = "it is empty"
+		case isNumber(c.heading):
+			numbered = append(numbered, c)
+			continue
 		case headingMeans(c.heading) == orderHeading || 2*dates > filled:
 			why = "it holds dates or an order"
 		case headingMeans(c.heading) == partHeading:
@@ -234,12 +239,29 @@ func (t *table) findMeasured() error {
 		}
 		t.say("%s is not taken as a measurement: %s.", t.columnText(c.col), why)
 	}
+	t.measureNumbered(numbered)
 	t.warnReplicates()
 	if len(t.measured) == 0 {
 		return t.refuse("found no column of measurements, want at least one; name it under [[characteristic]] in the plan, with kind = \"attribute\" and failed where it holds words such as OK and NOK")
 	}
 	return nil
 }
+
+// measureNumbered takes columns under whole numbers as measurements where no other is one. Else a number is no heading: it is
+// the first of numbers beside the table.
+func (t *table) measureNumbered(numbered []column) {
+	whole := !slices.ContainsFunc(numbered, func(c column) bool { return !wholeHeading.MatchString(c.heading) })
+	for _, c := range numbered {
+		if whole && (len(t.measured) == 0 || wholeHeading.MatchString(t.column(t.measured[0]).heading)) {
+			t.measured = append(t.measured, c.col)
+			continue
+		}
+		t.warn("number-as-heading", "%s is not taken as a measurement: a number is no heading, and what stands under it may be a summary; name the column under [[characteristic]] to take it.", t.columnText(c.col))
+	}
+}
+
+// wholeHeading is a whole number as a heading.
+var wholeHeading = regexp.MustCompile(`^\d{1,4}$`)
 
 // playsPart says whether a column names the lots, parts, order, groups or pairs.
 func (t *table) playsPart(col int) bool {

@@ -5,6 +5,7 @@ import (
 	"strings"
 
 	"lotpair/importers/cells"
+	"lotpair/qa"
 )
 
 // mark is how the decimal mark of a column's texts was settled.
@@ -76,6 +77,20 @@ func settleDecimal(texts iter.Seq[cells.Cell], plan string, lower, upper *float6
 		}
 	}
 	return mark{unclear: open}
+}
+
+// warnGrouping tells of a column between semicolons whose every number has a point and three digits behind it: where semicolons
+// stand because the comma is the decimal mark, 12.500 may be twelve thousand. Limits in the plan speak for the point.
+func (t *table) warnGrouping(m mark, plan qa.Characteristic, col int) {
+	if m.grouping == nil || !t.book.IsText || t.book.Delimiter != ";" || plan.Lower != nil || plan.Target != nil || plan.Upper != nil {
+		return
+	}
+	value, _, err := ParseNumber(m.grouping.Text, '.')
+	if err != nil {
+		return
+	}
+	t.warn("decimal-assumed", "%s: every number has a point and three digits behind it; it is read as a decimal point, %s in %s as %s. If the point groups thousands, state decimal = \",\" under [reading]; decimal = \".\" settles it as read.",
+		t.columnText(col), quoted(m.grouping.Text), m.grouping.Name(), qa.Plain(value))
 }
 
 // pointOf says quickly of a plain number without a comma whether it has a point, and whether that could be a thousands mark.

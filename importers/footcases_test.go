@@ -124,6 +124,13 @@ func footCases() []layoutCase {
 		plan: planOf("lot = \"REF-0417\"\nfile = \"own.xlsx\"\nsheet = \"REF-0417\"", "lot = \"CAND-0931\"\nfile = \"own.xlsx\"\nsheet = \"CAND-0931\"", "", ""), want: d1.with(func(w *layoutWant) { w.said = []string{`"Mean of 12", "Max 12"`} }),
 	})
 
+	beside := long()
+	for i, x := range [][]any{{"Average", num("12.0039")}, {"Min", num("11.989")}, {"Max", num("12.015")}, {"Cpk", num("1.33")}} {
+		beside[i] = append(beside[i], nil, nil, x[0], x[1])
+	}
+	add("feet-beside", "statistics to the right of the table without headings: the first of them is no heading", beside, plain, d1.with(func(w *layoutWant) {
+		w.warnings, w.texts = []string{"number-as-heading"}, []string{`column G "12.0039" is not taken`}
+	}))
 	spoken := long()
 	spoken[0][0], spoken[0][1] = "Lot / Charge", "Sample #"
 	add("headings-twice", "headings in two languages, and with a #", spoken, plain, d1.with(func(w *layoutWant) { w.said = []string{`column A "Lot / Charge"`, `column B "Sample #"`} }))

@@ -394,6 +394,7 @@ func (t *table) settleConverted(c *qa.Characteristic, plan qa.Characteristic, co
 		}
 		t.say("%s is read with a %s: %s.", t.columnText(col), mark, m.said)
 	}
+	t.warnGrouping(m, plan, col)
 	file, err := t.limitsIn(col, c, v, m.decimal)
 	switch {
 	case err != nil && (plan.Lower != nil || plan.Target != nil || plan.Upper != nil):
