@@ -44,3 +44,16 @@ func TestBetaIntegral(t *testing.T) {
 		}
 	}
 }
+
+// What is integrated may take long itself: few places do, also where a density with few freedoms falls off slowly.
+func TestBetaIntegralPlaces(t *testing.T) {
+	for _, d := range [][2]float64{{1, 1}, {1, 2}, {2, 30}, {1, 5000}, {10, 12}, {1e4, 1e4}} {
+		for low, most := range map[float64]int{0: 300, d[0] / d[1]: 700} {
+			places := 0
+			BetaIntegral(d[0]/2, d[1]/2, low, math.Inf(1), func(x, _ float64) float64 { places++; return math.Sin(9 * x) })
+			if places > most {
+				t.Errorf("freedoms %v from %v: got %d places, want at most %d", d, low, places, most)
+			}
+		}
+	}
+}
