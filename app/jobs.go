@@ -32,6 +32,7 @@ type jobs struct {
 const (
 	shownAfter = 200 * time.Millisecond
 	toldEvery  = 80 * time.Millisecond
+	givenBack  = time.Second
 )
 
 // change is what a job brings back: an act on the state as it is then.
@@ -84,7 +85,7 @@ func (w *window) work(name string, do func(watch qa.Watch) change) {
 		c := run(watch)
 		late.Stop()
 		hand(func() { done(c) })
-		debug.FreeOSMemory() // a large file was read: its remains are given back at once
+		time.AfterFunc(givenBack, debug.FreeOSMemory) // a large file was read, and its view was made: what remains of both is given back
 	}()
 }
 

@@ -3,6 +3,7 @@ package app
 import (
 	"errors"
 	"runtime"
+	"runtime/debug"
 
 	"fyne.io/fyne/v2"
 
@@ -32,6 +33,7 @@ type Options struct {
 
 // Run opens the window and returns when it is closed: what the user did, an act a line.
 func Run(a fyne.App, o Options) []string {
+	debug.SetGCPercent(50) // a window stands open all day: memory is dearer than the processor's time
 	r, said, err := openRegister(o.Register)
 	l := wanted(o.Dark)
 	l.clears = true
