@@ -59,6 +59,11 @@ func cellCases() []layoutCase {
 		return planOf("lot = \"REF-0417\"\nfile = \"ref.csv\"", "lot = \"CAND-0931\"\nfile = \"cand.csv\""+unit, "", characteristicOf(`name = "Bore dia"`, `unit = "mm"`, "target = 12"))
 	}
 	add("n10", "the candidate in inches", inches, two("\nunit = \"in\""), layoutWant{n: [2]int{12, 12}, mean: [2]float64{d1MeanReference, 12.0081886666667}, upper: 0.010080, warnings: []string{"converted"}})
+	for i, naked := range [][2]string{{"Bore dia mm", "Bore dia, inch"}, {"Bore dia in mm", "Bore dia/in"}} {
+		add("n10-naked-"+itoa(i+1), "the same with units without brackets: "+naked[0]+", "+naked[1],
+			[]layoutFile{{name: "ref.csv", text: string(lotFile(naked[0], d1Reference))}, {name: "cand.csv", text: string(lotFile(naked[1], d1CandidateInch))}},
+			two(""), layoutWant{fault: []string{"cand.csv!B1", "25.4", "[candidate]"}})
+	}
 	add("n10-ask", "the same without a word on the unit", inches, two(""), layoutWant{fault: []string{"cand.csv!B1", `"in"`, "25.4", "[candidate]"}})
 
 	for i, text := range []string{"", "N/A", "n.d.", "-", "—", ".", "?", " ", "#N/A"} {
@@ -169,7 +174,9 @@ func textCases() []layoutCase {
 	} {
 		want := d1
 		if name == "semicolon" || name == "mark" || name == "trailing" || name == "last-line" { // 12.003 between semicolons
-			want = d1.with(func(w *layoutWant) { w.warnings, w.texts = []string{"decimal-assumed"}, []string{`"12.003" in C2 as 12.003`} })
+			want = d1.with(func(w *layoutWant) {
+				w.warnings, w.texts = []string{"decimal-assumed"}, []string{`"12.003" in C2 as 12.003`}
+			})
 		}
 		cases = append(cases, layoutCase{name: cellsDir + "n27-" + name, files: []layoutFile{{name: "own.csv", text: text}}, plan: planFor("own.csv", "", ""), want: want})
 	}

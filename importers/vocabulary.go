@@ -172,7 +172,7 @@ func unbracket(s string) string {
 	return s
 }
 
-// splitUnit takes a unit in brackets off the end of a heading: square brackets hold one, round ones only a known one.
+// splitUnit takes a unit off the end of a heading: square brackets hold one, round ones and none only a known one.
 func splitUnit(heading string) (name, unit string) {
 	h := joined(heading)
 	for _, b := range []string{"[]", "()"} {
@@ -188,7 +188,7 @@ func splitUnit(heading string) (name, unit string) {
 			return strings.TrimSpace(h[:i]), in
 		}
 	}
-	return h, ""
+	return nakedUnit(h)
 }
 
 // cutUnit splits a cell such as "12.3 mm" into its number and its unit.
