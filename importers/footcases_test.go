@@ -131,6 +131,10 @@ func footCases() []layoutCase {
 	add("feet-beside", "statistics to the right of the table without headings: the first of them is no heading", beside, plain, d1.with(func(w *layoutWant) {
 		w.warnings, w.texts = []string{"number-as-heading"}, []string{`column G "12.0039" is not taken`}
 	}))
+	limits := append([][]any{{"Characteristic", nil, "Bore dia"}, {"USL", nil, num("12.05")}, {"LSL", nil, num("11.95")}, nil}, long()...)
+	add("limits-above", "limits above the headings are told", limits, plain, d1.with(func(w *layoutWant) {
+		w.warnings, w.texts = []string{"limits-above"}, []string{`row 2 says "USL" above the headings`, `row 3 says "LSL"`}
+	}))
 	spoken := long()
 	spoken[0][0], spoken[0][1] = "Lot / Charge", "Sample #"
 	add("headings-twice", "headings in two languages, and with a #", spoken, plain, d1.with(func(w *layoutWant) { w.said = []string{`column A "Lot / Charge"`, `column B "Sample #"`} }))

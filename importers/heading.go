@@ -164,6 +164,7 @@ func (t *table) readHeadings() error {
 			if len(r.Cells) > 0 {
 				above++
 			}
+			t.warnLimitsAbove(r)
 			t.mark(i, roleAbove)
 			continue
 		}

@@ -95,6 +95,9 @@ func (w Watched) InspectAs(name string, data []byte, stated qa.ReadingPlan, all 
 	if err != nil {
 		return Inspection{}, err
 	}
+	if stated.Sheet == "" {
+		in.warnSheets(b, m.tables)
+	}
 	in.mapping, in.Layout, in.Sheet, in.HeaderRow = m, m.Reading.Layout, m.tables[0].sheet.Name, m.tables[0].heading
 	in.Reasons = append(slices.Clone(b.Said), "the layout "+in.Layout+" is "+string(m.Confidence)+": "+m.Reasons[0])
 	in.Reasons = append(in.Reasons, m.Reasons[1:]...)

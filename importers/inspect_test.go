@@ -93,3 +93,19 @@ func TestInspectRefuses(t *testing.T) {
 	_, err = Inspect("a.xlsx", []byte("x"), "", "")
 	wantFileError(t, err, "a.xlsx")
 }
+
+// A sheet of means before the readings is shown with a word on the other.
+func TestInspectOtherSheets(t *testing.T) {
+	means := [][]any{{"Lot", "Mean"}, {"REF-0417", num("12.0039")}, {"CAND-0931", num("12.0082")}}
+	in, err := Inspect("own.xlsx", xlsx(t, sheetOf{name: "Summary", rows: means}, sheetOf{name: "Raw", rows: long()}), "", "")
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, w := range in.Warnings {
+		if w.Code == "other-sheets" {
+			wantWords(t, w.Text, `"Summary" is shown`, `"Raw"`)
+			return
+		}
+	}
+	t.Errorf("got the warnings %v, want other-sheets", in.Warnings)
+}
