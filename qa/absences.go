@@ -43,7 +43,11 @@ func (c *comparison) absences(plan Plan) {
 	}
 	if s := plan.Sensitivity; s != nil && s.Resamples > 0 {
 		made := slices.ContainsFunc(c.Sensitivity, func(s SensitivityResult) bool { return s.Resamples > 0 })
-		c.absent(!made, "", "sensitivity.resamples", "The resampling that the plan asks for is not made here: it is for the difference of two independent lots that vary, against a margin in the unit.")
+		why := "it needs a margin, readings that vary, and for a ratio a reference whose means drawn are all above 0."
+		if c.asked.grouped {
+			why = "readings of one group are not independent, and drawing or exchanging single ones would show too little variation."
+		}
+		c.absent(!made, "", "sensitivity.resamples", "The resampling that the plan asks for is not made here: "+why)
 	}
 	switch r := c.Ranks; {
 	case r == nil:

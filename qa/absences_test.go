@@ -107,8 +107,8 @@ func TestResamplesNotMade(t *testing.T) {
 		made      bool
 	}{
 		{qa.Equivalence, absolute(0.02), true},
-		{qa.Equivalence, &qa.Margin{ReferenceFraction: ptr(0.1)}, false},
-		{qa.Equivalence, &qa.Margin{KeepPpk: ptr(1.0), Mean: ptr(12.0), SD: ptr(0.01)}, false},
+		{qa.Equivalence, &qa.Margin{ReferenceFraction: ptr(0.1)}, true},
+		{qa.Equivalence, &qa.Margin{KeepPpk: ptr(1.0), Mean: ptr(12.0), SD: ptr(0.01)}, true},
 		{qa.Difference, nil, false},
 	} {
 		p := plan(c.objective, c.margin)
@@ -122,6 +122,17 @@ func TestResamplesNotMade(t *testing.T) {
 			t.Errorf("%s: got said %v, want %v: %v", c.objective, said, !c.made, got.Warnings)
 		}
 	}
+	for i := range ref.Readings {
+		ref.Readings[i].Group, cand.Readings[i].Group = fmt.Sprint(i%3), fmt.Sprint(i%3)
+	}
+	p := plan(qa.Equivalence, absolute(0.02))
+	p.Criterion.Groups, p.Reading.GroupColumn, p.Sensitivity = "random", "Heat", &qa.SensitivityPlan{Resamples: 200}
+	for _, w := range one(t, p, lots(ch, ref, cand)).Warnings {
+		if w.Path == "sensitivity.resamples" && strings.Contains(w.Text, "not independent") {
+			return
+		}
+	}
+	t.Error("random groups: got no reason why there is no resampling")
 }
 
 // What has no meaning for an attribute is no part of its plan.

@@ -253,31 +253,6 @@ func TestAttribute(t *testing.T) {
 	}
 }
 
-// TestResampled checks that the same seed gives the same answers, that the answers state it, and that they lie near Welch's on
-// data that suit it.
-func TestResampled(t *testing.T) {
-	ch, ref, cand := d1()
-	p := plan(qa.Equivalence, absolute(0.02))
-	p.Sensitivity = &qa.SensitivityPlan{Resamples: 2000, Seed: 7}
-	a, b := one(t, p, lots(ch, ref, cand)), one(t, p, lots(ch, ref, cand))
-	found := 0
-	for i, s := range a.Sensitivity {
-		if s.Method != "bootstrap" && s.Method != "permutation" {
-			continue
-		}
-		found++
-		if *s.Lower != *b.Sensitivity[i].Lower || s.Resamples != 2000 || *s.Seed != 7 {
-			t.Errorf("%s: got %v and %v, seed %v, resamples %d", s.Method, *s.Lower, *b.Sensitivity[i].Lower, *s.Seed, s.Resamples)
-		}
-		if math.Abs(*s.Upper-*a.Equivalence.Upper) > 0.001 {
-			t.Errorf("%s: upper end %v, Welch's %v", s.Method, *s.Upper, *a.Equivalence.Upper)
-		}
-	}
-	if found != 2 {
-		t.Errorf("got %d of bootstrap and permutation", found)
-	}
-}
-
 // TestStratified is D3: cavities in other shares in the two lots. R 4 gives a difference of 0.033333 with the 90 % interval
 // −0.001628 to 0.068295 over all, and −0.00125 and 0.00125 within the cavities: nothing is left within them.
 func TestStratified(t *testing.T) {

@@ -17,6 +17,7 @@ func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
 	if c.margin.scale != scaleDifference {
 		c.otherRatios()
 		c.withBias()
+		c.resampled(plan)
 		if !paired {
 			c.putBack(ref, cand)
 			c.withoutOutlying()
@@ -41,9 +42,7 @@ func (c *comparison) otherMethods(plan Plan, ref, cand Series) {
 	if r := c.Ranks; r != nil && r.Lower != nil && r.Upper != nil {
 		c.interval("ranks", r.Shift, stats.Interval{Level: r.Level, Lower: *r.Lower, Upper: *r.Upper}, nil)
 	}
-	if r := plan.Sensitivity; r != nil && r.Resamples > 0 && !paired && !c.asked.grouped {
-		c.resampled(stats.Resampling{Seed: uint64(r.Seed), Resamples: r.Resamples, Run: c.known.watch.blocks(c.Name)})
-	}
+	c.resampled(plan)
 	if !paired {
 		c.putBack(ref, cand)
 		c.withoutOutlying()
@@ -76,23 +75,6 @@ func (c *comparison) stratified() {
 	}
 	if e, err := stats.StratifiedDifference(x, y); err == nil && e.Groups > 1 {
 		c.again("stratified", e.Estimate, nil)
-	}
-}
-
-// The fewest and the most resamples that a plan may ask for: fewer give no interval, more take minutes.
-const (
-	fewestResamples = 100
-	mostResamples   = 1_000_000
-)
-
-// resampled adds the bootstrap (BCa, Efron 1987) and the permutation of Welch's t, with the seed and number that the plan states.
-func (c *comparison) resampled(r stats.Resampling) {
-	level := 1 - 2*c.Alpha
-	if b, err := stats.BootstrapMeans(c.ref.values, c.cand.values, level, r); err == nil {
-		c.interval("bootstrap", b.Value, b.Interval, &r)
-	}
-	if p, err := stats.Permute(c.ref.values, c.cand.values, r); err == nil {
-		c.interval("permutation", c.cand.summary.Mean-c.ref.summary.Mean, p.Interval(level), &r)
 	}
 }
 

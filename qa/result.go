@@ -1,10 +1,10 @@
 package qa
 
-// ResultFormat and Calculation name the format of a Result and the edition of the arithmetic behind it: a change of any
-// number that the same readings give raises Calculation.
+// ResultFormat and Calculation name the format of a Result and the edition of the arithmetic behind it: a change of any number
+// or finding that the same readings give, down to its words, raises Calculation, once a release.
 const (
 	ResultFormat = "lotpair.result/1"
-	Calculation  = 1
+	Calculation  = 2
 )
 
 // Result is the outcome of one comparison (contract: result). Numbers are full doubles; a value that does not exist is nil,

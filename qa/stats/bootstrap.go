@@ -33,18 +33,25 @@ func BootstrapMeans(ref, cand []float64, level float64, r Resampling) (Bootstrap
 		}
 	})
 	// Leaving out reading i moves the mean by its deviation over n-1.
-	var cubes, squares float64
+	var out skew
 	for lot, x := range [][]float64{a, b} {
-		sign := float64(2*lot - 1)
-		n := float64(len(x))
-		for _, d := range x {
-			d /= n
-			squares += d * d
-			cubes += sign * d * d * d
-		}
+		out.add(float64(2*lot-1)/float64(len(x)), x)
 	}
-	return bca(value, draws, 0, cubes/math.Pow(squares, 1.5)/6, level)
+	return bca(value, draws, 0, out.acceleration(), level)
 }
+
+// A skew adds up what readings put into an estimate, for the skewness of it.
+type skew struct{ cubes, squares float64 }
+
+func (s *skew) add(scale float64, x []float64) {
+	for _, d := range x {
+		d *= scale
+		s.squares += d * d
+		s.cubes += d * d * d
+	}
+}
+
+func (s skew) acceleration() float64 { return s.cubes / math.Pow(s.squares, 1.5) / 6 }
 
 func resampled(ref, cand []float64, r Resampling) error {
 	switch {

@@ -33,16 +33,11 @@ func BootstrapMedians(ref, cand []float64, level float64, decimals int, r Resamp
 			draws[i] = rounded(drawnMedian(random, b)-drawnMedian(random, a), decimals)
 		}
 	})
-	var cubes, squares float64
+	var out skew
 	for lot, x := range [][]float64{a, b} {
-		sign := float64(2*lot - 1)
-		for _, d := range leftOut(x) {
-			d /= float64(len(x))
-			squares += d * d
-			cubes += sign * d * d * d
-		}
+		out.add(float64(2*lot-1)/float64(len(x)), leftOut(x))
 	}
-	return bca(value, draws, value, cubes/math.Pow(squares, 1.5)/6, level)
+	return bca(value, draws, value, out.acceleration(), level)
 }
 
 // drawnMedian is the median of a lot drawn from sorted readings.
