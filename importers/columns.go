@@ -241,6 +241,9 @@ func (t *table) findMeasured() error {
 	}
 	t.measureNumbered(numbered)
 	t.warnReplicates()
+	if all := t.foundLots(); len(t.measured) == 0 && len(t.wanted()) == 0 && len(all) > 0 {
+		return t.refuse("found the lots %s, want %s; correct the lots' names in the plan%s", list(names(all)), list(t.hints.lots), datedLots(all))
+	}
 	if len(t.measured) == 0 {
 		return t.refuse("found no column of measurements, want at least one; name it under [[characteristic]] in the plan, with kind = \"attribute\" and failed where it holds words such as OK and NOK")
 	}

@@ -139,6 +139,15 @@ func footCases() []layoutCase {
 	spoken[0][0], spoken[0][1] = "Lot / Charge", "Sample #"
 	add("headings-twice", "headings in two languages, and with a #", spoken, plain, d1.with(func(w *layoutWant) { w.said = []string{`column A "Lot / Charge"`, `column B "Sample #"`} }))
 
+	days := long()
+	for i := range days[1:] {
+		days[i+1][0] = styled{map[bool]string{true: "46085", false: "46092"}[i < 12], 1}
+	}
+	dayPlan := func(reference, candidate string) string {
+		return planOf("lot = \""+reference+"\"\nfile = \"own.xlsx\"", "lot = \""+candidate+"\"\nfile = \"own.xlsx\"", "", "")
+	}
+	add("lots-dates-ask", "lots named by dates, asked for as people write them: stop", days, dayPlan("2026-03-04", "2026-03-11"), layoutWant{fault: []string{`"46085", "46092"`, "day numbers", "as text"}})
+	add("lots-dates", "the same by the day numbers", days, dayPlan("46085", "46092"), d1)
 	spelt := long()
 	for i := range 12 {
 		spelt[i+1][0] = map[int]any{0: "118", 1: "118.0", 2: "0118"}[i%3]

@@ -38,6 +38,14 @@ func (t *table) foundLots() []found {
 	return all
 }
 
+// datedLots says what to do where lots are named by dates: a spreadsheet keeps those as day numbers.
+func datedLots(all []found) string {
+	if !slices.ContainsFunc(all, func(f found) bool { return f.first.Kind == cells.Date }) {
+		return ""
+	}
+	return "; the cells hold dates, which a spreadsheet keeps as these day numbers: name the number as the lot, or write the lots as text in the file"
+}
+
 // lotRows are the rows of one side's lot and its name. A lot that the plan names and the table lacks is a *PlanError that
 // lists the lots found.
 func (t *table) lotRows(side qa.Side, plan qa.LotPlan) (string, []row, error) {
@@ -68,7 +76,7 @@ func (t *table) lotRows(side qa.Side, plan qa.LotPlan) (string, []row, error) {
 				near = fmt.Sprintf("; %s is a near spelling (%s)", quoted(l.name), t.cellPlace(l.first))
 			}
 		}
-		return "", nil, t.refuse("%s.lot: found the lots %s%s, want %s; correct the lot's name in the plan", side, list(names(all)), near, quoted(want))
+		return "", nil, t.refuse("%s.lot: found the lots %s%s, want %s; correct the lot's name in the plan%s", side, list(names(all)), near, quoted(want), datedLots(all))
 	}
 	return rows[0].lot, rows, nil
 }
