@@ -99,18 +99,14 @@ func noteContent(v Verification, line func(name, value string)) {
 	}
 	r := v.Record.Result
 	line("content", orWord(r.Title, "a comparison")+prefixed(", supports ", r.Supports))
-	if digest, err := contentDigest(*v.Record); err == nil {
-		line("record", RecordID(digest)+", digest of its content "+digest)
+	if v.digest != "" {
+		line("record", RecordID(v.digest)+", digest of its content "+v.digest)
 	}
 	for _, s := range v.Record.Supersedes {
 		line("stands in place of", SupersedesText(s))
 	}
 	line("verdict in it", r.Sentence)
-	word := "agrees with the record and its sheets"
-	if !v.Agrees {
-		word = "DISAGREES with the record, or its sheets do"
-	}
-	line("computed again", word)
+	line("computed again", v.Agreement())
 }
 
 func noteSignature(g SignatureView, when time.Time, line func(name, value string)) {

@@ -11,16 +11,16 @@ import (
 	"strings"
 )
 
-// Layout numbers the way in which a workbook is made of its record. It is raised whenever the same record gives other sheets,
-// pictures or pages; TestLayout tells.
-const Layout = 1
+// Layout numbers the way in which a workbook is made of its record. It is raised, once a release, whenever the same record gives
+// other sheets, pictures or pages; TestLayout tells.
+const Layout = 2
 
-// laid holds what the file shows against what its record must give. A workbook of this layout has to be part for part what this
-// program makes of the record, heads and feet of pages and pictures with it. One of another layout is laid beside it cell by
-// cell, and Rebuilt stays false; so is one whose signatures are broken, to tell what was changed.
-func (v *Verification) laid(pkg []byte, b book, layout int) {
+// laid holds what the file shows against what its record must give: a workbook of this layout has to be part for part what this
+// program makes of the record, heads and feet of pages and pictures with it. One whose signatures are broken is laid beside it
+// cell by cell, to tell what was changed. One of an earlier layout is held by its figures (olderRecord).
+func (v *Verification) laid(pkg []byte, b book) {
 	var parts []string
-	if layout == Layout && !v.broken {
+	if !v.broken {
 		var err error
 		if parts, err = b.partDifferences(pkg); err != nil {
 			v.disagree("sheets-differ", "", err.Error())

@@ -67,14 +67,14 @@ func ReadRecord(pkg []byte) (qa.Record, error) {
 	return rec, err
 }
 
-// readRecord gives the record and the layout of its workbook.
-func readRecord(pkg []byte) (qa.Record, int, error) {
+// readRecord gives the record and the XML that it was read from.
+func readRecord(pkg []byte) (qa.Record, *recordXML, error) {
 	x, err := recordOf(func() (io.Reader, int64, error) { return opcsign.OpenPart(pkg, recordPart) })
 	if err != nil {
-		return qa.Record{}, 0, err
+		return qa.Record{}, nil, err
 	}
 	rec, err := decodeRecord(x)
-	return rec, x.Layout, err
+	return rec, x, err
 }
 
 // recordOf reads a record's XML. One as this program writes it is read along, because a general reader takes ten times as long

@@ -5,6 +5,7 @@ import (
 	"crypto/x509"
 	"encoding/hex"
 	"fmt"
+	"slices"
 	"strings"
 	"time"
 
@@ -57,7 +58,8 @@ type Verification struct {
 	Record          *qa.Record
 	Sealed          *Sealed // of a seal, which is no record
 
-	broken bool // the signatures are
+	broken bool   // the signatures are
+	digest string // of the record's content, as its sheets print it
 }
 
 // Verify checks every signature and part of a workbook, recomputes the result from the readings embedded in it and lays the
@@ -73,6 +75,10 @@ func Verify(pkg []byte, roots []*x509.Certificate) Verification {
 	v.signatures(report)
 	v.broken = !unsignedOrSound(report)
 	if s, layout, err := readSeal(pkg); err == nil {
+		if !knownLayout(layout) {
+			v.unknownLayout(report, layout)
+			return v
+		}
 		v.Sealed = &s
 		v.sealed(pkg, s, layout)
 		v.printed(report, s.Signer)
@@ -80,7 +86,7 @@ func Verify(pkg []byte, roots []*x509.Certificate) Verification {
 		v.conclude(report)
 		return v
 	}
-	rec, layout, err := readRecord(pkg)
+	rec, x, err := readRecord(pkg)
 	if err != nil {
 		// Where signatures are broken besides, that is the nearer fault.
 		v.reason("no-record", recordPart, err.Error())
@@ -90,8 +96,12 @@ func Verify(pkg []byte, roots []*x509.Certificate) Verification {
 		}
 		return v
 	}
+	if !knownLayout(x.Layout) {
+		v.unknownLayout(report, x.Layout)
+		return v
+	}
 	v.Record = &rec
-	v.recompute(pkg, rec, layout)
+	v.recompute(pkg, rec, x)
 	v.meanings(report, rec)
 	v.printed(report, rec.Signer)
 	v.clocks(report, lastAct(rec.Trail))
@@ -105,7 +115,11 @@ func (v *Verification) sealed(pkg []byte, s Sealed, layout int) {
 	if s.Digest != s.Plan.SealDigest() {
 		v.disagree("seal-differs", recordPart, "the digest of the criterion is not that of the plan in the seal")
 	}
-	v.laid(pkg, s.book(), layout)
+	if layout < Layout {
+		v.olderSeal(pkg, s, layout)
+		return
+	}
+	v.laid(pkg, s.book())
 }
 
 // printed checks that the first signature is by the signer whom the sheets name: else one person's signature would stand under
@@ -185,35 +199,71 @@ func (v *Verification) signatures(report opcsign.Report) {
 }
 
 // recompute runs the comparison again and compares it with the record and the record with the sheets.
-func (v *Verification) recompute(pkg []byte, rec qa.Record, layout int) {
+func (v *Verification) recompute(pkg []byte, rec qa.Record, x *recordXML) {
 	v.Agrees = true
-	again, err := rec.Recompute()
-	if err != nil {
-		v.disagree("recomputation", "", fmt.Sprintf("the comparison cannot be made again: %v", err))
-		return
-	}
-	if d := differences(rec.Result, again, largest(rec.Readings)); len(d) > 0 {
-		if rec.Result.Software.Calculation != qa.Calculation {
-			v.reason("calculation-version", recordPart, fmt.Sprintf("the record was computed by calculation %d, this program is calculation %d, and they differ in %d values; use the version that wrote it",
-				rec.Result.Software.Calculation, qa.Calculation, len(d)))
-		} else {
-			for _, t := range d {
-				v.disagree("recomputation", recordPart, t)
-			}
-		}
-	}
+	v.again(rec)
 	if i := rec.Trail.Broken(); i >= 0 {
 		v.disagree("trail-broken", recordPart, fmt.Sprintf("entry %d of the trail does not hold the digest of the one before it", i+1))
 	}
 	if rec.Result.Seal.Digest != rec.Plan.SealDigest() {
 		v.disagree("seal-differs", recordPart, "the digest of the criterion is not that of the plan in the record")
 	}
-	b, err := bookOf(rec)
+	if x.Layout < Layout {
+		var err error
+		if v.digest, err = storedDigest(pkg, x); err != nil {
+			v.disagree("sheets-differ", "", err.Error())
+			return
+		}
+		v.olderRecord(pkg, rec, x)
+		return
+	}
+	b, digest, err := bookOf(rec)
 	if err != nil {
 		v.disagree("sheets-differ", "", err.Error())
 		return
 	}
-	v.laid(pkg, b, layout)
+	v.digest = digest
+	v.laid(pkg, b)
+}
+
+// again runs the comparison again. A record that another calculation made may differ: then its sheets are held against its own
+// result, and that the two calculations part is said, with the verdicts first. A calculation that never was is no excuse.
+func (v *Verification) again(rec qa.Record) {
+	const told = 3
+	other := rec.Result.Software.Calculation
+	excused := other != qa.Calculation && other > 0
+	again, err := rec.Recompute()
+	switch {
+	case err != nil && excused:
+		v.reason("calculation-version", recordPart, fmt.Sprintf("the record was computed by calculation %d, and this program, which is calculation %d, cannot make it again: %v; use the version that wrote it (%s)",
+			other, qa.Calculation, err, orWord(rec.Result.Software.Version, "see the sheet Method")))
+		return
+	case err != nil:
+		v.disagree("recomputation", "", fmt.Sprintf("the comparison cannot be made again: %v", err))
+		return
+	}
+	again.Software.Calculation = other // the number is not a difference by itself
+	d := differences(rec.Result, again, largest(rec.Readings))
+	if !excused {
+		for _, t := range d {
+			v.disagree("recomputation", recordPart, t)
+		}
+		return
+	}
+	if len(d) == 0 {
+		return
+	}
+	slices.SortStableFunc(d, func(a, b string) int { return rank(a) - rank(b) })
+	v.reason("calculation-version", recordPart, fmt.Sprintf("the record was computed by calculation %d, this program is calculation %d, and they differ in %s; use the version that wrote it (%s). %s",
+		other, qa.Calculation, qa.Count(len(d), "value", "values"), orWord(rec.Result.Software.Version, "see the sheet Method"), strings.Join(d[:min(told, len(d))], ". ")))
+}
+
+// rank puts verdicts before all other differences.
+func rank(difference string) int {
+	if path, _, _ := strings.Cut(difference, ":"); path == "verdict" || strings.HasSuffix(path, ".verdict") {
+		return 0
+	}
+	return 1
 }
 
 func (v *Verification) disagree(code, part, text string) {
@@ -265,10 +315,32 @@ func (v Verification) AllTrusted() bool {
 // Headline is the state in words. Without trust it says that who signed is not established: anyone can make a certificate
 // with any name in it.
 func (v Verification) Headline() string {
-	if (v.State == Intact || v.State == Incomplete) && !v.AllTrusted() {
-		return string(v.State) + "; who signed is not established"
+	h := string(v.State)
+	if v.State != Intact && v.State != Incomplete {
+		return h
 	}
-	return string(v.State)
+	if v.has("calculation-version") {
+		h += "; this version computes another result"
+	}
+	if !v.AllTrusted() {
+		h += "; who signed is not established"
+	}
+	return h
+}
+
+// Agreement says what the recomputation and the sheets gave.
+func (v Verification) Agreement() string {
+	of := "and its sheets"
+	if v.has("layout-version") {
+		of = "and the figures on its sheets; an earlier version wrote them, and their wording was not compared"
+	}
+	switch {
+	case !v.Agrees:
+		return "the result computed again, or the sheets, DISAGREE with the record"
+	case v.has("calculation-version"):
+		return "computed again by this version the result DIFFERS from the record, which another calculation made; the record agrees with itself " + of
+	}
+	return "the result computed again agrees with the record " + of
 }
 
 // Signers are the identities, without their keys, that signed a record.

@@ -29,17 +29,18 @@ func Workbook(rec qa.Record) ([]byte, error) {
 	if n > MaxReadings {
 		return nil, TooManyReadings{N: n}
 	}
-	b, err := bookOf(rec)
+	b, _, err := bookOf(rec)
 	if err != nil {
 		return nil, err
 	}
 	return b.bytes()
 }
 
-func bookOf(rec qa.Record) (book, error) {
+// bookOf is the workbook of a record, and the digest of its content.
+func bookOf(rec qa.Record) (book, string, error) {
 	digest, err := contentDigest(rec)
 	if err != nil {
-		return book{}, err
+		return book{}, "", err
 	}
 	record := func(w io.Writer) error {
 		_, err := writeRecord(w, rec)
@@ -47,7 +48,7 @@ func bookOf(rec qa.Record) (book, error) {
 	}
 	b := book{title: rec.Result.Title, sheets: sheets(rec, digest), record: record, draft: rec.Signer == nil}
 	b.foot = footerText(rec.Result.Title, rec.Result.Supports) + fmt.Sprintf("\nRecord %s, criterion %s", RecordID(digest), shortDigest(rec.Result.Seal.Digest))
-	return b, nil
+	return b, digest, nil
 }
 
 // RecordID is the name of a record that survives copies and renaming: the first twelve digits of the digest of its content.

@@ -129,14 +129,7 @@ func (p *program) printVerification(name string, v exports.Verification) {
 		fmt.Fprintf(p.out, "  a seal of the criterion, made %s by %s\n  digest %s\n", s.Time.Format(time.RFC3339), s.Who, s.Digest)
 	}
 	if v.Record != nil {
-		word := "the result computed again agrees with the record and its sheets"
-		if !v.Agrees {
-			word = "the result computed again, or the sheets, DISAGREE with the record"
-		}
-		fmt.Fprintf(p.out, "  %s\n", word)
-		if v.Agrees && !v.Rebuilt && v.State != exports.Changed {
-			fmt.Fprintln(p.out, "  written by another version: all cells were compared, pictures and the feet of pages were not")
-		}
+		fmt.Fprintf(p.out, "  %s\n", v.Agreement())
 		for i := len(v.Record.Supersedes) - 1; i >= 0; i-- {
 			fmt.Fprintf(p.out, "  %s\n", exports.SupersedesText(v.Record.Supersedes[i]))
 		}
