@@ -108,29 +108,31 @@ func logOf(x *float64) *float64 {
 	return ptr(math.Log(*x))
 }
 
-// meanRatio tests the ratio of the means on the contrasts candidate - theta reference, so that the reference's own sampling
-// error counts; the interval is that of Fieller 1954.
-func (c *comparison) meanRatio() (answer, error) {
+// contrast is what is asked of the ratio of the means: candidate - theta reference, so that the reference's own sampling error
+// counts.
+func (c *comparison) contrast() (stats.Contrast, error) {
 	ref, cand := c.ref.summary, c.cand.summary
-	if ref.N > 0 && ref.Mean < 0 {
-		return answer{}, fmt.Errorf("margin of %q: found reference_fraction with a reference mean of %v, want one above 0; state the margin in the unit", c.Name, ref.Mean)
-	}
 	if c.asked.grouped {
 		var ok bool
 		if ref, cand, ok = c.groupMeans(); !ok {
-			return answer{}, stats.ErrTooFew
+			return stats.Contrast{}, stats.ErrTooFew
 		}
 	}
-	var contrast stats.Contrast
-	var err error
 	switch c.Method {
 	case "pooled":
-		contrast, err = stats.PooledContrast(ref, cand)
+		return stats.PooledContrast(ref, cand)
 	case "paired":
-		contrast, err = stats.PairedContrast(c.ref.values, c.cand.values)
-	default:
-		contrast, err = stats.WelchContrast(ref, cand)
+		return stats.PairedContrast(c.ref.values, c.cand.values)
 	}
+	return stats.WelchContrast(ref, cand)
+}
+
+// meanRatio tests the ratio of the means on their contrasts; the interval is that of Fieller 1954.
+func (c *comparison) meanRatio() (answer, error) {
+	if ref := c.ref.summary; ref.N > 0 && ref.Mean < 0 {
+		return answer{}, fmt.Errorf("margin of %q: found reference_fraction with a reference mean of %v, want one above 0; state the margin in the unit", c.Name, ref.Mean)
+	}
+	contrast, err := c.contrast()
 	if err != nil {
 		return answer{}, err
 	}

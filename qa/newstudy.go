@@ -97,13 +97,7 @@ func (c *comparison) studyOfMean() (d stats.Design, estimate float64, ok bool) {
 		// number is at most a little too large.
 		mean := math.Abs(c.ref.summary.Mean)
 		onScale = func(v float64) float64 { return (v - 1) * mean }
-		worst := 1.0
-		for _, end := range []*float64{e.MarginLower, e.MarginUpper} {
-			if end != nil {
-				worst = max(worst, *end)
-			}
-		}
-		d.SDRef *= worst
+		d.SDRef *= c.farthest()
 		if d.Paired {
 			d.SDRef = c.widestContrast()
 		}
@@ -125,6 +119,17 @@ func (c *comparison) studyOfMean() (d stats.Design, estimate float64, ok bool) {
 	}
 	estimate = onScale(*e.Estimate)
 	return d, estimate, d.SDRef > 0 && (d.Paired || d.SDCand > 0) && finite(d.SDRef, d.SDCand, estimate)
+}
+
+// farthest is the largest ratio at an end of the margin, at least 1.
+func (c *comparison) farthest() float64 {
+	worst := 1.0
+	for _, end := range []*float64{c.margin.lower, c.margin.upper} {
+		if end != nil {
+			worst = max(worst, *end)
+		}
+	}
+	return worst
 }
 
 // widestContrast is the largest standard deviation, over the ends of the margin, of candidate - end*reference in pairs.

@@ -11,8 +11,8 @@ import (
 const coverage = 2
 
 // bias is the standard uncertainty, on the scale on which the margin is tested, of what the measuring systems add to what is
-// estimated: both of a difference, the candidate's own of a shift from a stated mean, in parts of the means of a ratio. Those of
-// the two systems are taken as independent.
+// estimated: both of a difference, the candidate's own of a shift from a stated mean, in parts of the means of a ratio of logarithms,
+// and of the contrast of a ratio of means that varies most. Those of the two systems are taken as independent.
 func (c *comparison) bias() float64 {
 	u := c.ch.Uncertainty
 	if u == nil {
@@ -24,6 +24,8 @@ func (c *comparison) bias() float64 {
 		return u.Candidate
 	case c.margin.scale == scaleRatio && c.Method == "log":
 		return math.Hypot(u.Reference/ref.Mean, u.Candidate/cand.Mean)
+	case c.margin.scale == scaleRatio:
+		return DifferenceUncertainty(c.farthest()*u.Reference, u.Candidate)
 	}
 	return DifferenceUncertainty(u.Reference, u.Candidate)
 }
@@ -73,9 +75,18 @@ func differentGauges(p Particulars, cs []Characteristic) []Warning {
 
 // withBias adds the interval that counts the uncertainty of the measuring systems' bias beside that of the readings. The squares
 // of both are added; the degrees of freedom are Welch and Satterthwaite's, with none lost for what is stated (JCGM 100, G.4.1,
-// from memory). Of a ratio of means, whose ends have each its own standard error, there is none.
+// from memory). Of a ratio of means each contrast has its own standard error, in which the reference's bias counts as often as the
+// reference does.
 func (c *comparison) withBias() {
 	e, u := c.Equivalence, c.bias()
+	if u > 0 && e.Scale == scaleRatio && c.Method != "log" {
+		if r, err := c.contrast(); err == nil {
+			if in, err := r.IntervalWithBias(1-2*c.Alpha, c.ch.Uncertainty.Reference, c.ch.Uncertainty.Candidate); err == nil {
+				c.interval("gauge-bias", r.Value(), in, nil)
+			}
+		}
+		return
+	}
 	if u == 0 || e.SE == nil || e.DF == nil || e.Estimate == nil {
 		return
 	}

@@ -81,6 +81,33 @@ func TestUncertaintyScales(t *testing.T) {
 	share := *e.SE / all
 	want := stats.Estimate{Value: math.Log(*e.Estimate), SE: all, DF: *e.DF / math.Pow(share, 4)}.Interval(0.9)
 	near(t, "ratio, upper", s.Upper, math.Exp(want.Upper), 1e-13)
+	// Of a ratio of means the standard error of each contrast: p of the bias counted is 0.05 at both ends.
+	for _, method := range []string{"welch", "pooled"} {
+		p = plan(qa.Equivalence, &qa.Margin{ReferenceFraction: ptr(0.001)})
+		p.Criterion.Method = method
+		c = one(t, p, lots(ch, ref, cand))
+		s = row(t, c, "gauge-bias")
+		n := float64(c.Reference.N)
+		a, b := *c.Reference.SD**c.Reference.SD/n, *c.Candidate.SD**c.Candidate.SD/n
+		if method == "pooled" {
+			a, b = (a+b)/2, (a+b)/2
+		}
+		for _, theta := range []float64{*s.Lower, *s.Upper} {
+			r := theta * theta * a
+			df := (r + b) * (r + b) / ((r*r + b*b) / (n - 1))
+			if method == "pooled" {
+				df = 2*n - 2
+			}
+			v := r + b + theta*theta*0.003*0.003 + 0.004*0.004
+			df *= v * v / ((r + b) * (r + b))
+			two := stats.Estimate{Value: *c.Candidate.Mean - theta**c.Reference.Mean, SE: math.Sqrt(v), DF: df}
+			_, pValue := two.TwoSided(0)
+			near(t, method+", p at an end", &pValue, 0.10, 1e-8)
+		}
+		if c.Verdict != qa.Equivalent || s.Verdict != qa.Undecided || !qa.Has(c.Warnings, qa.WarnFlips) {
+			t.Errorf("%s: got %q, with the bias %q; want equivalent as measured and undecided with the bias", method, c.Verdict, s.Verdict)
+		}
+	}
 	c = one(t, plan(qa.Equivalence, &qa.Margin{KeepPpk: ptr(1.0), Mean: ptr(12.0), SD: ptr(0.01)}), lots(ch, ref, cand))
 	e, s = c.Equivalence, row(t, c, "gauge-bias")
 	all = math.Hypot(*e.SE, 0.004)
