@@ -135,6 +135,10 @@ func footCases() []layoutCase {
 	add("limits-above", "limits above the headings are told", limits, plain, d1.with(func(w *layoutWant) {
 		w.warnings, w.texts = []string{"limits-above"}, []string{`row 2 says "USL" above the headings`, `row 3 says "LSL"`}
 	}))
+	spec := slices.Insert(long(), 1, []any{"Spec", nil, "12.000 ±0.050"})
+	add("limits-spec", "a row of requirements called Spec in the column of lots is told", spec, plain, d1.with(func(w *layoutWant) {
+		w.warnings, w.texts = []string{"limits-above"}, []string{`row 2 says "Spec" in the place of a lot`}
+	}))
 	spoken := long()
 	spoken[0][0], spoken[0][1] = "Lot / Charge", "Sample #"
 	add("headings-twice", "headings in two languages, and with a #", spoken, plain, d1.with(func(w *layoutWant) { w.said = []string{`column A "Lot / Charge"`, `column B "Sample #"`} }))

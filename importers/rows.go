@@ -148,6 +148,10 @@ func (t *table) fillLots(data []row) error {
 			}
 		}
 		switch {
+		case characteristicWords[word(named)] == requirementHeading && !t.isLot(named):
+			t.mark(d.at, roleNote)
+			t.warn("limits-above", "row %d says %s in the place of a lot and is not read; if it states limits, state lower, target and upper of each characteristic in the plan.", r.Number, quoted(named))
+			continue
 		case named != "":
 			if current = d.lot; down && t.alone(r, t.lot) {
 				continue // the lot's name stands in a row of its own
