@@ -93,6 +93,9 @@ func (b *button) paint(p *pen, size fyne.Size) {
 	default:
 		r.StrokeColor, r.StrokeWidth = p.Text, 1.2
 	}
+	if b.kind == bare {
+		return // its label is its name, for who cannot see what lies below it
+	}
 	f := b.font()
 	label := f.fit(b.label, size.Width-8)
 	base := size.Height/2 + 5
@@ -109,7 +112,7 @@ func (b *button) paint(p *pen, size fyne.Size) {
 		p.across(size.Width/2-w/2, size.Width/2+w/2, base+6, 2, ink)
 	case b.focused:
 		p.across(size.Width/2-w/2, size.Width/2+w/2, base+4, 2, ink)
-	case b.hovered && b.kind != bare || b.kind == quiet || b.kind == strong:
+	case b.hovered || b.kind == quiet || b.kind == strong:
 		p.across(size.Width/2-w/2, size.Width/2+w/2, base+3, 1, ink)
 	}
 }

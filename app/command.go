@@ -36,6 +36,7 @@ func Command(args []string, version string, open func(Options) ([]string, error)
 	if f.NArg() > 1 {
 		return fmt.Errorf("found %d files, want at most one", f.NArg())
 	}
+	settleLocale()
 	build := Build{Version: version, Revision: revision()}
 	if *picture == "" {
 		dir := shot.Register

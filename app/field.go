@@ -83,15 +83,6 @@ func (w *window) present(d dialog.Dialog, width, height float32) {
 	d.Show()
 }
 
-// presentForm shows a form with the keys on its first field.
-func (w *window) presentForm(d *dialog.FormDialog, fields ...*field) {
-	for _, f := range fields {
-		f.OnSubmitted = func(string) { d.Submit() }
-	}
-	w.present(d, 640, 10)
-	w.win.Canvas().Focus(fields[0])
-}
-
 // leaveDialog closes the dialog that is open, as Cancel does.
 func (w *window) leaveDialog() {
 	if w.dialog != nil {

@@ -1,10 +1,7 @@
 package app
 
 import (
-	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/container"
-	"fyne.io/fyne/v2/dialog"
-	"fyne.io/fyne/v2/storage"
 
 	"lotpair/exports/identity"
 )
@@ -18,14 +15,10 @@ func (w *window) fileLine(f *form, label, hint string, endings ...string) *field
 	x.OnChanged, x.seen = func(string) { f.say() }, f.reveal
 	f.fields = append(f.fields, x)
 	browse := newButton(w.palette, "Browse", quiet, func() {
-		d := dialog.NewFileOpen(func(r fyne.URIReadCloser, err error) {
-			if err == nil && r != nil {
-				x.SetText(r.URI().Path())
-				_ = r.Close() // opened for its name only
-			}
-		}, w.win)
-		d.SetFilter(storage.NewExtensionFileFilter(endings))
-		d.Show()
+		w.chooseFile("Choose the file: "+label, endings, func(path string) {
+			x.SetText(path)
+			w.win.Canvas().Focus(x)
+		})
 	})
 	f.add(label, container.NewBorder(nil, nil, nil, browse, x), hint)
 	if f.first == nil {

@@ -20,6 +20,9 @@ type form struct {
 	live   func() []string
 }
 
+// barRoom keeps the bar that scrolls a form off its lines.
+const barRoom = 14
+
 func (w *window) newForm() *form { return &form{w: w, said: wrapped("")} }
 
 func wrapped(text string) *widget.Label {
@@ -94,9 +97,14 @@ func (f *form) say() {
 // ask shows the form. do is called on confirm; what it returns is said in the form, which then stays.
 func (f *form) ask(title, confirm string, do func() error) {
 	w := f.w
-	f.body = container.NewVScroll(widget.NewForm(f.items...))
+	content := container.New(layout.NewCustomPaddedLayout(0, 0, 0, barRoom), widget.NewForm(f.items...))
+	f.body = container.NewVScroll(content)
 	below := container.NewVScroll(f.said)
-	below.SetMinSize(fyne.NewSize(10, 84))
+	room := float32(46) // two lines of what is wrong
+	if f.live != nil {
+		room = 84
+	}
+	below.SetMinSize(fyne.NewSize(10, room))
 	d := dialog.NewCustomWithoutButtons(title, container.NewBorder(nil, below, nil, nil, f.body), w.win)
 	try := func() {
 		if err := do(); err != nil {
@@ -113,16 +121,14 @@ func (f *form) ask(title, confirm string, do func() error) {
 	}
 	f.say()
 	size := w.win.Canvas().Size()
-	tall := float32(len(f.items))*46 + 230
-	for _, i := range f.items {
-		if i.HintText != "" {
-			tall += 22
-		}
+	wide := min(760, size.Width-80)
+	content.Resize(fyne.NewSize(wide-40, 10)) // paragraphs are as tall as their width makes them
+	tall := content.MinSize().Height + room + 130
+	w.present(d, wide, min(tall, size.Height-60))
+	if f.first == nil {
+		f.first = ok
 	}
-	w.present(d, min(760, size.Width-80), min(tall, size.Height-60))
-	if f.first != nil {
-		w.win.Canvas().Focus(f.first)
-	}
+	w.win.Canvas().Focus(f.first)
 }
 
 func joinLines(all []string) string {

@@ -1,9 +1,7 @@
 package app
 
 import (
-	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/dialog"
-	"fyne.io/fyne/v2/widget"
+	"strings"
 
 	"lotpair/app/desk"
 	"lotpair/qa"
@@ -29,30 +27,24 @@ func (w *window) onReading(of qa.Side, i int) {
 		if r.Note != "" {
 			text += "\n" + r.Note
 		}
-		l := widget.NewLabel(text)
-		l.Wrapping, l.Selectable = fyne.TextWrapWord, true
-		d := dialog.NewCustom("Reading", "Close", l, w.win)
-		w.present(d, 480, 10)
+		w.showText("Reading", strings.Split(text, "\n"))
 	case r.LeftOut:
-		d := dialog.NewConfirm("Put back "+r.Source.Place(), r.Value+" was left out: "+r.Note, func(ok bool) {
-			if ok {
-				w.change("Putting back", func(s desk.State) (desk.State, error) { return s.PutBack(r.Source, person(), now()) })
-			}
-		}, w.win)
-		d.SetConfirmText("Put back")
-		d.SetDismissText("Cancel")
-		w.present(d, 480, 10)
+		f := w.newForm()
+		f.add("", wrapped(r.Value+" was left out: "+r.Note), "")
+		f.ask("Put back "+r.Source.Place(), "Put back", func() error {
+			w.change("Putting back", func(s desk.State) (desk.State, error) { return s.PutBack(r.Source, person(), now()) })
+			return nil
+		})
 	default:
-		reason := w.newField("")
-		reason.SetPlaceHolder("never its size alone")
-		reason.Validator = filled("a reason")
-		d := dialog.NewForm("Leave out "+r.Value+" in "+r.Source.Place(), "Leave out", "Cancel",
-			[]*widget.FormItem{widget.NewFormItem("Reason", reason)}, func(ok bool) {
-				if ok {
-					w.change("Leaving out", func(s desk.State) (desk.State, error) { return s.LeftOut(r.Source, reason.Text, person(), now()) })
-				}
-			}, w.win)
-		w.presentForm(d, reason)
+		f := w.newForm()
+		reason := f.text("Reason", "", "the cause that is known, never its size alone; it stands in the record")
+		f.ask("Leave out "+r.Value+" in "+r.Source.Place(), "Leave out", func() error {
+			if err := filled("a reason")(reason.Text); err != nil {
+				return err
+			}
+			w.change("Leaving out", func(s desk.State) (desk.State, error) { return s.LeftOut(r.Source, reason.Text, person(), now()) })
+			return nil
+		})
 	}
 }
 

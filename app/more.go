@@ -119,7 +119,7 @@ func (w *window) besides(ending string) string {
 // askFile asks for the name of a file to write.
 func (w *window) askFile(title, confirm, proposed, want string, do func(string)) {
 	f := w.newForm()
-	to := f.text("File", proposed, "no existing file is written over")
+	to := f.text("File", proposed, want+"; no existing file is written over")
 	f.ask(title, confirm, func() error {
 		if err := filled(want)(to.Text); err != nil {
 			return err

@@ -6,9 +6,6 @@ import (
 	"strings"
 	"unicode"
 
-	"fyne.io/fyne/v2/dialog"
-	"fyne.io/fyne/v2/widget"
-
 	"lotpair/app/desk"
 	"lotpair/exports"
 	"lotpair/qa"
@@ -26,14 +23,8 @@ func (w *window) askPicture() {
 		return
 	}
 	name := fileName(c.Name + "-" + w.state.Shown().String())
-	to := w.newField(filepath.Join(filepath.Dir(absolute(w.proposed())), name+".svg"))
-	to.Validator = filled("a file name that ends in .svg or .png")
-	d := dialog.NewForm("Save the picture", "Save", "Cancel", []*widget.FormItem{widget.NewFormItem("File (.svg or .png)", to)}, func(ok bool) {
-		if ok {
-			w.savePicture(to.Text)
-		}
-	}, w.win)
-	w.presentForm(d, to)
+	proposed := filepath.Join(filepath.Dir(absolute(w.proposed())), name+".svg")
+	w.askFile("Save the picture", "Save", proposed, "a file name that ends in .svg or .png", w.savePicture)
 }
 
 // fileName is words as the name of a file.

@@ -7,8 +7,6 @@ import (
 	"strings"
 
 	"fyne.io/fyne/v2"
-	"fyne.io/fyne/v2/dialog"
-	"fyne.io/fyne/v2/widget"
 
 	"lotpair/app/desk"
 	"lotpair/exports"
@@ -43,14 +41,7 @@ func (w *window) askExport() {
 	if w.act.export.label == "" || w.state.Job.Name != "" || w.dialog != nil {
 		return
 	}
-	to := w.newField(w.proposed())
-	to.Validator = filled("a file name")
-	d := dialog.NewForm("Export workbook", "Export", "Cancel", []*widget.FormItem{widget.NewFormItem("File", to)}, func(ok bool) {
-		if ok {
-			w.export(to.Text)
-		}
-	}, w.win)
-	w.presentForm(d, to)
+	w.askFile("Export workbook", "Export", w.proposed(), "a file name that ends in .xlsx", w.export)
 }
 
 // filled refuses an empty field.

@@ -93,6 +93,7 @@ func (w *window) paintSheet(p *pen, size fyne.Size) {
 		p.text(fontLot11.fit(col.Plays, c.width-8), c.x+6, top+16, fontLot11, p.Text)
 		p.text(col.Letters, c.x+6, top+33, fontTiny, p.MutedText)
 		b := w.partButton(c.at + 1)
+		b.label = "column " + col.Letters + ": " + col.Plays
 		p.put(b, c.x, top, c.width, 40)
 		b.Refresh()
 	}
