@@ -10,18 +10,19 @@ import (
 // stroke or a comma, not behind a space alone; min not behind a comma.
 var wordUnits = known("in|min|bar|mil|pH|t|h|thou|HB")
 
-// nakedUnit takes a known unit without brackets off the end of a heading: "Width mm", "Width in mm", "Gap/mm", "Pressure, bar",
-// "Mass_kg". Units of one letter count behind "in" and a stroke only: "Hole A" and "Point, A" name no amperes. A unit behind a
-// number belongs to that: "Force at 5 mm". What is left must not name a part, an order or a lot: "Time / s" is a measurement.
+// nakedUnit takes a known unit without brackets off the end of a heading: "Width mm", "Width in mm", "Gap/mm", "Pressure, bar";
+// not "Mass_kg", which is one word and a name as a program gave it. Units of one letter count behind "in" and a stroke only:
+// "Hole A" and "Point, A" name no amperes. A unit behind a number belongs to that: "Force at 5 mm". What is left must not name a
+// part, an order or a lot: "Time / s" is a measurement.
 func nakedUnit(h string) (name, unit string) {
-	i := strings.LastIndexAny(h, " _,/")
+	i := strings.LastIndexAny(h, " ,/")
 	if i <= 0 || isUnit(h) || headingWords[word(h)] != "" {
 		return h, ""
 	}
 	name, unit = strings.TrimRight(h[:i], " "), h[i+1:]
 	mark := h[i]
 	if mark == '/' { // the stroke may be within the unit: "Speed m/s"
-		if j := strings.LastIndexAny(name, " _,"); j > 0 && bareUnit(h[j+1:]) {
+		if j := strings.LastIndexAny(name, " ,"); j > 0 && bareUnit(h[j+1:]) {
 			i, mark = j, h[j]
 			name, unit = strings.TrimRight(h[:i], " "), h[i+1:]
 		}
@@ -38,7 +39,7 @@ func nakedUnit(h string) (name, unit string) {
 		return h, ""
 	}
 	one := utf8.RuneCountInString(unit) == 1 && unit != "%" && unit != "°" && unit != "Ω"
-	before := name[strings.LastIndexAny(name, " _,/")+1:]
+	before := name[strings.LastIndexAny(name, " ,/")+1:]
 	end, _ := utf8.DecodeLastRuneInString(name)
 	switch {
 	case strings.ContainsAny(unit, "\"'") || isUnit(before) && mark != 'i' || notBefore[strings.ToLower(before)] || headingWords[word(name)] != "":
@@ -47,7 +48,7 @@ func nakedUnit(h string) (name, unit string) {
 		return h, ""
 	case mark == ',' && (one || unit == "min"):
 		return h, ""
-	case (mark == ' ' || mark == '_') && (one || wordUnits[unit] || !unicode.IsLetter(end)):
+	case mark == ' ' && (one || wordUnits[unit] || !unicode.IsLetter(end)):
 		return h, ""
 	}
 	return name, unit

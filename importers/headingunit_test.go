@@ -21,7 +21,7 @@ func TestSplitUnit(t *testing.T) {
 		{"Width, in", "Width", "in"},
 		{"Width/in", "Width", "in"},
 		{"Ra2 in um", "Ra2", "um"},
-		{"Mass_kg", "Mass", "kg"},
+		{"Mass_kg", "Mass_kg", ""},
 		{"Speed m/s", "Speed", "m/s"},
 		{"Speed in 1/min", "Speed", "1/min"},
 		{"Density, g/cm³", "Density", "g/cm³"},
