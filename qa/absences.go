@@ -18,7 +18,7 @@ func (c *comparison) absences(plan Plan) {
 		c.absent(s.result.N == 0, s.side, side, "No reading of the "+side+" lot is in use: it has no mean.")
 		c.absent(s.result.N == 1, s.side, side+".sd", "One reading of the "+side+" lot has no standard deviation.")
 		k := s.checks
-		c.absent(k.ShapiroWilk == nil || k.Grubbs == nil || k.Runs == nil || k.Lag1 == nil, s.side, "checks."+side,
+		c.absent(k.ShapiroWilk == nil && s.result.N <= mostForShapiro || k.Grubbs == nil || k.Runs == nil || k.Lag1 == nil, s.side, "checks."+side,
 			"Some checks of the "+side+" lot need three readings and some variation; they are left out.")
 		c.absent(k.Resolution == nil, s.side, "checks."+side+".resolution", "The readings of the "+side+" lot are not written in decimals that show the step of the gauge.")
 	}

@@ -199,7 +199,12 @@ func Asked(r Result) string {
 	return s
 }
 
-func methodName(m string) string { return upperFirst(m) }
+func methodName(m string) string {
+	if m == "miettinen-nurminen" {
+		return "score method of Miettinen and Nurminen"
+	}
+	return upperFirst(m)
+}
 
 // askedMargin says one characteristic's objective and margin as the plan states them.
 func askedMargin(c Comparison) string {
