@@ -74,14 +74,10 @@ func (w *window) chooseFile(title string, endings []string, chosen func(path str
 		},
 		key: func(k fyne.KeyName) { c.key(k) },
 	})
-	c.dialog = dialog.NewCustom(title, "Cancel", container.NewBorder(c.line, nil, nil, nil, c.list.scroll), w.win)
-	below := w.dialog
-	w.present(c.dialog, 820, 560)
-	c.dialog.SetOnClosed(func() {
-		if w.dialog == c.dialog {
-			w.dialog = below
-		}
-	})
+	d := dialog.NewCustomWithoutButtons(title, container.NewBorder(c.line, nil, nil, nil, c.list.scroll), w.win)
+	d.SetButtons([]fyne.CanvasObject{newButton(w.palette, "Cancel", plain, d.Dismiss)})
+	c.dialog = d
+	w.present(d, 820, 560)
 	w.win.Canvas().Focus(c.line)
 	c.line.CursorColumn = len([]rune(c.line.Text))
 	c.line.Refresh()

@@ -163,7 +163,7 @@ func (w *window) paintDraftLines(p *pen, width, inset, y float32) {
 			put("ratio from", "from", "", 0.75)
 			put("ratio to", "to", "", 0.75)
 		} else {
-			put("ratio within", "ratio within ±", "%", 1.1)
+			put("ratio within", "within ±", "%", 1.1)
 		}
 		w.putWord(p, w.act.of, "stated", x, y, inset+unit*2.8-x-16)
 		x = inset + unit*2.8

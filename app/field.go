@@ -71,12 +71,13 @@ func (p *pick) TypedKey(e *fyne.KeyEvent) {
 	p.Select.TypedKey(e)
 }
 
-// present shows a dialog; escape leaves it.
+// present shows a dialog, over the one that is open where there is one; escape leaves it.
 func (w *window) present(d dialog.Dialog, width, height float32) {
+	below := w.dialog
 	w.dialog = d
 	d.SetOnClosed(func() {
 		if w.dialog == d {
-			w.dialog = nil
+			w.dialog = below
 		}
 	})
 	d.Resize(fyne.NewSize(width, height))

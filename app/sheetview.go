@@ -124,7 +124,7 @@ func (w *window) paintSheetFoot(p *pen, size fyne.Size) {
 	}
 	text := "Click the part above a column, or a row, to change it."
 	if w.state.Sheet.Masked {
-		text = "Every reading is masked until it is asked for."
+		text = "The readings are masked."
 	}
 	p.text(fontBody.fit(text, right-2*margin), margin, top+30, fontBody, p.Text)
 }

@@ -35,7 +35,7 @@ func (w *window) askSign() {
 	key.SetText(w.app.Preferences().String(lastIdentity))
 	f.first = key
 	meaning := f.choice("Meaning", w.view.foot.Meaning, meanings, "what the signature stands for (21 CFR 11.50)")
-	reason := f.text("Reason", "", "")
+	reason := f.text("Reason", "", "why you sign; it stands beside the signature")
 	disposition := f.text("Disposition", "", "what was decided about the lot, where that is yours to say")
 	to := f.text("Workbook", w.proposed(), "")
 	if w.state.Workbook.Path != "" {

@@ -146,7 +146,7 @@ func (w *window) showTrusted() {
 	if len(w.trusted) == 0 {
 		f.add("Trusted", wrapped("none: who signed is not established"), "")
 	}
-	file := w.fileLine(f, "Trust too", "certificates of signers, or of those who issued them (.pem)", ".pem", ".crt", ".cer")
+	file := w.fileLine(f, "Certificate (.pem)", "of a signer, or of who issued theirs", ".pem", ".crt", ".cer")
 	f.ask("Certificates trusted on this machine", "Trust", func() error {
 		if err := filled("a file of certificates (.pem); choose it")(file.Text); err != nil {
 			return err

@@ -36,7 +36,7 @@ func (s State) Bench() BenchView {
 		v.Headline, v.Paragraphs, v.Caution = "One reading after the other.", s.orderSentences(c), cautions[3]
 		return v
 	case Shape:
-		v.Headline, v.Paragraphs, v.Caution = "Beside the normal distribution.", s.shapeSentences(c), cautions[3]
+		v.Headline, v.Paragraphs, v.Caution = "Against the normal distribution.", s.shapeSentences(c), cautions[3]
 		return v
 	case Sensitivity:
 		v.Headline, v.Paragraphs, v.Caution = "The same question, asked otherwise.", s.sensitivitySentences(c), cautions[2]

@@ -196,6 +196,10 @@ func lacksMargin(f qa.PlanFault) bool {
 	return f.Found == "none" && strings.HasSuffix(f.Key, ".margin")
 }
 
+// inWords says the kinds of margins as the window names them, not as the plan's file does.
+var inWords = strings.NewReplacer("tolerance_fraction", "a part of the tolerance", "reference_fraction", "a ratio of means", "keep_ppk", "a Ppk to keep",
+	"sd_multiple", "a multiple of an SD", "an absolute margin", "a margin in the unit")
+
 // Faults lists what the draft lacks before it can be sealed; where its readings stand is asked for later.
 func (s State) Faults() []string { return s.faults(nil) }
 
@@ -209,14 +213,14 @@ func (s State) faults(m *Planner) []string {
 				out = append([]string{noMargin}, out...)
 			}
 		default:
-			out = append(out, f.Error())
+			out = append(out, inWords.Replace(f.Error()))
 		}
 	}
 	if len(out) == 0 { // what only the characteristic's own limits show
 		p := Settled(s.Record.Plan)
 		for _, c := range p.Characteristics {
 			if fault := m.fault(p, c); fault != "" {
-				out = append(out, fault)
+				out = append(out, inWords.Replace(fault))
 			}
 		}
 	}

@@ -161,11 +161,11 @@ func (s State) shapeSentences(c qa.Comparison) []string {
 			text += fmt.Sprintf(" Shapiro–Wilk: W %s, p %s.", qa.Fixed(w.W, 3), pText(w.P))
 		}
 		if r := l.checks.Resolution; r != nil {
-			text += " The readings step by " + withUnit(qa.Plain(*r), c.Unit) + "."
+			text += " The smallest step of the readings is " + withUnit(qa.Plain(*r), c.Unit) + "."
 		}
 		out = append(out, text)
 	}
-	return append(out, "Readings near the straight line are near enough normal. A bend at an end is a long or a cut tail, steps are a coarse gauge, two straight pieces are two kinds of parts.")
+	return append(out, "Readings near the straight line are near enough normal. A bend at an end is a long or a cut tail, steps are a gauge that resolves too little, two straight pieces are two kinds of parts.")
 }
 
 func pText(p float64) string {

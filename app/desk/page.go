@@ -1,6 +1,7 @@
 package desk
 
 import (
+	"slices"
 	"strings"
 
 	"lotpair/qa"
@@ -49,6 +50,9 @@ func (s State) Page(side qa.Side) PageView {
 	}
 	if len(v.Findings) == 0 {
 		v.Findings = []string{"nothing to look at"}
+		if c, ok := s.Characteristic(); ok && slices.ContainsFunc(c.Warnings, func(w qa.Warning) bool { return w.Side == "" }) {
+			v.Findings = []string{"nothing in this lot alone; see the sentences below"}
+		}
 	}
 	v.Readings = readingsOf(l.Of(name), unread(s.Record.Readings.Ledger, side, name))
 	return v

@@ -282,7 +282,7 @@ func (p Planned) sentences(plan qa.Plan, shift float64) (headline string, out []
 		}
 		return "How many parts are needed?", append(out, unplanned[p.asked])
 	case p.SD == 0:
-		return "How many parts are needed?", []string{"The margin is " + p.Margin + ". With a standard deviation expected beforehand it is said how many parts a lot show it; type it below."}
+		return "How many parts are needed?", []string{"The margin is " + p.Margin + ". Type the standard deviation that you expect: then it is said here how many parts of each lot are needed."}
 	case !p.ready:
 		return "No number of parts would do.", []string{fmt.Sprintf("The margin is %s; at a standard deviation of %s more than %d parts a lot would be needed, or none is enough.", p.Margin, withUnit(qa.Plain(p.SD), unit), mostParts)}
 	}

@@ -116,11 +116,16 @@ func unread(all []qa.Entry, side qa.Side, name string) []ReadingView {
 		if e.Side != side || e.Characteristic != name || e.TakenAs == qa.TakenNumber || e.TakenAs == qa.TakenSummary || e.TakenAs == qa.TakenExcluded && e.Value != nil {
 			continue
 		}
-		note := strings.ReplaceAll(string(e.TakenAs), "-", " ")
+		note := spaced(string(e.TakenAs))
 		if e.TakenAs == qa.TakenExcluded {
 			note = e.Reason
 		}
 		out = append(out, ReadingView{Source: e.Source, Cell: e.Source.Cell, Value: e.Source.Text, Note: note})
 	}
 	return out
+}
+
+// spaced is a code as words; a non-detect keeps its hyphen.
+func spaced(code string) string {
+	return strings.ReplaceAll(strings.ReplaceAll(code, "-", " "), "non detect", "non-detect")
 }

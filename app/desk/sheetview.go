@@ -117,7 +117,7 @@ func (x Sheet) View(p qa.Plan) SheetView {
 		case !x.Masked || strings.HasPrefix(w.Code, "hidden"):
 			v.Said = append(v.Said, w.Text)
 		default: // its words may hold a reading
-			v.Said = append(v.Said, "To look at once the readings are seen: "+strings.ReplaceAll(w.Code, "-", " ")+".")
+			v.Said = append(v.Said, "To look at once the readings are seen: "+spaced(w.Code)+".")
 		}
 	}
 	if !x.Masked {
@@ -285,7 +285,7 @@ func takenText(u qa.UnreadResult) string {
 	case qa.TakenNotANumber:
 		return "no number: undecided until it is corrected, or left out with a reason"
 	}
-	return strings.ReplaceAll(string(u.TakenAs), "-", " ")
+	return spaced(string(u.TakenAs))
 }
 
 // Row is one row as it stands in the file; readings are masked where they are not to be seen.
