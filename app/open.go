@@ -195,8 +195,9 @@ func (w *window) workbookOf(name string, v exports.Verification) desk.Workbook {
 
 // workbookOf is what verification found, as the desk keeps it.
 func workbookOf(name string, v exports.Verification) desk.Workbook {
-	out := desk.Workbook{Path: name, State: string(v.State), Missing: v.MissingMeanings, Trusted: v.AllTrusted(), Differences: v.Differences}
+	out := desk.Workbook{Path: name, State: string(v.State), Missing: v.MissingMeanings, Trusted: v.AllTrusted(), Differences: v.Differences, Otherwise: v.ComputedOtherwise()}
 	if v.Record != nil {
+		out.Agreement = v.Agreement()
 		for i := len(v.Record.Supersedes) - 1; i >= 0; i-- {
 			out.Supersedes = append(out.Supersedes, exports.SupersedesText(v.Record.Supersedes[i]))
 		}

@@ -28,12 +28,12 @@ func Note(name string, pkg []byte, v Verification, software qa.Software, when ti
 
 // What each state means, and what to do.
 var stateWords = map[State]string{
-	Unreadable: "The file is no record that can be read. Get the original file from whoever signed it.",
+	Unreadable: "The file is no record that this version of Lotpair can read; why, stands below. Get the original file from whoever signed it, or the version that wrote it.",
 	Changed:    "Something in the file is not as it was signed; what, stands below. Do not rely on it: get the original file. A file saved again by an office program is always found like this.",
 	Unsigned:   "Nobody has signed the file. It is a draft.",
 	Disagrees:  "The file is as it was signed, but what it states does not agree with itself: the result computed again from its readings, or its sheets, differ. Ask the signer.",
 	Incomplete: "All that is signed is as it was signed; a signature that the record requires is missing, or one person gave two of them.",
-	Intact:     "Everything in the file is as it was signed, all required signatures are there, and the result computed again agrees.",
+	Intact:     "Everything in the file is as it was signed, and all required signatures are there.",
 }
 
 func noteSheet(file qa.File, v Verification, software qa.Software, when time.Time) sheet {
@@ -49,6 +49,9 @@ func noteSheet(file qa.File, v Verification, software qa.Software, when time.Tim
 	s.gap()
 	say(capital(v.Headline())+".", verdictLook)
 	say(stateWords[v.State], wrapLook)
+	if v.Record != nil && (v.State == Intact || v.State == Incomplete) {
+		say(capital(v.Agreement())+".", wrapLook)
+	}
 	if (v.State == Intact || v.State == Incomplete) && !v.AllTrusted() {
 		say("Anyone can make a certificate with any name in it: compare the SHA-256 of each certificate below with what its owner tells you, or check again with --trust.", wrapLook)
 	}

@@ -22,11 +22,12 @@ type NotSoundError struct {
 	State   State
 	Reasons []opcsign.Reason
 
+	clause string // what it does, where the state does not say it
 	undone string // what was not done; signed where empty
 }
 
 func (e *NotSoundError) Error() string {
-	lines := []string{fmt.Sprintf("found a record that %s, want a sound one; nothing was %s", stateClause(e.State), orWord(e.undone, "signed"))}
+	lines := []string{fmt.Sprintf("found a record that %s, want a sound one; nothing was %s", orWord(e.clause, stateClause(e.State)), orWord(e.undone, "signed"))}
 	for _, r := range e.Reasons {
 		lines = append(lines, r.Error())
 	}
@@ -81,7 +82,11 @@ func Sign(pkg []byte, id identity.Identity, st opcsign.Statement) ([]byte, error
 	case Unsigned:
 		// A draft of an earlier layout is written anew from its record, which this version computed again.
 		if !v.Agrees || slices.ContainsFunc(v.Reasons, func(r opcsign.Reason) bool { return r.Code != "layout-version" }) {
-			return nil, &NotSoundError{State: Disagrees, Reasons: v.Reasons}
+			e := &NotSoundError{State: Disagrees, Reasons: v.Reasons}
+			if v.Agrees && v.ComputedOtherwise() {
+				e.clause = "this version computes otherwise"
+			}
+			return nil, e
 		}
 	default:
 		return nil, &NotSoundError{State: v.State, Reasons: v.Reasons}

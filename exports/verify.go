@@ -319,7 +319,7 @@ func (v Verification) Headline() string {
 	if v.State != Intact && v.State != Incomplete {
 		return h
 	}
-	if v.has("calculation-version") {
+	if v.ComputedOtherwise() {
 		h += "; this version computes another result"
 	}
 	if !v.AllTrusted() {
@@ -327,6 +327,9 @@ func (v Verification) Headline() string {
 	}
 	return h
 }
+
+// ComputedOtherwise says that this version's calculation gives another result than the one that made the record.
+func (v Verification) ComputedOtherwise() bool { return v.has("calculation-version") }
 
 // Agreement says what the recomputation and the sheets gave.
 func (v Verification) Agreement() string {
@@ -337,7 +340,7 @@ func (v Verification) Agreement() string {
 	switch {
 	case !v.Agrees:
 		return "the result computed again, or the sheets, DISAGREE with the record"
-	case v.has("calculation-version"):
+	case v.ComputedOtherwise():
 		return "computed again by this version the result DIFFERS from the record, which another calculation made; the record agrees with itself " + of
 	}
 	return "the result computed again agrees with the record " + of

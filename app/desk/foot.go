@@ -53,7 +53,7 @@ func (s State) FootBy(m *Planner) FootView {
 			v.Said = signedBy(w.Signatures)
 		}
 	} else if len(w.Reasons) > 0 {
-		v.Signatures = "What is wrong"
+		v.Signatures = "What was found"
 	}
 	if m := s.nextMeaning(); m != "" {
 		v.Meaning, v.Sign = m, "Sign as "+m
@@ -206,8 +206,8 @@ func (s State) Signatures() []string {
 		out = append(out, "Missing: signed as "+m+".")
 	}
 	out = append(append(append(out, w.Reasons...), w.Differences...), w.Supersedes...)
-	if w.State != "" && len(w.Differences) == 0 && (w.State == "intact" || w.State == "incomplete") {
-		out = append(out, "The result computed again agrees with the record and its sheets.")
+	if w.Agreement != "" && (w.State == "intact" || w.State == "incomplete") {
+		out = append(out, strings.ToUpper(w.Agreement[:1])+w.Agreement[1:]+".")
 	}
 	return out
 }

@@ -35,7 +35,7 @@ func (s State) Header() HeaderView {
 	seal, note := sealText(s.Record.Result.Seal)
 	v.Right, v.Note = seal, note
 	if w := s.Workbook; w.State != "" {
-		v.Right, v.Alarm = StateText(w), w.State != "intact" || w.Judged && !w.Trusted
+		v.Right, v.Alarm = StateText(w), w.State != "intact" || w.Otherwise || w.Judged && !w.Trusted
 		v.Note = seal
 	}
 	return v
@@ -88,6 +88,9 @@ func StateText(w Workbook) string {
 		return "disagrees: its readings give another result"
 	default:
 		return s
+	}
+	if w.Otherwise {
+		s += "; this version computes another result"
 	}
 	switch {
 	case w.Trusted:

@@ -99,7 +99,7 @@ func act(t testing.TB, s desk.State, line string) (desk.State, error) {
 		return s.Opened(rest, rec), nil
 	case "workbook": // workbook STATE MEANING...
 		f := strings.Fields(rest)
-		w := desk.Workbook{Path: "record.xlsx", State: f[0]}
+		w := desk.Workbook{Path: "record.xlsx", State: f[0], Agreement: "the result computed again agrees with the record and its sheets"}
 		for _, m := range f[1:] {
 			w.Signatures = append(w.Signatures, signature(m, f[0] != "changed"))
 		}

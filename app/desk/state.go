@@ -54,8 +54,10 @@ type Workbook struct {
 	Judged     bool   // whether there are trusted certificates at all
 	Signatures []Signature
 	Missing    []string // required meanings that nobody has signed
-	Reasons    []string // what is wrong, a sentence each
+	Reasons    []string // what verification came upon, a sentence each
 
+	Agreement   string   // what the recomputation and the sheets gave, in words
+	Otherwise   bool     // this version computes another result than the one that made the record
 	Differences []string // where the recomputation or the sheets differ from the record
 	Supersedes  []string // the earlier records in whose place this one stands, the last first
 }

@@ -22,10 +22,15 @@ func TestScript(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
+	older, err := filepath.Abs("../../exports/testdata/older")
+	if err != nil {
+		t.Fatal(err)
+	}
 	testscript.Run(t, testscript.Params{
 		Dir: "testdata",
 		Setup: func(e *testscript.Env) error {
 			e.Setenv("CASES_DIR", root)
+			e.Setenv("OLDER_DIR", older)
 			return nil
 		},
 		Cmds: map[string]func(*testscript.TestScript, bool, []string){"tamper": tamper},
