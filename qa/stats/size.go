@@ -11,11 +11,6 @@ import (
 // mostReadings is the largest sample size that is sought.
 const mostReadings = 100_000_000
 
-// mostBack is how many numbers before the one found are looked at for one that has the
-// power already: all that may have it where there is at least one candidate reading to
-// 19 of the reference. With fewer, one reference reading more or less is nothing.
-const mostBack = 40
-
 // ErrNoSize says that more readings would be needed than anyone takes.
 var ErrNoSize = errors.New("more than 100,000,000 readings would be needed")
 
@@ -120,16 +115,57 @@ func (d Design) size(ratio, power float64, alone bool) (nRef, nCand int, achieve
 		return 0, 0, 0, err
 	}
 	if double && ratio != math.Trunc(ratio) {
-		// One reading more in the group of the smaller standard deviation may lower
-		// the power a little, so that a number before may have had it.
-		back := min(2+2*int(math.Ceil(1/min(ratio, 1))), mostBack)
-		for k := n - 1; k >= max(first, n-back); k-- {
-			if p := at(k); p >= power {
-				n, achieved = k, p
-			}
-		}
+		n = earlier(at, first, n, ratio, power)
+		achieved = at(n)
 	}
 	return n, Share(n, ratio), achieved, nil
+}
+
+// earlier is the smallest number from first on that has the power, where n has it and
+// n-1 has not. One reading more in the group of the smaller standard deviation may lower
+// the power a little, so that a number before may have had it: of the numbers with as
+// many candidate readings the first, or where the power falls and rises again one from
+// which on they have it. So the two ends of each such run are looked at, back to where
+// four runs have it no more; a power that nobody would plan for may fall for longer.
+func earlier(at func(n int) float64, first, n int, ratio, power float64) int {
+	most := 4
+	if power < 0.5 {
+		most = 12
+	}
+	best, last := n, n
+	for runs := 0; runs < most && last >= first; runs++ {
+		start := max(first, runStart(last, ratio))
+		switch {
+		case at(start) >= power:
+			best, runs = start, 0
+		case last < n && at(last) >= power:
+			low, high := start, last
+			for high-low > 1 {
+				if middle := low + (high-low)/2; at(middle) >= power {
+					high = middle
+				} else {
+					low = middle
+				}
+			}
+			best, runs = high, 0
+		}
+		last = start - 1
+	}
+	return best
+}
+
+// runStart is the smallest number of reference readings with as many candidate ones as n
+// has.
+func runStart(n int, ratio float64) int {
+	c := Share(n, ratio)
+	start := max(1, min(n, int(float64(c-1)/ratio)))
+	for Share(start, ratio) < c {
+		start++
+	}
+	for start > 1 && Share(start-1, ratio) == c {
+		start--
+	}
+	return start
 }
 
 // nearError is at least as large as near is off for Welch's test, n readings in the

@@ -3,6 +3,7 @@ package stats_test
 import (
 	"errors"
 	"math"
+	"math/rand/v2"
 	"testing"
 
 	"lotpair/qa/stats"
@@ -84,6 +85,57 @@ func TestSizeIsSmallest(t *testing.T) {
 			}
 		}
 	})
+}
+
+// Lots of very unequal size: with as many candidate readings a reference reading more may lower the power. Of powers just below
+// those at the ends of such runs the smallest number is found, as by trying all from 2 on.
+func TestSizeOfUnequalLots(t *testing.T) {
+	random := rand.New(rand.NewPCG(4, 2))
+	falls := 0
+	for range 24 {
+		ratio := []float64{0.02, 0.035, 0.09, 0.3, 0.77, 1.3}[random.IntN(6)]
+		d := stats.Design{SDRef: 1, SDCand: math.Exp(2*random.Float64() - 1.5), Alpha: 0.05, Welch: random.IntN(2) == 0}
+		m := 0.5 + 1.5*random.Float64()
+		d.Lower, d.Upper = -m, m
+		known := map[int]float64{}
+		with := func(n int) float64 {
+			if _, found := known[n]; !found {
+				d.NRef, d.NCand = n, stats.Share(n, ratio)
+				p, err := d.Power()
+				if err != nil {
+					p = 0 // too few candidates
+				}
+				known[n] = p
+			}
+			return known[n]
+		}
+		candidates := 2 + random.IntN(4) // the run of these, and its ends
+		last := int(float64(candidates) / ratio * (1 + 1e-12))
+		start := int(float64(candidates-1)/ratio*(1+1e-12)) + 1
+		if with(last) < with(start) {
+			falls++
+		}
+		for _, at := range []int{start, last} {
+			want := with(at) * (1 - 1e-6)
+			if !(want > 0.06 && want < 0.999) {
+				continue
+			}
+			n, _, got, err := stats.Size(d, ratio, want)
+			if err != nil {
+				t.Fatal(err)
+			}
+			smallest := 2
+			for with(smallest) < want {
+				smallest++
+			}
+			if n != smallest || got != with(n) {
+				t.Errorf("%+v, ratio %v, power %v: got %d with %v, want %d", d, ratio, want, n, got, smallest)
+			}
+		}
+	}
+	if falls < 5 {
+		t.Errorf("got %d runs in which the power falls, want some", falls)
+	}
 }
 
 func TestSizeEnds(t *testing.T) {
