@@ -274,7 +274,7 @@ func (p Planned) sentences(plan qa.Plan, shift float64) (headline string, out []
 	unit, power := p.Characteristic.Unit, wantedPower(plan)
 	switch {
 	case p.Fault != "":
-		return "The margin is not settled.", []string{p.Fault}
+		return "The margin is not settled.", []string{inWords.Replace(p.Fault)}
 	case p.asked != "":
 		out = []string{"The margin is " + p.Margin + "."}
 		if m := p.Permits; m != nil {
