@@ -62,7 +62,7 @@ func (w *window) paintDraftPage(p *pen, size fyne.Size, of qa.Side) {
 	p.centred(fontNote.fit(second, wide-16), size.Width/2, middle+6, fontNote, p.MutedText)
 	if bottom-top > 130 && !w.state.Sealed() {
 		for i, l := range []string{"opens after the criterion is sealed,", "or says in the record that it did not"} {
-			p.centred(fontTiny.fit(l, wide-8), size.Width/2, bottom-20+float32(i)*14, fontTiny, p.MutedText)
+			p.centred(fontTiny.fit(l, wide-8), size.Width/2, bottom-26+float32(i)*14, fontTiny, p.MutedText)
 		}
 	}
 }

@@ -56,7 +56,7 @@ func (c *comparison) checkOne(s sample) SampleChecks {
 	if n >= 2 && s.summary.Constant() {
 		c.warn(WarnNoVariation, s.side, string(s.side)+".sd", fmt.Sprintf("All %d readings of the %s lot are equal.", n, s.side))
 	}
-	if n < fewestToJudge {
+	if n > 0 && n < fewestToJudge { // without any, that alone is said
 		c.warn(WarnFew, s.side, string(s.side)+".n", fmt.Sprintf("Only %s in the %s lot: the verdict rests on the assumption of a normal distribution, which so few cannot show.", Count(n, "reading", "readings"), s.side))
 	}
 	if d := written(s); d >= 0 {

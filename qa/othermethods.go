@@ -150,7 +150,7 @@ func (c *comparison) flips() {
 	var other []string
 	for _, s := range c.Sensitivity {
 		if s.Verdict != c.Equivalence.Verdict && !strings.HasPrefix(s.Method, "non-detects") {
-			other = append(other, fmt.Sprintf("%s: %s", strings.TrimSpace(s.Method+" "+s.Cell), s.Verdict))
+			other = append(other, fmt.Sprintf("%s: %s", strings.TrimSpace(strings.ReplaceAll(s.Method, "-", " ")+" "+s.Cell), s.Verdict))
 		}
 	}
 	if len(other) > 0 && c.Equivalence.Verdict != "" {

@@ -99,6 +99,7 @@ func (s State) next(v FootView) string {
 		look = "look at " + qa.Count(n, "finding", "findings")
 		switch {
 		case first == "":
+			look += " on how the files were read"
 		case n == 1:
 			look += " on " + first
 		default:

@@ -148,6 +148,7 @@ func act(t testing.TB, s desk.State, line string) (desk.State, error) {
 	case "sign":
 		w := s.Workbook
 		w.Path, w.State, w.Missing = "record.xlsx", "incomplete", []string{"reviewed"}
+		w.Agreement = "the result computed again agrees with the record and its sheets" // as verification of what was written says it
 		w.Signatures = append(append([]desk.Signature{}, w.Signatures...), signature(rest, true))
 		return s.Signed(s.Record, w), nil
 	case "fail":

@@ -73,7 +73,7 @@ func wayText(method string, planned bool) string {
 		"welch": "Welch", "pooled": "pooled", "paired": "paired", "log": "logarithms", "trimmed": "trimmed means", "ranks": "ranks",
 		"exclusions-put-back": "exclusions put back", "outlying-removed": "outlying removed",
 		"non-detects-best": "non-detects at best", "non-detects-worst": "non-detects at worst",
-		"miettinen-nurminen": "score", "stratified": "within groups",
+		"miettinen-nurminen": "score", "newcombe": "Newcombe", "stratified": "within groups",
 	}[method]
 	if s == "" {
 		s = strings.ReplaceAll(method, "exclusion-put-back", "put back")
