@@ -116,6 +116,8 @@ func TestOlderTamper(t *testing.T) {
 		{"the state of a reading", swap(readings, ">left out: dropped part, NCR-7<", ">used<"), "Readings!J"},
 		{"the lot of a reading", swap(readings, ">C-1<", ">C-2<"), "Readings!B"},
 		{"a heading of the readings", swap(readings, ">Value left out<", ">Value<"), "Readings"},
+		{"figures above the figures", match(results, `<row r="3"[^>]*>`, `$0<c r="C3"><v>1</v></c><c r="D3"><v>1</v></c>`), "Results: found a line in row 3"},
+		{"joined cells", swap(readings, "</sheetData>", `</sheetData><mergeCells count="1"><mergeCell ref="C5:D5"/></mergeCells>`), "joined cells at C5"},
 		{"a hidden line", match(readings, `<row r="7"`, `<row r="7" hidden="1"`), "hidden"},
 		{"a line of the ledger", swap(ledger, ">n/a<", ">39.9<"), "Ledger!C"},
 		{"cells of the account", match(ledger, `<v>(\d\d)</v>`, "<v>9$1</v>"), "Ledger!D"},

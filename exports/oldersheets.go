@@ -46,6 +46,7 @@ func (o *olderBook) tables(want *sheet) {
 		return // said already
 	}
 	known, from, next := map[int]bool{}, 0, 0
+	first := 0         // row of the headings
 	var names []string // headings of the table that the lines are of; none between tables
 	var at map[string]int
 	want.lines(func(_ int, r row) bool {
@@ -65,13 +66,14 @@ func (o *olderBook) tables(want *sheet) {
 				o.say("sheet %s: found %d headings in row %d, want %d", want.name, n, got.Rows[i].Number, len(names))
 			}
 			from, next, at = i+1, got.Rows[i].Number+1, columns
-			known[got.Rows[i].Number] = true
+			first = got.Rows[i].Number
+			known[first] = true
 		case len(r.cells) == 0 || r.cells[0].span > 1:
 			names = nil
 		case names != nil:
 			have, _ := got.Row(next)
 			have.Number = next
-			for k := range r.cells {
+			for k := range min(len(r.cells), len(names)) {
 				g := have.At(at[names[k]])
 				compareCell(want.name, &r.cells[k], &g, nil, o.say)
 			}
@@ -81,11 +83,27 @@ func (o *olderBook) tables(want *sheet) {
 			known[next] = true
 			next++
 		}
+		if names == nil && first > 0 {
+			o.unmerged(got, first, next-1)
+			first = 0
+		}
 		return true
 	})
+	if first > 0 {
+		o.unmerged(got, first, next-1)
+	}
 	for i := range got.Rows {
 		if n := got.Rows[i].Number; !known[n] && len(line(got.Rows[i])) > 1 {
 			o.say("sheet %s: found a line in row %d that the record does not give", want.name, n)
+		}
+	}
+}
+
+// unmerged wants no cells of a table joined: all but the first of them would be out of sight.
+func (o *olderBook) unmerged(s cells.Sheet, first, last int) {
+	for _, a := range s.Merged {
+		if a.FirstRow <= last && a.LastRow >= first {
+			o.say("sheet %s: found joined cells at %s, want each on its own", s.Name, cells.Name(a.FirstCol, a.FirstRow))
 		}
 	}
 }
@@ -156,7 +174,11 @@ func (o *olderBook) results(verdict qa.Verdict, result string) {
 		}
 		number++
 	}
+	o.unmerged(got, got.Rows[head].Number, number-1)
 	for i := range got.Rows {
+		if i < head && len(line(got.Rows[i])) > 2 { // a title and that it is a draft
+			o.say("sheet %s: found a line in row %d that the record does not give", SheetResults, got.Rows[i].Number)
+		}
 		if got.Rows[i].Number >= number && len(line(got.Rows[i])) > 0 {
 			o.say("sheet %s: found a line in row %d that the record does not give", SheetResults, got.Rows[i].Number)
 		}

@@ -261,6 +261,8 @@ func FuzzVerify(f *testing.F) {
 	f.Add([]byte("PK\x03\x04"))
 	f.Add([]byte(""))
 	f.Add(signed(f))
+	f.Add(olderFile(f, "small.xlsx"))
+	f.Add(olderFile(f, "seal.xlsx"))
 	if seal, err := sealed(f).Workbook(); err == nil {
 		f.Add(seal)
 	}

@@ -104,7 +104,7 @@ func (p *program) verifyJSON(v exports.Verification) error {
 			Agrees      bool     `json:"agrees"`
 			Differences []string `json:"differences"`
 			Rebuilt     bool     `json:"rebuilt"`
-		}{v.Agrees, v.Differences, v.Rebuilt},
+		}{v.Agrees && !v.ComputedOtherwise(), v.Differences, v.Rebuilt},
 		v.State, superseded(v),
 	})
 }
