@@ -43,15 +43,5 @@ func SmallestMargin(d Design, power float64) (float64, error) {
 			return 0, fmt.Errorf("margin: found none below the largest number, want a smaller standard deviation than %v", d.SDRef)
 		}
 	}
-	for {
-		middle := low + (high-low)/2
-		if middle <= low || middle >= high || high-low <= 1e-13*unit {
-			return high, nil
-		}
-		if at(middle) < power {
-			low = middle
-		} else {
-			high = middle
-		}
-	}
+	return bracketed(low, high, func(m float64) float64 { return at(m) - power }), nil
 }
