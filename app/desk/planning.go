@@ -24,6 +24,7 @@ type Planned struct {
 
 	design stats.Design
 	ready  bool   // whether design can be asked
+	pairs  int    // the most that are needed of them; 0 where it is not known
 	asked  string // what is asked in a way that is not planned for here; empty for what is
 }
 
@@ -195,17 +196,22 @@ const mostParts = 100_000
 func (p *Planned) size(plan qa.Plan, x qa.Comparison) {
 	aims := map[qa.Objective]stats.Aim{qa.Equivalence: stats.AimWithin, qa.NotLower: stats.AimNotLower, qa.NotHigher: stats.AimNotHigher}
 	aim, ok := aims[x.Objective]
-	if !ok || p.asked != "" {
+	pairs := p.asked == "paired" && x.Equivalence.Scale == "difference"
+	if !ok || p.asked != "" && !pairs {
 		return
 	}
-	p.design = stats.Design{Aim: aim, SDRef: p.SD, SDCand: p.SD, Alpha: x.Alpha, Lower: math.Inf(-1), Upper: math.Inf(1)}
+	p.design = stats.Design{Aim: aim, Welch: x.Method == "welch", SDRef: p.SD, SDCand: p.SD, Alpha: x.Alpha, Lower: math.Inf(-1), Upper: math.Inf(1)}
 	p.design.Paired = x.Equivalence.Scale == "shift" // one lot's mean against a stated one
+	if pairs {                                       // the most that differences vary where a part's readings go together at all
+		p.design.SDRef *= math.Sqrt2
+	}
 	if u := p.Characteristic.Uncertainty; u != nil {
 		p.design.Bias = qa.DifferenceUncertainty(u.Reference, u.Candidate)
 		if p.design.Paired {
 			p.design.Bias = u.Candidate
 		}
 	}
+	p.design.Paired = p.design.Paired || pairs
 	if p.Lower != nil {
 		p.design.Lower = *p.Lower
 	}
@@ -215,6 +221,10 @@ func (p *Planned) size(plan qa.Plan, x qa.Comparison) {
 	power := wantedPower(plan)
 	n, _, reached, err := stats.Size(p.design, 1, power)
 	if err != nil || n > mostParts {
+		return
+	}
+	if pairs {
+		p.pairs, p.Power = n, reached
 		return
 	}
 	p.N, p.Power, p.ready = n, reached, true
@@ -280,7 +290,11 @@ func (p Planned) sentences(plan qa.Plan, shift float64) (headline string, out []
 		if m := p.Permits; m != nil {
 			out = append(out, p.permitsText(m))
 		}
-		return "How many parts are needed?", append(out, unplanned[p.asked])
+		out = append(out, unplanned[p.asked])
+		if p.pairs > 0 {
+			out = append(out, fmt.Sprintf("At most it is %s, √2 times that of the readings, where the two readings of a part have nothing in common: %d pairs then show it with probability %s. The more they have in common, the fewer do.", withUnit(qa.ThreeDigits(p.design.SDRef), unit), p.pairs, qa.Fixed(p.Power, 2)))
+		}
+		return "How many parts are needed?", out
 	case p.SD == 0:
 		return "How many parts are needed?", []string{"The margin is " + p.Margin + ". Type the standard deviation that you expect: then it is said here how many parts of each lot are needed."}
 	case !p.ready:

@@ -44,6 +44,16 @@ func (s State) SizingOf() Sizing {
 	if one.SD > 0 {
 		z.SD = NumberText(&one.SD, 1)
 	}
+	method := p.Criterion.Method
+	if m := p.Characteristics[s.Selected].Method; m != "" {
+		method = m
+	}
+	switch method {
+	case "", "welch":
+		z.Method = StudyMethods[1]
+	case "paired": // its standard deviation is that of the differences, which the plan does not state
+		z.Design, z.SD = Designs[1], ""
+	}
 	if p.Criterion.Alpha != nil {
 		z.Alpha = NumberText(p.Criterion.Alpha, 1)
 	}
