@@ -52,7 +52,7 @@ var waysWords = map[string]string{
 	"welch": "means with their own variances (Welch)", "pooled": "means with one variance for both lots (Student)",
 	"log": "ratio of geometric means, on natural logarithms", "trimmed": "means without the lowest and highest fifth of the readings (Yuen)",
 	"ranks":     "shift by ranks: the median of all differences between the lots (Hodges, Lehmann)",
-	"bootstrap": "readings drawn again from each lot with replacement", "permutation": "readings dealt again to the two lots",
+	"bootstrap": "readings drawn again from each lot with replacement, pairs as pairs", "permutation": "readings dealt again to the two lots; of pairs, their differences with signs turned",
 	"exclusions-put-back": "with every reading that was left out", "exclusion-put-back": "with the one reading of the named cell that was left out",
 	"outlying-removed": "without the readings that the generalized ESD test calls outlying; no ground to leave them out",
 	"non-detects-best": "non-detects at the end of their range that favours what is to be shown", "non-detects-worst": "non-detects at the end that speaks against it",
