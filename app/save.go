@@ -58,7 +58,7 @@ func (w *window) export(to string) {
 	place, rec := "Exporting to "+filepath.Base(to), w.state.Record
 	to = absolute(withExtension(to))
 	w.work(place, func(watch qa.Watch) change {
-		data, err := exports.Workbook(rec)
+		data, err := exports.Under(watch).Workbook(rec)
 		if err == nil {
 			err = w.jobs.writes(watch)
 		}

@@ -81,7 +81,7 @@ func (w *window) sign(x signing) {
 		if had {
 			err = signAgain(to, id, st, writes)
 		} else {
-			err = signFirst(to, rec, id, st, writes)
+			err = signFirst(to, rec, id, st, watch, writes)
 		}
 		if err != nil {
 			return failed(place, err)
@@ -103,8 +103,8 @@ func (w *window) sign(x signing) {
 }
 
 // signFirst writes the workbook with its first signature. A file of that name is left alone.
-func signFirst(to string, rec qa.Record, id identity.Identity, st opcsign.Statement, writes func() error) error {
-	data, err := exports.SignFirst(rec, id, st)
+func signFirst(to string, rec qa.Record, id identity.Identity, st opcsign.Statement, watch qa.Watch, writes func() error) error {
+	data, err := exports.Under(watch).SignFirst(rec, id, st)
 	if err != nil {
 		return err
 	}

@@ -10,6 +10,7 @@ import (
 	"github.com/xuri/excelize/v2"
 
 	"lotpair/importers/cells"
+	"lotpair/qa"
 )
 
 // book is a workbook as it is to be written.
@@ -19,6 +20,7 @@ type book struct {
 	sheets []sheet
 	record func(w io.Writer) error // writes the custom XML part; nil for a workbook that carries none
 	draft  bool
+	watch  qa.Watch
 }
 
 // epoch stands in the document properties, which are removed before signing: the true times are in the record.
@@ -47,7 +49,7 @@ func (b book) room() int {
 func (b book) parts() (map[string]part, error) {
 	f := excelize.NewFile()
 	defer f.Close()
-	w := &looks{file: f}
+	w := &looks{file: f, watch: b.watch}
 	var hand painter
 	if err := f.SetDefaultFont(workbookFont); err != nil {
 		return nil, fmt.Errorf("workbook: %w", err)
@@ -55,6 +57,9 @@ func (b book) parts() (map[string]part, error) {
 	data := map[string]sheetWriter{} // by the name of the part
 	for i := range b.sheets {
 		s := &b.sheets[i]
+		if err := b.watch.Stop(qa.Progress{Doing: writing, Of: s.name}); err != nil {
+			return nil, err
+		}
 		if i == 0 {
 			if err := f.SetSheetName("Sheet1", s.name); err != nil {
 				return nil, fmt.Errorf("workbook: %w", err)

@@ -1,6 +1,10 @@
 package exports
 
-import "github.com/xuri/excelize/v2"
+import (
+	"github.com/xuri/excelize/v2"
+
+	"lotpair/qa"
+)
 
 // The colours of the workbook: paper and ink, the same roles as in the window.
 const (
@@ -13,10 +17,11 @@ const (
 	workbookFont    = "Arial"
 )
 
-// looks holds the style ids of a workbook, made on first use.
+// looks holds the style ids of a workbook, made on first use, and who follows its writing.
 type looks struct {
-	file *excelize.File
-	ids  [lastLook + 1]int // 0: not made yet
+	file  *excelize.File
+	ids   [lastLook + 1]int // 0: not made yet
+	watch qa.Watch
 }
 
 func (l *looks) id(k look) (int, error) {

@@ -11,6 +11,7 @@ import (
 	"github.com/xuri/excelize/v2"
 
 	"lotpair/importers/cells"
+	"lotpair/qa"
 )
 
 // The cells are written here and not by the spreadsheet library: it cuts numbers to 15 significant digits, and the record
@@ -41,7 +42,9 @@ func writeSheetData(to io.Writer, s *sheet, w *looks) error {
 			return true
 		}
 		if err = writeRow(&b, number, r, w); err == nil && b.Len() >= full {
-			_, err = to.Write(b.Bytes())
+			if err = w.watch.Told(qa.Progress{Doing: writing, Of: s.name, Done: int64(number), Total: int64(s.filterTo)}); err == nil {
+				_, err = to.Write(b.Bytes())
+			}
 			b.Reset()
 		}
 		return err == nil

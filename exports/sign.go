@@ -106,6 +106,11 @@ func signerOf(id identity.Identity, st opcsign.Statement) *qa.Signer {
 
 // SignFirst writes a record's workbook with its first signer and signs it.
 func SignFirst(rec qa.Record, id identity.Identity, st opcsign.Statement) ([]byte, error) {
+	return Watched{}.SignFirst(rec, id, st)
+}
+
+// SignFirst writes and signs as the function of that name does.
+func (w Watched) SignFirst(rec qa.Record, id identity.Identity, st opcsign.Statement) ([]byte, error) {
 	if !slices.Contains(signMeanings, st.Meaning) {
 		return nil, fmt.Errorf("%w, found %q", ErrMeaning, st.Meaning)
 	}
@@ -118,7 +123,7 @@ func SignFirst(rec qa.Record, id identity.Identity, st opcsign.Statement) ([]byt
 	}
 	rec.Signer = signerOf(id, st)
 	rec.Trail = rec.Trail.With(st.Time, st.Name, signedAs+st.Meaning, "", st.Reason)
-	pkg, err := Workbook(rec)
+	pkg, err := w.Workbook(rec)
 	if err != nil {
 		return nil, err
 	}

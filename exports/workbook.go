@@ -19,7 +19,10 @@ func (e TooManyReadings) Error() string {
 
 // Workbook writes the record as an .xlsx package, unsigned: the sheets, the pictures and the record itself as custom XML.
 // The same record gives the same bytes.
-func Workbook(rec qa.Record) ([]byte, error) {
+func Workbook(rec qa.Record) ([]byte, error) { return Watched{}.Workbook(rec) }
+
+// Workbook writes the record as the function of that name does.
+func (w Watched) Workbook(rec qa.Record) ([]byte, error) {
 	n := 0
 	for _, l := range []qa.Lot{rec.Readings.Reference, rec.Readings.Candidate} {
 		for _, s := range l.Series {
@@ -33,6 +36,7 @@ func Workbook(rec qa.Record) ([]byte, error) {
 	if err != nil {
 		return nil, err
 	}
+	b.watch = w.watch
 	return b.bytes()
 }
 

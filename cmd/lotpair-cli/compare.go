@@ -169,9 +169,9 @@ func (p *program) writeWorkbook(rec qa.Record, c compareFlags) int {
 		if code != exitDone {
 			return code
 		}
-		pkg, err = exports.SignFirst(rec, id, opcsign.Statement{Meaning: c.meaning, Reason: c.reason, Time: p.now(), Zone: zoneOf(p.now())})
+		pkg, err = exports.Under(p.watch).SignFirst(rec, id, opcsign.Statement{Meaning: c.meaning, Reason: c.reason, Time: p.now(), Zone: zoneOf(p.now())})
 	} else {
-		pkg, err = exports.Workbook(rec)
+		pkg, err = exports.Under(p.watch).Workbook(rec)
 	}
 	if err != nil {
 		return p.notWritten(err)
