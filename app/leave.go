@@ -65,8 +65,8 @@ func (w *window) change(place string, act func(desk.State) (desk.State, error)) 
 // compare runs the comparison again.
 func (w *window) compare() {
 	s := w.state
-	w.work("Comparing", func(qa.Watch) change {
-		next, err := s.Compare()
+	w.work("Comparing", func(watch qa.Watch) change {
+		next, err := s.Compare(watch)
 		if err != nil {
 			return failed("Comparing", err)
 		}

@@ -110,10 +110,10 @@ func (s State) Verified(w Workbook) State {
 	return s
 }
 
-// Compare runs the comparison again after a reading was left out or put back. It is one more attempt.
-func (s State) Compare() (State, error) {
+// Compare runs the comparison again, under a watch, after a reading was left out or put back. It is one more attempt.
+func (s State) Compare(watch qa.Watch) (State, error) {
 	r := s.Record.Result
-	run := qa.Run{Software: r.Software, Seal: r.Seal, Attempts: r.Attempts}
+	run := qa.Run{Software: r.Software, Seal: r.Seal, Attempts: r.Attempts, Watch: watch}
 	run.Attempts.Known++
 	res, err := qa.Compare(s.Record.Plan, s.Record.Readings, run)
 	if err != nil {

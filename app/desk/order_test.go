@@ -162,7 +162,7 @@ func anyAct(t *rapid.T, s desk.State, name string, step int, sample qa.Record, a
 		if !s.Open || s.Drafting || s.Compared || len(s.Record.Readings.Characteristics) == 0 {
 			return s
 		}
-		return taken(s.Compare())
+		return taken(s.Compare(qa.Watch{}))
 	}
 	if !s.Compared {
 		return s

@@ -142,7 +142,7 @@ func act(t testing.TB, s desk.State, line string) (desk.State, error) {
 	case "redo":
 		return s.Redone("tester", noon), nil
 	case "compare":
-		return s.Compare()
+		return s.Compare(qa.Watch{})
 	case "export":
 		return s.Exported(rest), nil
 	case "sign":
@@ -302,7 +302,7 @@ func TestLeavingOutIsInTheTrail(t *testing.T) {
 	if s.Record.Plan.SealDigest() != out.Record.Plan.SealDigest() {
 		t.Error("seal: leaving a reading out changed the criterion")
 	}
-	again, err := back.Compare()
+	again, err := back.Compare(qa.Watch{})
 	if err != nil {
 		t.Fatal(err)
 	}
