@@ -166,6 +166,6 @@ func (w *window) paragraphAt(width, at float32) string {
 // helpWith shows a text with what its words and numbers mean, to be read and copied.
 func (w *window) helpWith(text string) {
 	if text != "" && !w.busy() {
-		w.showText("In plain words", desk.Help(text))
+		w.showText("In plain words", w.allShown(desk.Help(text)))
 	}
 }

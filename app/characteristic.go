@@ -15,7 +15,7 @@ func (w *window) askCharacteristic(at int) {
 	if at >= 0 && at < len(p.Characteristics) {
 		c, title = p.Characteristics[at], "Change a characteristic"
 	}
-	o := desk.OwnOf(c)
+	o := desk.OwnOf(c, w.decimal)
 	f := w.newForm()
 	name := f.text("Name", o.Name, "")
 	column := f.text("Heading in the file", o.Column, "only where it is not the name")

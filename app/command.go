@@ -9,6 +9,8 @@ import (
 	"path/filepath"
 	"runtime/debug"
 	"strings"
+
+	"lotpair/app/desk"
 )
 
 // Command runs the desktop program: it opens the window through open, or renders it to a file where --picture asks for that.
@@ -20,6 +22,7 @@ func Command(args []string, version string, open func(Options) ([]string, error)
 	shot := Shot{}
 	f.Float64Var(&shot.Scale, "scale", 1, "with --picture: pixels a point")
 	f.BoolVar(&shot.Dark, "dark", false, "the dark colours")
+	decimal := f.String("decimal", "", "the decimal `mark` of numbers in the window: point or comma; the system's where it is left out, with --picture a point")
 	acts := f.String("acts", "", "when the window is closed, write what was done in it to `FILE`, an act a line")
 	f.StringVar(&shot.Register, "register", "", "keep the records in `DIR` instead of the user's own folder; with --picture: show those of DIR")
 	measure := f.String("measure", "", "use the window as `HOW` says and close it, for the bench: still, walk, resize, spine or readings")
@@ -36,6 +39,16 @@ func Command(args []string, version string, open func(Options) ([]string, error)
 	if f.NArg() > 1 {
 		return fmt.Errorf("found %d files, want at most one", f.NArg())
 	}
+	mark := desk.Point
+	if *decimal != "" {
+		var err error
+		if mark, err = desk.ParseDecimal(*decimal); err != nil {
+			return fmt.Errorf("--decimal: %w", err)
+		}
+	} else if *picture == "" {
+		mark = systemDecimal()
+	}
+	shot.Decimal = mark
 	settleLocale()
 	build := Build{Version: version, Revision: revision()}
 	if *picture == "" {
@@ -47,7 +60,7 @@ func Command(args []string, version string, open func(Options) ([]string, error)
 			}
 			dir = filepath.Join(own, "lotpair")
 		}
-		done, err := open(Options{File: f.Arg(0), Register: dir, Build: build, Dark: shot.Dark, Measure: Measurement{Name: *measure, Out: os.Stdout}, Controls: *controls})
+		done, err := open(Options{File: f.Arg(0), Register: dir, Build: build, Dark: shot.Dark, Measure: Measurement{Name: *measure, Out: os.Stdout}, Controls: *controls, Decimal: mark})
 		if err == nil && *acts != "" {
 			err = os.WriteFile(*acts, []byte(strings.Join(done, "\n")+"\n"), 0o600)
 		}

@@ -16,6 +16,8 @@ type draftLine struct {
 	show func(p qa.Plan, at int) string
 	set  func(p *qa.Plan, at int, text string) error
 
+	number bool // a number is typed
+
 	typed func(text string)
 	left  func()
 }
@@ -41,8 +43,8 @@ func (w *window) newDraftLines() draftLines {
 	words("candidate lot", func(p *qa.Plan) *string { return &p.Candidate.Lot })
 	words("candidate source", func(p *qa.Plan) *string { return &p.Candidate.Source })
 	value := func(name string, times float64, get func(qa.Plan, int) *float64, put func(*qa.Plan, int, *float64)) {
-		add(name, func(p qa.Plan, at int) string { return desk.NumberText(get(p, at), times) }, func(p *qa.Plan, at int, text string) error {
-			v, err := desk.Number(text)
+		add(name, func(p qa.Plan, at int) string { return w.decimal.NumberText(get(p, at), times) }, func(p *qa.Plan, at int, text string) error {
+			v, err := w.decimal.Number(text)
 			if err != nil {
 				return err
 			}
@@ -52,6 +54,7 @@ func (w *window) newDraftLines() draftLines {
 			put(p, at, v)
 			return nil
 		})
+		out[name].number = true
 	}
 	margin := func(name string, times float64, of func(*qa.Margin) **float64) {
 		value(name, times, func(p qa.Plan, _ int) *float64 {
@@ -94,9 +97,9 @@ func (w *window) newDraftLines() draftLines {
 		p.Characteristics[at].SD = v
 	})
 	shift := &draftLine{name: "true difference"}
-	shift.show = func(qa.Plan, int) string { return desk.NumberText(&w.shift, 1) }
+	shift.show = func(qa.Plan, int) string { return w.decimal.NumberText(&w.shift, 1) }
 	shift.typed, shift.left = func(text string) {
-		v, err := desk.Number(text)
+		v, err := w.decimal.Number(text)
 		w.shift = 0
 		if err == nil && v != nil {
 			w.shift = *v
@@ -131,12 +134,23 @@ func (w *window) typedDraft(d *draftLine, text string) {
 
 // leftDraft keeps what was typed, where it changed anything.
 func (w *window) leftDraft(d *draftLine) {
-	if !w.state.Drafting || d.fault != "" {
+	switch {
+	case d.fault != "" && d.focused: // return was pressed: what is wrong stays said beside what was typed
+		return
+	case !w.state.Drafting || d.fault != "":
+		fault := d.fault
 		d.fault = ""
 		w.show()
+		if fault != "" {
+			w.say(fault + "; nothing was changed.")
+		}
 		return
 	}
-	w.keepDraft(d.name + " " + d.Text)
+	text := d.Text
+	if v, err := w.decimal.Number(text); d.number && err == nil {
+		text = desk.Point.NumberText(v, 1) // the trail is the record's
+	}
+	w.keepDraft(d.name + " " + text)
 }
 
 // keepDraft keeps the draft of the plan, where something was typed that it did not say before.

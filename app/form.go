@@ -78,7 +78,7 @@ func (f *form) choice(label, value string, words []string, hint string) *pick {
 // add is a line with any control.
 func (f *form) add(label string, o fyne.CanvasObject, hint string) {
 	item := widget.NewFormItem(label, o)
-	item.HintText = hint
+	item.HintText = f.w.shown(hint)
 	f.items = append(f.items, item)
 	if c, ok := o.(fyne.Focusable); ok && f.first == nil {
 		f.first = c
@@ -91,7 +91,7 @@ func (f *form) say() {
 		f.said.SetText("")
 		return
 	}
-	f.said.SetText(joinLines(f.live()))
+	f.said.SetText(f.w.shown(joinLines(f.live())))
 }
 
 // ask shows the form. do is called on confirm; what it returns is said in the form, which then stays.
@@ -108,7 +108,7 @@ func (f *form) ask(title, confirm string, do func() error) {
 	d := dialog.NewCustomWithoutButtons(title, container.NewBorder(nil, below, nil, nil, f.body), w.win)
 	try := func() {
 		if err := do(); err != nil {
-			f.said.SetText(err.Error())
+			f.said.SetText(f.w.shown(err.Error()))
 			return
 		}
 		d.Hide()

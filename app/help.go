@@ -9,7 +9,7 @@ func (w *window) showWords() {
 		rows = append(rows, []string{x.Word, x.Means, x.Term})
 	}
 	rows = append([][]string{{"word", "means", "term of a standard"}}, rows...)
-	w.showTable("Words and what they mean", nil, rows)
+	w.showTable("Words and what they mean", nil, w.tableShown(rows))
 }
 
 // showKeys lists the keys.

@@ -14,7 +14,7 @@ func (w *window) onReading(of qa.Side, i int) {
 	if i < 0 || i >= all.Len() || w.state.Job.Name != "" || w.dialog != nil {
 		return
 	}
-	r := all.At(i)
+	r := w.readingShown(all.At(i))
 	w.cursor[of] = i
 	e, unread := w.state.Unread(r.Source)
 	switch {

@@ -29,17 +29,17 @@ func (w *window) benchPicture() chart.Picture {
 	s := w.state
 	if s.Drafting {
 		if f := w.powerPicture(); f != nil {
-			return f
+			return w.pictureShown(f)
 		}
 		return nil
 	}
 	if _, ok := s.Characteristic(); !ok {
 		return nil
 	}
-	return func(width, height float64) figure.Figure {
+	return w.pictureShown(func(width, height float64) figure.Figure {
 		f, _ := s.Picture(width, height)
 		return f
-	}
+	})
 }
 
 // line is the interval of a characteristic on the spine.

@@ -51,7 +51,7 @@ func (w *window) offerMore() {
 	add("Check this installation…", true, w.askQualify)
 	apart()
 	add("Words and what they mean…", true, w.showWords)
-	add("Cautions…", true, func() { w.showText("Cautions", qa.Cautions()) })
+	add("Cautions…", true, func() { w.showText("Cautions", w.allShown(qa.Cautions())) })
 	add("Keys…", true, w.showKeys)
 	add("About Lotpair…", true, w.showAbout)
 	w.offer(w.act.more, items...)

@@ -23,7 +23,7 @@ func (w *window) askParticulars() {
 		text func() string
 	}
 	var all []asked
-	for _, x := range desk.Particulars() {
+	for _, x := range desk.Particulars(w.decimal) {
 		if x.Early && !w.state.Drafting || x.Sealed && w.state.Sealed() {
 			continue
 		}

@@ -8,6 +8,8 @@ import (
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/test"
 	"fyne.io/fyne/v2/theme"
+
+	"lotpair/app/desk"
 )
 
 // Shot says what a picture of the window shows.
@@ -17,6 +19,7 @@ type Shot struct {
 	Scale         float64 // pixels a point
 	Dark          bool
 	Register      string // the folder of a register; "" for none
+	Decimal       desk.Decimal
 }
 
 // Picture renders the window with the toolkit's software painter: no display, no C. It fails where the file cannot be
@@ -40,7 +43,7 @@ func Picture(s Shot, b Build) (image.Image, error) {
 	w := newWindow(test.NewApp(), b, l, r)
 	defer w.win.Close()
 	defer w.end()
-	w.jobs.atOnce = true
+	w.jobs.atOnce, w.decimal = true, s.Decimal
 	w.win.Canvas().(test.WindowlessCanvas).SetScale(float32(s.Scale))
 	w.win.Resize(fyne.NewSize(float32(s.Width), float32(s.Height)))
 	switch s.File {

@@ -39,13 +39,13 @@ func fileName(words string) string {
 
 // savePicture writes the picture of the bench, as ink on paper.
 func (w *window) savePicture(to string) {
-	s, place := w.state, "Saving "+filepath.Base(to)
+	place, picture := "Saving "+filepath.Base(to), w.benchPicture()
 	to = absolute(to)
 	w.work(place, func(watch qa.Watch) change {
-		f, ok := s.Picture(figure.FacingWidth, figure.FacingHeight)
-		if !ok {
+		if picture == nil {
 			return desk.State.Read
 		}
+		f := picture(figure.FacingWidth, figure.FacingHeight)
 		var data []byte
 		var err error
 		switch strings.ToLower(filepath.Ext(to)) {

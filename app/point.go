@@ -24,7 +24,7 @@ func (w *window) pointed(m figure.Mark, at fyne.Position, on bool) {
 		w.tip.Hide()
 		return
 	}
-	w.tipText = w.state.ReadingText(*m.Reading)
+	w.tipText = w.shown(w.state.ReadingText(*m.Reading), m.Reading.Source.Place(), m.Reading.Part, m.Reading.LeftOut)
 	size := w.win.Canvas().Size()
 	wide := min(fontNote.width(w.tipText)+20, size.Width-2*margin)
 	place := w.bench.Position().Add(w.picture.Position()).Add(at)

@@ -123,7 +123,7 @@ func (w *window) showCheck() {
 		if c.Fault != "" {
 			here = c.Fault
 		}
-		rows = append(rows, []string{c.ID, c.Quantity, qa.Plain(c.Want), here, holds(c.Holds), c.Source})
+		rows = append(rows, []string{c.ID, c.Quantity, w.shown(qa.Plain(c.Want)), w.shown(here), holds(c.Holds), c.Source})
 	}
 	for _, s := range q.Record {
 		rows = append(rows, []string{"record", s.Step, "", s.Fault, holds(s.Holds), ""})

@@ -113,7 +113,7 @@ func (w *window) paintPageRows(p *pen, size fyne.Size, of qa.Side, top, bottom f
 		s.text(w.view.pages[of].ReadingsTitle, r.first-10, fontHeading, p.MutedText)
 	}
 	for i := max(0, r.at(top)); i < r.readings.Len(); i++ {
-		x := r.readings.At(i)
+		x := w.readingShown(r.readings.At(i))
 		y, end := r.top(i), r.top(i+1)
 		if y+readingLine > bottom+2 {
 			break // half a line would be neither read nor missed

@@ -7,6 +7,7 @@ import (
 
 	"fyne.io/fyne/v2"
 
+	"lotpair/app/desk"
 	"lotpair/app/register"
 	"lotpair/qa"
 )
@@ -29,6 +30,7 @@ type Options struct {
 	Dark     bool
 	Measure  Measurement
 	Controls string // a file that says where everything stands; "" for none
+	Decimal  desk.Decimal
 }
 
 // Run opens the window and returns when it is closed: what the user did, an act a line.
@@ -38,6 +40,7 @@ func Run(a fyne.App, o Options) []string {
 	l := wanted(o.Dark)
 	l.clears = true
 	w := newWindow(a, o.Build, l, r)
+	w.decimal = o.Decimal
 	w.win.SetMaster()
 	w.win.CenterOnScreen()
 	a.Lifecycle().SetOnStarted(func() {

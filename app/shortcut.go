@@ -50,7 +50,7 @@ func (w *window) next() {
 // copyBench copies what the bench says of the characteristic looked at.
 func (w *window) copyBench() {
 	if w.state.Open && w.dialog == nil {
-		w.app.Clipboard().SetContent(w.state.CopiedBench())
+		w.app.Clipboard().SetContent(w.shown(w.state.CopiedBench()))
 		w.say("Copied what is said of the characteristic.")
 	}
 }
@@ -58,7 +58,7 @@ func (w *window) copyBench() {
 // copyTable copies all characteristics as a table.
 func (w *window) copyTable() {
 	if w.state.Open && w.dialog == nil {
-		w.app.Clipboard().SetContent(tabbed(w.state.CopiedTable()))
+		w.app.Clipboard().SetContent(tabbed(w.tableShown(w.state.CopiedTable())))
 		w.say("Copied all characteristics as a table.")
 	}
 }

@@ -7,7 +7,7 @@ func (w *window) askSize() {
 	if w.busy() {
 		return
 	}
-	z := w.state.SizingOf()
+	z := w.state.SizingOf(w.decimal)
 	f := w.newForm()
 	objective := f.choice("To be shown", z.Objective, desk.Objectives, "")
 	design := f.choice("Readings", z.Design, desk.Designs, "")
@@ -30,13 +30,13 @@ func (w *window) askSize() {
 		return desk.Sizing{
 			Objective: objective.Selected, Design: design.Selected, Method: method.Selected, Margin: margin.Text, MarginLower: lower.Text, MarginUpper: upper.Text,
 			SD: sd.Text, SDCandidate: candidate.Text, Shift: shift.Text, FractionReference: fr.Text, FractionCandidate: fc.Text, Alpha: alpha.Text, Power: power.Text,
-			Ratio: ratio.Text, SpreadRatio: spread.Text, Characteristics: k.Text, N: n.Text,
+			Decimal: w.decimal, Ratio: ratio.Text, SpreadRatio: spread.Text, Characteristics: k.Text, N: n.Text,
 		}
 	}
 	f.first = sd
 	f.live = func() []string { return typed().Answer() }
 	f.ask("How many parts?", "Copy the answer", func() error {
-		w.app.Clipboard().SetContent(joinLines(typed().Answer()))
+		w.app.Clipboard().SetContent(w.shown(joinLines(typed().Answer())))
 		return nil
 	})
 }

@@ -14,11 +14,12 @@ type termsForm struct {
 	objective, claim, method, margin, of, look *pick
 	first, second, mean, sd, reason, approved  *field
 	alpha, spread, guard, power                *field
+	decimal                                    desk.Decimal
 }
 
 // addTerms puts the lines of a criterion into a form. own: those that a characteristic may state for itself.
 func (f *form) addTerms(t desk.Terms, own bool) *termsForm {
-	x := &termsForm{}
+	x := &termsForm{decimal: t.Decimal}
 	words := func(all []string) []string {
 		if own {
 			return slices.Insert(slices.Clone(all), 0, desk.AsAll)
@@ -56,7 +57,7 @@ func (f *form) addTerms(t desk.Terms, own bool) *termsForm {
 func (x *termsForm) terms() desk.Terms {
 	t := desk.Terms{
 		Objective: x.objective.Selected, Method: x.method.Selected, Margin: x.margin.Selected, First: x.first.Text, Second: x.second.Text, Of: x.of.Selected,
-		Mean: x.mean.Text, SD: x.sd.Text, Reason: x.reason.Text, ApprovedBy: x.approved.Text, Alpha: x.alpha.Text, Spread: x.spread.Text, Guard: x.guard.Text,
+		Decimal: x.decimal, Mean: x.mean.Text, SD: x.sd.Text, Reason: x.reason.Text, ApprovedBy: x.approved.Text, Alpha: x.alpha.Text, Spread: x.spread.Text, Guard: x.guard.Text,
 	}
 	if x.claim != nil {
 		t.Claim, t.Power, t.Look = x.claim.Selected, x.power.Text, x.look.Selected
@@ -73,7 +74,7 @@ func (w *window) askTerms() {
 		return
 	}
 	f := w.newForm()
-	x := f.addTerms(desk.TermsOf(desk.Unsettled(w.state.Record.Plan)), false)
+	x := f.addTerms(desk.TermsOf(desk.Unsettled(w.state.Record.Plan), w.decimal), false)
 	f.live = w.consequences(x)
 	f.ask("All terms of the criterion", "Keep", func() error {
 		p, err := x.terms().Into(desk.Unsettled(w.state.Record.Plan))
@@ -103,7 +104,7 @@ func (w *window) askAmend() {
 	}
 	f := w.newForm()
 	reason := f.text("Reason", "", "why the sealed criterion is changed; both verdicts, old and new, stay in the record")
-	x := f.addTerms(desk.TermsOf(desk.Unsettled(w.state.Record.Plan)), false)
+	x := f.addTerms(desk.TermsOf(desk.Unsettled(w.state.Record.Plan), w.decimal), false)
 	f.live = w.consequences(x)
 	f.ask("Amend the criterion", "Amend", func() error {
 		p, err := x.terms().Into(desk.Unsettled(w.state.Record.Plan))
@@ -143,7 +144,7 @@ func (w *window) offerTerms(under *button, words []string, name string, set func
 	for _, word := range words {
 		items = append(items, fyne.NewMenuItem(word, w.choose(name+": "+word, func(p *qa.Plan) {
 			open := desk.Unsettled(*p)
-			t := desk.TermsOf(open)
+			t := desk.TermsOf(open, w.decimal)
 			set(&t, word)
 			if next, err := t.Into(open); err == nil {
 				*p = next

@@ -26,6 +26,9 @@ type window struct {
 	look  look
 	jobs  jobs
 
+	decimal desk.Decimal // in which numbers are shown and taken
+	names   []string     // what the record calls things, where a name holds what looks like a number
+
 	register *register.Register // nil where nothing is kept
 	entry    register.Entry     // the record on the desk, as the register has it
 	list     listing
@@ -328,6 +331,7 @@ func (w *window) show() {
 	}
 	w.pointed(figure.Mark{}, fyne.Position{}, false)
 	w.showDraft()
+	w.showNumbers()
 	w.said = saidAt{}
 	w.picture.SetPicture(w.benchPicture(), w.palette())
 	b := &w.act

@@ -26,7 +26,7 @@ func (s State) CopiedTable() [][]string {
 		if v == nil {
 			return ""
 		}
-		return NumberText(v, 1)
+		return Point.NumberText(v, 1)
 	}
 	for _, i := range s.lines() {
 		c := s.Record.Result.Characteristics[i]

@@ -94,7 +94,7 @@ func anyAct(t *rapid.T, s desk.State, name string, step int, sample qa.Record, a
 		return next
 	}
 	margin := func() qa.Plan {
-		terms := desk.TermsOf(s.Record.Plan)
+		terms := desk.TermsOf(s.Record.Plan, desk.Point)
 		terms.Margin, terms.First = desk.Margins[1], fmt.Sprint(float64(step+1)/100)
 		p, err := terms.Into(s.Record.Plan)
 		if err != nil {

@@ -25,12 +25,12 @@ const AsAll = "as all"
 // Kinds are the kinds of characteristics.
 var Kinds = []string{"measured", "passed or failed"}
 
-// OwnOf is a characteristic as it is typed.
-func OwnOf(c qa.Characteristic) Own {
+// OwnOf is a characteristic as it is typed, with the decimal mark d.
+func OwnOf(c qa.Characteristic, d Decimal) Own {
 	o := Own{
 		Name: c.Name, Column: c.Column, Unit: c.Unit, Kind: Kinds[0], Failed: strings.Join(c.Failed, ", "),
-		Lower: NumberText(c.Lower, 1), Target: NumberText(c.Target, 1), Upper: NumberText(c.Upper, 1), PlannedSD: NumberText(c.SD, 1),
-		Terms: Terms{Objective: AsAll, Method: AsAll, Alpha: NumberText(c.Alpha, 1), Spread: NumberText(c.SpreadRatio, 1), Guard: NumberText(c.Guard, 1)},
+		Lower: d.NumberText(c.Lower, 1), Target: d.NumberText(c.Target, 1), Upper: d.NumberText(c.Upper, 1), PlannedSD: d.NumberText(c.SD, 1),
+		Terms: Terms{Decimal: d, Objective: AsAll, Method: AsAll, Alpha: d.NumberText(c.Alpha, 1), Spread: d.NumberText(c.SpreadRatio, 1), Guard: d.NumberText(c.Guard, 1)},
 	}
 	if c.Kind == "attribute" {
 		o.Kind = Kinds[1]
@@ -39,7 +39,7 @@ func OwnOf(c qa.Characteristic) Own {
 		o.Decimals = fmt.Sprint(*c.Decimals)
 	}
 	if u := c.Uncertainty; u != nil {
-		o.UncertaintyReference, o.UncertaintyCandidate = NumberText(&u.Reference, 1), NumberText(&u.Candidate, 1)
+		o.UncertaintyReference, o.UncertaintyCandidate = d.NumberText(&u.Reference, 1), d.NumberText(&u.Candidate, 1)
 	}
 	if c.Objective != "" {
 		o.Objective = ObjectiveText(c.Objective)
@@ -56,7 +56,7 @@ func OwnOf(c qa.Characteristic) Own {
 
 // Into is the characteristic as it is typed. What was not touched stays to the last digit.
 func (o Own) Into(c qa.Characteristic) (qa.Characteristic, error) {
-	was := OwnOf(c)
+	was := OwnOf(c, o.Decimal)
 	var err error
 	c.Name, c.Column, c.Unit = strings.TrimSpace(o.Name), strings.TrimSpace(o.Column), strings.TrimSpace(o.Unit)
 	if c.Name == "" {
@@ -88,7 +88,7 @@ func (o Own) Into(c qa.Characteristic) (qa.Characteristic, error) {
 		if n.typed == n.before {
 			continue
 		}
-		if *n.to, err = Number(n.typed); err != nil {
+		if *n.to, err = o.Decimal.Number(n.typed); err != nil {
 			return c, fmt.Errorf("%s: %w", n.name, err)
 		}
 	}
@@ -118,7 +118,7 @@ func (o Own) Into(c qa.Characteristic) (qa.Characteristic, error) {
 // precision takes the decimals and the uncertainties of the measuring systems.
 func (o Own) precision(c qa.Characteristic, was Own) (qa.Characteristic, error) {
 	if o.Decimals != was.Decimals {
-		v, err := Number(o.Decimals)
+		v, err := o.Decimal.Number(o.Decimals)
 		switch {
 		case err != nil || v != nil && (*v != float64(int(*v)) || *v < 0):
 			return c, fmt.Errorf("decimals: found %q, want a whole number from 0 to 12", o.Decimals)
@@ -138,7 +138,7 @@ func (o Own) precision(c qa.Characteristic, was Own) (qa.Characteristic, error) 
 		name, typed string
 		to          *float64
 	}{{"uncertainty, reference", o.UncertaintyReference, &u.Reference}, {"uncertainty, candidate", o.UncertaintyCandidate, &u.Candidate}} {
-		v, err := Number(n.typed)
+		v, err := o.Decimal.Number(n.typed)
 		if err != nil {
 			return c, fmt.Errorf("%s: %w", n.name, err)
 		}

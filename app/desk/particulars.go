@@ -20,8 +20,8 @@ type Particular struct {
 	Set         func(*qa.Plan, string) error
 }
 
-// Particulars are all of them, in the order in which they are asked.
-func Particulars() []Particular {
+// Particulars are all of them, in the order in which they are asked; d is the decimal mark of their numbers.
+func Particulars(d Decimal) []Particular {
 	text := func(label, hint string, of func(*qa.Plan) *string) Particular {
 		return Particular{Label: label, Hint: hint, Get: func(p qa.Plan) string { return *of(&p) }, Set: func(p *qa.Plan, s string) error {
 			*of(p) = strings.TrimSpace(s)
@@ -33,8 +33,8 @@ func Particulars() []Particular {
 		return x
 	}
 	number := func(label, hint string, of func(*qa.Plan) **float64) Particular {
-		return Particular{Label: label, Hint: hint, Get: func(p qa.Plan) string { return NumberText(*of(&p), 1) }, Set: func(p *qa.Plan, s string) error {
-			v, err := Number(s)
+		return Particular{Label: label, Hint: hint, Get: func(p qa.Plan) string { return d.NumberText(*of(&p), 1) }, Set: func(p *qa.Plan, s string) error {
+			v, err := d.Number(s)
 			if err == nil {
 				*of(p) = v
 			}
@@ -70,19 +70,19 @@ func Particulars() []Particular {
 		early(text("Column of part ids", "repeat readings of one part are averaged", func(p *qa.Plan) *string { return &p.Reading.PartColumn })),
 		early(text("Column of the order", "in which the readings were taken", func(p *qa.Plan) *string { return &p.Reading.OrderColumn })),
 	}
-	return append(out, further()...)
+	return append(out, further(d)...)
 }
 
 // further are the terms of performance and resampling.
-func further() []Particular {
+func further(d Decimal) []Particular {
 	share := func(label, hint string, of func(*qa.PerformancePlan) *float64) Particular {
 		return Particular{Label: label, Hint: hint, Early: true, Sealed: true, Get: func(p qa.Plan) string {
 			if p.Performance == nil || *of(p.Performance) == 0 {
 				return ""
 			}
-			return NumberText(of(p.Performance), 1)
+			return d.NumberText(of(p.Performance), 1)
 		}, Set: func(p *qa.Plan, s string) error {
-			v, err := Number(s)
+			v, err := d.Number(s)
 			if err != nil {
 				return err
 			}

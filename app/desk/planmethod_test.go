@@ -37,7 +37,7 @@ func TestPlanMethod(t *testing.T) {
 			t.Errorf("%q: got %q parts", method, parts)
 		}
 		s.Open = true
-		if z := s.SizingOf(); z.Design != want.design || z.Method != want.test || (z.SD == "") != (method == "paired") {
+		if z := s.SizingOf(desk.Point); z.Design != want.design || z.Method != want.test || (z.SD == "") != (method == "paired") {
 			t.Errorf("%q: got %+v, want the plan's method", method, z)
 		}
 	}

@@ -17,6 +17,7 @@ type Sizing struct {
 	FractionCandidate               string
 	Alpha, Power, Ratio             string
 	SpreadRatio, Characteristics, N string
+	Decimal                         Decimal // of its numbers
 }
 
 // The words of a planned study.
@@ -25,9 +26,9 @@ var (
 	StudyMethods = []string{"pooled", "Welch"}
 )
 
-// SizingOf begins with what is usual, or with what the plan says of the characteristic looked at.
-func (s State) SizingOf() Sizing {
-	z := Sizing{Objective: Objectives[0], Design: Designs[0], Method: StudyMethods[0], Shift: "0", Alpha: "0.05", Power: "0.9", Ratio: "1", Characteristics: "1"}
+// SizingOf begins with what is usual, or with what the plan says of the characteristic looked at; d is its decimal mark.
+func (s State) SizingOf(d Decimal) Sizing {
+	z := Sizing{Objective: Objectives[0], Design: Designs[0], Method: StudyMethods[0], Shift: "0", Alpha: d.own("0.05"), Power: d.own("0.9"), Ratio: "1", Characteristics: "1", Decimal: d}
 	p := Settled(s.Record.Plan)
 	if !s.Open || s.Selected < 0 || s.Selected >= len(p.Characteristics) {
 		return z
@@ -37,12 +38,12 @@ func (s State) SizingOf() Sizing {
 	if o := one.Characteristic.Objective; o != "" {
 		z.Objective = ObjectiveText(o)
 	}
-	z.MarginLower, z.MarginUpper = NumberText(one.Lower, 1), NumberText(one.Upper, 1)
+	z.MarginLower, z.MarginUpper = d.NumberText(one.Lower, 1), d.NumberText(one.Upper, 1)
 	if one.Lower != nil && one.Upper != nil && *one.Lower == -*one.Upper {
 		z.Margin, z.MarginLower, z.MarginUpper = z.MarginUpper, "", ""
 	}
 	if one.SD > 0 {
-		z.SD = NumberText(&one.SD, 1)
+		z.SD = d.NumberText(&one.SD, 1)
 	}
 	method := p.Criterion.Method
 	if m := p.Characteristics[s.Selected].Method; m != "" {
@@ -55,9 +56,9 @@ func (s State) SizingOf() Sizing {
 		z.Design, z.SD = Designs[1], ""
 	}
 	if p.Criterion.Alpha != nil {
-		z.Alpha = NumberText(p.Criterion.Alpha, 1)
+		z.Alpha = d.NumberText(p.Criterion.Alpha, 1)
 	}
-	z.SpreadRatio = NumberText(p.Criterion.SpreadRatio, 1)
+	z.SpreadRatio = d.NumberText(p.Criterion.SpreadRatio, 1)
 	return z
 }
 
@@ -88,7 +89,7 @@ func (z Sizing) study() (qa.Study, error) {
 		{"characteristics", z.Characteristics, &k, math.NaN(), nil},
 		{"parts", z.N, &n, math.NaN(), nil},
 	} {
-		v, err := Number(x.text)
+		v, err := z.Decimal.Number(x.text)
 		switch {
 		case err != nil:
 			return st, fmt.Errorf("%s: %w", x.name, err)
@@ -107,7 +108,7 @@ func (z Sizing) study() (qa.Study, error) {
 		v := -*high
 		low = &v
 	} else {
-		v, err := Number(z.MarginUpper)
+		v, err := z.Decimal.Number(z.MarginUpper)
 		if err != nil {
 			return st, fmt.Errorf("upper end of the margin: %w", err)
 		}

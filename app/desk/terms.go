@@ -2,7 +2,6 @@ package desk
 
 import (
 	"fmt"
-	"strconv"
 	"strings"
 
 	"lotpair/qa"
@@ -17,6 +16,7 @@ type Terms struct {
 	Mean, SD                          string // known beforehand, for a margin that keeps a Ppk or is a multiple
 	Reason, ApprovedBy                string
 	Alpha, Spread, Guard, Power, Look string
+	Decimal                           Decimal // of its numbers
 }
 
 // The words of the choices, in the order in which they are offered.
@@ -64,34 +64,6 @@ func valueOf[T comparable](words []string, values []T, word string) T {
 	return values[0]
 }
 
-// Number is a number as a person types it, with a decimal point or comma; empty is none.
-func Number(text string) (*float64, error) {
-	text = strings.Replace(strings.TrimSpace(strings.ReplaceAll(text, "−", "-")), ",", ".", 1)
-	if text == "" {
-		return nil, nil
-	}
-	v, err := strconv.ParseFloat(text, 64)
-	if err != nil || v-v != 0 {
-		return nil, fmt.Errorf("found %q, want a number such as 0.05", text)
-	}
-	return &v, nil
-}
-
-// NumberText is a number as a line to type in shows it, times so much.
-func NumberText(v *float64, times float64) string {
-	if v == nil {
-		return ""
-	}
-	if times == 1 {
-		return strconv.FormatFloat(*v, 'f', -1, 64)
-	}
-	x, err := strconv.ParseFloat(strconv.FormatFloat(*v*times, 'g', 12, 64), 64)
-	if err != nil {
-		x = *v * times
-	}
-	return strconv.FormatFloat(x, 'f', -1, 64)
-}
-
 // marginKind is the place of a margin's way of being stated.
 func marginKind(m *qa.Margin) int {
 	switch {
@@ -137,8 +109,8 @@ func (t *Terms) marginTerms(m *qa.Margin) {
 	case asMultiple:
 		first = m.SDMultiple
 	}
-	t.First, t.Second = NumberText(first, times), NumberText(second, 1)
-	t.Mean, t.SD = NumberText(m.Mean, 1), NumberText(m.SD, 1)
+	t.First, t.Second = t.Decimal.NumberText(first, times), t.Decimal.NumberText(second, 1)
+	t.Mean, t.SD = t.Decimal.NumberText(m.Mean, 1), t.Decimal.NumberText(m.SD, 1)
 	if m.Of == "half" {
 		t.Of = Widths[1]
 	}
@@ -159,11 +131,11 @@ func (t Terms) margin(before Terms, was *qa.Margin) (*qa.Margin, error) {
 			kind = i
 		}
 	}
-	first, err := Number(t.First)
+	first, err := t.Decimal.Number(t.First)
 	if err != nil {
 		return nil, fmt.Errorf("margin: %w", err)
 	}
-	second, err := Number(t.Second)
+	second, err := t.Decimal.Number(t.Second)
 	if err != nil {
 		return nil, fmt.Errorf("margin, upper end: %w", err)
 	}
@@ -196,10 +168,10 @@ func (t Terms) margin(before Terms, was *qa.Margin) (*qa.Margin, error) {
 	case asRatioBounds:
 		m.RatioLower, m.RatioUpper = first, second
 	case asPpk, asMultiple:
-		if m.Mean, err = Number(t.Mean); err != nil {
+		if m.Mean, err = t.Decimal.Number(t.Mean); err != nil {
 			return nil, fmt.Errorf("mean: %w", err)
 		}
-		if m.SD, err = Number(t.SD); err != nil {
+		if m.SD, err = t.Decimal.Number(t.SD); err != nil {
 			return nil, fmt.Errorf("standard deviation: %w", err)
 		}
 		if m.KeepPpk = first; kind == asMultiple {
@@ -209,12 +181,12 @@ func (t Terms) margin(before Terms, was *qa.Margin) (*qa.Margin, error) {
 	return &m, nil
 }
 
-// TermsOf are the terms of a plan's criterion.
-func TermsOf(p qa.Plan) Terms {
+// TermsOf are the terms of a plan's criterion, with the decimal mark d.
+func TermsOf(p qa.Plan, d Decimal) Terms {
 	c := p.Criterion
 	t := Terms{
-		Objective: ObjectiveText(c.Objective), Claim: claimText(c), Method: MethodText(c.Method), Look: Looks[0],
-		Alpha: NumberText(c.Alpha, 1), Spread: NumberText(c.SpreadRatio, 1), Guard: NumberText(c.Guard, 1), Power: NumberText(c.Power, 1),
+		Objective: ObjectiveText(c.Objective), Claim: claimText(c), Method: MethodText(c.Method), Look: Looks[0], Decimal: d,
+		Alpha: d.NumberText(c.Alpha, 1), Spread: d.NumberText(c.SpreadRatio, 1), Guard: d.NumberText(c.Guard, 1), Power: d.NumberText(c.Power, 1),
 	}
 	if c.SecondSample == "one" {
 		t.Look = Looks[1]
@@ -235,7 +207,7 @@ func claimText(c qa.Criterion) string {
 
 // Into is the plan with its criterion as it is typed. What was not touched stays to the last digit.
 func (t Terms) Into(p qa.Plan) (qa.Plan, error) {
-	was := TermsOf(p)
+	was := TermsOf(p, t.Decimal)
 	c := p.Criterion
 	var err error
 	if t.Objective != was.Objective {
@@ -271,7 +243,7 @@ func (t Terms) Into(p qa.Plan) (qa.Plan, error) {
 		if n.typed == n.before {
 			continue
 		}
-		if *n.to, err = Number(n.typed); err != nil {
+		if *n.to, err = t.Decimal.Number(n.typed); err != nil {
 			return p, fmt.Errorf("%s: %w", n.name, err)
 		}
 	}

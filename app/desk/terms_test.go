@@ -62,7 +62,8 @@ func someCriterion(t *rapid.T) qa.Criterion {
 func TestTermsChangeNothingByThemselves(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		p := qa.Plan{Criterion: someCriterion(t)}
-		got, err := desk.TermsOf(p).Into(p)
+		mark := rapid.SampledFrom([]desk.Decimal{desk.Point, desk.Comma}).Draw(t, "mark")
+		got, err := desk.TermsOf(p, mark).Into(p)
 		if err != nil || !reflect.DeepEqual(got, p) {
 			t.Fatalf("got %s, %v, want %s", asJSON(got), err, asJSON(p))
 		}
@@ -70,11 +71,11 @@ func TestTermsChangeNothingByThemselves(t *testing.T) {
 		if rapid.Bool().Draw(t, "uncertain") {
 			c.Uncertainty = &qa.Uncertainty{Reference: 1.0 / 3, Candidate: 0}
 		}
-		same, err := desk.OwnOf(c).Into(c)
+		same, err := desk.OwnOf(c, mark).Into(c)
 		if err != nil || !reflect.DeepEqual(same, c) {
 			t.Fatalf("own: got %+v, %v, want %+v", same, err, c)
 		}
-		for _, x := range desk.Particulars() {
+		for _, x := range desk.Particulars(mark) {
 			before := asJSON(p)
 			if err := x.Set(&p, x.Get(p)); err != nil || asJSON(p) != before {
 				t.Fatalf("%s: got %s, %v, want %s", x.Label, asJSON(p), err, before)
@@ -127,7 +128,7 @@ func TestTermsAreTyped(t *testing.T) {
 		}, `"alpha":0.01,"spread_ratio":1.5,"guard":0.001,"power":0.8,"second_sample":"one"`},
 	} {
 		p := qa.Plan{}
-		terms := desk.TermsOf(p)
+		terms := desk.TermsOf(p, desk.Point)
 		tt.set(&terms)
 		got, err := terms.Into(p)
 		if text := asJSON(got.Criterion); err != nil || text != "{"+tt.want+"}" {
@@ -135,7 +136,7 @@ func TestTermsAreTyped(t *testing.T) {
 		}
 	}
 	for _, bad := range []term{margin(desk.Margins[1], "", ""), margin(desk.Margins[1], "wide", ""), func(t *desk.Terms) { t.Alpha = "5 %" }} {
-		terms := desk.TermsOf(qa.Plan{})
+		terms := desk.TermsOf(qa.Plan{}, desk.Point)
 		bad(&terms)
 		if _, err := terms.Into(qa.Plan{}); err == nil || !strings.Contains(err.Error(), "found") {
 			t.Errorf("got %v, want it refused", err)
@@ -189,7 +190,7 @@ func TestConsequences(t *testing.T) {
 
 // What is planned by hand is what the study says.
 func TestSizing(t *testing.T) {
-	usual := desk.State{}.SizingOf()
+	usual := desk.State{}.SizingOf(desk.Point)
 	for _, tt := range []struct {
 		name string
 		set  func(*desk.Sizing)
