@@ -11,6 +11,7 @@ import (
 	"strings"
 
 	"lotpair/app/desk"
+	_ "lotpair/app/language" // the toolkit finds a language
 )
 
 // Command runs the desktop program: it opens the window through open, or renders it to a file where --picture asks for that.
@@ -49,7 +50,6 @@ func Command(args []string, version string, open func(Options) ([]string, error)
 		mark = systemDecimal()
 	}
 	shot.Decimal = mark
-	settleLocale()
 	build := Build{Version: version, Revision: revision()}
 	if *picture == "" {
 		dir := shot.Register

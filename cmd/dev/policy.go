@@ -48,10 +48,11 @@ var policy = map[string]rule{
 
 	"app/desk":     {own: []string{"qa", "qa/stats", "qa/figure", "importers"}}, // qa/stats says how many readings a study needs
 	"app/chart":    {own: []string{"qa/figure", "qa/figure/draw"}, outside: []string{fyneModule}, tests: []string{"qa"}},
+	"app/language": {},
 	"app/register": {outside: []string{sqliteModule}},
 	"app": {
 		own: []string{
-			"app/desk", "app/chart", "app/register", "importers", "exports", "exports/identity", "exports/opcsign",
+			"app/desk", "app/chart", "app/language", "app/register", "importers", "exports", "exports/identity", "exports/opcsign",
 			"qa", "qa/figure", "qa/figure/draw", "qa/published",
 		},
 		outside: []string{fyneModule, imageModule},

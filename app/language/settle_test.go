@@ -1,4 +1,4 @@
-package app
+package language
 
 import (
 	"os"
@@ -19,7 +19,7 @@ func TestTheToolkitIsToldALanguage(t *testing.T) {
 		for name, value := range map[string]string{"LC_ALL": x.all, "LANG": x.lang, "LC_MESSAGES": "", "LC_CTYPE": "", "LC_NUMERIC": ""} {
 			t.Setenv(name, value)
 		}
-		settleLocale()
+		settle()
 		if all, messages, letters := os.Getenv("LC_ALL"), os.Getenv("LC_MESSAGES"), os.Getenv("LC_CTYPE"); all != x.wantAll || messages != x.wantMessages || letters != x.wantLetters {
 			t.Errorf("LC_ALL=%s LANG=%s: got %q, %q, %q, want %q, %q, %q", x.all, x.lang, all, messages, letters, x.wantAll, x.wantMessages, x.wantLetters)
 		}
