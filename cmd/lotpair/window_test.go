@@ -169,17 +169,24 @@ func TestHeadingsToVerdictByKeyboard(t *testing.T) {
 	if err := os.WriteFile(file, []byte(text.String()), 0o600); err != nil {
 		t.Fatal(err)
 	}
-	r := start(t, path, "--acts", acts, "--register", filepath.Join(dir, "register"), file)
-	const title = "Comparison without a title – Lotpair"
-	r.press(t, title, "ctrl+Return")
-	// Past the records, the particulars, the lot's two lines and the objective to the second way of stating the margin, then to
-	// its line.
-	r.press(t, title, "Tab", "Tab", "Tab", "Tab", "Tab", "Tab", "Tab", "space", "Tab", "Tab", "Tab", "Tab", "ctrl+a", "0", "period", "1")
-	r.press(t, title, "ctrl+Return")
-	r.press(t, title, "ctrl+Return")
-	time.Sleep(2 * time.Second)
-	r.press(t, title, "ctrl+q")
-	r.closes(t)
+	h := &hand{T: t, controls: filepath.Join(dir, "controls.txt")}
+	h.running = start(t, path, "--acts", acts, "--controls", h.controls, "--register", filepath.Join(dir, "register"), file)
+	h.id = appears(t, "Comparison without a title – Lotpair", h.running.gone)
+	h.focus()
+	h.sees("Readings from wall.csv")
+	h.press("ctrl+Return")
+	h.sees("The margin")
+	h.tabToButton("in the unit")
+	h.press("space")
+	h.tabToLine("margin ±", 0)
+	h.press("ctrl+a")
+	h.writes("0.1")
+	h.press("ctrl+Return")
+	h.sees("sealed")
+	h.press("ctrl+Return")
+	h.sees("Overall:")
+	h.press("ctrl+q")
+	h.running.closes(t)
 	got, err := os.ReadFile(acts)
 	if err != nil {
 		t.Fatal(err)
